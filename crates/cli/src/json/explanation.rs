@@ -1,0 +1,140 @@
+//! Everything about one cell.
+
+use enolattice_model::{Advice, Caution, Channel, CoursePoint, ExplainedRate, Explanation};
+use serde::Serialize;
+
+use super::SiteRecord;
+
+/// The document of `explain --json`.
+#[derive(Clone, Debug, Serialize)]
+pub(crate) struct ExplanationDocument {
+    expected_yield: Option<f64>,
+    yield_sigma: Option<f64>,
+    yield_on_limiting: Option<f64>,
+    p_hit: Option<f64>,
+    feasibility: Option<f64>,
+    selectivity: Option<f64>,
+    reference_yield: Option<f64>,
+    fast_yield: Option<f64>,
+    product_smiles: Option<String>,
+    product_formula: Option<String>,
+    product_mass: Option<f64>,
+    condensation_smiles: Option<String>,
+    delta_g_deprotonation_kj_mol: Option<f64>,
+    log10_k: Option<f64>,
+    enolate_fraction: Option<f64>,
+    sites: Vec<SiteRecord>,
+    rates: Vec<RateRecord>,
+    losses: Vec<LossRecord>,
+    course: Vec<CourseRecord>,
+    cautions: Vec<CautionRecord>,
+    limits: Vec<String>,
+    advice: Vec<AdviceRecord>,
+    model: String,
+}
+
+#[derive(Clone, Debug, Serialize)]
+struct RateRecord {
+    step: String,
+    log10_k: f64,
+    sigma: f64,
+    source: String,
+}
+
+#[derive(Clone, Debug, Serialize)]
+struct LossRecord {
+    channel: &'static str,
+    fraction: f64,
+}
+
+#[derive(Clone, Debug, Serialize)]
+struct CourseRecord {
+    time_s: f64,
+    substrate: f64,
+    anions: f64,
+    electrophile: f64,
+    product: f64,
+}
+
+#[derive(Clone, Debug, Serialize)]
+struct CautionRecord {
+    category: &'static str,
+    severity: &'static str,
+    text: String,
+}
+
+#[derive(Clone, Debug, Serialize)]
+struct AdviceRecord {
+    change: String,
+    expected_yield: f64,
+}
+
+impl From<Explanation> for ExplanationDocument {
+    fn from(told: Explanation) -> ExplanationDocument {
+        ExplanationDocument {
+            expected_yield: told.expected_yield,
+            yield_sigma: told.yield_sigma,
+            yield_on_limiting: told.yield_on_limiting,
+            p_hit: told.p_hit,
+            feasibility: told.feasibility,
+            selectivity: told.selectivity,
+            reference_yield: told.reference_yield,
+            fast_yield: told.fast_yield,
+            product_smiles: told.product_smiles,
+            product_formula: told.product_formula,
+            product_mass: told.product_mass,
+            condensation_smiles: told.condensation_smiles,
+            delta_g_deprotonation_kj_mol: told.delta_g_deprotonation_kj_mol,
+            log10_k: told.log10_k,
+            enolate_fraction: told.enolate_fraction,
+            sites: told.sites.into_iter().map(SiteRecord::from).collect(),
+            rates: told.rates.into_iter().map(RateRecord::from).collect(),
+            losses: told.losses.into_iter().map(LossRecord::from).collect(),
+            course: told.course.into_iter().map(CourseRecord::from).collect(),
+            cautions: told.cautions.into_iter().map(CautionRecord::from).collect(),
+            limits: told.limits,
+            advice: told.advice.into_iter().map(AdviceRecord::from).collect(),
+            model: told.model,
+        }
+    }
+}
+
+impl From<ExplainedRate> for RateRecord {
+    fn from(rate: ExplainedRate) -> RateRecord {
+        RateRecord { step: rate.step, log10_k: rate.log10_k, sigma: rate.sigma, source: rate.source }
+    }
+}
+
+impl From<(Channel, f64)> for LossRecord {
+    fn from((channel, fraction): (Channel, f64)) -> LossRecord {
+        LossRecord { channel: channel.name(), fraction }
+    }
+}
+
+impl From<CoursePoint> for CourseRecord {
+    fn from(point: CoursePoint) -> CourseRecord {
+        CourseRecord {
+            time_s: point.time_s,
+            substrate: point.substrate,
+            anions: point.anions,
+            electrophile: point.electrophile,
+            product: point.product,
+        }
+    }
+}
+
+impl From<Caution> for CautionRecord {
+    fn from(caution: Caution) -> CautionRecord {
+        CautionRecord {
+            category: caution.category.name(),
+            severity: caution.severity.name(),
+            text: caution.text,
+        }
+    }
+}
+
+impl From<Advice> for AdviceRecord {
+    fn from(advice: Advice) -> AdviceRecord {
+        AdviceRecord { change: advice.change, expected_yield: advice.expected_yield }
+    }
+}

@@ -1,0 +1,19 @@
+//! What `--json` prints. The fields are documented in `docs/commands.md` and stable:
+//! fields may be added, none changes its meaning.
+
+mod cell;
+mod explanation;
+mod job;
+mod reagent;
+mod screened;
+mod site;
+
+pub(crate) use cell::CellLine;
+pub(crate) use explanation::ExplanationDocument;
+pub(crate) use job::{JobRecord, state_name};
+pub(crate) use reagent::ReagentRecord;
+pub(crate) use screened::ScreenedDocument;
+pub(crate) use site::{MoleculeSites, SiteRecord};
+
+#[cfg(test)]
+mod documented;

@@ -1,0 +1,13 @@
+//! Filters of a ranking: a subset of AIP-160 (see `docs/filter.md`).
+//!
+//! A filter is read once ([`Filter::read`]), tied to a campaign
+//! ([`Filter::bind`]), where every test of an axis becomes a table of answers
+//! by value, and then asked of each cell.
+
+mod bind;
+mod field;
+mod read;
+mod token;
+
+pub(crate) use bind::BoundFilter;
+pub(crate) use read::Filter;

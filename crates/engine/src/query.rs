@@ -1,0 +1,184 @@
+//! What can be asked of an engine and what it answers.
+
+use enolattice_model::{AcidSite, Channel};
+
+/// Order of a ranking; ties always by cell, ascending; unknown last.
+#[derive(Clone, Copy, Debug, Default, PartialEq, Eq, Hash)]
+pub enum Order {
+    /// Expected yield, descending.
+    #[default]
+    ExpectedYield,
+    /// Probability of a hit, descending.
+    PHit,
+    /// Selectivity, descending.
+    Selectivity,
+    /// Feasibility, descending.
+    Feasibility,
+}
+
+/// An axis of a campaign.
+#[derive(Clone, Copy, Debug, PartialEq, Eq, Hash)]
+pub enum Axis {
+    /// Substrates.
+    Substrate,
+    /// Bases.
+    Base,
+    /// Electrophiles.
+    Electrophile,
+    /// Solvents.
+    Solvent,
+    /// Temperatures.
+    Temperature,
+}
+
+/// A question for a page of a ranking.
+#[derive(Clone, Debug, Default, PartialEq)]
+pub struct RankQuery {
+    /// Job.
+    pub job: String,
+    /// Order.
+    pub order: Order,
+    /// Filter (AIP-160 subset); empty: all cells.
+    pub filter: String,
+    /// Rows wanted.
+    pub page_size: u32,
+    /// Token of the page before; empty: the first page.
+    pub page_token: String,
+    /// Rows to skip before the page.
+    pub skip: u64,
+    /// Only the best cell of each value of this axis.
+    pub best_per: Option<Axis>,
+}
+
+/// A ranked cell.
+#[derive(Clone, Debug, PartialEq)]
+pub struct RankedCell {
+    /// Rank, from 1.
+    pub rank: u64,
+    /// Cell number.
+    pub cell: u64,
+    /// Substrate's name.
+    pub substrate: String,
+    /// Base's name.
+    pub base: String,
+    /// Electrophile's name.
+    pub electrophile: String,
+    /// Solvent's name.
+    pub solvent: String,
+    /// Temperature, °C.
+    pub temperature_c: f64,
+    /// Temperature of the deprotonation, °C.
+    pub formation_temperature_c: f64,
+    /// Equivalents of base.
+    pub base_equiv: f64,
+    /// Equivalents of electrophile.
+    pub electrophile_equiv: f64,
+    /// Concentration, mol/L.
+    pub concentration_m: f64,
+    /// Time, h.
+    pub time_h: f64,
+    /// Dosing time, min.
+    pub dosing_min: f64,
+    /// Order of addition.
+    pub addition: String,
+    /// Expected yield.
+    pub expected_yield: Option<f64>,
+    /// Probability of a hit.
+    pub p_hit: Option<f64>,
+    /// Feasibility.
+    pub feasibility: Option<f64>,
+    /// Selectivity.
+    pub selectivity: Option<f64>,
+    /// Largest loss.
+    pub largest_loss: Option<Channel>,
+    /// Names of the categories of caution.
+    pub cautions: Vec<String>,
+    /// Severest caution: `note`, `warning`, `stop`; none without cautions.
+    pub severity: Option<String>,
+}
+
+/// A page of a ranking.
+#[derive(Clone, Debug, PartialEq)]
+pub struct RankPage {
+    /// Rows.
+    pub rows: Vec<RankedCell>,
+    /// Token of the next page; empty at the end.
+    pub next_page_token: String,
+    /// Cells that pass the filter in this snapshot.
+    pub total: u64,
+    /// Cells screened in this snapshot.
+    pub cells_done: u64,
+}
+
+/// A cell given by names, without a job.
+#[derive(Clone, Debug, PartialEq)]
+pub struct CellQuery {
+    /// Substrate: SMILES.
+    pub substrate: String,
+    /// Base: library name.
+    pub base: String,
+    /// Electrophile: library name or SMILES.
+    pub electrophile: String,
+    /// Solvent: library name.
+    pub solvent: String,
+    /// Temperature, °C.
+    pub temperature_c: f64,
+    /// Temperature of the deprotonation; `None`: that of the reaction.
+    pub formation_temperature_c: Option<f64>,
+    /// Equivalents of base; default 1.1.
+    pub base_equiv: f64,
+    /// Equivalents of electrophile; default 1.2.
+    pub electrophile_equiv: f64,
+    /// Time, h; default 16.
+    pub time_h: f64,
+    /// Dosing time, min; default 10.
+    pub dosing_min: f64,
+    /// Concentration, mol/L; default 0.2.
+    pub concentration_m: f64,
+    /// Order of addition by name; `None`: usual for the base.
+    pub addition: Option<String>,
+    /// Yield that makes a hit; default 0.5.
+    pub yield_at_least: f64,
+}
+
+/// Which cell to explain.
+#[derive(Clone, Debug, PartialEq)]
+pub enum ExplainTarget {
+    /// A cell of a job.
+    OfJob {
+        /// Job.
+        job: String,
+        /// Cell number.
+        cell: u64,
+    },
+    /// A cell given by names.
+    Given(CellQuery),
+}
+
+/// Acidic sites of a molecule.
+#[derive(Clone, Debug)]
+pub struct SiteReport {
+    /// SMILES as given.
+    pub smiles: String,
+    /// Sites, most acidic first, with the pKa in the medium asked for (DMSO scale where none).
+    pub sites: Vec<AcidSite>,
+}
+
+/// A reagent of the library.
+#[derive(Clone, Debug, PartialEq)]
+pub struct ReagentRow {
+    /// `base`, `solvent` or `electrophile`.
+    pub kind: String,
+    /// Name.
+    pub name: String,
+    /// Other names.
+    pub synonyms: Vec<String>,
+    /// CAS number.
+    pub cas: String,
+    /// SMILES.
+    pub smiles: String,
+    /// What the model knows of it, in a line (pKa of the conjugate acid, permittivity, ...).
+    pub facts: String,
+    /// GHS H-codes; empty: unknown.
+    pub h_codes: Vec<String>,
+}

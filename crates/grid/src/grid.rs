@@ -1,0 +1,211 @@
+//! A campaign as a lattice of cells that can be scored.
+
+use std::ops::Range;
+use std::sync::Arc;
+
+use enolattice_model::{Cell, Conditions, Fingerprint, Model};
+
+use crate::lattice::Lattice;
+use crate::pairs::{PairsOfSubstrate, RecentPairs};
+use crate::{BlockId, Campaign, CellDigits, CellId, Columns, GridError, Segment, fingerprint};
+
+/// A campaign as a lattice of numbered cells.
+#[derive(Debug)]
+pub struct Grid {
+    campaign: Campaign,
+    model: Arc<Model>,
+    lattice: Lattice,
+    pairs: RecentPairs,
+}
+
+impl Grid {
+    /// A lattice with one segment that holds all.
+    ///
+    /// # Errors
+    /// [`GridError::EmptyAxis`], [`GridError::TooLarge`].
+    pub fn new(campaign: Campaign, model: Arc<Model>) -> Result<Grid, GridError> {
+        let lattice = Lattice::new(campaign.sizes()?)?;
+        let pairs = RecentPairs::new(campaign.electrophiles.len());
+        Ok(Grid { campaign, model, lattice, pairs })
+    }
+
+    /// The campaign.
+    pub fn campaign(&self) -> &Campaign {
+        &self.campaign
+    }
+
+    /// The model.
+    pub fn model(&self) -> &Arc<Model> {
+        &self.model
+    }
+
+    /// The numbering.
+    pub fn lattice(&self) -> &Lattice {
+        &self.lattice
+    }
+
+    /// Fingerprint of the campaign: the same axes and values give the same fingerprint.
+    ///
+    /// SHA-256 over the canonical content: structures, library names, numbers and target in
+    /// the order of the axes; titles and names of substrates do not count.
+    pub fn fingerprint(&self) -> Fingerprint {
+        fingerprint::of(&self.campaign)
+    }
+
+    /// Number of cells.
+    pub fn cells(&self) -> u64 {
+        self.lattice.cells()
+    }
+
+    /// Segments.
+    pub fn segments(&self) -> &[Segment] {
+        self.lattice.segments()
+    }
+
+    /// All blocks in order.
+    pub fn blocks(&self) -> impl Iterator<Item = BlockId> + '_ {
+        self.lattice.blocks()
+    }
+
+    /// Numbers of the cells of a block; empty if there is no such block.
+    pub fn block_cells(&self, block: BlockId) -> Range<u64> {
+        self.lattice.block_cells(block)
+    }
+
+    /// Block that holds a cell.
+    pub fn block_of(&self, cell: CellId) -> Option<BlockId> {
+        self.lattice.block_of(cell)
+    }
+
+    /// Digits of a cell.
+    pub fn digits(&self, cell: CellId) -> Option<CellDigits> {
+        self.lattice.digits(cell)
+    }
+
+    /// The cell, prepared for the model.
+    pub fn cell(&self, cell: CellId) -> Option<Cell> {
+        Some(Walk::start(self, cell)?.cell)
+    }
+
+    /// Scores all cells of a block, in the order of their numbers; none if there is no such block.
+    ///
+    /// Pairs (substrate × electrophile) are prepared once and kept for the next blocks. Threads
+    /// may score different blocks at once: the columns do not depend on who scores what.
+    pub fn score(&self, block: BlockId) -> Columns {
+        let cells = self.block_cells(block);
+        let mut columns = Columns::with_capacity((cells.end - cells.start) as usize);
+        let Some(mut walk) = Walk::start(self, CellId(cells.start)) else {
+            return columns;
+        };
+        for number in cells.clone() {
+            if number > cells.start {
+                walk.step();
+            }
+            columns.push(&self.model.score(&walk.cell, self.campaign.yield_at_least));
+        }
+        columns
+    }
+}
+
+/// A walk through the cells of one segment that changes only what moves.
+///
+/// Reference counts are shared by all threads, so a reagent is cloned when its digit moves and
+/// not for each cell.
+struct Walk<'g> {
+    grid: &'g Grid,
+    segment: &'g Segment,
+    digits: [u32; 13],
+    pairs: Arc<PairsOfSubstrate>,
+    cell: Cell,
+}
+
+impl<'g> Walk<'g> {
+    fn start(grid: &'g Grid, cell: CellId) -> Option<Walk<'g>> {
+        let (segment, offset) = grid.lattice.locate(cell)?;
+        let segment = &grid.segments()[segment];
+        let digits = segment.digits(offset);
+        let [substrate, electrophile, base, solvent, ..] = digits.map(|digit| digit as usize);
+        let campaign = &grid.campaign;
+        let pairs = grid.pairs.of(digits[0]);
+        let cell = Cell {
+            substrate: campaign.substrates[substrate].clone(),
+            base: campaign.bases[base].clone(),
+            electrophile: campaign.electrophiles[electrophile].clone(),
+            solvent: campaign.solvents[solvent].clone(),
+            pair: grid.pair(&pairs, &digits),
+            conditions: campaign.conditions(&digits),
+        };
+        Some(Walk { grid, segment, digits, pairs, cell })
+    }
+
+    fn step(&mut self) {
+        let slowest = self.segment.advance(&mut self.digits);
+        let campaign = &self.grid.campaign;
+        let [substrate, electrophile, base, solvent, ..] = self.digits.map(|digit| digit as usize);
+        if slowest == 0 {
+            self.cell.substrate = campaign.substrates[substrate].clone();
+            self.pairs = self.grid.pairs.of(self.digits[0]);
+        }
+        if slowest <= 1 {
+            self.cell.electrophile = campaign.electrophiles[electrophile].clone();
+            self.cell.pair = self.grid.pair(&self.pairs, &self.digits);
+        }
+        if slowest <= 2 {
+            self.cell.base = campaign.bases[base].clone();
+        }
+        if slowest <= 3 {
+            self.cell.solvent = campaign.solvents[solvent].clone();
+        }
+        self.cell.conditions = campaign.conditions(&self.digits);
+    }
+}
+
+impl Grid {
+    fn pair(&self, pairs: &PairsOfSubstrate, digits: &[u32; 13]) -> Arc<enolattice_model::Pair> {
+        let substrate = &self.campaign.substrates[digits[0] as usize];
+        let electrophile = &self.campaign.electrophiles[digits[1] as usize];
+        pairs.with(digits[1], || self.model.pair(substrate, electrophile))
+    }
+}
+
+impl Campaign {
+    /// Number of values on each axis, in the order of [`crate::AXES`].
+    fn sizes(&self) -> Result<[u32; 13], GridError> {
+        let sizes = [
+            self.substrates.len(),
+            self.electrophiles.len(),
+            self.bases.len(),
+            self.solvents.len(),
+            1, // additives: none
+            self.temperature_c.len(),
+            self.formation_temperature_c.len(),
+            self.base_equiv.len(),
+            self.electrophile_equiv.len(),
+            self.concentration_m.len(),
+            self.time_h.len(),
+            self.dosing_min.len(),
+            self.addition.len(),
+        ];
+        if sizes.iter().any(|size| u32::try_from(*size).is_err()) {
+            return Err(GridError::TooLarge);
+        }
+        Ok(sizes.map(|size| size as u32))
+    }
+
+    /// Conditions of the cell with these digits.
+    fn conditions(&self, digits: &[u32; 13]) -> Conditions {
+        let [.., temperature, formation, base, electrophile, concentration, time, dosing, addition] =
+            digits.map(|digit| digit as usize);
+        let temperature_c = self.temperature_c[temperature];
+        Conditions {
+            temperature_c,
+            formation_temperature_c: self.formation_temperature_c[formation].unwrap_or(temperature_c),
+            base_equiv: self.base_equiv[base],
+            electrophile_equiv: self.electrophile_equiv[electrophile],
+            concentration_m: self.concentration_m[concentration],
+            time_h: self.time_h[time],
+            dosing_min: self.dosing_min[dosing],
+            addition: self.addition[addition],
+        }
+    }
+}

@@ -1,0 +1,119 @@
+//! What a user asks for, as read: names, SMILES and numbers, each with its place in the input.
+
+use serde::{Deserialize, Serialize};
+
+use crate::InputError;
+
+/// Where a value was written, for error messages.
+#[derive(Clone, Debug, Default, PartialEq, Eq, Serialize, Deserialize)]
+pub struct Place {
+    /// File name as the user gave it; empty over gRPC.
+    pub file: String,
+    /// Line from 1; 0 where unknown.
+    pub line: u32,
+    /// Column heading or key path, e.g. `smiles` or `substrates[3].smiles`.
+    pub field: String,
+}
+
+/// A named reagent of the library or a SMILES.
+#[derive(Clone, Debug, Default, PartialEq, Serialize, Deserialize)]
+pub struct Entry {
+    /// Name in the library or given by the user; empty where only a SMILES is given.
+    pub name: String,
+    /// SMILES; empty where the name is to be looked up.
+    pub smiles: String,
+    /// Where it was written.
+    pub place: Place,
+}
+
+/// A substrate.
+#[derive(Clone, Debug, Default, PartialEq, Serialize, Deserialize)]
+pub struct SubstrateEntry {
+    /// Name; the SMILES where none is given.
+    pub name: String,
+    /// SMILES.
+    pub smiles: String,
+    /// The laboratory's own pKa on the DMSO scale.
+    pub pka_dmso: Option<f64>,
+    /// Its standard uncertainty.
+    pub pka_sigma: Option<f64>,
+    /// Where it was written.
+    pub place: Place,
+}
+
+/// An axis of library reagents.
+#[derive(Clone, Debug, Default, PartialEq, Serialize, Deserialize)]
+pub struct AxisSpec {
+    /// Take the whole library.
+    pub all: bool,
+    /// Entries, in order.
+    pub entries: Vec<Entry>,
+}
+
+/// Values of the condition axes, as written. Empty: the default of the axis.
+#[derive(Clone, Debug, Default, PartialEq, Serialize, Deserialize)]
+pub struct ConditionsSpec {
+    /// Temperature of the reaction, °C.
+    pub temperature_c: Vec<f64>,
+    /// Temperature of the deprotonation, °C; empty: that of the reaction.
+    pub formation_temperature_c: Vec<f64>,
+    /// Base, equivalents.
+    pub base_equiv: Vec<f64>,
+    /// Electrophile, equivalents.
+    pub electrophile_equiv: Vec<f64>,
+    /// Substrate, mol/L.
+    pub concentration_m: Vec<f64>,
+    /// Time, h.
+    pub time_h: Vec<f64>,
+    /// Dosing time of the electrophile, min.
+    pub dosing_min: Vec<f64>,
+    /// Order of addition, by name; empty: the usual one of each base.
+    pub addition: Vec<String>,
+}
+
+/// What counts as a hit.
+#[derive(Clone, Debug, Default, PartialEq, Serialize, Deserialize)]
+pub struct TargetSpec {
+    /// Yield that makes a hit, 0–1.
+    pub yield_at_least: Option<f64>,
+}
+
+/// A campaign as read.
+#[derive(Clone, Debug, Default, PartialEq, Serialize, Deserialize)]
+pub struct CampaignSpec {
+    /// Title.
+    pub title: String,
+    /// Substrates.
+    pub substrates: Vec<SubstrateEntry>,
+    /// Bases.
+    pub bases: AxisSpec,
+    /// Electrophiles.
+    pub electrophiles: AxisSpec,
+    /// Solvents; mixtures have their place here (one solvent a value is allowed yet).
+    pub solvents: AxisSpec,
+    /// Additives; empty means none, the only value allowed yet.
+    pub additives: AxisSpec,
+    /// Conditions.
+    pub conditions: ConditionsSpec,
+    /// Target.
+    pub target: TargetSpec,
+}
+
+/// The bytes of a campaign file and of the files it names, by the names it uses.
+#[derive(Clone, Debug, Default)]
+pub struct Sources {
+    /// Name of the campaign file.
+    pub campaign_name: String,
+    /// Its text.
+    pub campaign: String,
+    /// Files that it names.
+    pub files: std::collections::BTreeMap<String, Vec<u8>>,
+}
+
+/// Reads a campaign from TOML and the files it names; reports all faults at once.
+///
+/// # Errors
+/// Every fault, with file, line, field, value, reason and remedy.
+pub fn read(sources: &Sources) -> Result<CampaignSpec, Vec<InputError>> {
+    unimplemented!("{sources:?}")
+}

@@ -1,0 +1,217 @@
+//! The form of the estimate: increments with pairwise saturation.
+
+use std::collections::HashMap;
+
+/// How the charge that an increment takes up saturates with that of others.
+#[derive(Clone, Copy, Debug, PartialEq, Eq, PartialOrd, Ord, Hash)]
+pub enum Uptake {
+    /// C=O, C=S, C=N groups.
+    Carbonyl,
+    /// C≡N and N≡C.
+    Nitrile,
+    /// S(O)n and P=O groups.
+    Sulfonyl,
+    /// Nitro.
+    Nitro,
+    /// Cationic groups.
+    Onium,
+    /// Aryl, vinyl, alkynyl.
+    Aryl,
+    /// Groups bound through a heteroatom.
+    Heteroatom,
+}
+
+/// What a coefficient does in the estimate.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub enum Role {
+    /// pKa of the class without corrections; one for each site.
+    Anchor,
+    /// Increment a that lowers the pKa, with saturation.
+    Group(Uptake),
+    /// Correction b that is added as often as its descriptor counts.
+    Term,
+    /// Saturation κ between two increments.
+    Saturation,
+}
+
+impl Role {
+    /// Reads the role as the tables write it.
+    pub fn parse(text: &str) -> Option<Role> {
+        Some(match text {
+            "anchor" => Role::Anchor,
+            "term" => Role::Term,
+            "saturation" => Role::Saturation,
+            "group carbonyl" => Role::Group(Uptake::Carbonyl),
+            "group nitrile" => Role::Group(Uptake::Nitrile),
+            "group sulfonyl" => Role::Group(Uptake::Sulfonyl),
+            "group nitro" => Role::Group(Uptake::Nitro),
+            "group onium" => Role::Group(Uptake::Onium),
+            "group aryl" => Role::Group(Uptake::Aryl),
+            "group heteroatom" => Role::Group(Uptake::Heteroatom),
+            _ => return None,
+        })
+    }
+}
+
+/// Name of the saturation κ between two increments.
+fn saturation(first: Uptake, second: Uptake) -> &'static str {
+    use Uptake::*;
+    let pair = (first.min(second), first.max(second));
+    match pair {
+        (_, Heteroatom) => "heteroatom with any",
+        (Onium, _) | (_, Onium) => "onium with any",
+        (Nitro, _) | (_, Nitro) => "nitro with any",
+        (Aryl, Aryl) => "aryl with aryl",
+        (Carbonyl, Aryl) => "aryl with carbonyl",
+        (Nitrile, Aryl) => "aryl with nitrile",
+        (_, Aryl) => "aryl with sulfonyl",
+        (Carbonyl, Carbonyl) => "carbonyl with carbonyl",
+        (Carbonyl, _) => "carbonyl with nitrile or sulfonyl",
+        _ => "nitrile or sulfonyl among themselves",
+    }
+}
+
+/// A pair of increments that saturate each other.
+#[derive(Clone, Copy, Debug, PartialEq)]
+struct Pair {
+    first: usize,
+    second: usize,
+    kappa: usize,
+    count: f64,
+}
+
+/// The estimate of one site as a function of the coefficients.
+///
+/// `pKa = Σ p·x − Σ a·x + Σ_pairs κ·a_i·a_j/100 + Σ b·x`, with one anchor p, increments a
+/// of the groups on the site, saturation κ and corrections b; x are the descriptors.
+#[derive(Clone, Debug, Default, PartialEq)]
+pub struct Contribution {
+    /// Coefficient with the factor by which it enters linearly.
+    linear: Vec<(usize, f64)>,
+    pairs: Vec<Pair>,
+    /// Descriptors without a coefficient.
+    unknown: usize,
+}
+
+impl Contribution {
+    /// pKa for these coefficients.
+    pub fn value(&self, coefficients: &[f64]) -> f64 {
+        let linear: f64 = self
+            .linear
+            .iter()
+            .map(|(i, factor)| factor * coefficients[*i])
+            .sum();
+        let saturation: f64 = self
+            .pairs
+            .iter()
+            .map(|pair| {
+                pair.count
+                    * coefficients[pair.kappa]
+                    * coefficients[pair.first]
+                    * coefficients[pair.second]
+                    / 100.0
+            })
+            .sum();
+        linear + saturation
+    }
+
+    /// ∂pKa/∂coefficient, as (coefficient, slope); a coefficient may occur several times.
+    pub fn slopes(&self, coefficients: &[f64]) -> Vec<(usize, f64)> {
+        let mut slopes = self.linear.clone();
+        for pair in &self.pairs {
+            let (a, b) = (coefficients[pair.first], coefficients[pair.second]);
+            let kappa = pair.count * coefficients[pair.kappa] / 100.0;
+            slopes.push((pair.first, kappa * b));
+            slopes.push((pair.second, kappa * a));
+            slopes.push((pair.kappa, pair.count * a * b / 100.0));
+        }
+        slopes
+    }
+
+    /// Indices of the coefficients that enter, without those of saturation.
+    pub fn used(&self) -> impl Iterator<Item = usize> + '_ {
+        self.linear.iter().map(|(i, _)| *i)
+    }
+
+    /// Indices of the saturation coefficients that enter.
+    pub fn saturations(&self) -> impl Iterator<Item = usize> + '_ {
+        self.pairs.iter().map(|pair| pair.kappa)
+    }
+
+    /// Number of descriptors for which there is no coefficient.
+    pub fn unknown(&self) -> usize {
+        self.unknown
+    }
+
+    /// Coefficient and factor of each linear part, by coefficient.
+    pub(crate) fn linear(&self) -> &[(usize, f64)] {
+        &self.linear
+    }
+}
+
+/// The list of coefficients by name: turns descriptors into contributions.
+#[derive(Clone, Debug)]
+pub struct Form {
+    roles: Vec<Role>,
+    index: HashMap<String, usize>,
+}
+
+impl Form {
+    /// A form over coefficients of these names and roles, in this order.
+    pub fn new<'a>(coefficients: impl Iterator<Item = (&'a str, Role)>) -> Form {
+        let mut form = Form {
+            roles: Vec::new(),
+            index: HashMap::new(),
+        };
+        for (i, (name, role)) in coefficients.enumerate() {
+            form.roles.push(role);
+            form.index.insert(name.to_owned(), i);
+        }
+        form
+    }
+
+    /// The estimate for a site with these descriptors.
+    pub fn contribution(&self, descriptors: &[(&'static str, f64)]) -> Contribution {
+        let mut contribution = Contribution::default();
+        let mut groups: Vec<(usize, Uptake, f64)> = Vec::new();
+        for (name, x) in descriptors {
+            let Some(&i) = self.index.get(*name) else {
+                contribution.unknown += 1;
+                continue;
+            };
+            match self.roles[i] {
+                Role::Group(uptake) => {
+                    contribution.linear.push((i, -x));
+                    groups.push((i, uptake, *x));
+                }
+                _ => contribution.linear.push((i, *x)),
+            }
+        }
+        contribution.linear.sort_by_key(|(i, _)| *i);
+        contribution.pairs = self.pairs(&groups);
+        contribution
+    }
+
+    fn pairs(&self, groups: &[(usize, Uptake, f64)]) -> Vec<Pair> {
+        let mut pairs = Vec::new();
+        for (k, (first, first_uptake, x)) in groups.iter().enumerate() {
+            for (second, second_uptake, y) in &groups[k..] {
+                let count = if first == second {
+                    x * (x - 1.0) / 2.0
+                } else {
+                    x * y
+                };
+                let kappa = self.index.get(saturation(*first_uptake, *second_uptake));
+                if let Some(kappa) = kappa.filter(|_| count > 0.0) {
+                    pairs.push(Pair {
+                        first: *first,
+                        second: *second,
+                        kappa: *kappa,
+                        count,
+                    });
+                }
+            }
+        }
+        pairs
+    }
+}

@@ -1,0 +1,114 @@
+//! Everything about one cell, with sources.
+
+use crate::{Caution, Channel, Origin};
+
+/// Everything the model has to say about one cell.
+#[derive(Clone, Debug)]
+pub struct Explanation {
+    /// Mean yield of the wanted product on substrate, 0–1; unknown where not covered.
+    pub expected_yield: Option<f64>,
+    /// Standard deviation of the yield over the uncertain parameters.
+    pub yield_sigma: Option<f64>,
+    /// Mean yield on the limiting reagent.
+    pub yield_on_limiting: Option<f64>,
+    /// Probability that the yield reaches the target.
+    pub p_hit: Option<f64>,
+    /// Thermodynamic ceiling.
+    pub feasibility: Option<f64>,
+    /// Wanted / converted.
+    pub selectivity: Option<f64>,
+    /// Yield of the stiff reference at the mean of all parameters.
+    pub reference_yield: Option<f64>,
+    /// Yield of the fast solver at the mean of all parameters.
+    pub fast_yield: Option<f64>,
+    /// Canonical SMILES of the wanted product.
+    pub product_smiles: Option<String>,
+    /// Its formula.
+    pub product_formula: Option<String>,
+    /// Its monoisotopic mass, Da.
+    pub product_mass: Option<f64>,
+    /// Canonical SMILES of the dehydrated product of an aldol adduct.
+    pub condensation_smiles: Option<String>,
+    /// Standard free energy of the deprotonation of the favoured site in the medium, kJ/mol.
+    pub delta_g_deprotonation_kj_mol: Option<f64>,
+    /// log10 K of the deprotonation.
+    pub log10_k: Option<f64>,
+    /// Fraction of the substrate that is carbanion when the electrophile comes, 0–1.
+    pub enolate_fraction: Option<f64>,
+    /// Acidic sites of all molecules of the cell.
+    pub sites: Vec<ExplainedSite>,
+    /// Rate constants that matter.
+    pub rates: Vec<ExplainedRate>,
+    /// Losses of substrate, largest first; fractions of the substrate charged.
+    pub losses: Vec<(Channel, f64)>,
+    /// Time course of the reference at the mean parameters.
+    pub course: Vec<CoursePoint>,
+    /// Cautions, severest first.
+    pub cautions: Vec<Caution>,
+    /// What limits the cell or what the model does not cover, in sentences.
+    pub limits: Vec<String>,
+    /// What a change would bring; each was computed.
+    pub advice: Vec<Advice>,
+    /// Fingerprint of the model, hexadecimal.
+    pub model: String,
+}
+
+/// An acidic site of a molecule in the cell.
+#[derive(Clone, Debug)]
+pub struct ExplainedSite {
+    /// `substrate`, `product`, `electrophile`, `solvent` or `base`.
+    pub molecule: &'static str,
+    /// Atom index from 0 in the order of the molecule's SMILES.
+    pub atom: usize,
+    /// Symbol of the element.
+    pub element: &'static str,
+    /// Hydrogens on the atom.
+    pub hydrogens: u8,
+    /// pKa on the DMSO scale.
+    pub pka_dmso: f64,
+    /// pKa in the cell's medium at its temperature.
+    pub pka_medium: f64,
+    /// Standard uncertainty of `pka_dmso`.
+    pub sigma: f64,
+    /// Measured or estimated.
+    pub origin: Origin,
+    /// Source of the value.
+    pub source: String,
+}
+
+/// A rate constant of the cell.
+#[derive(Clone, Debug)]
+pub struct ExplainedRate {
+    /// What reacts.
+    pub step: String,
+    /// log10 of the rate constant at the cell's temperature, L/(mol s) or 1/s.
+    pub log10_k: f64,
+    /// Standard uncertainty, log10 units.
+    pub sigma: f64,
+    /// Where it comes from.
+    pub source: String,
+}
+
+/// A point of the time course; amounts are fractions of the substrate charged.
+#[derive(Clone, Copy, Debug)]
+pub struct CoursePoint {
+    /// Time after the electrophile begins to be added, s.
+    pub time_s: f64,
+    /// Substrate, neutral.
+    pub substrate: f64,
+    /// All anions of the substrate.
+    pub anions: f64,
+    /// Electrophile in the pot.
+    pub electrophile: f64,
+    /// Wanted product, neutral and anion.
+    pub product: f64,
+}
+
+/// What one change of the cell would bring.
+#[derive(Clone, Debug)]
+pub struct Advice {
+    /// The change, e.g. `temperature -20 → 25 °C`.
+    pub change: String,
+    /// Expected yield after the change.
+    pub expected_yield: f64,
+}

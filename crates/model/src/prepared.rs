@@ -1,0 +1,245 @@
+//! Reagents prepared for the model: structure, acidities, reactivity.
+
+use enolattice_molecule::{
+    Bond, ElectrophilicGroup, Molecule, Product, c_product, dehydrated, heteroatom_product,
+    o_product, recognise,
+};
+use enolattice_reagents::{BaseKind, Library};
+
+use crate::acidity::{AcidSite, Origin, acid_sites};
+use crate::carbonyl::{Carbonyl, self_acceptor};
+use crate::electrophilicity::electrophilicity;
+use crate::Addition;
+
+/// Carbon sites that compete in a cell; further ones are less acidic and left out.
+pub(crate) const SITES: usize = 3;
+
+/// A laboratory's own pKa for a substrate.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub struct MeasuredPka {
+    /// pKa on the DMSO scale of the most acidic C–H.
+    pub pka_dmso: f64,
+    /// Standard uncertainty.
+    pub sigma: f64,
+}
+
+/// A carbon site of a substrate and what it is as a nucleophile.
+#[derive(Clone, Debug)]
+pub(crate) struct CarbonSite {
+    /// The site.
+    pub(crate) acid: AcidSite,
+    /// Hydrogens on all equivalent atoms.
+    pub(crate) hydrogens: f64,
+    /// Heavy neighbours of the atom: 1 for a methyl group.
+    pub(crate) degree: u8,
+    /// Carbon substituents that are no acceptors.
+    pub(crate) substituents: u8,
+    /// Branches of these substituents next to the site.
+    pub(crate) branches: u8,
+}
+
+/// A substrate with its acidic sites.
+#[derive(Clone, Debug)]
+pub struct Substrate {
+    /// Name in the campaign.
+    pub name: String,
+    /// Structure.
+    pub molecule: Molecule,
+    /// Acidic sites, most acidic first.
+    pub sites: Vec<AcidSite>,
+    /// The most acidic carbon sites.
+    pub(crate) carbon: Vec<CarbonSite>,
+    /// The most acidic heteroatom site.
+    pub(crate) heteroatom: Option<AcidSite>,
+    /// The substrate's own carbonyl group as an acceptor.
+    pub(crate) acceptor: Option<Carbonyl>,
+}
+
+impl Substrate {
+    pub(crate) fn new(
+        name: &str,
+        molecule: Molecule,
+        measured: Option<MeasuredPka>,
+        library: &Library,
+    ) -> Substrate {
+        let mut sites = acid_sites(&molecule, library);
+        if let Some(measured) = measured
+            && let Some(first) = sites.iter_mut().find(|site| site.element == 6)
+        {
+            let shift = measured.pka_dmso - first.pka_dmso;
+            first.pka_dmso += shift;
+            first.sigma = measured.sigma;
+            first.origin = Origin::Measured;
+            first.source = "measured by the laboratory, given with the campaign".to_owned();
+        }
+        let carbon: Vec<_> = sites
+            .iter()
+            .filter(|site| site.element == 6 && site.hydrogens > 0)
+            .take(SITES)
+            .map(|site| carbon_site(&molecule, site))
+            .collect();
+        let heteroatom = sites.iter().find(|site| site.element != 6 && site.hydrogens > 0).cloned();
+        let acceptor = self_acceptor(&molecule);
+        Substrate { name: name.to_owned(), molecule, sites, carbon, heteroatom, acceptor }
+    }
+
+    /// The heteroatom site, where it is more acidic than every carbon site.
+    pub(crate) fn stronger_heteroatom(&self) -> Option<&AcidSite> {
+        let heteroatom = self.heteroatom.as_ref()?;
+        let carbon = self.carbon.first().map_or(f64::INFINITY, |site| site.acid.pka_dmso);
+        (heteroatom.pka_dmso < carbon).then_some(heteroatom)
+    }
+}
+
+fn carbon_site(molecule: &Molecule, site: &AcidSite) -> CarbonSite {
+    let atoms = molecule.atoms();
+    let neighbours = molecule.neighbours(site.atom);
+    let plain = |atom: usize| {
+        atoms[atom].element == 6
+            && (atoms[atom].aromatic
+                || molecule.neighbours(atom).iter().all(|&(_, bond)| bond == Bond::Single))
+    };
+    let substituents: Vec<usize> =
+        neighbours.iter().map(|&(atom, _)| atom).filter(|&atom| plain(atom)).collect();
+    let branches: usize = substituents
+        .iter()
+        .filter(|&&atom| !atoms[atom].aromatic)
+        .map(|&atom| molecule.neighbours(atom).len().saturating_sub(2))
+        .sum();
+    CarbonSite {
+        acid: site.clone(),
+        hydrogens: f64::from(site.hydrogens) * site.equivalent.len().max(1) as f64,
+        degree: neighbours.len() as u8,
+        substituents: substituents.len() as u8,
+        branches: branches as u8,
+    }
+}
+
+/// A base.
+#[derive(Clone, Debug)]
+pub struct Base {
+    /// The library's record.
+    pub record: enolattice_reagents::Base,
+}
+
+impl Base {
+    /// `substrate into base` for metal amides of lithium, sodium and potassium, else `base into substrate`.
+    pub fn usual_addition(&self) -> Addition {
+        match self.record.kind {
+            BaseKind::Amide => Addition::SubstrateIntoBase,
+            _ => Addition::BaseIntoSubstrate,
+        }
+    }
+}
+
+/// A solvent.
+#[derive(Clone, Debug)]
+pub struct Solvent {
+    /// The library's record.
+    pub record: enolattice_reagents::Solvent,
+}
+
+impl Solvent {
+    /// Concentration of the pure solvent, mol/L.
+    pub(crate) fn concentration_m(&self) -> f64 {
+        1000.0 * self.record.density_g_ml / self.record.molar_mass_g_mol
+    }
+
+    /// Water of the usual grade, mol/L; 0 where the solvent is water.
+    pub(crate) fn water_m(&self) -> f64 {
+        const WATER_G_MOL: f64 = 18.015;
+        self.record.water_ppm * 1e-6 * 1000.0 * self.record.density_g_ml / WATER_G_MOL
+    }
+}
+
+/// An electrophile.
+#[derive(Clone, Debug)]
+pub struct Electrophile {
+    /// Name in the campaign or library; the SMILES where it has none.
+    pub name: String,
+    /// Structure.
+    pub molecule: Molecule,
+    /// Why the model does not cover it, if so.
+    pub not_covered: Option<String>,
+    /// The group that reacts.
+    pub(crate) group: Option<ElectrophilicGroup>,
+    /// Mayr's E with its source, for additions.
+    pub(crate) e: Option<(f64, f64, String)>,
+    /// The electrophile's own most acidic C–H.
+    pub(crate) acid: Option<AcidSite>,
+}
+
+impl Electrophile {
+    pub(crate) fn new(name: &str, molecule: Molecule, library: &Library) -> Electrophile {
+        let (group, not_covered) = match recognise(&molecule) {
+            Ok(group) => (Some(group), None),
+            Err(reason) => (None, Some(reason)),
+        };
+        let e = group.as_ref().and_then(|group| electrophilicity(&molecule, group, library));
+        let acid = acid_sites(&molecule, library).into_iter().find(|site| site.hydrogens > 0);
+        Electrophile { name: name.to_owned(), molecule, not_covered, group, e, acid }
+    }
+}
+
+/// The product at one site and what it can do next.
+#[derive(Clone, Debug)]
+pub(crate) struct SiteProduct {
+    /// The product.
+    pub(crate) product: Product,
+    /// Its most acidic carbon site.
+    pub(crate) carbon: Option<CarbonSite>,
+    /// Its most acidic heteroatom site.
+    pub(crate) heteroatom: Option<AcidSite>,
+    /// The α,β-unsaturated product after loss of water.
+    pub(crate) dehydrated: Option<Molecule>,
+    /// Whether the anion of this site can attack with oxygen.
+    pub(crate) has_oxygen_attack: bool,
+}
+
+/// What a substrate and an electrophile make together.
+#[derive(Clone, Debug)]
+pub struct Pair {
+    /// By carbon site of the substrate, in the same order.
+    pub(crate) by_site: Vec<Option<SiteProduct>>,
+    /// Product at the heteroatom.
+    pub(crate) by_heteroatom: Option<Molecule>,
+}
+
+impl Pair {
+    pub(crate) fn new(substrate: &Substrate, electrophile: &Electrophile, library: &Library) -> Pair {
+        let Some(group) = &electrophile.group else {
+            return Pair { by_site: vec![None; substrate.carbon.len()], by_heteroatom: None };
+        };
+        let by_site = substrate
+            .carbon
+            .iter()
+            .map(|site| site_product(substrate, site.acid.atom, electrophile, group, library))
+            .collect();
+        let by_heteroatom = substrate.heteroatom.as_ref().and_then(|site| {
+            heteroatom_product(&substrate.molecule, site.atom, &electrophile.molecule, group)
+                .ok()
+                .map(|product| product.molecule)
+        });
+        Pair { by_site, by_heteroatom }
+    }
+}
+
+fn site_product(
+    substrate: &Substrate,
+    atom: usize,
+    electrophile: &Electrophile,
+    group: &ElectrophilicGroup,
+    library: &Library,
+) -> Option<SiteProduct> {
+    let product = c_product(&substrate.molecule, atom, &electrophile.molecule, group).ok()?;
+    let sites = acid_sites(&product.molecule, library);
+    let carbon = sites
+        .iter()
+        .find(|site| site.element == 6 && site.hydrogens > 0)
+        .map(|site| carbon_site(&product.molecule, site));
+    let heteroatom = sites.iter().find(|site| site.element != 6 && site.hydrogens > 0).cloned();
+    let dehydrated = dehydrated(&product).ok().flatten();
+    let has_oxygen_attack =
+        o_product(&substrate.molecule, atom, &electrophile.molecule, group).is_ok_and(|p| p.is_some());
+    Some(SiteProduct { product, carbon, heteroatom, dehydrated, has_oxygen_attack })
+}

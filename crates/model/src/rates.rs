@@ -1,0 +1,292 @@
+//! Rate constants: proton exchange, SN2, polar additions, eliminations.
+
+use enolattice_molecule::{AlkylGroup, AnionClass, LeavingGroup};
+use enolattice_reagents::{Cation, SolventClass};
+use enolattice_units::{H, K_B, KCAL_IN_KJ, LN_10, R_KJ, kelvin, math};
+
+use crate::medium::Medium;
+use crate::parameters::{P, Values};
+
+/// log10 of the largest second-order rate constant: diffusion in a mobile solvent.
+/// Smoluchowski's 8RT/(3η) is 7·10⁹ L/(mol s) at 1 mPa s and 25 °C.
+const DIFFUSION_LIMIT: f64 = 9.5;
+/// Exchange faster than this changes no selectivity; a cap keeps the network solvable.
+const EXCHANGE_CAP: f64 = 6.0;
+/// The pKa (DMSO) at which the SN2 anchor is given.
+const SN2_ANCHOR_PKA: f64 = 22.0;
+
+/// log10 of a rate constant given at one temperature, at another.
+///
+/// `ΔH‡ = ΔG‡(T₀) + T₀·ΔS‡`, `k(T) = k_B·T/h · exp(ΔS‡/R − ΔH‡/(R·T))`
+///
+/// | argument        | unit                     |
+/// |-----------------|--------------------------|
+/// | `log10_k`       | log10 L/(mol s) or 1/s   |
+/// | `at_c`, `to_c`  | °C                       |
+/// | `entropy`       | ΔS‡, cal/(mol K)         |
+///
+/// A barrier's enthalpy below zero (diffusion-controlled) is taken as zero.
+///
+/// # Source
+/// Eyring 1935, doi:10.1063/1.1749604.
+pub(crate) fn at_temperature(log10_k: f64, at_c: f64, to_c: f64, entropy: f64) -> f64 {
+    let (t0, t1) = (kelvin(at_c), kelvin(to_c));
+    let ds = entropy * 1e-3 * KCAL_IN_KJ;
+    let dg = R_KJ * t0 * LN_10 * (math::log10(K_B * t0 / H) - log10_k);
+    let dh = (dg + t0 * ds).max(0.0);
+    log10_k + math::log10(t1 / t0) - dh / (R_KJ * LN_10) * (1.0 / t1 - 1.0 / t0)
+}
+
+/// Limits a rate constant to that of diffusion.
+pub(crate) fn diffusion_limited(log10_k: f64) -> f64 {
+    // 1/k = 1/k_reaction + 1/k_diffusion
+    log10_k - math::log10(1.0 + math::exp10(log10_k - DIFFUSION_LIMIT))
+}
+
+/// log10 k of proton transfer from a C–H acid to a base, `delta` = pKa(base's acid) − pKa(C–H).
+///
+/// `log k = k₀ + β·Δ` downhill, `k₀ − (1 − β)·|Δ|` uphill, so that forward and back keep K.
+pub(crate) fn exchange(delta: f64, class: AnionClass, medium: &Medium, values: &Values) -> f64 {
+    let beta = values.get(P::EXCHANGE_BRONSTED);
+    let solvent = if medium.is_protic() {
+        P::EXCHANGE_PROTIC
+    } else {
+        match medium.class() {
+            SolventClass::DipolarAprotic => P::EXCHANGE_DIPOLAR,
+            _ => P::EXCHANGE_APOLAR,
+        }
+    };
+    let cation = match medium.cation {
+        Cation::Lithium if medium.is_paired() => values.get(P::EXCHANGE_LITHIUM),
+        Cation::Potassium | Cation::Caesium => values.get(P::EXCHANGE_POTASSIUM),
+        _ => 0.0,
+    };
+    let nitro = if class == AnionClass::Nitronate { values.get(P::EXCHANGE_NITRO) } else { 0.0 };
+    let at_25 = values.get(solvent) + cation + nitro + beta * delta.max(0.0);
+    let downhill = at_temperature(at_25, 25.0, medium.temperature_c, values.get(P::DS_EXCHANGE));
+    let k0 = downhill.min(EXCHANGE_CAP);
+    if delta < 0.0 { k0 + (1.0 - beta) * delta } else { k0 }
+}
+
+/// A nucleophile as the rate equations see it.
+#[derive(Clone, Copy, Debug)]
+pub(crate) struct Nucleophile {
+    /// pKa of its conjugate acid on the DMSO scale.
+    pub(crate) pka_dmso: f64,
+    /// Class.
+    pub(crate) class: AnionClass,
+    /// Non-hydrogen, non-acceptor substituents on the carbanion.
+    pub(crate) substituents: u8,
+    /// Branches on these substituents.
+    pub(crate) branches: u8,
+    /// log10 units relative to a carbanion of the same pKa.
+    pub(crate) relative: f64,
+    /// Whether it is a metal enolate that aggregates; concentration of anions, mol/L.
+    pub(crate) aggregated_at_m: Option<f64>,
+}
+
+/// log10 of the share of monomer of a lithium enolate at a total concentration.
+///
+/// Solves `m + 4·K·m⁴ = c` by Newton's method; the share is m/c.
+pub(crate) fn monomer_share(concentration_m: f64, log10_k_tetramer: f64) -> f64 {
+    let k4 = 4.0 * math::exp10(log10_k_tetramer);
+    let mut m = concentration_m.min((concentration_m / k4).sqrt().sqrt());
+    for _ in 0..8 {
+        let m3 = m * m * m;
+        m -= (m + k4 * m3 * m - concentration_m) / (1.0 + 4.0 * k4 * m3);
+    }
+    math::log10(m / concentration_m)
+}
+
+/// log10 k relative to ethyl of the alkyl group in SN2.
+///
+/// # Source
+/// Streitwieser, Chem. Rev. 1956, 56, 571, averages of many reactions (from memory):
+/// methyl 30, ethyl 1, propyl 0.4, isobutyl 0.03, neopentyl 1e-5, isopropyl 0.025, allyl 40,
+/// benzyl 120; Conant, Kirner and Hussey, J. Am. Chem. Soc. 1925, 47, 488 for α-carbonyl and
+/// cyclohexyl (from memory); tertiary: no SN2, a bound.
+pub(crate) fn alkyl_group(group: AlkylGroup) -> f64 {
+    match group {
+        AlkylGroup::Methyl => 1.48,
+        AlkylGroup::Ethyl => 0.0,
+        AlkylGroup::Primary => -0.4,
+        AlkylGroup::Isobutyl => -1.5,
+        AlkylGroup::Neopentyl => -5.0,
+        AlkylGroup::Secondary => -1.6,
+        AlkylGroup::Cyclohexyl => -3.6,
+        AlkylGroup::Tertiary => -6.0,
+        AlkylGroup::Allyl | AlkylGroup::Propargyl => 1.6,
+        AlkylGroup::Benzyl => 2.1,
+        AlkylGroup::SecondaryActivated => 0.4,
+        AlkylGroup::AlphaCarbonyl => 3.0,
+    }
+}
+
+/// log10 k relative to bromide of the leaving group.
+///
+/// # Source
+/// Streitwieser, Solvolytic Displacement Reactions, 1962, and compilations in textbooks (from memory);
+/// sulfonates with enolates are slower than with hard nucleophiles.
+pub(crate) fn leaving_group(leaving: LeavingGroup) -> f64 {
+    match leaving {
+        LeavingGroup::Fluoride => -4.0,
+        LeavingGroup::Chloride => -1.7,
+        LeavingGroup::Bromide => 0.0,
+        LeavingGroup::Iodide => 0.4,
+        LeavingGroup::Tosylate => 0.1,
+        LeavingGroup::Mesylate => 0.0,
+        LeavingGroup::Triflate => 3.3,
+        LeavingGroup::Sulfate => 1.3,
+    }
+}
+
+/// log10 (kO/kC) by leaving group: harder leaving groups favour oxygen.
+///
+/// # Source
+/// Fitted to c_vs_o_alkylation (Kurts and others 1971, from memory).
+pub(crate) fn oxygen_by_leaving_group(leaving: LeavingGroup) -> f64 {
+    match leaving {
+        LeavingGroup::Iodide => -1.8,
+        LeavingGroup::Bromide => -1.0,
+        LeavingGroup::Chloride | LeavingGroup::Fluoride => -0.7,
+        _ => 0.0,
+    }
+}
+
+/// Effect of contact ion pairs and aggregates on a nucleophile, log10.
+fn pairing(nucleophile: &Nucleophile, medium: &Medium, values: &Values, aggregates: bool) -> f64 {
+    if !medium.is_paired() || nucleophile.class == AnionClass::Neutral {
+        return 0.0;
+    }
+    match medium.cation {
+        Cation::Lithium => {
+            let share = match nucleophile.aggregated_at_m {
+                Some(c) if aggregates => monomer_share(c, values.get(P::TETRAMER)),
+                _ => 0.0,
+            };
+            values.get(P::PAIRED_LITHIUM) + share
+        }
+        Cation::Sodium => values.get(P::PAIRED_SODIUM),
+        Cation::Potassium | Cation::Caesium => values.get(P::PAIRED_POTASSIUM),
+        Cation::None => values.get(P::PAIRED_ONIUM),
+    }
+}
+
+/// Whether the nucleophile is a lithium carbanion in a medium of contact pairs.
+fn is_paired_lithium(nucleophile: &Nucleophile, medium: &Medium) -> bool {
+    medium.is_paired() && medium.cation == Cation::Lithium && nucleophile.class.is_carbanion()
+}
+
+/// log10 k of substitution at saturated carbon at the medium's temperature.
+///
+/// `log k(25 °C) = k₀ + group + leaving + β·(pKa − 22) − s·shift + pairing + steric + relative`
+pub(crate) fn substitution(
+    nucleophile: &Nucleophile,
+    group: AlkylGroup,
+    leaving: LeavingGroup,
+    medium: &Medium,
+    values: &Values,
+) -> f64 {
+    let above = nucleophile.pka_dmso - SN2_ANCHOR_PKA;
+    let bronsted = if is_paired_lithium(nucleophile, medium) && above > 0.0 {
+        values.get(P::SN2_LITHIUM_BRONSTED)
+    } else {
+        values.get(P::SN2_BRONSTED)
+    };
+    let shift = medium.hydrogen_bond_shift(nucleophile.class, values).max(0.0);
+    let at_25 = values.get(P::SN2_ANCHOR)
+        + alkyl_group(group)
+        + leaving_group(leaving)
+        + bronsted * above
+        - values.get(P::SN2_SOLVATION) * shift
+        + pairing(nucleophile, medium, values, true)
+        + f64::from(nucleophile.substituents) * values.get(P::STERIC_SN2)
+        + f64::from(nucleophile.branches) * values.get(P::STERIC_BRANCH)
+        + nucleophile.relative;
+    diffusion_limited(at_temperature(at_25, 25.0, medium.temperature_c, values.get(P::DS_SN2)))
+}
+
+/// log10 k of addition to an electrophile of Mayr's E at the medium's temperature.
+///
+/// `log k(20 °C) = sN·(N + E) + pairing + steric`, `N = 8.35 + 0.78·pKa − 1.05·shift`
+///
+/// # Source
+/// Mayr and Patz, Angew. Chem. Int. Ed. Engl. 1994, 33, 938.
+pub(crate) fn addition(nucleophile: &Nucleophile, e: f64, medium: &Medium, values: &Values) -> f64 {
+    let s_n = values.get(P::MAYR_S_N);
+    let shift = medium.hydrogen_bond_shift(nucleophile.class, values).max(0.0);
+    let lithium = is_paired_lithium(nucleophile, medium);
+    let above = nucleophile.pka_dmso - SN2_ANCHOR_PKA;
+    let (pka, extra) = if lithium && above > 0.0 {
+        (SN2_ANCHOR_PKA, values.get(P::SN2_LITHIUM_BRONSTED) * above)
+    } else {
+        (nucleophile.pka_dmso, 0.0)
+    };
+    let n = values.get(P::MAYR_N_INTERCEPT) + values.get(P::MAYR_N_SLOPE) * pka
+        - values.get(P::MAYR_N_SOLVATION) * shift;
+    let at_20 = s_n * (n + e)
+        + extra
+        + pairing(nucleophile, medium, values, false)
+        + f64::from(nucleophile.substituents) * values.get(P::STERIC_POLAR)
+        + f64::from(nucleophile.branches) * values.get(P::STERIC_BRANCH)
+        + nucleophile.relative;
+    diffusion_limited(at_temperature(at_20, 20.0, medium.temperature_c, values.get(P::DS_ADDITION)))
+}
+
+/// log10 k of bimolecular elimination by a base whose acid has `pka_medium`; `None` without β hydrogens.
+pub(crate) fn elimination(
+    pka_medium: f64,
+    relative: f64,
+    group: AlkylGroup,
+    leaving: LeavingGroup,
+    beta_hydrogens: u8,
+    activated: bool,
+    medium: &Medium,
+    values: &Values,
+) -> Option<f64> {
+    if beta_hydrogens == 0 {
+        return None;
+    }
+    let by_group = match group {
+        AlkylGroup::Secondary | AlkylGroup::Cyclohexyl | AlkylGroup::SecondaryActivated => {
+            values.get(P::E2_SECONDARY)
+        }
+        AlkylGroup::Tertiary => values.get(P::E2_TERTIARY),
+        _ => 0.0,
+    };
+    let at_25 = values.get(P::E2_ANCHOR)
+        + by_group
+        + if activated { values.get(P::E2_ACTIVATED) } else { 0.0 }
+        + values.get(P::E2_LEAVING) * leaving_group(leaving)
+        + values.get(P::E2_BRONSTED) * (pka_medium - 19.9)
+        + relative;
+    Some(diffusion_limited(at_temperature(at_25, 25.0, medium.temperature_c, values.get(P::DS_SN2))))
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    #[test]
+    fn eyring_keeps_the_anchor_and_doubles_to_triples_in_ten_kelvin() {
+        assert_eq!(at_temperature(-3.0, 25.0, 25.0, -10.0), -3.0);
+        // common practice: a reaction of hours at room temperature doubles or triples in 10 K
+        let ratio = math::exp10(at_temperature(-4.0, 25.0, 35.0, -10.0) + 4.0);
+        assert!((2.0..4.0).contains(&ratio), "{ratio}");
+    }
+
+    #[test]
+    fn monomers_and_tetramers_add_up() {
+        for c in [1e-6, 1e-3, 0.1, 1.0] {
+            let m = c * math::exp10(monomer_share(c, 8.7));
+            let total = m + 4.0 * math::exp10(8.7) * m.powi(4);
+            assert!((total / c - 1.0).abs() < 1e-9, "{c}: {total}");
+        }
+    }
+
+    #[test]
+    fn diffusion_bounds_every_rate() {
+        assert!(diffusion_limited(30.0) <= DIFFUSION_LIMIT);
+        assert!((diffusion_limited(2.0) - 2.0).abs() < 1e-6);
+    }
+}

@@ -1,0 +1,185 @@
+//! Substituent constants: Hammett σ through an aromatic ring, Charton σI through single bonds.
+
+use super::group::{Group, beyond, group};
+use crate::{Bond, Molecule};
+
+/// How the reaction centre is joined to the ring, hence which para constants apply.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub(crate) enum Conjugation {
+    /// The charge reaches the ring: σ⁻ for acceptors.
+    Direct,
+    /// A carbonyl stands between: σp.
+    Insulated,
+}
+
+/// (σm, σp, σ⁻).
+///
+/// Hansch, Leo, Taft, Chem. Rev. 1991, 91, 165 (from memory, rounded).
+fn constants(of: Group) -> (f64, f64, f64) {
+    use Group::*;
+    match of {
+        Nitro => (0.71, 0.78, 1.27),
+        Nitrile | Isocyano => (0.56, 0.66, 1.00),
+        Triflone => (0.79, 0.93, 1.50),
+        SulfonylHalide => (0.80, 0.91, 1.40),
+        Sulfone | SulfonicEster | Thiosulfonate => (0.62, 0.70, 1.10),
+        Sulfonamide => (0.53, 0.60, 0.94),
+        Sulfoxide => (0.51, 0.47, 0.70),
+        Perfluoroalkyl => (0.43, 0.54, 0.65),
+        Aldehyde => (0.35, 0.42, 1.03),
+        AlkylKetone | ArylKetone | Thioester | AcylHalide | Thiocarbonyl => (0.36, 0.47, 0.83),
+        Ester | CarboxylicAcid | Imide => (0.36, 0.45, 0.70),
+        Amide | Thioamide | Imidoyl => (0.30, 0.36, 0.55),
+        Phosphonyl => (0.42, 0.53, 0.84),
+        Ammonium | Pyridinium | Phosphonium | Sulfonium => (0.88, 0.82, 0.77),
+        Fluoro => (0.34, 0.06, -0.03),
+        Chloro => (0.37, 0.23, 0.19),
+        Bromo => (0.39, 0.23, 0.25),
+        Iodo => (0.35, 0.18, 0.27),
+        Alkoxy => (0.12, -0.27, -0.26),
+        Amino => (-0.16, -0.83, -0.40),
+        Sulfanyl => (0.15, 0.00, 0.06),
+        Aryl => (0.06, -0.01, 0.02),
+        Vinyl => (0.06, -0.04, 0.10),
+        Alkynyl => (0.21, 0.23, 0.50),
+        Alkyl => (-0.07, -0.15, -0.17),
+        Silyl => (-0.04, -0.07, 0.00),
+        Carboxylate => (-0.10, 0.00, 0.30),
+        Imino | Phosphanyl | Other => (0.0, 0.0, 0.0),
+    }
+}
+
+/// σ of a ring nitrogen in place of CH: (ortho, meta, para), neutral.
+///
+/// Tomasik, Johnson, Adv. Heterocycl. Chem. 1976, 20, 1 (from memory, rounded).
+const AZA: (f64, f64, f64) = (0.71, 0.62, 0.95);
+/// The same for an N-oxide (from memory).
+const AZA_OXIDE: (f64, f64, f64) = (1.0, 0.9, 1.1);
+/// The same for an N-alkylpyridinium or N-protonated ring (from memory).
+const AZA_CATION: (f64, f64, f64) = (3.0, 2.1, 2.9);
+
+/// Share of the stronger of σm and σ⁻ that an ortho substituent exerts, steric effects aside.
+/// Read off the ortho-substituted phenols and anilines of the DMSO tables (0.8–1).
+const ORTHO_SHARE: f64 = 0.9;
+
+/// Sum of σ over the six-membered aromatic ring at `ipso`; 0 for other rings.
+pub(crate) fn ring_sigma(molecule: &Molecule, ipso: usize, conjugation: Conjugation) -> f64 {
+    let Some(ring) = six_ring(molecule, ipso) else {
+        return 0.0;
+    };
+    let start = ring.iter().position(|atom| *atom == ipso).unwrap_or(0);
+    (1..6)
+        .map(|step| {
+            let atom = ring[(start + step) % 6];
+            let distance = step.min(6 - step);
+            ring_nitrogen(molecule, atom, distance)
+                + substituents(molecule, ring, atom, distance, conjugation)
+        })
+        .sum()
+}
+
+/// The six-membered aromatic ring that holds `atom`.
+pub(crate) fn six_ring(molecule: &Molecule, atom: usize) -> Option<&[usize]> {
+    molecule
+        .rings()
+        .iter()
+        .find(|ring| {
+            ring.len() == 6
+                && ring.contains(&atom)
+                && ring.iter().all(|member| molecule.atoms()[*member].aromatic)
+        })
+        .map(Vec::as_slice)
+}
+
+fn ring_nitrogen(molecule: &Molecule, atom: usize, distance: usize) -> f64 {
+    let this = molecule.atoms()[atom];
+    if this.element != 7 {
+        return 0.0;
+    }
+    let oxide = molecule.neighbours(atom).iter().any(|(other, _)| {
+        molecule.atoms()[*other].element == 8 && molecule.atoms()[*other].charge < 0
+    });
+    let (ortho, meta, para) = match (this.charge > 0, oxide) {
+        (true, true) => AZA_OXIDE,
+        (true, false) => AZA_CATION,
+        _ => AZA,
+    };
+    [ortho, meta, para][distance - 1]
+}
+
+fn substituents(
+    molecule: &Molecule,
+    ring: &[usize],
+    atom: usize,
+    distance: usize,
+    conjugation: Conjugation,
+) -> f64 {
+    molecule
+        .neighbours(atom)
+        .iter()
+        .filter(|(other, bond)| *bond == Bond::Single && !ring.contains(other))
+        .map(|(other, _)| {
+            let (meta, para, para_minus) = constants(group(molecule, *other, atom));
+            let conjugated = match conjugation {
+                Conjugation::Direct if para_minus > 0.0 => para_minus,
+                _ => para,
+            };
+            match distance {
+                1 => ORTHO_SHARE * meta.max(conjugated),
+                2 => meta,
+                _ => conjugated,
+            }
+        })
+        .sum()
+}
+
+/// σI of a group.
+///
+/// Charton, Prog. Phys. Org. Chem. 1981, 13, 119 (from memory, rounded).
+fn field(of: Group) -> f64 {
+    use Group::*;
+    match of {
+        Fluoro => 0.52,
+        Chloro => 0.47,
+        Bromo => 0.45,
+        Iodo => 0.39,
+        Nitro => 0.65,
+        Nitrile | Isocyano => 0.57,
+        Triflone | SulfonylHalide => 0.70,
+        Sulfone | SulfonicEster | Sulfonamide | Thiosulfonate => 0.59,
+        Sulfoxide => 0.50,
+        Phosphonyl => 0.32,
+        Ammonium | Pyridinium | Phosphonium | Sulfonium => 0.93,
+        Aldehyde | AlkylKetone | ArylKetone | Ester | CarboxylicAcid | Imide | Thioester
+        | AcylHalide | Thiocarbonyl => 0.29,
+        Amide | Thioamide | Imidoyl => 0.27,
+        Alkoxy => 0.28,
+        Sulfanyl => 0.25,
+        Amino => 0.10,
+        Imino => 0.20,
+        Aryl => 0.11,
+        Vinyl => 0.09,
+        Alkynyl => 0.25,
+        Perfluoroalkyl => 0.42,
+        Alkyl | Silyl | Phosphanyl | Carboxylate | Other => 0.0,
+    }
+}
+
+/// Share of σI that passes a saturated carbon: σI(CH2X)/σI(X) = 0.36 (Charton, as above).
+const THROUGH_CARBON: f64 = 0.36;
+
+/// Field effect of what `carbon` carries beyond `from`: σI at the carbon itself, and what
+/// passes one more saturated carbon.
+pub(crate) fn inductive(molecule: &Molecule, carbon: usize, from: usize) -> f64 {
+    beyond(molecule, carbon, from)
+        .map(|(other, _)| match group(molecule, other, carbon) {
+            Group::Alkyl => {
+                THROUGH_CARBON
+                    * beyond(molecule, other, carbon)
+                        .map(|(far, _)| field(group(molecule, far, other)))
+                        .sum::<f64>()
+            }
+            near => field(near),
+        })
+        .sum()
+}

@@ -1,0 +1,282 @@
+//! From text to a perceived molecule: caps, lexical checks, parsing, valence, perception.
+
+use chematic::core::{self as graph, AtomIdx, BondIdx, BondOrder};
+use chematic::{chem, perception, smiles};
+
+use crate::{Atom, Bond, Molecule, StructureError, valence};
+
+/// Reads a SMILES into a perceived molecule.
+pub(crate) fn read(text: &str) -> Result<Molecule, StructureError> {
+    let given = text.trim();
+    check_text(given)?;
+    let unmapped = without_atom_maps(given);
+    let parsed = parse(given, &unmapped)?;
+    check_graph(&parsed)?;
+    perceive(given, tidy(parsed)?)
+}
+
+/// Canonical SMILES without stereo.
+pub(crate) fn flat_smiles(molecule: &graph::Molecule) -> Option<String> {
+    let parameters = smiles::RdkitSmilesParams {
+        isomeric: false,
+        ..Default::default()
+    };
+    smiles::rdkit_smiles(molecule, &parameters).ok()
+}
+
+/// The text in quotes, cut where it is long.
+fn quoted(text: &str) -> String {
+    const SHOWN: usize = 60;
+    match text.char_indices().nth(SHOWN) {
+        Some((end, _)) => format!("`{}…`", &text[..end]),
+        None => format!("`{text}`"),
+    }
+}
+
+fn check_text(given: &str) -> Result<(), StructureError> {
+    if given.is_empty() {
+        return Err(StructureError::new(
+            "the SMILES is empty",
+            "give one molecule as SMILES, for instance CC(=O)OCC",
+        ));
+    }
+    if given.len() > Molecule::MAX_BYTES {
+        return Err(StructureError::new(
+            format!(
+                "the SMILES has {} bytes, more than the {} that are read",
+                given.len(),
+                Molecule::MAX_BYTES
+            ),
+            "give a smaller molecule or a model compound with the same reacting group",
+        ));
+    }
+    if let Some((position, odd)) = given
+        .char_indices()
+        .find(|(_, c)| !c.is_ascii_graphic())
+    {
+        return Err(StructureError::new(
+            format!(
+                "{} has the character {odd:?} at position {position}, which no SMILES has",
+                quoted(given)
+            ),
+            "give the SMILES alone, without name, blanks or extensions",
+        ));
+    }
+    if given.contains('.') {
+        return Err(StructureError::new(
+            format!("{} has more than one fragment", quoted(given)),
+            "give the neutral molecule alone, without counter-ions or solvate",
+        ));
+    }
+    Ok(())
+}
+
+/// Removes `:7` from bracket atoms: map numbers mean nothing here and would end up in products.
+fn without_atom_maps(given: &str) -> String {
+    let mut kept = String::with_capacity(given.len());
+    for (i, piece) in given.split('[').enumerate() {
+        if i > 0 {
+            kept.push('[');
+        }
+        let (inside, after) = match piece.find(']') {
+            Some(end) if i > 0 => piece.split_at(end),
+            _ => ("", piece),
+        };
+        match inside.rsplit_once(':') {
+            Some((atom, map)) if map.bytes().all(|b| b.is_ascii_digit()) => kept.push_str(atom),
+            _ => kept.push_str(inside),
+        }
+        kept.push_str(after);
+    }
+    kept
+}
+
+fn parse(given: &str, unmapped: &str) -> Result<graph::Molecule, StructureError> {
+    let limits = smiles::SmilesParseLimits {
+        max_input_bytes: Molecule::MAX_BYTES,
+        max_atoms: Molecule::MAX_ATOMS,
+        max_bonds: Molecule::MAX_BONDS,
+    };
+    smiles::parse_with_limits(unmapped, &limits).map_err(|error| {
+        use smiles::SmilesError as E;
+        let (what, remedy) = match error {
+            E::ResourceLimit { resource, actual, limit } => (
+                format!("it has {actual} {resource}, more than the {limit} that are read"),
+                "give a smaller molecule or a model compound with the same reacting group",
+            ),
+            E::UnmatchedRingClosure { ring_num, .. } => (
+                format!("ring label {ring_num} is opened and never closed"),
+                "write each ring label twice",
+            ),
+            E::UnmatchedExtendedRingClosure { ring_num, .. } => (
+                format!("ring label {ring_num} is opened and never closed"),
+                "write each ring label twice",
+            ),
+            E::NestingTooDeep { .. } => (
+                "its branches are nested too deeply".to_owned(),
+                "start the SMILES at an end of the longest chain",
+            ),
+            other => (other.to_string(), "check the SMILES against a drawing"),
+        };
+        StructureError::new(format!("{} cannot be read: {what}", quoted(given)), remedy)
+    })
+}
+
+/// Refuses what parses and is no molecule.
+fn check_graph(parsed: &graph::Molecule) -> Result<(), StructureError> {
+    if parsed.atom_count() == 0 {
+        return Err(StructureError::new(
+            "the SMILES has no atoms",
+            "give one molecule as SMILES, for instance CC(=O)OCC",
+        ));
+    }
+    for (index, atom) in parsed.atoms() {
+        if atom.wildcard {
+            return Err(StructureError::new(
+                format!("atom {} is a wildcard", index.0),
+                "replace it by a definite group",
+            ));
+        }
+        if !valence::is_supported(atom.element.atomic_number()) {
+            return Err(StructureError::new(
+                format!(
+                    "atom {} is {}, an element that is not covered",
+                    index.0,
+                    atom.element.symbol()
+                ),
+                "give a molecule of H, B, C, N, O, F, Si, P, S, Cl, Se, Br and I",
+            ));
+        }
+    }
+    for (_, bond) in parsed.bonds() {
+        if bond.atom1 == bond.atom2 {
+            return Err(StructureError::new(
+                format!("atom {} is bound to itself", bond.atom1.0),
+                "write the two ends of the ring label on different atoms",
+            ));
+        }
+        let ordinary = matches!(
+            bond.order,
+            BondOrder::Single
+                | BondOrder::Double
+                | BondOrder::Triple
+                | BondOrder::Aromatic
+                | BondOrder::Up
+                | BondOrder::Down
+        );
+        if !ordinary {
+            return Err(StructureError::new(
+                format!(
+                    "the bond between atoms {} and {} is neither single, double, triple nor aromatic",
+                    bond.atom1.0, bond.atom2.0
+                ),
+                "write it with an ordinary bond order",
+            ));
+        }
+    }
+    Ok(())
+}
+
+/// Charges and bonds of hypervalent nitrogen and its kin set right, hydrogens folded, Kekulé form.
+fn tidy(mut molecule: graph::Molecule) -> Result<graph::Molecule, StructureError> {
+    let impossible = |detail: String| {
+        StructureError::new(
+            format!("no such molecule: {detail}"),
+            "check valences, charges and aromatic rings against a drawing",
+        )
+    };
+    let edits = smiles::rdkit_cleanup_edits(&molecule).map_err(|e| impossible(e.to_string()))?;
+    for edit in edits.into_iter() {
+        for (atom, charge) in edit.charges {
+            molecule.set_charge(AtomIdx(atom as u32), charge as i8);
+        }
+        for (bond, order, _) in edit.bonds {
+            molecule.set_bond_order(BondIdx(bond as u32), order);
+        }
+    }
+    if molecule
+        .atoms()
+        .any(|(_, atom)| atom.element == graph::Element::H && atom.isotope.is_none())
+    {
+        molecule = chem::remove_hydrogens(&molecule);
+    }
+    let kekule = graph::kekulize(&molecule).map_err(|e| impossible(e.detail))?;
+    let mut molecule = with_orders(&molecule, &kekule);
+    for atom in 0..molecule.atom_count() {
+        molecule.set_atom_aromatic(AtomIdx(atom as u32), false);
+    }
+    Ok(molecule)
+}
+
+fn with_orders(molecule: &graph::Molecule, orders: &graph::KekuleResult) -> graph::Molecule {
+    graph::apply_kekule(molecule, orders)
+}
+
+/// Perceives a Kekulé graph.
+pub(crate) fn perceive(
+    given: &str,
+    kekule: graph::Molecule,
+) -> Result<Molecule, StructureError> {
+    let impossible = |detail: String| {
+        StructureError::new(
+            format!("{} is no possible molecule: {detail}", quoted(given)),
+            "check valences, charges and aromatic rings against a drawing",
+        )
+    };
+    let model =
+        smiles::rdkit_sanitized_model(&kekule).map_err(|e| impossible(e.to_string()))?;
+    let canonical =
+        smiles::rdkit_canonical_smiles(&kekule).map_err(|e| impossible(e.to_string()))?;
+    let mut atoms = Vec::with_capacity(kekule.atom_count());
+    let mut isotopes = Vec::with_capacity(kekule.atom_count());
+    for (index, atom) in kekule.atoms() {
+        let Some((aromatic, charge, hydrogens)) = model.atoms[index.0 as usize] else {
+            return Err(StructureError::new(
+                format!("atom {} of {} is a lone hydrogen", index.0, quoted(given)),
+                "leave hydrogens out or write them inside the brackets of their atom",
+            ));
+        };
+        atoms.push(Atom {
+            element: atom.element.atomic_number(),
+            charge,
+            hydrogens,
+            aromatic,
+        });
+        isotopes.push(atom.isotope.unwrap_or(0));
+    }
+    let mut neighbours = vec![Vec::new(); atoms.len()];
+    for (index, bond) in kekule.bonds() {
+        let order = match model.bonds[index.0 as usize] {
+            Some(BondOrder::Single) => Bond::Single,
+            Some(BondOrder::Double) => Bond::Double,
+            Some(BondOrder::Triple) => Bond::Triple,
+            Some(BondOrder::Aromatic) => Bond::Aromatic,
+            _ => return Err(impossible("a bond of no ordinary order".to_owned())),
+        };
+        let (a, b) = (bond.atom1.0 as usize, bond.atom2.0 as usize);
+        neighbours[a].push((b, order));
+        neighbours[b].push((a, order));
+    }
+    for around in &mut neighbours {
+        around.sort_unstable_by_key(|(other, _)| *other);
+    }
+    valence::check(&kekule, &atoms)?;
+    let rings = perception::find_symmetrized_sssr(&kekule)
+        .rings()
+        .iter()
+        .map(|ring| ring.iter().map(|atom| atom.0 as usize).collect())
+        .collect();
+    let symmetry_classes = Molecule::classes_of(&atoms, &isotopes, &neighbours);
+    Ok(Molecule {
+        smiles: given.to_owned(),
+        canonical,
+        formula: chem::calc_mol_formula(&kekule),
+        exact_mass: chem::exact_mass(&kekule),
+        molar_mass: chem::rdkit_molecular_weight(&kekule),
+        atoms,
+        neighbours,
+        rings,
+        symmetry_classes,
+        kekule,
+    })
+}

@@ -1,0 +1,28 @@
+//! Jobs, blocks, ranking and pages on sled and a journal.
+//!
+//! Layout, durability and what survives what: `docs/storage.md`. The store
+//! reads no clock: where time matters it is an argument, in milliseconds since
+//! 1970-01-01 UTC. All calls block; async callers use `spawn_blocking`.
+
+mod block;
+mod database;
+mod error;
+mod id;
+mod index;
+mod job;
+mod journal;
+mod open;
+mod order;
+mod rank;
+mod record;
+mod store;
+mod token;
+
+pub use error::StoreError;
+pub use id::JobId;
+pub use job::{Created, JobRecord, JobState, NewJob, StateChange};
+pub use open::OpenReport;
+pub use order::Order;
+pub use rank::{BestPer, Filter, Position, RankRequest, Ranking};
+pub use store::{Commit, Progress, Store};
+pub use token::{PageToken, TokenError};

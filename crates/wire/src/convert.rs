@@ -1,0 +1,42 @@
+//! Conversions between the messages and the types of the engine, by subject.
+
+mod acidity;
+mod campaign;
+mod cell;
+mod enums;
+mod explanation;
+mod job;
+mod library;
+mod numbers;
+mod ranking;
+
+pub use campaign::{submission, submission_request};
+pub(crate) use cell::{given_cell, given_cell_message};
+pub use ranking::order_by;
+
+/// What of a server's answer a client does not understand.
+#[derive(Clone, Debug, PartialEq, Eq, thiserror::Error)]
+pub enum ConversionError {
+    /// A field that must be there is not.
+    #[error("the field `{field}` is missing")]
+    Missing {
+        /// Message and field.
+        field: &'static str,
+    },
+    /// A value of a closed list that this client does not know.
+    #[error("the field `{field}` has the value {value}, which this client does not know")]
+    Unknown {
+        /// Message and field.
+        field: &'static str,
+        /// The value.
+        value: String,
+    },
+    /// A number outside the range of its field.
+    #[error("the field `{field}` has the value {value}, which is out of range")]
+    OutOfRange {
+        /// Message and field.
+        field: &'static str,
+        /// The value.
+        value: i64,
+    },
+}

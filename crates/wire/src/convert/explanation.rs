@@ -1,0 +1,325 @@
+//! Explanations.
+
+use enolattice_model::{
+    Advice, Category, Caution, Channel, CoursePoint, ExplainedRate, ExplainedSite, Explanation,
+    Severity,
+};
+
+use super::{ConversionError, enums, numbers};
+use crate::v1;
+
+impl From<&Explanation> for v1::Explanation {
+    fn from(explanation: &Explanation) -> Self {
+        let e = explanation;
+        v1::Explanation {
+            expected_yield: e.expected_yield,
+            yield_sigma: e.yield_sigma,
+            yield_on_limiting: e.yield_on_limiting,
+            p_hit: e.p_hit,
+            feasibility: e.feasibility,
+            selectivity: e.selectivity,
+            reference_yield: e.reference_yield,
+            fast_yield: e.fast_yield,
+            product_smiles: e.product_smiles.clone(),
+            product_formula: e.product_formula.clone(),
+            product_mass: e.product_mass,
+            condensation_smiles: e.condensation_smiles.clone(),
+            delta_g_deprotonation_kj_mol: e.delta_g_deprotonation_kj_mol,
+            log10_k: e.log10_k,
+            enolate_fraction: e.enolate_fraction,
+            sites: e.sites.iter().map(Into::into).collect(),
+            rates: e.rates.iter().map(Into::into).collect(),
+            losses: e.losses.iter().map(loss).collect(),
+            course: e.course.iter().map(Into::into).collect(),
+            cautions: e.cautions.iter().map(Into::into).collect(),
+            limits: e.limits.clone(),
+            advice: e.advice.iter().map(Into::into).collect(),
+            model: e.model.clone(),
+        }
+    }
+}
+
+impl TryFrom<v1::Explanation> for Explanation {
+    type Error = ConversionError;
+
+    fn try_from(e: v1::Explanation) -> Result<Self, ConversionError> {
+        Ok(Explanation {
+            expected_yield: e.expected_yield,
+            yield_sigma: e.yield_sigma,
+            yield_on_limiting: e.yield_on_limiting,
+            p_hit: e.p_hit,
+            feasibility: e.feasibility,
+            selectivity: e.selectivity,
+            reference_yield: e.reference_yield,
+            fast_yield: e.fast_yield,
+            product_smiles: e.product_smiles,
+            product_formula: e.product_formula,
+            product_mass: e.product_mass,
+            condensation_smiles: e.condensation_smiles,
+            delta_g_deprotonation_kj_mol: e.delta_g_deprotonation_kj_mol,
+            log10_k: e.log10_k,
+            enolate_fraction: e.enolate_fraction,
+            sites: e.sites.into_iter().map(TryInto::try_into).collect::<Result<_, _>>()?,
+            rates: e.rates.into_iter().map(Into::into).collect(),
+            losses: e.losses.iter().map(loss_from).collect::<Result<_, _>>()?,
+            course: e.course.into_iter().map(Into::into).collect(),
+            cautions: e.cautions.into_iter().map(TryInto::try_into).collect::<Result<_, _>>()?,
+            limits: e.limits,
+            advice: e.advice.into_iter().map(Into::into).collect(),
+            model: e.model,
+        })
+    }
+}
+
+fn loss((channel, fraction): &(Channel, f64)) -> v1::Loss {
+    v1::Loss { channel: v1::Channel::from(*channel).into(), fraction: *fraction }
+}
+
+fn loss_from(loss: &v1::Loss) -> Result<(Channel, f64), ConversionError> {
+    let channel =
+        enums::from_wire::<_, v1::Channel>("Loss.channel", &Channel::ALL, loss.channel)?;
+    Ok((channel, loss.fraction))
+}
+
+const MOLECULES: [(&str, v1::CellMolecule); 5] = [
+    ("substrate", v1::CellMolecule::Substrate),
+    ("product", v1::CellMolecule::Product),
+    ("electrophile", v1::CellMolecule::Electrophile),
+    ("solvent", v1::CellMolecule::Solvent),
+    ("base", v1::CellMolecule::Base),
+];
+
+impl From<&ExplainedSite> for v1::ExplainedSite {
+    fn from(site: &ExplainedSite) -> Self {
+        let molecule = MOLECULES.iter().find(|(name, _)| *name == site.molecule);
+        v1::ExplainedSite {
+            molecule: molecule.map_or(v1::CellMolecule::Unspecified, |(_, value)| *value).into(),
+            atom: numbers::index_to_wire(site.atom),
+            element: site.element.to_owned(),
+            hydrogens: site.hydrogens.into(),
+            pka_dmso: site.pka_dmso,
+            pka_medium: site.pka_medium,
+            sigma: site.sigma,
+            origin: v1::AcidityOrigin::from(site.origin).into(),
+            source: site.source.clone(),
+        }
+    }
+}
+
+impl TryFrom<v1::ExplainedSite> for ExplainedSite {
+    type Error = ConversionError;
+
+    fn try_from(site: v1::ExplainedSite) -> Result<Self, ConversionError> {
+        let molecule = MOLECULES.iter().find(|(_, value)| *value as i32 == site.molecule);
+        let (molecule, _) = molecule.ok_or(ConversionError::Unknown {
+            field: "ExplainedSite.molecule",
+            value: site.molecule.to_string(),
+        })?;
+        Ok(ExplainedSite {
+            molecule,
+            atom: numbers::from_wire("ExplainedSite.atom", site.atom)?,
+            element: element(site.element)?,
+            hydrogens: numbers::from_wire("ExplainedSite.hydrogens", site.hydrogens)?,
+            pka_dmso: site.pka_dmso,
+            pka_medium: site.pka_medium,
+            sigma: site.sigma,
+            origin: enums::from_wire::<_, v1::AcidityOrigin>(
+                "ExplainedSite.origin",
+                &enums::ORIGINS,
+                site.origin,
+            )?,
+            source: site.source,
+        })
+    }
+}
+
+/// Elements that bear the hydrogens of an acid.
+const ELEMENTS: [&str; 19] = [
+    "H", "B", "C", "N", "O", "F", "Al", "Si", "P", "S", "Cl", "Ga", "Ge", "As", "Se", "Br", "Sn",
+    "Te", "I",
+];
+
+fn element(symbol: String) -> Result<&'static str, ConversionError> {
+    let known = ELEMENTS.iter().find(|element| **element == symbol);
+    known
+        .copied()
+        .ok_or(ConversionError::Unknown { field: "ExplainedSite.element", value: symbol })
+}
+
+impl From<&ExplainedRate> for v1::ExplainedRate {
+    fn from(rate: &ExplainedRate) -> Self {
+        v1::ExplainedRate {
+            step: rate.step.clone(),
+            log10_k: rate.log10_k,
+            sigma: rate.sigma,
+            source: rate.source.clone(),
+        }
+    }
+}
+
+impl From<v1::ExplainedRate> for ExplainedRate {
+    fn from(rate: v1::ExplainedRate) -> Self {
+        ExplainedRate {
+            step: rate.step,
+            log10_k: rate.log10_k,
+            sigma: rate.sigma,
+            source: rate.source,
+        }
+    }
+}
+
+impl From<&CoursePoint> for v1::CoursePoint {
+    fn from(point: &CoursePoint) -> Self {
+        v1::CoursePoint {
+            time_s: point.time_s,
+            substrate: point.substrate,
+            anions: point.anions,
+            electrophile: point.electrophile,
+            product: point.product,
+        }
+    }
+}
+
+impl From<v1::CoursePoint> for CoursePoint {
+    fn from(point: v1::CoursePoint) -> Self {
+        CoursePoint {
+            time_s: point.time_s,
+            substrate: point.substrate,
+            anions: point.anions,
+            electrophile: point.electrophile,
+            product: point.product,
+        }
+    }
+}
+
+impl From<&Caution> for v1::Caution {
+    fn from(caution: &Caution) -> Self {
+        v1::Caution {
+            category: v1::CautionCategory::from(caution.category).into(),
+            severity: v1::CautionSeverity::from(caution.severity).into(),
+            text: caution.text.clone(),
+        }
+    }
+}
+
+impl TryFrom<v1::Caution> for Caution {
+    type Error = ConversionError;
+
+    fn try_from(caution: v1::Caution) -> Result<Self, ConversionError> {
+        Ok(Caution {
+            category: enums::from_wire::<_, v1::CautionCategory>(
+                "Caution.category",
+                &Category::ALL,
+                caution.category,
+            )?,
+            severity: enums::from_wire::<_, v1::CautionSeverity>(
+                "Caution.severity",
+                &Severity::ALL,
+                caution.severity,
+            )?,
+            text: caution.text,
+        })
+    }
+}
+
+impl From<&Advice> for v1::Advice {
+    fn from(advice: &Advice) -> Self {
+        v1::Advice { change: advice.change.clone(), expected_yield: advice.expected_yield }
+    }
+}
+
+impl From<v1::Advice> for Advice {
+    fn from(advice: v1::Advice) -> Self {
+        Advice { change: advice.change, expected_yield: advice.expected_yield }
+    }
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+    use enolattice_model::Origin;
+
+    /// Every field has a value of its own, so that a swapped pair is seen.
+    fn explanation() -> Explanation {
+        Explanation {
+            expected_yield: Some(0.81),
+            yield_sigma: Some(0.12),
+            yield_on_limiting: Some(0.84),
+            p_hit: Some(0.9),
+            feasibility: Some(0.99),
+            selectivity: Some(0.88),
+            reference_yield: Some(0.8),
+            fast_yield: Some(0.79),
+            product_smiles: Some("CCOC(=O)C(C)Cc1ccccc1".into()),
+            product_formula: Some("C12H16O2".into()),
+            product_mass: Some(192.11503),
+            condensation_smiles: Some("CC=C".into()),
+            delta_g_deprotonation_kj_mol: Some(-31.5),
+            log10_k: Some(5.5),
+            enolate_fraction: Some(0.97),
+            sites: MOLECULES
+                .iter()
+                .map(|(molecule, _)| ExplainedSite {
+                    molecule,
+                    atom: 4,
+                    element: "S",
+                    hydrogens: 2,
+                    pka_dmso: 29.5,
+                    pka_medium: 30.1,
+                    sigma: 0.4,
+                    origin: Origin::Measured,
+                    source: "a table".into(),
+                })
+                .collect(),
+            rates: vec![ExplainedRate {
+                step: "enolate + BnBr".into(),
+                log10_k: -1.5,
+                sigma: 0.6,
+                source: "a line".into(),
+            }],
+            losses: vec![(Channel::OverAlkylation, 0.11), (Channel::SlowAttack, 0.08)],
+            course: vec![CoursePoint {
+                time_s: 60.0,
+                substrate: 0.1,
+                anions: 0.5,
+                electrophile: 0.3,
+                product: 0.4,
+            }],
+            cautions: vec![Caution {
+                category: Category::Pyrophoric,
+                severity: Severity::Warning,
+                text: "the base catches fire in air".into(),
+            }],
+            limits: vec!["the attack is slow".into()],
+            advice: vec![Advice { change: "solvent THF → DMF".into(), expected_yield: 0.86 }],
+            model: "ef".into(),
+        }
+    }
+
+    #[test]
+    fn explanations_come_back() {
+        let explanation = explanation();
+        let back =
+            Explanation::try_from(v1::Explanation::from(&explanation)).expect("converts");
+        assert_eq!(format!("{back:?}"), format!("{explanation:?}"));
+    }
+
+    #[test]
+    fn unknown_numbers_stay_unknown() {
+        let explanation =
+            Explanation { expected_yield: None, p_hit: None, log10_k: None, ..explanation() };
+        let message = v1::Explanation::from(&explanation);
+        assert_eq!(message.expected_yield, None);
+        let back = Explanation::try_from(message).expect("converts");
+        assert_eq!(format!("{back:?}"), format!("{explanation:?}"));
+    }
+
+    #[test]
+    fn unknown_values_of_closed_lists_are_named() {
+        let loss = v1::Loss { channel: 99, fraction: 0.5 };
+        assert_eq!(
+            loss_from(&loss),
+            Err(ConversionError::Unknown { field: "Loss.channel", value: "99".into() })
+        );
+    }
+}

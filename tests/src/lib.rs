@@ -1,0 +1,1 @@
+//! System tests of enolattice: see the files beside this one.

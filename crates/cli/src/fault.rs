@@ -6,6 +6,8 @@ use std::process::ExitCode;
 
 use enolattice_engine::EngineError;
 use enolattice_grid::{InputError, Place};
+use enolattice_wire::RemoteError;
+use enolattice_wire::v1::ErrorReason;
 
 use crate::output::talk;
 
@@ -74,6 +76,18 @@ impl From<EngineError> for Fault {
             EngineError::Store { .. } => Fault::Service(error.to_string()),
             EngineError::Model(_) => Fault::Job(error.to_string()),
             _ => Fault::Asked(error.to_string()),
+        }
+    }
+}
+
+impl From<RemoteError> for Fault {
+    fn from(error: RemoteError) -> Fault {
+        let reason = error.to_string();
+        match error {
+            RemoteError::Input(faults) => Fault::Input(faults),
+            RemoteError::Refused { reason: ErrorReason::ModelFailed, .. } => Fault::Job(reason),
+            error if error.is_callers_fault() => Fault::Asked(reason),
+            _ => Fault::Service(reason),
         }
     }
 }

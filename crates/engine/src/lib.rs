@@ -2,12 +2,27 @@
 //!
 //! Used embedded by the command line and behind the server, so that both give the same answer.
 
-mod face;
+mod engine;
+mod error;
+mod explain;
 mod filter;
+mod given;
+mod grids;
+mod job;
 mod nearest;
+mod open;
 mod query;
+mod rank;
+mod reagents;
+mod sites;
+mod submit;
+mod watch;
 
-pub use face::{Engine, EngineConfig, EngineError, Job, JobState, Submission};
+pub use engine::Engine;
+pub use error::EngineError;
+pub use job::{Job, JobState, Submission};
+pub use open::EngineConfig;
 pub use query::{
-    Axis, CellQuery, ExplainTarget, Order, RankPage, RankQuery, RankedCell, ReagentRow, SiteReport,
+    Axis, CellDescription, CellQuery, ExplainTarget, Order, RankPage, RankQuery, RankedCell, ReagentRow, SiteReport,
 };
+pub use sites::element_symbol;

@@ -155,6 +155,41 @@ pub enum ExplainTarget {
     Given(CellQuery),
 }
 
+/// What a cell is made of, every default filled in.
+#[derive(Clone, Debug, PartialEq)]
+pub struct CellDescription {
+    /// Number in its job; none where the cell was given by names.
+    pub cell: Option<u64>,
+    /// Substrate's name.
+    pub substrate: String,
+    /// Substrate's SMILES as given; sites count its atoms.
+    pub substrate_smiles: String,
+    /// Base's name.
+    pub base: String,
+    /// Electrophile's name.
+    pub electrophile: String,
+    /// Electrophile's SMILES as given.
+    pub electrophile_smiles: String,
+    /// Solvent's name.
+    pub solvent: String,
+    /// Temperature, °C.
+    pub temperature_c: f64,
+    /// Temperature of the deprotonation, °C.
+    pub formation_temperature_c: f64,
+    /// Equivalents of base.
+    pub base_equiv: f64,
+    /// Equivalents of electrophile.
+    pub electrophile_equiv: f64,
+    /// Concentration, mol/L.
+    pub concentration_m: f64,
+    /// Time, h.
+    pub time_h: f64,
+    /// Dosing time, min.
+    pub dosing_min: f64,
+    /// Order of addition.
+    pub addition: String,
+}
+
 /// Acidic sites of a molecule.
 #[derive(Clone, Debug)]
 pub struct SiteReport {

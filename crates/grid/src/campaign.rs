@@ -1,10 +1,19 @@
 //! A campaign whose every reagent is known and every number in range.
 
+use std::collections::HashMap;
 use std::sync::Arc;
 
 use enolattice_model::{Addition, Base, Electrophile, MeasuredPka, Model, Solvent, Substrate};
+use enolattice_molecule::Molecule;
+use rayon::prelude::*;
 
-use crate::{CampaignSpec, InputError};
+use crate::conditions::{CONDITIONS, YIELD_AT_LEAST};
+use crate::fault::Faults;
+use crate::resolve::{self, NamedStructure, in_list};
+use crate::warnings::Warnings;
+use crate::{
+    CampaignSpec, FaultCode, GridError, InputError, Lattice, Place, SubstrateEntry, entries,
+};
 
 /// A checked campaign, prepared for the model. Axes in their order.
 #[derive(Clone, Debug)]
@@ -46,9 +55,293 @@ pub struct Campaign {
 impl Campaign {
     /// Checks a specification against the model's library and prepares every reagent.
     ///
+    /// Where a campaign says nothing: 25 °C, 1.1 equivalents of base, 1.2 of electrophile,
+    /// 0.2 mol/L, 16 h, dosing in 10 min, hits from a yield of 0.5.
+    ///
     /// # Errors
     /// Every fault at once.
     pub fn new(spec: &CampaignSpec, model: &Model) -> Result<Campaign, Vec<InputError>> {
-        unimplemented!("{spec:?}{model:?}")
+        let mut faults = Faults::default();
+        let mut warnings = Warnings::default();
+        entries::check_name(&spec.title, named_place("title"), &mut faults);
+        let substrates = substrates(&spec.substrates, &mut faults);
+        let reagents = resolve::reagents(spec, model.library(), &mut faults);
+        resolve::refuse_additives(&spec.additives, &mut faults);
+        note_empty_axes(spec, &mut faults);
+        let [
+            temperature_c,
+            formation,
+            base_equiv,
+            electrophile_equiv,
+            concentration_m,
+            time_h,
+            dosing_min,
+        ] = numbers(spec, &mut faults, &mut warnings);
+        let addition = additions(&spec.conditions.addition, &mut faults, &mut warnings);
+        let yield_at_least = target(spec.target.yield_at_least, &mut faults);
+        faults.unless_any((), "")?;
+
+        let substrates = merged(
+            "substrates",
+            substrates,
+            structure_of_substrate,
+            &mut warnings,
+        );
+        let bases = merged(
+            "bases",
+            reagents.bases,
+            |base| (base.name.clone(), base.name.clone()),
+            &mut warnings,
+        );
+        let solvents = merged(
+            "solvents",
+            reagents.solvents,
+            |known| (known.name.clone(), known.name.clone()),
+            &mut warnings,
+        );
+        let electrophiles = merged(
+            "electrophiles",
+            reagents.electrophiles,
+            structure_of_electrophile,
+            &mut warnings,
+        );
+        let own_pka = substrates
+            .iter()
+            .map(|substrate| substrate.own_pka)
+            .collect();
+        let campaign = Campaign {
+            title: spec.title.clone(),
+            own_pka,
+            substrates: prepared(substrates, |s| {
+                model.substrate(&s.name, s.molecule, s.own_pka)
+            }),
+            bases: bases
+                .into_iter()
+                .map(|base| Arc::new(model.base(base)))
+                .collect(),
+            electrophiles: prepared(electrophiles, |e| model.electrophile(&e.name, e.molecule)),
+            solvents: solvents
+                .into_iter()
+                .map(|known| Arc::new(model.solvent(known)))
+                .collect(),
+            temperature_c,
+            formation_temperature_c: match formation.is_empty() {
+                true => vec![None],
+                false => formation.into_iter().map(Some).collect(),
+            },
+            base_equiv,
+            electrophile_equiv,
+            concentration_m,
+            time_h,
+            dosing_min,
+            addition,
+            yield_at_least,
+            warnings: Vec::new(),
+        };
+        warnings.of_prepared(&campaign);
+        check_size(&campaign)?;
+        Ok(Campaign {
+            warnings: warnings.into_list(),
+            ..campaign
+        })
     }
+}
+
+/// A substrate whose row is sound.
+struct Read {
+    name: String,
+    molecule: Molecule,
+    own_pka: Option<MeasuredPka>,
+}
+
+fn named_place(field: &str) -> Place {
+    Place {
+        field: field.to_owned(),
+        ..Place::default()
+    }
+}
+
+fn substrates(listed: &[SubstrateEntry], faults: &mut Faults) -> Vec<Read> {
+    let read: Vec<(Option<Read>, Faults)> = listed
+        .par_iter()
+        .enumerate()
+        .map(|(i, entry)| {
+            let mut faults = Faults::default();
+            let place = in_list(&entry.place, "substrates", i);
+            let entry = SubstrateEntry {
+                place,
+                ..entry.clone()
+            };
+            let read = entries::substrate(&entry, &mut faults).map(|(molecule, own_pka)| Read {
+                name: if entry.name.is_empty() {
+                    entry.smiles
+                } else {
+                    entry.name
+                },
+                molecule,
+                own_pka,
+            });
+            (read, faults)
+        })
+        .collect();
+    let mut sound = Vec::with_capacity(read.len());
+    for (substrate, found) in read {
+        faults.append(found);
+        sound.extend(substrate);
+    }
+    sound
+}
+
+fn note_empty_axes(spec: &CampaignSpec, faults: &mut Faults) {
+    let axes = [
+        ("substrates", spec.substrates.is_empty()),
+        ("bases", spec.bases.is_empty()),
+        ("electrophiles", spec.electrophiles.is_empty()),
+        ("solvents", spec.solvents.is_empty()),
+    ];
+    for (axis, is_empty) in axes {
+        if is_empty {
+            let remedy = "give at least one";
+            faults.note(
+                FaultCode::AxisEmpty,
+                named_place(axis),
+                "",
+                "the axis has no values",
+                remedy,
+            );
+        }
+    }
+}
+
+/// The axes of numbers, in the order of [`CONDITIONS`], with defaults where nothing is given.
+fn numbers(spec: &CampaignSpec, faults: &mut Faults, warnings: &mut Warnings) -> [Vec<f64>; 7] {
+    let axes = spec.conditions.axes();
+    std::array::from_fn(|axis| {
+        let quantity = &CONDITIONS[axis];
+        let mut values: Vec<f64> = Vec::with_capacity(axes[axis].len());
+        for (i, value) in axes[axis].iter().enumerate() {
+            match quantity.check(*value) {
+                Ok(value) if values.contains(&value) => {
+                    warnings.merged(quantity.name(), &value.to_string(), &value.to_string());
+                }
+                Ok(value) => values.push(value),
+                Err(reason) => {
+                    let place = named_place(&format!("{}[{i}]", quantity.key));
+                    let remedy = "give a number in this range";
+                    faults.note(
+                        FaultCode::ValueOutOfRange,
+                        place,
+                        &value.to_string(),
+                        reason,
+                        remedy,
+                    );
+                }
+            }
+        }
+        if axes[axis].is_empty() {
+            values.extend(quantity.default);
+        }
+        values
+    })
+}
+
+fn additions(
+    names: &[String],
+    faults: &mut Faults,
+    warnings: &mut Warnings,
+) -> Vec<Option<Addition>> {
+    let mut orders = Vec::new();
+    for (i, name) in names.iter().enumerate() {
+        let place = named_place(&format!("conditions.addition[{i}]"));
+        let Some(order) = resolve::addition(name, place, faults) else {
+            continue;
+        };
+        if orders.contains(&Some(order)) {
+            warnings.merged("addition", name, name);
+        } else {
+            orders.push(Some(order));
+        }
+    }
+    if names.is_empty() { vec![None] } else { orders }
+}
+
+fn target(yield_at_least: Option<f64>, faults: &mut Faults) -> f64 {
+    let value = yield_at_least
+        .or(YIELD_AT_LEAST.default)
+        .unwrap_or_default();
+    YIELD_AT_LEAST.check(value).unwrap_or_else(|reason| {
+        let place = named_place(YIELD_AT_LEAST.key);
+        let remedy = "give a yield in this range; 0.5 is half";
+        faults.note(
+            FaultCode::ValueOutOfRange,
+            place,
+            &value.to_string(),
+            reason,
+            remedy,
+        );
+        value
+    })
+}
+
+fn structure_of_substrate(substrate: &Read) -> (String, String) {
+    (
+        substrate.molecule.canonical().to_owned(),
+        substrate.name.clone(),
+    )
+}
+
+fn structure_of_electrophile(electrophile: &NamedStructure) -> (String, String) {
+    (
+        electrophile.molecule.canonical().to_owned(),
+        electrophile.name.clone(),
+    )
+}
+
+/// The values without those that are the same as an earlier one.
+///
+/// `identity` gives what makes two values the same, and the name of a value.
+fn merged<T>(
+    axis: &str,
+    values: Vec<T>,
+    identity: impl Fn(&T) -> (String, String),
+    warnings: &mut Warnings,
+) -> Vec<T> {
+    let mut names_by_identity: HashMap<String, String> = HashMap::new();
+    let mut kept = Vec::with_capacity(values.len());
+    for value in values {
+        let (same, name) = identity(&value);
+        match names_by_identity.get(&same) {
+            Some(first) => warnings.merged(axis, &name, first),
+            None => {
+                names_by_identity.insert(same, name);
+                kept.push(value);
+            }
+        }
+    }
+    kept
+}
+
+fn prepared<T: Send, P: Send + Sync>(
+    values: Vec<T>,
+    prepare: impl Fn(T) -> P + Sync,
+) -> Vec<Arc<P>> {
+    values
+        .into_par_iter()
+        .map(|value| Arc::new(prepare(value)))
+        .collect()
+}
+
+fn check_size(campaign: &Campaign) -> Result<(), Vec<InputError>> {
+    let mut faults = Faults::default();
+    if let Err(error @ GridError::TooLarge) = campaign.sizes().and_then(Lattice::new) {
+        let remedy = "cut an axis";
+        faults.note(
+            FaultCode::CampaignTooLarge,
+            named_place("campaign"),
+            "",
+            error.to_string(),
+            remedy,
+        );
+    }
+    faults.unless_any((), "")
 }

@@ -49,7 +49,8 @@ impl Columns {
         self.p_hit.push(to_u16(score.p_hit));
         self.selectivity.push(to_u8(score.selectivity));
         self.feasibility.push(to_u8(score.feasibility));
-        self.largest_loss.push(score.largest_loss.map_or(0, |channel| channel as u8));
+        self.largest_loss
+            .push(score.largest_loss.map_or(0, |channel| channel as u8));
         self.cautions.push(score.cautions);
     }
 
@@ -83,7 +84,11 @@ impl Columns {
         let mut bytes = Vec::with_capacity(HEAD_BYTES + CELL_BYTES * self.len());
         bytes.push(VERSION);
         bytes.extend((self.len() as u32).to_le_bytes());
-        bytes.extend(self.expected_yield.iter().flat_map(|code| code.to_le_bytes()));
+        bytes.extend(
+            self.expected_yield
+                .iter()
+                .flat_map(|code| code.to_le_bytes()),
+        );
         bytes.extend(self.p_hit.iter().flat_map(|code| code.to_le_bytes()));
         bytes.extend(&self.selectivity);
         bytes.extend(&self.feasibility);
@@ -99,10 +104,13 @@ impl Columns {
     pub fn from_bytes(bytes: &[u8]) -> Result<Columns, String> {
         let (version, rest) = bytes.split_first().ok_or("columns of no bytes at all")?;
         if *version != VERSION {
-            return Err(format!("columns of version {version}; this program reads version {VERSION}"));
+            return Err(format!(
+                "columns of version {version}; this program reads version {VERSION}"
+            ));
         }
-        let (count, rest) =
-            rest.split_first_chunk::<4>().ok_or("columns end before their number of cells")?;
+        let (count, rest) = rest
+            .split_first_chunk::<4>()
+            .ok_or("columns end before their number of cells")?;
         let cells = u32::from_le_bytes(*count) as usize;
         if rest.len() as u64 != cells as u64 * CELL_BYTES as u64 {
             return Err(format!(
@@ -125,7 +133,11 @@ impl Columns {
                 .map(|bits| u32::from_le_bytes(*bits))
                 .collect(),
         };
-        match columns.largest_loss.iter().find(|code| usize::from(**code) > Channel::ALL.len()) {
+        match columns
+            .largest_loss
+            .iter()
+            .find(|code| usize::from(**code) > Channel::ALL.len())
+        {
             Some(code) => Err(format!("columns name a channel {code} that does not exist")),
             None => Ok(columns),
         }
@@ -139,7 +151,12 @@ fn take<'b>(rest: &mut &'b [u8], bytes: usize) -> &'b [u8] {
 }
 
 fn u16s(bytes: &[u8]) -> Vec<u16> {
-    bytes.as_chunks().0.iter().map(|code| u16::from_le_bytes(*code)).collect()
+    bytes
+        .as_chunks()
+        .0
+        .iter()
+        .map(|code| u16::from_le_bytes(*code))
+        .collect()
 }
 
 fn to_u16(value: Option<f64>) -> u16 {
@@ -182,7 +199,10 @@ mod tests {
                 largest_loss: Some(Channel::WeakBase),
                 cautions: 0,
             },
-            Score { cautions: 0x8000_0001, ..Score::default() },
+            Score {
+                cautions: 0x8000_0001,
+                ..Score::default()
+            },
             Score {
                 expected_yield: Some(0.0),
                 p_hit: Some(0.0),
@@ -216,10 +236,19 @@ mod tests {
         assert_eq!(columns.len(), 4);
         for (i, expected) in cells_of_version_1().iter().enumerate() {
             let got = columns.score(i);
-            assert!(close(got.expected_yield, expected.expected_yield, 0.5 / 65534.0), "{i}");
+            assert!(
+                close(got.expected_yield, expected.expected_yield, 0.5 / 65534.0),
+                "{i}"
+            );
             assert!(close(got.p_hit, expected.p_hit, 0.5 / 65534.0), "{i}");
-            assert!(close(got.selectivity, expected.selectivity, 0.5 / 254.0), "{i}");
-            assert!(close(got.feasibility, expected.feasibility, 0.5 / 254.0), "{i}");
+            assert!(
+                close(got.selectivity, expected.selectivity, 0.5 / 254.0),
+                "{i}"
+            );
+            assert!(
+                close(got.feasibility, expected.feasibility, 0.5 / 254.0),
+                "{i}"
+            );
             assert_eq!(got.largest_loss, expected.largest_loss, "{i}");
             assert_eq!(got.cautions, expected.cautions, "{i}");
         }
@@ -228,13 +257,18 @@ mod tests {
     #[test]
     fn bytes_of_version_1_are_still_what_is_written() {
         let mut columns = Columns::default();
-        cells_of_version_1().iter().for_each(|score| columns.push(score));
+        cells_of_version_1()
+            .iter()
+            .for_each(|score| columns.push(score));
         assert_eq!(columns.to_bytes(), VERSION_1);
     }
 
     #[test]
     fn channels_are_documented_by_number() {
-        let page = include_str!("../docs/columns.md").split_whitespace().collect::<Vec<_>>().join(" ");
+        let page = include_str!("../docs/columns.md")
+            .split_whitespace()
+            .collect::<Vec<_>>()
+            .join(" ");
         for channel in Channel::ALL {
             let entry = format!(" {} {}", channel as u8, channel.name());
             assert!(page.contains(&entry), "{entry}");
@@ -262,7 +296,11 @@ mod tests {
     #[test]
     fn a_number_that_is_none_is_unknown_and_no_zero() {
         let mut columns = Columns::default();
-        columns.push(&Score { expected_yield: Some(f64::NAN), selectivity: Some(1.5), ..Score::default() });
+        columns.push(&Score {
+            expected_yield: Some(f64::NAN),
+            selectivity: Some(1.5),
+            ..Score::default()
+        });
         assert_eq!(columns.score(0).expected_yield, None);
         assert_eq!(columns.score(0).selectivity, Some(1.0));
     }
@@ -270,7 +308,10 @@ mod tests {
     #[test]
     fn damaged_bytes_are_refused() {
         for end in 0..VERSION_1.len() {
-            assert!(Columns::from_bytes(&VERSION_1[..end]).is_err(), "cut at {end}");
+            assert!(
+                Columns::from_bytes(&VERSION_1[..end]).is_err(),
+                "cut at {end}"
+            );
         }
         let mut longer = VERSION_1.to_vec();
         longer.push(0);

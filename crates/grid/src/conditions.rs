@@ -2,6 +2,8 @@
 
 use std::fmt;
 
+use crate::ConditionsSpec;
+
 /// A number that a campaign may give, with its range and default.
 #[derive(Clone, Copy, Debug, PartialEq)]
 pub(crate) struct Quantity {
@@ -20,7 +22,11 @@ pub(crate) struct Quantity {
 impl Quantity {
     /// The number as it is kept, or why it is refused. There is one zero: −0 becomes 0.
     pub(crate) fn check(&self, value: f64) -> Result<f64, String> {
-        let above = if self.above_low { value > self.low } else { value >= self.low };
+        let above = if self.above_low {
+            value > self.low
+        } else {
+            value >= self.low
+        };
         if above && value <= self.high {
             Ok(value + 0.0)
         } else {
@@ -28,7 +34,8 @@ impl Quantity {
         }
     }
 
-    fn name(&self) -> &'static str {
+    /// The last word of the key path.
+    pub(crate) fn name(&self) -> &'static str {
         self.key.rsplit('.').next().unwrap_or(self.key)
     }
 }
@@ -41,7 +48,11 @@ impl fmt::Display for Quantity {
         } else {
             write!(f, "{} to {}", self.low, self.high)?;
         }
-        if self.unit.is_empty() { Ok(()) } else { write!(f, " {}", self.unit) }
+        if self.unit.is_empty() {
+            Ok(())
+        } else {
+            write!(f, " {}", self.unit)
+        }
     }
 }
 
@@ -51,26 +62,55 @@ const fn quantity(
     (low, high): (f64, f64),
     default: Option<f64>,
 ) -> Quantity {
-    Quantity { key, unit, low, high, above_low: false, default }
+    Quantity {
+        key,
+        unit,
+        low,
+        high,
+        above_low: false,
+        default,
+    }
 }
 
 // The ranges are those of laboratory practice (common practice): the coldest bath in use is a
 // little above the melting point of pentane, the hottest block a little above the boiling point
 // of DMSO. The defaults are common practice too.
-pub(crate) const TEMPERATURE: Quantity =
-    quantity("conditions.temperature_c", "°C", (-110.0, 250.0), Some(25.0));
-pub(crate) const FORMATION_TEMPERATURE: Quantity =
-    quantity("conditions.formation_temperature_c", "°C", (-110.0, 250.0), None);
+pub(crate) const TEMPERATURE: Quantity = quantity(
+    "conditions.temperature_c",
+    "°C",
+    (-110.0, 250.0),
+    Some(25.0),
+);
+pub(crate) const FORMATION_TEMPERATURE: Quantity = quantity(
+    "conditions.formation_temperature_c",
+    "°C",
+    (-110.0, 250.0),
+    None,
+);
 pub(crate) const BASE_EQUIV: Quantity = Quantity {
     above_low: true,
-    ..quantity("conditions.base_equiv", "equivalents", (0.0, 20.0), Some(1.1))
+    ..quantity(
+        "conditions.base_equiv",
+        "equivalents",
+        (0.0, 20.0),
+        Some(1.1),
+    )
 };
 pub(crate) const ELECTROPHILE_EQUIV: Quantity = Quantity {
     above_low: true,
-    ..quantity("conditions.electrophile_equiv", "equivalents", (0.0, 20.0), Some(1.2))
+    ..quantity(
+        "conditions.electrophile_equiv",
+        "equivalents",
+        (0.0, 20.0),
+        Some(1.2),
+    )
 };
-pub(crate) const CONCENTRATION: Quantity =
-    quantity("conditions.concentration_m", "mol/L", (1e-4, 5.0), Some(0.2));
+pub(crate) const CONCENTRATION: Quantity = quantity(
+    "conditions.concentration_m",
+    "mol/L",
+    (1e-4, 5.0),
+    Some(0.2),
+);
 pub(crate) const TIME: Quantity = quantity("conditions.time_h", "h", (0.001, 720.0), Some(16.0));
 pub(crate) const DOSING: Quantity =
     quantity("conditions.dosing_min", "min", (0.0, 1440.0), Some(10.0));
@@ -79,8 +119,10 @@ pub(crate) const YIELD_AT_LEAST: Quantity =
 /// From below the strongest acids to above the alkanes on the DMSO scale.
 pub(crate) const PKA_DMSO: Quantity = quantity("pka_dmso", "", (-20.0, 60.0), None);
 /// The default is from memory: what a careful determination repeats to.
-pub(crate) const PKA_SIGMA: Quantity =
-    Quantity { above_low: true, ..quantity("pka_sigma", "", (0.0, 10.0), Some(0.3)) };
+pub(crate) const PKA_SIGMA: Quantity = Quantity {
+    above_low: true,
+    ..quantity("pka_sigma", "", (0.0, 10.0), Some(0.3))
+};
 
 /// The quantities of the table `conditions`, in the order of the axes.
 pub(crate) const CONDITIONS: [Quantity; 7] = [
@@ -93,6 +135,34 @@ pub(crate) const CONDITIONS: [Quantity; 7] = [
     DOSING,
 ];
 
+impl ConditionsSpec {
+    /// The axes of numbers, in the order of [`CONDITIONS`].
+    pub(crate) fn axes(&self) -> [&Vec<f64>; 7] {
+        [
+            &self.temperature_c,
+            &self.formation_temperature_c,
+            &self.base_equiv,
+            &self.electrophile_equiv,
+            &self.concentration_m,
+            &self.time_h,
+            &self.dosing_min,
+        ]
+    }
+
+    /// The axes of numbers, to be filled, in the order of [`CONDITIONS`].
+    pub(crate) fn axes_mut(&mut self) -> [&mut Vec<f64>; 7] {
+        [
+            &mut self.temperature_c,
+            &mut self.formation_temperature_c,
+            &mut self.base_equiv,
+            &mut self.electrophile_equiv,
+            &mut self.concentration_m,
+            &mut self.time_h,
+            &mut self.dosing_min,
+        ]
+    }
+}
+
 #[cfg(test)]
 mod tests {
     use super::*;
@@ -101,7 +171,11 @@ mod tests {
     fn ends_of_ranges_belong_to_them_unless_said_otherwise() {
         assert_eq!(TEMPERATURE.check(-110.0), Ok(-110.0));
         assert_eq!(TEMPERATURE.check(-0.0).map(f64::is_sign_positive), Ok(true));
-        assert!(TEMPERATURE.check(-110.1).is_err_and(|why| why == "temperature_c is -110 to 250 °C"));
+        assert!(
+            TEMPERATURE
+                .check(-110.1)
+                .is_err_and(|why| why == "temperature_c is -110 to 250 °C")
+        );
         assert!(BASE_EQUIV.check(0.0).is_err());
         assert_eq!(BASE_EQUIV.check(20.0), Ok(20.0));
         for quantity in CONDITIONS {

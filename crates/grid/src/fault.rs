@@ -49,6 +49,8 @@ pub enum FaultCode {
     KeyUnknown,
     /// A value of another kind than the key takes.
     ValueType,
+    /// A value that must be there is not.
+    ValueMissing,
     /// A value outside its range.
     ValueOutOfRange,
     /// A word outside the list of words allowed.
@@ -68,17 +70,18 @@ pub enum FaultCode {
     /// An axis without values.
     AxisEmpty,
     /// More cells than a campaign can have.
-    GridTooLarge,
+    CampaignTooLarge,
     /// A value that has its place but is not allowed yet.
     NotYetAllowed,
 }
 
 impl FaultCode {
     /// All codes.
-    pub const ALL: [FaultCode; 14] = [
+    pub const ALL: [FaultCode; 15] = [
         FaultCode::CampaignSyntax,
         FaultCode::KeyUnknown,
         FaultCode::ValueType,
+        FaultCode::ValueMissing,
         FaultCode::ValueOutOfRange,
         FaultCode::ValueUnknown,
         FaultCode::FileMissing,
@@ -88,9 +91,14 @@ impl FaultCode {
         FaultCode::StructureInvalid,
         FaultCode::ReagentUnknown,
         FaultCode::AxisEmpty,
-        FaultCode::GridTooLarge,
+        FaultCode::CampaignTooLarge,
         FaultCode::NotYetAllowed,
     ];
+
+    /// The code with this name.
+    pub fn from_name(name: &str) -> Option<FaultCode> {
+        FaultCode::ALL.into_iter().find(|code| code.name() == name)
+    }
 
     /// The stable name, as in [`InputError::code`] and over gRPC.
     pub fn name(self) -> &'static str {
@@ -98,6 +106,7 @@ impl FaultCode {
             FaultCode::CampaignSyntax => "CAMPAIGN_SYNTAX",
             FaultCode::KeyUnknown => "KEY_UNKNOWN",
             FaultCode::ValueType => "VALUE_TYPE",
+            FaultCode::ValueMissing => "VALUE_MISSING",
             FaultCode::ValueOutOfRange => "VALUE_OUT_OF_RANGE",
             FaultCode::ValueUnknown => "VALUE_UNKNOWN",
             FaultCode::FileMissing => "FILE_MISSING",
@@ -107,7 +116,7 @@ impl FaultCode {
             FaultCode::StructureInvalid => "STRUCTURE_INVALID",
             FaultCode::ReagentUnknown => "REAGENT_UNKNOWN",
             FaultCode::AxisEmpty => "AXIS_EMPTY",
-            FaultCode::GridTooLarge => "GRID_TOO_LARGE",
+            FaultCode::CampaignTooLarge => "CAMPAIGN_TOO_LARGE",
             FaultCode::NotYetAllowed => "NOT_YET_ALLOWED",
         }
     }
@@ -141,25 +150,47 @@ impl Faults {
         !self.0.is_empty()
     }
 
+    /// Number of faults.
+    pub(crate) fn count(&self) -> usize {
+        self.0.len()
+    }
+
     /// Takes over the faults of another list.
     pub(crate) fn append(&mut self, other: Faults) {
         self.0.extend(other.0);
     }
 
+    /// Takes over the faults of lines that have none yet: those of one line often follow from
+    /// each other.
+    pub(crate) fn append_of_other_lines(&mut self, other: Faults) {
+        let has_line = |fault: &InputError| {
+            let place = |fault: &InputError| (fault.place.file.clone(), fault.place.line);
+            self.0.iter().any(|known| place(known) == place(fault))
+        };
+        let others: Vec<InputError> = other
+            .0
+            .into_iter()
+            .filter(|fault| !has_line(fault))
+            .collect();
+        self.0.extend(others);
+    }
+
     /// The faults by file and line, those of one line in the order in which they were found.
-    ///
-    /// Files stand in the order in which they were first named.
     pub(crate) fn in_order(mut self, first_file: &str) -> Vec<InputError> {
-        self.0.sort_by(|a, b| {
-            let key = |fault: &InputError| (fault.place.file != first_file, fault.place.file.clone(), fault.place.line);
-            key(a).cmp(&key(b))
+        self.0.sort_by_cached_key(|fault| {
+            let Place { file, line, .. } = &fault.place;
+            (file != first_file, file.clone(), *line)
         });
         self.0
     }
 
     /// The value, if there is no fault.
     pub(crate) fn unless_any<T>(self, value: T, first_file: &str) -> Result<T, Vec<InputError>> {
-        if self.any() { Err(self.in_order(first_file)) } else { Ok(value) }
+        if self.any() {
+            Err(self.in_order(first_file))
+        } else {
+            Ok(value)
+        }
     }
 }
 
@@ -169,7 +200,13 @@ fn shown(value: &str) -> String {
     let mut shown: String = value
         .chars()
         .take(LONGEST)
-        .flat_map(|c| if c.is_control() { c.escape_default().collect::<Vec<_>>() } else { vec![c] })
+        .flat_map(|c| {
+            if c.is_control() {
+                c.escape_default().collect::<Vec<_>>()
+            } else {
+                vec![c]
+            }
+        })
         .collect();
     if value.chars().nth(LONGEST).is_some() {
         shown.push('…');
@@ -177,19 +214,33 @@ fn shown(value: &str) -> String {
     shown
 }
 
-/// Adds what a value of a row or table is to the place of the row or table.
+/// The place of one value of a row, whose own place names the row or another value of it.
 ///
-/// A place that already names the value keeps its field: `electrophiles.smiles[2]` is not made
-/// longer by `smiles`.
-pub(crate) fn within(place: &Place, value: &str) -> Place {
-    let last = place.field.rsplit('.').next().unwrap_or_default();
-    let last = last.split('[').next().unwrap_or_default();
-    let field = match place.field.as_str() {
-        "" => value.to_owned(),
-        field if last == value => field.to_owned(),
-        field => format!("{field}.{value}"),
+/// | place | value | place of the value |
+/// | --- | --- | --- |
+/// | none | `smiles` | `smiles` |
+/// | `substrates[3]` | `smiles` | `substrates[3].smiles` |
+/// | `substrates[3].smiles` | `pka_dmso` | `substrates[3].pka_dmso` |
+/// | `substrates.smiles[2]` | `smiles` | `substrates.smiles[2]` |
+pub fn value_of_row(row: &Place, value: &str) -> Place {
+    const VALUES: [&str; 4] = ["name", "smiles", "pka_dmso", "pka_sigma"];
+    let (head, last) = match row.field.rsplit_once('.') {
+        Some((head, last)) => (head, last),
+        None => ("", row.field.as_str()),
     };
-    Place { field, ..place.clone() }
+    let field = if last.is_empty() || head.is_empty() && VALUES.contains(&last) {
+        value.to_owned()
+    } else if VALUES.contains(&last) {
+        format!("{head}.{value}")
+    } else if last.split('[').next() == Some(value) {
+        row.field.clone()
+    } else {
+        format!("{}.{value}", row.field)
+    };
+    Place {
+        field,
+        ..row.clone()
+    }
 }
 
 #[cfg(test)]
@@ -199,7 +250,11 @@ mod tests {
     #[test]
     fn a_fault_prints_where_what_why_and_the_way_out() {
         let fault = InputError {
-            place: Place { file: "substrates.csv".into(), line: 3, field: "smiles".into() },
+            place: Place {
+                file: "substrates.csv".into(),
+                line: 3,
+                field: "smiles".into(),
+            },
             value: "C1CC".into(),
             code: FaultCode::StructureInvalid.name(),
             reason: "the ring is not closed".into(),
@@ -219,9 +274,21 @@ mod tests {
 
     #[test]
     fn a_place_names_each_value_once() {
-        let place = |field: &str| Place { field: field.into(), ..Place::default() };
-        assert_eq!(within(&place(""), "smiles").field, "smiles");
-        assert_eq!(within(&place("substrates[3]"), "smiles").field, "substrates[3].smiles");
-        assert_eq!(within(&place("electrophiles.smiles[2]"), "smiles").field, "electrophiles.smiles[2]");
+        let check = |row: &str, value: &str, expected: &str| {
+            let row = Place {
+                field: row.into(),
+                ..Place::default()
+            };
+            assert_eq!(value_of_row(&row, value).field, expected);
+        };
+        check("", "smiles", "smiles");
+        check("smiles", "pka_dmso", "pka_dmso");
+        check("substrates[3]", "smiles", "substrates[3].smiles");
+        check("substrates[3].smiles", "pka_dmso", "substrates[3].pka_dmso");
+        check(
+            "electrophiles.smiles[2]",
+            "smiles",
+            "electrophiles.smiles[2]",
+        );
     }
 }

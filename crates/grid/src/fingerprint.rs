@@ -21,19 +21,37 @@ pub(crate) fn of(campaign: &Campaign) -> Fingerprint {
         content.optional(own.map(|own| own.pka_dmso));
         content.optional(own.map(|own| own.sigma));
     }
-    content.texts(campaign.electrophiles.iter().map(|e| e.molecule.canonical()));
+    content.texts(
+        campaign
+            .electrophiles
+            .iter()
+            .map(|e| e.molecule.canonical()),
+    );
     content.texts(campaign.bases.iter().map(|base| base.record.name.as_str()));
-    content.texts(campaign.solvents.iter().map(|solvent| solvent.record.name.as_str()));
+    content.texts(
+        campaign
+            .solvents
+            .iter()
+            .map(|solvent| solvent.record.name.as_str()),
+    );
     content.count(0); // additives
     content.numbers(&campaign.temperature_c);
     content.count(campaign.formation_temperature_c.len());
-    campaign.formation_temperature_c.iter().for_each(|value| content.optional(*value));
+    campaign
+        .formation_temperature_c
+        .iter()
+        .for_each(|value| content.optional(*value));
     content.numbers(&campaign.base_equiv);
     content.numbers(&campaign.electrophile_equiv);
     content.numbers(&campaign.concentration_m);
     content.numbers(&campaign.time_h);
     content.numbers(&campaign.dosing_min);
-    content.texts(campaign.addition.iter().map(|order| order.map_or("", |order| order.name())));
+    content.texts(
+        campaign
+            .addition
+            .iter()
+            .map(|order| order.map_or("", |order| order.name())),
+    );
     content.number(campaign.yield_at_least);
     Fingerprint(content.0.finalize().into())
 }

@@ -26,7 +26,12 @@ impl Grid {
     pub fn new(campaign: Campaign, model: Arc<Model>) -> Result<Grid, GridError> {
         let lattice = Lattice::new(campaign.sizes()?)?;
         let pairs = RecentPairs::new(campaign.electrophiles.len());
-        Ok(Grid { campaign, model, lattice, pairs })
+        Ok(Grid {
+            campaign,
+            model,
+            lattice,
+            pairs,
+        })
     }
 
     /// The campaign.
@@ -135,7 +140,13 @@ impl<'g> Walk<'g> {
             pair: grid.pair(&pairs, &digits),
             conditions: campaign.conditions(&digits),
         };
-        Some(Walk { grid, segment, digits, pairs, cell })
+        Some(Walk {
+            grid,
+            segment,
+            digits,
+            pairs,
+            cell,
+        })
     }
 
     fn step(&mut self) {
@@ -170,7 +181,7 @@ impl Grid {
 
 impl Campaign {
     /// Number of values on each axis, in the order of [`crate::AXES`].
-    fn sizes(&self) -> Result<[u32; 13], GridError> {
+    pub(crate) fn sizes(&self) -> Result<[u32; 13], GridError> {
         let sizes = [
             self.substrates.len(),
             self.electrophiles.len(),
@@ -194,12 +205,22 @@ impl Campaign {
 
     /// Conditions of the cell with these digits.
     fn conditions(&self, digits: &[u32; 13]) -> Conditions {
-        let [.., temperature, formation, base, electrophile, concentration, time, dosing, addition] =
-            digits.map(|digit| digit as usize);
+        let [
+            ..,
+            temperature,
+            formation,
+            base,
+            electrophile,
+            concentration,
+            time,
+            dosing,
+            addition,
+        ] = digits.map(|digit| digit as usize);
         let temperature_c = self.temperature_c[temperature];
         Conditions {
             temperature_c,
-            formation_temperature_c: self.formation_temperature_c[formation].unwrap_or(temperature_c),
+            formation_temperature_c: self.formation_temperature_c[formation]
+                .unwrap_or(temperature_c),
             base_equiv: self.base_equiv[base],
             electrophile_equiv: self.electrophile_equiv[electrophile],
             concentration_m: self.concentration_m[concentration],

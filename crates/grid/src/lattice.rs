@@ -156,7 +156,10 @@ pub struct Segment {
 impl Segment {
     /// Number of cells.
     pub fn cells(&self) -> u64 {
-        self.ranges.iter().map(|range| u64::from(range.end - range.start)).product()
+        self.ranges
+            .iter()
+            .map(|range| u64::from(range.end - range.start))
+            .product()
     }
 
     /// Number of blocks.
@@ -236,8 +239,14 @@ impl Lattice {
             return Err(GridError::EmptyAxis { axis: AXES[axis] });
         }
         check_size(&sizes)?;
-        let segment = Segment { first_cell: 0, ranges: sizes.map(|size| 0..size) };
-        Ok(Lattice { sizes, segments: vec![segment] })
+        let segment = Segment {
+            first_cell: 0,
+            ranges: sizes.map(|size| 0..size),
+        };
+        Ok(Lattice {
+            sizes,
+            segments: vec![segment],
+        })
     }
 
     /// The same lattice after values were appended to axes: all old numbers stay.
@@ -278,7 +287,9 @@ impl Lattice {
 
     /// Number of cells.
     pub fn cells(&self) -> u64 {
-        self.segments.last().map_or(0, |last| last.first_cell + last.cells())
+        self.segments
+            .last()
+            .map_or(0, |last| last.first_cell + last.cells())
     }
 
     /// Segments, in the order of their cells.
@@ -309,19 +320,27 @@ impl Lattice {
     /// Block that holds a cell.
     pub fn block_of(&self, cell: CellId) -> Option<BlockId> {
         let (segment, offset) = self.locate(cell)?;
-        Some(BlockId { segment: segment as u32, index: (offset / CELLS_PER_BLOCK) as u32 })
+        Some(BlockId {
+            segment: segment as u32,
+            index: (offset / CELLS_PER_BLOCK) as u32,
+        })
     }
 
     /// Digits of a cell.
     pub fn digits(&self, cell: CellId) -> Option<CellDigits> {
         let (segment, offset) = self.locate(cell)?;
-        Some(CellDigits::from_array(self.segments[segment].digits(offset)))
+        Some(CellDigits::from_array(
+            self.segments[segment].digits(offset),
+        ))
     }
 
     /// The cell with these digits.
     pub fn cell_of(&self, digits: CellDigits) -> Option<CellId> {
         let digits = digits.to_array();
-        self.segments.iter().find_map(|segment| segment.cell_of(&digits)).map(CellId)
+        self.segments
+            .iter()
+            .find_map(|segment| segment.cell_of(&digits))
+            .map(CellId)
     }
 
     /// Segment of a cell and the cell's place in it.
@@ -329,14 +348,18 @@ impl Lattice {
         if cell.0 >= self.cells() {
             return None;
         }
-        let after = self.segments.partition_point(|segment| segment.first_cell <= cell.0);
+        let after = self
+            .segments
+            .partition_point(|segment| segment.first_cell <= cell.0);
         let segment = after - 1;
         Some((segment, cell.0 - self.segments[segment].first_cell))
     }
 }
 
 fn check_size(sizes: &[u32; 13]) -> Result<(), GridError> {
-    let cells = sizes.iter().try_fold(1u64, |cells, size| cells.checked_mul(u64::from(*size)));
+    let cells = sizes
+        .iter()
+        .try_fold(1u64, |cells, size| cells.checked_mul(u64::from(*size)));
     match cells {
         Some(cells) if cells < MAX_CELLS => Ok(()),
         _ => Err(GridError::TooLarge),

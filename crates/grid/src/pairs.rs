@@ -16,7 +16,9 @@ pub(crate) struct PairsOfSubstrate(Vec<OnceLock<Arc<Pair>>>);
 impl PairsOfSubstrate {
     /// The pair with one electrophile. `prepare` must not wait for another pair.
     pub(crate) fn with(&self, electrophile: u32, prepare: impl FnOnce() -> Pair) -> Arc<Pair> {
-        self.0[electrophile as usize].get_or_init(|| Arc::new(prepare())).clone()
+        self.0[electrophile as usize]
+            .get_or_init(|| Arc::new(prepare()))
+            .clone()
     }
 }
 
@@ -29,13 +31,19 @@ pub(crate) struct RecentPairs {
 
 impl RecentPairs {
     pub(crate) fn new(electrophiles: usize) -> RecentPairs {
-        RecentPairs { electrophiles, latest_first: Mutex::default() }
+        RecentPairs {
+            electrophiles,
+            latest_first: Mutex::default(),
+        }
     }
 
     /// The pairs of a substrate; they live on while someone holds them.
     pub(crate) fn of(&self, substrate: u32) -> Arc<PairsOfSubstrate> {
         // a thread that panicked cannot have left the queue half changed
-        let mut queue = self.latest_first.lock().unwrap_or_else(PoisonError::into_inner);
+        let mut queue = self
+            .latest_first
+            .lock()
+            .unwrap_or_else(PoisonError::into_inner);
         let known = queue.iter().position(|(of, _)| *of == substrate);
         let entry = known.and_then(|at| queue.remove(at)).unwrap_or_else(|| {
             let pairs = (0..self.electrophiles).map(|_| OnceLock::new()).collect();

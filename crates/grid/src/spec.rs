@@ -2,8 +2,6 @@
 
 use serde::{Deserialize, Serialize};
 
-use crate::InputError;
-
 /// Where a value was written, for error messages.
 #[derive(Clone, Debug, Default, PartialEq, Eq, Serialize, Deserialize)]
 pub struct Place {
@@ -12,6 +10,8 @@ pub struct Place {
     /// Line from 1; 0 where unknown.
     pub line: u32,
     /// Column heading or key path, e.g. `smiles` or `substrates[3].smiles`.
+    ///
+    /// The place of a whole row may leave it empty or name the row.
     pub field: String,
 }
 
@@ -48,6 +48,13 @@ pub struct AxisSpec {
     pub all: bool,
     /// Entries, in order.
     pub entries: Vec<Entry>,
+}
+
+impl AxisSpec {
+    /// Whether nothing is asked for.
+    pub fn is_empty(&self) -> bool {
+        !self.all && self.entries.is_empty()
+    }
 }
 
 /// Values of the condition axes, as written. Empty: the default of the axis.
@@ -108,12 +115,4 @@ pub struct Sources {
     pub campaign: String,
     /// Files that it names.
     pub files: std::collections::BTreeMap<String, Vec<u8>>,
-}
-
-/// Reads a campaign from TOML and the files it names; reports all faults at once.
-///
-/// # Errors
-/// Every fault, with file, line, field, value, reason and remedy.
-pub fn read(sources: &Sources) -> Result<CampaignSpec, Vec<InputError>> {
-    unimplemented!("{sources:?}")
 }

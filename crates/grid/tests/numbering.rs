@@ -114,7 +114,10 @@ fn the_substrate_is_the_slowest_digit_and_the_order_of_addition_the_fastest() {
         assert_eq!(cell, Some(CellId(1 << (12 - axis))), "{name}");
     }
     assert_eq!(lattice.blocks().count(), 2);
-    assert_eq!(lattice.digits(CellId(4096)).map(|digits| digits.substrate), Some(1));
+    assert_eq!(
+        lattice.digits(CellId(4096)).map(|digits| digits.substrate),
+        Some(1)
+    );
 }
 
 #[test]
@@ -127,7 +130,10 @@ fn an_appended_base_makes_one_segment_after_the_first() {
     assert_eq!(old.segments().len(), 2);
     assert_eq!(old.segments()[1].first_cell, 6);
     let appended: Vec<_> = (6..9)
-        .map(|cell| old.digits(CellId(cell)).map(|digits| (digits.substrate, digits.base)))
+        .map(|cell| {
+            old.digits(CellId(cell))
+                .map(|digits| (digits.substrate, digits.base))
+        })
         .collect();
     assert_eq!(appended, [Some((0, 2)), Some((1, 2)), Some((2, 2))]);
 }
@@ -141,11 +147,19 @@ fn lattices_beyond_the_numbers_are_refused() {
     sizes[1] -= 1;
     let largest = Lattice::new(sizes).expect("just below 2^44");
     assert!(largest.cells() < MAX_CELLS);
-    let last = largest.block_of(CellId(largest.cells() - 1)).expect("the last cell has a block");
+    let last = largest
+        .block_of(CellId(largest.cells() - 1))
+        .expect("the last cell has a block");
     assert_eq!(largest.block_cells(last).end, largest.cells());
     sizes[1] += 1;
     assert_eq!(largest.grown(sizes), Err(GridError::TooLarge));
     sizes[0] = 1;
-    assert_eq!(largest.grown(sizes), Err(GridError::ShrunkAxis { axis: "substrates" }));
-    assert_eq!(Lattice::new([0; 13]), Err(GridError::EmptyAxis { axis: "substrates" }));
+    assert_eq!(
+        largest.grown(sizes),
+        Err(GridError::ShrunkAxis { axis: "substrates" })
+    );
+    assert_eq!(
+        Lattice::new([0; 13]),
+        Err(GridError::EmptyAxis { axis: "substrates" })
+    );
 }

@@ -33,11 +33,17 @@ impl Carbonyl {
 ///
 /// The order of electrophilicity is aldehyde, ketone, ester (common practice).
 pub(crate) fn self_acceptor(molecule: &Molecule) -> Option<Carbonyl> {
-    let kinds: Vec<Carbonyl> =
-        (0..molecule.atoms().len()).filter_map(|atom| carbonyl_at(molecule, atom)).collect();
-    [Carbonyl::Aldehyde, Carbonyl::Ketone, Carbonyl::Ester, Carbonyl::TertAlkylEster]
-        .into_iter()
-        .find(|kind| kinds.contains(kind))
+    let kinds: Vec<Carbonyl> = (0..molecule.atoms().len())
+        .filter_map(|atom| carbonyl_at(molecule, atom))
+        .collect();
+    [
+        Carbonyl::Aldehyde,
+        Carbonyl::Ketone,
+        Carbonyl::Ester,
+        Carbonyl::TertAlkylEster,
+    ]
+    .into_iter()
+    .find(|kind| kinds.contains(kind))
 }
 
 fn carbonyl_at(molecule: &Molecule, carbon: usize) -> Option<Carbonyl> {
@@ -48,8 +54,15 @@ fn carbonyl_at(molecule: &Molecule, carbon: usize) -> Option<Carbonyl> {
     let neighbours = molecule.neighbours(carbon);
     let is_oxo = |&(atom, bond): &(usize, Bond)| bond == Bond::Double && atoms[atom].element == 8;
     neighbours.iter().find(|n| is_oxo(n))?;
-    let others: Vec<usize> = neighbours.iter().filter(|n| !is_oxo(n)).map(|&(a, _)| a).collect();
-    if others.iter().any(|&atom| !matches!(atoms[atom].element, 6 | 8)) {
+    let others: Vec<usize> = neighbours
+        .iter()
+        .filter(|n| !is_oxo(n))
+        .map(|&(a, _)| a)
+        .collect();
+    if others
+        .iter()
+        .any(|&atom| !matches!(atoms[atom].element, 6 | 8))
+    {
         return None;
     }
     match others.iter().find(|&&atom| atoms[atom].element == 8) {
@@ -61,9 +74,16 @@ fn carbonyl_at(molecule: &Molecule, carbon: usize) -> Option<Carbonyl> {
 }
 
 fn ester_of(molecule: &Molecule, carbon: usize, oxygen: usize) -> Option<Carbonyl> {
-    let (alkyl, _) = molecule.neighbours(oxygen).iter().copied().find(|&(a, _)| a != carbon)?;
+    let (alkyl, _) = molecule
+        .neighbours(oxygen)
+        .iter()
+        .copied()
+        .find(|&(a, _)| a != carbon)?;
     let atom = molecule.atoms()[alkyl];
-    let is_tertiary =
-        atom.element == 6 && !atom.aromatic && molecule.neighbours(alkyl).len() == 4;
-    Some(if is_tertiary { Carbonyl::TertAlkylEster } else { Carbonyl::Ester })
+    let is_tertiary = atom.element == 6 && !atom.aromatic && molecule.neighbours(alkyl).len() == 4;
+    Some(if is_tertiary {
+        Carbonyl::TertAlkylEster
+    } else {
+        Carbonyl::Ester
+    })
 }

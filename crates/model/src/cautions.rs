@@ -1,4 +1,25 @@
 //! Hazards of a cell.
+//!
+//! What is known to be dangerous is said; what is not said is not known. Nothing here calls
+//! anything safe: safety data sheets, local rules and qualified staff decide.
+//!
+//! The cautions of a cell are the union of four parts, each of which depends on few axes, so
+//! that a screen computes the bits of each part once and joins them cell by cell.
+
+mod base_in_solvent;
+mod electrophile;
+mod groups;
+mod statements;
+mod substrate;
+mod temperature;
+
+use enolattice_molecule::Molecule;
+use enolattice_reagents::{Base, BaseKind, NamedElectrophile, Solvent};
+
+pub use base_in_solvent::base_solvent_cautions;
+pub use electrophile::{base_electrophile_cautions, electrophile_solvent_cautions};
+pub use statements::hazard_statements;
+pub use substrate::base_substrate_cautions;
 
 /// Category of a caution.
 #[derive(Clone, Copy, Debug, PartialEq, Eq, Hash, PartialOrd, Ord)]
@@ -99,7 +120,9 @@ impl Severity {
 
     /// The highest severity in [`crate::Score::cautions`]; none without cautions.
     pub fn from_bits(cautions: u32) -> Option<Severity> {
-        Severity::ALL.into_iter().find(|severity| severity.bits() == cautions & (3 << 30))
+        Severity::ALL
+            .into_iter()
+            .find(|severity| severity.bits() == cautions & (3 << 30))
     }
 }
 
@@ -113,3 +136,90 @@ pub struct Caution {
     /// Reason, for a person.
     pub text: String,
 }
+
+impl Caution {
+    fn note(category: Category, text: impl Into<String>) -> Caution {
+        Caution {
+            category,
+            severity: Severity::Note,
+            text: text.into(),
+        }
+    }
+    fn warning(category: Category, text: impl Into<String>) -> Caution {
+        Caution {
+            category,
+            severity: Severity::Warning,
+            text: text.into(),
+        }
+    }
+    fn stop(category: Category, text: impl Into<String>) -> Caution {
+        Caution {
+            category,
+            severity: Severity::Stop,
+            text: text.into(),
+        }
+    }
+}
+
+/// All cautions of a cell, severest first, then by category.
+///
+/// The electrophile's row of the library, where it has one, brings hazard statements and a
+/// boiling point; the groups that make a molecule dangerous are read off its structure.
+pub fn cautions(
+    base: &Base,
+    electrophile: &Molecule,
+    named: Option<&NamedElectrophile>,
+    substrate: &Molecule,
+    solvent: &Solvent,
+    temperature_c: f64,
+    formation_temperature_c: f64,
+) -> Vec<Caution> {
+    let mut all = base_solvent_cautions(base, solvent, temperature_c, formation_temperature_c);
+    all.extend(electrophile_solvent_cautions(
+        electrophile,
+        named,
+        solvent,
+        temperature_c,
+    ));
+    all.extend(base_electrophile_cautions(base, electrophile));
+    all.extend(base_substrate_cautions(base, substrate));
+    all.sort_by(|a, b| {
+        let severity = b.severity.cmp(&a.severity);
+        severity
+            .then(a.category.cmp(&b.category))
+            .then_with(|| a.text.cmp(&b.text))
+    });
+    all.dedup();
+    all
+}
+
+/// The bits of cautions: those of their categories and the highest severity.
+pub fn caution_bits(cautions: &[Caution]) -> u32 {
+    let bits = cautions
+        .iter()
+        .map(|caution| caution.category.bit() | caution.severity.bits());
+    bits.fold(0, join_caution_bits)
+}
+
+/// The bits of two sets of cautions together: categories are joined, the higher severity stays.
+pub fn join_caution_bits(a: u32, b: u32) -> u32 {
+    const SEVERITY: u32 = 3 << 30;
+    ((a | b) & !SEVERITY) | (a & SEVERITY).max(b & SEVERITY)
+}
+
+/// Bases that deprotonate, eliminate or polymerise with much heat.
+fn is_strong(base: &Base) -> bool {
+    is_destroyed_by_protic_media(base)
+        || matches!(base.kind, BaseKind::Alkoxide | BaseKind::Hydroxide)
+}
+
+/// Bases that water and alcohols destroy.
+fn is_destroyed_by_protic_media(base: &Base) -> bool {
+    matches!(
+        base.kind,
+        BaseKind::Amide | BaseKind::Hydride | BaseKind::Organolithium
+    )
+}
+
+#[cfg(test)]
+mod tests;

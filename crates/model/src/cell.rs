@@ -17,8 +17,11 @@ pub enum Addition {
 
 impl Addition {
     /// All orders.
-    pub const ALL: [Addition; 3] =
-        [Addition::SubstrateIntoBase, Addition::BaseIntoSubstrate, Addition::AllTogether];
+    pub const ALL: [Addition; 3] = [
+        Addition::SubstrateIntoBase,
+        Addition::BaseIntoSubstrate,
+        Addition::AllTogether,
+    ];
 
     /// The order's name in campaigns and tables.
     pub fn name(self) -> &'static str {

@@ -89,12 +89,16 @@ impl Channel {
 
     /// The channel with this number.
     pub fn from_number(number: u8) -> Option<Channel> {
-        Channel::ALL.get(usize::from(number).checked_sub(1)?).copied()
+        Channel::ALL
+            .get(usize::from(number).checked_sub(1)?)
+            .copied()
     }
 
     /// The channel with this name.
     pub fn from_name(name: &str) -> Option<Channel> {
-        Channel::ALL.into_iter().find(|channel| channel.name() == name)
+        Channel::ALL
+            .into_iter()
+            .find(|channel| channel.name() == name)
     }
 }
 

@@ -19,22 +19,38 @@ pub(crate) fn electrophilicity(
 ) -> Option<(f64, f64, String)> {
     let by_class = match group.kind {
         ElectrophileKind::Michael {
-            acceptor, further_acceptors, beta_alkyl, beta_aryl, alpha_alkyl, ..
+            acceptor,
+            further_acceptors,
+            beta_alkyl,
+            beta_aryl,
+            alpha_alkyl,
+            ..
         } => {
-            by_acceptor(acceptor)
-                + 4.0 * f64::from(further_acceptors)
+            by_acceptor(acceptor) + 4.0 * f64::from(further_acceptors)
                 - 4.6 * f64::from(beta_alkyl)
                 - by_aryl(acceptor) * f64::from(beta_aryl)
                 - 3.7 * f64::from(alpha_alkyl)
         }
-        ElectrophileKind::Aldehyde { aromatic, hammett_sigma, .. } => {
-            if aromatic { -19.5 + 3.4 * hammett_sigma } else { -17.5 }
+        ElectrophileKind::Aldehyde {
+            aromatic,
+            hammett_sigma,
+            ..
+        } => {
+            if aromatic {
+                -19.5 + 3.4 * hammett_sigma
+            } else {
+                -17.5
+            }
         }
         _ => return None,
     };
     Some(match library.electrophilicity(molecule.canonical()) {
         Some(known) => (known.e.value, known.e.sigma, known.e.source.clone()),
-        None => (by_class, SIGMA_BY_CLASS, "estimated by class from the electrophilicities table".to_owned()),
+        None => (
+            by_class,
+            SIGMA_BY_CLASS,
+            "estimated by class from the electrophilicities table".to_owned(),
+        ),
     })
 }
 
@@ -58,5 +74,9 @@ fn by_acceptor(acceptor: Acceptor) -> f64 {
 
 /// What a β-aryl group costs: nitrostyrene −13.9 against nitroethylene −10, else cinnamates.
 fn by_aryl(acceptor: Acceptor) -> f64 {
-    if acceptor == Acceptor::Nitro { 3.9 } else { 5.5 }
+    if acceptor == Acceptor::Nitro {
+        3.9
+    } else {
+        5.5
+    }
 }

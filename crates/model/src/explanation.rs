@@ -3,7 +3,7 @@
 use crate::{Caution, Channel, Origin};
 
 /// Everything the model has to say about one cell.
-#[derive(Clone, Debug)]
+#[derive(Clone, Debug, Default)]
 pub struct Explanation {
     /// Mean yield of the wanted product on substrate, 0–1; unknown where not covered.
     pub expected_yield: Option<f64>,

@@ -3,22 +3,42 @@
 //! Does no I/O and has never heard of jobs.
 
 mod acidity;
+mod advice;
+mod carbonyl;
 mod cautions;
 mod cell;
 mod channel;
+mod electrophilicity;
+mod explain;
 mod explanation;
+mod kinetics;
+mod march;
+mod medium;
+mod model;
+mod network;
+mod outcome;
+mod parameters;
 mod prepared;
+mod program;
+mod rates;
+mod reactions;
+mod reference;
 mod score;
 mod screen;
 
 pub use acidity::{
-    AcidSite, Analogue, Analogues, Coefficient, Contribution, Form, Origin, Role, Uptake, acid_sites,
-    coefficients, estimate,
+    AcidSite, Analogue, Analogues, Coefficient, Contribution, Form, Origin, Role, Uptake,
+    acid_sites, coefficients, estimate,
 };
-pub use cautions::{Category, Caution, Severity};
+pub use cautions::{
+    Category, Caution, Severity, base_electrophile_cautions, base_solvent_cautions,
+    base_substrate_cautions, caution_bits, cautions, electrophile_solvent_cautions,
+    hazard_statements, join_caution_bits,
+};
 pub use cell::{Addition, Cell, Conditions};
 pub use channel::Channel;
 pub use explanation::{Advice, CoursePoint, ExplainedRate, ExplainedSite, Explanation};
+pub use model::{Draw, Fingerprint, Model, ModelError};
+pub use parameters::Parameter;
 pub use prepared::{Base, Electrophile, MeasuredPka, Pair, Solvent, Substrate};
 pub use score::Score;
-pub use screen::{Fingerprint, Model, ModelError};

@@ -89,7 +89,11 @@ impl Medium<'_> {
         let bonded = pka_dmso - self.hydrogen_bond_shift(class, values);
         let paired = if class == AnionClass::Neutral {
             let separation = self.reciprocal_permittivity().max(0.0);
-            if self.is_protic() { 0.0 } else { values.get(P::CHARGE_SEPARATION) * separation }
+            if self.is_protic() {
+                0.0
+            } else {
+                values.get(P::CHARGE_SEPARATION) * separation
+            }
         } else {
             let cation = match self.cation {
                 Cation::Lithium => values.get(P::PAIR_LITHIUM),

@@ -172,7 +172,13 @@ impl Values {
 
     /// Every parameter moved by its own standard normal deviate.
     pub(crate) fn moved(deviate: impl Fn(usize) -> f64) -> Values {
-        Values(PARAMETERS.iter().enumerate().map(|(i, p)| p.mean + p.sigma * deviate(i)).collect())
+        Values(
+            PARAMETERS
+                .iter()
+                .enumerate()
+                .map(|(i, p)| p.mean + p.sigma * deviate(i))
+                .collect(),
+        )
     }
 
     /// The value of a parameter.
@@ -245,7 +251,11 @@ mod tests {
         names.dedup();
         assert_eq!(names.len(), all);
         for p in PARAMETERS {
-            assert!(p.sigma > 0.0 && p.mean.is_finite() && !p.source.is_empty(), "{}", p.name);
+            assert!(
+                p.sigma > 0.0 && p.mean.is_finite() && !p.source.is_empty(),
+                "{}",
+                p.name
+            );
         }
     }
 

@@ -4,12 +4,12 @@ use enolattice_molecule::{
     Bond, ElectrophilicGroup, Molecule, Product, c_product, dehydrated, heteroatom_product,
     o_product, recognise,
 };
-use enolattice_reagents::{BaseKind, Library};
+use enolattice_reagents::{BaseKind, Library, NamedElectrophile};
 
+use crate::Addition;
 use crate::acidity::{AcidSite, Origin, acid_sites};
 use crate::carbonyl::{Carbonyl, self_acceptor};
 use crate::electrophilicity::electrophilicity;
-use crate::Addition;
 
 /// Carbon sites that compete in a cell; further ones are less acidic and left out.
 pub(crate) const SITES: usize = 3;
@@ -78,15 +78,28 @@ impl Substrate {
             .take(SITES)
             .map(|site| carbon_site(&molecule, site))
             .collect();
-        let heteroatom = sites.iter().find(|site| site.element != 6 && site.hydrogens > 0).cloned();
+        let heteroatom = sites
+            .iter()
+            .find(|site| site.element != 6 && site.hydrogens > 0)
+            .cloned();
         let acceptor = self_acceptor(&molecule);
-        Substrate { name: name.to_owned(), molecule, sites, carbon, heteroatom, acceptor }
+        Substrate {
+            name: name.to_owned(),
+            molecule,
+            sites,
+            carbon,
+            heteroatom,
+            acceptor,
+        }
     }
 
     /// The heteroatom site, where it is more acidic than every carbon site.
     pub(crate) fn stronger_heteroatom(&self) -> Option<&AcidSite> {
         let heteroatom = self.heteroatom.as_ref()?;
-        let carbon = self.carbon.first().map_or(f64::INFINITY, |site| site.acid.pka_dmso);
+        let carbon = self
+            .carbon
+            .first()
+            .map_or(f64::INFINITY, |site| site.acid.pka_dmso);
         (heteroatom.pka_dmso < carbon).then_some(heteroatom)
     }
 }
@@ -97,10 +110,16 @@ fn carbon_site(molecule: &Molecule, site: &AcidSite) -> CarbonSite {
     let plain = |atom: usize| {
         atoms[atom].element == 6
             && (atoms[atom].aromatic
-                || molecule.neighbours(atom).iter().all(|&(_, bond)| bond == Bond::Single))
+                || molecule
+                    .neighbours(atom)
+                    .iter()
+                    .all(|&(_, bond)| bond == Bond::Single))
     };
-    let substituents: Vec<usize> =
-        neighbours.iter().map(|&(atom, _)| atom).filter(|&atom| plain(atom)).collect();
+    let substituents: Vec<usize> = neighbours
+        .iter()
+        .map(|&(atom, _)| atom)
+        .filter(|&atom| plain(atom))
+        .collect();
     let branches: usize = substituents
         .iter()
         .filter(|&&atom| !atoms[atom].aromatic)
@@ -161,6 +180,8 @@ pub struct Electrophile {
     pub molecule: Molecule,
     /// Why the model does not cover it, if so.
     pub not_covered: Option<String>,
+    /// The library's row, for hazards and boiling point.
+    pub(crate) named: Option<NamedElectrophile>,
     /// The group that reacts.
     pub(crate) group: Option<ElectrophilicGroup>,
     /// Mayr's E with its source, for additions.
@@ -175,9 +196,24 @@ impl Electrophile {
             Ok(group) => (Some(group), None),
             Err(reason) => (None, Some(reason)),
         };
-        let e = group.as_ref().and_then(|group| electrophilicity(&molecule, group, library));
-        let acid = acid_sites(&molecule, library).into_iter().find(|site| site.hydrogens > 0);
-        Electrophile { name: name.to_owned(), molecule, not_covered, group, e, acid }
+        let e = group
+            .as_ref()
+            .and_then(|group| electrophilicity(&molecule, group, library));
+        let acid = acid_sites(&molecule, library)
+            .into_iter()
+            .find(|site| site.hydrogens > 0);
+        let named = library
+            .electrophile_by_structure(molecule.canonical())
+            .cloned();
+        Electrophile {
+            name: name.to_owned(),
+            molecule,
+            not_covered,
+            named,
+            group,
+            e,
+            acid,
+        }
     }
 }
 
@@ -206,9 +242,16 @@ pub struct Pair {
 }
 
 impl Pair {
-    pub(crate) fn new(substrate: &Substrate, electrophile: &Electrophile, library: &Library) -> Pair {
+    pub(crate) fn new(
+        substrate: &Substrate,
+        electrophile: &Electrophile,
+        library: &Library,
+    ) -> Pair {
         let Some(group) = &electrophile.group else {
-            return Pair { by_site: vec![None; substrate.carbon.len()], by_heteroatom: None };
+            return Pair {
+                by_site: vec![None; substrate.carbon.len()],
+                by_heteroatom: None,
+            };
         };
         let by_site = substrate
             .carbon
@@ -216,11 +259,19 @@ impl Pair {
             .map(|site| site_product(substrate, site.acid.atom, electrophile, group, library))
             .collect();
         let by_heteroatom = substrate.heteroatom.as_ref().and_then(|site| {
-            heteroatom_product(&substrate.molecule, site.atom, &electrophile.molecule, group)
-                .ok()
-                .map(|product| product.molecule)
+            heteroatom_product(
+                &substrate.molecule,
+                site.atom,
+                &electrophile.molecule,
+                group,
+            )
+            .ok()
+            .map(|product| product.molecule)
         });
-        Pair { by_site, by_heteroatom }
+        Pair {
+            by_site,
+            by_heteroatom,
+        }
     }
 }
 
@@ -237,9 +288,18 @@ fn site_product(
         .iter()
         .find(|site| site.element == 6 && site.hydrogens > 0)
         .map(|site| carbon_site(&product.molecule, site));
-    let heteroatom = sites.iter().find(|site| site.element != 6 && site.hydrogens > 0).cloned();
+    let heteroatom = sites
+        .iter()
+        .find(|site| site.element != 6 && site.hydrogens > 0)
+        .cloned();
     let dehydrated = dehydrated(&product).ok().flatten();
-    let has_oxygen_attack =
-        o_product(&substrate.molecule, atom, &electrophile.molecule, group).is_ok_and(|p| p.is_some());
-    Some(SiteProduct { product, carbon, heteroatom, dehydrated, has_oxygen_attack })
+    let has_oxygen_attack = o_product(&substrate.molecule, atom, &electrophile.molecule, group)
+        .is_ok_and(|p| p.is_some());
+    Some(SiteProduct {
+        product,
+        carbon,
+        heteroatom,
+        dehydrated,
+        has_oxygen_attack,
+    })
 }

@@ -61,11 +61,24 @@ pub(crate) fn exchange(delta: f64, class: AnionClass, medium: &Medium, values: &
         Cation::Potassium | Cation::Caesium => values.get(P::EXCHANGE_POTASSIUM),
         _ => 0.0,
     };
-    let nitro = if class == AnionClass::Nitronate { values.get(P::EXCHANGE_NITRO) } else { 0.0 };
+    let nitro = if class == AnionClass::Nitronate {
+        values.get(P::EXCHANGE_NITRO)
+    } else {
+        0.0
+    };
     let at_25 = values.get(solvent) + cation + nitro + beta * delta.max(0.0);
-    let downhill = at_temperature(at_25, 25.0, medium.temperature_c, values.get(P::DS_EXCHANGE));
+    let downhill = at_temperature(
+        at_25,
+        25.0,
+        medium.temperature_c,
+        values.get(P::DS_EXCHANGE),
+    );
     let k0 = downhill.min(EXCHANGE_CAP);
-    if delta < 0.0 { k0 + (1.0 - beta) * delta } else { k0 }
+    if delta < 0.0 {
+        k0 + (1.0 - beta) * delta
+    } else {
+        k0
+    }
 }
 
 /// A nucleophile as the rate equations see it.
@@ -193,17 +206,22 @@ pub(crate) fn substitution(
     } else {
         values.get(P::SN2_BRONSTED)
     };
-    let shift = medium.hydrogen_bond_shift(nucleophile.class, values).max(0.0);
-    let at_25 = values.get(P::SN2_ANCHOR)
-        + alkyl_group(group)
-        + leaving_group(leaving)
-        + bronsted * above
-        - values.get(P::SN2_SOLVATION) * shift
-        + pairing(nucleophile, medium, values, true)
-        + f64::from(nucleophile.substituents) * values.get(P::STERIC_SN2)
-        + f64::from(nucleophile.branches) * values.get(P::STERIC_BRANCH)
-        + nucleophile.relative;
-    diffusion_limited(at_temperature(at_25, 25.0, medium.temperature_c, values.get(P::DS_SN2)))
+    let shift = medium
+        .hydrogen_bond_shift(nucleophile.class, values)
+        .max(0.0);
+    let at_25 =
+        values.get(P::SN2_ANCHOR) + alkyl_group(group) + leaving_group(leaving) + bronsted * above
+            - values.get(P::SN2_SOLVATION) * shift
+            + pairing(nucleophile, medium, values, true)
+            + f64::from(nucleophile.substituents) * values.get(P::STERIC_SN2)
+            + f64::from(nucleophile.branches) * values.get(P::STERIC_BRANCH)
+            + nucleophile.relative;
+    diffusion_limited(at_temperature(
+        at_25,
+        25.0,
+        medium.temperature_c,
+        values.get(P::DS_SN2),
+    ))
 }
 
 /// log10 k of addition to an electrophile of Mayr's E at the medium's temperature.
@@ -214,7 +232,9 @@ pub(crate) fn substitution(
 /// Mayr and Patz, Angew. Chem. Int. Ed. Engl. 1994, 33, 938.
 pub(crate) fn addition(nucleophile: &Nucleophile, e: f64, medium: &Medium, values: &Values) -> f64 {
     let s_n = values.get(P::MAYR_S_N);
-    let shift = medium.hydrogen_bond_shift(nucleophile.class, values).max(0.0);
+    let shift = medium
+        .hydrogen_bond_shift(nucleophile.class, values)
+        .max(0.0);
     let lithium = is_paired_lithium(nucleophile, medium);
     let above = nucleophile.pka_dmso - SN2_ANCHOR_PKA;
     let (pka, extra) = if lithium && above > 0.0 {
@@ -230,13 +250,17 @@ pub(crate) fn addition(nucleophile: &Nucleophile, e: f64, medium: &Medium, value
         + f64::from(nucleophile.substituents) * values.get(P::STERIC_POLAR)
         + f64::from(nucleophile.branches) * values.get(P::STERIC_BRANCH)
         + nucleophile.relative;
-    diffusion_limited(at_temperature(at_20, 20.0, medium.temperature_c, values.get(P::DS_ADDITION)))
+    diffusion_limited(at_temperature(
+        at_20,
+        20.0,
+        medium.temperature_c,
+        values.get(P::DS_ADDITION),
+    ))
 }
 
 /// log10 k of bimolecular elimination by a base whose acid has `pka_medium`; `None` without β hydrogens.
 pub(crate) fn elimination(
     pka_medium: f64,
-    relative: f64,
     group: AlkylGroup,
     leaving: LeavingGroup,
     beta_hydrogens: u8,
@@ -256,11 +280,19 @@ pub(crate) fn elimination(
     };
     let at_25 = values.get(P::E2_ANCHOR)
         + by_group
-        + if activated { values.get(P::E2_ACTIVATED) } else { 0.0 }
+        + if activated {
+            values.get(P::E2_ACTIVATED)
+        } else {
+            0.0
+        }
         + values.get(P::E2_LEAVING) * leaving_group(leaving)
-        + values.get(P::E2_BRONSTED) * (pka_medium - 19.9)
-        + relative;
-    Some(diffusion_limited(at_temperature(at_25, 25.0, medium.temperature_c, values.get(P::DS_SN2))))
+        + values.get(P::E2_BRONSTED) * (pka_medium - 19.9);
+    Some(diffusion_limited(at_temperature(
+        at_25,
+        25.0,
+        medium.temperature_c,
+        values.get(P::DS_SN2),
+    )))
 }
 
 #[cfg(test)]

@@ -1,81 +1,293 @@
-//! The model: prepares reagents, scores cells, explains them.
+//! The screened numbers of a cell: mean yield and probability of a hit by quadrature.
 
-use std::sync::Arc;
+use enolattice_molecule::ElectrophileKind;
+use enolattice_units::math;
 
-use enolattice_molecule::Molecule;
-use enolattice_reagents::Library;
+use crate::cautions::{caution_bits, cautions};
+use crate::kinetics::{Bonding, Kinetics, Nudge};
+use crate::march::{Marched, march};
+use crate::network::Network;
+use crate::outcome::Outcome;
+use crate::parameters::{P, PARAMETERS, Values};
+use crate::{Cell, Channel, Score};
 
-use crate::{Base, Cell, Electrophile, Explanation, MeasuredPka, Pair, Score, Solvent, Substrate};
+/// Distance of the outer points of the three-point rule from the mean, in σ: exact to the fifth moment.
+const NODE: f64 = 1.732_050_807_568_877_2;
+/// Yields are compared as logits within these bounds.
+const LOGIT_BOUND: f64 = 9.0;
+/// Points of the rule that averages over the two surfaces of logits.
+const FINE: usize = 21;
+/// Largest deviate of the fine rule.
+const FINE_REACH: f64 = 4.0;
 
-/// SHA-256 over code version, data, coefficients and arithmetic.
-#[derive(Clone, Copy, Debug, PartialEq, Eq, Hash, PartialOrd, Ord)]
-pub struct Fingerprint(pub [u8; 32]);
+/// Whether a cell is outside the model, or settled without solving its network.
+pub(crate) enum Coverage {
+    /// The model has rate constants for it.
+    Covered,
+    /// The model does not cover it, and why.
+    Unknown(String),
+    /// Nothing can happen, and the loss that says why.
+    Nothing(Channel, String),
+}
 
-impl std::fmt::Display for Fingerprint {
-    fn fmt(&self, f: &mut std::fmt::Formatter<'_>) -> std::fmt::Result {
-        self.0.iter().try_for_each(|byte| write!(f, "{byte:02x}"))
+/// Whether the model covers a cell.
+pub(crate) fn coverage(cell: &Cell) -> Coverage {
+    if let Some(reason) = &cell.electrophile.not_covered {
+        return Coverage::Unknown(format!("electrophile {}: {reason}", cell.electrophile.name));
+    }
+    if let Some(ElectrophileKind::Inert { reason }) =
+        cell.electrophile.group.as_ref().map(|g| g.kind)
+    {
+        return Coverage::Nothing(Channel::SlowAttack, reason.to_owned());
+    }
+    if cell.substrate.carbon.is_empty() {
+        return match &cell.substrate.heteroatom {
+            Some(_) => Coverage::Nothing(
+                Channel::CompetingAcid,
+                "the substrate has no acidic C–H; its X–H takes the base".to_owned(),
+            ),
+            None => Coverage::Unknown(format!("substrate {}: no acidic C–H", cell.substrate.name)),
+        };
+    }
+    if cell.pair.by_site.iter().all(Option::is_none) {
+        return Coverage::Unknown("no product by one new bond at carbon could be drawn".to_owned());
+    }
+    Coverage::Covered
+}
+
+/// The standard uncertainties of a cell's two main quantities.
+#[derive(Clone, Copy, Debug)]
+pub(crate) struct Spread {
+    /// pKa gap between base and substrate.
+    pub(crate) acidity: f64,
+    /// log10 k of the attack.
+    pub(crate) attack: f64,
+}
+
+impl Spread {
+    /// Site, base and medium add in squares; the attack has its anchor, the electrophile and steric terms.
+    pub(crate) fn of(cell: &Cell) -> Spread {
+        let site = &cell.substrate.carbon[0].acid;
+        let medium = crate::parameters::hydrogen_bond(site.class).map_or(0.0, |p| {
+            PARAMETERS[p as usize].sigma * cell.solvent.record.hydrogen_bond_donation / 1.17
+        });
+        let base = cell.base.record.pka_dmso.sigma;
+        let acidity = (site.sigma * site.sigma + medium * medium + base * base).sqrt();
+        let sigma = |p: P| PARAMETERS[p as usize].sigma;
+        let attack = match &cell.electrophile.e {
+            Some((_, sigma_e, _)) => {
+                let s_n = PARAMETERS[P::MAYR_S_N as usize].mean;
+                let n = sigma(P::MAYR_N_INTERCEPT);
+                s_n * (n * n + sigma_e * sigma_e).sqrt()
+            }
+            None => sigma(P::SN2_ANCHOR).hypot(sigma(P::PAIRED_LITHIUM)),
+        };
+        Spread { acidity, attack }
     }
 }
 
-/// Why the model cannot treat an input.
-#[derive(Clone, Debug, PartialEq, thiserror::Error)]
-pub enum ModelError {
-    /// The reference integration failed.
-    #[error("the reference integration failed: {reason}")]
-    Integration {
-        /// What the integrator said.
-        reason: String,
-    },
+/// A network solved at one point.
+pub(crate) struct Solved {
+    pub(crate) network: Network,
+    pub(crate) marched: Marched,
+    pub(crate) outcome: Outcome,
 }
 
-/// The model with its library and parameters.
-#[derive(Debug)]
-pub struct Model {
-    library: Arc<Library>,
+/// Solves a cell's network with the fast solver.
+pub(crate) fn solve(cell: &Cell, values: &Values, nudge: Nudge) -> Solved {
+    let network = Network::new(cell, values, nudge);
+    let marched = march(&network);
+    let kinetics = Kinetics::new(cell, cell.conditions.temperature_c, values, nudge);
+    let outcome = Outcome::read(cell, &kinetics, &network, &marched.end, &marched.formed);
+    Solved {
+        network,
+        marched,
+        outcome,
+    }
 }
 
-impl Model {
-    /// A model over a library, all parameters at their means.
-    pub fn new(library: Arc<Library>) -> Model {
-        Model { library }
+/// Yields over the uncertainty of a cell.
+#[derive(Clone, Copy, Debug)]
+pub(crate) struct Uncertain {
+    /// Mean.
+    pub(crate) mean: f64,
+    /// Standard deviation.
+    pub(crate) sigma: f64,
+    /// Probability that the yield reaches the target.
+    pub(crate) p_hit: f64,
+}
+
+/// Mean, deviation and probability of a hit over the two main uncertainties.
+///
+/// The network is solved at the centre and at ±√3 σ on each axis. Through the logits of the three
+/// yields of an axis goes a piecewise line; the two axes add. Mean and probability are sums over
+/// a fine grid of that surface, which costs no further solution.
+pub(crate) fn over_uncertainty(
+    cell: &Cell,
+    values: &Values,
+    centre: &Solved,
+    target: f64,
+) -> Uncertain {
+    let spread = Spread::of(cell);
+    let wanted = centre.outcome.site;
+    let charged = centre.network.charged[0];
+    let at = |nudge: Nudge| {
+        let network = Network::new(cell, values, nudge);
+        (march(&network).end.product(wanted) / charged).clamp(0.0, 1.0)
+    };
+    let middle = logit(centre.outcome.product);
+    let axis = |nudge: fn(f64) -> Nudge, sigma: f64| {
+        let low = logit(at(nudge(-NODE * sigma))) - middle;
+        let high = logit(at(nudge(NODE * sigma))) - middle;
+        move |z: f64| {
+            if z < 0.0 {
+                -z / NODE * low
+            } else {
+                z / NODE * high
+            }
+        }
+    };
+    let acidity = axis(
+        |acidity| Nudge {
+            acidity,
+            attack: 0.0,
+        },
+        spread.acidity,
+    );
+    let attack = axis(
+        |attack| Nudge {
+            acidity: 0.0,
+            attack,
+        },
+        spread.attack,
+    );
+    let target = logit(target);
+    let (mut weights, mut mean, mut square, mut hit) = (0.0, 0.0, 0.0, 0.0);
+    for i in 0..FINE {
+        let (x, wx) = fine_point(i);
+        for j in 0..FINE {
+            let (y, wy) = fine_point(j);
+            let value = (middle + acidity(x) + attack(y)).clamp(-LOGIT_BOUND, LOGIT_BOUND);
+            let share = 1.0 / (1.0 + math::exp(-value));
+            let w = wx * wy;
+            weights += w;
+            mean += w * share;
+            square += w * share * share;
+            // a step smoothed by the grid's spacing
+            hit += w / (1.0 + math::exp(-(value - target) * 4.0));
+        }
     }
-    /// The library.
-    pub fn library(&self) -> &Arc<Library> {
-        &self.library
+    let mean = mean / weights;
+    let sigma = (square / weights - mean * mean).max(0.0).sqrt();
+    Uncertain {
+        mean,
+        sigma,
+        p_hit: (hit / weights).clamp(0.0, 1.0),
     }
-    /// Fingerprint of code version, data, coefficients and arithmetic.
-    pub fn fingerprint(&self) -> Fingerprint {
-        unimplemented!()
+}
+
+fn fine_point(i: usize) -> (f64, f64) {
+    let z = FINE_REACH * (2.0 * i as f64 / (FINE - 1) as f64 - 1.0);
+    (z, math::exp(-0.5 * z * z))
+}
+
+fn logit(share: f64) -> f64 {
+    if share <= 0.0 {
+        -LOGIT_BOUND
+    } else if share >= 1.0 {
+        LOGIT_BOUND
+    } else {
+        math::ln(share / (1.0 - share)).clamp(-LOGIT_BOUND, LOGIT_BOUND)
     }
-    /// Prepares a substrate.
-    pub fn substrate(&self, name: &str, molecule: Molecule, measured: Option<MeasuredPka>) -> Substrate {
-        unimplemented!("{name}{molecule:?}{measured:?}")
+}
+
+/// What stoichiometry and equilibria alone would allow, given time without end.
+pub(crate) fn feasibility(cell: &Cell, kinetics: &Kinetics<'_>) -> f64 {
+    let conditions = &cell.conditions;
+    let (base, electrophile) = (conditions.base_equiv, conditions.electrophile_equiv);
+    let site = &cell.substrate.carbon[0];
+    let regenerated = kinetics.bonding() != Bonding::Substitution;
+    let cap = electrophile
+        .min(if regenerated { 1.0 } else { base })
+        .min(1.0);
+    match kinetics.addition_log10_k(site) {
+        // an irreversible step carries the deprotonation along, as far as its driving force goes
+        None => {
+            let uphill = kinetics.site_pka(site) - kinetics.pka_base();
+            cap / (1.0 + math::exp10(uphill - SUBSTITUTION_LOG10_K))
+        }
+        Some(log10_k) => {
+            // the adduct's anion is stabilised where it is the weaker base
+            let gain = (kinetics.site_pka(site) - kinetics.adduct_pka(0)).max(0.0) * base.min(1.0);
+            cap.min(addition_conversion(
+                math::exp10(log10_k + gain),
+                conditions.concentration_m,
+                electrophile,
+            ))
+        }
     }
-    /// Prepares a base.
-    pub fn base(&self, record: &enolattice_reagents::Base) -> Base {
-        Base { record: record.clone() }
+}
+
+/// log10 K of a carbanion with an alkyl halide, about −20 kcal/mol (from memory).
+const SUBSTITUTION_LOG10_K: f64 = 15.0;
+
+/// Conversion x at equilibrium of S + E ⇌ P: `x = K·c·(1 − x)·(e − x)`.
+fn addition_conversion(k: f64, concentration_m: f64, electrophile_equiv: f64) -> f64 {
+    let kc = k * concentration_m;
+    if kc > 1e12 {
+        return electrophile_equiv.min(1.0);
     }
-    /// Prepares a solvent.
-    pub fn solvent(&self, record: &enolattice_reagents::Solvent) -> Solvent {
-        Solvent { record: record.clone() }
+    let b = 1.0 + electrophile_equiv + 1.0 / kc;
+    // the smaller root, in the form that keeps its digits
+    2.0 * electrophile_equiv / (b + (b * b - 4.0 * electrophile_equiv).sqrt())
+}
+
+/// Screens one cell.
+pub(crate) fn score(cell: &Cell, values: &Values, yield_at_least: f64) -> Score {
+    let caution_bits = caution_bits(&cautions_of(cell));
+    match coverage(cell) {
+        Coverage::Unknown(_) => Score {
+            cautions: caution_bits,
+            ..Score::default()
+        },
+        Coverage::Nothing(channel, _) => Score {
+            expected_yield: Some(0.0),
+            p_hit: Some(0.0),
+            selectivity: Some(0.0),
+            feasibility: Some(0.0),
+            largest_loss: Some(channel),
+            cautions: caution_bits,
+        },
+        Coverage::Covered => {
+            let kinetics = Kinetics::new(
+                cell,
+                cell.conditions.temperature_c,
+                values,
+                Nudge::default(),
+            );
+            let centre = solve(cell, values, Nudge::default());
+            let uncertain = over_uncertainty(cell, values, &centre, yield_at_least);
+            Score {
+                expected_yield: Some(uncertain.mean),
+                p_hit: Some(uncertain.p_hit),
+                selectivity: Some(centre.outcome.selectivity),
+                feasibility: Some(feasibility(cell, &kinetics)),
+                largest_loss: centre.outcome.losses.first().map(|loss| loss.0),
+                cautions: caution_bits,
+            }
+        }
     }
-    /// Prepares an electrophile.
-    pub fn electrophile(&self, name: &str, molecule: Molecule) -> Electrophile {
-        unimplemented!("{name}{molecule:?}")
-    }
-    /// Prepares what a substrate and an electrophile make together (products and their acidities).
-    pub fn pair(&self, substrate: &Substrate, electrophile: &Electrophile) -> Pair {
-        unimplemented!("{substrate:?}{electrophile:?}")
-    }
-    /// Screens one cell with the fast solver and quadrature.
-    pub fn score(&self, cell: &Cell, yield_at_least: f64) -> Score {
-        unimplemented!("{cell:?}{yield_at_least}")
-    }
-    /// Explains one cell: reference integration, every number with its source.
-    ///
-    /// # Errors
-    /// [`ModelError::Integration`] if the reference integrator gives up.
-    pub fn explain(&self, cell: &Cell, yield_at_least: f64) -> Result<Explanation, ModelError> {
-        unimplemented!("{cell:?}{yield_at_least}")
-    }
+}
+
+/// All cautions of a cell.
+pub(crate) fn cautions_of(cell: &Cell) -> Vec<crate::Caution> {
+    cautions(
+        &cell.base.record,
+        &cell.electrophile.molecule,
+        cell.electrophile.named.as_ref(),
+        &cell.substrate.molecule,
+        &cell.solvent.record,
+        cell.conditions.temperature_c,
+        cell.conditions.formation_temperature_c,
+    )
 }

@@ -74,9 +74,15 @@ impl Molecule {
         if cumulated {
             return Some(Acyl::Other);
         }
-        let mut hetero = others.iter().filter(|o| self.element(**o) != CARBON);
+        let mut hetero = others
+            .iter()
+            .filter(|o| !matches!(self.element(**o), CARBON | 1));
+        let carbons = others
+            .iter()
+            .filter(|o| self.element(**o) == CARBON)
+            .count();
         let class = match (hetero.next(), hetero.next()) {
-            (None, None) if self.atoms[carbon].hydrogens > 0 => Acyl::Aldehyde,
+            (None, None) if carbons < 2 => Acyl::Aldehyde,
             (None, None) => Acyl::Ketone,
             (Some(one), None) => self.acyl_by_heteroatom(carbon, *one),
             _ => Acyl::Other,

@@ -4,6 +4,7 @@
 //! parsed, so that no text, however hostile, takes long or panics.
 
 mod anion;
+mod edit;
 mod electrophile;
 mod environment;
 mod groups;
@@ -18,5 +19,7 @@ pub use electrophile::{
     Acceptor, AlkylGroup, ElectrophileKind, ElectrophilicGroup, LeavingGroup, recognise,
 };
 pub use environment::{Site, sites};
-pub use product::{Product, c_product, dehydrated, heteroatom_product, o_product};
+pub use product::{
+    Product, c_product, dehydrated, heteroatom_product, o_product, self_condensation_product,
+};
 pub use structure::{Atom, Bond, Molecule, StructureError};

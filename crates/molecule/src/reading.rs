@@ -3,7 +3,7 @@
 use chematic::core::{self as graph, AtomIdx, BondIdx, BondOrder};
 use chematic::{chem, perception, smiles};
 
-use crate::{Atom, Bond, Molecule, StructureError, valence};
+use crate::{Atom, Bond, Molecule, StructureError, symmetry, valence};
 
 /// Reads a SMILES into a perceived molecule.
 pub(crate) fn read(text: &str) -> Result<Molecule, StructureError> {
@@ -12,7 +12,7 @@ pub(crate) fn read(text: &str) -> Result<Molecule, StructureError> {
     let unmapped = without_atom_maps(given);
     let parsed = parse(given, &unmapped)?;
     check_graph(&parsed)?;
-    perceive(given, tidy(parsed)?)
+    perceive(given, tidy(given, parsed)?)
 }
 
 /// Canonical SMILES without stereo.
@@ -50,10 +50,7 @@ fn check_text(given: &str) -> Result<(), StructureError> {
             "give a smaller molecule or a model compound with the same reacting group",
         ));
     }
-    if let Some((position, odd)) = given
-        .char_indices()
-        .find(|(_, c)| !c.is_ascii_graphic())
-    {
+    if let Some((position, odd)) = given.char_indices().find(|(_, c)| !c.is_ascii_graphic()) {
         return Err(StructureError::new(
             format!(
                 "{} has the character {odd:?} at position {position}, which no SMILES has",
@@ -100,7 +97,11 @@ fn parse(given: &str, unmapped: &str) -> Result<graph::Molecule, StructureError>
     smiles::parse_with_limits(unmapped, &limits).map_err(|error| {
         use smiles::SmilesError as E;
         let (what, remedy) = match error {
-            E::ResourceLimit { resource, actual, limit } => (
+            E::ResourceLimit {
+                resource,
+                actual,
+                limit,
+            } => (
                 format!("it has {actual} {resource}, more than the {limit} that are read"),
                 "give a smaller molecule or a model compound with the same reacting group",
             ),
@@ -144,7 +145,7 @@ fn check_graph(parsed: &graph::Molecule) -> Result<(), StructureError> {
                     index.0,
                     atom.element.symbol()
                 ),
-                "give a molecule of H, B, C, N, O, F, Si, P, S, Cl, Se, Br and I",
+                "give a molecule of H, B, C, N, O, F, Si, P, S, Cl, As, Se, Br and I",
             ));
         }
     }
@@ -177,15 +178,25 @@ fn check_graph(parsed: &graph::Molecule) -> Result<(), StructureError> {
     Ok(())
 }
 
+fn impossible(given: &str, detail: &str) -> StructureError {
+    StructureError::new(
+        format!("{} is no possible molecule: {detail}", quoted(given)),
+        "check valences, charges and aromatic rings against a drawing",
+    )
+}
+
+fn refused(given: &str, error: smiles::RdkitSmilesError) -> StructureError {
+    use smiles::RdkitSmilesError as E;
+    match error {
+        E::Unsupported(what) | E::Sanitization(what) => impossible(given, &what),
+    }
+}
+
 /// Charges and bonds of hypervalent nitrogen and its kin set right, hydrogens folded, Kekulé form.
-fn tidy(mut molecule: graph::Molecule) -> Result<graph::Molecule, StructureError> {
-    let impossible = |detail: String| {
-        StructureError::new(
-            format!("no such molecule: {detail}"),
-            "check valences, charges and aromatic rings against a drawing",
-        )
-    };
-    let edits = smiles::rdkit_cleanup_edits(&molecule).map_err(|e| impossible(e.to_string()))?;
+fn tidy(given: &str, mut molecule: graph::Molecule) -> Result<graph::Molecule, StructureError> {
+    // The written form is checked first: the Kekulé form hides aromatic atoms outside rings.
+    smiles::rdkit_sanitized_model(&molecule).map_err(|e| refused(given, e))?;
+    let edits = smiles::rdkit_cleanup_edits(&molecule).map_err(|e| refused(given, e))?;
     for edit in edits.into_iter() {
         for (atom, charge) in edit.charges {
             molecule.set_charge(AtomIdx(atom as u32), charge as i8);
@@ -200,58 +211,82 @@ fn tidy(mut molecule: graph::Molecule) -> Result<graph::Molecule, StructureError
     {
         molecule = chem::remove_hydrogens(&molecule);
     }
-    let kekule = graph::kekulize(&molecule).map_err(|e| impossible(e.detail))?;
-    let mut molecule = with_orders(&molecule, &kekule);
+    let orders = graph::kekulize(&molecule).map_err(|e| impossible(given, &e.detail))?;
+    let mut molecule = graph::apply_kekule(&molecule, &orders);
     for atom in 0..molecule.atom_count() {
         molecule.set_atom_aromatic(AtomIdx(atom as u32), false);
     }
     Ok(molecule)
 }
 
-fn with_orders(molecule: &graph::Molecule, orders: &graph::KekuleResult) -> graph::Molecule {
-    graph::apply_kekule(molecule, orders)
+/// Perceives a Kekulé graph.
+fn perceive(given: &str, kekule: graph::Molecule) -> Result<Molecule, StructureError> {
+    let model = smiles::rdkit_sanitized_model(&kekule).map_err(|e| refused(given, e))?;
+    let canonical = smiles::rdkit_canonical_smiles(&kekule).map_err(|e| refused(given, e))?;
+    let atoms = perceived_atoms(given, &kekule, &model)?;
+    let neighbours = perceived_bonds(given, &kekule, &model)?;
+    valence::check(&kekule, &atoms)?;
+    let isotopes: Vec<u16> = kekule
+        .atoms()
+        .map(|(_, atom)| atom.isotope.unwrap_or(0))
+        .collect();
+    let rings = perception::find_symmetrized_sssr(&kekule)
+        .rings()
+        .iter()
+        .map(|ring| ring.iter().map(|atom| atom.0 as usize).collect())
+        .collect();
+    Ok(Molecule {
+        smiles: given.to_owned(),
+        canonical,
+        formula: chem::calc_mol_formula(&kekule),
+        exact_mass: chem::exact_mass(&kekule),
+        molar_mass: chem::rdkit_molecular_weight(&kekule),
+        symmetry_classes: symmetry::refine(&atoms, &isotopes, &neighbours),
+        atoms,
+        neighbours,
+        rings,
+        kekule,
+    })
 }
 
-/// Perceives a Kekulé graph.
-pub(crate) fn perceive(
+fn perceived_atoms(
     given: &str,
-    kekule: graph::Molecule,
-) -> Result<Molecule, StructureError> {
-    let impossible = |detail: String| {
-        StructureError::new(
-            format!("{} is no possible molecule: {detail}", quoted(given)),
-            "check valences, charges and aromatic rings against a drawing",
-        )
-    };
-    let model =
-        smiles::rdkit_sanitized_model(&kekule).map_err(|e| impossible(e.to_string()))?;
-    let canonical =
-        smiles::rdkit_canonical_smiles(&kekule).map_err(|e| impossible(e.to_string()))?;
-    let mut atoms = Vec::with_capacity(kekule.atom_count());
-    let mut isotopes = Vec::with_capacity(kekule.atom_count());
-    for (index, atom) in kekule.atoms() {
-        let Some((aromatic, charge, hydrogens)) = model.atoms[index.0 as usize] else {
-            return Err(StructureError::new(
-                format!("atom {} of {} is a lone hydrogen", index.0, quoted(given)),
-                "leave hydrogens out or write them inside the brackets of their atom",
-            ));
-        };
-        atoms.push(Atom {
-            element: atom.element.atomic_number(),
-            charge,
-            hydrogens,
-            aromatic,
-        });
-        isotopes.push(atom.isotope.unwrap_or(0));
-    }
-    let mut neighbours = vec![Vec::new(); atoms.len()];
-    for (index, bond) in kekule.bonds() {
-        let order = match model.bonds[index.0 as usize] {
+    kekule: &graph::Molecule,
+    model: &smiles::RdkitSanitizedModel,
+) -> Result<Vec<Atom>, StructureError> {
+    kekule
+        .atoms()
+        .zip(&model.atoms)
+        .map(|((index, atom), perceived)| {
+            let (aromatic, charge, hydrogens) = perceived.ok_or_else(|| {
+                StructureError::new(
+                    format!("atom {} of {} is a lone hydrogen", index.0, quoted(given)),
+                    "leave hydrogens out or write them inside the brackets of their atom",
+                )
+            })?;
+            Ok(Atom {
+                element: atom.element.atomic_number(),
+                charge,
+                hydrogens,
+                aromatic,
+            })
+        })
+        .collect()
+}
+
+fn perceived_bonds(
+    given: &str,
+    kekule: &graph::Molecule,
+    model: &smiles::RdkitSanitizedModel,
+) -> Result<Vec<Vec<(usize, Bond)>>, StructureError> {
+    let mut neighbours = vec![Vec::new(); kekule.atom_count()];
+    for ((_, bond), perceived) in kekule.bonds().zip(&model.bonds) {
+        let order = match perceived {
             Some(BondOrder::Single) => Bond::Single,
             Some(BondOrder::Double) => Bond::Double,
             Some(BondOrder::Triple) => Bond::Triple,
             Some(BondOrder::Aromatic) => Bond::Aromatic,
-            _ => return Err(impossible("a bond of no ordinary order".to_owned())),
+            _ => return Err(impossible(given, "it has a bond of no ordinary order")),
         };
         let (a, b) = (bond.atom1.0 as usize, bond.atom2.0 as usize);
         neighbours[a].push((b, order));
@@ -260,23 +295,5 @@ pub(crate) fn perceive(
     for around in &mut neighbours {
         around.sort_unstable_by_key(|(other, _)| *other);
     }
-    valence::check(&kekule, &atoms)?;
-    let rings = perception::find_symmetrized_sssr(&kekule)
-        .rings()
-        .iter()
-        .map(|ring| ring.iter().map(|atom| atom.0 as usize).collect())
-        .collect();
-    let symmetry_classes = Molecule::classes_of(&atoms, &isotopes, &neighbours);
-    Ok(Molecule {
-        smiles: given.to_owned(),
-        canonical,
-        formula: chem::calc_mol_formula(&kekule),
-        exact_mass: chem::exact_mass(&kekule),
-        molar_mass: chem::rdkit_molecular_weight(&kekule),
-        atoms,
-        neighbours,
-        rings,
-        symmetry_classes,
-        kekule,
-    })
+    Ok(neighbours)
 }

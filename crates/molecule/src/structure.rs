@@ -4,7 +4,7 @@ use std::fmt;
 
 use chematic::core as graph;
 
-use crate::{reading, symmetry};
+use crate::reading;
 
 /// Why a SMILES was refused.
 #[derive(Clone, Debug, PartialEq, thiserror::Error)]
@@ -90,7 +90,7 @@ impl Molecule {
     ///
     /// # Errors
     /// Text beyond the caps, text that is no SMILES, more than one fragment, an
-    /// element outside H, B, C, N, O, F, Si, P, S, Cl, Se, Br, I, an impossible
+    /// element outside H, B, C, N, O, F, Si, P, S, Cl, As, Se, Br, I, an impossible
     /// valence or an unpaired electron, wildcards. The error says what to change.
     pub fn parse(smiles: &str) -> Result<Molecule, StructureError> {
         reading::read(smiles)
@@ -173,13 +173,5 @@ impl Molecule {
     /// order in which the classes first appear.
     pub fn symmetry_classes(&self) -> &[u32] {
         &self.symmetry_classes
-    }
-
-    pub(crate) fn classes_of(
-        atoms: &[Atom],
-        isotopes: &[u16],
-        neighbours: &[Vec<(usize, Bond)>],
-    ) -> Vec<u32> {
-        symmetry::refine(atoms, isotopes, neighbours)
     }
 }

@@ -12,7 +12,7 @@ fn neutral_valences(element: u8) -> &'static [i8] {
         6 | 14 => &[4],
         7 => &[3],
         8 => &[2],
-        15 => &[3, 5],
+        15 | 33 => &[3, 5],
         16 | 34 => &[2, 4, 6],
         17 | 35 | 53 => &[1, 3, 5, 7],
         _ => &[],
@@ -57,7 +57,7 @@ pub(crate) fn check(kekule: &graph::Molecule, atoms: &[Atom]) -> Result<(), Stru
                     "atom {index} has {valence} bonds and a charge of {}: an unpaired electron or an impossible valence",
                     atom.charge
                 ),
-                "write the hydrogens inside the brackets, for instance [CH3], or leave the brackets out",
+                "give it all its hydrogens (C, not [C]) or its charge",
             ));
         }
     }

@@ -7,7 +7,7 @@ use sha2::{Digest, Sha256};
 
 use crate::measured::Measured;
 use crate::names::NameIndex;
-use crate::structures::StructureIndex;
+use crate::structures::{StructureIndex, without_stereo};
 use crate::table::TableText;
 use crate::{Acidity, Base, Electrophilicity, NamedElectrophile, Reagent, ReagentKind, Solvent};
 use crate::{bases, electrophiles, measured, solvents};
@@ -207,12 +207,9 @@ impl Library {
     fn take_acidities(&mut self, rows: Vec<Measured<Acidity>>) {
         for Measured { molecule, record } in rows {
             self.acidities.push(record.clone());
-            let flat = molecule.canonical_flat();
-            if flat != record.canonical {
-                self.acidities_by_structure
-                    .entry(flat)
-                    .or_default()
-                    .push(record.clone());
+            if let Some(flat) = without_stereo(&molecule) {
+                let isomers = self.acidities_by_structure.entry(flat);
+                isomers.or_default().push(record.clone());
             }
             let same = self.acidities_by_structure.entry(record.canonical.clone());
             same.or_default().push(record);

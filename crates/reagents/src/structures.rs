@@ -17,7 +17,9 @@ impl StructureIndex {
         self.exact
             .entry(molecule.canonical().to_owned())
             .or_insert(row);
-        self.flat.entry(molecule.canonical_flat()).or_insert(row);
+        if let Some(flat) = without_stereo(molecule) {
+            self.flat.entry(flat).or_insert(row);
+        }
     }
 
     /// The rows by canonical SMILES, with stereo and without.
@@ -26,4 +28,13 @@ impl StructureIndex {
         rows.extend(self.exact);
         rows
     }
+}
+
+/// Canonical SMILES without stereo, where that differs from the one with it.
+pub(crate) fn without_stereo(molecule: &Molecule) -> Option<String> {
+    // Canonical ranking is what reading the library costs; most rows need it once only.
+    molecule
+        .canonical()
+        .contains(['@', '/', '\\'])
+        .then(|| molecule.canonical_flat())
 }

@@ -72,6 +72,12 @@ pub enum StoreError {
         /// Bytes allowed.
         limit: usize,
     },
+    /// A new job cannot be put into words.
+    #[error("the job cannot be recorded: {reason}")]
+    Unwritable {
+        /// Why.
+        reason: String,
+    },
     /// The job's state is not the one the change starts from.
     #[error("job `{job}` is {found}, not {expected}")]
     StateMoved {
@@ -112,6 +118,11 @@ pub enum StoreError {
 }
 
 impl StoreError {
+    /// Wraps why a new job cannot be recorded.
+    pub(crate) fn unwritable(error: impl std::fmt::Display) -> StoreError {
+        StoreError::Unwritable { reason: error.to_string() }
+    }
+
     /// Wraps what the file system said about `path`.
     pub(crate) fn io(path: impl Into<PathBuf>) -> impl FnOnce(std::io::Error) -> StoreError {
         let path = path.into();

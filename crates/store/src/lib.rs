@@ -15,6 +15,7 @@ mod open;
 mod order;
 mod rank;
 mod record;
+mod scan;
 mod store;
 mod token;
 

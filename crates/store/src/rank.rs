@@ -2,7 +2,9 @@
 
 use enolattice_model::Score;
 
-use crate::Order;
+use crate::index::Summary;
+use crate::scan::Scan;
+use crate::{Order, StoreError};
 
 /// Which cells a ranking keeps, by cell number and score.
 pub type Filter<'a> = &'a (dyn Fn(u64, &Score) -> bool + Sync);
@@ -58,4 +60,46 @@ pub struct Ranking {
     pub cells: u64,
     /// End of this page; `None` where no row follows.
     pub next: Option<Position>,
+}
+
+/// What a job has to be ranked: its blocks in the snapshot asked for.
+pub(crate) struct View {
+    /// Summaries of the blocks, by first cell.
+    pub(crate) blocks: Vec<Summary>,
+    /// Commit number of the last block that may be seen.
+    pub(crate) snapshot: u64,
+    /// Generation of the job's blocks.
+    pub(crate) generation: u32,
+}
+
+/// A page of a view's ranking.
+pub(crate) fn page(
+    scan: &Scan<'_>,
+    view: &View,
+    request: &RankRequest<'_>,
+) -> Result<Ranking, StoreError> {
+    let passed = request.after.map_or(0, |after| after.passed);
+    let floor = request.after.map(|after| (after.key, after.cell));
+    let known_total = request.after.map(|after| after.total);
+    let found = match request.best_per {
+        Some(group) => scan.best_of_groups(group, floor, request.skip, request.limit)?,
+        None => scan.first(floor, request.skip, request.limit, known_total)?,
+    };
+    let first_rank = passed.saturating_add(request.skip).saturating_add(1);
+    let last_rank = passed.saturating_add(request.skip).saturating_add(found.rows.len() as u64);
+    let next = found.rows.last().filter(|_| last_rank < found.total).map(|(key, cell)| Position {
+        key: *key,
+        cell: *cell,
+        passed: last_rank,
+        snapshot: view.snapshot,
+        total: found.total,
+        generation: view.generation,
+    });
+    Ok(Ranking {
+        rows: scan.with_scores(&found.rows)?,
+        first_rank,
+        total: found.total,
+        cells: view.blocks.iter().map(|summary| u64::from(summary.cells)).sum(),
+        next,
+    })
 }

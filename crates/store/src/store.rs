@@ -1,14 +1,27 @@
-//! The store: jobs, blocks, progress.
+//! The store: jobs and their blocks in one directory.
 
-use std::collections::BTreeSet;
+use std::collections::{BTreeMap, BTreeSet};
+use std::fmt;
+use std::fs::File;
 use std::path::Path;
+use std::sync::{Arc, Mutex, MutexGuard, PoisonError, RwLock};
 
 use enolattice_grid::{BlockId, Columns};
 use enolattice_model::{Fingerprint, Score};
 
+use crate::block::{self, StoredBlock};
+use crate::database::Database;
+use crate::index::JobIndex;
+use crate::journal::Journal;
+use crate::rank::{self, View};
+use crate::scan::{Scan, read_block};
 use crate::{
-    Created, JobId, JobRecord, NewJob, OpenReport, RankRequest, Ranking, StateChange, StoreError,
+    Created, JobId, JobRecord, JobState, NewJob, OpenReport, RankRequest, Ranking, StateChange,
+    StoreError, open, record,
 };
+
+/// Longest id of a request, in bytes.
+const REQUEST_ID_BYTES: usize = 128;
 
 /// What [`Store::commit_block`] did.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
@@ -32,20 +45,45 @@ pub struct Progress {
     pub best_yield: Option<f64>,
 }
 
-/// Jobs, blocks and rankings in one directory. Shared between threads behind an `Arc`.
+/// A job in memory. Where both locks are taken, the record's comes first.
 #[derive(Debug)]
-pub struct Store {}
+struct Entry {
+    record: Mutex<JobRecord>,
+    index: Mutex<JobIndex>,
+}
+
+/// Jobs, blocks and rankings in one directory. Shared between threads behind an `Arc`.
+pub struct Store {
+    journal: Journal,
+    database: Database,
+    jobs: RwLock<BTreeMap<JobId, Arc<Entry>>>,
+    /// Held while a job is made, so that a request id makes one job only.
+    creating: Mutex<()>,
+    /// Keeps other processes out; dropped last.
+    _lock: File,
+}
 
 impl Store {
     /// Opens the store in `dir`, making it if there is none.
     ///
-    /// A broken database is renamed to `db.broken-<now_unix_ms>`, rebuilt empty, and its
-    /// jobs wait again; the report says so.
+    /// Every block is read and checked. A broken database is renamed to
+    /// `db.broken-<now_unix_ms>`, begun anew, and its jobs wait again; the report says so.
     ///
     /// # Errors
     /// [`StoreError::InUse`], [`StoreError::TooNew`], [`StoreError::Io`], [`StoreError::Database`].
     pub fn open(dir: &Path, now_unix_ms: u64) -> Result<(Store, OpenReport), StoreError> {
-        unimplemented!("{dir:?}{now_unix_ms}")
+        let opened = open::open(dir, now_unix_ms)?;
+        let entry = |(id, (record, index))| {
+            (id, Arc::new(Entry { record: Mutex::new(record), index: Mutex::new(index) }))
+        };
+        let store = Store {
+            journal: opened.journal,
+            database: opened.database,
+            jobs: RwLock::new(opened.jobs.into_iter().map(entry).collect()),
+            creating: Mutex::new(()),
+            _lock: opened.lock,
+        };
+        Ok((store, opened.report))
     }
 
     /// Makes a job. When this returns, the job survives a power cut.
@@ -53,12 +91,47 @@ impl Store {
     /// # Errors
     /// [`StoreError::RequestIdReused`], [`StoreError::RequestIdTooLong`], [`StoreError::Io`].
     pub fn create_job(&self, new: NewJob, now_unix_ms: u64) -> Result<Created, StoreError> {
-        unimplemented!("{new:?}{now_unix_ms}")
+        if new.request_id.len() > REQUEST_ID_BYTES {
+            let length = new.request_id.len();
+            return Err(StoreError::RequestIdTooLong { length, limit: REQUEST_ID_BYTES });
+        }
+        let request_digest = record::request_digest(&new.spec).map_err(StoreError::unwritable)?;
+        let _creating = lock(&self.creating);
+        if let Some(record) = self.job_of_request(&new.request_id) {
+            if record.request_digest == request_digest {
+                return Ok(Created { record, is_new: false });
+            }
+            let NewJob { request_id, .. } = new;
+            return Err(StoreError::RequestIdReused { request_id, job: record.id });
+        }
+        let record = JobRecord {
+            id: self.new_id(now_unix_ms)?,
+            title: new.spec.title.clone(),
+            spec: Arc::new(new.spec),
+            campaign_fingerprint: new.campaign_fingerprint,
+            model_fingerprint: new.model_fingerprint,
+            cells: new.cells,
+            blocks: new.blocks,
+            request_id: new.request_id,
+            request_digest,
+            submitted_unix_ms: now_unix_ms,
+            ended_unix_ms: None,
+            state: JobState::Queued,
+            committed_at_end: 0,
+            failure: String::new(),
+            warnings: new.warnings,
+            generation: 1,
+        };
+        self.journal.write(&record)?;
+        let entry = Entry { record: Mutex::new(record.clone()), index: Mutex::default() };
+        self.jobs.write().unwrap_or_else(PoisonError::into_inner).insert(record.id, Arc::new(entry));
+        Ok(Created { record, is_new: true })
     }
 
-    /// The job that a request with this id made, if any; to answer a repeated request early.
+    /// The job that a request with this id made, if any; an empty id makes none.
     pub fn job_of_request(&self, request_id: &str) -> Option<JobRecord> {
-        unimplemented!("{request_id}")
+        let same = |record: &JobRecord| !request_id.is_empty() && record.request_id == request_id;
+        self.jobs().into_iter().find(same)
     }
 
     /// One job.
@@ -66,12 +139,12 @@ impl Store {
     /// # Errors
     /// [`StoreError::JobUnknown`].
     pub fn job(&self, job: JobId) -> Result<JobRecord, StoreError> {
-        unimplemented!("{job}")
+        Ok(lock(&self.entry(job)?.record).clone())
     }
 
     /// All jobs in the order of submission.
     pub fn jobs(&self) -> Vec<JobRecord> {
-        unimplemented!()
+        self.entries().iter().map(|(_, entry)| lock(&entry.record).clone()).collect()
     }
 
     /// Changes a job's state. When this returns, the change survives a power cut.
@@ -79,15 +152,49 @@ impl Store {
     /// # Errors
     /// [`StoreError::StateMoved`] where the job is not in the state the change starts from.
     pub fn change_state(&self, job: JobId, change: &StateChange) -> Result<JobRecord, StoreError> {
-        unimplemented!("{job}{change:?}")
+        let entry = self.entry(job)?;
+        let mut record = lock(&entry.record);
+        if record.state != change.from {
+            return Err(StoreError::StateMoved { job, expected: change.from, found: record.state });
+        }
+        let ends = change.to.is_ended();
+        let changed = JobRecord {
+            state: change.to,
+            ended_unix_ms: ends.then_some(change.at_unix_ms),
+            committed_at_end: if ends { lock(&entry.index).blocks.len() as u64 } else { 0 },
+            failure: change.failure.clone(),
+            ..record.clone()
+        };
+        self.journal.write(&changed)?;
+        *record = changed.clone();
+        Ok(changed)
     }
 
     /// Forgets the blocks of a job, to be scored anew by another model.
     ///
+    /// The blocks go before the record changes, so that a crash between the two never leaves
+    /// blocks of one model under the name of another.
+    ///
     /// # Errors
     /// [`StoreError::JobUnknown`], [`StoreError::Stopped`], [`StoreError::Io`].
-    pub fn restart(&self, job: JobId, model_fingerprint: Fingerprint) -> Result<JobRecord, StoreError> {
-        unimplemented!("{job}{model_fingerprint}")
+    pub fn restart(
+        &self,
+        job: JobId,
+        model_fingerprint: Fingerprint,
+    ) -> Result<JobRecord, StoreError> {
+        let entry = self.entry(job)?;
+        let mut record = lock(&entry.record);
+        let mut index = lock(&entry.index);
+        for block in index.blocks.keys() {
+            self.database.remove(&block::key(job, *block))?;
+        }
+        self.database.sync()?;
+        *index = index.emptied();
+        let generation = record.generation + 1;
+        let changed = JobRecord { model_fingerprint, generation, ..record.clone() };
+        self.journal.write(&changed)?;
+        *record = changed.clone();
+        Ok(changed)
     }
 
     /// Stores a block once. Not yet safe from a power cut: see [`Store::acknowledge`].
@@ -101,7 +208,27 @@ impl Store {
         first_cell: u64,
         columns: &Columns,
     ) -> Result<Commit, StoreError> {
-        unimplemented!("{job}{block:?}{first_cell}{columns:?}")
+        let entry = self.entry(job)?;
+        let key = block::key(job, block);
+        let bytes = columns.to_bytes();
+        let stored = |commit| StoredBlock { commit, first_cell, columns: columns.clone() };
+        // Commit numbers must appear in the index in their order, or a page could miss a block of its snapshot.
+        let mut index = lock(&entry.index);
+        let commit = index.last_commit + 1;
+        let value = block::encode(&key, commit, first_cell, columns.len() as u32, &bytes);
+        match self.database.put_once(&key, &value)? {
+            Some(there) if index.blocks.contains_key(&block) => {
+                return match block::columns_bytes(&there) == bytes {
+                    true => Ok(Commit::AlreadyThere),
+                    false => Err(StoreError::BlockDiffers { job, block }),
+                };
+            }
+            // After damage, a get may find what the scan at opening did not.
+            Some(_) => self.database.replace(&key, &value)?,
+            None => {}
+        }
+        index.add(block, &stored(commit));
+        Ok(Commit::Stored)
     }
 
     /// Flushes and syncs: every block committed before the call survives a power cut.
@@ -109,7 +236,14 @@ impl Store {
     /// # Errors
     /// [`StoreError::Stopped`] from the first failed write on.
     pub fn acknowledge(&self) -> Result<(), StoreError> {
-        unimplemented!()
+        let mark = |(_, entry): (JobId, Arc<Entry>)| {
+            let mark = lock(&entry.index).mark();
+            (entry, mark)
+        };
+        let marks: Vec<_> = self.entries().into_iter().map(mark).collect();
+        self.database.sync()?;
+        marks.into_iter().for_each(|(entry, mark)| lock(&entry.index).acknowledge(mark));
+        Ok(())
     }
 
     /// How far a job is.
@@ -117,7 +251,7 @@ impl Store {
     /// # Errors
     /// [`StoreError::JobUnknown`].
     pub fn progress(&self, job: JobId) -> Result<Progress, StoreError> {
-        unimplemented!("{job}")
+        Ok(lock(&self.entry(job)?.index).progress())
     }
 
     /// The blocks that are committed.
@@ -125,7 +259,7 @@ impl Store {
     /// # Errors
     /// [`StoreError::JobUnknown`].
     pub fn committed_blocks(&self, job: JobId) -> Result<BTreeSet<BlockId>, StoreError> {
-        unimplemented!("{job}")
+        Ok(lock(&self.entry(job)?.index).blocks.keys().copied().collect())
     }
 
     /// A committed block; `None` where it is not.
@@ -133,7 +267,8 @@ impl Store {
     /// # Errors
     /// [`StoreError::JobUnknown`], [`StoreError::BlockDamaged`].
     pub fn block(&self, job: JobId, block: BlockId) -> Result<Option<Columns>, StoreError> {
-        unimplemented!("{job}{block:?}")
+        let summary = lock(&self.entry(job)?.index).blocks.get(&block).cloned();
+        summary.map(|summary| read_block(&self.database, job, &summary)).transpose()
     }
 
     /// The stored score of one cell; `None` where its block is not committed.
@@ -141,7 +276,10 @@ impl Store {
     /// # Errors
     /// [`StoreError::JobUnknown`], [`StoreError::BlockDamaged`].
     pub fn score(&self, job: JobId, cell: u64) -> Result<Option<Score>, StoreError> {
-        unimplemented!("{job}{cell}")
+        let summary = lock(&self.entry(job)?.index).block_of(cell).cloned();
+        let Some(summary) = summary else { return Ok(None) };
+        let columns = read_block(&self.database, job, &summary)?;
+        Ok(Some(columns.score((cell - summary.first_cell) as usize)))
     }
 
     /// A page of a job's ranking.
@@ -149,6 +287,54 @@ impl Store {
     /// # Errors
     /// [`StoreError::JobUnknown`], [`StoreError::BlockDamaged`], [`StoreError::PageOutdated`].
     pub fn rank(&self, job: JobId, request: &RankRequest<'_>) -> Result<Ranking, StoreError> {
-        unimplemented!("{job}{}", request.limit)
+        let view = self.view(job, request)?;
+        let scan = Scan {
+            database: &self.database,
+            job,
+            blocks: &view.blocks,
+            order: request.order,
+            filter: request.filter,
+        };
+        rank::page(&scan, &view, request)
     }
+
+    /// The blocks that a page may show.
+    fn view(&self, job: JobId, request: &RankRequest<'_>) -> Result<View, StoreError> {
+        let entry = self.entry(job)?;
+        let record = lock(&entry.record);
+        let index = lock(&entry.index);
+        let generation = record.generation;
+        if request.after.is_some_and(|after| after.generation != generation) {
+            return Err(StoreError::PageOutdated);
+        }
+        let snapshot = request.after.map_or(index.acknowledged, |after| after.snapshot);
+        Ok(View { blocks: index.seen_by(snapshot), snapshot, generation })
+    }
+
+    fn entry(&self, job: JobId) -> Result<Arc<Entry>, StoreError> {
+        let jobs = self.jobs.read().unwrap_or_else(PoisonError::into_inner);
+        jobs.get(&job).cloned().ok_or_else(|| StoreError::JobUnknown { job: job.to_string() })
+    }
+
+    fn entries(&self) -> Vec<(JobId, Arc<Entry>)> {
+        let jobs = self.jobs.read().unwrap_or_else(PoisonError::into_inner);
+        jobs.iter().map(|(id, entry)| (*id, entry.clone())).collect()
+    }
+
+    fn new_id(&self, now_unix_ms: u64) -> Result<JobId, StoreError> {
+        let last = self.entries().last().map(|(id, _)| *id);
+        let random = getrandom::u64().map_err(StoreError::unwritable)?;
+        Ok(JobId::after(last, now_unix_ms, random))
+    }
+}
+
+impl fmt::Debug for Store {
+    fn fmt(&self, f: &mut fmt::Formatter<'_>) -> fmt::Result {
+        f.debug_struct("Store").field("journal", &self.journal).finish_non_exhaustive()
+    }
+}
+
+/// A panic elsewhere leaves nothing half done under these locks: they are taken all the same.
+fn lock<T>(mutex: &Mutex<T>) -> MutexGuard<'_, T> {
+    mutex.lock().unwrap_or_else(PoisonError::into_inner)
 }

@@ -29,6 +29,12 @@ pub fn log10(x: f64) -> f64 {
     libm::log10(x)
 }
 
+/// Cosine of `x` turns.
+#[inline]
+pub fn cos_turn(x: f64) -> f64 {
+    libm::cos(x * std::f64::consts::TAU)
+}
+
 /// Cumulative distribution of the standard normal, Φ(z).
 #[inline]
 pub fn normal_cdf(z: f64) -> f64 {

@@ -3,6 +3,8 @@
 mod acidity;
 mod campaign;
 mod cell;
+mod conditions;
+mod description;
 mod enums;
 mod explanation;
 mod job;
@@ -10,9 +12,8 @@ mod library;
 mod numbers;
 mod ranking;
 
-pub use campaign::{submission, submission_request};
-pub(crate) use cell::{given_cell, given_cell_message};
-pub use ranking::order_by;
+pub use description::explained;
+pub use ranking::page_size;
 
 /// What of a server's answer a client does not understand.
 #[derive(Clone, Debug, PartialEq, Eq, thiserror::Error)]

@@ -24,10 +24,11 @@ pub const FILE_DESCRIPTOR_SET: &[u8] =
 pub const ERROR_DOMAIN: &str = "enolattice.v1";
 
 pub use client::{Client, JobWatch};
-pub use convert::{ConversionError, order_by, submission, submission_request};
-pub use faults::{INPUT_FAULTS_TYPE_URL, bad_field, fault_message, input_error};
+pub use convert::{ConversionError, explained, page_size};
+pub use faults::{INPUT_FAULTS_TYPE_URL, bad_field};
 pub use limits::{
-    DEFAULT_PAGE_SIZE, MAX_MESSAGE_BYTES, MAX_PAGE_SIZE, MAX_REQUEST_ID_BYTES, MAX_SITES_MOLECULES,
+    DEFAULT_DETAIL_BYTES, DEFAULT_PAGE_SIZE, DETAIL_BYTES_KEY, MAX_ANSWER_BYTES, MAX_DETAIL_BYTES,
+    MAX_MESSAGE_BYTES, MAX_PAGE_SIZE, MAX_REQUEST_ID_BYTES, MAX_SITES_MOLECULES,
     MAX_STREAMED_CAMPAIGN_BYTES,
 };
 pub use remote_error::RemoteError;

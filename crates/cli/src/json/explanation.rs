@@ -1,5 +1,6 @@
 //! Everything about one cell.
 
+use enolattice_engine::CellDescription;
 use enolattice_model::{Advice, Caution, Channel, CoursePoint, ExplainedRate, Explanation};
 use serde::Serialize;
 
@@ -31,6 +32,26 @@ pub(crate) struct ExplanationDocument {
     limits: Vec<String>,
     advice: Vec<AdviceRecord>,
     model: String,
+    cell: CellRecord,
+}
+
+#[derive(Clone, Debug, Serialize)]
+struct CellRecord {
+    cell: Option<u64>,
+    substrate: String,
+    substrate_smiles: String,
+    base: String,
+    electrophile: String,
+    electrophile_smiles: String,
+    solvent: String,
+    temperature_c: f64,
+    formation_temperature_c: f64,
+    base_equiv: f64,
+    electrophile_equiv: f64,
+    concentration_m: f64,
+    time_h: f64,
+    dosing_min: f64,
+    addition: String,
 }
 
 #[derive(Clone, Debug, Serialize)]
@@ -69,9 +90,10 @@ struct AdviceRecord {
     expected_yield: f64,
 }
 
-impl From<Explanation> for ExplanationDocument {
-    fn from(told: Explanation) -> ExplanationDocument {
+impl ExplanationDocument {
+    pub(crate) fn new(cell: CellDescription, told: Explanation) -> ExplanationDocument {
         ExplanationDocument {
+            cell: cell.into(),
             expected_yield: told.expected_yield,
             yield_sigma: told.yield_sigma,
             yield_on_limiting: told.yield_on_limiting,
@@ -95,6 +117,28 @@ impl From<Explanation> for ExplanationDocument {
             limits: told.limits,
             advice: told.advice.into_iter().map(AdviceRecord::from).collect(),
             model: told.model,
+        }
+    }
+}
+
+impl From<CellDescription> for CellRecord {
+    fn from(cell: CellDescription) -> CellRecord {
+        CellRecord {
+            cell: cell.cell,
+            substrate: cell.substrate,
+            substrate_smiles: cell.substrate_smiles,
+            base: cell.base,
+            electrophile: cell.electrophile,
+            electrophile_smiles: cell.electrophile_smiles,
+            solvent: cell.solvent,
+            temperature_c: cell.temperature_c,
+            formation_temperature_c: cell.formation_temperature_c,
+            base_equiv: cell.base_equiv,
+            electrophile_equiv: cell.electrophile_equiv,
+            concentration_m: cell.concentration_m,
+            time_h: cell.time_h,
+            dosing_min: cell.dosing_min,
+            addition: cell.addition,
         }
     }
 }

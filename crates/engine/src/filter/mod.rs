@@ -9,5 +9,4 @@ mod field;
 mod read;
 mod token;
 
-pub(crate) use bind::BoundFilter;
 pub(crate) use read::Filter;

@@ -25,7 +25,7 @@ pub struct Analogues {
 
 impl Analogues {
     /// Distance ℓ over which residuals resemble each other, pK units; from cross-validation.
-    pub const REACH: f64 = 1.0;
+    pub const REACH: f64 = 2.0;
     /// Weight λ of "no correction"; from cross-validation.
     pub const DOUBT: f64 = 1.0;
     /// Most that one descriptor counts, pK units.

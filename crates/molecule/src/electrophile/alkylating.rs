@@ -12,7 +12,8 @@ struct Candidate {
     leaving: LeavingGroup,
 }
 
-const VINYL: &str = "a vinyl halide does not undergo SN2: sp2 carbon cannot be attacked from behind";
+const VINYL: &str =
+    "a vinyl halide does not undergo SN2: sp2 carbon cannot be attacked from behind";
 const ARYL: &str =
     "an aryl halide does not undergo SN2: aromatic carbon cannot be attacked from behind";
 const BRIDGEHEAD: &str =
@@ -166,8 +167,8 @@ fn halogens_on(molecule: &Molecule, carbon: usize) -> usize {
 
 /// The sulfonate or sulfate that an oxygen between carbon and sulfonyl belongs to.
 fn sulfonate(molecule: &Molecule, oxygen: usize) -> Result<Option<LeavingGroup>, String> {
-    let between = molecule.neighbours(oxygen).len() == 2
-        && saturated_neighbour(molecule, oxygen).is_some();
+    let between =
+        molecule.neighbours(oxygen).len() == 2 && saturated_neighbour(molecule, oxygen).is_some();
     let sulfur = molecule
         .neighbours(oxygen)
         .iter()

@@ -70,15 +70,8 @@ pub(super) fn find(molecule: &Molecule) -> Result<Option<ElectrophilicGroup>, St
 }
 
 /// Which end of the alkene is α: the one with the stronger acceptors.
-fn better_reading(
-    molecule: &Molecule,
-    one: usize,
-    other: usize,
-) -> Result<Option<Alkene>, String> {
-    let readings = [
-        read(molecule, one, other)?,
-        read(molecule, other, one)?,
-    ];
+fn better_reading(molecule: &Molecule, one: usize, other: usize) -> Result<Option<Alkene>, String> {
+    let readings = [read(molecule, one, other)?, read(molecule, other, one)?];
     Ok(readings
         .into_iter()
         .flatten()

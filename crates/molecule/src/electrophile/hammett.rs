@@ -18,7 +18,11 @@ struct Substituent {
 }
 
 const fn substituent(pattern: &'static str, meta: f64, para: f64) -> Substituent {
-    Substituent { pattern, meta, para }
+    Substituent {
+        pattern,
+        meta,
+        para,
+    }
 }
 
 /// The first pattern that matches counts: special groups stand before general ones.

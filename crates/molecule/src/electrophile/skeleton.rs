@@ -41,7 +41,7 @@ pub(super) fn classify(
         .neighbours(carbon)
         .iter()
         .map(|(other, _)| *other)
-        .filter(|other| *other != leaving)
+        .filter(|other| *other != leaving && molecule.element(*other) != 1)
         .collect();
     refuse_heteroatoms(molecule, &around)?;
     let kinds: Vec<Beside> = around.iter().map(|a| beside(molecule, *a)).collect();
@@ -85,7 +85,7 @@ fn refuse_heteroatoms(molecule: &Molecule, around: &[usize]) -> Result<(), &'sta
             );
         }
         match molecule.element(other) {
-            CARBON | 1 => {}
+            CARBON => {}
             7 | 8 | 16 => {
                 return Err(
                     "a halide next to O, N or S reacts by way of a cation, which is not covered",

@@ -72,12 +72,11 @@ pub(super) fn describe(molecule: &Molecule, site: usize) -> Option<CarbonSite> {
 fn increment(of: Group) -> Option<&'static str> {
     use Group::*;
     Some(match of {
-        Aldehyde => "aldehyde",
-        AlkylKetone | AcylHalide => "alkyl ketone",
+        Aldehyde | AlkylKetone | AcylHalide => "alkyl ketone",
         ArylKetone => "aryl ketone",
-        Ester | CarboxylicAcid | Imide => "ester",
+        Ester | CarboxylicAcid | Imide | Thioester => "ester",
         Amide | Imidoyl => "amide",
-        Thioester | Thiocarbonyl => "thioester",
+        Thiocarbonyl => "thiocarbonyl",
         Thioamide => "thioamide",
         Nitrile => "nitrile",
         Isocyano => "isocyano",
@@ -173,9 +172,16 @@ impl Surroundings<'_> {
                 None => descriptors.add("five-membered heteroaryl", 1.0),
             }
         }
-        if !self.in_cyclopentadiene && self.count(|kind| kind == Group::Aryl) == 3 {
-            descriptors.add("third aryl", 1.0);
+        if self.in_cyclopentadiene {
+            return;
         }
+        let crowded = match (self.count(|kind| kind == Group::Aryl), self.acceptors()) {
+            (3, _) => "third aryl",
+            (2, 1..) => "second aryl beside acceptor",
+            (1, 2..) if self.count(Group::is_carbonyl) >= 2 => "aryl between carbonyls",
+            _ => return,
+        };
+        descriptors.add(crowded, 1.0);
     }
 
     fn fused_rings(&self, ring: &[usize]) -> usize {
@@ -197,6 +203,11 @@ impl Surroundings<'_> {
             if !kind.is_carbonyl() {
                 continue;
             }
+            match kind {
+                Group::Aldehyde => descriptors.add("aldehyde in place of ketone", 1.0),
+                Group::Thioester => descriptors.add("sulfur in place of ester oxygen", 1.0),
+                _ => {}
+            }
             let in_ring = smallest_ring(self.molecule, &[self.site, *carbonyl]).is_some();
             for (far, bond) in beyond(self.molecule, *carbonyl, self.site) {
                 if bond != Bond::Single {
@@ -208,7 +219,9 @@ impl Surroundings<'_> {
                         descriptors.add("σ of aroyl", sigma);
                     }
                     Group::AlkylKetone => self.ketone_terms(descriptors, *carbonyl, far, in_ring),
-                    Group::Ester if !in_ring => self.ester_terms(descriptors, *carbonyl, far),
+                    Group::Ester | Group::Thioester if !in_ring => {
+                        self.ester_terms(descriptors, *carbonyl, far)
+                    }
                     Group::Amide => self.amide_terms(descriptors, *carbonyl, far),
                     _ => {}
                 }
@@ -319,7 +332,12 @@ impl Surroundings<'_> {
             let aryls = beyond(self.molecule, far, nitrogen)
                 .filter(|(atom, _)| self.molecule.atoms()[*atom].aromatic)
                 .count();
-            descriptors.add("aryl at far end of azaallyl", aryls as f64);
+            let name = if self.acceptors() == 0 {
+                "aryl at far end of azaallyl, no acceptor"
+            } else {
+                "aryl at far end of azaallyl, with acceptor"
+            };
+            descriptors.add(name, aryls as f64);
             let donors = beyond(self.molecule, far, nitrogen)
                 .filter(|(atom, _)| matches!(self.molecule.atoms()[*atom].element, 7 | 8 | 16))
                 .count();
@@ -358,6 +376,8 @@ impl Surroundings<'_> {
                     }
                 }
             }
+        } else if self.has(Group::Aldehyde) && self.acceptors() == 1 {
+            descriptors.add("alkyl beside aldehyde", alkyls as f64);
         } else if self.has(Group::Aryl) && self.acceptors() == 1 {
             descriptors.add("alkyl beside aryl and acceptor", alkyls as f64);
         } else if ring_acceptor {
@@ -464,33 +484,24 @@ impl Surroundings<'_> {
             let aryl_in_ring = self
                 .with(|kind| kind == Group::Aryl)
                 .find(|aryl| smallest_ring(molecule, &[*aryl, self.site, *carbonyl]) == Some(size));
-            if let Some(aryl) = aryl_in_ring {
-                self.arene_fused(descriptors, aryl, *carbonyl, size);
-            }
-            match kind {
-                Group::Ester => descriptors.add("lactone", 1.0),
-                Group::AlkylKetone | Group::ArylKetone => descriptors.add(
-                    match size {
-                        ..=5 => "ketone in ring of four or five",
-                        6 => "ketone in ring of six",
-                        7..=9 => "ketone in ring of seven to nine",
-                        _ => "ketone in large ring",
-                    },
-                    1.0,
-                ),
-                _ => {}
-            }
+            let fused = aryl_in_ring.and_then(|aryl| self.arene_fused(aryl, *carbonyl, size));
+            let name = match (fused, kind) {
+                (Some(name), _) => name,
+                (None, Group::Ester) => "lactone",
+                (None, Group::AlkylKetone | Group::ArylKetone) => match size {
+                    ..=5 => "ketone in ring of four or five",
+                    6 => "ketone in ring of six",
+                    7..=9 => "ketone in ring of seven to nine",
+                    _ => "ketone in large ring",
+                },
+                _ => continue,
+            };
+            descriptors.add(name, 1.0);
         }
     }
 
-    /// Site between arene and C=X in one ring: planar, and the enolate is benzofuran- or indole-like.
-    fn arene_fused(
-        &self,
-        descriptors: &mut Descriptors,
-        aryl: usize,
-        carbonyl: usize,
-        size: usize,
-    ) {
+    /// Site between arene and C=X in one small ring: what the enolate is then part of.
+    fn arene_fused(&self, aryl: usize, carbonyl: usize, size: usize) -> Option<&'static str> {
         let hetero = self.molecule.rings().iter().any(|ring| {
             ring.len() == size
                 && [aryl, self.site, carbonyl]
@@ -500,13 +511,12 @@ impl Surroundings<'_> {
                     .iter()
                     .any(|atom| self.molecule.atoms()[*atom].element != 6)
         });
-        let name = match (size, hetero) {
-            (..=4, _) => "antiaromatic enolate",
-            (5, true) => "enolate becomes indole or benzofuran",
-            (5, false) => "enolate becomes indene",
-            _ => return,
-        };
-        descriptors.add(name, 1.0);
+        match (size, hetero) {
+            (..=4, _) => Some("antiaromatic enolate"),
+            (5, true) => Some("enolate becomes indole or benzofuran"),
+            (5, false) => Some("enolate becomes indene"),
+            _ => None,
+        }
     }
 
     fn cyclopentadiene_substituents(&self, descriptors: &mut Descriptors, ring: &[usize]) {
@@ -529,7 +539,7 @@ impl Surroundings<'_> {
 
     fn activated(&self) -> bool {
         let carbanion_of_hydrocarbon = self.in_cyclopentadiene
-            || self.count(|kind| matches!(kind, Group::Aryl | Group::Vinyl)) >= 2;
+            || self.count(|kind| matches!(kind, Group::Aryl | Group::Vinyl | Group::Imino)) >= 2;
         let real_acceptor = self
             .groups
             .iter()

@@ -49,6 +49,10 @@ fn constants(of: Group) -> (f64, f64, f64) {
     }
 }
 
+/// The constants of OCOR and NHCOR (same source).
+const ACYLOXY: (f64, f64, f64) = (0.39, 0.31, 0.20);
+const ACYLAMINO: (f64, f64, f64) = (0.21, 0.00, 0.00);
+
 /// σ of a ring nitrogen in place of CH: (ortho, meta, para), neutral.
 ///
 /// Tomasik, Johnson, Adv. Heterocycl. Chem. 1976, 20, 1 (from memory, rounded).
@@ -107,6 +111,18 @@ fn ring_nitrogen(molecule: &Molecule, atom: usize, distance: usize) -> f64 {
     [ortho, meta, para][distance - 1]
 }
 
+/// Constants of the substituent `atom` on the ring atom `from`.
+fn on_ring(molecule: &Molecule, atom: usize, from: usize) -> (f64, f64, f64) {
+    let kind = group(molecule, atom, from);
+    let drawn_away =
+        beyond(molecule, atom, from).any(|(far, _)| group(molecule, far, atom).is_acceptor());
+    match kind {
+        Group::Alkoxy if drawn_away => ACYLOXY,
+        Group::Amino if drawn_away => ACYLAMINO,
+        _ => constants(kind),
+    }
+}
+
 fn substituents(
     molecule: &Molecule,
     ring: &[usize],
@@ -119,7 +135,7 @@ fn substituents(
         .iter()
         .filter(|(other, bond)| *bond == Bond::Single && !ring.contains(other))
         .map(|(other, _)| {
-            let (meta, para, para_minus) = constants(group(molecule, *other, atom));
+            let (meta, para, para_minus) = on_ring(molecule, *other, atom);
             let conjugated = match conjugation {
                 Conjugation::Direct if para_minus > 0.0 => para_minus,
                 _ => para,

@@ -484,14 +484,16 @@ fn nitrogen_corrections(
         }
     }
     for heteroatom in &s.heteroatoms {
-        let name = match (molecule.atoms()[*heteroatom].element, class) {
-            (8, _) => "oxygen on N–H",
-            (_, AnionClass::ArylNitrogen | AnionClass::AlkylNitrogen) => {
-                "amino on amine or aniline"
-            }
-            _ => "amino on amide-like nitrogen",
-        };
-        d.add(name, 1.0);
+        let oxygen = molecule.atoms()[*heteroatom].element == 8;
+        d.add(
+            match class {
+                AnionClass::ImideNitrogen => "oxygen or amino on imide-like nitrogen",
+                _ if oxygen => "oxygen on N–H",
+                AnionClass::ArylNitrogen | AnionClass::AlkylNitrogen => "amino on amine or aniline",
+                _ => "amino on amide-like nitrogen",
+            },
+            1.0,
+        );
     }
     if supported && class != AnionClass::AlkylNitrogen {
         d.add("carbon on amide-like nitrogen", s.alkyls.len() as f64);

@@ -1,7 +1,7 @@
 //! Acidic sites.
 
 use enolattice_engine::SiteReport;
-use enolattice_model::AcidSite;
+use enolattice_model::{AcidSite, Contribution};
 use enolattice_molecule::AnionClass;
 
 use super::{ConversionError, enums, numbers};
@@ -68,6 +68,8 @@ impl TryFrom<v1::AcidSite> for AcidSite {
             )?,
             source: site.source,
             outside: site.outside_fit,
+            // How an estimate hangs on the coefficients stays with the engine that draws them.
+            contribution: Contribution::default(),
         })
     }
 }
@@ -153,6 +155,7 @@ mod tests {
                 origin: Origin::Estimated,
                 source: "group contributions".into(),
                 outside: true,
+                contribution: Contribution::default(),
             };
             let back = AcidSite::try_from(v1::AcidSite::from(&site)).expect("converts");
             assert_eq!(format!("{back:?}"), format!("{site:?}"));

@@ -1,0 +1,248 @@
+//! The tables of the fit and the page on their quality, as text.
+
+use std::fmt::Write;
+
+use super::observations::Observed;
+use super::validation::Held;
+use super::{Fit, Observation, Term, Validation};
+
+/// `acidity_coefficients.tsv`.
+pub(super) fn coefficients(terms: &[Term], fit: &Fit) -> String {
+    let mut text = String::from(
+        "# Coefficients of the acidity estimate (pKa in DMSO, 25 C), as fitted by `enolattice-calibration acidity`.\n\
+         # source: where a term starts and why; `training_sites` says how many measured sites moved it from there.\n\
+         name\trole\tvalue\tstandard_error\ttraining_sites\tunit\tsource\n",
+    );
+    for (i, term) in terms.iter().enumerate() {
+        let _ = writeln!(
+            text,
+            "{}\t{}\t{:.4}\t{:.4}\t{}\t{}\t{}",
+            term.name,
+            term.role_text,
+            fit.values[i],
+            fit.standard_errors[i],
+            fit.training_sites[i],
+            term.unit,
+            term.source
+        );
+    }
+    text
+}
+
+/// `acidity_analogues.tsv`.
+pub(super) fn analogues(fit: &Fit, rows: &[Observation]) -> String {
+    let mut text = String::from(
+        "# Sites of the fit with what the group contributions leave unexplained (measured - estimated, pK units).\n\
+         compound\tatom\tpka_dmso\tresidual\tdescriptors\n",
+    );
+    for (row, at) in rows.iter().zip(&fit.assigned) {
+        if !matches!(row.observed, Observed::Acidity { .. }) {
+            continue;
+        }
+        let candidate = &row.candidates[*at];
+        let descriptors: Vec<String> = candidate
+            .site
+            .descriptors
+            .iter()
+            .map(|(name, value)| format!("{name}:{value:.4}"))
+            .collect();
+        let _ = writeln!(
+            text,
+            "{}\t{}\t{:.1}\t{:.4}\t{}",
+            row.name,
+            candidate.site.atom,
+            row.value,
+            row.value - candidate.contribution.value(&fit.values),
+            descriptors.join("; ")
+        );
+    }
+    text
+}
+
+/// Mean absolute, root mean square and largest error.
+pub(super) struct Errors {
+    pub(super) sites: usize,
+    pub(super) mean_absolute: f64,
+    pub(super) root_mean_square: f64,
+    pub(super) largest: f64,
+    pub(super) bias: f64,
+}
+
+pub(super) fn summary(errors: impl Iterator<Item = f64>) -> Errors {
+    let errors: Vec<f64> = errors.collect();
+    let n = errors.len().max(1) as f64;
+    Errors {
+        sites: errors.len(),
+        mean_absolute: errors.iter().map(|e| e.abs()).sum::<f64>() / n,
+        root_mean_square: (errors.iter().map(|e| e * e).sum::<f64>() / n).sqrt(),
+        largest: errors.iter().fold(0.0, |largest: f64, e| largest.max(e.abs())),
+        bias: errors.iter().sum::<f64>() / n,
+    }
+}
+
+/// Least number of held-out sites for a class to have its own error.
+const ENOUGH: usize = 8;
+/// σ of a normal distribution for each unit of mean absolute error, √(π/2).
+const NORMAL: f64 = 1.2533;
+
+/// `acidity_errors.tsv`: σ of an estimate by class of anion.
+pub(super) fn errors(rows: &[Observation], validation: &Validation) -> String {
+    let mut text = String::from(
+        "# Error of the acidity estimate for compounds it has not seen, by class of anion (five-fold cross-validation).\n\
+         # sigma = sqrt(pi/2) of the mean absolute error, drawn towards that of all by 8 sites' weight.\n\
+         class\tsites\tmean_absolute_error\tsigma\n",
+    );
+    let all = summary(validation.five_fold.iter().map(|held| held.corrected));
+    let _ = writeln!(
+        text,
+        "any\t{}\t{:.2}\t{:.2}",
+        all.sites,
+        all.mean_absolute,
+        NORMAL * all.mean_absolute
+    );
+    for (class, errors) in by_class(rows, &validation.five_fold) {
+        let weight = ENOUGH as f64;
+        let n = errors.sites as f64;
+        let shrunk = (n * errors.mean_absolute + weight * all.mean_absolute) / (n + weight);
+        let _ = writeln!(
+            text,
+            "{class}\t{}\t{:.2}\t{:.2}",
+            errors.sites,
+            errors.mean_absolute,
+            NORMAL * shrunk
+        );
+    }
+    text
+}
+
+fn by_class(rows: &[Observation], held: &[Held]) -> Vec<(String, Errors)> {
+    let class = |held: &Held| {
+        let row = &rows[held.row];
+        let at = match row.observed {
+            Observed::Acidity { at: Some(at) } => at,
+            _ => held.predicted_at,
+        };
+        row.class(at)
+    };
+    let mut classes: Vec<_> = held.iter().map(class).collect();
+    classes.sort_unstable();
+    classes.dedup();
+    classes
+        .into_iter()
+        .map(|wanted| {
+            let errors = held.iter().filter(|one| class(one) == wanted).map(|one| one.corrected);
+            (format!("{wanted:?}"), summary(errors))
+        })
+        .collect()
+}
+
+/// The page on the quality of the fit.
+pub(super) fn page(
+    terms: &[Term],
+    fit: &Fit,
+    rows: &[Observation],
+    validation: &Validation,
+) -> String {
+    let mut text = String::from("# The acidity estimate and how good it is\n\n");
+    let _ = writeln!(
+        text,
+        "Written by `cargo run -p enolattice-calibration -- acidity`; do not edit.\n\n\
+         pKa in DMSO at 25 °C of a site with all its equivalent hydrogens:\n\
+         `pKa = p − Σ a·x + Σ_pairs κ·a_i·a_j/100 + Σ b·x + analogues`, fitted on {} measured sites,\n\
+         {} anchors and {} enolate equilibria; {} coefficients, each drawn towards a chemically expected start.\n",
+        rows.iter().filter(|row| row.measured).count(),
+        rows.iter().filter(|row| !row.measured && row.observed != Observed::Difference).count(),
+        rows.iter().filter(|row| row.observed == Observed::Difference).count(),
+        terms.len()
+    );
+    quality(&mut text, rows, validation);
+    classes(&mut text, rows, validation);
+    worst(&mut text, rows, validation);
+    coefficient_list(&mut text, terms, fit);
+    text
+}
+
+fn quality(text: &mut String, rows: &[Observation], validation: &Validation) {
+    text.push_str(
+        "## Compounds held out\n\n\
+         In scope: C–H beside C=O, C≡N, NO2 or S(O)n. A compound's pKa is that of the site predicted to be most acidic.\n\n\
+         | held out | compounds | | n | MAE | RMSE | bias | worst |\n| --- | --- | --- | --- | --- | --- | --- | --- |\n",
+    );
+    let ways = [
+        ("one in five", &validation.five_fold),
+        ("one scaffold group", &validation.leave_group_out),
+    ];
+    for (way, held) in ways {
+        let scopes: [(&str, Box<dyn Fn(&Observation) -> bool>); 3] = [
+            ("C–H in scope", Box::new(|row| row.in_scope)),
+            ("all C–H", Box::new(|row| element(row) == 6)),
+            ("O–H, N–H, S–H", Box::new(|row| element(row) != 6)),
+        ];
+        for (scope, belongs) in &scopes {
+            let chosen: Vec<&Held> = held.iter().filter(|one| belongs(&rows[one.row])).collect();
+            let kinds: [(&str, fn(&Held) -> f64); 2] = [
+                ("groups alone", |one| one.bare),
+                ("with analogues", |one| one.corrected),
+            ];
+            for (kind, error) in kinds {
+                let e = summary(chosen.iter().map(|one| error(one)));
+                let _ = writeln!(
+                    text,
+                    "| {way} | {scope} | {kind} | {} | {:.2} | {:.2} | {:+.2} | {:.1} |",
+                    e.sites, e.mean_absolute, e.root_mean_square, e.bias, e.largest
+                );
+            }
+        }
+    }
+}
+
+fn element(row: &Observation) -> u8 {
+    row.candidates[0].site.element
+}
+
+fn classes(text: &mut String, rows: &[Observation], validation: &Validation) {
+    text.push_str(
+        "\n## By class of anion, one in five held out\n\n\
+         | class | n | MAE | bias | worst |\n| --- | --- | --- | --- | --- |\n",
+    );
+    for (class, e) in by_class(rows, &validation.five_fold) {
+        let _ = writeln!(
+            text,
+            "| {class} | {} | {:.2} | {:+.2} | {:.1} |",
+            e.sites, e.mean_absolute, e.bias, e.largest
+        );
+    }
+}
+
+fn worst(text: &mut String, rows: &[Observation], validation: &Validation) {
+    text.push_str(
+        "\n## The worst, one in five held out\n\n\
+         | compound | measured | predicted − measured |\n| --- | --- | --- |\n",
+    );
+    let mut held: Vec<&Held> = validation.five_fold.iter().collect();
+    held.sort_by(|a, b| b.corrected.abs().total_cmp(&a.corrected.abs()).then(a.row.cmp(&b.row)));
+    for one in held.into_iter().take(30) {
+        let row = &rows[one.row];
+        let _ = writeln!(text, "| `{}` | {:.1} | {:+.1} |", row.name, row.value, one.corrected);
+    }
+}
+
+fn coefficient_list(text: &mut String, terms: &[Term], fit: &Fit) {
+    text.push_str(
+        "\n## Coefficients\n\n\
+         | term | role | start | fitted | standard error | sites | unit |\n| --- | --- | --- | --- | --- | --- | --- |\n",
+    );
+    for (i, term) in terms.iter().enumerate() {
+        let _ = writeln!(
+            text,
+            "| {} | {} | {} | {:.2} | {:.2} | {} | {} |",
+            term.name,
+            term.role_text,
+            term.start,
+            fit.values[i],
+            fit.standard_errors[i],
+            fit.training_sites[i],
+            term.unit
+        );
+    }
+}

@@ -1,0 +1,150 @@
+//! An engine in this process or behind a server: the commands cannot tell them apart.
+
+use enolattice_engine::{
+    CellDescription, Engine, EngineConfig, ExplainTarget, Job, RankPage, RankQuery, ReagentRow, SiteReport, Submission,
+};
+use enolattice_model::Explanation;
+
+use crate::commands::EngineOptions;
+use crate::fault::Fault;
+
+/// What a command needs of an engine in this process.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub(crate) enum Need {
+    /// Chemistry only: no data directory is opened.
+    Chemistry,
+    /// The jobs of the data directory, as they are.
+    Jobs,
+    /// Jobs that are worked at.
+    Work,
+}
+
+/// An engine, wherever it is.
+#[derive(Debug)]
+pub(crate) enum Client {
+    /// In this process.
+    Embedded(Engine),
+    /// Behind a server.
+    Remote(enolattice_wire::Client),
+}
+
+/// The changes of a job.
+#[derive(Debug)]
+pub(crate) enum Changes {
+    /// From an engine in this process.
+    Embedded {
+        /// Where they come from.
+        receiver: tokio::sync::watch::Receiver<Job>,
+        /// Whether the present state has been given.
+        begun: bool,
+    },
+    /// From a server.
+    Remote(enolattice_wire::JobWatch),
+}
+
+impl Client {
+    /// Opens the data directory or connects to the server.
+    pub(crate) async fn open(options: &EngineOptions, need: Need) -> Result<Client, Fault> {
+        if let Some(server) = &options.server {
+            return Ok(Client::Remote(enolattice_wire::Client::connect(server).await?));
+        }
+        let config = EngineConfig { data_dir: options.data_dir(), threads: options.threads };
+        Ok(Client::Embedded(match need {
+            Need::Chemistry => Engine::without_data().await?,
+            Need::Jobs => Engine::open_idle(config).await?,
+            Need::Work => Engine::open(config).await?,
+        }))
+    }
+
+    /// Whether the engine is in this process.
+    pub(crate) fn is_embedded(&self) -> bool {
+        matches!(self, Client::Embedded(_))
+    }
+
+    pub(crate) async fn submit(&self, submission: Submission) -> Result<Job, Fault> {
+        match self {
+            Client::Embedded(engine) => Ok(engine.submit(submission).await?),
+            Client::Remote(server) => Ok(server.submit(submission).await?),
+        }
+    }
+
+    pub(crate) async fn jobs(&self) -> Result<Vec<Job>, Fault> {
+        match self {
+            Client::Embedded(engine) => Ok(engine.jobs().await?),
+            Client::Remote(server) => Ok(server.jobs().await?),
+        }
+    }
+
+    pub(crate) async fn watch(&self, job: &str) -> Result<Changes, Fault> {
+        match self {
+            Client::Embedded(engine) => Ok(Changes::Embedded { receiver: engine.watch(job).await?, begun: false }),
+            Client::Remote(server) => Ok(Changes::Remote(server.watch(job).await?)),
+        }
+    }
+
+    pub(crate) async fn cancel(&self, job: &str) -> Result<Job, Fault> {
+        match self {
+            Client::Embedded(engine) => Ok(engine.cancel(job).await?),
+            Client::Remote(server) => Ok(server.cancel(job).await?),
+        }
+    }
+
+    pub(crate) async fn rank(&self, query: RankQuery) -> Result<RankPage, Fault> {
+        match self {
+            Client::Embedded(engine) => Ok(engine.rank(query).await?),
+            Client::Remote(server) => Ok(server.rank(query).await?),
+        }
+    }
+
+    /// What a cell is made of and everything about it.
+    pub(crate) async fn explain(
+        &self,
+        target: ExplainTarget,
+    ) -> Result<(CellDescription, Explanation), Fault> {
+        match self {
+            Client::Embedded(engine) => {
+                Ok((engine.describe(target.clone()).await?, engine.explain(target).await?))
+            }
+            Client::Remote(server) => Ok(server.explain(target).await?),
+        }
+    }
+
+    pub(crate) async fn sites(&self, smiles: &[String]) -> Result<Vec<SiteReport>, Fault> {
+        match self {
+            Client::Embedded(engine) => Ok(engine.sites(smiles).await?),
+            Client::Remote(server) => Ok(server.sites(smiles).await?),
+        }
+    }
+
+    pub(crate) async fn reagents(&self, word: &str) -> Result<Vec<ReagentRow>, Fault> {
+        match self {
+            Client::Embedded(engine) => Ok(engine.reagents(word).await?),
+            Client::Remote(server) => Ok(server.reagents(word).await?),
+        }
+    }
+
+    /// Closes the data directory; unfinished jobs go on when it is opened again.
+    pub(crate) async fn close(self) -> Result<(), Fault> {
+        match self {
+            Client::Embedded(engine) => Ok(engine.close().await?),
+            Client::Remote(_) => Ok(()),
+        }
+    }
+}
+
+impl Changes {
+    /// The present state at first, then each change; none after the end.
+    pub(crate) async fn next(&mut self) -> Result<Option<Job>, Fault> {
+        match self {
+            Changes::Embedded { receiver, begun: begun @ false } => {
+                *begun = true;
+                Ok(Some(receiver.borrow_and_update().clone()))
+            }
+            Changes::Embedded { receiver, .. } => match receiver.changed().await {
+                Ok(()) => Ok(Some(receiver.borrow_and_update().clone())),
+                Err(_) => Ok(None),
+            },
+            Changes::Remote(watch) => Ok(watch.next().await?),
+        }
+    }
+}

@@ -1,0 +1,69 @@
+//! The commands, one a file; their doc comments are their help.
+
+mod cancel;
+mod explain;
+mod following;
+mod jobs;
+mod options;
+mod rank;
+mod reagents;
+mod screen;
+mod serve;
+mod sites;
+mod submit;
+mod watch;
+
+use clap::{Parser, Subcommand};
+use tracing_subscriber::EnvFilter;
+
+pub(crate) use options::EngineOptions;
+
+use crate::fault::Fault;
+
+/// Screens grids of substrate × base × electrophile × solvent × conditions and ranks every cell.
+///
+/// Data go to stdout, talk to stderr. Exit code 0: done; 1: a job failed or was not finished;
+/// 2: the input is at fault; 3: the service is.
+#[derive(Debug, Parser)]
+#[command(name = "enolattice", version)]
+pub(crate) struct Program {
+    #[command(subcommand)]
+    command: Command,
+}
+
+#[derive(Debug, Subcommand)]
+enum Command {
+    Screen(screen::Screen),
+    Serve(serve::Serve),
+    Submit(submit::Submit),
+    Jobs(jobs::Jobs),
+    Watch(watch::Watch),
+    Cancel(cancel::Cancel),
+    Rank(rank::Rank),
+    Explain(explain::Explain),
+    Sites(sites::Sites),
+    Reagents(reagents::Reagents),
+}
+
+/// Starts the log on stderr; `ENOLATTICE_LOG` says what it takes, e.g. `debug`.
+pub(crate) fn start_log(program: &Program) {
+    let usual = if matches!(program.command, Command::Serve(_)) { "info" } else { "warn" };
+    let filter = EnvFilter::try_from_env("ENOLATTICE_LOG").unwrap_or_else(|_| EnvFilter::new(usual));
+    tracing_subscriber::fmt().with_env_filter(filter).with_writer(std::io::stderr).with_target(false).init();
+}
+
+/// Runs the command.
+pub(crate) async fn run(program: Program) -> Result<(), Fault> {
+    match program.command {
+        Command::Screen(command) => command.run().await,
+        Command::Serve(command) => command.run().await,
+        Command::Submit(command) => command.run().await,
+        Command::Jobs(command) => command.run().await,
+        Command::Watch(command) => command.run().await,
+        Command::Cancel(command) => command.run().await,
+        Command::Rank(command) => command.run().await,
+        Command::Explain(command) => command.run().await,
+        Command::Sites(command) => command.run().await,
+        Command::Reagents(command) => command.run().await,
+    }
+}

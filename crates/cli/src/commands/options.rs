@@ -1,0 +1,99 @@
+//! Options that several commands share.
+
+use std::path::PathBuf;
+
+use clap::{Args, ValueEnum};
+use enolattice_engine::{Axis, Order};
+
+/// Where results are kept unless the user says otherwise.
+const USUAL_DATA_DIR: &str = "enolattice-data";
+
+/// Which engine to use.
+#[derive(Clone, Debug, Default, Args)]
+pub(crate) struct EngineOptions {
+    /// Directory of jobs and results [default: $ENOLATTICE_DATA, else ./enolattice-data].
+    #[arg(long, value_name = "DIR", conflicts_with = "server")]
+    data: Option<PathBuf>,
+    /// Use the engine of a server instead, e.g. http://127.0.0.1:7413.
+    #[arg(long, value_name = "URL")]
+    pub(crate) server: Option<String>,
+    /// Compute threads of the engine in this process; 0: one for each core.
+    #[arg(long, value_name = "N", default_value_t = 0, conflicts_with = "server")]
+    pub(crate) threads: usize,
+}
+
+impl EngineOptions {
+    /// An engine in this process that keeps its data in this directory.
+    pub(crate) fn in_dir(data: Option<PathBuf>) -> EngineOptions {
+        EngineOptions { data, ..EngineOptions::default() }
+    }
+
+    pub(crate) fn data_dir(&self) -> PathBuf {
+        let from_environment = || std::env::var_os("ENOLATTICE_DATA").filter(|dir| !dir.is_empty());
+        match &self.data {
+            Some(dir) => dir.clone(),
+            None => from_environment().map_or_else(|| PathBuf::from(USUAL_DATA_DIR), PathBuf::from),
+        }
+    }
+
+    /// The options that lead another command to the same engine.
+    pub(crate) fn repeated(&self) -> String {
+        match (&self.server, &self.data) {
+            (Some(server), _) => format!(" --server {server}"),
+            (None, Some(dir)) => format!(" --data {}", dir.display()),
+            (None, None) => String::new(),
+        }
+    }
+}
+
+/// Order of a ranking.
+#[derive(Clone, Copy, Debug, Default, ValueEnum)]
+pub(crate) enum OrderName {
+    #[default]
+    #[value(name = "expected_yield", alias = "yield")]
+    ExpectedYield,
+    #[value(name = "p_hit")]
+    PHit,
+    #[value(name = "selectivity")]
+    Selectivity,
+    #[value(name = "feasibility")]
+    Feasibility,
+}
+
+impl From<OrderName> for Order {
+    fn from(name: OrderName) -> Order {
+        match name {
+            OrderName::ExpectedYield => Order::ExpectedYield,
+            OrderName::PHit => Order::PHit,
+            OrderName::Selectivity => Order::Selectivity,
+            OrderName::Feasibility => Order::Feasibility,
+        }
+    }
+}
+
+/// An axis of a campaign.
+#[derive(Clone, Copy, Debug, ValueEnum)]
+pub(crate) enum AxisName {
+    #[value(name = "substrate")]
+    Substrate,
+    #[value(name = "base")]
+    Base,
+    #[value(name = "electrophile")]
+    Electrophile,
+    #[value(name = "solvent")]
+    Solvent,
+    #[value(name = "temperature")]
+    Temperature,
+}
+
+impl From<AxisName> for Axis {
+    fn from(name: AxisName) -> Axis {
+        match name {
+            AxisName::Substrate => Axis::Substrate,
+            AxisName::Base => Axis::Base,
+            AxisName::Electrophile => Axis::Electrophile,
+            AxisName::Solvent => Axis::Solvent,
+            AxisName::Temperature => Axis::Temperature,
+        }
+    }
+}

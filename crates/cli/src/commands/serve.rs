@@ -1,0 +1,64 @@
+//! `serve`: the engine behind gRPC.
+
+use std::net::SocketAddr;
+use std::path::PathBuf;
+use std::sync::Arc;
+
+use clap::Args;
+use enolattice_engine::{Engine, EngineConfig};
+use tokio::net::TcpListener;
+
+use super::EngineOptions;
+use crate::fault::Fault;
+use crate::output::{print, talk};
+
+/// Run the engine with its queue as a gRPC service.
+///
+/// Prints `listening on ADDRESS` on stdout when it takes connections. Ends between two blocks
+/// at SIGTERM or ctrl-c; unfinished jobs go on at the next start.
+#[derive(Debug, Args)]
+pub(super) struct Serve {
+    /// Address to listen on; port 0 takes a free one.
+    #[arg(long, value_name = "ADDR", default_value = "127.0.0.1:7413")]
+    listen: SocketAddr,
+    /// Directory of jobs and results [default: $ENOLATTICE_DATA, else ./enolattice-data].
+    #[arg(long, value_name = "DIR")]
+    data: Option<PathBuf>,
+    /// Compute threads; 0: one for each core.
+    #[arg(long, value_name = "N", default_value_t = 0)]
+    threads: usize,
+}
+
+impl Serve {
+    pub(super) async fn run(self) -> Result<(), Fault> {
+        let data_dir = EngineOptions::in_dir(self.data).data_dir();
+        let listener = TcpListener::bind(self.listen).await.map_err(|error| {
+            Fault::Service(format!("{} cannot be listened on: {error}; choose another address with --listen", self.listen))
+        })?;
+        let address = listener.local_addr().map_err(|error| Fault::service(error.to_string()))?;
+        let config = EngineConfig { data_dir: data_dir.clone(), threads: self.threads };
+        let engine = Arc::new(Engine::open(config).await?);
+        talk(&format!("serving {} on {address}; ctrl-c stops", data_dir.display()));
+        print(&format!("listening on {address}"))?;
+        let served = enolattice_server::serve(engine.clone(), listener, stop_signal()).await;
+        engine.shutdown().await;
+        served.map_err(|error| Fault::service(error.to_string()))
+    }
+}
+
+/// Waits for SIGTERM or ctrl-c.
+async fn stop_signal() {
+    let interrupt = tokio::signal::ctrl_c();
+    #[cfg(unix)]
+    if let Ok(mut terminate) = tokio::signal::unix::signal(tokio::signal::unix::SignalKind::terminate()) {
+        tokio::select! {
+            _ = interrupt => {}
+            _ = terminate.recv() => {}
+        }
+        return;
+    }
+    // Without a handler for signals only the end of the process stops the service.
+    if interrupt.await.is_err() {
+        std::future::pending::<()>().await;
+    }
+}

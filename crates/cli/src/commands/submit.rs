@@ -1,0 +1,58 @@
+//! `submit`: a campaign into the queue.
+
+use std::path::PathBuf;
+
+use clap::Args;
+use enolattice_engine::Submission;
+
+use super::EngineOptions;
+use crate::campaign_file::read_campaign;
+use crate::client::{Client, Need};
+use crate::fault::Fault;
+use crate::json::JobRecord;
+use crate::output::{print, print_json, talk};
+use crate::text::count;
+
+/// Queue a campaign and print the id of its job.
+///
+/// When this returns, the job survives a power cut. Without `--server` it waits until an
+/// engine works at the directory: `watch` or `serve`.
+#[derive(Debug, Args)]
+pub(super) struct Submit {
+    /// The campaign.
+    file: PathBuf,
+    /// Your id of this request: sent again, it gives the same job.
+    #[arg(long, value_name = "ID", default_value = "")]
+    request_id: String,
+    /// Check the campaign; queue nothing.
+    #[arg(long)]
+    validate_only: bool,
+    #[command(flatten)]
+    engine: EngineOptions,
+    /// Print JSON.
+    #[arg(long)]
+    json: bool,
+}
+
+impl Submit {
+    pub(super) async fn run(self) -> Result<(), Fault> {
+        let campaign = read_campaign(&self.file)?;
+        let client = Client::open(&self.engine, Need::Jobs).await?;
+        let submission =
+            Submission { campaign, request_id: self.request_id, validate_only: self.validate_only };
+        let submitted = client.submit(submission).await;
+        client.close().await?;
+        let job = submitted?;
+        job.warnings.iter().for_each(|warning| talk(&format!("note: {warning}")));
+        if self.validate_only {
+            talk(&format!("the campaign is valid: {} cells; nothing was queued", count(job.cells)));
+        } else {
+            talk(&format!("queued {} cells; next: enolattice watch {}{}", count(job.cells), job.job, self.engine.repeated()));
+        }
+        match (self.json, self.validate_only) {
+            (true, _) => print_json(&JobRecord::from(job)),
+            (false, false) => print(&job.job),
+            (false, true) => Ok(()),
+        }
+    }
+}

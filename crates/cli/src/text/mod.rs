@@ -1,0 +1,20 @@
+//! What a person reads: tables and pages of text.
+
+mod cells;
+mod explanation;
+mod jobs;
+mod numbers;
+mod reagents;
+mod sites;
+mod table;
+
+pub(crate) use cells::cell_table;
+pub(crate) use explanation::explanation_page;
+pub(crate) use jobs::job_table;
+pub(crate) use numbers::{count, percent};
+pub(crate) use reagents::reagent_table;
+pub(crate) use sites::molecule_page;
+
+/// Stands below everything that is printed for the bench.
+pub(crate) const SAFETY: &str = "Predictions and cautions are no substitute for a hazard assessment: the supplier's \
+safety data sheet, local rules and qualified staff take precedence. No caution does not mean no hazard.";

@@ -1,0 +1,157 @@
+//! The engine: a model, and with a data directory a store and a scheduler.
+
+use std::sync::Arc;
+
+use enolattice_model::Model;
+use enolattice_scheduler::{Event, Scheduler, transition};
+use enolattice_store::{JobId, StateChange, Store};
+
+use crate::grids::Grids;
+use crate::open::now_unix_ms;
+use crate::watch::Watchers;
+use crate::{EngineError, Job};
+
+/// The engine: answers questions of chemistry and screens campaigns.
+///
+/// All calls may be made from many tasks at once; what takes time runs on
+/// blocking threads or the scheduler's own pool.
+#[derive(Debug)]
+pub struct Engine {
+    pub(crate) model: Arc<Model>,
+    pub(crate) queue: Option<Queue>,
+}
+
+/// What an engine with a data directory has.
+#[derive(Debug)]
+pub(crate) struct Queue {
+    pub(crate) store: Arc<Store>,
+    pub(crate) grids: Arc<Grids>,
+    pub(crate) watchers: Arc<Watchers>,
+    /// Absent where the engine only looks at its jobs.
+    pub(crate) scheduler: Option<Scheduler>,
+    pub(crate) notices: Vec<String>,
+}
+
+impl Engine {
+    /// What the user should know about the data directory as it was found: a broken
+    /// database set aside, jobs queued again. Empty where all is well.
+    pub fn notices(&self) -> &[String] {
+        self.queue.as_ref().map_or(&[], |queue| &queue.notices)
+    }
+
+    /// Fingerprint of the model, hexadecimal.
+    pub fn model_fingerprint(&self) -> String {
+        self.model.fingerprint().to_string()
+    }
+
+    /// All jobs, newest first.
+    ///
+    /// # Errors
+    /// [`EngineError::Store`].
+    pub async fn jobs(&self) -> Result<Vec<Job>, EngineError> {
+        let store = self.queue()?.store.clone();
+        blocking(move || {
+            let newest_first = store.jobs().into_iter().rev();
+            newest_first
+                .map(|record| Ok(Job::of_record(record.clone(), store.progress(record.id)?)))
+                .collect()
+        })
+        .await
+    }
+
+    /// One job.
+    ///
+    /// # Errors
+    /// [`EngineError::JobUnknown`], [`EngineError::Store`].
+    pub async fn job(&self, job: &str) -> Result<Job, EngineError> {
+        let (store, job) = (self.queue()?.store.clone(), job_id(job)?);
+        blocking(move || read_job(&store, job)).await
+    }
+
+    /// Changes of one job, from now to its end; the first value is its present state.
+    /// After the last change the sender is gone.
+    ///
+    /// # Errors
+    /// [`EngineError::JobUnknown`], [`EngineError::Store`].
+    pub async fn watch(&self, job: &str) -> Result<tokio::sync::watch::Receiver<Job>, EngineError> {
+        let queue = self.queue()?;
+        let (store, watchers, job) = (queue.store.clone(), queue.watchers.clone(), job_id(job)?);
+        let works = queue.scheduler.is_some();
+        blocking(move || watchers.watch(&store, job, works)).await
+    }
+
+    /// Cancels a job between two blocks.
+    ///
+    /// # Errors
+    /// [`EngineError::JobUnknown`], [`EngineError::WrongState`] where it has ended, [`EngineError::Store`].
+    pub async fn cancel(&self, job: &str) -> Result<Job, EngineError> {
+        let (queue, job) = (self.queue()?, job_id(job)?);
+        if let Some(scheduler) = &queue.scheduler {
+            scheduler.cancel(job).await?;
+        }
+        let (store, works) = (queue.store.clone(), queue.scheduler.is_some());
+        blocking(move || {
+            if !works {
+                cancel_waiting(&store, job)?;
+            }
+            read_job(&store, job)
+        })
+        .await
+    }
+
+    /// Stops between two blocks; unfinished jobs go on when the directory is opened again.
+    pub async fn shutdown(&self) {
+        if let Some(Queue { scheduler: Some(scheduler), watchers, .. }) = &self.queue {
+            scheduler.shutdown().await;
+            watchers.end();
+        }
+    }
+
+    /// Stops as [`Engine::shutdown`] does and closes the store.
+    ///
+    /// # Errors
+    /// [`EngineError::Store`] where the last blocks cannot be written.
+    pub async fn close(self) -> Result<(), EngineError> {
+        self.shutdown().await;
+        match self.queue {
+            None => Ok(()),
+            Some(queue) => blocking(move || Ok(queue.store.acknowledge()?)).await,
+        }
+    }
+
+    pub(crate) fn queue(&self) -> Result<&Queue, EngineError> {
+        self.queue.as_ref().ok_or_else(EngineError::without_store)
+    }
+}
+
+/// The id that a text means.
+pub(crate) fn job_id(text: &str) -> Result<JobId, EngineError> {
+    Ok(text.parse::<JobId>()?)
+}
+
+pub(crate) fn read_job(store: &Store, job: JobId) -> Result<Job, EngineError> {
+    Ok(Job::of_record(store.job(job)?, store.progress(job)?))
+}
+
+fn cancel_waiting(store: &Store, job: JobId) -> Result<(), EngineError> {
+    let from = store.job(job)?.state;
+    let to = transition(from, Event::Cancel).map_err(|refused| EngineError::WrongState {
+        job: job.to_string(),
+        state: refused.state.name(),
+        remedy: "a job that has ended cannot be cancelled",
+    })?;
+    let change = StateChange { from, to, at_unix_ms: now_unix_ms(), failure: String::new() };
+    store.change_state(job, &change)?;
+    Ok(())
+}
+
+/// Runs what takes time on a blocking thread.
+pub(crate) async fn blocking<T: Send + 'static>(
+    task: impl FnOnce() -> Result<T, EngineError> + Send + 'static,
+) -> Result<T, EngineError> {
+    match tokio::task::spawn_blocking(task).await {
+        Ok(answer) => answer,
+        Err(failure) if failure.is_panic() => std::panic::resume_unwind(failure.into_panic()),
+        Err(_) => Err(EngineError::Stopping),
+    }
+}

@@ -1,0 +1,148 @@
+//! Why an engine did not do what it was asked.
+
+use enolattice_grid::{GridError, InputError, Place};
+use enolattice_scheduler::SchedulerError;
+use enolattice_store::{StoreError, TokenError};
+
+/// Why an engine did not do what it was asked.
+#[derive(Debug, thiserror::Error)]
+pub enum EngineError {
+    /// Faults of the input, all of them.
+    #[error("{} fault(s) in the input; the first: {}", .0.len(), .0.first().map(ToString::to_string).unwrap_or_default())]
+    Input(Vec<InputError>),
+    /// No such job.
+    #[error("there is no job `{job}`; `jobs` lists them")]
+    JobUnknown {
+        /// The id given.
+        job: String,
+    },
+    /// No such cell.
+    #[error("job `{job}` has no cell {cell}; its cells are 0 to {last}")]
+    CellUnknown {
+        /// Job.
+        job: String,
+        /// Cell given.
+        cell: u64,
+        /// Last cell.
+        last: u64,
+    },
+    /// The job's state does not allow it.
+    #[error("job `{job}` is {state}; {remedy}")]
+    WrongState {
+        /// Job.
+        job: String,
+        /// Its state.
+        state: &'static str,
+        /// What to do.
+        remedy: &'static str,
+    },
+    /// The request id was used for another request.
+    #[error("the request id `{request_id}` belongs to job `{job}`, which was another request; choose a new request id")]
+    RequestIdReused {
+        /// The request id.
+        request_id: String,
+        /// The job it made.
+        job: String,
+    },
+    /// The page token belongs to other arguments or is damaged.
+    #[error("the page token does not fit: {reason}; ask for the first page again")]
+    PageToken {
+        /// Why.
+        reason: String,
+    },
+    /// The store failed.
+    #[error("the store failed: {reason}")]
+    Store {
+        /// Why.
+        reason: String,
+    },
+    /// The engine is being stopped.
+    #[error("the engine is being stopped; ask again when it is back")]
+    Stopping,
+    /// The model failed.
+    #[error(transparent)]
+    Model(#[from] enolattice_model::ModelError),
+}
+
+impl EngineError {
+    /// One fault of one field.
+    pub(crate) fn field(field: &str, value: &str, code: &'static str, reason: &str, remedy: &str) -> EngineError {
+        EngineError::Input(vec![InputError {
+            place: Place { field: field.to_owned(), ..Place::default() },
+            value: value.chars().take(80).collect(),
+            code,
+            reason: reason.to_owned(),
+            remedy: remedy.to_owned(),
+        }])
+    }
+
+    /// The store was asked for although the engine was opened without one.
+    pub(crate) fn without_store() -> EngineError {
+        EngineError::Store { reason: "this engine was opened without a data directory".to_owned() }
+    }
+}
+
+impl From<StoreError> for EngineError {
+    fn from(error: StoreError) -> EngineError {
+        match error {
+            StoreError::JobUnknown { job } => EngineError::JobUnknown { job },
+            StoreError::RequestIdReused { request_id, job } => {
+                EngineError::RequestIdReused { request_id, job: job.to_string() }
+            }
+            StoreError::RequestIdTooLong { length, limit } => EngineError::field(
+                "request_id",
+                "",
+                "VALUE_OUT_OF_RANGE",
+                &format!("it has {length} bytes"),
+                &format!("give at most {limit} bytes"),
+            ),
+            StoreError::StateMoved { job, found, .. } => EngineError::WrongState {
+                job: job.to_string(),
+                state: found.name(),
+                remedy: "its state changed meanwhile; look at it and ask again",
+            },
+            StoreError::PageOutdated => {
+                EngineError::PageToken { reason: "the job was screened anew since the page before".to_owned() }
+            }
+            other => EngineError::Store { reason: other.to_string() },
+        }
+    }
+}
+
+impl From<SchedulerError> for EngineError {
+    fn from(error: SchedulerError) -> EngineError {
+        match error {
+            SchedulerError::Ended { job, state } => EngineError::WrongState {
+                job: job.to_string(),
+                state: state.name(),
+                remedy: "a job that has ended cannot be cancelled",
+            },
+            SchedulerError::Store(error) => error.into(),
+            SchedulerError::ShutDown => EngineError::Stopping,
+            SchedulerError::Threads { .. } => EngineError::Store { reason: error.to_string() },
+        }
+    }
+}
+
+impl From<TokenError> for EngineError {
+    fn from(error: TokenError) -> EngineError {
+        EngineError::PageToken {
+            reason: match error {
+                TokenError::Damaged => "it is damaged".to_owned(),
+                TokenError::OtherVersion => "it is of another version".to_owned(),
+                TokenError::OtherArguments { argument } => format!("it was made for another {argument}"),
+            },
+        }
+    }
+}
+
+impl From<GridError> for EngineError {
+    fn from(error: GridError) -> EngineError {
+        let (field, code) = match error {
+            GridError::TooLarge => ("campaign", "CAMPAIGN_TOO_LARGE"),
+            GridError::EmptyAxis { axis } => (axis, "AXIS_EMPTY"),
+            GridError::ShrunkAxis { axis, .. } => (axis, "AXIS_EMPTY"),
+        };
+        EngineError::field(field, "", code, &error.to_string(), "change the axis and ask again")
+    }
+}

@@ -1,0 +1,57 @@
+//! The grids of jobs, built when first asked for and kept.
+
+use std::collections::HashMap;
+use std::sync::{Arc, Mutex, PoisonError};
+
+use enolattice_grid::{Campaign, CampaignSpec, Grid};
+use enolattice_model::Model;
+use enolattice_store::{JobId, JobRecord};
+
+use crate::EngineError;
+
+/// Grids kept at most; a large campaign's takes tens of megabytes.
+const MOST_KEPT: usize = 8;
+
+/// Grids by job.
+#[derive(Debug)]
+pub(crate) struct Grids {
+    model: Arc<Model>,
+    kept: Mutex<HashMap<JobId, Arc<Grid>>>,
+}
+
+impl Grids {
+    pub(crate) fn new(model: Arc<Model>) -> Grids {
+        Grids { model, kept: Mutex::default() }
+    }
+
+    /// Checks a campaign and builds its grid. Takes time.
+    pub(crate) fn build(&self, spec: &CampaignSpec) -> Result<Arc<Grid>, EngineError> {
+        let campaign = Campaign::new(spec, &self.model).map_err(EngineError::Input)?;
+        Ok(Arc::new(Grid::new(campaign, self.model.clone())?))
+    }
+
+    /// Keeps the grid of a job.
+    pub(crate) fn keep(&self, job: JobId, grid: Arc<Grid>) {
+        let mut kept = self.kept.lock().unwrap_or_else(PoisonError::into_inner);
+        if kept.len() >= MOST_KEPT {
+            // Ids sort by submission: the oldest job is the least likely to be asked for again.
+            let oldest = kept.keys().min().copied();
+            oldest.map(|oldest| kept.remove(&oldest));
+        }
+        kept.insert(job, grid);
+    }
+
+    /// The grid of a job that has been read from the store.
+    pub(crate) fn of_record(&self, record: &JobRecord) -> Result<Arc<Grid>, EngineError> {
+        if let Some(grid) = self.kept(record.id) {
+            return Ok(grid);
+        }
+        let grid = self.build(&record.spec)?;
+        self.keep(record.id, grid.clone());
+        Ok(grid)
+    }
+
+    fn kept(&self, job: JobId) -> Option<Arc<Grid>> {
+        self.kept.lock().unwrap_or_else(PoisonError::into_inner).get(&job).cloned()
+    }
+}

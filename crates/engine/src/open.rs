@@ -1,0 +1,88 @@
+//! Opening an engine.
+
+use std::path::PathBuf;
+use std::sync::Arc;
+use std::time::{SystemTime, UNIX_EPOCH};
+
+use enolattice_model::Model;
+use enolattice_reagents::Library;
+use enolattice_scheduler::{Scheduler, SchedulerConfig, Work};
+use enolattice_store::Store;
+
+use crate::engine::{Queue, blocking};
+use crate::grids::Grids;
+use crate::{Engine, EngineError};
+
+/// How an engine is opened.
+#[derive(Clone, Debug)]
+pub struct EngineConfig {
+    /// Directory of its data.
+    pub data_dir: PathBuf,
+    /// Compute threads; 0: one for each core.
+    pub threads: usize,
+}
+
+impl Engine {
+    /// Opens the data directory, takes up unfinished jobs and starts the scheduler.
+    ///
+    /// # Errors
+    /// [`EngineError::Store`] where the directory is in use or cannot be read.
+    pub async fn open(config: EngineConfig) -> Result<Engine, EngineError> {
+        let threads = config.threads;
+        let mut engine = Engine::open_idle(config).await?;
+        if let Some(queue) = &mut engine.queue {
+            let (grids, store) = (queue.grids.clone(), queue.store.clone());
+            let work = move |record: &enolattice_store::JobRecord| {
+                grids.of_record(record).map(Work::of_grid).map_err(|error| error.to_string())
+            };
+            let config =
+                SchedulerConfig { threads, work: Arc::new(work), notify: queue.watchers.clone().follow(store) };
+            queue.scheduler = Some(Scheduler::start(queue.store.clone(), config)?);
+        }
+        Ok(engine)
+    }
+
+    /// Opens the data directory to look at its jobs and to queue or cancel some; works at none.
+    ///
+    /// # Errors
+    /// [`EngineError::Store`] where the directory is in use or cannot be read.
+    pub async fn open_idle(config: EngineConfig) -> Result<Engine, EngineError> {
+        blocking(move || {
+            let model = builtin_model()?;
+            let (store, report) = Store::open(&config.data_dir, now_unix_ms())?;
+            let notices = report.sentences();
+            for notice in &notices {
+                tracing::warn!(data_dir = %config.data_dir.display(), notice, "data directory");
+            }
+            let queue = Queue {
+                store: Arc::new(store),
+                grids: Arc::new(Grids::new(model.clone())),
+                watchers: Arc::default(),
+                scheduler: None,
+                notices,
+            };
+            Ok(Engine { model, queue: Some(queue) })
+        })
+        .await
+    }
+
+    /// An engine without a data directory: it explains given cells, finds sites and knows the
+    /// library, and refuses whatever needs a job.
+    ///
+    /// # Errors
+    /// [`EngineError::Store`] where the built-in library is damaged.
+    pub async fn without_data() -> Result<Engine, EngineError> {
+        blocking(|| Ok(Engine { model: builtin_model()?, queue: None })).await
+    }
+}
+
+fn builtin_model() -> Result<Arc<Model>, EngineError> {
+    let library = Library::builtin()
+        .map_err(|fault| EngineError::Store { reason: format!("the built-in library is damaged: {fault}") })?;
+    Ok(Arc::new(Model::new(Arc::new(library))))
+}
+
+/// The clock, milliseconds since 1970-01-01 UTC.
+pub(crate) fn now_unix_ms() -> u64 {
+    SystemTime::now().duration_since(UNIX_EPOCH).map_or(0, |since| since.as_millis() as u64)
+}

@@ -1,0 +1,63 @@
+//! The library, in rows.
+
+use enolattice_reagents::{Base, Cation, NamedElectrophile, Reagent, Solvent};
+
+use crate::{Engine, EngineError, ReagentRow};
+
+impl Engine {
+    /// The library; `word` narrows it by name, synonym or CAS number, empty gives all.
+    ///
+    /// # Errors
+    /// None yet; a word that nothing has gives an empty list.
+    pub async fn reagents(&self, word: &str) -> Result<Vec<ReagentRow>, EngineError> {
+        Ok(self.model.library().search(word).into_iter().map(row).collect())
+    }
+}
+
+fn row(reagent: Reagent<'_>) -> ReagentRow {
+    ReagentRow {
+        kind: reagent.kind().name().to_owned(),
+        name: reagent.name().to_owned(),
+        synonyms: reagent.synonyms().to_vec(),
+        cas: reagent.cas().to_owned(),
+        smiles: reagent.smiles().to_owned(),
+        facts: match reagent {
+            Reagent::Base(base) => base_facts(base),
+            Reagent::Solvent(solvent) => solvent_facts(solvent),
+            Reagent::Electrophile(electrophile) => electrophile_facts(electrophile),
+        },
+        h_codes: reagent.hazards().h_codes.clone(),
+    }
+}
+
+fn base_facts(base: &Base) -> String {
+    let cation = match base.cation {
+        Cation::Lithium => ", Li",
+        Cation::Sodium => ", Na",
+        Cation::Potassium => ", K",
+        Cation::Caesium => ", Cs",
+        Cation::None => "",
+    };
+    format!(
+        "pKa of the conjugate acid {:.1} ± {:.1} (DMSO){cation}; {}",
+        base.pka_dmso.value, base.pka_dmso.sigma, base.supplied
+    )
+}
+
+fn solvent_facts(solvent: &Solvent) -> String {
+    format!(
+        "ε {:.1}, α {:.2}, bp {:.0} °C, mp {:.0} °C, water {:.0} ppm",
+        solvent.permittivity,
+        solvent.hydrogen_bond_donation,
+        solvent.boiling_c,
+        solvent.melting_c,
+        solvent.water_ppm
+    )
+}
+
+fn electrophile_facts(electrophile: &NamedElectrophile) -> String {
+    match electrophile.boiling_c {
+        Some(boiling_c) => format!("bp {boiling_c:.0} °C"),
+        None => String::new(),
+    }
+}

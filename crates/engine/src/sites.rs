@@ -1,0 +1,58 @@
+//! Acidic sites of molecules.
+
+use enolattice_grid::{FaultCode, InputError, Place};
+use enolattice_model::acid_sites;
+use enolattice_molecule::Molecule;
+
+use crate::engine::blocking;
+use crate::{Engine, EngineError, SiteReport};
+
+impl Engine {
+    /// Acidic sites of molecules, in the order given.
+    ///
+    /// # Errors
+    /// [`EngineError::Input`] with every SMILES that cannot be read, as `smiles[i]`.
+    pub async fn sites(&self, smiles: &[String]) -> Result<Vec<SiteReport>, EngineError> {
+        let (model, smiles) = (self.model.clone(), smiles.to_vec());
+        blocking(move || {
+            let (mut reports, mut faults) = (Vec::with_capacity(smiles.len()), Vec::new());
+            for (i, text) in smiles.into_iter().enumerate() {
+                match Molecule::parse(&text) {
+                    Ok(molecule) => {
+                        let sites = acid_sites(&molecule, model.library());
+                        reports.push(SiteReport { smiles: text, sites });
+                    }
+                    Err(error) => faults.push(InputError {
+                        place: Place { field: format!("smiles[{i}]"), ..Place::default() },
+                        value: text.chars().take(80).collect(),
+                        code: FaultCode::StructureInvalid.name(),
+                        reason: error.reason,
+                        remedy: error.remedy,
+                    }),
+                }
+            }
+            if faults.is_empty() { Ok(reports) } else { Err(EngineError::Input(faults)) }
+        })
+        .await
+    }
+}
+
+/// Symbol of an element that molecules are read with; `?` for any other.
+pub fn element_symbol(atomic_number: u8) -> &'static str {
+    match atomic_number {
+        1 => "H",
+        5 => "B",
+        6 => "C",
+        7 => "N",
+        8 => "O",
+        9 => "F",
+        14 => "Si",
+        15 => "P",
+        16 => "S",
+        17 => "Cl",
+        34 => "Se",
+        35 => "Br",
+        53 => "I",
+        _ => "?",
+    }
+}

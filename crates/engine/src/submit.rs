@@ -1,0 +1,67 @@
+//! Queueing a campaign.
+
+use std::sync::Arc;
+
+use enolattice_grid::Grid;
+use enolattice_store::NewJob;
+
+use crate::engine::{blocking, read_job};
+use crate::open::now_unix_ms;
+use crate::{Engine, EngineError, Job, JobState, Submission};
+
+impl Engine {
+    /// Queues a campaign. When this returns, the job survives a power cut.
+    ///
+    /// With `validate_only` the campaign is checked and the job that it would make is
+    /// described, without an id; nothing is queued.
+    ///
+    /// # Errors
+    /// [`EngineError::Input`] with every fault, [`EngineError::RequestIdReused`], [`EngineError::Store`].
+    pub async fn submit(&self, submission: Submission) -> Result<Job, EngineError> {
+        let queue = self.queue()?;
+        let (store, grids) = (queue.store.clone(), queue.grids.clone());
+        let (id, job) = blocking(move || {
+            let grid = grids.build(&submission.campaign)?;
+            if submission.validate_only {
+                return Ok((None, would_be(&grid)));
+            }
+            let new = NewJob {
+                campaign_fingerprint: grid.fingerprint(),
+                model_fingerprint: grid.model().fingerprint(),
+                cells: grid.cells(),
+                blocks: grid.blocks().count() as u64,
+                request_id: submission.request_id,
+                warnings: grid.campaign().warnings.clone(),
+                spec: submission.campaign,
+            };
+            let created = store.create_job(new, now_unix_ms())?;
+            let id = created.record.id;
+            if created.is_new {
+                grids.keep(id, grid);
+            }
+            Ok((created.is_new.then_some(id), read_job(&store, id)?))
+        })
+        .await?;
+        if let (Some(id), Some(scheduler)) = (id, &queue.scheduler) {
+            scheduler.submit(id);
+        }
+        Ok(job)
+    }
+}
+
+fn would_be(grid: &Arc<Grid>) -> Job {
+    Job {
+        job: String::new(),
+        title: grid.campaign().title.clone(),
+        state: JobState::Queued,
+        cells: grid.cells(),
+        cells_done: 0,
+        best_yield: None,
+        campaign_fingerprint: grid.fingerprint().to_string(),
+        model_fingerprint: grid.model().fingerprint().to_string(),
+        submitted_unix_ms: now_unix_ms(),
+        ended_unix_ms: None,
+        failure: String::new(),
+        warnings: grid.campaign().warnings.clone(),
+    }
+}

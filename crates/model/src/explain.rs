@@ -1,0 +1,327 @@
+//! Everything about one cell, in numbers and sentences.
+
+use enolattice_units::delta_g_kj_mol;
+
+use crate::advice::advice;
+use crate::explanation::{CoursePoint, ExplainedRate, ExplainedSite};
+use crate::kinetics::{Kinetics, Nudge};
+use crate::network::{Network, Species};
+use crate::outcome::Outcome;
+use crate::parameters::{P, PARAMETERS, Values};
+use crate::reference::{Course, integrate};
+use crate::screen::{Coverage, cautions_of, coverage, feasibility, over_uncertainty, solve};
+use crate::{AcidSite, Cell, Explanation, Model, ModelError, Origin};
+
+/// Yield of the wanted product at the mean of all parameters: fast solver, then reference.
+pub(crate) fn both_solvers(cell: &Cell, values: &Values) -> Result<Option<(f64, f64)>, ModelError> {
+    if !matches!(coverage(cell), Coverage::Covered) {
+        return Ok(None);
+    }
+    let fast = solve(cell, values, Nudge::default());
+    let course = integrate(&fast.network)?;
+    let reference = course.end.product(fast.outcome.site) / fast.network.charged[0];
+    Ok(Some((fast.outcome.product, reference)))
+}
+
+/// Explains one cell.
+pub(crate) fn explain(
+    model: &Model,
+    cell: &Cell,
+    values: &Values,
+    yield_at_least: f64,
+) -> Result<Explanation, ModelError> {
+    let kinetics = Kinetics::new(
+        cell,
+        cell.conditions.temperature_c,
+        values,
+        Nudge::default(),
+    );
+    let mut explanation = Explanation {
+        sites: sites(cell, &kinetics),
+        cautions: cautions_of(cell),
+        model: model.fingerprint().to_string(),
+        ..Explanation::default()
+    };
+    deprotonation(&mut explanation, cell, &kinetics);
+    match coverage(cell) {
+        Coverage::Unknown(reason) => {
+            explanation
+                .limits
+                .push(format!("not covered by the model: {reason}"));
+            return Ok(explanation);
+        }
+        Coverage::Nothing(channel, reason) => {
+            for number in [
+                &mut explanation.expected_yield,
+                &mut explanation.yield_sigma,
+                &mut explanation.yield_on_limiting,
+                &mut explanation.p_hit,
+                &mut explanation.feasibility,
+                &mut explanation.selectivity,
+            ] {
+                *number = Some(0.0);
+            }
+            explanation.losses.push((channel, 1.0));
+            explanation.limits.push(reason);
+            return Ok(explanation);
+        }
+        Coverage::Covered => {}
+    }
+    let centre = solve(cell, values, Nudge::default());
+    let course = integrate(&centre.network)?;
+    let outcome = Outcome::read(
+        cell,
+        &kinetics,
+        &centre.network,
+        &course.end,
+        &course.formed,
+    );
+    let uncertain = over_uncertainty(cell, values, &centre, yield_at_least);
+    explanation.expected_yield = Some(uncertain.mean);
+    explanation.yield_sigma = Some(uncertain.sigma);
+    explanation.p_hit = Some(uncertain.p_hit);
+    explanation.yield_on_limiting = Some(on_limiting(cell, uncertain.mean));
+    explanation.feasibility = Some(feasibility(cell, &kinetics));
+    explanation.selectivity = Some(outcome.selectivity);
+    explanation.reference_yield = Some(outcome.product);
+    explanation.fast_yield = Some(centre.outcome.product);
+    explanation.enolate_fraction = Some(enolate_fraction(&course, &centre.network));
+    explanation.rates = rates(cell, &kinetics, &centre.network);
+    explanation.course = course_points(&course, &centre.network, outcome.site);
+    product(&mut explanation, cell, outcome.site);
+    explanation.limits.extend(limits(cell, &outcome));
+    explanation.losses = outcome.losses;
+    explanation.advice = advice(model, cell, yield_at_least, uncertain.mean);
+    Ok(explanation)
+}
+
+/// Carbanion as a share of the substrate when the electrophile comes; where it is there from the
+/// beginning, the largest share at any time.
+fn enolate_fraction(course: &Course, network: &Network) -> f64 {
+    let charged = network.charged[0];
+    let at_addition = course.formed.carbanions() / charged;
+    if network.first_reacting_stage > 0 {
+        return at_addition.clamp(0.0, 1.0);
+    }
+    let largest = course
+        .points
+        .iter()
+        .map(|(_, pot)| pot.carbanions())
+        .fold(0.0, f64::max);
+    (largest / charged).clamp(0.0, 1.0)
+}
+
+fn on_limiting(cell: &Cell, on_substrate: f64) -> f64 {
+    let least = cell.conditions.electrophile_equiv.min(1.0);
+    (on_substrate / least).min(1.0)
+}
+
+fn product(explanation: &mut Explanation, cell: &Cell, site: usize) {
+    let Some(product) = cell.pair.by_site.get(site).and_then(Option::as_ref) else {
+        return;
+    };
+    let molecule = &product.product.molecule;
+    explanation.product_smiles = Some(molecule.canonical().to_owned());
+    explanation.product_formula = Some(molecule.formula().to_owned());
+    explanation.product_mass = Some(molecule.exact_mass());
+    explanation.condensation_smiles = product
+        .dehydrated
+        .as_ref()
+        .map(|m| m.canonical().to_owned());
+}
+
+fn deprotonation(explanation: &mut Explanation, cell: &Cell, kinetics: &Kinetics<'_>) {
+    if let Some(site) = cell.substrate.carbon.first() {
+        let log10_k = kinetics.pka_base() - kinetics.site_pka(site);
+        explanation.log10_k = Some(log10_k);
+        explanation.delta_g_deprotonation_kj_mol =
+            Some(delta_g_kj_mol(log10_k, cell.conditions.temperature_c));
+    }
+}
+
+fn sites(cell: &Cell, kinetics: &Kinetics<'_>) -> Vec<ExplainedSite> {
+    let explained = |molecule: &'static str, site: &AcidSite| ExplainedSite {
+        molecule,
+        atom: site.atom,
+        element: symbol(site.element),
+        hydrogens: site.hydrogens,
+        pka_dmso: site.pka_dmso,
+        pka_medium: kinetics.pka(site.pka_dmso, site.class),
+        sigma: site.sigma,
+        origin: site.origin,
+        source: site.source.clone(),
+    };
+    let mut sites: Vec<_> = cell
+        .substrate
+        .sites
+        .iter()
+        .map(|site| explained("substrate", site))
+        .collect();
+    sites.extend(
+        cell.electrophile
+            .acid
+            .iter()
+            .map(|site| explained("electrophile", site)),
+    );
+    if let Some(product) = cell.pair.by_site.iter().flatten().next() {
+        sites.extend(
+            product
+                .carbon
+                .iter()
+                .map(|site| explained("product", &site.acid)),
+        );
+        sites.extend(
+            product
+                .heteroatom
+                .iter()
+                .map(|site| explained("product", site)),
+        );
+    }
+    let base = &cell.base.record;
+    sites.push(ExplainedSite {
+        molecule: "base",
+        atom: 0,
+        element: "",
+        hydrogens: 1,
+        pka_dmso: base.pka_dmso.value,
+        pka_medium: kinetics.pka_base(),
+        sigma: base.pka_dmso.sigma,
+        origin: Origin::Measured,
+        source: base.pka_dmso.source.clone(),
+    });
+    if let Some((acid, class)) = &cell.solvent.record.acid {
+        sites.push(ExplainedSite {
+            molecule: "solvent",
+            atom: 0,
+            element: if class.is_carbanion() { "C" } else { "O" },
+            hydrogens: 1,
+            pka_dmso: acid.value,
+            pka_medium: kinetics.pka(acid.value, *class),
+            sigma: acid.sigma,
+            origin: Origin::Measured,
+            source: acid.source.clone(),
+        });
+    }
+    sites
+}
+
+fn symbol(element: u8) -> &'static str {
+    match element {
+        6 => "C",
+        7 => "N",
+        8 => "O",
+        15 => "P",
+        16 => "S",
+        34 => "Se",
+        _ => "?",
+    }
+}
+
+/// The rate constants of steps that involve the electrophile or two molecules of substrate, and of
+/// the deprotonation by the base, fastest first.
+fn rates(cell: &Cell, kinetics: &Kinetics<'_>, network: &Network) -> Vec<ExplainedRate> {
+    let attack_source = match &cell.electrophile.e {
+        Some((e, sigma, source)) => {
+            format!("log k = sN (N + E), E = {e:.1} ± {sigma:.1}: {source}")
+        }
+        None => format!(
+            "SN2 relative rates on: {}",
+            PARAMETERS[P::SN2_ANCHOR as usize].source
+        ),
+    };
+    let sigma = crate::screen::Spread::of(cell).attack;
+    let mut rates: Vec<_> = network
+        .reactions
+        .iter()
+        .filter_map(|r| {
+            let with_electrophile =
+                r.first == Species::Electrophile || r.second == Some(Species::Electrophile);
+            let condensation =
+                r.second == Some(Species::Substrate) && r.products[0] == Some(Species::DimerAnion);
+            let deprotonation =
+                r.first == Species::Base && matches!(r.products[1], Some(Species::Carbanion(_)));
+            if !(with_electrophile || condensation || deprotonation) || r.k[1] <= 0.0 {
+                return None;
+            }
+            let source = if with_electrophile {
+                attack_source.clone()
+            } else if condensation {
+                "log k = sN (N + E) with the carbonyl group of the substrate".to_owned()
+            } else {
+                PARAMETERS[P::EXCHANGE_PROTIC as usize].source.to_owned()
+            };
+            Some(ExplainedRate {
+                step: step(r),
+                log10_k: enolattice_units::math::log10(r.k[1]),
+                sigma,
+                source,
+            })
+        })
+        .collect();
+    let _ = kinetics;
+    rates.sort_by(|a, b| b.log10_k.total_cmp(&a.log10_k));
+    rates
+}
+
+fn step(reaction: &crate::network::Reaction) -> String {
+    let mut left = reaction.first.name();
+    if let Some(second) = reaction.second {
+        left = format!("{left} + {}", second.name());
+    }
+    let right: Vec<_> = reaction
+        .products
+        .iter()
+        .flatten()
+        .map(|s| s.name())
+        .collect();
+    format!("{left} → {}", right.join(" + "))
+}
+
+fn course_points(course: &Course, network: &Network, site: usize) -> Vec<CoursePoint> {
+    let charged = network.charged[0];
+    course
+        .points
+        .iter()
+        .map(|(time_s, pot)| CoursePoint {
+            time_s: *time_s,
+            substrate: (pot.of(Species::Substrate) + pot.of(Species::HeteroatomAnion)) / charged,
+            anions: pot.carbanions() / charged,
+            electrophile: pot.of(Species::Electrophile) / charged,
+            product: pot.product(site) / charged,
+        })
+        .collect()
+}
+
+fn limits(cell: &Cell, outcome: &Outcome) -> Vec<String> {
+    let mut limits = Vec::new();
+    if let Some((channel, share)) = outcome.losses.first() {
+        limits.push(format!(
+            "largest loss: {} ({:.0} % of the substrate)",
+            channel.name(),
+            share * 100.0
+        ));
+    }
+    for site in cell
+        .substrate
+        .carbon
+        .iter()
+        .filter(|site| site.acid.outside)
+    {
+        limits.push(format!(
+            "the pKa of atom {} is outside what the estimate has seen: ± {:.1}",
+            site.acid.atom, site.acid.sigma
+        ));
+    }
+    let further = cell
+        .electrophile
+        .group
+        .as_ref()
+        .map_or(0, |group| group.further_positions);
+    if further > 0 {
+        limits.push(
+            "the electrophile has further reactive positions; only the first reaction is modelled"
+                .to_owned(),
+        );
+    }
+    limits
+}

@@ -1,0 +1,177 @@
+//! The model: prepares reagents, scores cells, explains them.
+
+use std::sync::Arc;
+
+use enolattice_molecule::Molecule;
+use enolattice_reagents::Library;
+use sha2::{Digest, Sha256};
+
+use crate::explain::explain;
+use crate::parameters::{PARAMETERS, Parameter, Values};
+use crate::screen::score;
+use crate::{
+    Base, Cell, Electrophile, Explanation, MeasuredPka, Pair, Score, Solvent, Substrate,
+    coefficients,
+};
+
+/// SHA-256 over code version, data, coefficients and arithmetic.
+#[derive(Clone, Copy, Debug, PartialEq, Eq, Hash, PartialOrd, Ord)]
+pub struct Fingerprint(pub [u8; 32]);
+
+impl std::fmt::Display for Fingerprint {
+    fn fmt(&self, f: &mut std::fmt::Formatter<'_>) -> std::fmt::Result {
+        self.0.iter().try_for_each(|byte| write!(f, "{byte:02x}"))
+    }
+}
+
+/// Why the model cannot treat an input.
+#[derive(Clone, Debug, PartialEq, thiserror::Error)]
+pub enum ModelError {
+    /// The reference integration failed.
+    #[error("the reference integration failed: {reason}")]
+    Integration {
+        /// What the integrator said.
+        reason: String,
+    },
+}
+
+/// One joint sample of all uncertain parameters; draw 0 has every parameter at its mean.
+#[derive(Clone, Debug, PartialEq)]
+pub struct Draw {
+    pub(crate) values: Values,
+}
+
+/// Raised whenever the meaning of a score changes without a change of data.
+const ARITHMETIC_VERSION: u32 = 1;
+
+/// The model with its library and parameters.
+#[derive(Debug)]
+pub struct Model {
+    library: Arc<Library>,
+    means: Values,
+}
+
+impl Model {
+    /// A model over a library, all parameters at their means.
+    pub fn new(library: Arc<Library>) -> Model {
+        Model {
+            library,
+            means: Values::means(),
+        }
+    }
+
+    /// The library.
+    pub fn library(&self) -> &Arc<Library> {
+        &self.library
+    }
+
+    /// The uncertain parameters, in the order of their indices. The coefficients of the acidity
+    /// estimate are listed by [`crate::coefficients`].
+    pub fn parameters(&self) -> &'static [Parameter] {
+        PARAMETERS
+    }
+
+    /// A joint sample of all parameters: the same seed and number give the same sample everywhere.
+    pub fn draw(&self, seed: u64, number: u32) -> Draw {
+        if number == 0 {
+            return Draw {
+                values: Values::means(),
+            };
+        }
+        Draw {
+            values: Values::moved(|index| standard_normal(seed, number, index as u64)),
+        }
+    }
+
+    /// Fingerprint of code version, data, coefficients and arithmetic.
+    pub fn fingerprint(&self) -> Fingerprint {
+        let mut hash = Sha256::new();
+        hash.update(b"enolattice model\0");
+        hash.update(env!("CARGO_PKG_VERSION").as_bytes());
+        hash.update(ARITHMETIC_VERSION.to_le_bytes());
+        hash.update(self.library.digest());
+        for p in PARAMETERS {
+            hash.update(p.name.as_bytes());
+            hash.update(p.mean.to_le_bytes());
+            hash.update(p.sigma.to_le_bytes());
+        }
+        for coefficient in coefficients() {
+            hash.update(coefficient.name.as_bytes());
+            hash.update(coefficient.value.to_le_bytes());
+        }
+        Fingerprint(hash.finalize().into())
+    }
+
+    /// Prepares a substrate.
+    pub fn substrate(
+        &self,
+        name: &str,
+        molecule: Molecule,
+        measured: Option<MeasuredPka>,
+    ) -> Substrate {
+        Substrate::new(name, molecule, measured, &self.library)
+    }
+
+    /// Prepares a base.
+    pub fn base(&self, record: &enolattice_reagents::Base) -> Base {
+        Base {
+            record: record.clone(),
+        }
+    }
+
+    /// Prepares a solvent.
+    pub fn solvent(&self, record: &enolattice_reagents::Solvent) -> Solvent {
+        Solvent {
+            record: record.clone(),
+        }
+    }
+
+    /// Prepares an electrophile.
+    pub fn electrophile(&self, name: &str, molecule: Molecule) -> Electrophile {
+        Electrophile::new(name, molecule, &self.library)
+    }
+
+    /// Prepares what a substrate and an electrophile make together (products and their acidities).
+    pub fn pair(&self, substrate: &Substrate, electrophile: &Electrophile) -> Pair {
+        Pair::new(substrate, electrophile, &self.library)
+    }
+
+    /// Screens one cell with the fast solver and quadrature.
+    pub fn score(&self, cell: &Cell, yield_at_least: f64) -> Score {
+        score(cell, &self.means, yield_at_least)
+    }
+
+    /// Yield of the wanted product at the mean of all parameters by the fast solver and by the
+    /// stiff reference; `None` where the model does not cover the cell.
+    ///
+    /// # Errors
+    /// [`ModelError::Integration`] if the reference integrator gives up.
+    pub fn both_solvers(&self, cell: &Cell) -> Result<Option<(f64, f64)>, ModelError> {
+        crate::explain::both_solvers(cell, &self.means)
+    }
+
+    /// Explains one cell: reference integration, every number with its source.
+    ///
+    /// # Errors
+    /// [`ModelError::Integration`] if the reference integrator gives up.
+    pub fn explain(&self, cell: &Cell, yield_at_least: f64) -> Result<Explanation, ModelError> {
+        explain(self, cell, &self.means, yield_at_least)
+    }
+}
+
+/// A standard normal deviate addressed by seed, draw and parameter, by SHA-256 and the inverse of
+/// the normal distribution (sum of twelve uniforms would cut the tails).
+fn standard_normal(seed: u64, number: u32, index: u64) -> f64 {
+    let mut hash = Sha256::new();
+    hash.update(seed.to_le_bytes());
+    hash.update(number.to_le_bytes());
+    hash.update(index.to_le_bytes());
+    let bytes: [u8; 32] = hash.finalize().into();
+    let uniform = |from: usize| {
+        let word = u64::from_le_bytes(bytes[from..from + 8].try_into().expect("eight bytes"));
+        ((word >> 11) as f64 + 0.5) / (1u64 << 53) as f64
+    };
+    // Box and Muller 1958
+    let radius = (-2.0 * enolattice_units::math::ln(uniform(0))).sqrt();
+    radius * enolattice_units::math::cos_turn(uniform(8))
+}

@@ -1,0 +1,94 @@
+//! Structures and products against values that RDKit made (`testdata/make_rdkit_reference.py`).
+
+use enolattice_molecule::{
+    ElectrophilicGroup, Molecule, Product, StructureError, c_product, dehydrated,
+    heteroatom_product, o_product, recognise, self_condensation_product,
+};
+
+const REFERENCE: &str = include_str!("../testdata/rdkit_reference.csv");
+const PRODUCTS: &str = include_str!("../testdata/rdkit_products.csv");
+
+fn rows(text: &'static str) -> Vec<Vec<String>> {
+    csv::ReaderBuilder::new()
+        .comment(Some(b'#'))
+        .from_reader(text.as_bytes())
+        .records()
+        .map(|row| row.unwrap().iter().map(str::to_owned).collect())
+        .collect()
+}
+
+fn assert_same(molecule: &Molecule, expected: &[String], what: &str) {
+    let [flat, canonical, formula, exact_mass, molar_mass] = expected else {
+        panic!("{what}: row is short");
+    };
+    assert_eq!(molecule.canonical_flat(), *flat, "{what}");
+    assert_eq!(molecule.canonical(), canonical, "{what}");
+    assert_eq!(molecule.formula(), formula, "{what}");
+    let exact: f64 = exact_mass.parse().unwrap();
+    let molar: f64 = molar_mass.parse().unwrap();
+    assert!((molecule.exact_mass() - exact).abs() < 2e-5, "{what}");
+    assert!((molecule.molar_mass() - molar).abs() < 2e-3, "{what}");
+}
+
+#[test]
+fn structures_agree_with_rdkit() {
+    let rows = rows(REFERENCE);
+    assert!(rows.len() >= 400);
+    for row in &rows {
+        let molecule = Molecule::parse(&row[0]).unwrap();
+        let expected = [&row[2], &row[1], &row[3], &row[4], &row[5]].map(String::clone);
+        assert_same(&molecule, &expected, &row[0]);
+        let again = Molecule::parse(molecule.canonical()).unwrap();
+        assert_eq!(again.canonical(), molecule.canonical());
+    }
+}
+
+fn partner(smiles: &str) -> (Molecule, ElectrophilicGroup) {
+    let molecule = Molecule::parse(smiles).unwrap();
+    let group = recognise(&molecule).unwrap();
+    (molecule, group)
+}
+
+fn product(
+    kind: &str,
+    substrate: &Molecule,
+    site: usize,
+    other: &str,
+) -> Result<Product, StructureError> {
+    if kind.starts_with("self") {
+        return self_condensation_product(substrate, site, other.parse().unwrap());
+    }
+    let (electrophile, group) = partner(other);
+    match kind.split(' ').next().unwrap() {
+        "enolate" | "nitronate" => {
+            o_product(substrate, site, &electrophile, &group).map(|p| p.expect("O-product"))
+        }
+        "heteroatom" => heteroatom_product(substrate, site, &electrophile, &group),
+        _ => c_product(substrate, site, &electrophile, &group),
+    }
+}
+
+#[test]
+fn products_agree_with_reaction_smarts() {
+    let rows = rows(PRODUCTS);
+    assert!(rows.len() >= 60);
+    for row in &rows {
+        let what = row[..4].join(" ");
+        let substrate = Molecule::parse(&row[1]).unwrap();
+        let site: usize = row[2].parse().unwrap();
+        let product = product(&row[0], &substrate, site, &row[3]).unwrap();
+        let former = substrate.atoms()[site];
+        let now = product.molecule.atoms()[product.site];
+        if row[0].starts_with("enolate") || row[0].starts_with("nitronate") {
+            assert_eq!((now.element, now.hydrogens), (8, 0), "{what}");
+        } else {
+            assert_eq!(now.element, former.element, "{what}");
+            assert_eq!(now.hydrogens + 1, former.hydrogens, "{what}");
+        }
+        let molecule = match row[0].as_str() {
+            "aldol dehydrated" => dehydrated(&product).unwrap().expect("an α hydrogen"),
+            _ => product.molecule,
+        };
+        assert_same(&molecule, &row[4..], &what);
+    }
+}

@@ -1,0 +1,122 @@
+//! Jobs and their rankings.
+
+use std::sync::Arc;
+
+use enolattice_engine::{Engine, RankQuery, Submission};
+use enolattice_wire::v1;
+use enolattice_wire::v1::job_service_server::JobService;
+use tokio::sync::watch;
+use tokio_stream::wrappers::ReceiverStream;
+use tonic::{Request, Response, Status, Streaming};
+
+use crate::status::Refusal;
+use crate::{paging, upload};
+
+/// The service of jobs.
+pub(crate) struct Jobs {
+    engine: Arc<Engine>,
+    stopping: watch::Receiver<bool>,
+}
+
+impl Jobs {
+    /// A service that ends its streams when `stopping` becomes true.
+    pub(crate) fn new(engine: Arc<Engine>, stopping: watch::Receiver<bool>) -> Jobs {
+        Jobs { engine, stopping }
+    }
+
+    async fn submit(&self, request: v1::SubmitJobRequest) -> Result<v1::Job, Refusal> {
+        let submission = Submission::try_from(request)?;
+        let job = self.engine.submit(submission).await;
+        Ok(v1::Job::from(&job.map_err(|error| Refusal::within("campaign", error))?))
+    }
+}
+
+#[tonic::async_trait]
+impl JobService for Jobs {
+    type WatchJobStream = ReceiverStream<Result<v1::WatchJobResponse, Status>>;
+
+    async fn submit_job(
+        &self,
+        request: Request<v1::SubmitJobRequest>,
+    ) -> Result<Response<v1::Job>, Status> {
+        let (metadata, _, request) = request.into_parts();
+        let answer = self.submit(request).await;
+        answer.map(Response::new).map_err(|refusal| refusal.status(&metadata))
+    }
+
+    async fn submit_job_stream(
+        &self,
+        request: Request<Streaming<v1::SubmitJobStreamRequest>>,
+    ) -> Result<Response<v1::Job>, Status> {
+        let (metadata, _, parts) = request.into_parts();
+        let answer = match upload::collect(parts).await? {
+            Ok(request) => self.submit(request).await,
+            Err(refusal) => Err(refusal),
+        };
+        answer.map(Response::new).map_err(|refusal| refusal.status(&metadata))
+    }
+
+    async fn get_job(
+        &self,
+        request: Request<v1::GetJobRequest>,
+    ) -> Result<Response<v1::Job>, Status> {
+        let (metadata, _, v1::GetJobRequest { job_id }) = request.into_parts();
+        let job = self.engine.job(&job_id).await;
+        let job = job.map_err(|error| Refusal::from(error).status(&metadata))?;
+        Ok(Response::new(v1::Job::from(&job)))
+    }
+
+    async fn list_jobs(
+        &self,
+        request: Request<v1::ListJobsRequest>,
+    ) -> Result<Response<v1::ListJobsResponse>, Status> {
+        let (metadata, _, request) = request.into_parts();
+        let answer = async {
+            let jobs = self.engine.jobs().await?;
+            let asked = paging::Asked {
+                list: "jobs",
+                arguments: "",
+                page_size: request.page_size,
+                page_token: &request.page_token,
+            };
+            let page = asked.page(&jobs, |job| job.job.clone())?;
+            Ok(v1::ListJobsResponse {
+                jobs: page.rows.iter().map(Into::into).collect(),
+                next_page_token: page.next_page_token,
+            })
+        };
+        answer.await.map(Response::new).map_err(|refusal: Refusal| refusal.status(&metadata))
+    }
+
+    async fn cancel_job(
+        &self,
+        request: Request<v1::CancelJobRequest>,
+    ) -> Result<Response<v1::Job>, Status> {
+        let (metadata, _, v1::CancelJobRequest { job_id }) = request.into_parts();
+        let job = self.engine.cancel(&job_id).await;
+        let job = job.map_err(|error| Refusal::from(error).status(&metadata))?;
+        Ok(Response::new(v1::Job::from(&job)))
+    }
+
+    async fn watch_job(
+        &self,
+        request: Request<v1::WatchJobRequest>,
+    ) -> Result<Response<Self::WatchJobStream>, Status> {
+        let (metadata, _, v1::WatchJobRequest { job_id }) = request.into_parts();
+        let states = self.engine.watch(&job_id).await;
+        let states = states.map_err(|error| Refusal::from(error).status(&metadata))?;
+        Ok(Response::new(crate::watch::changes(states, self.stopping.clone())))
+    }
+
+    async fn rank_cells(
+        &self,
+        request: Request<v1::RankCellsRequest>,
+    ) -> Result<Response<v1::RankCellsResponse>, Status> {
+        let (metadata, _, request) = request.into_parts();
+        let answer = async {
+            let page = self.engine.rank(RankQuery::try_from(request)?).await?;
+            Ok(v1::RankCellsResponse::from(&page))
+        };
+        answer.await.map(Response::new).map_err(|refusal: Refusal| refusal.status(&metadata))
+    }
+}

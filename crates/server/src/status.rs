@@ -1,0 +1,299 @@
+//! Why a request is refused, as a status: code, reason, all faults.
+//!
+//! Nothing else in this crate builds a [`Status`].
+
+use std::collections::HashMap;
+
+use enolattice_engine::EngineError;
+use enolattice_grid::InputError;
+use enolattice_wire::v1::{self, ErrorReason};
+use enolattice_wire::{
+    DEFAULT_DETAIL_BYTES, DETAIL_BYTES_KEY, ERROR_DOMAIN, INPUT_FAULTS_TYPE_URL, MAX_DETAIL_BYTES,
+};
+use prost::Message;
+use prost_types::Any;
+use tonic::metadata::MetadataMap;
+use tonic::{Code, Status};
+use tonic_types::pb;
+
+/// Why a request is refused.
+#[derive(Debug)]
+pub(crate) enum Refusal {
+    /// Faults of the input; their fields are paths in the request.
+    Input(Vec<InputError>),
+    /// The engine refused for another reason.
+    Engine(EngineError),
+    /// The request is larger than the service takes.
+    TooLarge {
+        /// The limit.
+        limit_bytes: usize,
+    },
+    /// The service is stopping.
+    ShuttingDown,
+}
+
+impl From<Vec<InputError>> for Refusal {
+    fn from(faults: Vec<InputError>) -> Self {
+        Refusal::Input(faults)
+    }
+}
+
+impl From<EngineError> for Refusal {
+    fn from(error: EngineError) -> Self {
+        match error {
+            EngineError::Input(faults) => Refusal::Input(faults),
+            other => Refusal::Engine(other),
+        }
+    }
+}
+
+impl Refusal {
+    /// An error about the part of the request that the field `part` holds.
+    pub(crate) fn within(part: &str, error: EngineError) -> Refusal {
+        let mut refusal = Refusal::from(error);
+        if let Refusal::Input(faults) = &mut refusal {
+            // The id of a request stands beside its campaign.
+            for fault in faults.iter_mut().filter(|fault| fault.place.field != "request_id") {
+                fault.place.field = format!("{part}.{}", fault.place.field);
+            }
+        }
+        refusal
+    }
+
+    /// The status, with details as large as the client said it takes.
+    pub(crate) fn status(self, metadata: &MetadataMap) -> Status {
+        let reason = self.reason();
+        let message = self.message();
+        let mut facts = self.facts();
+        let mut details = Vec::new();
+        if let Refusal::Input(faults) = &self {
+            let listed = fitting(faults, detail_bytes(metadata));
+            facts.insert("faults".into(), faults.len().to_string());
+            facts.insert("faults_listed".into(), listed.len().to_string());
+            details.push(any("google.rpc.BadRequest", &bad_request(listed)));
+            let faults = listed.iter().map(Into::into).collect();
+            details.push(Any {
+                type_url: INPUT_FAULTS_TYPE_URL.to_owned(),
+                value: v1::InputFaults { faults }.encode_to_vec(),
+            });
+        }
+        let info = pb::ErrorInfo {
+            reason: reason.as_str_name().to_owned(),
+            domain: ERROR_DOMAIN.to_owned(),
+            metadata: facts,
+        };
+        details.insert(0, any("google.rpc.ErrorInfo", &info));
+        let code = code(reason);
+        if code == Code::Internal || reason == ErrorReason::StoreUnavailable {
+            tracing::error!(reason = reason.as_str_name(), message, "a request failed");
+        }
+        let status = pb::Status { code: code.into(), message: message.clone(), details };
+        Status::with_details(code, message, status.encode_to_vec().into())
+    }
+
+    fn reason(&self) -> ErrorReason {
+        match self {
+            Refusal::Input(_) => ErrorReason::InputInvalid,
+            Refusal::TooLarge { .. } => ErrorReason::RequestTooLarge,
+            Refusal::ShuttingDown => ErrorReason::ShuttingDown,
+            Refusal::Engine(error) => match error {
+                EngineError::Input(_) => ErrorReason::InputInvalid,
+                EngineError::JobUnknown { .. } => ErrorReason::JobUnknown,
+                EngineError::CellUnknown { .. } => ErrorReason::CellUnknown,
+                EngineError::WrongState { .. } => ErrorReason::JobWrongState,
+                EngineError::RequestIdReused { .. } => ErrorReason::RequestIdReused,
+                EngineError::PageToken { .. } => ErrorReason::PageTokenInvalid,
+                EngineError::Store { .. } => ErrorReason::StoreUnavailable,
+                EngineError::Stopping => ErrorReason::ShuttingDown,
+                EngineError::Model(_) => ErrorReason::ModelFailed,
+            },
+        }
+    }
+
+    fn message(&self) -> String {
+        match self {
+            Refusal::Input(faults) => match faults.as_slice() {
+                [] => "the input is refused".to_owned(),
+                [fault] => fault.to_string(),
+                [first, ..] => format!("{} faults in the input; the first: {first}", faults.len()),
+            },
+            Refusal::Engine(error) => error.to_string(),
+            Refusal::TooLarge { limit_bytes } => format!(
+                "the campaign is larger than {} MiB; split it",
+                limit_bytes >> 20
+            ),
+            Refusal::ShuttingDown => {
+                "the service is stopping; its jobs go on when it is back".to_owned()
+            }
+        }
+    }
+
+    /// What a program may want to know without reading the message.
+    fn facts(&self) -> HashMap<String, String> {
+        let facts = match self {
+            Refusal::Engine(EngineError::JobUnknown { job }) => vec![("job_id", job.clone())],
+            Refusal::Engine(EngineError::CellUnknown { job, cell, last }) => vec![
+                ("job_id", job.clone()),
+                ("cell", cell.to_string()),
+                ("last_cell", last.to_string()),
+            ],
+            Refusal::Engine(EngineError::WrongState { job, state, .. }) => {
+                vec![("job_id", job.clone()), ("state", (*state).to_owned())]
+            }
+            Refusal::Engine(EngineError::RequestIdReused { request_id, job }) => {
+                vec![("job_id", job.clone()), ("request_id", request_id.clone())]
+            }
+            Refusal::TooLarge { limit_bytes } => vec![("limit_bytes", limit_bytes.to_string())],
+            _ => vec![],
+        };
+        facts.into_iter().map(|(key, value)| (key.to_owned(), value)).collect()
+    }
+}
+
+/// The status code of a reason, as `error.proto` states it.
+fn code(reason: ErrorReason) -> Code {
+    match reason {
+        ErrorReason::JobUnknown | ErrorReason::CellUnknown => Code::NotFound,
+        ErrorReason::JobWrongState => Code::FailedPrecondition,
+        ErrorReason::RequestIdReused => Code::AlreadyExists,
+        ErrorReason::StoreUnavailable | ErrorReason::ShuttingDown => Code::Unavailable,
+        ErrorReason::RequestTooLarge => Code::ResourceExhausted,
+        ErrorReason::Unspecified | ErrorReason::ModelFailed | ErrorReason::Internal => {
+            Code::Internal
+        }
+        _ => Code::InvalidArgument,
+    }
+}
+
+fn bad_request(faults: &[InputError]) -> pb::BadRequest {
+    let violations = faults.iter().map(|fault| pb::bad_request::FieldViolation {
+        field: fault.place.field.clone(),
+        description: format!("`{}`: {}; {}", fault.value, fault.reason, fault.remedy),
+        reason: fault.code.to_owned(),
+        localized_message: None,
+    });
+    pb::BadRequest { field_violations: violations.collect() }
+}
+
+/// The first faults, as many as fit into details of this size.
+fn fitting(faults: &[InputError], bytes: usize) -> &[InputError] {
+    let mut used = 0;
+    let fit = faults.iter().take_while(|fault| {
+        // Twice: once in the standard detail, once in our own; on the wire in base 64.
+        used += 2 * v1::InputFault::from(*fault).encoded_len() * 4 / 3;
+        used <= bytes
+    });
+    let count = fit.count().max(1).min(faults.len());
+    &faults[..count]
+}
+
+fn detail_bytes(metadata: &MetadataMap) -> usize {
+    let told = metadata.get(DETAIL_BYTES_KEY).and_then(|value| value.to_str().ok());
+    let bytes = told.and_then(|value| value.parse().ok()).unwrap_or(DEFAULT_DETAIL_BYTES);
+    bytes.min(MAX_DETAIL_BYTES)
+}
+
+fn any(name: &str, message: &impl Message) -> Any {
+    Any { type_url: format!("type.googleapis.com/{name}"), value: message.encode_to_vec() }
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+    use enolattice_wire::{RemoteError, bad_field};
+    use tonic_types::StatusExt;
+
+    fn faults(count: usize) -> Vec<InputError> {
+        let fault = |i| {
+            bad_field(
+                ErrorReason::ReagentUnknown,
+                format!("bases.reagents[{i}]"),
+                "LDDA",
+                "there is no such base in the library",
+                "did you mean `LDA`?",
+            )
+        };
+        (0..count).map(fault).collect()
+    }
+
+    fn received(status: &Status) -> RemoteError {
+        RemoteError::from_status(status, "http://there")
+    }
+
+    #[test]
+    fn faults_come_back_whole() {
+        let sent = faults(3);
+        let status = Refusal::from(sent.clone()).status(&MetadataMap::new());
+        assert_eq!(status.code(), Code::InvalidArgument);
+        match received(&status) {
+            RemoteError::Input(faults) => assert_eq!(faults, sent),
+            other => panic!("{other:?}"),
+        }
+    }
+
+    #[test]
+    fn standard_clients_see_every_fault() {
+        let status = Refusal::within("campaign", EngineError::Input(faults(2)))
+            .status(&MetadataMap::new());
+        let details = status.get_error_details();
+        let violations = &details.bad_request().expect("a BadRequest").field_violations;
+        assert_eq!(violations.len(), 2);
+        assert_eq!(violations[1].field, "campaign.bases.reagents[1]");
+        assert_eq!(violations[1].reason, "REAGENT_UNKNOWN");
+        assert!(violations[1].description.contains("LDDA"));
+        let info = details.error_info().expect("an ErrorInfo");
+        assert_eq!((info.reason.as_str(), info.domain.as_str()), ("INPUT_INVALID", ERROR_DOMAIN));
+    }
+
+    #[test]
+    fn details_stay_within_what_the_client_takes() {
+        let small = Refusal::from(faults(1000)).status(&MetadataMap::new());
+        assert!(small.details().len() * 4 / 3 <= 8192, "{}", small.details().len());
+        let details = small.get_error_details();
+        let facts = &details.error_info().expect("an ErrorInfo").metadata;
+        assert_eq!(facts["faults"], "1000");
+        let mut metadata = MetadataMap::new();
+        metadata.insert(DETAIL_BYTES_KEY, "1000000".parse().expect("ASCII"));
+        let large = Refusal::from(faults(1000)).status(&metadata);
+        match received(&large) {
+            RemoteError::Input(faults) => assert_eq!(faults.len(), 1000),
+            other => panic!("{other:?}"),
+        }
+    }
+
+    #[test]
+    fn every_refusal_keeps_its_reason_and_words() {
+        let job = || "j".to_owned();
+        let cases = [
+            (EngineError::JobUnknown { job: job() }, Code::NotFound, true),
+            (EngineError::CellUnknown { job: job(), cell: 9, last: 8 }, Code::NotFound, true),
+            (
+                EngineError::WrongState { job: job(), state: "done", remedy: "submit it again" },
+                Code::FailedPrecondition,
+                true,
+            ),
+            (
+                EngineError::RequestIdReused { request_id: "r".into(), job: job() },
+                Code::AlreadyExists,
+                true,
+            ),
+            (EngineError::PageToken { reason: "old".into() }, Code::InvalidArgument, true),
+            (EngineError::Stopping, Code::Unavailable, false),
+            (EngineError::Store { reason: "disk full".into() }, Code::Unavailable, false),
+        ];
+        for (error, code, callers) in cases {
+            let words = error.to_string();
+            let refusal = Refusal::from(error);
+            let sent = refusal.reason();
+            let status = refusal.status(&MetadataMap::new());
+            assert_eq!(status.code(), code);
+            let back = received(&status);
+            assert_eq!(back.is_callers_fault(), callers);
+            assert!(
+                matches!(&back, RemoteError::Refused { reason, message }
+                    if *reason == sent && *message == words),
+                "{back:?}"
+            );
+        }
+    }
+}

@@ -1,0 +1,98 @@
+//! Faults that a server found, brought back to where the user wrote the value.
+
+use enolattice_grid::{CampaignSpec, InputError, Place, value_of_row};
+
+/// Gives faults in the values of axes the places of the campaign as read.
+pub(super) fn relocate(faults: Vec<InputError>, campaign: &CampaignSpec) -> Vec<InputError> {
+    let mut faults = within("campaign", faults);
+    for fault in &mut faults {
+        if let Some(place) = written(&fault.place.field, campaign) {
+            fault.place = place;
+        }
+    }
+    // As the embedded engine has them: by file and line.
+    faults.sort_by_cached_key(|fault| {
+        let Place { file, line, .. } = &fault.place;
+        (file.clone(), *line)
+    });
+    faults
+}
+
+/// Faults with their fields relative to this part of the request.
+pub(super) fn within(part: &str, mut faults: Vec<InputError>) -> Vec<InputError> {
+    for fault in &mut faults {
+        let field = fault.place.field.strip_prefix(part).and_then(|rest| rest.strip_prefix('.'));
+        if let Some(field) = field {
+            fault.place.field = field.to_owned();
+        }
+    }
+    faults
+}
+
+/// Where the value of this field was written: `substrates[3].pka_dmso` is a value of the row of
+/// the fourth substrate.
+fn written(field: &str, campaign: &CampaignSpec) -> Option<Place> {
+    let (list, rest) = field.split_once('[')?;
+    let (index, value) = rest.split_once(']')?;
+    let index: usize = index.parse().ok()?;
+    let place = match list {
+        "substrates" => &campaign.substrates.get(index)?.place,
+        "bases.reagents" => &campaign.bases.entries.get(index)?.place,
+        "electrophiles.reagents" => &campaign.electrophiles.entries.get(index)?.place,
+        "solvents.media" => &campaign.solvents.entries.get(index)?.place,
+        "additives.sets" => &campaign.additives.entries.get(index)?.place,
+        _ => return None,
+    };
+    Some(match value.strip_prefix('.') {
+        Some(value) => value_of_row(place, value),
+        None => place.clone(),
+    })
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+    use crate::bad_field;
+    use crate::v1::ErrorReason;
+    use enolattice_grid::{AxisSpec, Entry, SubstrateEntry};
+
+    fn place(file: &str, line: u32, field: &str) -> Place {
+        Place { file: file.into(), line, field: field.into() }
+    }
+
+    fn campaign() -> CampaignSpec {
+        let substrate =
+            |line| SubstrateEntry { place: place("s.csv", line, "smiles"), ..Default::default() };
+        let base =
+            Entry { place: place("c.toml", 4, "bases.library[0]"), ..Default::default() };
+        CampaignSpec {
+            substrates: vec![substrate(2), substrate(3)],
+            bases: AxisSpec { all: false, entries: vec![base] },
+            ..Default::default()
+        }
+    }
+
+    #[test]
+    fn faults_return_to_file_and_line() {
+        let fault = |field: &str| bad_field(ErrorReason::ValueMissing, field, "", "", "");
+        let faults = vec![
+            fault("campaign.substrates[1].pka_dmso"),
+            fault("campaign.substrates[0].smiles"),
+            fault("campaign.bases.reagents[0]"),
+            fault("campaign.conditions.time_h[2]"),
+            fault("campaign.bases.reagents[9]"),
+        ];
+        let places: Vec<_> =
+            relocate(faults, &campaign()).into_iter().map(|fault| fault.place).collect();
+        assert_eq!(
+            places,
+            [
+                place("", 0, "conditions.time_h[2]"),
+                place("", 0, "bases.reagents[9]"),
+                place("c.toml", 4, "bases.library[0]"),
+                place("s.csv", 2, "smiles"),
+                place("s.csv", 3, "pka_dmso"),
+            ]
+        );
+    }
+}

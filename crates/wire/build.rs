@@ -10,7 +10,10 @@ fn main() -> Result<(), Box<dyn Error>> {
     compiler.include_imports(true).include_source_info(true);
     compiler.open_files(proto_files(&root.join("enolattice/v1"))?)?;
     let out = PathBuf::from(std::env::var("OUT_DIR")?);
-    std::fs::write(out.join("enolattice.v1.bin"), compiler.encode_file_descriptor_set())?;
+    std::fs::write(
+        out.join("enolattice.v1.bin"),
+        compiler.encode_file_descriptor_set(),
+    )?;
     tonic_prost_build::configure().compile_fds(compiler.file_descriptor_set())?;
     Ok(())
 }
@@ -19,7 +22,10 @@ fn proto_files(folder: &Path) -> std::io::Result<Vec<PathBuf>> {
     let mut files = Vec::new();
     for entry in std::fs::read_dir(folder)? {
         let path = entry?.path();
-        if path.extension().is_some_and(|extension| extension == "proto") {
+        if path
+            .extension()
+            .is_some_and(|extension| extension == "proto")
+        {
             files.push(path);
         }
     }

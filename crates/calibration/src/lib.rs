@@ -1,3 +1,4 @@
 //! Fits, trade cases and published checks: prints the model's quality. Not shipped.
 
+pub mod acidity_fit;
 pub mod cases;

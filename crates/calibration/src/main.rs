@@ -1,10 +1,11 @@
 //! Prints the model's quality.
 
+use std::io::Write;
 use std::process::ExitCode;
 use std::sync::Arc;
 
 use clap::{Parser, Subcommand};
-use enolattice_calibration::cases;
+use enolattice_calibration::{acidity_fit, cases};
 use enolattice_model::Model;
 use enolattice_reagents::Library;
 
@@ -17,6 +18,8 @@ struct Arguments {
 
 #[derive(Subcommand)]
 enum Command {
+    /// Fits the acidity estimate, cross-validates it and writes the model's tables and the page on them.
+    Acidity,
     /// Holds the cases of the trade against the model.
     Cases,
 }
@@ -35,9 +38,16 @@ fn main() -> ExitCode {
 }
 
 fn run(arguments: &Arguments) -> Result<(), String> {
-    let library = Library::builtin().map_err(|error| error.to_string())?;
-    let model = Model::new(Arc::new(library));
     match arguments.command {
-        Command::Cases => cases::print(&model, &mut std::io::stdout().lock()),
+        Command::Acidity => {
+            let page = acidity_fit::run(&acidity_fit::Places::in_the_source_tree())
+                .map_err(|error| error.to_string())?;
+            write!(std::io::stdout().lock(), "{page}").map_err(|error| error.to_string())
+        }
+        Command::Cases => {
+            let library = Library::builtin().map_err(|error| error.to_string())?;
+            let model = Model::new(Arc::new(library));
+            cases::print(&model, &mut std::io::stdout().lock())
+        }
     }
 }

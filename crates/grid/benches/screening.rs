@@ -124,24 +124,36 @@ fn score(grid: &Grid, threads: usize) -> Scored {
 }
 
 /// A campaign of at least `cells` cells: 12 bases, 10 electrophiles and 10 solvents from all over
-/// the library under 84 conditions, and as many substrates as that takes.
+/// the library, under 84 conditions unless that is too many, and as many substrates as it takes.
 fn invented_campaign(cells: u64, model: &Model) -> CampaignSpec {
+    const REAGENTS: u64 = 12 * 10 * 10;
+    const CONDITIONS: u64 = 7 * 3 * 4;
     let library = model.library();
+    let broad = cells >= REAGENTS * CONDITIONS;
     let conditions = ConditionsSpec {
         temperature_c: vec![-78.0, -40.0, -20.0, 0.0, 25.0, 50.0, 80.0],
         base_equiv: vec![1.05, 1.5, 2.2],
         time_h: vec![0.5, 2.0, 8.0, 24.0],
         ..ConditionsSpec::default()
     };
+    let of_one_substrate = if broad {
+        REAGENTS * CONDITIONS
+    } else {
+        REAGENTS
+    };
     CampaignSpec {
         title: "invented, for timing".into(),
-        substrates: (0..cells.div_ceil(12 * 10 * 10 * 84))
+        substrates: (0..cells.div_ceil(of_one_substrate))
             .map(invented_substrate)
             .collect(),
         bases: spread(12, library.bases().iter().map(|base| &base.name)),
         electrophiles: spread(10, library.electrophiles().iter().map(|known| &known.name)),
         solvents: spread(10, library.solvents().iter().map(|solvent| &solvent.name)),
-        conditions,
+        conditions: if broad {
+            conditions
+        } else {
+            ConditionsSpec::default()
+        },
         ..CampaignSpec::default()
     }
 }

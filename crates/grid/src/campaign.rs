@@ -7,9 +7,9 @@ use enolattice_model::{Addition, Base, Electrophile, MeasuredPka, Model, Solvent
 use enolattice_molecule::Molecule;
 use rayon::prelude::*;
 
-use crate::conditions::{CONDITIONS, YIELD_AT_LEAST};
 use crate::fault::Faults;
 use crate::resolve::{self, NamedStructure, in_list};
+use crate::values::{additions, numbers, target};
 use crate::warnings::Warnings;
 use crate::{
     CampaignSpec, FaultCode, GridError, InputError, Lattice, Place, SubstrateEntry, entries,
@@ -63,7 +63,7 @@ impl Campaign {
     pub fn new(spec: &CampaignSpec, model: &Model) -> Result<Campaign, Vec<InputError>> {
         let mut faults = Faults::default();
         let mut warnings = Warnings::default();
-        entries::check_name(&spec.title, named_place("title"), &mut faults);
+        entries::check_name(&spec.title, Place::of_field("title"), &mut faults);
         let substrates = substrates(&spec.substrates, &mut faults);
         let reagents = resolve::reagents(spec, model.library(), &mut faults);
         resolve::refuse_additives(&spec.additives, &mut faults);
@@ -154,13 +154,6 @@ struct Read {
     own_pka: Option<MeasuredPka>,
 }
 
-fn named_place(field: &str) -> Place {
-    Place {
-        field: field.to_owned(),
-        ..Place::default()
-    }
-}
-
 fn substrates(listed: &[SubstrateEntry], faults: &mut Faults) -> Vec<Read> {
     let read: Vec<(Option<Read>, Faults)> = listed
         .par_iter()
@@ -204,83 +197,13 @@ fn note_empty_axes(spec: &CampaignSpec, faults: &mut Faults) {
             let remedy = "give at least one";
             faults.note(
                 FaultCode::AxisEmpty,
-                named_place(axis),
+                Place::of_field(axis),
                 "",
                 "the axis has no values",
                 remedy,
             );
         }
     }
-}
-
-/// The axes of numbers, in the order of [`CONDITIONS`], with defaults where nothing is given.
-fn numbers(spec: &CampaignSpec, faults: &mut Faults, warnings: &mut Warnings) -> [Vec<f64>; 7] {
-    let axes = spec.conditions.axes();
-    std::array::from_fn(|axis| {
-        let quantity = &CONDITIONS[axis];
-        let mut values: Vec<f64> = Vec::with_capacity(axes[axis].len());
-        for (i, value) in axes[axis].iter().enumerate() {
-            match quantity.check(*value) {
-                Ok(value) if values.contains(&value) => {
-                    warnings.merged(quantity.name(), &value.to_string(), &value.to_string());
-                }
-                Ok(value) => values.push(value),
-                Err(reason) => {
-                    let place = named_place(&format!("{}[{i}]", quantity.key));
-                    let remedy = "give a number in this range";
-                    faults.note(
-                        FaultCode::ValueOutOfRange,
-                        place,
-                        &value.to_string(),
-                        reason,
-                        remedy,
-                    );
-                }
-            }
-        }
-        if axes[axis].is_empty() {
-            values.extend(quantity.default);
-        }
-        values
-    })
-}
-
-fn additions(
-    names: &[String],
-    faults: &mut Faults,
-    warnings: &mut Warnings,
-) -> Vec<Option<Addition>> {
-    let mut orders = Vec::new();
-    for (i, name) in names.iter().enumerate() {
-        let place = named_place(&format!("conditions.addition[{i}]"));
-        let Some(order) = resolve::addition(name, place, faults) else {
-            continue;
-        };
-        if orders.contains(&Some(order)) {
-            warnings.merged("addition", name, name);
-        } else {
-            orders.push(Some(order));
-        }
-    }
-    if names.is_empty() { vec![None] } else { orders }
-}
-
-fn target(yield_at_least: Option<f64>, faults: &mut Faults) -> f64 {
-    let value = yield_at_least
-        .or(YIELD_AT_LEAST.default)
-        .unwrap_or_default();
-    YIELD_AT_LEAST.check(value).unwrap_or_else(|reason| {
-        let place = named_place(YIELD_AT_LEAST.key);
-        let remedy = "give a yield in this range; 0.5 is half";
-        faults.note(
-            FaultCode::ValueOutOfRange,
-            place,
-            &value.to_string(),
-            reason,
-            remedy,
-        );
-        value
-    })
 }
 
 fn structure_of_substrate(substrate: &Read) -> (String, String) {
@@ -337,7 +260,7 @@ fn check_size(campaign: &Campaign) -> Result<(), Vec<InputError>> {
         let remedy = "cut an axis";
         faults.note(
             FaultCode::CampaignTooLarge,
-            named_place("campaign"),
+            Place::of_field("campaign"),
             "",
             error.to_string(),
             remedy,

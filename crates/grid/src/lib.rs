@@ -6,6 +6,7 @@
 mod campaign;
 mod columns;
 mod conditions;
+mod digits;
 mod entries;
 mod fault;
 mod files;
@@ -20,15 +21,15 @@ mod reading;
 mod resolve;
 mod rows;
 mod spec;
+mod values;
 mod warnings;
 
 pub use campaign::Campaign;
 pub use columns::Columns;
+pub use digits::{AXES, CellDigits};
 pub use fault::{FaultCode, InputError, Located, value_of_row};
 pub use grid::Grid;
-pub use lattice::{
-    AXES, BlockId, CELLS_PER_BLOCK, CellDigits, CellId, GridError, Lattice, MAX_CELLS, Segment,
-};
+pub use lattice::{BlockId, CELLS_PER_BLOCK, CellId, GridError, Lattice, MAX_CELLS, Segment};
 pub use reading::{files_named, read, read_against};
 pub use spec::{
     AxisSpec, CampaignSpec, ConditionsSpec, Entry, Place, Sources, SubstrateEntry, TargetSpec,

@@ -83,10 +83,7 @@ fn electrophiles(axis: &AxisSpec, library: &Library, faults: &mut Faults) -> Vec
     };
     let mut found: Vec<NamedStructure> = Vec::new();
     for known in all {
-        let place = Place {
-            field: format!("electrophiles `{}`", known.name),
-            ..Place::default()
-        };
+        let place = Place::of_field(&format!("electrophiles `{}`", known.name));
         let molecule = entries::molecule(&known.smiles, place, faults);
         found.extend(molecule.map(|molecule| NamedStructure {
             name: known.name.clone(),
@@ -132,10 +129,7 @@ fn placed<'s>(axis: &'s AxisSpec, name: &str) -> impl Iterator<Item = (&'s Entry
 /// The place of a value; where none was given, its place in the list of the axis.
 pub(crate) fn in_list(place: &Place, axis: &str, index: usize) -> Place {
     if place.file.is_empty() && place.field.is_empty() {
-        Place {
-            field: format!("{axis}[{index}]"),
-            ..Place::default()
-        }
+        Place::of_field(&format!("{axis}[{index}]"))
     } else {
         place.clone()
     }
@@ -208,13 +202,7 @@ pub(crate) fn refuse_additives(axis: &AxisSpec, faults: &mut Faults) {
         );
     };
     if axis.all {
-        refuse(
-            Place {
-                field: "additives".to_owned(),
-                ..Place::default()
-            },
-            "all",
-        );
+        refuse(Place::of_field("additives"), "all");
     }
     for (entry, place) in placed(axis, "additives") {
         refuse(

@@ -15,6 +15,16 @@ pub struct Place {
     pub field: String,
 }
 
+impl Place {
+    /// A field of a request, which has no file.
+    pub(crate) fn of_field(field: &str) -> Place {
+        Place {
+            field: field.to_owned(),
+            ..Place::default()
+        }
+    }
+}
+
 /// A named reagent of the library or a SMILES.
 #[derive(Clone, Debug, Default, PartialEq, Serialize, Deserialize)]
 pub struct Entry {

@@ -10,6 +10,18 @@ use enolattice_model::Model;
 use enolattice_reagents::Library;
 use rayon::prelude::*;
 
+/// Electrophiles by structure; the model covers the first and the last.
+fn electrophiles(smiles: &[&str]) -> AxisSpec {
+    let entry = |smiles: &&str| Entry {
+        smiles: (*smiles).into(),
+        ..Entry::default()
+    };
+    AxisSpec {
+        all: false,
+        entries: smiles.iter().map(entry).collect(),
+    }
+}
+
 fn grid() -> Grid {
     let model = Arc::new(Model::new(Arc::new(
         Library::builtin().expect("the tables are sound"),
@@ -39,7 +51,7 @@ fn grid() -> Grid {
             })
             .into(),
         bases: named(&["LDA", "KOtBu", "K2CO3", "DBU"]),
-        electrophiles: named(&["MeI", "benzyl bromide", "methyl acrylate"]),
+        electrophiles: electrophiles(&["CI", "CC(=O)Cl", "C=CC(=O)OC"]),
         solvents: named(&["THF", "DMF", "EtOH"]),
         conditions: ConditionsSpec {
             temperature_c: vec![-20.0, 0.0, 25.0, 60.0],

@@ -27,7 +27,7 @@ mod score;
 mod screen;
 
 pub use acidity::{
-    AcidSite, Analogue, Analogues, Coefficient, Contribution, Form, Origin, Role, Uptake,
+    AcidSite, Coefficient, Contribution, Form, Origin, Role, Uptake,
     acid_sites, coefficients, estimate,
 };
 pub use cautions::{

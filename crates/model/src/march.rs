@@ -16,6 +16,10 @@ const STEP_GROWTH: f64 = 1.7;
 const NEWTON: usize = 12;
 /// Change of an amount, as a share of the substrate charged, at which a step is taken as solved.
 const TOLERANCE: f64 = 1e-4;
+/// Largest negative amount left by Newton's method, as a share of the substrate charged.
+const NEGATIVE: f64 = 1e-9;
+/// Least share of an amount that one iteration leaves.
+const CUT: f64 = 0.1;
 
 /// What the march found.
 #[derive(Clone, Debug)]
@@ -147,19 +151,24 @@ impl Solver {
     /// One backward Euler step.
     fn step(&mut self, pot: &mut Amounts, dt: f64) {
         for (y, species) in self.y.iter_mut().zip(&self.unknowns) {
-            *y = pot.of(*species);
+            *y = pot.of(*species).max(0.0);
         }
-        for _ in 0..NEWTON {
+        for iteration in 1..=NEWTON {
             self.linearise(pot, dt);
             solve(&mut self.matrix, &mut self.residual, &mut self.delta);
-            let change = self.delta.iter().fold(0.0_f64, |a, d| a.max(d.abs()));
-            if change < TOLERANCE * self.scale {
+            let (mut change, mut least) = (0.0_f64, 0.0_f64);
+            for (y, delta) in self.y.iter().zip(&self.delta) {
+                change = change.max(delta.abs());
+                least = least.min(y + delta);
+            }
+            let solved = change < TOLERANCE * self.scale && least > -NEGATIVE * self.scale;
+            if solved || iteration == NEWTON {
                 break;
             }
-            self.y
-                .iter_mut()
-                .zip(&self.delta)
-                .for_each(|(y, d)| *y += d);
+            // a step that would leave the positive root is cut; the next full one mends the mass
+            for (y, delta) in self.y.iter_mut().zip(&self.delta) {
+                *y = (*y + delta).max(CUT * *y);
+            }
         }
         self.book(pot, dt);
     }

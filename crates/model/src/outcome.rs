@@ -105,7 +105,7 @@ impl Unreacted<'_> {
         let mut left = (self.end.unreacted() / self.network.charged[0]).clamp(0.0, 1.0);
         let mut losses = Vec::with_capacity(3);
         let mut give = |channel: Channel, share: f64, left: &mut f64| {
-            let share = share.clamp(0.0, *left);
+            let share = share.min(*left);
             if share > 0.0 {
                 losses.push((channel, share));
                 *left -= share;

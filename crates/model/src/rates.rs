@@ -45,7 +45,7 @@ pub(crate) fn diffusion_limited(log10_k: f64) -> f64 {
 
 /// log10 k of proton transfer from a C–H acid to a base, `delta` = pKa(base's acid) − pKa(C–H).
 ///
-/// `log k = k₀ + β·Δ` downhill, `k₀ − (1 − β)·|Δ|` uphill, so that forward and back keep K.
+/// `log k = k₀ + β·|Δ|` downhill, capped, and less by |Δ| uphill, so that forward and back keep K.
 pub(crate) fn exchange(delta: f64, class: AnionClass, medium: &Medium, values: &Values) -> f64 {
     let beta = values.get(P::EXCHANGE_BRONSTED);
     let solvent = if medium.is_protic() {
@@ -66,19 +66,10 @@ pub(crate) fn exchange(delta: f64, class: AnionClass, medium: &Medium, values: &
     } else {
         0.0
     };
-    let at_25 = values.get(solvent) + cation + nitro + beta * delta.max(0.0);
-    let downhill = at_temperature(
-        at_25,
-        25.0,
-        medium.temperature_c,
-        values.get(P::DS_EXCHANGE),
-    );
-    let k0 = downhill.min(EXCHANGE_CAP);
-    if delta < 0.0 {
-        k0 + (1.0 - beta) * delta
-    } else {
-        k0
-    }
+    let at_25 = values.get(solvent) + cation + nitro + beta * delta.abs();
+    let entropy = values.get(P::DS_EXCHANGE);
+    let downhill = at_temperature(at_25, 25.0, medium.temperature_c, entropy).min(EXCHANGE_CAP);
+    if delta < 0.0 { downhill + delta } else { downhill }
 }
 
 /// A nucleophile as the rate equations see it.

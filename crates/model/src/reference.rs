@@ -26,6 +26,8 @@ pub(crate) struct Course {
     pub(crate) end: Amounts,
 }
 
+type State = [f64; Species::COUNT];
+
 struct System<'a> {
     reactions: &'a [Reaction],
     stage: &'a Stage,
@@ -44,8 +46,8 @@ impl System<'_> {
     }
 }
 
-impl ODE<f64, Vec<f64>> for System<'_> {
-    fn diff(&self, _t: f64, y: &Vec<f64>, dydt: &mut Vec<f64>) {
+impl ODE<f64, State> for System<'_> {
+    fn diff(&self, _t: f64, y: &State, dydt: &mut State) {
         dydt.fill(0.0);
         for reaction in self.reactions {
             let second = reaction.second.map_or(1.0, |s| y[s.index()]);
@@ -57,7 +59,7 @@ impl ODE<f64, Vec<f64>> for System<'_> {
         }
     }
 
-    fn jacobian(&self, _t: f64, y: &Vec<f64>, j: &mut Matrix<f64>) {
+    fn jacobian(&self, _t: f64, y: &State, j: &mut Matrix<f64>) {
         for row in 0..Species::COUNT {
             for column in 0..Species::COUNT {
                 j[(row, column)] = 0.0;
@@ -110,7 +112,7 @@ pub(crate) fn integrate(network: &Network) -> Result<Course, ModelError> {
                     }
             })
             .collect();
-        let solution = IVP::ode(&system, 0.0, stage.duration_s, pot.0.to_vec())
+        let solution = IVP::ode(&system, 0.0, stage.duration_s, pot.0)
             .t_eval(at)
             .method(
                 ImplicitRungeKutta::radau5()
@@ -125,7 +127,7 @@ pub(crate) fn integrate(network: &Network) -> Result<Course, ModelError> {
             })?;
         for (t, y) in solution.iter() {
             let mut amounts = Amounts::NONE;
-            amounts.0.copy_from_slice(y);
+            amounts.0 = *y;
             points.push((time + t, amounts));
             pot = amounts;
         }

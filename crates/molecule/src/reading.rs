@@ -230,11 +230,6 @@ fn perceive(given: &str, kekule: graph::Molecule) -> Result<Molecule, StructureE
         .atoms()
         .map(|(_, atom)| atom.isotope.unwrap_or(0))
         .collect();
-    let rings = perception::find_symmetrized_sssr(&kekule)
-        .rings()
-        .iter()
-        .map(|ring| ring.iter().map(|atom| atom.0 as usize).collect())
-        .collect();
     Ok(Molecule {
         smiles: given.to_owned(),
         canonical,
@@ -244,7 +239,7 @@ fn perceive(given: &str, kekule: graph::Molecule) -> Result<Molecule, StructureE
         symmetry_classes: symmetry::refine(&atoms, &isotopes, &neighbours),
         atoms,
         neighbours,
-        rings,
+        rings: rings(&kekule),
         kekule,
     })
 }
@@ -296,4 +291,17 @@ fn perceived_bonds(
         around.sort_unstable_by_key(|(other, _)| *other);
     }
     Ok(neighbours)
+}
+
+/// Symmetrised smallest rings; the plain smallest set where the search gives up.
+fn rings(kekule: &graph::Molecule) -> Vec<Vec<usize>> {
+    let bonds: Vec<(usize, usize, bool)> = kekule
+        .bonds()
+        .map(|(_, bond)| (bond.atom1.0 as usize, bond.atom2.0 as usize, true))
+        .collect();
+    perception::rdkit_symmetrized_sssr(kekule.atom_count(), &bonds).unwrap_or_else(|| {
+        let smallest = perception::find_sssr(kekule);
+        let indices = |ring: &Vec<graph::AtomIdx>| ring.iter().map(|a| a.0 as usize).collect();
+        smallest.rings().iter().map(indices).collect()
+    })
 }

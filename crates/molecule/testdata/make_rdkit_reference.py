@@ -176,11 +176,22 @@ def main():
             if smiles and not smiles.startswith("#"):
                 molecule = Chem.MolFromSmiles(smiles)
                 flat = Chem.MolToSmiles(molecule, isomericSmiles=False)
-                molecules.append([smiles, Chem.MolToSmiles(molecule), flat, *numbers(molecule)])
+                rings = sorted(len(ring) for ring in Chem.GetSymmSSSR(molecule))
+                ranks = Chem.CanonicalRankAtoms(molecule, breakTies=False, includeChirality=False)
+                molecules.append(
+                    [
+                        smiles,
+                        Chem.MolToSmiles(molecule),
+                        flat,
+                        *numbers(molecule),
+                        " ".join(map(str, rings)),
+                        len(set(ranks)),
+                    ]
+                )
     write(
         "rdkit_reference.csv",
         "Masses in Da and g/mol.",
-        ["smiles", "canonical", "canonical_flat", "formula", "exact_mass", "molar_mass"],
+        ["smiles", "canonical", "canonical_flat", "formula", "exact_mass", "molar_mass", "ring_sizes", "symmetry_classes"],
         molecules,
     )
     products = []

@@ -38,6 +38,12 @@ fn structures_agree_with_rdkit() {
         let molecule = Molecule::parse(&row[0]).unwrap();
         let expected = [&row[2], &row[1], &row[3], &row[4], &row[5]].map(String::clone);
         assert_same(&molecule, &expected, &row[0]);
+        let mut rings: Vec<usize> = molecule.rings().iter().map(Vec::len).collect();
+        rings.sort_unstable();
+        let rings: Vec<String> = rings.iter().map(usize::to_string).collect();
+        assert_eq!(rings.join(" "), row[6], "{}", row[0]);
+        let classes = molecule.symmetry_classes().iter().max().unwrap() + 1;
+        assert_eq!(classes.to_string(), row[7], "{}", row[0]);
         let again = Molecule::parse(molecule.canonical()).unwrap();
         assert_eq!(again.canonical(), molecule.canonical());
     }

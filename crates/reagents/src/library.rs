@@ -26,15 +26,17 @@ const SOLVENTS: TableText = table!("solvents.tsv");
 const ELECTROPHILES: TableText = table!("electrophiles.tsv");
 const ACIDITIES_CH: TableText = table!("acidities_ch.tsv");
 const ACIDITIES_XH: TableText = table!("acidities_xh.tsv");
+const ACIDITIES_REMEMBERED: TableText = table!("acidities_remembered.tsv");
 const ELECTROPHILICITIES: TableText = table!("electrophilicities.tsv");
 
 /// All tables, in the order in which the digest takes them.
-const TABLES: [TableText; 6] = [
+const TABLES: [TableText; 7] = [
     BASES,
     SOLVENTS,
     ELECTROPHILES,
     ACIDITIES_CH,
     ACIDITIES_XH,
+    ACIDITIES_REMEMBERED,
     ELECTROPHILICITIES,
 ];
 
@@ -84,6 +86,7 @@ impl Library {
         library.index_electrophiles()?;
         library.take_acidities(measured::acidities(ACIDITIES_CH)?);
         library.take_acidities(measured::acidities(ACIDITIES_XH)?);
+        library.take_acidities(measured::acidities(ACIDITIES_REMEMBERED)?);
         library.take_electrophilicities(measured::electrophilicities(ELECTROPHILICITIES)?);
         Ok(library)
     }

@@ -3,7 +3,7 @@
 use std::collections::{BTreeMap, HashSet};
 use std::path::PathBuf;
 
-use enolattice_molecule::Molecule;
+use enolattice_molecule::{Molecule, recognise};
 use enolattice_reagents::{Cation, Library, Reagent};
 
 /// A table as it lies on disk, independent of the reader under test.
@@ -54,9 +54,10 @@ fn tables_have_the_expected_number_of_rows() {
         .collect();
     let expected = [
         ("acidities_ch.tsv", 316),
+        ("acidities_remembered.tsv", 33),
         ("acidities_xh.tsv", 156),
         ("bases.tsv", 25),
-        ("electrophiles.tsv", 57),
+        ("electrophiles.tsv", 59),
         ("electrophilicities.tsv", 42),
         ("solvents.tsv", 25),
     ];
@@ -65,7 +66,7 @@ fn tables_have_the_expected_number_of_rows() {
         expected.map(|(file, rows)| (file.to_owned(), rows)).into()
     );
     let library = library();
-    assert_eq!(library.acidities().len(), 316 + 156);
+    assert_eq!(library.acidities().len(), 316 + 156 + 33);
     assert_eq!(library.electrophilicities().len(), 42);
 }
 
@@ -224,6 +225,16 @@ fn single_solvents_named_by_a_base_are_in_the_table_of_solvents() {
         for (name, _) in &base.log_solubility_in {
             let solvent = library.solvent(name).map(|s| s.name.as_str());
             assert_eq!(solvent, Some(name.as_str()), "{}", base.name);
+        }
+    }
+}
+
+#[test]
+fn the_reacting_group_of_every_named_electrophile_is_recognised() {
+    for electrophile in library().electrophiles() {
+        let molecule = Molecule::parse(&electrophile.smiles).unwrap();
+        if let Err(reason) = recognise(&molecule) {
+            panic!("{}: {reason}", electrophile.name);
         }
     }
 }

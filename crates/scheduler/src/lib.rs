@@ -1,10 +1,11 @@
 //! The queue's rules and the compute pool: tokio outside, rayon inside.
 
 mod compute;
-mod queue;
+mod desk;
 mod rules;
+mod scheduler;
 mod work;
 
-pub use queue::{Progress, Scheduler, SchedulerConfig, SchedulerError};
 pub use rules::{Event, Refused, next_job, transition};
+pub use scheduler::{MakeWork, Notify, Progress, Scheduler, SchedulerConfig, SchedulerError};
 pub use work::{Work, WorkBlock};

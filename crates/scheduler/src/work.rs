@@ -29,10 +29,17 @@ pub struct Work {
 impl Work {
     /// The work of a grid.
     pub fn of_grid(grid: Arc<Grid>) -> Work {
-        let first_cell = |id| WorkBlock { id, first_cell: grid.block_cells(id).start };
+        let first_cell = |id| WorkBlock {
+            id,
+            first_cell: grid.block_cells(id).start,
+        };
         let blocks = grid.blocks().map(first_cell).collect();
         let model_fingerprint = grid.model().fingerprint();
-        Work { model_fingerprint, blocks, score: Arc::new(move |block| grid.score(block)) }
+        Work {
+            model_fingerprint,
+            blocks,
+            score: Arc::new(move |block| grid.score(block)),
+        }
     }
 }
 

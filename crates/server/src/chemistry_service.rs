@@ -44,7 +44,9 @@ impl Chemistry {
             )]));
         }
         let reports = self.engine.sites(smiles).await?;
-        Ok(v1::ListSitesResponse { molecules: reports.iter().map(Into::into).collect() })
+        Ok(v1::ListSitesResponse {
+            molecules: reports.iter().map(Into::into).collect(),
+        })
     }
 
     async fn reagents(
@@ -74,7 +76,9 @@ impl ChemistryService for Chemistry {
     ) -> Result<Response<v1::ExplainCellResponse>, Status> {
         let (metadata, _, request) = request.into_parts();
         let answer = self.explain(request).await;
-        answer.map(Response::new).map_err(|refusal| refusal.status(&metadata))
+        answer
+            .map(Response::new)
+            .map_err(|refusal| refusal.status(&metadata))
     }
 
     async fn list_sites(
@@ -83,7 +87,9 @@ impl ChemistryService for Chemistry {
     ) -> Result<Response<v1::ListSitesResponse>, Status> {
         let (metadata, _, request) = request.into_parts();
         let answer = self.sites(&request.smiles).await;
-        answer.map(Response::new).map_err(|refusal| refusal.status(&metadata))
+        answer
+            .map(Response::new)
+            .map_err(|refusal| refusal.status(&metadata))
     }
 
     async fn list_reagents(
@@ -92,6 +98,8 @@ impl ChemistryService for Chemistry {
     ) -> Result<Response<v1::ListReagentsResponse>, Status> {
         let (metadata, _, request) = request.into_parts();
         let answer = self.reagents(request).await;
-        answer.map(Response::new).map_err(|refusal| refusal.status(&metadata))
+        answer
+            .map(Response::new)
+            .map_err(|refusal| refusal.status(&metadata))
     }
 }

@@ -27,7 +27,9 @@ impl Jobs {
     async fn submit(&self, request: v1::SubmitJobRequest) -> Result<v1::Job, Refusal> {
         let submission = Submission::try_from(request)?;
         let job = self.engine.submit(submission).await;
-        Ok(v1::Job::from(&job.map_err(|error| Refusal::within("campaign", error))?))
+        Ok(v1::Job::from(
+            &job.map_err(|error| Refusal::within("campaign", error))?,
+        ))
     }
 }
 
@@ -41,7 +43,9 @@ impl JobService for Jobs {
     ) -> Result<Response<v1::Job>, Status> {
         let (metadata, _, request) = request.into_parts();
         let answer = self.submit(request).await;
-        answer.map(Response::new).map_err(|refusal| refusal.status(&metadata))
+        answer
+            .map(Response::new)
+            .map_err(|refusal| refusal.status(&metadata))
     }
 
     async fn submit_job_stream(
@@ -53,7 +57,9 @@ impl JobService for Jobs {
             Ok(request) => self.submit(request).await,
             Err(refusal) => Err(refusal),
         };
-        answer.map(Response::new).map_err(|refusal| refusal.status(&metadata))
+        answer
+            .map(Response::new)
+            .map_err(|refusal| refusal.status(&metadata))
     }
 
     async fn get_job(
@@ -85,7 +91,10 @@ impl JobService for Jobs {
                 next_page_token: page.next_page_token,
             })
         };
-        answer.await.map(Response::new).map_err(|refusal: Refusal| refusal.status(&metadata))
+        answer
+            .await
+            .map(Response::new)
+            .map_err(|refusal: Refusal| refusal.status(&metadata))
     }
 
     async fn cancel_job(
@@ -105,7 +114,10 @@ impl JobService for Jobs {
         let (metadata, _, v1::WatchJobRequest { job_id }) = request.into_parts();
         let states = self.engine.watch(&job_id).await;
         let states = states.map_err(|error| Refusal::from(error).status(&metadata))?;
-        Ok(Response::new(crate::watch::changes(states, self.stopping.clone())))
+        Ok(Response::new(crate::watch::changes(
+            states,
+            self.stopping.clone(),
+        )))
     }
 
     async fn rank_cells(
@@ -117,6 +129,9 @@ impl JobService for Jobs {
             let page = self.engine.rank(RankQuery::try_from(request)?).await?;
             Ok(v1::RankCellsResponse::from(&page))
         };
-        answer.await.map(Response::new).map_err(|refusal: Refusal| refusal.status(&metadata))
+        answer
+            .await
+            .map(Response::new)
+            .map_err(|refusal: Refusal| refusal.status(&metadata))
     }
 }

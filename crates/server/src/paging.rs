@@ -49,7 +49,10 @@ impl Asked<'_> {
         let end = rows.len().min(start + size as usize);
         let last = rows[start..end].last().filter(|_| end < rows.len());
         let next_page_token = last.map(|row| self.token(&key(row))).unwrap_or_default();
-        Ok(Page { rows: &rows[start..end], next_page_token })
+        Ok(Page {
+            rows: &rows[start..end],
+            next_page_token,
+        })
     }
 
     fn token(&self, after: &str) -> String {
@@ -83,7 +86,9 @@ impl Asked<'_> {
 }
 
 fn invalid(reason: &str) -> Refusal {
-    Refusal::from(EngineError::PageToken { reason: reason.to_owned() })
+    Refusal::from(EngineError::PageToken {
+        reason: reason.to_owned(),
+    })
 }
 
 #[cfg(test)]
@@ -93,11 +98,18 @@ mod tests {
     const ROWS: [u32; 7] = [70, 60, 50, 40, 30, 20, 10];
 
     fn asked<'a>(arguments: &'a str, page_size: i32, page_token: &'a str) -> Asked<'a> {
-        Asked { list: "rows", arguments, page_size, page_token }
+        Asked {
+            list: "rows",
+            arguments,
+            page_size,
+            page_token,
+        }
     }
 
     fn refused(token: &str, arguments: &str) -> bool {
-        asked(arguments, 2, token).page(&ROWS, u32::to_string).is_err()
+        asked(arguments, 2, token)
+            .page(&ROWS, u32::to_string)
+            .is_err()
     }
 
     #[test]
@@ -119,7 +131,10 @@ mod tests {
 
     #[test]
     fn rows_added_in_front_shift_nothing() {
-        let first = asked("a", 3, "").page(&ROWS, u32::to_string).ok().expect("a page");
+        let first = asked("a", 3, "")
+            .page(&ROWS, u32::to_string)
+            .ok()
+            .expect("a page");
         let grown = [&[90, 80], ROWS.as_slice()].concat();
         let second = asked("a", 3, &first.next_page_token).page(&grown, u32::to_string);
         assert_eq!(second.ok().expect("a page").rows, [40, 30, 20]);
@@ -127,7 +142,10 @@ mod tests {
 
     #[test]
     fn tokens_that_do_not_fit_are_refused() {
-        let page = asked("a", 2, "").page(&ROWS, u32::to_string).ok().expect("a page");
+        let page = asked("a", 2, "")
+            .page(&ROWS, u32::to_string)
+            .ok()
+            .expect("a page");
         let token = page.next_page_token;
         assert!(!refused(&token, "a"));
         assert!(refused(&token, "b"));

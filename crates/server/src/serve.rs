@@ -92,6 +92,10 @@ fn reflection() -> tonic_reflection::server::Builder<'static> {
 
 async fn report(health: &HealthReporter, status: ServingStatus) {
     health.set_service_status("", status).await;
-    health.set_service_status("enolattice.v1.JobService", status).await;
-    health.set_service_status("enolattice.v1.ChemistryService", status).await;
+    health
+        .set_service_status("enolattice.v1.JobService", status)
+        .await;
+    health
+        .set_service_status("enolattice.v1.ChemistryService", status)
+        .await;
 }

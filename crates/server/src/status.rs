@@ -53,7 +53,10 @@ impl Refusal {
         let mut refusal = Refusal::from(error);
         if let Refusal::Input(faults) = &mut refusal {
             // The id of a request stands beside its campaign.
-            for fault in faults.iter_mut().filter(|fault| fault.place.field != "request_id") {
+            for fault in faults
+                .iter_mut()
+                .filter(|fault| fault.place.field != "request_id")
+            {
                 fault.place.field = format!("{part}.{}", fault.place.field);
             }
         }
@@ -87,7 +90,11 @@ impl Refusal {
         if code == Code::Internal || reason == ErrorReason::StoreUnavailable {
             tracing::error!(reason = reason.as_str_name(), message, "a request failed");
         }
-        let status = pb::Status { code: code.into(), message: message.clone(), details };
+        let status = pb::Status {
+            code: code.into(),
+            message: message.clone(),
+            details,
+        };
         Status::with_details(code, message, status.encode_to_vec().into())
     }
 
@@ -146,7 +153,10 @@ impl Refusal {
             Refusal::TooLarge { limit_bytes } => vec![("limit_bytes", limit_bytes.to_string())],
             _ => vec![],
         };
-        facts.into_iter().map(|(key, value)| (key.to_owned(), value)).collect()
+        facts
+            .into_iter()
+            .map(|(key, value)| (key.to_owned(), value))
+            .collect()
     }
 }
 
@@ -172,7 +182,9 @@ fn bad_request(faults: &[InputError]) -> pb::BadRequest {
         reason: fault.code.to_owned(),
         localized_message: None,
     });
-    pb::BadRequest { field_violations: violations.collect() }
+    pb::BadRequest {
+        field_violations: violations.collect(),
+    }
 }
 
 /// The first faults, as many as fit into details of this size.
@@ -188,13 +200,20 @@ fn fitting(faults: &[InputError], bytes: usize) -> &[InputError] {
 }
 
 fn detail_bytes(metadata: &MetadataMap) -> usize {
-    let told = metadata.get(DETAIL_BYTES_KEY).and_then(|value| value.to_str().ok());
-    let bytes = told.and_then(|value| value.parse().ok()).unwrap_or(DEFAULT_DETAIL_BYTES);
+    let told = metadata
+        .get(DETAIL_BYTES_KEY)
+        .and_then(|value| value.to_str().ok());
+    let bytes = told
+        .and_then(|value| value.parse().ok())
+        .unwrap_or(DEFAULT_DETAIL_BYTES);
     bytes.min(MAX_DETAIL_BYTES)
 }
 
 fn any(name: &str, message: &impl Message) -> Any {
-    Any { type_url: format!("type.googleapis.com/{name}"), value: message.encode_to_vec() }
+    Any {
+        type_url: format!("type.googleapis.com/{name}"),
+        value: message.encode_to_vec(),
+    }
 }
 
 #[cfg(test)]
@@ -233,22 +252,32 @@ mod tests {
 
     #[test]
     fn standard_clients_see_every_fault() {
-        let status = Refusal::within("campaign", EngineError::Input(faults(2)))
-            .status(&MetadataMap::new());
+        let status =
+            Refusal::within("campaign", EngineError::Input(faults(2))).status(&MetadataMap::new());
         let details = status.get_error_details();
-        let violations = &details.bad_request().expect("a BadRequest").field_violations;
+        let violations = &details
+            .bad_request()
+            .expect("a BadRequest")
+            .field_violations;
         assert_eq!(violations.len(), 2);
         assert_eq!(violations[1].field, "campaign.bases.reagents[1]");
         assert_eq!(violations[1].reason, "REAGENT_UNKNOWN");
         assert!(violations[1].description.contains("LDDA"));
         let info = details.error_info().expect("an ErrorInfo");
-        assert_eq!((info.reason.as_str(), info.domain.as_str()), ("INPUT_INVALID", ERROR_DOMAIN));
+        assert_eq!(
+            (info.reason.as_str(), info.domain.as_str()),
+            ("INPUT_INVALID", ERROR_DOMAIN)
+        );
     }
 
     #[test]
     fn details_stay_within_what_the_client_takes() {
         let small = Refusal::from(faults(1000)).status(&MetadataMap::new());
-        assert!(small.details().len() * 4 / 3 <= 8192, "{}", small.details().len());
+        assert!(
+            small.details().len() * 4 / 3 <= 8192,
+            "{}",
+            small.details().len()
+        );
         let details = small.get_error_details();
         let facts = &details.error_info().expect("an ErrorInfo").metadata;
         assert_eq!(facts["faults"], "1000");
@@ -266,20 +295,47 @@ mod tests {
         let job = || "j".to_owned();
         let cases = [
             (EngineError::JobUnknown { job: job() }, Code::NotFound, true),
-            (EngineError::CellUnknown { job: job(), cell: 9, last: 8 }, Code::NotFound, true),
             (
-                EngineError::WrongState { job: job(), state: "done", remedy: "submit it again" },
+                EngineError::CellUnknown {
+                    job: job(),
+                    cell: 9,
+                    last: 8,
+                },
+                Code::NotFound,
+                true,
+            ),
+            (
+                EngineError::WrongState {
+                    job: job(),
+                    state: "done",
+                    remedy: "submit it again",
+                },
                 Code::FailedPrecondition,
                 true,
             ),
             (
-                EngineError::RequestIdReused { request_id: "r".into(), job: job() },
+                EngineError::RequestIdReused {
+                    request_id: "r".into(),
+                    job: job(),
+                },
                 Code::AlreadyExists,
                 true,
             ),
-            (EngineError::PageToken { reason: "old".into() }, Code::InvalidArgument, true),
+            (
+                EngineError::PageToken {
+                    reason: "old".into(),
+                },
+                Code::InvalidArgument,
+                true,
+            ),
             (EngineError::Stopping, Code::Unavailable, false),
-            (EngineError::Store { reason: "disk full".into() }, Code::Unavailable, false),
+            (
+                EngineError::Store {
+                    reason: "disk full".into(),
+                },
+                Code::Unavailable,
+                false,
+            ),
         ];
         for (error, code, callers) in cases {
             let words = error.to_string();

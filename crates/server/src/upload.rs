@@ -21,7 +21,9 @@ pub(crate) async fn collect(
         let message = message?;
         bytes += message.encoded_len();
         if bytes > MAX_STREAMED_CAMPAIGN_BYTES {
-            return Ok(Err(Refusal::TooLarge { limit_bytes: MAX_STREAMED_CAMPAIGN_BYTES }));
+            return Ok(Err(Refusal::TooLarge {
+                limit_bytes: MAX_STREAMED_CAMPAIGN_BYTES,
+            }));
         }
         match (message.part, &mut submission) {
             (Some(Part::Header(header)), None) => submission = Some(header),
@@ -47,7 +49,13 @@ fn append(submission: &mut v1::SubmitJobRequest, chunk: v1::AxisChunk) {
 
 fn out_of_place(part: &str, why: &str) -> Refusal {
     let remedy = "send one header, then chunks";
-    Refusal::from(vec![bad_field(ErrorReason::ValueMissing, part, "", why, remedy)])
+    Refusal::from(vec![bad_field(
+        ErrorReason::ValueMissing,
+        part,
+        "",
+        why,
+        remedy,
+    )])
 }
 
 #[cfg(test)]
@@ -56,12 +64,21 @@ mod tests {
 
     fn header(substrate: &str) -> Part {
         let substrates = vec![named(substrate)];
-        let campaign = v1::Campaign { substrates, ..Default::default() };
-        Part::Header(v1::SubmitJobRequest { campaign: Some(campaign), ..Default::default() })
+        let campaign = v1::Campaign {
+            substrates,
+            ..Default::default()
+        };
+        Part::Header(v1::SubmitJobRequest {
+            campaign: Some(campaign),
+            ..Default::default()
+        })
     }
 
     fn chunk(substrate: &str, electrophile: &str) -> Part {
-        let reagent = v1::Reagent { name: electrophile.into(), ..Default::default() };
+        let reagent = v1::Reagent {
+            name: electrophile.into(),
+            ..Default::default()
+        };
         Part::Chunk(v1::AxisChunk {
             substrates: vec![named(substrate)],
             electrophiles: vec![reagent],
@@ -69,27 +86,48 @@ mod tests {
     }
 
     fn named(name: &str) -> v1::Substrate {
-        v1::Substrate { name: name.into(), ..Default::default() }
+        v1::Substrate {
+            name: name.into(),
+            ..Default::default()
+        }
     }
 
     async fn collected(parts: Vec<Part>) -> Result<v1::SubmitJobRequest, Refusal> {
-        let messages = parts.into_iter().map(|part| v1::SubmitJobStreamRequest { part: Some(part) });
-        collect(tokio_stream::iter(messages.map(Ok))).await.expect("the stream is sound")
+        let messages = parts
+            .into_iter()
+            .map(|part| v1::SubmitJobStreamRequest { part: Some(part) });
+        collect(tokio_stream::iter(messages.map(Ok)))
+            .await
+            .expect("the stream is sound")
     }
 
     #[tokio::test]
     async fn chunks_are_appended_in_order() {
         let request = collected(vec![header("a"), chunk("b", "x"), chunk("c", "y")]).await;
         let campaign = request.expect("is sound").campaign.expect("a campaign");
-        let substrates: Vec<_> = campaign.substrates.iter().map(|s| s.name.as_str()).collect();
+        let substrates: Vec<_> = campaign
+            .substrates
+            .iter()
+            .map(|s| s.name.as_str())
+            .collect();
         let electrophiles = campaign.electrophiles.expect("an axis").reagents;
         assert_eq!(substrates, ["a", "b", "c"]);
-        assert_eq!(electrophiles.iter().map(|e| e.name.as_str()).collect::<Vec<_>>(), ["x", "y"]);
+        assert_eq!(
+            electrophiles
+                .iter()
+                .map(|e| e.name.as_str())
+                .collect::<Vec<_>>(),
+            ["x", "y"]
+        );
     }
 
     #[tokio::test]
     async fn parts_out_of_place_are_refused() {
-        for parts in [vec![], vec![chunk("b", "x")], vec![header("a"), header("b")]] {
+        for parts in [
+            vec![],
+            vec![chunk("b", "x")],
+            vec![header("a"), header("b")],
+        ] {
             assert!(matches!(collected(parts).await, Err(Refusal::Input(_))));
         }
     }
@@ -99,6 +137,9 @@ mod tests {
         let name = "x".repeat(1 << 20);
         let mut parts = vec![header("a")];
         parts.extend((0..65).map(|_| chunk(&name, "")));
-        assert!(matches!(collected(parts).await, Err(Refusal::TooLarge { .. })));
+        assert!(matches!(
+            collected(parts).await,
+            Err(Refusal::TooLarge { .. })
+        ));
     }
 }

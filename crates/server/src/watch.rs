@@ -32,7 +32,9 @@ pub(crate) fn changes(
 async fn forward(mut states: watch::Receiver<Job>, sender: &mpsc::Sender<Message>) {
     loop {
         let job = states.borrow_and_update().clone();
-        let message = v1::WatchJobResponse { job: Some(v1::Job::from(&job)) };
+        let message = v1::WatchJobResponse {
+            job: Some(v1::Job::from(&job)),
+        };
         if sender.send(Ok(message)).await.is_err() || job.state.is_ended() {
             return;
         }
@@ -107,7 +109,11 @@ mod tests {
         let mut stream = changes(states, stopping);
         assert_eq!(done(&mut stream).await, Some(1));
         stop.send_replace(true);
-        let status = stream.next().await.expect("a message").expect_err("an error");
+        let status = stream
+            .next()
+            .await
+            .expect("a message")
+            .expect_err("an error");
         assert_eq!(status.code(), tonic::Code::Unavailable);
         assert!(stream.next().await.is_none());
     }

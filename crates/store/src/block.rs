@@ -43,7 +43,10 @@ pub(crate) fn parse_key(key: &[u8]) -> Option<(JobId, BlockId)> {
         segment: u32::from_be_bytes([s0, s1, s2, s3]),
         index: u32::from_be_bytes([i0, i1, i2, i3]),
     };
-    Some((JobId::from_number(u64::from_be_bytes([a, b, c, d, e, f, g, h])), block))
+    Some((
+        JobId::from_number(u64::from_be_bytes([a, b, c, d, e, f, g, h])),
+        block,
+    ))
 }
 
 /// A block as it is stored.
@@ -80,11 +83,15 @@ pub(crate) fn encode(
 /// # Errors
 /// A sentence that says what is wrong with the bytes.
 pub(crate) fn decode(key: &[u8], value: &[u8]) -> Result<StoredBlock, String> {
-    let (body, crc) = value.split_last_chunk::<CRC_BYTES>().ok_or("too short for a checksum")?;
+    let (body, crc) = value
+        .split_last_chunk::<CRC_BYTES>()
+        .ok_or("too short for a checksum")?;
     if checksum(key, body) != u32::from_le_bytes(*crc) {
         return Err("the checksum does not match".into());
     }
-    let (head, columns) = body.split_first_chunk::<HEAD_BYTES>().ok_or("too short for a head")?;
+    let (head, columns) = body
+        .split_first_chunk::<HEAD_BYTES>()
+        .ok_or("too short for a head")?;
     if head[0] != VERSION {
         return Err(format!("version {} is not known", head[0]));
     }
@@ -98,7 +105,11 @@ pub(crate) fn decode(key: &[u8], value: &[u8]) -> Result<StoredBlock, String> {
     if columns.len() != cells as usize {
         return Err(format!("{} scores for {cells} cells", columns.len()));
     }
-    Ok(StoredBlock { commit: number(8), first_cell: number(16), columns })
+    Ok(StoredBlock {
+        commit: number(8),
+        first_cell: number(16),
+        columns,
+    })
 }
 
 /// The bytes of the columns within a value that [`decode`] accepts.
@@ -127,11 +138,18 @@ mod tests {
             largest_loss: vec![0, 17, 1],
             cautions: vec![0, 0x8000_0001, 5],
         };
-        let block = BlockId { segment: 1, index: 258 };
+        let block = BlockId {
+            segment: 1,
+            index: 258,
+        };
         (
             JobId::from_number(0x0102_0304_0506_0708),
             block,
-            StoredBlock { commit: 7, first_cell: 1_056_768, columns },
+            StoredBlock {
+                commit: 7,
+                first_cell: 1_056_768,
+                columns,
+            },
         )
     }
 
@@ -162,7 +180,13 @@ mod tests {
         for length in 0..value.len() {
             assert!(decode(&key, &value[..length]).is_err(), "{length} bytes");
         }
-        let elsewhere = super::key(job, BlockId { index: 259, ..block });
+        let elsewhere = super::key(
+            job,
+            BlockId {
+                index: 259,
+                ..block
+            },
+        );
         assert!(decode(&elsewhere, &value).is_err());
     }
 

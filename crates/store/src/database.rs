@@ -50,10 +50,22 @@ impl Database {
                 .flush_every_ms(None);
             let db = config.open().map_err(|error| fault(path, error))?;
             let tree = db.open_tree(TREE).map_err(|error| fault(path, error))?;
-            let refused = |source| Fault::Refused(StoreError::Io { path: path.into(), source });
+            let refused = |source| {
+                Fault::Refused(StoreError::Io {
+                    path: path.into(),
+                    source,
+                })
+            };
             let file = File::open(path.join("db")).map_err(refused)?;
-            File::open(path).and_then(|directory| directory.sync_all()).map_err(refused)?;
-            Ok(Database { db, tree, file, failed: Mutex::new(None) })
+            File::open(path)
+                .and_then(|directory| directory.sync_all())
+                .map_err(refused)?;
+            Ok(Database {
+                db,
+                tree,
+                file,
+                failed: Mutex::new(None),
+            })
         })
     }
 
@@ -80,7 +92,9 @@ impl Database {
         value: &[u8],
     ) -> Result<Option<IVec>, StoreError> {
         self.writing(|| {
-            let outcome = self.tree.compare_and_swap(key, None::<&[u8]>, Some(value))?;
+            let outcome = self
+                .tree
+                .compare_and_swap(key, None::<&[u8]>, Some(value))?;
             Ok(outcome.err().and_then(|swap| swap.current))
         })
     }
@@ -136,8 +150,16 @@ fn guarded<T>(work: impl FnOnce() -> Result<T, Fault>) -> Result<T, Fault> {
 fn fault(path: &Path, error: sled::Error) -> Fault {
     use io::ErrorKind::{InvalidData, InvalidInput, Other, UnexpectedEof};
     match &error {
-        sled::Error::Io(io) if !matches!(io.kind(), InvalidData | InvalidInput | UnexpectedEof | Other) => {
-            Fault::Refused(StoreError::Database { path: path.into(), reason: error.to_string() })
+        sled::Error::Io(io)
+            if !matches!(
+                io.kind(),
+                InvalidData | InvalidInput | UnexpectedEof | Other
+            ) =>
+        {
+            Fault::Refused(StoreError::Database {
+                path: path.into(),
+                reason: error.to_string(),
+            })
         }
         sled::Error::Io(io) if io.to_string().contains("could not acquire lock") => {
             let dir = path.parent().unwrap_or(path).into();

@@ -45,7 +45,9 @@ pub enum StoreError {
         reason: String,
     },
     /// A write failed earlier: nothing more is acknowledged.
-    #[error("the store stopped at a failed write ({reason}); free space on the disk and start again")]
+    #[error(
+        "the store stopped at a failed write ({reason}); free space on the disk and start again"
+    )]
     Stopped {
         /// The first failure.
         reason: String,
@@ -57,7 +59,9 @@ pub enum StoreError {
         job: String,
     },
     /// The request id was used for another request.
-    #[error("the request id `{request_id}` belongs to job `{job}`, which was another request; choose a new request id")]
+    #[error(
+        "the request id `{request_id}` belongs to job `{job}`, which was another request; choose a new request id"
+    )]
     RequestIdReused {
         /// The request id.
         request_id: String,
@@ -120,7 +124,9 @@ pub enum StoreError {
 impl StoreError {
     /// Wraps why a new job cannot be recorded.
     pub(crate) fn unwritable(error: impl std::fmt::Display) -> StoreError {
-        StoreError::Unwritable { reason: error.to_string() }
+        StoreError::Unwritable {
+            reason: error.to_string(),
+        }
     }
 
     /// Wraps what the file system said about `path`.

@@ -52,13 +52,17 @@ impl FromStr for JobId {
     type Err = StoreError;
 
     fn from_str(text: &str) -> Result<JobId, StoreError> {
-        let unknown = || StoreError::JobUnknown { job: text.chars().take(64).collect() };
+        let unknown = || StoreError::JobUnknown {
+            job: text.chars().take(64).collect(),
+        };
         if text.len() != LENGTH {
             return Err(unknown());
         }
         text.bytes()
             .try_fold(0u64, |number, byte| {
-                let digit = DIGITS.iter().position(|d| *d == byte.to_ascii_lowercase())?;
+                let digit = DIGITS
+                    .iter()
+                    .position(|d| *d == byte.to_ascii_lowercase())?;
                 number.checked_mul(32)?.checked_add(digit as u64)
             })
             .map(JobId)
@@ -74,7 +78,12 @@ mod tests {
     fn ids_read_back_and_sort_as_text_like_numbers() {
         let mut last = None;
         let mut texts = Vec::new();
-        for (now, random) in [(1_700_000_000_000, 7), (1_700_000_000_000, 3), (5, 0), (1_800_000_000_000, 1)] {
+        for (now, random) in [
+            (1_700_000_000_000, 7),
+            (1_700_000_000_000, 3),
+            (5, 0),
+            (1_800_000_000_000, 1),
+        ] {
             let id = JobId::after(last, now, random);
             assert_eq!(id.to_string().parse::<JobId>().unwrap(), id);
             assert_eq!(id.to_string().to_uppercase().parse::<JobId>().unwrap(), id);
@@ -86,8 +95,17 @@ mod tests {
 
     #[test]
     fn other_text_is_no_id() {
-        for text in ["", "0", "zzzzzzzzzzzzz", "0123456789abi", "0123456789ab\u{e9}"] {
-            assert!(matches!(text.parse::<JobId>(), Err(StoreError::JobUnknown { .. })), "{text}");
+        for text in [
+            "",
+            "0",
+            "zzzzzzzzzzzzz",
+            "0123456789abi",
+            "0123456789ab\u{e9}",
+        ] {
+            assert!(
+                matches!(text.parse::<JobId>(), Err(StoreError::JobUnknown { .. })),
+                "{text}"
+            );
         }
     }
 }

@@ -88,9 +88,8 @@ impl JobIndex {
         self.cells += u64::from(summary.cells);
         self.last_commit = self.last_commit.max(summary.commit);
         self.blocks.insert(block, summary);
-        let best = (0..stored.columns.len()).max_by_key(|i| {
-            std::cmp::Reverse(Order::ExpectedYield.key(&stored.columns, *i))
-        });
+        let best = (0..stored.columns.len())
+            .max_by_key(|i| std::cmp::Reverse(Order::ExpectedYield.key(&stored.columns, *i)));
         let best = best.and_then(|i| stored.columns.score(i).expected_yield);
         self.best_yield = self.best_yield.into_iter().chain(best).reduce(f64::max);
     }
@@ -110,7 +109,11 @@ impl JobIndex {
     /// The index after all blocks were removed; commit numbers go on, so that none is given twice.
     pub(crate) fn emptied(&self) -> JobIndex {
         let (last_commit, acknowledged) = (self.last_commit, self.last_commit);
-        JobIndex { last_commit, acknowledged, ..JobIndex::default() }
+        JobIndex {
+            last_commit,
+            acknowledged,
+            ..JobIndex::default()
+        }
     }
 
     /// How far the job is.
@@ -125,7 +128,10 @@ impl JobIndex {
 
     /// Summaries of the blocks that a ranking with this snapshot sees, by first cell.
     pub(crate) fn seen_by(&self, snapshot: u64) -> Vec<Summary> {
-        let seen = self.blocks.values().filter(|summary| summary.commit <= snapshot);
+        let seen = self
+            .blocks
+            .values()
+            .filter(|summary| summary.commit <= snapshot);
         let mut seen: Vec<Summary> = seen.cloned().collect();
         seen.sort_by_key(|summary| summary.first_cell);
         seen

@@ -59,7 +59,10 @@ impl JobState {
 
     /// Whether the job has ended.
     pub fn is_ended(self) -> bool {
-        !matches!(self, JobState::Queued | JobState::Running | JobState::Paused)
+        !matches!(
+            self,
+            JobState::Queued | JobState::Running | JobState::Paused
+        )
     }
 }
 

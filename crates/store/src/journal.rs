@@ -50,7 +50,9 @@ impl Journal {
     /// Writes a record; when this returns, it survives a power cut.
     pub(crate) fn write(&self, record: &JobRecord) -> Result<(), StoreError> {
         let path = self.path(record.id);
-        let text = record::write(record).map_err(io::Error::from).map_err(StoreError::io(&path))?;
+        let text = record::write(record)
+            .map_err(io::Error::from)
+            .map_err(StoreError::io(&path))?;
         write_durably(&path, text.as_bytes())
     }
 
@@ -83,5 +85,7 @@ pub(crate) fn write_durably(path: &Path, bytes: &[u8]) -> Result<(), StoreError>
 
 /// Syncs a directory, so that renames and new files in it survive a power cut.
 pub(crate) fn sync_dir(dir: &Path) -> Result<(), StoreError> {
-    File::open(dir).and_then(|dir| dir.sync_all()).map_err(StoreError::io(dir))
+    File::open(dir)
+        .and_then(|dir| dir.sync_all())
+        .map_err(StoreError::io(dir))
 }

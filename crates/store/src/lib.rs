@@ -5,6 +5,7 @@
 //! 1970-01-01 UTC. All calls block; async callers use `spawn_blocking`.
 
 mod block;
+mod commit;
 mod database;
 mod error;
 mod id;
@@ -19,11 +20,12 @@ mod scan;
 mod store;
 mod token;
 
+pub use commit::{Commit, Progress};
 pub use error::StoreError;
 pub use id::JobId;
 pub use job::{Created, JobRecord, JobState, NewJob, StateChange};
 pub use open::OpenReport;
 pub use order::Order;
 pub use rank::{BestPer, Filter, Position, RankRequest, Ranking};
-pub use store::{Commit, Progress, Store};
+pub use store::Store;
 pub use token::{PageToken, TokenError};

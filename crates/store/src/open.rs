@@ -39,10 +39,14 @@ impl OpenReport {
         });
         let damaged = self.damaged.iter().map(|(job, block, reason)| {
             let BlockId { segment, index } = block;
-            format!("block {segment}/{index} of job `{job}` was damaged ({reason}); it is computed anew")
+            format!(
+                "block {segment}/{index} of job `{job}` was damaged ({reason}); it is computed anew"
+            )
         });
         let again = self.queued_again.iter().map(|job| {
-            format!("job `{job}` had ended but blocks of it were lost; it waits to compute them again")
+            format!(
+                "job `{job}` had ended but blocks of it were lost; it waits to compute them again"
+            )
         });
         let unreadable = self.unreadable.iter().map(|(path, reason)| {
             format!(
@@ -50,7 +54,11 @@ impl OpenReport {
                 path.display()
             )
         });
-        aside.chain(damaged).chain(again).chain(unreadable).collect()
+        aside
+            .chain(damaged)
+            .chain(again)
+            .chain(unreadable)
+            .collect()
     }
 }
 
@@ -70,21 +78,37 @@ pub(crate) fn open(dir: &Path, now_unix_ms: u64) -> Result<Opened, StoreError> {
     check_format(dir)?;
     let (journal, contents) = Journal::open(&dir.join("journal"))?;
     journal::sync_dir(dir)?;
-    let mut report = OpenReport { unreadable: contents.unreadable, ..OpenReport::default() };
-    let mut jobs: BTreeMap<JobId, (JobRecord, JobIndex)> =
-        contents.records.into_iter().map(|record| (record.id, (record, JobIndex::default()))).collect();
+    let mut report = OpenReport {
+        unreadable: contents.unreadable,
+        ..OpenReport::default()
+    };
+    let mut jobs: BTreeMap<JobId, (JobRecord, JobIndex)> = contents
+        .records
+        .into_iter()
+        .map(|record| (record.id, (record, JobIndex::default())))
+        .collect();
     let database = open_database(&dir.join("db"), now_unix_ms, &mut jobs, &mut report)?;
     for (record, index) in jobs.values_mut() {
         mend(record, index, &journal, &mut report)?;
     }
     journal::sync_dir(dir)?;
-    Ok(Opened { lock, journal, database, jobs, report })
+    Ok(Opened {
+        lock,
+        journal,
+        database,
+        jobs,
+        report,
+    })
 }
 
 /// The lock lives as long as the file is open; the system drops it when the process dies.
 fn lock(dir: &Path) -> Result<File, StoreError> {
     let path = dir.join("lock");
-    let options = File::options().create(true).truncate(false).write(true).open(&path);
+    let options = File::options()
+        .create(true)
+        .truncate(false)
+        .write(true)
+        .open(&path);
     let file = options.map_err(StoreError::io(&path))?;
     match file.try_lock() {
         Ok(()) => Ok(file),
@@ -101,7 +125,11 @@ fn check_format(dir: &Path) -> Result<(), StoreError> {
     let found = fs::read_to_string(&path).map_err(StoreError::io(&path))?;
     match found.trim() {
         known if known == FORMAT.to_string() => Ok(()),
-        other => Err(StoreError::TooNew { dir: dir.into(), found: other.into(), known: FORMAT }),
+        other => Err(StoreError::TooNew {
+            dir: dir.into(),
+            found: other.into(),
+            known: FORMAT,
+        }),
     }
 }
 
@@ -125,7 +153,8 @@ fn open_database(
         Err(Fault::Broken(reason)) => reason,
     };
     let aside = set_aside(path, now_unix_ms)?;
-    jobs.values_mut().for_each(|(_, index)| *index = JobIndex::default());
+    jobs.values_mut()
+        .for_each(|(_, index)| *index = JobIndex::default());
     match Database::open(path) {
         Ok(database) => {
             report.set_aside = Some((aside, reason));
@@ -137,7 +166,10 @@ fn open_database(
             fs::rename(&aside, path).map_err(StoreError::io(&aside))?;
             Err(match fault {
                 Fault::Refused(error) => error,
-                Fault::Broken(reason) => StoreError::Database { path: path.into(), reason },
+                Fault::Broken(reason) => StoreError::Database {
+                    path: path.into(),
+                    reason,
+                },
             })
         }
     }
@@ -156,8 +188,12 @@ fn verify(
     let mut any_block = false;
     database.scan(path, |key, value| {
         any_block = true;
-        let Some((job, block)) = block::parse_key(&key) else { return };
-        let Some((_, index)) = jobs.get_mut(&job) else { return };
+        let Some((job, block)) = block::parse_key(&key) else {
+            return;
+        };
+        let Some((_, index)) = jobs.get_mut(&job) else {
+            return;
+        };
         match block::decode(&key, &value) {
             Ok(stored) => index.add(block, &stored),
             Err(reason) => damaged.push((job, block, reason)),
@@ -168,9 +204,10 @@ fn verify(
         ((index.blocks.len() + removed) as u64) < record.committed_at_end
     };
     match jobs.values().find(incomplete) {
-        Some((record, _)) if any_block => {
-            Err(Fault::Broken(format!("blocks of job `{}` are missing", record.id)))
-        }
+        Some((record, _)) if any_block => Err(Fault::Broken(format!(
+            "blocks of job `{}` are missing",
+            record.id
+        ))),
         _ => Ok(database),
     }
 }
@@ -181,7 +218,8 @@ fn sync(
     jobs: &mut BTreeMap<JobId, (JobRecord, JobIndex)>,
 ) -> Result<Database, StoreError> {
     database.sync()?;
-    jobs.values_mut().for_each(|(_, index)| index.acknowledge(index.mark()));
+    jobs.values_mut()
+        .for_each(|(_, index)| index.acknowledge(index.mark()));
     Ok(database)
 }
 

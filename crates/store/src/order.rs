@@ -18,8 +18,12 @@ pub enum Order {
 
 impl Order {
     /// All orders, by number.
-    pub const ALL: [Order; 4] =
-        [Order::ExpectedYield, Order::PHit, Order::Selectivity, Order::Feasibility];
+    pub const ALL: [Order; 4] = [
+        Order::ExpectedYield,
+        Order::PHit,
+        Order::Selectivity,
+        Order::Feasibility,
+    ];
 
     /// Number of the order in page tokens and summaries; never renumber.
     pub(crate) fn number(self) -> usize {

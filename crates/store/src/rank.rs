@@ -86,20 +86,30 @@ pub(crate) fn page(
         None => scan.first(floor, request.skip, request.limit, known_total)?,
     };
     let first_rank = passed.saturating_add(request.skip).saturating_add(1);
-    let last_rank = passed.saturating_add(request.skip).saturating_add(found.rows.len() as u64);
-    let next = found.rows.last().filter(|_| last_rank < found.total).map(|(key, cell)| Position {
-        key: *key,
-        cell: *cell,
-        passed: last_rank,
-        snapshot: view.snapshot,
-        total: found.total,
-        generation: view.generation,
-    });
+    let last_rank = passed
+        .saturating_add(request.skip)
+        .saturating_add(found.rows.len() as u64);
+    let next = found
+        .rows
+        .last()
+        .filter(|_| last_rank < found.total)
+        .map(|(key, cell)| Position {
+            key: *key,
+            cell: *cell,
+            passed: last_rank,
+            snapshot: view.snapshot,
+            total: found.total,
+            generation: view.generation,
+        });
     Ok(Ranking {
         rows: scan.with_scores(&found.rows)?,
         first_rank,
         total: found.total,
-        cells: view.blocks.iter().map(|summary| u64::from(summary.cells)).sum(),
+        cells: view
+            .blocks
+            .iter()
+            .map(|summary| u64::from(summary.cells))
+            .sum(),
         next,
     })
 }

@@ -68,7 +68,11 @@ pub(crate) fn write(record: &JobRecord) -> Result<String, serde_json::Error> {
         campaign: record.spec.clone(),
     })?;
     let crc32 = crc32fast::hash(job.get().as_bytes());
-    serde_json::to_string(&Envelope { version: VERSION, crc32, job: &job })
+    serde_json::to_string(&Envelope {
+        version: VERSION,
+        crc32,
+        job: &job,
+    })
 }
 
 /// Reads a record.
@@ -87,7 +91,10 @@ pub(crate) fn read(text: &str) -> Result<JobRecord, String> {
     let job: StoredJob = serde_json::from_str(envelope.job.get())
         .map_err(|error| format!("it is no record of a job: {error}"))?;
     Ok(JobRecord {
-        id: job.id.parse().map_err(|_| format!("`{}` is no id of a job", job.id))?,
+        id: job
+            .id
+            .parse()
+            .map_err(|_| format!("`{}` is no id of a job", job.id))?,
         title: job.title,
         spec: job.campaign,
         campaign_fingerprint: fingerprint(&job.campaign_fingerprint)?,
@@ -112,11 +119,16 @@ pub(crate) fn read(text: &str) -> Result<JobRecord, String> {
 /// # Errors
 /// What the JSON writer said.
 pub(crate) fn request_digest(spec: &CampaignSpec) -> Result<Fingerprint, serde_json::Error> {
-    Ok(Fingerprint(Sha256::digest(serde_json::to_vec(spec)?).into()))
+    Ok(Fingerprint(
+        Sha256::digest(serde_json::to_vec(spec)?).into(),
+    ))
 }
 
 fn fingerprint(text: &str) -> Result<Fingerprint, String> {
-    let byte = |i: usize| text.get(2 * i..2 * i + 2).and_then(|hex| u8::from_str_radix(hex, 16).ok());
+    let byte = |i: usize| {
+        text.get(2 * i..2 * i + 2)
+            .and_then(|hex| u8::from_str_radix(hex, 16).ok())
+    };
     let mut bytes = [0; 32];
     for (i, target) in bytes.iter_mut().enumerate() {
         *target = byte(i).ok_or_else(|| format!("`{text}` is no fingerprint"))?;
@@ -135,7 +147,10 @@ mod tests {
         assert_eq!(record.id.to_string(), "06f3k8a5zr0q2");
         assert_eq!(record.title, "Invented aryl acetates");
         assert_eq!(record.state, JobState::DoneWithGaps);
-        assert_eq!((record.cells, record.blocks, record.committed_at_end), (24_576, 6, 5));
+        assert_eq!(
+            (record.cells, record.blocks, record.committed_at_end),
+            (24_576, 6, 5)
+        );
         assert_eq!(record.request_id, "tuesday-1");
         assert_eq!(record.campaign_fingerprint, Fingerprint([0xab; 32]));
         assert_eq!(record.ended_unix_ms, Some(1_760_000_060_000));
@@ -148,8 +163,16 @@ mod tests {
     #[test]
     fn a_changed_campaign_is_noticed() {
         let golden = include_str!("../testdata/job_v1.json");
-        assert!(read(&golden.replace("-78.0", "-77.0")).unwrap_err().contains("checksum"));
-        assert!(read(&golden.replacen("1", "2", 1)).unwrap_err().contains("version 2"));
+        assert!(
+            read(&golden.replace("-78.0", "-77.0"))
+                .unwrap_err()
+                .contains("checksum")
+        );
+        assert!(
+            read(&golden.replacen("1", "2", 1))
+                .unwrap_err()
+                .contains("version 2")
+        );
         assert!(read(&golden[..golden.len() / 2]).is_err());
     }
 }

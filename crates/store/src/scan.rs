@@ -62,7 +62,11 @@ impl Scan<'_> {
             };
             return Ok(Found { rows, total });
         }
-        let mut found = self.top(floor, (skip as usize).saturating_add(limit), total.is_none())?;
+        let mut found = self.top(
+            floor,
+            (skip as usize).saturating_add(limit),
+            total.is_none(),
+        )?;
         found.rows.drain(..found.rows.len().min(skip as usize));
         found.total = total.unwrap_or(found.total);
         Ok(found)
@@ -71,7 +75,8 @@ impl Scan<'_> {
     /// The first `wanted` rows after `floor`; if `count`, every block is read and rows are counted.
     fn top(&self, floor: Option<Row>, wanted: usize, count: bool) -> Result<Found, StoreError> {
         let possible = |block| Some((Summary::first_possible(block, self.order, floor)?, block));
-        let mut candidates: Vec<(Row, &Summary)> = self.blocks.iter().filter_map(possible).collect();
+        let mut candidates: Vec<(Row, &Summary)> =
+            self.blocks.iter().filter_map(possible).collect();
         candidates.sort_by_key(|(row, _)| *row);
         let mut found = Found::default();
         let mut last_wanted = None;
@@ -81,7 +86,8 @@ impl Scan<'_> {
                 break;
             }
             let read = |(_, block): &(Row, &Summary)| self.rows_between(block, floor, last_wanted);
-            let chunk: Vec<(u64, Vec<Row>)> = some.par_iter().map(read).collect::<Result<_, _>>()?;
+            let chunk: Vec<(u64, Vec<Row>)> =
+                some.par_iter().map(read).collect::<Result<_, _>>()?;
             for (rows_seen, rows) in chunk {
                 found.total += rows_seen;
                 found.rows.extend(rows);
@@ -120,8 +126,14 @@ impl Scan<'_> {
 
     /// Rows of the whole ranking.
     fn count(&self) -> Result<u64, StoreError> {
-        let rows = |block| self.rows_between(block, None, Some((0, 0))).map(|(seen, _)| seen);
-        self.blocks.par_iter().map(rows).try_reduce(|| 0, |a, b| Ok(a + b))
+        let rows = |block| {
+            self.rows_between(block, None, Some((0, 0)))
+                .map(|(seen, _)| seen)
+        };
+        self.blocks
+            .par_iter()
+            .map(rows)
+            .try_reduce(|| 0, |a, b| Ok(a + b))
     }
 
     /// The row that `skip` > 0 rows after `floor` end with; `None` where there are fewer.
@@ -145,7 +157,10 @@ impl Scan<'_> {
                 })?;
                 Ok(cells)
             };
-            let chunk: Vec<Vec<u64>> = some.par_iter().map(ties).collect::<Result<_, StoreError>>()?;
+            let chunk: Vec<Vec<u64>> = some
+                .par_iter()
+                .map(ties)
+                .collect::<Result<_, StoreError>>()?;
             for cells in chunk {
                 match cells.get(left as usize - 1) {
                     Some(cell) => return Ok(Some((key as u16, *cell))),
@@ -161,7 +176,9 @@ impl Scan<'_> {
         let count = |blocks: &[Summary]| {
             let mut counts = vec![0u64; KEYS];
             for block in blocks {
-                self.visit(block, |row| counts[usize::from(row.0)] += u64::from(keep(row)))?;
+                self.visit(block, |row| {
+                    counts[usize::from(row.0)] += u64::from(keep(row))
+                })?;
             }
             Ok(counts)
         };
@@ -169,7 +186,10 @@ impl Scan<'_> {
             a.iter_mut().zip(b).for_each(|(a, b)| *a += b);
             Ok(a)
         };
-        self.blocks.par_chunks(BLOCKS_AT_ONCE).map(count).try_reduce(|| vec![0; KEYS], add)
+        self.blocks
+            .par_chunks(BLOCKS_AT_ONCE)
+            .map(count)
+            .try_reduce(|| vec![0; KEYS], add)
     }
 
     /// Of the best rows of all groups, the `limit` that follow `floor` after `skip` others.
@@ -188,7 +208,8 @@ impl Scan<'_> {
             Ok(best)
         };
         let merge = |mut a: HashMap<u32, Row>, b: HashMap<u32, Row>| {
-            b.into_iter().for_each(|(group, row)| keep_best(&mut a, group, row));
+            b.into_iter()
+                .for_each(|(group, row)| keep_best(&mut a, group, row));
             Ok(a)
         };
         let chunks = self.blocks.par_chunks(BLOCKS_AT_ONCE);
@@ -196,9 +217,14 @@ impl Scan<'_> {
         let mut rows: Vec<Row> = best.into_values().collect();
         rows.sort_unstable();
         let total = rows.len() as u64;
-        let after = rows.into_iter().filter(|row| floor.is_none_or(|floor| *row > floor));
+        let after = rows
+            .into_iter()
+            .filter(|row| floor.is_none_or(|floor| *row > floor));
         let skip = usize::try_from(skip).unwrap_or(usize::MAX);
-        Ok(Found { rows: after.skip(skip).take(limit).collect(), total })
+        Ok(Found {
+            rows: after.skip(skip).take(limit).collect(),
+            total,
+        })
     }
 
     /// Adds the scores of rows.
@@ -206,7 +232,10 @@ impl Scan<'_> {
         let mut blocks: HashMap<usize, Columns> = HashMap::new();
         let mut scored = Vec::with_capacity(rows.len());
         for (_, cell) in rows {
-            let at = self.blocks.partition_point(|block| block.first_cell <= *cell) - 1;
+            let at = self
+                .blocks
+                .partition_point(|block| block.first_cell <= *cell)
+                - 1;
             let block = &self.blocks[at];
             if !blocks.contains_key(&at) {
                 if blocks.len() == BLOCKS_AT_ONCE {
@@ -214,7 +243,10 @@ impl Scan<'_> {
                 }
                 blocks.insert(at, self.columns(block)?);
             }
-            scored.push((*cell, blocks[&at].score((*cell - block.first_cell) as usize)));
+            scored.push((
+                *cell,
+                blocks[&at].score((*cell - block.first_cell) as usize),
+            ));
         }
         Ok(scored)
     }
@@ -224,7 +256,10 @@ impl Scan<'_> {
         let columns = self.columns(block)?;
         for i in 0..columns.len() {
             let cell = block.first_cell + i as u64;
-            if self.filter.is_none_or(|filter| filter(cell, &columns.score(i))) {
+            if self
+                .filter
+                .is_none_or(|filter| filter(cell, &columns.score(i)))
+            {
                 take((self.order.key(&columns, i), cell));
             }
         }
@@ -247,10 +282,16 @@ pub(crate) fn read_block(
         let value = value.ok_or("it is gone")?;
         block::decode(&key, &value)
     });
-    let damaged = |reason| StoreError::BlockDamaged { job, block: summary.block, reason };
+    let damaged = |reason| StoreError::BlockDamaged {
+        job,
+        block: summary.block,
+        reason,
+    };
     stored.map(|stored| stored.columns).map_err(damaged)
 }
 
 fn keep_best(best: &mut HashMap<u32, Row>, group: u32, row: Row) {
-    best.entry(group).and_modify(|kept| *kept = row.min(*kept)).or_insert(row);
+    best.entry(group)
+        .and_modify(|kept| *kept = row.min(*kept))
+        .or_insert(row);
 }

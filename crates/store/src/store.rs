@@ -1,20 +1,16 @@
 //! The store: jobs and their blocks in one directory.
 
-use std::collections::{BTreeMap, BTreeSet};
+use std::collections::BTreeMap;
 use std::fmt;
 use std::fs::File;
 use std::path::Path;
 use std::sync::{Arc, Mutex, MutexGuard, PoisonError, RwLock};
 
-use enolattice_grid::{BlockId, Columns};
-use enolattice_model::{Fingerprint, Score};
-
-use crate::block::{self, StoredBlock};
 use crate::database::Database;
 use crate::index::JobIndex;
 use crate::journal::Journal;
 use crate::rank::{self, View};
-use crate::scan::{Scan, read_block};
+use crate::scan::Scan;
 use crate::{
     Created, JobId, JobRecord, JobState, NewJob, OpenReport, RankRequest, Ranking, StateChange,
     StoreError, open, record,
@@ -23,39 +19,17 @@ use crate::{
 /// Longest id of a request, in bytes.
 const REQUEST_ID_BYTES: usize = 128;
 
-/// What [`Store::commit_block`] did.
-#[derive(Clone, Copy, Debug, PartialEq, Eq)]
-pub enum Commit {
-    /// The block was stored now.
-    Stored,
-    /// The same block with the same scores was there.
-    AlreadyThere,
-}
-
-/// How far a job is; counted from the blocks themselves.
-#[derive(Clone, Copy, Debug, Default, PartialEq)]
-pub struct Progress {
-    /// Blocks committed.
-    pub blocks: u64,
-    /// Cells committed.
-    pub cells: u64,
-    /// Cells acknowledged: they survive a power cut, and rankings show them.
-    pub cells_acknowledged: u64,
-    /// Highest expected yield committed.
-    pub best_yield: Option<f64>,
-}
-
 /// A job in memory. Where both locks are taken, the record's comes first.
 #[derive(Debug)]
-struct Entry {
-    record: Mutex<JobRecord>,
-    index: Mutex<JobIndex>,
+pub(crate) struct Entry {
+    pub(crate) record: Mutex<JobRecord>,
+    pub(crate) index: Mutex<JobIndex>,
 }
 
 /// Jobs, blocks and rankings in one directory. Shared between threads behind an `Arc`.
 pub struct Store {
-    journal: Journal,
-    database: Database,
+    pub(crate) journal: Journal,
+    pub(crate) database: Database,
     jobs: RwLock<BTreeMap<JobId, Arc<Entry>>>,
     /// Held while a job is made, so that a request id makes one job only.
     creating: Mutex<()>,
@@ -74,7 +48,13 @@ impl Store {
     pub fn open(dir: &Path, now_unix_ms: u64) -> Result<(Store, OpenReport), StoreError> {
         let opened = open::open(dir, now_unix_ms)?;
         let entry = |(id, (record, index))| {
-            (id, Arc::new(Entry { record: Mutex::new(record), index: Mutex::new(index) }))
+            (
+                id,
+                Arc::new(Entry {
+                    record: Mutex::new(record),
+                    index: Mutex::new(index),
+                }),
+            )
         };
         let store = Store {
             journal: opened.journal,
@@ -93,16 +73,25 @@ impl Store {
     pub fn create_job(&self, new: NewJob, now_unix_ms: u64) -> Result<Created, StoreError> {
         if new.request_id.len() > REQUEST_ID_BYTES {
             let length = new.request_id.len();
-            return Err(StoreError::RequestIdTooLong { length, limit: REQUEST_ID_BYTES });
+            return Err(StoreError::RequestIdTooLong {
+                length,
+                limit: REQUEST_ID_BYTES,
+            });
         }
         let request_digest = record::request_digest(&new.spec).map_err(StoreError::unwritable)?;
         let _creating = lock(&self.creating);
         if let Some(record) = self.job_of_request(&new.request_id) {
             if record.request_digest == request_digest {
-                return Ok(Created { record, is_new: false });
+                return Ok(Created {
+                    record,
+                    is_new: false,
+                });
             }
             let NewJob { request_id, .. } = new;
-            return Err(StoreError::RequestIdReused { request_id, job: record.id });
+            return Err(StoreError::RequestIdReused {
+                request_id,
+                job: record.id,
+            });
         }
         let record = JobRecord {
             id: self.new_id(now_unix_ms)?,
@@ -123,9 +112,18 @@ impl Store {
             generation: 1,
         };
         self.journal.write(&record)?;
-        let entry = Entry { record: Mutex::new(record.clone()), index: Mutex::default() };
-        self.jobs.write().unwrap_or_else(PoisonError::into_inner).insert(record.id, Arc::new(entry));
-        Ok(Created { record, is_new: true })
+        let entry = Entry {
+            record: Mutex::new(record.clone()),
+            index: Mutex::default(),
+        };
+        self.jobs
+            .write()
+            .unwrap_or_else(PoisonError::into_inner)
+            .insert(record.id, Arc::new(entry));
+        Ok(Created {
+            record,
+            is_new: true,
+        })
     }
 
     /// The job that a request with this id made, if any; an empty id makes none.
@@ -144,7 +142,10 @@ impl Store {
 
     /// All jobs in the order of submission.
     pub fn jobs(&self) -> Vec<JobRecord> {
-        self.entries().iter().map(|(_, entry)| lock(&entry.record).clone()).collect()
+        self.entries()
+            .iter()
+            .map(|(_, entry)| lock(&entry.record).clone())
+            .collect()
     }
 
     /// Changes a job's state. When this returns, the change survives a power cut.
@@ -155,131 +156,27 @@ impl Store {
         let entry = self.entry(job)?;
         let mut record = lock(&entry.record);
         if record.state != change.from {
-            return Err(StoreError::StateMoved { job, expected: change.from, found: record.state });
+            return Err(StoreError::StateMoved {
+                job,
+                expected: change.from,
+                found: record.state,
+            });
         }
         let ends = change.to.is_ended();
         let changed = JobRecord {
             state: change.to,
             ended_unix_ms: ends.then_some(change.at_unix_ms),
-            committed_at_end: if ends { lock(&entry.index).blocks.len() as u64 } else { 0 },
+            committed_at_end: if ends {
+                lock(&entry.index).blocks.len() as u64
+            } else {
+                0
+            },
             failure: change.failure.clone(),
             ..record.clone()
         };
         self.journal.write(&changed)?;
         *record = changed.clone();
         Ok(changed)
-    }
-
-    /// Forgets the blocks of a job, to be scored anew by another model.
-    ///
-    /// The blocks go before the record changes, so that a crash between the two never leaves
-    /// blocks of one model under the name of another.
-    ///
-    /// # Errors
-    /// [`StoreError::JobUnknown`], [`StoreError::Stopped`], [`StoreError::Io`].
-    pub fn restart(
-        &self,
-        job: JobId,
-        model_fingerprint: Fingerprint,
-    ) -> Result<JobRecord, StoreError> {
-        let entry = self.entry(job)?;
-        let mut record = lock(&entry.record);
-        let mut index = lock(&entry.index);
-        for block in index.blocks.keys() {
-            self.database.remove(&block::key(job, *block))?;
-        }
-        self.database.sync()?;
-        *index = index.emptied();
-        let generation = record.generation + 1;
-        let changed = JobRecord { model_fingerprint, generation, ..record.clone() };
-        self.journal.write(&changed)?;
-        *record = changed.clone();
-        Ok(changed)
-    }
-
-    /// Stores a block once. Not yet safe from a power cut: see [`Store::acknowledge`].
-    ///
-    /// # Errors
-    /// [`StoreError::BlockDiffers`], [`StoreError::Stopped`], [`StoreError::JobUnknown`].
-    pub fn commit_block(
-        &self,
-        job: JobId,
-        block: BlockId,
-        first_cell: u64,
-        columns: &Columns,
-    ) -> Result<Commit, StoreError> {
-        let entry = self.entry(job)?;
-        let key = block::key(job, block);
-        let bytes = columns.to_bytes();
-        let stored = |commit| StoredBlock { commit, first_cell, columns: columns.clone() };
-        // Commit numbers must appear in the index in their order, or a page could miss a block of its snapshot.
-        let mut index = lock(&entry.index);
-        let commit = index.last_commit + 1;
-        let value = block::encode(&key, commit, first_cell, columns.len() as u32, &bytes);
-        match self.database.put_once(&key, &value)? {
-            Some(there) if index.blocks.contains_key(&block) => {
-                return match block::columns_bytes(&there) == bytes {
-                    true => Ok(Commit::AlreadyThere),
-                    false => Err(StoreError::BlockDiffers { job, block }),
-                };
-            }
-            // After damage, a get may find what the scan at opening did not.
-            Some(_) => self.database.replace(&key, &value)?,
-            None => {}
-        }
-        index.add(block, &stored(commit));
-        Ok(Commit::Stored)
-    }
-
-    /// Flushes and syncs: every block committed before the call survives a power cut.
-    ///
-    /// # Errors
-    /// [`StoreError::Stopped`] from the first failed write on.
-    pub fn acknowledge(&self) -> Result<(), StoreError> {
-        let mark = |(_, entry): (JobId, Arc<Entry>)| {
-            let mark = lock(&entry.index).mark();
-            (entry, mark)
-        };
-        let marks: Vec<_> = self.entries().into_iter().map(mark).collect();
-        self.database.sync()?;
-        marks.into_iter().for_each(|(entry, mark)| lock(&entry.index).acknowledge(mark));
-        Ok(())
-    }
-
-    /// How far a job is.
-    ///
-    /// # Errors
-    /// [`StoreError::JobUnknown`].
-    pub fn progress(&self, job: JobId) -> Result<Progress, StoreError> {
-        Ok(lock(&self.entry(job)?.index).progress())
-    }
-
-    /// The blocks that are committed.
-    ///
-    /// # Errors
-    /// [`StoreError::JobUnknown`].
-    pub fn committed_blocks(&self, job: JobId) -> Result<BTreeSet<BlockId>, StoreError> {
-        Ok(lock(&self.entry(job)?.index).blocks.keys().copied().collect())
-    }
-
-    /// A committed block; `None` where it is not.
-    ///
-    /// # Errors
-    /// [`StoreError::JobUnknown`], [`StoreError::BlockDamaged`].
-    pub fn block(&self, job: JobId, block: BlockId) -> Result<Option<Columns>, StoreError> {
-        let summary = lock(&self.entry(job)?.index).blocks.get(&block).cloned();
-        summary.map(|summary| read_block(&self.database, job, &summary)).transpose()
-    }
-
-    /// The stored score of one cell; `None` where its block is not committed.
-    ///
-    /// # Errors
-    /// [`StoreError::JobUnknown`], [`StoreError::BlockDamaged`].
-    pub fn score(&self, job: JobId, cell: u64) -> Result<Option<Score>, StoreError> {
-        let summary = lock(&self.entry(job)?.index).block_of(cell).cloned();
-        let Some(summary) = summary else { return Ok(None) };
-        let columns = read_block(&self.database, job, &summary)?;
-        Ok(Some(columns.score((cell - summary.first_cell) as usize)))
     }
 
     /// A page of a job's ranking.
@@ -304,21 +201,36 @@ impl Store {
         let record = lock(&entry.record);
         let index = lock(&entry.index);
         let generation = record.generation;
-        if request.after.is_some_and(|after| after.generation != generation) {
+        if request
+            .after
+            .is_some_and(|after| after.generation != generation)
+        {
             return Err(StoreError::PageOutdated);
         }
-        let snapshot = request.after.map_or(index.acknowledged, |after| after.snapshot);
-        Ok(View { blocks: index.seen_by(snapshot), snapshot, generation })
+        let snapshot = request
+            .after
+            .map_or(index.acknowledged, |after| after.snapshot);
+        Ok(View {
+            blocks: index.seen_by(snapshot),
+            snapshot,
+            generation,
+        })
     }
 
-    fn entry(&self, job: JobId) -> Result<Arc<Entry>, StoreError> {
+    pub(crate) fn entry(&self, job: JobId) -> Result<Arc<Entry>, StoreError> {
         let jobs = self.jobs.read().unwrap_or_else(PoisonError::into_inner);
-        jobs.get(&job).cloned().ok_or_else(|| StoreError::JobUnknown { job: job.to_string() })
+        jobs.get(&job)
+            .cloned()
+            .ok_or_else(|| StoreError::JobUnknown {
+                job: job.to_string(),
+            })
     }
 
-    fn entries(&self) -> Vec<(JobId, Arc<Entry>)> {
+    pub(crate) fn entries(&self) -> Vec<(JobId, Arc<Entry>)> {
         let jobs = self.jobs.read().unwrap_or_else(PoisonError::into_inner);
-        jobs.iter().map(|(id, entry)| (*id, entry.clone())).collect()
+        jobs.iter()
+            .map(|(id, entry)| (*id, entry.clone()))
+            .collect()
     }
 
     fn new_id(&self, now_unix_ms: u64) -> Result<JobId, StoreError> {
@@ -330,11 +242,13 @@ impl Store {
 
 impl fmt::Debug for Store {
     fn fmt(&self, f: &mut fmt::Formatter<'_>) -> fmt::Result {
-        f.debug_struct("Store").field("journal", &self.journal).finish_non_exhaustive()
+        f.debug_struct("Store")
+            .field("journal", &self.journal)
+            .finish_non_exhaustive()
     }
 }
 
 /// A panic elsewhere leaves nothing half done under these locks: they are taken all the same.
-fn lock<T>(mutex: &Mutex<T>) -> MutexGuard<'_, T> {
+pub(crate) fn lock<T>(mutex: &Mutex<T>) -> MutexGuard<'_, T> {
     mutex.lock().unwrap_or_else(PoisonError::into_inner)
 }

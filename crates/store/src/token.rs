@@ -63,7 +63,9 @@ impl PageToken {
     /// # Errors
     /// [`TokenError`] where the token is damaged or was made for other arguments.
     pub fn decode(&self, token: &str) -> Result<Position, TokenError> {
-        let bytes = URL_SAFE_NO_PAD.decode(token).map_err(|_| TokenError::Damaged)?;
+        let bytes = URL_SAFE_NO_PAD
+            .decode(token)
+            .map_err(|_| TokenError::Damaged)?;
         let (body, crc) = bytes.split_last_chunk::<4>().ok_or(TokenError::Damaged)?;
         if crc32fast::hash(body) != u32::from_le_bytes(*crc) {
             return Err(TokenError::Damaged);
@@ -77,7 +79,13 @@ impl PageToken {
 
     fn read(&self, mut rest: &[u8]) -> Result<Position, TokenError> {
         let rest = &mut rest;
-        let same = |argument, same| if same { Ok(()) } else { Err(TokenError::OtherArguments { argument }) };
+        let same = |argument, same| {
+            if same {
+                Ok(())
+            } else {
+                Err(TokenError::OtherArguments { argument })
+            }
+        };
         same("job", u64::from_le_bytes(take(rest)?) == self.job.number())?;
         same("order", take::<1>(rest)? == [self.order.number() as u8])?;
         same("filter or `best per`", take(rest)? == self.query_hash())?;
@@ -120,13 +128,23 @@ mod tests {
         }
     }
 
-    const POSITION: Position =
-        Position { key: 65535, cell: 1 << 40, passed: 200, snapshot: 12, total: 5000, generation: 2 };
+    const POSITION: Position = Position {
+        key: 65535,
+        cell: 1 << 40,
+        passed: 200,
+        snapshot: 12,
+        total: 5000,
+        generation: 2,
+    };
 
     #[test]
     fn a_token_reads_back_for_the_same_arguments() {
         let text = token().encode(&POSITION);
-        assert!(text.bytes().all(|b| b.is_ascii_alphanumeric() || b == b'-' || b == b'_'), "{text}");
+        assert!(
+            text.bytes()
+                .all(|b| b.is_ascii_alphanumeric() || b == b'-' || b == b'_'),
+            "{text}"
+        );
         assert_eq!(token().decode(&text), Ok(POSITION));
     }
 
@@ -137,10 +155,30 @@ mod tests {
             Err(TokenError::OtherArguments { argument }) => argument,
             other => panic!("{other:?}"),
         };
-        assert_eq!(refused(PageToken { job: JobId::from_number(98), ..token() }), "job");
-        assert_eq!(refused(PageToken { order: Order::Selectivity, ..token() }), "order");
-        for (filter, best_per) in [("p_hit > 0.6", "substrate"), ("p_hit > 0.5", ""), ("p_hit > 0.5s", "ubstrate")] {
-            let other = PageToken { filter: filter.into(), best_per: best_per.into(), ..token() };
+        assert_eq!(
+            refused(PageToken {
+                job: JobId::from_number(98),
+                ..token()
+            }),
+            "job"
+        );
+        assert_eq!(
+            refused(PageToken {
+                order: Order::Selectivity,
+                ..token()
+            }),
+            "order"
+        );
+        for (filter, best_per) in [
+            ("p_hit > 0.6", "substrate"),
+            ("p_hit > 0.5", ""),
+            ("p_hit > 0.5s", "ubstrate"),
+        ] {
+            let other = PageToken {
+                filter: filter.into(),
+                best_per: best_per.into(),
+                ..token()
+            };
             assert_eq!(refused(other), "filter or `best per`");
         }
     }
@@ -152,13 +190,24 @@ mod tests {
             let mut changed = text.clone().into_bytes();
             changed[i] = if changed[i] == b'A' { b'B' } else { b'A' };
             let changed = String::from_utf8(changed).unwrap();
-            assert_eq!(token().decode(&changed), Err(TokenError::Damaged), "character {i}");
+            assert_eq!(
+                token().decode(&changed),
+                Err(TokenError::Damaged),
+                "character {i}"
+            );
         }
         for foreign in ["", "AAAA", "not a token!", &text[..40]] {
-            assert_eq!(token().decode(foreign), Err(TokenError::Damaged), "{foreign}");
+            assert_eq!(
+                token().decode(foreign),
+                Err(TokenError::Damaged),
+                "{foreign}"
+            );
         }
         let mut later = vec![2, 1, 1];
         later.extend(crc32fast::hash(&later).to_le_bytes());
-        assert_eq!(token().decode(&URL_SAFE_NO_PAD.encode(later)), Err(TokenError::OtherVersion));
+        assert_eq!(
+            token().decode(&URL_SAFE_NO_PAD.encode(later)),
+            Err(TokenError::OtherVersion)
+        );
     }
 }

@@ -17,8 +17,8 @@ use enolattice_engine::{
     CellDescription, ExplainTarget, Job, RankPage, RankQuery, ReagentRow, SiteReport, Submission,
 };
 use enolattice_model::Explanation;
-use tonic::transport::{Channel, Endpoint};
 use tonic::metadata::MetadataValue;
+use tonic::transport::{Channel, Endpoint};
 use tonic::{Request, Status, Streaming};
 
 use crate::v1::chemistry_service_client::ChemistryServiceClient;
@@ -45,13 +45,21 @@ impl Client {
     /// # Errors
     /// [`RemoteError::Unreachable`].
     pub async fn connect(url: &str) -> Result<Client, RemoteError> {
-        let unreachable =
-            |reason: String| RemoteError::Unreachable { url: url.to_owned(), reason };
-        let address =
-            if url.contains("://") { url.to_owned() } else { format!("http://{url}") };
+        let unreachable = |reason: String| RemoteError::Unreachable {
+            url: url.to_owned(),
+            reason,
+        };
+        let address = if url.contains("://") {
+            url.to_owned()
+        } else {
+            format!("http://{url}")
+        };
         let endpoint = Endpoint::from_shared(address).map_err(|e| unreachable(told(&e)))?;
         let endpoint = endpoint.http2_max_header_list_size(2 * MAX_DETAIL_BYTES as u32);
-        let channel = endpoint.connect().await.map_err(|e| unreachable(told(&e)))?;
+        let channel = endpoint
+            .connect()
+            .await
+            .map_err(|e| unreachable(told(&e)))?;
         Ok(Client {
             url: url.to_owned(),
             jobs: JobServiceClient::new(channel.clone())
@@ -66,13 +74,13 @@ impl Client {
     /// # Errors
     /// As the embedded engine; faults have the places of `submission.campaign`.
     pub async fn submit(&self, submission: Submission) -> Result<Job, RemoteError> {
-        let request =
-            v1::SubmitJobRequest::try_from(&submission).map_err(RemoteError::Input)?;
+        let request = v1::SubmitJobRequest::try_from(&submission).map_err(RemoteError::Input)?;
         let mut jobs = self.jobs.clone();
         let answer = match upload::parts(request) {
             upload::Upload::One(request) => jobs.submit_job(with_details(*request)).await,
             upload::Upload::Stream(parts) => {
-                jobs.submit_job_stream(with_details(tokio_stream::iter(parts))).await
+                jobs.submit_job_stream(with_details(tokio_stream::iter(parts)))
+                    .await
             }
         };
         let job = answer.map_err(|status| match self.error(&status) {
@@ -92,7 +100,10 @@ impl Client {
         let mut jobs = Vec::new();
         let mut page_token = String::new();
         loop {
-            let request = v1::ListJobsRequest { page_size: MAX_PAGE_SIZE as i32, page_token };
+            let request = v1::ListJobsRequest {
+                page_size: MAX_PAGE_SIZE as i32,
+                page_token,
+            };
             let answer = self.jobs.clone().list_jobs(request).await;
             let page = answer.map_err(|status| self.error(&status))?.into_inner();
             for job in page.jobs {
@@ -110,9 +121,14 @@ impl Client {
     /// # Errors
     /// As the embedded engine.
     pub async fn job(&self, job: &str) -> Result<Job, RemoteError> {
-        let request = v1::GetJobRequest { job_id: job.to_owned() };
+        let request = v1::GetJobRequest {
+            job_id: job.to_owned(),
+        };
         let answer = self.jobs.clone().get_job(request).await;
-        Ok(answer.map_err(|status| self.error(&status))?.into_inner().try_into()?)
+        Ok(answer
+            .map_err(|status| self.error(&status))?
+            .into_inner()
+            .try_into()?)
     }
 
     /// Changes of one job, from now to its end.
@@ -120,10 +136,15 @@ impl Client {
     /// # Errors
     /// As the embedded engine.
     pub async fn watch(&self, job: &str) -> Result<JobWatch, RemoteError> {
-        let request = v1::WatchJobRequest { job_id: job.to_owned() };
+        let request = v1::WatchJobRequest {
+            job_id: job.to_owned(),
+        };
         let answer = self.jobs.clone().watch_job(request).await;
         let states = answer.map_err(|status| self.error(&status))?.into_inner();
-        Ok(JobWatch { url: self.url.clone(), states })
+        Ok(JobWatch {
+            url: self.url.clone(),
+            states,
+        })
     }
 
     /// Cancels a job between two blocks.
@@ -131,9 +152,14 @@ impl Client {
     /// # Errors
     /// As the embedded engine.
     pub async fn cancel(&self, job: &str) -> Result<Job, RemoteError> {
-        let request = v1::CancelJobRequest { job_id: job.to_owned() };
+        let request = v1::CancelJobRequest {
+            job_id: job.to_owned(),
+        };
         let answer = self.jobs.clone().cancel_job(request).await;
-        Ok(answer.map_err(|status| self.error(&status))?.into_inner().try_into()?)
+        Ok(answer
+            .map_err(|status| self.error(&status))?
+            .into_inner()
+            .try_into()?)
     }
 
     /// A page of the ranking, of at most [`MAX_PAGE_SIZE`] rows: go on with the token for more.
@@ -141,8 +167,15 @@ impl Client {
     /// # Errors
     /// As the embedded engine.
     pub async fn rank(&self, query: RankQuery) -> Result<RankPage, RemoteError> {
-        let answer = self.jobs.clone().rank_cells(v1::RankCellsRequest::from(&query)).await;
-        Ok(answer.map_err(|status| self.error(&status))?.into_inner().try_into()?)
+        let answer = self
+            .jobs
+            .clone()
+            .rank_cells(v1::RankCellsRequest::from(&query))
+            .await;
+        Ok(answer
+            .map_err(|status| self.error(&status))?
+            .into_inner()
+            .try_into()?)
     }
 
     /// What a cell is made of and everything about it.
@@ -154,7 +187,11 @@ impl Client {
         target: ExplainTarget,
     ) -> Result<(CellDescription, Explanation), RemoteError> {
         let request = v1::ExplainCellRequest::try_from(&target).map_err(RemoteError::Input)?;
-        let answer = self.chemistry.clone().explain_cell(with_details(request)).await;
+        let answer = self
+            .chemistry
+            .clone()
+            .explain_cell(with_details(request))
+            .await;
         let answer = answer.map_err(|status| match self.error(&status) {
             RemoteError::Input(faults) => RemoteError::Input(places::within("given_cell", faults)),
             other => other,
@@ -169,9 +206,19 @@ impl Client {
     pub async fn sites(&self, smiles: &[String]) -> Result<Vec<SiteReport>, RemoteError> {
         let mut reports = Vec::new();
         for chunk in smiles.chunks(MAX_SITES_MOLECULES) {
-            let request = v1::ListSitesRequest { smiles: chunk.to_vec() };
-            let answer = self.chemistry.clone().list_sites(with_details(request)).await;
-            for molecule in answer.map_err(|status| self.error(&status))?.into_inner().molecules {
+            let request = v1::ListSitesRequest {
+                smiles: chunk.to_vec(),
+            };
+            let answer = self
+                .chemistry
+                .clone()
+                .list_sites(with_details(request))
+                .await;
+            for molecule in answer
+                .map_err(|status| self.error(&status))?
+                .into_inner()
+                .molecules
+            {
                 reports.push(molecule.try_into()?);
             }
         }
@@ -224,9 +271,7 @@ impl JobWatch {
         let message = self.states.message().await;
         let message = message.map_err(|status| RemoteError::from_status(&status, &self.url))?;
         match message {
-            Some(v1::WatchJobResponse { job }) => {
-                Ok(Some(job.unwrap_or_default().try_into()?))
-            }
+            Some(v1::WatchJobResponse { job }) => Ok(Some(job.unwrap_or_default().try_into()?)),
             None => Ok(None),
         }
     }
@@ -235,7 +280,9 @@ impl JobWatch {
 /// A request that asks for all faults of its input, however many.
 fn with_details<T>(message: T) -> Request<T> {
     let mut request = Request::new(message);
-    request.metadata_mut().insert(DETAIL_BYTES_KEY, MetadataValue::from(MAX_DETAIL_BYTES));
+    request
+        .metadata_mut()
+        .insert(DETAIL_BYTES_KEY, MetadataValue::from(MAX_DETAIL_BYTES));
     request
 }
 

@@ -16,7 +16,10 @@ pub fn bad_field(
     remedy: impl Into<String>,
 ) -> InputError {
     InputError {
-        place: Place { field: field.into(), ..Place::default() },
+        place: Place {
+            field: field.into(),
+            ..Place::default()
+        },
         value: value.into(),
         code: reason.as_str_name(),
         reason: why.into(),

@@ -25,7 +25,9 @@ pub enum RemoteError {
         message: String,
     },
     /// The server is not there, or not an enolattice server of this version.
-    #[error("the server {url} does not answer: {reason}; check the address and that `enolattice serve` runs there")]
+    #[error(
+        "the server {url} does not answer: {reason}; check the address and that `enolattice serve` runs there"
+    )]
     Unreachable {
         /// Address.
         url: String,
@@ -56,8 +58,12 @@ impl RemoteError {
 
     /// Reads the details of a status that came from the server at `url`.
     pub fn from_status(status: &Status, url: &str) -> RemoteError {
-        let details = pb::Status::decode(status.details()).unwrap_or_default().details;
-        let faults = details.iter().find(|detail| detail.type_url == INPUT_FAULTS_TYPE_URL);
+        let details = pb::Status::decode(status.details())
+            .unwrap_or_default()
+            .details;
+        let faults = details
+            .iter()
+            .find(|detail| detail.type_url == INPUT_FAULTS_TYPE_URL);
         if let Some(faults) =
             faults.and_then(|detail| v1::InputFaults::decode(detail.value.as_slice()).ok())
         {
@@ -71,9 +77,10 @@ impl RemoteError {
                 ErrorReason::from_str_name(&info.reason).unwrap_or(ErrorReason::Unspecified)
             });
         match reason {
-            Some(reason) => {
-                RemoteError::Refused { reason, message: status.message().to_owned() }
-            }
+            Some(reason) => RemoteError::Refused {
+                reason,
+                message: status.message().to_owned(),
+            },
             None if status.code() == Code::OutOfRange => RemoteError::Refused {
                 reason: ErrorReason::RequestTooLarge,
                 message: status.message().to_owned(),

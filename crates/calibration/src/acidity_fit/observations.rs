@@ -10,6 +10,9 @@ const ANCHORS: &str = include_str!("../../data/acidity_anchors.tsv");
 const SET_ASIDE: &str = include_str!("../../data/acidity_set_aside.tsv");
 const EQUILIBRIA: &str = include_str!("../../data/acidity_equilibria.tsv");
 
+/// Least σ of values beyond the range of the solvent, pK units: what the table gives most of them.
+const EXTRAPOLATED: f64 = 2.0;
+
 /// A site that an observation may be about.
 #[derive(Clone, Debug)]
 pub(crate) struct Candidate {
@@ -21,9 +24,7 @@ pub(crate) struct Candidate {
 #[derive(Clone, Copy, Debug, PartialEq)]
 pub(crate) enum Observed {
     /// The pKa of the site `at`, or of the most acidic candidate.
-    Acidity {
-        at: Option<usize>,
-    },
+    Acidity { at: Option<usize> },
     /// The difference pKa(first candidate) − pKa(second candidate).
     Difference,
 }
@@ -47,29 +48,36 @@ pub(crate) struct Observation {
 /// All rows, and what was left out.
 pub(crate) struct Observations {
     pub(crate) rows: Vec<Observation>,
-    /// Compounds without a candidate site that the estimate can describe.
-    pub(crate) left_out: Vec<String>,
+    /// Compounds that are not used, and why.
+    pub(crate) left_out: Vec<(String, &'static str)>,
 }
 
 impl Observations {
     pub(crate) fn load(library: &Library, terms: &[Term]) -> Result<Observations, FitError> {
         let form = Form::new(terms.iter().map(|term| (term.name, term.role)));
-        let mut all = Observations { rows: Vec::new(), left_out: Vec::new() };
-        let set_aside: Vec<&str> = rows(SET_ASIDE).map(|(_, row)| row[0]).collect();
+        let mut all = Observations {
+            rows: Vec::new(),
+            left_out: Vec::new(),
+        };
         for acidity in library.acidities() {
-            if set_aside.contains(&acidity.smiles.as_str()) {
-                continue;
-            }
-            match measured(acidity, &form) {
-                Some(row) => all.rows.push(row),
-                None => all.left_out.push(acidity.smiles.clone()),
+            let set_aside =
+                rows(SET_ASIDE).find(|(_, row)| row.first() == Some(&acidity.smiles.as_str()));
+            let reason = set_aside.and_then(|(_, row)| row.get(1).copied());
+            match (reason, measured(acidity, &form)) {
+                (None, Some(row)) => all.rows.push(row),
+                (reason, _) => {
+                    let reason = reason.unwrap_or("no site that the descriptors describe");
+                    all.left_out.push((acidity.smiles.clone(), reason));
+                }
             }
         }
         for (line, row) in rows(ANCHORS) {
-            all.rows.push(anchor(&row, &form).ok_or(fault("acidity_anchors.tsv", line))?);
+            all.rows
+                .push(anchor(&row, &form).ok_or(fault("acidity_anchors.tsv", line))?);
         }
         for (line, row) in rows(EQUILIBRIA) {
-            all.rows.push(equilibrium(&row, &form).ok_or(fault("acidity_equilibria.tsv", line))?);
+            all.rows
+                .push(equilibrium(&row, &form).ok_or(fault("acidity_equilibria.tsv", line))?);
         }
         Ok(all)
     }
@@ -85,7 +93,7 @@ pub(crate) fn rows(text: &'static str) -> impl Iterator<Item = (usize, Vec<&'sta
 }
 
 pub(crate) fn fault(table: &'static str, line: usize) -> FitError {
-    FitError::Table { table, line, reason: "a field is missing or cannot be read".to_owned() }
+    FitError::Table { table, line }
 }
 
 /// The sites of an element that may be acidic: the activated ones, or `at`, the one measured.
@@ -94,7 +102,10 @@ fn candidates(molecule: &Molecule, element: u8, at: Option<usize>, form: &Form) 
         .into_iter()
         .filter(|site| site.element == element)
         .filter(|site| site.activated || at.is_some_and(|atom| site.equivalent.contains(&atom)))
-        .map(|site| Candidate { contribution: form.contribution(&site.descriptors), site })
+        .map(|site| Candidate {
+            contribution: form.contribution(&site.descriptors),
+            site,
+        })
         .collect()
 }
 
@@ -118,7 +129,11 @@ fn measured(acidity: &Acidity, form: &Form) -> Option<Observation> {
         candidates,
         observed: Observed::Acidity { at },
         value: acidity.pka_dmso.value,
-        sigma: acidity.pka_dmso.sigma,
+        sigma: acidity.pka_dmso.sigma.max(if acidity.extrapolated {
+            EXTRAPOLATED
+        } else {
+            0.0
+        }),
         scaffold: acidity.scaffold.clone(),
         measured: true,
     })
@@ -127,8 +142,15 @@ fn measured(acidity: &Acidity, form: &Form) -> Option<Observation> {
 /// Elements and charges as in ordinary substrates, and an acceptor among the four kinds.
 fn in_scope(molecule: &Molecule, candidates: &[Candidate]) -> bool {
     const KINDS: [&str; 9] = [
-        "alkyl ketone", "aryl ketone", "ester", "amide", "nitrile", "nitro", "sulfone",
-        "triflone", "sulfoxide",
+        "alkyl ketone",
+        "aryl ketone",
+        "ester",
+        "amide",
+        "nitrile",
+        "nitro",
+        "sulfone",
+        "triflone",
+        "sulfoxide",
     ];
     let ordinary = molecule.atoms().iter().all(|atom| {
         matches!(atom.element, 1 | 6 | 7 | 8 | 9 | 15 | 16 | 17 | 35 | 53)
@@ -139,12 +161,18 @@ fn in_scope(molecule: &Molecule, candidates: &[Candidate]) -> bool {
     ordinary
         && !trivalent_phosphorus
         && candidates.iter().any(|candidate| {
-            candidate.site.descriptors.iter().any(|(name, _)| KINDS.contains(name))
+            candidate
+                .site
+                .descriptors
+                .iter()
+                .any(|(name, _)| KINDS.contains(name))
         })
 }
 
 fn place(candidates: &[Candidate], atom: usize) -> Option<usize> {
-    candidates.iter().position(|candidate| candidate.site.equivalent.contains(&atom))
+    candidates
+        .iter()
+        .position(|candidate| candidate.site.equivalent.contains(&atom))
 }
 
 fn anchor(row: &[&str], form: &Form) -> Option<Observation> {
@@ -153,7 +181,12 @@ fn anchor(row: &[&str], form: &Form) -> Option<Observation> {
     };
     let molecule = Molecule::parse(smiles).ok()?;
     let atom: usize = atom.parse().ok()?;
-    let candidates = candidates(&molecule, molecule.atoms().get(atom)?.element, Some(atom), form);
+    let candidates = candidates(
+        &molecule,
+        molecule.atoms().get(atom)?.element,
+        Some(atom),
+        form,
+    );
     let at = Some(place(&candidates, atom)?);
     Some(Observation {
         name: (*name).to_owned(),

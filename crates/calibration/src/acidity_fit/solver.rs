@@ -1,6 +1,6 @@
 //! Penalised least squares: Gauss–Newton with damping, Huber weights, normal equations by Cholesky.
 
-use enolattice_model::{Analogue, Analogues, Role};
+use enolattice_model::Role;
 
 use super::observations::{Observed, fault, rows};
 use super::{FitError, Observation};
@@ -77,21 +77,12 @@ impl Fit {
         }
         let standard_errors = standard_errors(&curvature, terms.len())?;
         let training_sites = training_sites(terms.len(), rows, &assigned);
-        Ok(Fit { values, standard_errors, training_sites, assigned })
-    }
-
-    /// The rows as analogues for other sites.
-    pub(crate) fn analogues(&self, rows: &[Observation]) -> Analogues {
-        let sites = rows
-            .iter()
-            .zip(&self.assigned)
-            .filter(|(row, _)| matches!(row.observed, Observed::Acidity { .. }))
-            .map(|(row, at)| Analogue {
-                contribution: row.candidates[*at].contribution.clone(),
-                residual: -residual(row, *at, &self.values),
-            })
-            .collect();
-        Analogues::new(sites, &self.values)
+        Ok(Fit {
+            values,
+            standard_errors,
+            training_sites,
+            assigned,
+        })
     }
 }
 
@@ -104,7 +95,8 @@ fn residual(row: &Observation, at: usize, values: &[f64]) -> f64 {
     let estimated = match row.observed {
         Observed::Acidity { .. } => row.candidates[at].contribution.value(values),
         Observed::Difference => {
-            row.candidates[0].contribution.value(values) - row.candidates[1].contribution.value(values)
+            row.candidates[0].contribution.value(values)
+                - row.candidates[1].contribution.value(values)
         }
     };
     estimated - row.value
@@ -137,7 +129,11 @@ fn cost(terms: &[Term], rows: &[Observation], assigned: &[usize], values: &[f64]
         .zip(assigned)
         .map(|(row, at)| {
             let z = (residual(row, *at, values) / sigma(row)).abs();
-            if z <= HUBER { z * z } else { HUBER * (2.0 * z - HUBER) }
+            if z <= HUBER {
+                z * z
+            } else {
+                HUBER * (2.0 * z - HUBER)
+            }
         })
         .sum();
     let penalty: f64 = terms
@@ -269,12 +265,14 @@ fn training_sites(n: usize, rows: &[Observation], assigned: &[usize]) -> Vec<usi
         let used: Vec<usize> = match row.observed {
             Observed::Acidity { .. } => {
                 let contribution = &row.candidates[*at].contribution;
-                contribution.used().chain(contribution.saturations()).collect()
+                contribution
+                    .used()
+                    .chain(contribution.saturations())
+                    .collect()
             }
             Observed::Difference => {
-                let [first, second] = [0, 1].map(|i| {
-                    row.candidates[i].contribution.used().collect::<Vec<_>>()
-                });
+                let [first, second] =
+                    [0, 1].map(|i| row.candidates[i].contribution.used().collect::<Vec<_>>());
                 first
                     .iter()
                     .chain(&second)

@@ -51,25 +51,25 @@ struct Given {
     #[arg(long, value_name = "T", conflicts_with = "job", allow_negative_numbers = true)]
     formation_temperature_c: Option<f64>,
     /// Base, equivalents.
-    #[arg(long, value_name = "N", conflicts_with = "job", default_value_t = 1.1)]
+    #[arg(long, value_name = "N", conflicts_with = "job", default_value_t = 1.1, allow_negative_numbers = true)]
     base_equiv: f64,
     /// Electrophile, equivalents.
-    #[arg(long, value_name = "N", conflicts_with = "job", default_value_t = 1.2)]
+    #[arg(long, value_name = "N", conflicts_with = "job", default_value_t = 1.2, allow_negative_numbers = true)]
     electrophile_equiv: f64,
     /// Time after the electrophile, h.
-    #[arg(long, value_name = "T", conflicts_with = "job", default_value_t = 16.0)]
+    #[arg(long, value_name = "T", conflicts_with = "job", default_value_t = 16.0, allow_negative_numbers = true)]
     time_h: f64,
     /// Time over which the electrophile is added, min.
-    #[arg(long, value_name = "T", conflicts_with = "job", default_value_t = 10.0)]
+    #[arg(long, value_name = "T", conflicts_with = "job", default_value_t = 10.0, allow_negative_numbers = true)]
     dosing_min: f64,
     /// Substrate, mol/L.
-    #[arg(long, value_name = "C", conflicts_with = "job", default_value_t = 0.2)]
+    #[arg(long, value_name = "C", conflicts_with = "job", default_value_t = 0.2, allow_negative_numbers = true)]
     concentration_m: f64,
     /// Order of addition; default: the usual one of the base.
     #[arg(long, value_name = "ORDER", conflicts_with = "job")]
     addition: Option<String>,
     /// Yield that makes a hit, 0 to 1.
-    #[arg(long, value_name = "Y", conflicts_with = "job", default_value_t = 0.5)]
+    #[arg(long, value_name = "Y", conflicts_with = "job", default_value_t = 0.5, allow_negative_numbers = true)]
     yield_at_least: f64,
 }
 

@@ -1,7 +1,7 @@
 //! Everything about one cell, as a page.
 
 use enolattice_engine::CellDescription;
-use enolattice_model::Explanation;
+use enolattice_model::{CoursePoint, Explanation};
 
 use super::SAFETY;
 use super::numbers::{fixed, percent, short, temperatures};
@@ -120,15 +120,25 @@ fn course(told: &Explanation) -> String {
         ("electrophile", Side::Right),
         ("product", Side::Right),
     ];
-    let rows = told.course.iter().map(|point| {
+    let rows = thinned(&told.course).map(|point| {
         let amounts = [point.substrate, point.anions, point.electrophile, point.product];
         std::iter::once(time(point.time_s)).chain(amounts.map(|amount| percent(Some(amount)))).collect()
     });
     if told.course.is_empty() { "  unknown".to_owned() } else { indented(&table(&columns, rows)) }
 }
 
+/// At most about twenty points, the last among them; JSON has them all.
+fn thinned(course: &[CoursePoint]) -> impl Iterator<Item = &CoursePoint> {
+    let step = course.len().div_ceil(20).max(1);
+    let last = course.len().saturating_sub(1);
+    let kept = move |(i, _): &(usize, &CoursePoint)| i % step == 0 || *i == last;
+    course.iter().enumerate().filter(kept).map(|(_, point)| point)
+}
+
+/// A time after the electrophile begins to be added; before it is negative.
 fn time(seconds: f64) -> String {
-    match seconds {
+    match seconds.abs() {
+        _ if seconds < 0.0 => format!("−{}", time(-seconds)),
         s if s < 60.0 => format!("{} s", short((s * 10.0).round() / 10.0)),
         s if s < 3600.0 => format!("{} min", short((s / 6.0).round() / 10.0)),
         s => format!("{} h", short((s / 360.0).round() / 10.0)),

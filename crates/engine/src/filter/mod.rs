@@ -10,3 +10,6 @@ mod read;
 mod token;
 
 pub(crate) use read::Filter;
+
+#[cfg(test)]
+mod tests;

@@ -21,6 +21,11 @@ pub enum Uptake {
     Heteroatom,
 }
 
+impl Uptake {
+    /// Number of kinds.
+    pub(crate) const COUNT: usize = 7;
+}
+
 /// What a coefficient does in the estimate.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
 pub enum Role {
@@ -58,6 +63,7 @@ fn saturation(first: Uptake, second: Uptake) -> &'static str {
     use Uptake::*;
     let pair = (first.min(second), first.max(second));
     match pair {
+        (Nitrile, Heteroatom) => "heteroatom with nitrile",
         (_, Heteroatom) => "heteroatom with any",
         (Onium, _) | (_, Onium) => "onium with any",
         (Nitro, _) | (_, Nitro) => "nitro with any",
@@ -66,8 +72,11 @@ fn saturation(first: Uptake, second: Uptake) -> &'static str {
         (Nitrile, Aryl) => "aryl with nitrile",
         (_, Aryl) => "aryl with sulfonyl",
         (Carbonyl, Carbonyl) => "carbonyl with carbonyl",
-        (Carbonyl, _) => "carbonyl with nitrile or sulfonyl",
-        _ => "nitrile or sulfonyl among themselves",
+        (Carbonyl, Nitrile) => "carbonyl with nitrile",
+        (Carbonyl, Sulfonyl) => "carbonyl with sulfonyl",
+        (Nitrile, Nitrile) => "nitrile with nitrile",
+        (Nitrile, Sulfonyl) => "nitrile with sulfonyl",
+        _ => "sulfonyl with sulfonyl",
     }
 }
 
@@ -168,6 +177,11 @@ impl Form {
             form.index.insert(name.to_owned(), i);
         }
         form
+    }
+
+    /// Roles of the coefficients, in their order.
+    pub(crate) fn roles(&self) -> &[Role] {
+        &self.roles
     }
 
     /// The estimate for a site with these descriptors.

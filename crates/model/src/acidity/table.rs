@@ -1,14 +1,15 @@
 //! The fitted tables, as they are compiled in.
 
+use std::collections::HashMap;
 use std::sync::LazyLock;
 
 use enolattice_molecule::AnionClass;
 
-use super::analogue::{Analogue, Analogues};
-use super::contribution::{Form, Role};
+use super::contribution::{Contribution, Form, Role};
+use super::coverage::Coverage;
 
 const COEFFICIENTS: &str = include_str!("../../data/acidity_coefficients.tsv");
-const ANALOGUES: &str = include_str!("../../data/acidity_analogues.tsv");
+const SEEN: &str = include_str!("../../data/acidity_seen.tsv");
 const ERRORS: &str = include_str!("../../data/acidity_errors.tsv");
 
 /// A coefficient of the estimate.
@@ -42,10 +43,20 @@ static FORM: LazyLock<Form> = LazyLock::new(|| {
             .map(|coefficient| (coefficient.name, coefficient.role)),
     )
 });
-static KNOWN: LazyLock<Analogues> = LazyLock::new(|| {
-    let sites = rows(ANALOGUES).filter_map(|row| analogue(&row)).collect();
-    Analogues::new(sites, values())
+static COVERAGE: LazyLock<Coverage> = LazyLock::new(|| {
+    let sites = rows(SEEN).filter_map(|row| seen(&row)).collect();
+    Coverage::new(sites, form(), values())
 });
+static TYPICAL_ERRORS: LazyLock<HashMap<&'static str, f64>> = LazyLock::new(|| {
+    rows(ERRORS)
+        .filter_map(|row| Some((*row.first()?, row.get(3)?.parse().ok()?)))
+        .collect()
+});
+
+/// The text of the tables that the estimate rests on, for a fingerprint of the model.
+pub(crate) fn texts() -> [&'static str; 3] {
+    [COEFFICIENTS, SEEN, ERRORS]
+}
 
 /// The coefficients of the estimate, in a fixed order.
 pub fn coefficients() -> &'static [Coefficient] {
@@ -58,24 +69,26 @@ pub(crate) fn values() -> &'static [f64] {
 }
 
 /// The estimate's form over [`coefficients`].
-pub fn form() -> &'static Form {
+pub(crate) fn form() -> &'static Form {
     &FORM
 }
 
-/// The sites of the fit.
-pub fn analogues() -> &'static Analogues {
-    &KNOWN
+/// What the fit has seen.
+pub(crate) fn coverage() -> &'static Coverage {
+    &COVERAGE
 }
 
 /// Standard error of an estimate for an anion of this class, from cross-validation, pK units.
-pub fn typical_error(class: AnionClass) -> f64 {
+pub(crate) fn typical_error(class: AnionClass) -> f64 {
+    /// Where the table has not even a line for all classes together; it always has.
+    const UNKNOWN: f64 = 2.0;
+    let errors = &*TYPICAL_ERRORS;
     let name = format!("{class:?}");
-    let find = |wanted: &str| {
-        rows(ERRORS)
-            .find(|row| row.first() == Some(&wanted))
-            .and_then(|row| row.get(3)?.parse().ok())
-    };
-    find(&name).or_else(|| find("any")).unwrap_or(2.0)
+    errors
+        .get(name.as_str())
+        .or_else(|| errors.get("any"))
+        .copied()
+        .unwrap_or(UNKNOWN)
 }
 
 /// Rows of a table without comments and heading, split at tabs.
@@ -100,20 +113,15 @@ fn coefficient(row: &[&'static str]) -> Option<Coefficient> {
     })
 }
 
-/// A row of measured site: SMILES, atom, pKa, residual, descriptors as `name:value; …`.
-fn analogue(row: &[&'static str]) -> Option<Analogue> {
-    let [_, _, _, residual, descriptors, ..] = row else {
-        return None;
-    };
-    let descriptors: Option<Vec<(&'static str, f64)>> = descriptors
+/// A site of the fit: compound, atom, pKa, residual, descriptors as `name:value; …`.
+fn seen(row: &[&'static str]) -> Option<Contribution> {
+    let descriptors: Option<Vec<(&'static str, f64)>> = row
+        .get(4)?
         .split("; ")
         .map(|entry| {
             let (name, value) = entry.rsplit_once(':')?;
             Some((name, value.parse().ok()?))
         })
         .collect();
-    Some(Analogue {
-        contribution: form().contribution(&descriptors?),
-        residual: residual.parse().ok()?,
-    })
+    Some(form().contribution(&descriptors?))
 }

@@ -3,7 +3,10 @@
 use enolattice_molecule::Molecule;
 use enolattice_reagents::{Base, BaseKind, Hazards, NamedElectrophile, Solvent, SolventClass};
 
-use super::groups::{Leaving, alkylators, enolisable_aldehyde, explosive_group, polymerisable};
+use super::groups::{
+    Leaving, alkylators, enolisable_aldehyde, explosive_group, has_strained_heterocycle,
+    polymerisable,
+};
 use super::{Category, Caution, is_strong, statements, temperature};
 
 /// Cautions of an electrophile and a solvent at the temperature of the reaction.
@@ -40,8 +43,9 @@ fn alkylating(electrophile: &Molecule, name: &str, hazards: Option<&Hazards>) ->
     let groups = alkylators(electrophile);
     let mut found = Vec::new();
     let listed = |codes: &[&str]| hazards.is_some_and(|h| codes.iter().any(|code| h.has(code)));
-    if groups.iter().any(|group| group.is_reactive()) && !listed(&["H340", "H341", "H350", "H351"])
-    {
+    let alkylates =
+        has_strained_heterocycle(electrophile) || groups.iter().any(|group| group.is_reactive());
+    if alkylates && !listed(&["H340", "H341", "H350", "H351"]) {
         let text = format!("{name} is an alkylating agent: treat as a suspected carcinogen");
         found.push(Caution::note(Category::Carcinogen, text));
     }

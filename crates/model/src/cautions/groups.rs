@@ -28,7 +28,7 @@ pub(super) struct Alkylator {
     pub(super) alpha_acceptor: bool,
     /// Methyl or ethyl.
     small: bool,
-    /// Allyl, benzyl, propargyl or next to an acceptor.
+    /// Allyl, benzyl, propargyl, next to an acceptor, or with O, N or S on the same carbon.
     activated: bool,
 }
 
@@ -56,13 +56,15 @@ pub(super) fn alkylators(molecule: &Molecule) -> Vec<Alkylator> {
 
 fn alkylator(molecule: &Molecule, carbon: usize) -> Option<Alkylator> {
     let neighbours = || molecule.neighbours(carbon).iter().map(|&(atom, _)| atom);
-    let leaving = neighbours().find_map(|atom| leaving(molecule, carbon, atom))?;
+    let (leaving_atom, leaving) =
+        neighbours().find_map(|atom| Some((atom, leaving(molecule, carbon, atom)?)))?;
     let carbons: Vec<usize> = neighbours().filter(|&a| is(molecule, a, CARBON)).collect();
     let propargyl = carbons
         .iter()
         .any(|&a| has_bond(molecule, a, Bond::Triple, CARBON));
     let alpha_acceptor = carbons.iter().any(|&a| is_acceptor(molecule, a));
-    let activated = carbons.iter().any(|&a| !is_saturated_carbon(molecule, a));
+    let activated = carbons.iter().any(|&a| !is_saturated_carbon(molecule, a))
+        || neighbours().any(|a| a != leaving_atom && is_donor(molecule, a));
     let small = match carbons[..] {
         [] => true,
         [only] => molecule.atoms()[only].hydrogens == 3,
@@ -274,6 +276,17 @@ fn is_trinitroarene(molecule: &Molecule, atom: usize) -> bool {
         .rings()
         .iter()
         .any(|ring| ring.contains(&atom) && nitro(ring) >= 3)
+}
+
+/// Whether the molecule has an epoxide, aziridine or other three-ring with a heteroatom.
+pub(super) fn has_strained_heterocycle(molecule: &Molecule) -> bool {
+    let mut rings = molecule.rings().iter();
+    rings.any(|ring| ring.len() == 3 && ring.iter().any(|&atom| is_donor(molecule, atom)))
+}
+
+/// Whether the atom is oxygen, nitrogen or sulfur.
+fn is_donor(molecule: &Molecule, atom: usize) -> bool {
+    matches!(molecule.atoms()[atom].element, OXYGEN | NITROGEN | SULFUR)
 }
 
 /// Whether the atom is the nitrogen of a nitro group.

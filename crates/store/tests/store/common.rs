@@ -21,7 +21,10 @@ pub(crate) fn open(dir: &Path) -> Store {
 /// A job of 40 synthetic blocks.
 pub(crate) fn new_job(title: &str, request_id: &str) -> NewJob {
     NewJob {
-        spec: CampaignSpec { title: title.into(), ..CampaignSpec::default() },
+        spec: CampaignSpec {
+            title: title.into(),
+            ..CampaignSpec::default()
+        },
         campaign_fingerprint: Fingerprint([1; 32]),
         model_fingerprint: Fingerprint([2; 32]),
         cells: 40 * CELLS,
@@ -42,9 +45,21 @@ pub(crate) fn columns(first_cell: u64, cells: u64) -> Columns {
     for cell in first_cell..first_cell + cells {
         let noise = noise(cell);
         let unknown = noise.is_multiple_of(11);
-        columns.expected_yield.push(if unknown { u16::MAX } else { (noise >> 8) as u16 % 300 * 218 });
-        columns.p_hit.push(if unknown { u16::MAX } else { ((noise >> 24) as u16).min(65534) });
-        columns.selectivity.push(if unknown { u8::MAX } else { (noise >> 40) as u8 % 20 });
+        columns.expected_yield.push(if unknown {
+            u16::MAX
+        } else {
+            (noise >> 8) as u16 % 300 * 218
+        });
+        columns.p_hit.push(if unknown {
+            u16::MAX
+        } else {
+            ((noise >> 24) as u16).min(65534)
+        });
+        columns.selectivity.push(if unknown {
+            u8::MAX
+        } else {
+            (noise >> 40) as u8 % 20
+        });
         columns.feasibility.push((noise >> 48) as u8);
         columns.largest_loss.push((noise >> 52) as u8 % 18);
         columns.cautions.push((noise >> 30) as u32);

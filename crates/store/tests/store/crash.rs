@@ -25,7 +25,11 @@ fn every_acknowledged_block_and_job_outlives_a_kill() {
         victim(Path::new(&dir));
     }
     let dir = tempfile::tempdir().unwrap();
-    let job = open(dir.path()).create_job(new_job("killed", ""), START_MS).unwrap().record.id;
+    let job = open(dir.path())
+        .create_job(new_job("killed", ""), START_MS)
+        .unwrap()
+        .record
+        .id;
     let mut acknowledged = BTreeSet::new();
     let mut jobs = BTreeSet::from([job]);
     for run in 0..RUNS {
@@ -33,7 +37,11 @@ fn every_acknowledged_block_and_job_outlives_a_kill() {
         let mut lines = BufReader::new(child.stdout.take().unwrap()).lines();
         // Die in mid-flight: after a few lines and a moment, or at once.
         let patience = noise(run) % 12;
-        let mut heard: Vec<String> = lines.by_ref().map_while(Result::ok).take(patience as usize).collect();
+        let mut heard: Vec<String> = lines
+            .by_ref()
+            .map_while(Result::ok)
+            .take(patience as usize)
+            .collect();
         std::thread::sleep(Duration::from_micros(noise(run + 100) % 9000));
         child.kill().unwrap();
         child.wait().unwrap();
@@ -41,33 +49,53 @@ fn every_acknowledged_block_and_job_outlives_a_kill() {
         for line in heard {
             match line.rsplit_once("acknowledged ") {
                 Some((_, index)) => drop(acknowledged.insert(index.parse::<u32>().unwrap())),
-                None => jobs.extend(line.rsplit_once("made ").map(|(_, id)| id.parse::<JobId>().unwrap())),
+                None => jobs.extend(
+                    line.rsplit_once("made ")
+                        .map(|(_, id)| id.parse::<JobId>().unwrap()),
+                ),
             }
         }
         check(&open(dir.path()), job, &acknowledged, &jobs);
     }
-    assert!(acknowledged.len() > BATCH && jobs.len() > 1, "the victims did not get to work");
+    assert!(
+        acknowledged.len() > BATCH && jobs.len() > 1,
+        "the victims did not get to work"
+    );
 }
 
 fn check(store: &Store, job: JobId, acknowledged: &BTreeSet<u32>, jobs: &BTreeSet<JobId>) {
     let known: BTreeSet<JobId> = store.jobs().iter().map(|record| record.id).collect();
-    assert!(known.is_superset(jobs), "a job was lost: {jobs:?} of {known:?}");
+    assert!(
+        known.is_superset(jobs),
+        "a job was lost: {jobs:?} of {known:?}"
+    );
     let committed = store.committed_blocks(job).unwrap();
     for index in acknowledged {
         assert!(committed.contains(&block(*index)), "block {index} was lost");
     }
     for id in &committed {
         let expected = columns(u64::from(id.index) * FULL, FULL);
-        assert_eq!(store.block(job, *id).unwrap(), Some(expected), "block {id:?}");
+        assert_eq!(
+            store.block(job, *id).unwrap(),
+            Some(expected),
+            "block {id:?}"
+        );
     }
     let progress = store.progress(job).unwrap();
-    assert_eq!((progress.blocks, progress.cells), (committed.len() as u64, committed.len() as u64 * FULL));
+    assert_eq!(
+        (progress.blocks, progress.cells),
+        (committed.len() as u64, committed.len() as u64 * FULL)
+    );
     assert_eq!(progress.cells_acknowledged, progress.cells);
 }
 
 fn spawn(dir: &Path) -> Child {
     Command::new(std::env::current_exe().unwrap())
-        .args(["--exact", "crash::every_acknowledged_block_and_job_outlives_a_kill", "--nocapture"])
+        .args([
+            "--exact",
+            "crash::every_acknowledged_block_and_job_outlives_a_kill",
+            "--nocapture",
+        ])
         .env(VICTIM, dir)
         .stdout(Stdio::piped())
         .stderr(Stdio::null())
@@ -80,7 +108,12 @@ fn victim(dir: &Path) -> ! {
     let (store, _) = Store::open(dir, START_MS).unwrap();
     let job = store.jobs()[0].id;
     let mut out = std::io::stdout();
-    let mut batch = (0..).filter(|index| !store.committed_blocks(job).unwrap().contains(&block(*index)));
+    let mut batch = (0..).filter(|index| {
+        !store
+            .committed_blocks(job)
+            .unwrap()
+            .contains(&block(*index))
+    });
     loop {
         let some: Vec<u32> = batch.by_ref().take(BATCH).collect();
         let stored = AtomicUsize::new(0);
@@ -88,7 +121,10 @@ fn victim(dir: &Path) -> ! {
             for index in &some {
                 let first = u64::from(*index) * FULL;
                 let outcome = store.commit_block(job, block(*index), first, &columns(first, FULL));
-                stored.fetch_add(usize::from(outcome.unwrap() == Commit::Stored), Ordering::Relaxed);
+                stored.fetch_add(
+                    usize::from(outcome.unwrap() == Commit::Stored),
+                    Ordering::Relaxed,
+                );
             }
         };
         std::thread::scope(|scope| {
@@ -97,8 +133,13 @@ fn victim(dir: &Path) -> ! {
         });
         assert_eq!(stored.into_inner(), some.len(), "each block is stored once");
         store.acknowledge().unwrap();
-        some.iter().for_each(|index| writeln!(out, "acknowledged {index}").unwrap());
-        let made = store.create_job(new_job("another", ""), START_MS).unwrap().record.id;
+        some.iter()
+            .for_each(|index| writeln!(out, "acknowledged {index}").unwrap());
+        let made = store
+            .create_job(new_job("another", ""), START_MS)
+            .unwrap()
+            .record
+            .id;
         writeln!(out, "made {made}").unwrap();
         out.flush().unwrap();
     }

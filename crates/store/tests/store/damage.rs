@@ -18,20 +18,34 @@ const BLOCKS: u32 = 200;
 
 fn commit(store: &Store, job: JobId, index: u32) -> Commit {
     let first = u64::from(index) * FULL;
-    store.commit_block(job, block(index), first, &columns(first, FULL)).unwrap()
+    store
+        .commit_block(job, block(index), first, &columns(first, FULL))
+        .unwrap()
 }
 
 fn finish(store: &Store, job: JobId, to: JobState) -> JobRecord {
-    let change =
-        StateChange { from: JobState::Queued, to, at_unix_ms: START_MS, failure: String::new() };
+    let change = StateChange {
+        from: JobState::Queued,
+        to,
+        at_unix_ms: START_MS,
+        failure: String::new(),
+    };
     store.change_state(job, &change).unwrap()
 }
 
 /// A store with a job of all blocks, ended or not, and a cancelled one of two blocks; closed.
 fn filled(dir: &Path, ended: bool) -> (JobId, JobId) {
     let store = open(dir);
-    let done = store.create_job(new_job("finished", ""), START_MS).unwrap().record.id;
-    let cancelled = store.create_job(new_job("cancelled", ""), START_MS).unwrap().record.id;
+    let done = store
+        .create_job(new_job("finished", ""), START_MS)
+        .unwrap()
+        .record
+        .id;
+    let cancelled = store
+        .create_job(new_job("cancelled", ""), START_MS)
+        .unwrap()
+        .record
+        .id;
     for index in 0..BLOCKS {
         commit(&store, done, index);
     }
@@ -68,11 +82,25 @@ fn reopen_and_mend(dir: &Path, done: JobId, cancelled: JobId) -> OpenReport {
     }
     let record = store.job(done).unwrap();
     let complete = there.len() == BLOCKS as usize;
-    assert_eq!(record.state, if complete { JobState::Done } else { JobState::Queued });
+    assert_eq!(
+        record.state,
+        if complete {
+            JobState::Done
+        } else {
+            JobState::Queued
+        }
+    );
     assert_eq!(report.queued_again.contains(&done), !complete);
-    assert_eq!(report.sentences().is_empty(), complete && report == OpenReport::default());
+    assert_eq!(
+        report.sentences().is_empty(),
+        complete && report == OpenReport::default()
+    );
     for index in 0..BLOCKS {
-        let expected = if there.contains(&block(index)) { Commit::AlreadyThere } else { Commit::Stored };
+        let expected = if there.contains(&block(index)) {
+            Commit::AlreadyThere
+        } else {
+            Commit::Stored
+        };
         assert_eq!(commit(&store, done, index), expected);
     }
     store.acknowledge().unwrap();
@@ -88,7 +116,11 @@ fn reopen_and_mend(dir: &Path, done: JobId, cancelled: JobId) -> OpenReport {
 /// Flips one bit of a copy's database.
 fn flip(sound: &Path, dir: &Path, run: u64) {
     copy(sound, dir);
-    let file = File::options().read(true).write(true).open(dir.join("db/db")).unwrap();
+    let file = File::options()
+        .read(true)
+        .write(true)
+        .open(dir.join("db/db"))
+        .unwrap();
     let at = noise(run) % file.metadata().unwrap().len();
     let mut byte = [0];
     file.read_exact_at(&mut byte, at).unwrap();
@@ -106,7 +138,10 @@ fn flipped_bits_under_a_finished_job_never_show() {
         let report = reopen_and_mend(dir.path(), done, cancelled);
         if let Some((aside, _)) = &report.set_aside {
             set_aside += 1;
-            assert_eq!(*aside, dir.path().join(format!("db.broken-{}", START_MS + 5)));
+            assert_eq!(
+                *aside,
+                dir.path().join(format!("db.broken-{}", START_MS + 5))
+            );
             assert!(aside.join("db").exists(), "nothing is thrown away");
         }
     }
@@ -136,7 +171,10 @@ fn flipped_bits_under_an_unfinished_job_never_show() {
         let (store, report) = Store::open(dir.path(), START_MS + 6).unwrap();
         let complete = store.progress(job).unwrap().blocks == u64::from(BLOCKS);
         let waits = store.job(job).unwrap().state == JobState::Queued;
-        assert_eq!((complete, report.queued_again.contains(&job)), (!waits, waits));
+        assert_eq!(
+            (complete, report.queued_again.contains(&job)),
+            (!waits, waits)
+        );
     }
 }
 
@@ -145,7 +183,11 @@ fn a_block_with_a_wrong_checksum_is_removed_and_computed_again() {
     let dir = tempfile::tempdir().unwrap();
     let (done, cancelled) = filled(dir.path(), true);
     {
-        let db = sled::Config::new().path(dir.path().join("db")).segment_size(8 << 20).open().unwrap();
+        let db = sled::Config::new()
+            .path(dir.path().join("db"))
+            .segment_size(8 << 20)
+            .open()
+            .unwrap();
         let tree = db.open_tree("blocks").unwrap();
         let (key, value) = tree.iter().nth(70).unwrap().unwrap();
         let mut value = value.to_vec();
@@ -154,7 +196,10 @@ fn a_block_with_a_wrong_checksum_is_removed_and_computed_again() {
         db.flush().unwrap();
     }
     let report = reopen_and_mend(dir.path(), done, cancelled);
-    assert_eq!(report.damaged, [(done, block(70), "the checksum does not match".to_string())]);
+    assert_eq!(
+        report.damaged,
+        [(done, block(70), "the checksum does not match".to_string())]
+    );
     assert_eq!((report.queued_again, report.set_aside), (vec![done], None));
 }
 
@@ -166,7 +211,12 @@ fn a_truncated_database_is_noticed() {
     for keep in [0, 1, length / 3, length / 2, length - (9 << 20), length - 1] {
         let dir = tempfile::tempdir().unwrap();
         copy(sound.path(), dir.path());
-        File::options().write(true).open(dir.path().join("db/db")).unwrap().set_len(keep).unwrap();
+        File::options()
+            .write(true)
+            .open(dir.path().join("db/db"))
+            .unwrap()
+            .set_len(keep)
+            .unwrap();
         let report = reopen_and_mend(dir.path(), done, cancelled);
         if keep <= length / 2 {
             assert_eq!(report.queued_again, [done], "{keep} of {length}");
@@ -187,8 +237,12 @@ fn a_lost_database_is_begun_anew() {
 fn damaged_settings_and_snapshots_of_the_database_are_survived() {
     let sound = tempfile::tempdir().unwrap();
     let (done, cancelled) = filled(sound.path(), true);
-    let names = fs::read_dir(sound.path().join("db")).unwrap().map(|entry| entry.unwrap().path());
-    let small: Vec<PathBuf> = names.filter(|path| path.is_file() && !path.ends_with("db/db")).collect();
+    let names = fs::read_dir(sound.path().join("db"))
+        .unwrap()
+        .map(|entry| entry.unwrap().path());
+    let small: Vec<PathBuf> = names
+        .filter(|path| path.is_file() && !path.ends_with("db/db"))
+        .collect();
     assert!(!small.is_empty());
     for path in small {
         let dir = tempfile::tempdir().unwrap();
@@ -203,7 +257,11 @@ fn damaged_settings_and_snapshots_of_the_database_are_survived() {
 fn a_block_that_is_stored_with_other_scores_is_an_error() {
     let dir = tempfile::tempdir().unwrap();
     let store = open(dir.path());
-    let job = store.create_job(new_job("twice", ""), START_MS).unwrap().record.id;
+    let job = store
+        .create_job(new_job("twice", ""), START_MS)
+        .unwrap()
+        .record
+        .id;
     assert_eq!(commit(&store, job, 0), Commit::Stored);
     assert_eq!(commit(&store, job, 0), Commit::AlreadyThere);
     let other = store.commit_block(job, block(0), 0, &columns(1, FULL));

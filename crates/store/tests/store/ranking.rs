@@ -18,7 +18,9 @@ const FIRST_PAGE: RankRequest<'static> = RankRequest {
 
 fn commit(store: &Store, job: JobId, index: u32) {
     let first = u64::from(index) * CELLS;
-    store.commit_block(job, block(index), first, &columns(first, CELLS)).unwrap();
+    store
+        .commit_block(job, block(index), first, &columns(first, CELLS))
+        .unwrap();
 }
 
 fn value(order: Order, score: &Score) -> Option<f64> {
@@ -31,7 +33,10 @@ fn value(order: Order, score: &Score) -> Option<f64> {
 }
 
 fn keeps(cell: u64, score: &Score) -> bool {
-    cell % 3 != 1 && score.feasibility.is_some_and(|feasibility| feasibility > 0.3)
+    cell % 3 != 1
+        && score
+            .feasibility
+            .is_some_and(|feasibility| feasibility > 0.3)
 }
 
 fn group(cell: u64) -> u32 {
@@ -48,7 +53,8 @@ fn sorted(blocks: &[u32], order: Order, filter: bool, best_per: bool) -> Vec<u64
     }
     cells.retain(|(cell, score)| !filter || keeps(*cell, score));
     cells.sort_by(|(a, a_score), (b, b_score)| {
-        let [a_value, b_value] = [a_score, b_score].map(|score| value(order, score).unwrap_or(-1.0));
+        let [a_value, b_value] =
+            [a_score, b_score].map(|score| value(order, score).unwrap_or(-1.0));
         b_value.total_cmp(&a_value).then(a.cmp(b))
     });
     let mut best = BTreeMap::new();
@@ -111,21 +117,43 @@ proptest! {
 fn long_skips_land_where_a_full_sort_says() {
     let dir = tempfile::tempdir().unwrap();
     let store = open(dir.path());
-    let job = store.create_job(new_job("long", ""), START_MS).unwrap().record.id;
+    let job = store
+        .create_job(new_job("long", ""), START_MS)
+        .unwrap()
+        .record
+        .id;
     let all: Vec<u32> = (0..120).collect();
     all.iter().for_each(|index| commit(&store, job, *index));
     store.acknowledge().unwrap();
     for order in Order::ALL {
         for filter in [false, true] {
             let expected = sorted(&all, order, filter, false);
-            let ask = RankRequest { order, filter: filter.then_some(&keeps), ..FIRST_PAGE };
+            let ask = RankRequest {
+                order,
+                filter: filter.then_some(&keeps),
+                ..FIRST_PAGE
+            };
             let after = store.rank(job, &ask).unwrap().next;
-            for skip in [16_384, 16_385, expected.len() as u64 - 15, expected.len() as u64] {
-                let page = store.rank(job, &RankRequest { skip, after, ..ask }).unwrap();
+            for skip in [
+                16_384,
+                16_385,
+                expected.len() as u64 - 15,
+                expected.len() as u64,
+            ] {
+                let page = store
+                    .rank(job, &RankRequest { skip, after, ..ask })
+                    .unwrap();
                 let cells: Vec<u64> = page.rows.iter().map(|(cell, _)| *cell).collect();
                 let here = expected.iter().skip(10 + skip as usize).take(10);
-                assert_eq!(cells, here.copied().collect::<Vec<_>>(), "{order:?} {filter} {skip}");
-                assert_eq!((page.first_rank, page.total), (skip + 11, expected.len() as u64));
+                assert_eq!(
+                    cells,
+                    here.copied().collect::<Vec<_>>(),
+                    "{order:?} {filter} {skip}"
+                );
+                assert_eq!(
+                    (page.first_rank, page.total),
+                    (skip + 11, expected.len() as u64)
+                );
             }
         }
     }
@@ -135,18 +163,38 @@ fn long_skips_land_where_a_full_sort_says() {
 fn rows_carry_the_scores_that_were_committed() {
     let dir = tempfile::tempdir().unwrap();
     let store = open(dir.path());
-    let job = store.create_job(new_job("scores", ""), START_MS).unwrap().record.id;
+    let job = store
+        .create_job(new_job("scores", ""), START_MS)
+        .unwrap()
+        .record
+        .id;
     (0..3).for_each(|index| commit(&store, job, index));
     store.acknowledge().unwrap();
     let all = columns(0, 3 * CELLS);
-    let page = store.rank(job, &RankRequest { limit: 2000, ..FIRST_PAGE }).unwrap();
+    let page = store
+        .rank(
+            job,
+            &RankRequest {
+                limit: 2000,
+                ..FIRST_PAGE
+            },
+        )
+        .unwrap();
     assert_eq!(page.rows.len(), 1500);
     for (cell, score) in &page.rows {
         assert_eq!(*score, all.score(*cell as usize));
         assert_eq!(store.score(job, *cell).unwrap().as_ref(), Some(score));
     }
-    let best = all.expected_yield.iter().filter(|code| **code != u16::MAX).max().unwrap();
-    assert_eq!(store.progress(job).unwrap().best_yield, Some(f64::from(*best) / 65534.0));
+    let best = all
+        .expected_yield
+        .iter()
+        .filter(|code| **code != u16::MAX)
+        .max()
+        .unwrap();
+    assert_eq!(
+        store.progress(job).unwrap().best_yield,
+        Some(f64::from(*best) / 65534.0)
+    );
     assert_eq!(store.score(job, 3 * CELLS).unwrap(), None);
 }
 
@@ -154,8 +202,18 @@ fn rows_carry_the_scores_that_were_committed() {
 fn only_acknowledged_blocks_are_shown() {
     let dir = tempfile::tempdir().unwrap();
     let store = open(dir.path());
-    let job = store.create_job(new_job("young", ""), START_MS).unwrap().record.id;
-    let empty = Ranking { rows: vec![], first_rank: 1, total: 0, cells: 0, next: None };
+    let job = store
+        .create_job(new_job("young", ""), START_MS)
+        .unwrap()
+        .record
+        .id;
+    let empty = Ranking {
+        rows: vec![],
+        first_rank: 1,
+        total: 0,
+        cells: 0,
+        next: None,
+    };
     assert_eq!(store.rank(job, &FIRST_PAGE).unwrap(), empty);
     commit(&store, job, 0);
     assert_eq!(store.rank(job, &FIRST_PAGE).unwrap(), empty);
@@ -170,16 +228,29 @@ fn only_acknowledged_blocks_are_shown() {
 fn a_page_of_blocks_that_were_dropped_is_refused() {
     let dir = tempfile::tempdir().unwrap();
     let store = open(dir.path());
-    let job = store.create_job(new_job("again", ""), START_MS).unwrap().record.id;
+    let job = store
+        .create_job(new_job("again", ""), START_MS)
+        .unwrap()
+        .record
+        .id;
     (0..2).for_each(|index| commit(&store, job, index));
     store.acknowledge().unwrap();
     let after = store.rank(job, &FIRST_PAGE).unwrap().next;
     let record = store.restart(job, Fingerprint([9; 32])).unwrap();
-    assert_eq!((record.model_fingerprint, record.generation), (Fingerprint([9; 32]), 2));
+    assert_eq!(
+        (record.model_fingerprint, record.generation),
+        (Fingerprint([9; 32]), 2)
+    );
     assert_eq!(store.progress(job).unwrap().cells, 0);
     (0..2).for_each(|index| commit(&store, job, index));
     store.acknowledge().unwrap();
-    let next = RankRequest { after, ..FIRST_PAGE };
-    assert!(matches!(store.rank(job, &next), Err(StoreError::PageOutdated)));
+    let next = RankRequest {
+        after,
+        ..FIRST_PAGE
+    };
+    assert!(matches!(
+        store.rank(job, &next),
+        Err(StoreError::PageOutdated)
+    ));
     assert_eq!(store.rank(job, &FIRST_PAGE).unwrap().total, 2 * CELLS);
 }

@@ -21,7 +21,11 @@ pub(super) fn relocate(faults: Vec<InputError>, campaign: &CampaignSpec) -> Vec<
 /// Faults with their fields relative to this part of the request.
 pub(super) fn within(part: &str, mut faults: Vec<InputError>) -> Vec<InputError> {
     for fault in &mut faults {
-        let field = fault.place.field.strip_prefix(part).and_then(|rest| rest.strip_prefix('.'));
+        let field = fault
+            .place
+            .field
+            .strip_prefix(part)
+            .and_then(|rest| rest.strip_prefix('.'));
         if let Some(field) = field {
             fault.place.field = field.to_owned();
         }
@@ -57,17 +61,28 @@ mod tests {
     use enolattice_grid::{AxisSpec, Entry, SubstrateEntry};
 
     fn place(file: &str, line: u32, field: &str) -> Place {
-        Place { file: file.into(), line, field: field.into() }
+        Place {
+            file: file.into(),
+            line,
+            field: field.into(),
+        }
     }
 
     fn campaign() -> CampaignSpec {
-        let substrate =
-            |line| SubstrateEntry { place: place("s.csv", line, "smiles"), ..Default::default() };
-        let base =
-            Entry { place: place("c.toml", 4, "bases.library[0]"), ..Default::default() };
+        let substrate = |line| SubstrateEntry {
+            place: place("s.csv", line, "smiles"),
+            ..Default::default()
+        };
+        let base = Entry {
+            place: place("c.toml", 4, "bases.library[0]"),
+            ..Default::default()
+        };
         CampaignSpec {
             substrates: vec![substrate(2), substrate(3)],
-            bases: AxisSpec { all: false, entries: vec![base] },
+            bases: AxisSpec {
+                all: false,
+                entries: vec![base],
+            },
             ..Default::default()
         }
     }
@@ -82,8 +97,10 @@ mod tests {
             fault("campaign.conditions.time_h[2]"),
             fault("campaign.bases.reagents[9]"),
         ];
-        let places: Vec<_> =
-            relocate(faults, &campaign()).into_iter().map(|fault| fault.place).collect();
+        let places: Vec<_> = relocate(faults, &campaign())
+            .into_iter()
+            .map(|fault| fault.place)
+            .collect();
         assert_eq!(
             places,
             [

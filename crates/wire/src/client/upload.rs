@@ -30,10 +30,16 @@ pub(super) fn parts(mut request: v1::SubmitJobRequest) -> Upload {
     }
     let mut parts = vec![part(Part::Header(request))];
     for substrates in runs(substrates) {
-        parts.push(part(Part::Chunk(v1::AxisChunk { substrates, electrophiles: vec![] })));
+        parts.push(part(Part::Chunk(v1::AxisChunk {
+            substrates,
+            electrophiles: vec![],
+        })));
     }
     for electrophiles in runs(electrophiles) {
-        parts.push(part(Part::Chunk(v1::AxisChunk { substrates: vec![], electrophiles })));
+        parts.push(part(Part::Chunk(v1::AxisChunk {
+            substrates: vec![],
+            electrophiles,
+        })));
     }
     Upload::Stream(parts)
 }

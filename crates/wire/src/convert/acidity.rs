@@ -21,7 +21,10 @@ impl TryFrom<v1::MoleculeSites> for SiteReport {
 
     fn try_from(molecule: v1::MoleculeSites) -> Result<Self, ConversionError> {
         let sites = molecule.sites.into_iter().map(TryInto::try_into);
-        Ok(SiteReport { smiles: molecule.smiles, sites: sites.collect::<Result<_, _>>()? })
+        Ok(SiteReport {
+            smiles: molecule.smiles,
+            sites: sites.collect::<Result<_, _>>()?,
+        })
     }
 }
 
@@ -31,7 +34,12 @@ impl From<&AcidSite> for v1::AcidSite {
             atom: numbers::index_to_wire(site.atom),
             element: site.element.into(),
             hydrogens: site.hydrogens.into(),
-            equivalent_atoms: site.equivalent.iter().copied().map(numbers::index_to_wire).collect(),
+            equivalent_atoms: site
+                .equivalent
+                .iter()
+                .copied()
+                .map(numbers::index_to_wire)
+                .collect(),
             anion_class: v1::AnionClass::from(site.class).into(),
             pka_dmso: site.pka_dmso,
             sigma: site.sigma,

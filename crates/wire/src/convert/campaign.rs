@@ -79,12 +79,18 @@ fn campaign_message(spec: &CampaignSpec) -> Result<v1::Campaign, Vec<InputError>
             sets: spec.additives.entries.iter().map(additive_set).collect(),
         }),
         conditions: Some(conditions),
-        target: Some(v1::Target { yield_at_least: spec.target.yield_at_least }),
+        target: Some(v1::Target {
+            yield_at_least: spec.target.yield_at_least,
+        }),
     })
 }
 
 fn campaign(campaign: v1::Campaign, faults: &mut Vec<InputError>) -> CampaignSpec {
-    let substrates = campaign.substrates.into_iter().enumerate().map(substrate_entry);
+    let substrates = campaign
+        .substrates
+        .into_iter()
+        .enumerate()
+        .map(substrate_entry);
     CampaignSpec {
         title: campaign.title,
         substrates: substrates.collect(),
@@ -140,17 +146,27 @@ fn reagent_axis(axis: &AxisSpec) -> v1::ReagentAxis {
 
 fn axis(axis: Option<v1::ReagentAxis>, name: &str) -> AxisSpec {
     let axis = axis.unwrap_or_default();
-    let entries = axis.reagents.into_iter().enumerate().map(|(i, reagent)| Entry {
-        place: at(format!("{name}.reagents[{i}]")),
-        name: reagent.name,
-        smiles: reagent.smiles,
-    });
-    AxisSpec { all: axis.whole_library, entries: entries.collect() }
+    let entries = axis
+        .reagents
+        .into_iter()
+        .enumerate()
+        .map(|(i, reagent)| Entry {
+            place: at(format!("{name}.reagents[{i}]")),
+            name: reagent.name,
+            smiles: reagent.smiles,
+        });
+    AxisSpec {
+        all: axis.whole_library,
+        entries: entries.collect(),
+    }
 }
 
 impl From<&Entry> for v1::Reagent {
     fn from(entry: &Entry) -> Self {
-        v1::Reagent { name: entry.name.clone(), smiles: entry.smiles.clone() }
+        v1::Reagent {
+            name: entry.name.clone(),
+            smiles: entry.smiles.clone(),
+        }
     }
 }
 
@@ -158,14 +174,20 @@ impl From<&Entry> for v1::Medium {
     fn from(entry: &Entry) -> Self {
         let solvent = Some(v1::Reagent::from(entry));
         v1::Medium {
-            components: vec![v1::SolventComponent { solvent, volume_fraction: None }],
+            components: vec![v1::SolventComponent {
+                solvent,
+                volume_fraction: None,
+            }],
         }
     }
 }
 
 fn additive_set(entry: &Entry) -> v1::AdditiveSet {
     v1::AdditiveSet {
-        additives: vec![v1::Additive { reagent: Some(entry.into()), equiv: None }],
+        additives: vec![v1::Additive {
+            reagent: Some(entry.into()),
+            equiv: None,
+        }],
     }
 }
 
@@ -177,13 +199,13 @@ fn solvent_axis(axis: v1::SolventAxis, faults: &mut Vec<InputError>) -> AxisSpec
             Err(fault) => faults.push(fault),
         }
     }
-    AxisSpec { all: axis.whole_library, entries }
+    AxisSpec {
+        all: axis.whole_library,
+        entries,
+    }
 }
 
-fn conditions_message(
-    spec: &ConditionsSpec,
-    faults: &mut Vec<InputError>,
-) -> v1::ConditionAxes {
+fn conditions_message(spec: &ConditionsSpec, faults: &mut Vec<InputError>) -> v1::ConditionAxes {
     let mut addition = Vec::new();
     for (i, name) in spec.addition.iter().enumerate() {
         match addition_from_name(name, &format!("conditions.addition[{i}]")) {
@@ -232,7 +254,10 @@ fn conditions(axes: v1::ConditionAxes, faults: &mut Vec<InputError>) -> Conditio
 }
 
 fn at(field: String) -> Place {
-    Place { field, ..Place::default() }
+    Place {
+        field,
+        ..Place::default()
+    }
 }
 
 #[cfg(test)]
@@ -240,7 +265,11 @@ mod tests {
     use super::*;
 
     fn entry(name: &str, smiles: &str, field: &str) -> Entry {
-        Entry { name: name.into(), smiles: smiles.into(), place: at(field.into()) }
+        Entry {
+            name: name.into(),
+            smiles: smiles.into(),
+            place: at(field.into()),
+        }
     }
 
     fn submitted() -> Submission {
@@ -254,7 +283,10 @@ mod tests {
                     pka_sigma: Some(0.2),
                     place: at("substrates[0].smiles".into()),
                 }],
-                bases: AxisSpec { all: true, entries: vec![] },
+                bases: AxisSpec {
+                    all: true,
+                    entries: vec![],
+                },
                 electrophiles: AxisSpec {
                     all: false,
                     entries: vec![
@@ -277,7 +309,9 @@ mod tests {
                     dosing_min: vec![5.0],
                     addition: vec!["all together".into(), "substrate into base".into()],
                 },
-                target: TargetSpec { yield_at_least: Some(0.6) },
+                target: TargetSpec {
+                    yield_at_least: Some(0.6),
+                },
             },
             request_id: "a-request".into(),
             validate_only: true,
@@ -290,7 +324,10 @@ mod tests {
         let back = Submission::try_from(v1::SubmitJobRequest::try_from(&sent).expect("to wire"))
             .expect("from wire");
         assert_eq!(back.campaign, sent.campaign);
-        assert_eq!((back.request_id, back.validate_only), (sent.request_id, sent.validate_only));
+        assert_eq!(
+            (back.request_id, back.validate_only),
+            (sent.request_id, sent.validate_only)
+        );
     }
 
     #[test]
@@ -304,20 +341,25 @@ mod tests {
         media.push(v1::Medium::default());
         campaign.conditions.as_mut().expect("conditions").addition = vec![0, 1, 7];
         campaign.additives = Some(v1::AdditiveAxis {
-            sets: vec![v1::AdditiveSet::default(), additive_set(&entry("HMPA", "", ""))],
+            sets: vec![
+                v1::AdditiveSet::default(),
+                additive_set(&entry("HMPA", "", "")),
+            ],
         });
         let faults = Submission::try_from(request).expect_err("is refused");
-        let told: Vec<_> =
-            faults.iter().map(|fault| (fault.place.field.as_str(), fault.code)).collect();
+        let told: Vec<_> = faults
+            .iter()
+            .map(|fault| (fault.place.field.as_str(), fault.code))
+            .collect();
         assert_eq!(
             told,
             [
                 ("request_id", "VALUE_OUT_OF_RANGE"),
                 ("campaign.solvents.media[0]", "NOT_YET_ALLOWED"),
                 ("campaign.solvents.media[1]", "VALUE_MISSING"),
+                ("campaign.additives.sets[1]", "NOT_YET_ALLOWED"),
                 ("campaign.conditions.addition[0]", "NOT_YET_ALLOWED"),
                 ("campaign.conditions.addition[2]", "VALUE_UNKNOWN"),
-                ("campaign.additives.sets[1]", "NOT_YET_ALLOWED"),
             ]
         );
     }

@@ -22,7 +22,9 @@ impl TryFrom<&ExplainTarget> for v1::ExplainCellRequest {
                 Target::GivenCell(given_cell_message(query).map_err(|fault| vec![fault])?)
             }
         };
-        Ok(v1::ExplainCellRequest { target: Some(target) })
+        Ok(v1::ExplainCellRequest {
+            target: Some(target),
+        })
     }
 }
 
@@ -56,14 +58,24 @@ fn given_cell_message(query: &CellQuery) -> Result<v1::GivenCell, InputError> {
         Some(name) => addition_from_name(name, "addition")?.into(),
         None => v1::AdditionOrder::Unspecified.into(),
     };
-    let named = |name: &String| v1::Reagent { name: name.clone(), smiles: String::new() };
-    let solvent =
-        v1::SolventComponent { solvent: Some(named(&query.solvent)), volume_fraction: None };
+    let named = |name: &String| v1::Reagent {
+        name: name.clone(),
+        smiles: String::new(),
+    };
+    let solvent = v1::SolventComponent {
+        solvent: Some(named(&query.solvent)),
+        volume_fraction: None,
+    };
     Ok(v1::GivenCell {
-        substrate: Some(v1::Substrate { smiles: query.substrate.clone(), ..Default::default() }),
+        substrate: Some(v1::Substrate {
+            smiles: query.substrate.clone(),
+            ..Default::default()
+        }),
         base: Some(named(&query.base)),
         electrophile: Some(named(&query.electrophile)),
-        solvent: Some(v1::Medium { components: vec![solvent] }),
+        solvent: Some(v1::Medium {
+            components: vec![solvent],
+        }),
         additives: None,
         conditions: Some(v1::CellConditions {
             temperature_c: Some(query.temperature_c),
@@ -110,7 +122,11 @@ fn given_cell(cell: v1::GivenCell) -> Result<CellQuery, Vec<InputError>> {
         substrate: substrate.smiles,
         base: name_or_smiles(&cell.base.unwrap_or_default()),
         electrophile: name_or_smiles(&cell.electrophile.unwrap_or_default()),
-        solvent: if solvent.smiles.is_empty() { solvent.name } else { solvent.smiles },
+        solvent: if solvent.smiles.is_empty() {
+            solvent.name
+        } else {
+            solvent.smiles
+        },
         temperature_c: conditions.temperature_c.unwrap_or_default(),
         formation_temperature_c: conditions.formation_temperature_c,
         base_equiv: conditions.base_equiv.unwrap_or(1.1),
@@ -135,7 +151,11 @@ fn own_pka_fault() -> InputError {
 
 /// What the engine looks a reagent up by.
 pub(crate) fn name_or_smiles(reagent: &v1::Reagent) -> String {
-    if reagent.smiles.is_empty() { reagent.name.clone() } else { reagent.smiles.clone() }
+    if reagent.smiles.is_empty() {
+        reagent.name.clone()
+    } else {
+        reagent.smiles.clone()
+    }
 }
 
 /// The one solvent of a medium.
@@ -164,13 +184,22 @@ pub(crate) fn solvent_entry(mut medium: v1::Medium, field: &str) -> Result<Entry
         ));
     }
     let solvent = component.solvent.unwrap_or_default();
-    let place = Place { field: field.to_owned(), ..Place::default() };
-    Ok(Entry { name: solvent.name, smiles: solvent.smiles, place })
+    let place = Place {
+        field: field.to_owned(),
+        ..Place::default()
+    };
+    Ok(Entry {
+        name: solvent.name,
+        smiles: solvent.smiles,
+        place,
+    })
 }
 
 /// The order of addition of this name.
 pub(crate) fn addition_from_name(name: &str, field: &str) -> Result<v1::AdditionOrder, InputError> {
-    let names = Addition::ALL.map(|order| format!("`{}`", order.name())).join(", ");
+    let names = Addition::ALL
+        .map(|order| format!("`{}`", order.name()))
+        .join(", ");
     Addition::from_name(name).map(Into::into).ok_or_else(|| {
         bad_field(
             ErrorReason::ValueUnknown,
@@ -209,7 +238,13 @@ pub(crate) fn additive_fault(field: impl Into<String>, value: impl Into<String>)
 }
 
 fn missing(field: &str, remedy: &str) -> InputError {
-    bad_field(ErrorReason::ValueMissing, field, "", "it is missing", remedy)
+    bad_field(
+        ErrorReason::ValueMissing,
+        field,
+        "",
+        "it is missing",
+        remedy,
+    )
 }
 
 #[cfg(test)]
@@ -241,7 +276,10 @@ mod tests {
 
     #[test]
     fn targets_come_back() {
-        comes_back(&ExplainTarget::OfJob { job: "j".into(), cell: 77 });
+        comes_back(&ExplainTarget::OfJob {
+            job: "j".into(),
+            cell: 77,
+        });
         comes_back(&ExplainTarget::Given(query()));
         comes_back(&ExplainTarget::Given(CellQuery {
             formation_temperature_c: None,
@@ -253,8 +291,10 @@ mod tests {
     #[test]
     fn numbers_left_out_take_the_documented_defaults() {
         let mut cell = given_cell_message(&query()).expect("to wire");
-        cell.conditions =
-            Some(v1::CellConditions { temperature_c: Some(25.0), ..Default::default() });
+        cell.conditions = Some(v1::CellConditions {
+            temperature_c: Some(25.0),
+            ..Default::default()
+        });
         cell.yield_at_least = None;
         let query = given_cell(cell).expect("from wire");
         let numbers = [
@@ -266,21 +306,34 @@ mod tests {
             query.yield_at_least,
         ];
         assert_eq!(numbers, [1.1, 1.2, 16.0, 10.0, 0.2, 0.5]);
-        assert_eq!((query.formation_temperature_c, query.addition), (None, None));
+        assert_eq!(
+            (query.formation_temperature_c, query.addition),
+            (None, None)
+        );
     }
 
     #[test]
     fn an_empty_cell_has_all_its_faults_told() {
         let cell = v1::GivenCell {
-            substrate: Some(v1::Substrate { pka_dmso: Some(20.0), ..Default::default() }),
-            additives: Some(v1::AdditiveSet { additives: vec![v1::Additive::default()] }),
+            substrate: Some(v1::Substrate {
+                pka_dmso: Some(20.0),
+                ..Default::default()
+            }),
+            additives: Some(v1::AdditiveSet {
+                additives: vec![v1::Additive::default()],
+            }),
             ..Default::default()
         };
         let faults = given_cell(cell).expect_err("is refused");
         let codes: Vec<_> = faults.iter().map(|fault| fault.code).collect();
         assert_eq!(
             codes,
-            ["VALUE_MISSING", "NOT_YET_ALLOWED", "VALUE_MISSING", "NOT_YET_ALLOWED"]
+            [
+                "VALUE_MISSING",
+                "NOT_YET_ALLOWED",
+                "VALUE_MISSING",
+                "NOT_YET_ALLOWED"
+            ]
         );
     }
 }

@@ -16,7 +16,9 @@ pub(crate) fn to_wire(conditions: &Conditions, addition: &str) -> v1::CellCondit
         concentration_m: Some(conditions.concentration_m),
         time_h: Some(conditions.time_h),
         dosing_min: Some(conditions.dosing_min),
-        addition: order.map_or(v1::AdditionOrder::Unspecified, Into::into).into(),
+        addition: order
+            .map_or(v1::AdditionOrder::Unspecified, Into::into)
+            .into(),
     }
 }
 
@@ -24,7 +26,9 @@ pub(crate) fn to_wire(conditions: &Conditions, addition: &str) -> v1::CellCondit
 pub(crate) fn from_wire(
     message: Option<v1::CellConditions>,
 ) -> Result<(Conditions, String), ConversionError> {
-    let message = message.ok_or(ConversionError::Missing { field: "conditions" })?;
+    let message = message.ok_or(ConversionError::Missing {
+        field: "conditions",
+    })?;
     let given = |field, number: Option<f64>| number.ok_or(ConversionError::Missing { field });
     let addition = enums::from_wire::<_, v1::AdditionOrder>(
         "CellConditions.addition",

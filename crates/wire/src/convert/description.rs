@@ -8,7 +8,10 @@ use crate::v1;
 
 /// A cell with its explanation, as an answer.
 pub fn explained(cell: &CellDescription, explanation: &Explanation) -> v1::ExplainCellResponse {
-    v1::ExplainCellResponse { cell: Some(cell.into()), explanation: Some(explanation.into()) }
+    v1::ExplainCellResponse {
+        cell: Some(cell.into()),
+        explanation: Some(explanation.into()),
+    }
 }
 
 impl TryFrom<v1::ExplainCellResponse> for (CellDescription, Explanation) {
@@ -17,7 +20,9 @@ impl TryFrom<v1::ExplainCellResponse> for (CellDescription, Explanation) {
     fn try_from(answer: v1::ExplainCellResponse) -> Result<Self, ConversionError> {
         let missing = |field| ConversionError::Missing { field };
         let cell = answer.cell.ok_or(missing("ExplainCellResponse.cell"))?;
-        let explanation = answer.explanation.ok_or(missing("ExplainCellResponse.explanation"))?;
+        let explanation = answer
+            .explanation
+            .ok_or(missing("ExplainCellResponse.explanation"))?;
         Ok((cell.try_into()?, explanation.try_into()?))
     }
 }
@@ -104,8 +109,17 @@ mod tests {
             dosing_min: 5.0,
             addition: "all together".into(),
         };
-        for cell in [CellDescription { cell: None, ..cell.clone() }, cell] {
-            assert_eq!(CellDescription::try_from(v1::CellDescription::from(&cell)), Ok(cell));
+        for cell in [
+            CellDescription {
+                cell: None,
+                ..cell.clone()
+            },
+            cell,
+        ] {
+            assert_eq!(
+                CellDescription::try_from(v1::CellDescription::from(&cell)),
+                Ok(cell)
+            );
         }
     }
 }

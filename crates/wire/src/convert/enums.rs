@@ -28,7 +28,10 @@ pub(crate) fn optional_from_wire<T: Copy + Into<W>, W: Into<i32>>(
         let message: W = (*value).into();
         message.into() == number
     });
-    value.map(Some).ok_or(ConversionError::Unknown { field, value: number.to_string() })
+    value.map(Some).ok_or(ConversionError::Unknown {
+        field,
+        value: number.to_string(),
+    })
 }
 
 impl From<JobState> for v1::JobState {
@@ -69,8 +72,13 @@ impl From<Axis> for v1::Axis {
 }
 
 /// All axes that a ranking knows.
-pub(crate) const AXES: [Axis; 5] =
-    [Axis::Substrate, Axis::Base, Axis::Electrophile, Axis::Solvent, Axis::Temperature];
+pub(crate) const AXES: [Axis; 5] = [
+    Axis::Substrate,
+    Axis::Base,
+    Axis::Electrophile,
+    Axis::Solvent,
+    Axis::Temperature,
+];
 
 impl From<Addition> for v1::AdditionOrder {
     fn from(addition: Addition) -> Self {

@@ -59,11 +59,19 @@ impl TryFrom<v1::Explanation> for Explanation {
             delta_g_deprotonation_kj_mol: e.delta_g_deprotonation_kj_mol,
             log10_k: e.log10_k,
             enolate_fraction: e.enolate_fraction,
-            sites: e.sites.into_iter().map(TryInto::try_into).collect::<Result<_, _>>()?,
+            sites: e
+                .sites
+                .into_iter()
+                .map(TryInto::try_into)
+                .collect::<Result<_, _>>()?,
             rates: e.rates.into_iter().map(Into::into).collect(),
             losses: e.losses.iter().map(loss_from).collect::<Result<_, _>>()?,
             course: e.course.into_iter().map(Into::into).collect(),
-            cautions: e.cautions.into_iter().map(TryInto::try_into).collect::<Result<_, _>>()?,
+            cautions: e
+                .cautions
+                .into_iter()
+                .map(TryInto::try_into)
+                .collect::<Result<_, _>>()?,
             limits: e.limits,
             advice: e.advice.into_iter().map(Into::into).collect(),
             model: e.model,
@@ -72,12 +80,14 @@ impl TryFrom<v1::Explanation> for Explanation {
 }
 
 fn loss((channel, fraction): &(Channel, f64)) -> v1::Loss {
-    v1::Loss { channel: v1::Channel::from(*channel).into(), fraction: *fraction }
+    v1::Loss {
+        channel: v1::Channel::from(*channel).into(),
+        fraction: *fraction,
+    }
 }
 
 fn loss_from(loss: &v1::Loss) -> Result<(Channel, f64), ConversionError> {
-    let channel =
-        enums::from_wire::<_, v1::Channel>("Loss.channel", &Channel::ALL, loss.channel)?;
+    let channel = enums::from_wire::<_, v1::Channel>("Loss.channel", &Channel::ALL, loss.channel)?;
     Ok((channel, loss.fraction))
 }
 
@@ -93,7 +103,9 @@ impl From<&ExplainedSite> for v1::ExplainedSite {
     fn from(site: &ExplainedSite) -> Self {
         let molecule = MOLECULES.iter().find(|(name, _)| *name == site.molecule);
         v1::ExplainedSite {
-            molecule: molecule.map_or(v1::CellMolecule::Unspecified, |(_, value)| *value).into(),
+            molecule: molecule
+                .map_or(v1::CellMolecule::Unspecified, |(_, value)| *value)
+                .into(),
             atom: numbers::index_to_wire(site.atom),
             element: site.element.to_owned(),
             hydrogens: site.hydrogens.into(),
@@ -110,7 +122,9 @@ impl TryFrom<v1::ExplainedSite> for ExplainedSite {
     type Error = ConversionError;
 
     fn try_from(site: v1::ExplainedSite) -> Result<Self, ConversionError> {
-        let molecule = MOLECULES.iter().find(|(_, value)| *value as i32 == site.molecule);
+        let molecule = MOLECULES
+            .iter()
+            .find(|(_, value)| *value as i32 == site.molecule);
         let (molecule, _) = molecule.ok_or(ConversionError::Unknown {
             field: "ExplainedSite.molecule",
             value: site.molecule.to_string(),
@@ -141,9 +155,10 @@ const ELEMENTS: [&str; 19] = [
 
 fn element(symbol: String) -> Result<&'static str, ConversionError> {
     let known = ELEMENTS.iter().find(|element| **element == symbol);
-    known
-        .copied()
-        .ok_or(ConversionError::Unknown { field: "ExplainedSite.element", value: symbol })
+    known.copied().ok_or(ConversionError::Unknown {
+        field: "ExplainedSite.element",
+        value: symbol,
+    })
 }
 
 impl From<&ExplainedRate> for v1::ExplainedRate {
@@ -224,13 +239,19 @@ impl TryFrom<v1::Caution> for Caution {
 
 impl From<&Advice> for v1::Advice {
     fn from(advice: &Advice) -> Self {
-        v1::Advice { change: advice.change.clone(), expected_yield: advice.expected_yield }
+        v1::Advice {
+            change: advice.change.clone(),
+            expected_yield: advice.expected_yield,
+        }
     }
 }
 
 impl From<v1::Advice> for Advice {
     fn from(advice: v1::Advice) -> Self {
-        Advice { change: advice.change, expected_yield: advice.expected_yield }
+        Advice {
+            change: advice.change,
+            expected_yield: advice.expected_yield,
+        }
     }
 }
 
@@ -291,7 +312,10 @@ mod tests {
                 text: "the base catches fire in air".into(),
             }],
             limits: vec!["the attack is slow".into()],
-            advice: vec![Advice { change: "solvent THF → DMF".into(), expected_yield: 0.86 }],
+            advice: vec![Advice {
+                change: "solvent THF → DMF".into(),
+                expected_yield: 0.86,
+            }],
             model: "ef".into(),
         }
     }
@@ -299,15 +323,18 @@ mod tests {
     #[test]
     fn explanations_come_back() {
         let explanation = explanation();
-        let back =
-            Explanation::try_from(v1::Explanation::from(&explanation)).expect("converts");
+        let back = Explanation::try_from(v1::Explanation::from(&explanation)).expect("converts");
         assert_eq!(format!("{back:?}"), format!("{explanation:?}"));
     }
 
     #[test]
     fn unknown_numbers_stay_unknown() {
-        let explanation =
-            Explanation { expected_yield: None, p_hit: None, log10_k: None, ..explanation() };
+        let explanation = Explanation {
+            expected_yield: None,
+            p_hit: None,
+            log10_k: None,
+            ..explanation()
+        };
         let message = v1::Explanation::from(&explanation);
         assert_eq!(message.expected_yield, None);
         let back = Explanation::try_from(message).expect("converts");
@@ -316,10 +343,16 @@ mod tests {
 
     #[test]
     fn unknown_values_of_closed_lists_are_named() {
-        let loss = v1::Loss { channel: 99, fraction: 0.5 };
+        let loss = v1::Loss {
+            channel: 99,
+            fraction: 0.5,
+        };
         assert_eq!(
             loss_from(&loss),
-            Err(ConversionError::Unknown { field: "Loss.channel", value: "99".into() })
+            Err(ConversionError::Unknown {
+                field: "Loss.channel",
+                value: "99".into()
+            })
         );
     }
 }

@@ -29,14 +29,11 @@ impl TryFrom<v1::Job> for Job {
     type Error = ConversionError;
 
     fn try_from(job: v1::Job) -> Result<Self, ConversionError> {
-        let submitted =
-            job.submit_time.ok_or(ConversionError::Missing { field: "Job.submit_time" })?;
+        let submitted = job.submit_time.ok_or(ConversionError::Missing {
+            field: "Job.submit_time",
+        })?;
         Ok(Job {
-            state: enums::from_wire::<_, v1::JobState>(
-                "Job.state",
-                &enums::JOB_STATES,
-                job.state,
-            )?,
+            state: enums::from_wire::<_, v1::JobState>("Job.state", &enums::JOB_STATES, job.state)?,
             cells: numbers::from_wire("Job.cells", job.cells)?,
             cells_done: numbers::from_wire("Job.cells_done", job.cells_done)?,
             submitted_unix_ms: unix_ms("Job.submit_time", &submitted)?,
@@ -68,7 +65,10 @@ fn unix_ms(field: &'static str, time: &Timestamp) -> Result<u64, ConversionError
     seconds
         .checked_mul(1000)
         .and_then(|ms| ms.checked_add(nanos / 1_000_000))
-        .ok_or(ConversionError::OutOfRange { field, value: time.seconds })
+        .ok_or(ConversionError::OutOfRange {
+            field,
+            value: time.seconds,
+        })
 }
 
 #[cfg(test)]
@@ -101,16 +101,26 @@ mod tests {
 
     #[test]
     fn unknown_yield_and_end_stay_unknown() {
-        let job = Job { best_yield: None, ended_unix_ms: None, ..job() };
+        let job = Job {
+            best_yield: None,
+            ended_unix_ms: None,
+            ..job()
+        };
         assert_eq!(Job::try_from(v1::Job::from(&job)), Ok(job));
     }
 
     #[test]
     fn negative_counts_are_refused() {
-        let message = v1::Job { cells: -1, ..v1::Job::from(&job()) };
+        let message = v1::Job {
+            cells: -1,
+            ..v1::Job::from(&job())
+        };
         assert_eq!(
             Job::try_from(message),
-            Err(ConversionError::OutOfRange { field: "Job.cells", value: -1 })
+            Err(ConversionError::OutOfRange {
+                field: "Job.cells",
+                value: -1
+            })
         );
     }
 }

@@ -15,7 +15,9 @@ impl From<&ReagentRow> for v1::LibraryReagent {
     fn from(row: &ReagentRow) -> Self {
         let kind = KINDS.iter().find(|(name, _)| *name == row.kind);
         v1::LibraryReagent {
-            kind: kind.map_or(v1::ReagentKind::Unspecified, |(_, kind)| *kind).into(),
+            kind: kind
+                .map_or(v1::ReagentKind::Unspecified, |(_, kind)| *kind)
+                .into(),
             name: row.name.clone(),
             synonyms: row.synonyms.clone(),
             cas: row.cas.clone(),
@@ -30,12 +32,13 @@ impl TryFrom<v1::LibraryReagent> for ReagentRow {
     type Error = ConversionError;
 
     fn try_from(reagent: v1::LibraryReagent) -> Result<Self, ConversionError> {
-        let (kind, _) = KINDS.iter().find(|(_, kind)| *kind as i32 == reagent.kind).ok_or(
-            ConversionError::Unknown {
+        let (kind, _) = KINDS
+            .iter()
+            .find(|(_, kind)| *kind as i32 == reagent.kind)
+            .ok_or(ConversionError::Unknown {
                 field: "LibraryReagent.kind",
                 value: reagent.kind.to_string(),
-            },
-        )?;
+            })?;
         Ok(ReagentRow {
             kind: (*kind).to_owned(),
             name: reagent.name,
@@ -64,7 +67,10 @@ mod tests {
                 facts: "pKa 35.7".into(),
                 h_codes: vec!["H250".into()],
             };
-            assert_eq!(ReagentRow::try_from(v1::LibraryReagent::from(&row)), Ok(row));
+            assert_eq!(
+                ReagentRow::try_from(v1::LibraryReagent::from(&row)),
+                Ok(row)
+            );
         }
     }
 }

@@ -24,9 +24,14 @@ impl From<&RankQuery> for v1::RankCellsRequest {
             page_size: query.page_size.min(MAX_PAGE_SIZE) as i32,
             page_token: query.page_token.clone(),
             skip: numbers::to_wire(query.skip),
-            order_by: order.map(|(text, _)| (*text).to_owned()).unwrap_or_default(),
+            order_by: order
+                .map(|(text, _)| (*text).to_owned())
+                .unwrap_or_default(),
             filter: query.filter.clone(),
-            best_per: query.best_per.map_or(v1::Axis::Unspecified, Into::into).into(),
+            best_per: query
+                .best_per
+                .map_or(v1::Axis::Unspecified, Into::into)
+                .into(),
         }
     }
 }
@@ -37,10 +42,16 @@ impl TryFrom<v1::RankCellsRequest> for RankQuery {
     fn try_from(request: v1::RankCellsRequest) -> Result<Self, Vec<InputError>> {
         let mut faults = Vec::new();
         let mut told = |fault| faults.push(fault);
-        let page_size = page_size(request.page_size).map_err(&mut told).unwrap_or_default();
+        let page_size = page_size(request.page_size)
+            .map_err(&mut told)
+            .unwrap_or_default();
         let skip = skip(request.skip).map_err(&mut told).unwrap_or_default();
-        let order = order(&request.order_by).map_err(&mut told).unwrap_or_default();
-        let best_per = best_per(request.best_per).map_err(&mut told).unwrap_or_default();
+        let order = order(&request.order_by)
+            .map_err(&mut told)
+            .unwrap_or_default();
+        let best_per = best_per(request.best_per)
+            .map_err(&mut told)
+            .unwrap_or_default();
         if !faults.is_empty() {
             return Err(faults);
         }
@@ -94,7 +105,10 @@ fn order(order_by: &str) -> Result<Order, InputError> {
             "order_by",
             order_by,
             "there is no such order",
-            format!("use one of {}", ORDERS.map(|(text, _)| format!("`{text}`")).join(", ")),
+            format!(
+                "use one of {}",
+                ORDERS.map(|(text, _)| format!("`{text}`")).join(", ")
+            ),
         )
     })
 }
@@ -127,7 +141,11 @@ impl TryFrom<v1::RankCellsResponse> for RankPage {
 
     fn try_from(page: v1::RankCellsResponse) -> Result<Self, ConversionError> {
         Ok(RankPage {
-            rows: page.cells.into_iter().map(TryInto::try_into).collect::<Result<_, _>>()?,
+            rows: page
+                .cells
+                .into_iter()
+                .map(TryInto::try_into)
+                .collect::<Result<_, _>>()?,
             next_page_token: page.next_page_token,
             total: numbers::from_wire("RankCellsResponse.total_size", page.total_size)?,
             cells_done: numbers::from_wire("RankCellsResponse.cells_done", page.cells_done)?,
@@ -150,8 +168,15 @@ impl From<&RankedCell> for v1::RankedCell {
             p_hit: cell.p_hit,
             feasibility: cell.feasibility,
             selectivity: cell.selectivity,
-            largest_loss: cell.largest_loss.map_or(v1::Channel::Unspecified, Into::into).into(),
-            cautions: cell.cautions.iter().map(|name| category(name).into()).collect(),
+            largest_loss: cell
+                .largest_loss
+                .map_or(v1::Channel::Unspecified, Into::into)
+                .into(),
+            cautions: cell
+                .cautions
+                .iter()
+                .map(|name| category(name).into())
+                .collect(),
             severity: severity(cell.severity.as_deref()).into(),
         }
     }
@@ -172,12 +197,16 @@ fn conditions_of(cell: &RankedCell) -> v1::CellConditions {
 }
 
 fn category(name: &str) -> v1::CautionCategory {
-    let known = Category::ALL.into_iter().find(|category| category.name() == name);
+    let known = Category::ALL
+        .into_iter()
+        .find(|category| category.name() == name);
     known.map_or(v1::CautionCategory::Unspecified, Into::into)
 }
 
 fn severity(name: Option<&str>) -> v1::CautionSeverity {
-    let known = Severity::ALL.into_iter().find(|severity| Some(severity.name()) == name);
+    let known = Severity::ALL
+        .into_iter()
+        .find(|severity| Some(severity.name()) == name);
     known.map_or(v1::CautionSeverity::Unspecified, Into::into)
 }
 
@@ -276,7 +305,10 @@ mod tests {
             total: 99,
             cells_done: 120,
         };
-        assert_eq!(RankPage::try_from(v1::RankCellsResponse::from(&page)), Ok(page));
+        assert_eq!(
+            RankPage::try_from(v1::RankCellsResponse::from(&page)),
+            Ok(page)
+        );
     }
 
     #[test]
@@ -291,7 +323,10 @@ mod tests {
                 skip: 11,
                 best_per: Some(Axis::Solvent),
             };
-            assert_eq!(RankQuery::try_from(v1::RankCellsRequest::from(&query)), Ok(query));
+            assert_eq!(
+                RankQuery::try_from(v1::RankCellsRequest::from(&query)),
+                Ok(query)
+            );
         }
     }
 
@@ -312,7 +347,10 @@ mod tests {
             ..Default::default()
         };
         let faults = RankQuery::try_from(request).expect_err("is refused");
-        let fields: Vec<_> = faults.iter().map(|fault| fault.place.field.as_str()).collect();
+        let fields: Vec<_> = faults
+            .iter()
+            .map(|fault| fault.place.field.as_str())
+            .collect();
         assert_eq!(fields, ["page_size", "skip", "order_by", "best_per"]);
     }
 }

@@ -1,0 +1,85 @@
+//! Conditions and target of a specification: checked, defaults filled in, repeats merged.
+
+use enolattice_model::Addition;
+
+use crate::conditions::{CONDITIONS, YIELD_AT_LEAST};
+use crate::fault::Faults;
+use crate::resolve;
+use crate::warnings::Warnings;
+use crate::{CampaignSpec, FaultCode, Place};
+
+/// The axes of numbers, in the order of [`CONDITIONS`], with defaults where nothing is given.
+pub(crate) fn numbers(
+    spec: &CampaignSpec,
+    faults: &mut Faults,
+    warnings: &mut Warnings,
+) -> [Vec<f64>; 7] {
+    let axes = spec.conditions.axes();
+    std::array::from_fn(|axis| {
+        let quantity = &CONDITIONS[axis];
+        let mut values: Vec<f64> = Vec::with_capacity(axes[axis].len());
+        for (i, value) in axes[axis].iter().enumerate() {
+            match quantity.check(*value) {
+                Ok(value) if values.contains(&value) => {
+                    warnings.merged(quantity.name(), &value.to_string(), &value.to_string());
+                }
+                Ok(value) => values.push(value),
+                Err(reason) => {
+                    let place = Place::of_field(&format!("{}[{i}]", quantity.key));
+                    let remedy = "give a number in this range";
+                    faults.note(
+                        FaultCode::ValueOutOfRange,
+                        place,
+                        &value.to_string(),
+                        reason,
+                        remedy,
+                    );
+                }
+            }
+        }
+        if axes[axis].is_empty() {
+            values.extend(quantity.default);
+        }
+        values
+    })
+}
+
+/// The orders of addition; the usual one of each base where none is given.
+pub(crate) fn additions(
+    names: &[String],
+    faults: &mut Faults,
+    warnings: &mut Warnings,
+) -> Vec<Option<Addition>> {
+    let mut orders = Vec::new();
+    for (i, name) in names.iter().enumerate() {
+        let place = Place::of_field(&format!("conditions.addition[{i}]"));
+        let Some(order) = resolve::addition(name, place, faults) else {
+            continue;
+        };
+        if orders.contains(&Some(order)) {
+            warnings.merged("addition", name, name);
+        } else {
+            orders.push(Some(order));
+        }
+    }
+    if names.is_empty() { vec![None] } else { orders }
+}
+
+/// The yield that makes a hit.
+pub(crate) fn target(yield_at_least: Option<f64>, faults: &mut Faults) -> f64 {
+    let value = yield_at_least
+        .or(YIELD_AT_LEAST.default)
+        .unwrap_or_default();
+    YIELD_AT_LEAST.check(value).unwrap_or_else(|reason| {
+        let place = Place::of_field(YIELD_AT_LEAST.key);
+        let remedy = "give a yield in this range; 0.5 is half";
+        faults.note(
+            FaultCode::ValueOutOfRange,
+            place,
+            &value.to_string(),
+            reason,
+            remedy,
+        );
+        value
+    })
+}

@@ -1,0 +1,236 @@
+//! Corrections for what the groups on a C–H site carry further out.
+
+use super::carbon::Surroundings;
+use super::descriptors::Descriptors;
+use super::group::{Group, beyond, double_bonded, group, is_saturated_carbon, is_trigonal};
+use super::hammett::{Conjugation, inductive, ring_sigma, six_ring};
+use super::skeleton::smallest_ring;
+use crate::Bond;
+
+impl Surroundings<'_> {
+    pub(super) fn aryl_terms(&self, descriptors: &mut Descriptors) {
+        let sharing = self.acceptors() + self.count(|kind| matches!(kind, Group::Aryl));
+        let sigma_name = match sharing {
+            0 | 1 => "σ of aryl, alone",
+            2 => "σ of aryl, charge shared by two",
+            _ => "σ of aryl, charge shared by three",
+        };
+        for aryl in self.with(|kind| kind == Group::Aryl) {
+            let in_site_ring = self.in_cyclopentadiene
+                && smallest_ring(self.molecule, &[aryl, self.site]) == Some(5);
+            match six_ring(self.molecule, aryl) {
+                Some(ring) => {
+                    let sigma = ring_sigma(self.molecule, aryl, Conjugation::Direct);
+                    descriptors.add(sigma_name, sigma);
+                    if !in_site_ring {
+                        let fused = self.fused_rings(ring);
+                        let name = if self.acceptors() == 0 {
+                            "ring fused to aryl, no acceptor"
+                        } else {
+                            "ring fused to aryl, with acceptor"
+                        };
+                        descriptors.add(name, fused as f64);
+                    }
+                }
+                None => descriptors.add("five-membered heteroaryl", 1.0),
+            }
+        }
+        if self.in_cyclopentadiene {
+            return;
+        }
+        let crowded = match (self.count(|kind| kind == Group::Aryl), self.acceptors()) {
+            (3, _) => "third aryl",
+            (2, 1..) => "second aryl beside acceptor",
+            (1, 2..) if self.count(Group::is_carbonyl) >= 2 => "aryl between carbonyls",
+            _ => return,
+        };
+        descriptors.add(crowded, 1.0);
+    }
+
+    fn fused_rings(&self, ring: &[usize]) -> usize {
+        self.molecule
+            .rings()
+            .iter()
+            .filter(|other| {
+                other.as_slice() != ring
+                    && other
+                        .iter()
+                        .all(|atom| self.molecule.atoms()[*atom].aromatic)
+                    && other.iter().filter(|atom| ring.contains(atom)).count() == 2
+            })
+            .count()
+    }
+
+    pub(super) fn carbonyl_terms(&self, descriptors: &mut Descriptors) {
+        for (carbonyl, kind) in &self.groups {
+            if !kind.is_carbonyl() {
+                continue;
+            }
+            match kind {
+                Group::Aldehyde => descriptors.add("aldehyde in place of ketone", 1.0),
+                Group::Thioester => descriptors.add("sulfur in place of ester oxygen", 1.0),
+                _ => {}
+            }
+            let in_ring = smallest_ring(self.molecule, &[self.site, *carbonyl]).is_some();
+            for (far, bond) in beyond(self.molecule, *carbonyl, self.site) {
+                if bond != Bond::Single {
+                    continue;
+                }
+                match kind {
+                    Group::ArylKetone => {
+                        let sigma = ring_sigma(self.molecule, far, Conjugation::Insulated);
+                        descriptors.add("σ of aroyl", sigma);
+                    }
+                    Group::AlkylKetone => self.ketone_terms(descriptors, *carbonyl, far, in_ring),
+                    Group::Ester | Group::Thioester if !in_ring => {
+                        self.ester_terms(descriptors, *carbonyl, far)
+                    }
+                    Group::Amide => self.amide_terms(descriptors, *carbonyl, far),
+                    _ => {}
+                }
+            }
+        }
+    }
+
+    fn ketone_terms(
+        &self,
+        descriptors: &mut Descriptors,
+        carbonyl: usize,
+        far: usize,
+        in_ring: bool,
+    ) {
+        if is_saturated_carbon(self.molecule, far) {
+            descriptors.add(
+                "σI beyond carbonyl",
+                inductive(self.molecule, far, carbonyl),
+            );
+            if !in_ring {
+                let branches = beyond(self.molecule, far, carbonyl)
+                    .filter(|(atom, _)| is_saturated_carbon(self.molecule, *atom))
+                    .count();
+                descriptors.add("branch beyond carbonyl", branches as f64);
+            }
+        } else if is_trigonal(self.molecule, far) {
+            match group(self.molecule, far, carbonyl) {
+                Group::Vinyl => descriptors.add("vinyl beyond carbonyl", 1.0),
+                kind if kind.is_carbonyl() => descriptors.add("σI beyond carbonyl", 1.0),
+                _ => {}
+            }
+        }
+    }
+
+    fn ester_terms(&self, descriptors: &mut Descriptors, carbonyl: usize, oxygen: usize) {
+        for (carbon, _) in beyond(self.molecule, oxygen, carbonyl) {
+            if is_trigonal(self.molecule, carbon) {
+                descriptors.add("aryl ester", 1.0);
+            } else {
+                let branches = beyond(self.molecule, carbon, oxygen)
+                    .filter(|(atom, _)| is_saturated_carbon(self.molecule, *atom))
+                    .count();
+                descriptors.add("branch in ester alkyl", branches as f64);
+                descriptors.add(
+                    "σI in ester alkyl",
+                    inductive(self.molecule, carbon, oxygen),
+                );
+            }
+        }
+    }
+
+    fn amide_terms(&self, descriptors: &mut Descriptors, carbonyl: usize, nitrogen: usize) {
+        for (atom, _) in beyond(self.molecule, nitrogen, carbonyl) {
+            match group(self.molecule, atom, nitrogen) {
+                Group::Alkoxy => descriptors.add("alkoxy on amide nitrogen", 1.0),
+                Group::Aryl => descriptors.add("aryl on amide nitrogen", 1.0),
+                _ => {}
+            }
+        }
+    }
+
+    pub(super) fn sulfur_terms(&self, descriptors: &mut Descriptors) {
+        for (sulfur, kind) in &self.groups {
+            match kind {
+                Group::SulfonicEster => descriptors.add("sulfonic ester", 1.0),
+                Group::Sulfonamide => descriptors.add("sulfonamide", 1.0),
+                Group::SulfonylHalide => descriptors.add("sulfonyl halide", 1.0),
+                Group::Thiosulfonate => descriptors.add("thiosulfonate", 1.0),
+                Group::Sulfone | Group::Sulfoxide => {
+                    let alkyl = beyond(self.molecule, *sulfur, self.site)
+                        .any(|(atom, _)| is_saturated_carbon(self.molecule, atom));
+                    if alkyl {
+                        descriptors.add("alkyl on sulfonyl or sulfinyl", 1.0);
+                    }
+                }
+                _ => {}
+            }
+        }
+    }
+
+    pub(super) fn heteroatom_terms(&self, descriptors: &mut Descriptors) {
+        for (atom, kind) in &self.groups {
+            let name = match kind {
+                Group::Sulfanyl => "aryl on sulfanyl",
+                Group::Alkoxy => "aryl or acyl on alkoxy",
+                Group::Amino => "aryl or acyl on amino",
+                Group::Imino => {
+                    self.imino_terms(descriptors, *atom);
+                    continue;
+                }
+                _ => continue,
+            };
+            if self.molecule.atoms()[*atom].aromatic {
+                continue;
+            }
+            let drawn_away = beyond(self.molecule, *atom, self.site).any(|(far, _)| {
+                is_trigonal(self.molecule, far) || group(self.molecule, far, *atom).is_acceptor()
+            });
+            if drawn_away {
+                descriptors.add(name, 1.0);
+            }
+        }
+    }
+
+    fn imino_terms(&self, descriptors: &mut Descriptors, nitrogen: usize) {
+        if let Some(far) = double_bonded(self.molecule, nitrogen, 6) {
+            let aryls = beyond(self.molecule, far, nitrogen)
+                .filter(|(atom, _)| self.molecule.atoms()[*atom].aromatic)
+                .count();
+            let name = if self.acceptors() == 0 {
+                "aryl at far end of azaallyl, no acceptor"
+            } else {
+                "aryl at far end of azaallyl, with acceptor"
+            };
+            descriptors.add(name, aryls as f64);
+            let donors = beyond(self.molecule, far, nitrogen)
+                .filter(|(atom, _)| matches!(self.molecule.atoms()[*atom].element, 7 | 8 | 16))
+                .count();
+            descriptors.add("heteroatom at far end of azaallyl", donors as f64);
+        }
+    }
+
+    pub(super) fn vinyl_terms(&self, descriptors: &mut Descriptors) {
+        for vinyl in self.with(|kind| matches!(kind, Group::Vinyl)) {
+            let Some(far) = double_bonded(self.molecule, vinyl, 6) else {
+                continue;
+            };
+            let conjugated = beyond(self.molecule, far, vinyl)
+                .filter(|(atom, _)| {
+                    *atom != self.site
+                        && matches!(group(self.molecule, *atom, far), Group::Aryl | Group::Vinyl)
+                })
+                .count();
+            descriptors.add(
+                "aryl or vinyl at far end of vinyl",
+                conjugated.min(2) as f64,
+            );
+        }
+        for (_, kind) in &self.vinylogous {
+            let name = match kind {
+                Group::Nitro => "vinylogous nitro",
+                Group::Aldehyde | Group::AlkylKetone | Group::ArylKetone => "vinylogous ketone",
+                kind if kind.is_carbonyl() => "vinylogous ester",
+                _ => "vinylogous nitrile or sulfone",
+            };
+            descriptors.add(name, 1.0);
+        }
+    }
+}

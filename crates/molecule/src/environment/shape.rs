@@ -1,0 +1,190 @@
+//! Corrections for the shape of the carbanion: alkyl groups and rings at the site.
+
+use super::carbon::Surroundings;
+use super::descriptors::Descriptors;
+use super::group::{Group, beyond, group, is_saturated_carbon};
+use super::hammett::inductive;
+use super::skeleton::{Bridge, cyclopentadiene_ring, smallest_ring};
+
+impl Surroundings<'_> {
+    /// Alkyl in place of H: what it costs depends on what carries the charge.
+    pub(super) fn alkyl_terms(&self, descriptors: &mut Descriptors) {
+        let alkyls = self.count(|kind| kind == Group::Alkyl);
+        if alkyls == 0 {
+            return;
+        }
+        for alkyl in self.with(|kind| kind == Group::Alkyl) {
+            descriptors.add("σI of alkyl", inductive(self.molecule, alkyl, self.site));
+        }
+        if self.acceptors() >= 2 && !self.has(Group::Nitro) {
+            self.alkyl_between_acceptors(descriptors);
+            return;
+        }
+        let (name, count) = self.alkyl_beside_one(alkyls);
+        descriptors.add(name, count as f64);
+        if name == "first alkyl beside carbonyl" && alkyls > 1 {
+            descriptors.add("second alkyl beside carbonyl", 1.0);
+        }
+        if self.has(Group::Imino) {
+            descriptors.add("alkyl beside imino", alkyls as f64);
+        }
+    }
+
+    /// The correction for alkyl beside at most one acceptor, and how often it counts.
+    fn alkyl_beside_one(&self, alkyls: usize) -> (&'static str, usize) {
+        let one = self.acceptors() == 1;
+        if self.has(Group::Nitro) {
+            ("alkyl beside nitro", alkyls)
+        } else if one && self.has(Group::Aldehyde) {
+            ("alkyl beside aldehyde", alkyls)
+        } else if one && self.has(Group::Aryl) {
+            ("alkyl beside aryl and acceptor", alkyls)
+        } else if one && self.carbonyl_in_ring_of_site() {
+            ("alkyl branch in ring beside carbonyl", alkyls - 1)
+        } else if one && self.count(Group::is_carbonyl) == 1 {
+            ("first alkyl beside carbonyl", 1)
+        } else if one && self.has(Group::Nitrile) {
+            ("alkyl beside nitrile", alkyls)
+        } else if one {
+            ("alkyl beside sulfonyl or phosphonyl", alkyls)
+        } else {
+            ("alkyl on hydrocarbon acid", alkyls)
+        }
+    }
+
+    fn alkyl_between_acceptors(&self, descriptors: &mut Descriptors) {
+        if self.between_ring_carbonyls().is_some() {
+            return;
+        }
+        if self.carbonyl_in_ring_of_site() {
+            descriptors.add("ring alkyl between acceptors", 1.0);
+            return;
+        }
+        descriptors.add("alkyl between acceptors", 1.0);
+        for alkyl in self.with(|kind| kind == Group::Alkyl) {
+            let branches = beyond(self.molecule, alkyl, self.site)
+                .filter(|(atom, _)| is_saturated_carbon(self.molecule, *atom))
+                .count();
+            let in_ring = smallest_ring(self.molecule, &[self.site, alkyl]).is_some();
+            if branches >= 2 && !in_ring {
+                descriptors.add("branched alkyl between acceptors", (branches - 1) as f64);
+            }
+        }
+    }
+
+    fn carbonyl_in_ring_of_site(&self) -> bool {
+        self.with(Group::is_carbonyl)
+            .any(|carbonyl| smallest_ring(self.molecule, &[self.site, carbonyl]).is_some())
+    }
+
+    pub(super) fn between_ring_carbonyls(&self) -> Option<bool> {
+        let carbonyls: Vec<_> = self
+            .groups
+            .iter()
+            .filter(|(_, kind)| kind.is_carbonyl())
+            .collect();
+        for (i, (first, first_kind)) in carbonyls.iter().enumerate() {
+            for (second, second_kind) in &carbonyls[i + 1..] {
+                if smallest_ring(self.molecule, &[*first, self.site, *second])
+                    .is_some_and(|size| size < 9)
+                {
+                    let diester = [first_kind, second_kind]
+                        .iter()
+                        .all(|kind| matches!(kind, Group::Ester | Group::Imide));
+                    return Some(diester);
+                }
+            }
+        }
+        None
+    }
+
+    pub(super) fn ring_terms(&self, descriptors: &mut Descriptors) {
+        let molecule = self.molecule;
+        if let Some(ring) = cyclopentadiene_ring(molecule, self.site) {
+            descriptors.add("cyclopentadienide ring", 1.0);
+            self.cyclopentadiene_substituents(descriptors, ring);
+            return;
+        }
+        match self.between_ring_carbonyls() {
+            Some(true) => descriptors.add("between two esters of a ring", 1.0),
+            Some(false) => descriptors.add("between two carbonyls of a ring", 1.0),
+            None => self.one_carbonyl_in_ring(descriptors),
+        }
+        if smallest_ring(molecule, &[self.site]) == Some(3) {
+            let name = if self.has(Group::Nitro) {
+                "cyclopropane beside nitro"
+            } else if self.count(Group::is_carbonyl) > 0 {
+                "cyclopropane beside carbonyl"
+            } else {
+                "cyclopropane beside other acceptor"
+            };
+            descriptors.add(name, 1.0);
+        }
+        match self.bridge {
+            Bridge::Spanning => descriptors.add("in bridged bicycle", 1.0),
+            Bridge::StrainedHead => descriptors.add("at bridgehead", 1.0),
+            _ => {}
+        }
+    }
+
+    fn one_carbonyl_in_ring(&self, descriptors: &mut Descriptors) {
+        let molecule = self.molecule;
+        for (carbonyl, kind) in self.groups.iter().filter(|(_, kind)| kind.is_carbonyl()) {
+            let Some(size) = smallest_ring(molecule, &[self.site, *carbonyl]) else {
+                continue;
+            };
+            let aryl_in_ring = self
+                .with(|kind| kind == Group::Aryl)
+                .find(|aryl| smallest_ring(molecule, &[*aryl, self.site, *carbonyl]) == Some(size));
+            let fused = aryl_in_ring.and_then(|aryl| self.arene_fused(aryl, *carbonyl, size));
+            let name = match (fused, kind) {
+                (Some(name), _) => name,
+                (None, Group::Ester) => "lactone",
+                (None, Group::AlkylKetone | Group::ArylKetone) => match size {
+                    ..=5 => "ketone in ring of four or five",
+                    6 => "ketone in ring of six",
+                    7..=9 => "ketone in ring of seven to nine",
+                    _ => "ketone in large ring",
+                },
+                _ => continue,
+            };
+            descriptors.add(name, 1.0);
+        }
+    }
+
+    fn arene_fused(&self, aryl: usize, carbonyl: usize, size: usize) -> Option<&'static str> {
+        let hetero = self.molecule.rings().iter().any(|ring| {
+            ring.len() == size
+                && [aryl, self.site, carbonyl]
+                    .iter()
+                    .all(|atom| ring.contains(atom))
+                && ring
+                    .iter()
+                    .any(|atom| self.molecule.atoms()[*atom].element != 6)
+        });
+        match (size, hetero) {
+            (..=4, _) => Some("antiaromatic enolate"),
+            (5, true) => Some("enolate becomes indole or benzofuran"),
+            (5, false) => Some("enolate becomes indene"),
+            _ => None,
+        }
+    }
+
+    fn cyclopentadiene_substituents(&self, descriptors: &mut Descriptors, ring: &[usize]) {
+        for member in ring.iter().filter(|member| **member != self.site) {
+            if self.molecule.atoms()[*member].aromatic {
+                continue;
+            }
+            for (other, _) in self.molecule.neighbours(*member) {
+                if ring.contains(other) {
+                    continue;
+                }
+                match group(self.molecule, *other, *member) {
+                    Group::Alkyl => descriptors.add("alkyl on cyclopentadienide", 1.0),
+                    Group::Aryl => descriptors.add("aryl on cyclopentadienide", 1.0),
+                    _ => {}
+                }
+            }
+        }
+    }
+}

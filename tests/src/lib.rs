@@ -1,1 +1,0 @@
-//! System tests of enolattice: see the files beside this one.

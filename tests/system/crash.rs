@@ -1,0 +1,155 @@
+//! The binary is killed in mid-job and takes its job up again.
+
+use std::io::{BufRead, BufReader};
+use std::path::{Path, PathBuf};
+use std::process::{Child, Command, Stdio};
+
+use enolattice_engine::JobState;
+use enolattice_wire::Client;
+
+use crate::campaigns::{long, submission};
+use crate::live::{all_of, open, pages, watched};
+
+/// A server process; killed when dropped.
+struct Server {
+    process: Child,
+    client: Client,
+}
+
+impl Server {
+    async fn start(data: &Path) -> Server {
+        let mut process = Command::new(binary())
+            .args([
+                "serve",
+                "--listen",
+                "127.0.0.1:0",
+                "--threads",
+                "1",
+                "--data",
+            ])
+            .arg(data)
+            .stdout(Stdio::piped())
+            .spawn()
+            .expect("the binary starts");
+        let mut line = String::new();
+        let stdout = process.stdout.take().expect("is piped");
+        BufReader::new(stdout).read_line(&mut line).expect("a line");
+        let address = line
+            .trim()
+            .strip_prefix("listening on ")
+            .expect("says where it listens");
+        let client = Client::connect(address).await.expect("connects");
+        Server { process, client }
+    }
+
+    /// SIGKILL: no handler, no flush.
+    fn kill(&mut self) {
+        self.process.kill().expect("runs");
+        self.process.wait().expect("has ended");
+    }
+}
+
+impl Drop for Server {
+    fn drop(&mut self) {
+        // Already dead after `kill`.
+        let _ = self.process.kill();
+        let _ = self.process.wait();
+    }
+}
+
+/// Builds the binary in the profile of this test and gives its path.
+fn binary() -> PathBuf {
+    let test = std::env::current_exe().expect("a path");
+    let profile = test.ancestors().nth(2).expect("target/PROFILE/deps/TEST");
+    let mut build = Command::new(env!("CARGO"));
+    build.args(["build", "--quiet", "--package", "enolattice-cli"]);
+    build
+        .arg("--target-dir")
+        .arg(profile.parent().expect("target"));
+    if profile.ends_with("release") {
+        build.arg("--release");
+    }
+    let built = build
+        .current_dir(env!("CARGO_MANIFEST_DIR"))
+        .status()
+        .expect("cargo runs");
+    assert!(built.success(), "the binary does not build");
+    profile
+        .join("enolattice")
+        .with_extension(std::env::consts::EXE_EXTENSION)
+}
+
+/// Kills the server as soon as the job has got further and is not at its end.
+async fn kill_in_mid_job(mut server: Server, job: &str, further_than: u64) -> u64 {
+    let mut watch = server.client.watch(job).await.expect("is watched");
+    loop {
+        let job = watch.next().await.expect("no error").expect("not ended");
+        assert!(
+            !job.state.is_ended(),
+            "the job is too small to be killed in its middle"
+        );
+        if job.cells_done > further_than {
+            server.kill();
+            return job.cells_done;
+        }
+    }
+}
+
+#[tokio::test(flavor = "multi_thread")]
+async fn a_killed_engine_takes_its_job_up_again() {
+    let campaign = long(10);
+    let data = tempfile::tempdir().expect("a directory");
+    let server = Server::start(data.path()).await;
+    let job = server
+        .client
+        .submit(submission(campaign.clone()))
+        .await
+        .expect("is accepted")
+        .job;
+    let before = kill_in_mid_job(server, &job, 0).await;
+
+    let server = Server::start(data.path()).await;
+    let resumed = server.client.job(&job).await.expect("is still known");
+    assert!(resumed.cells_done >= before, "acknowledged cells stay");
+    kill_in_mid_job(server, &job, resumed.cells_done).await;
+
+    let server = Server::start(data.path()).await;
+    let ended = watched(&server.client, &job)
+        .await
+        .pop()
+        .expect("a final state");
+    assert_eq!(
+        (ended.state, ended.cells_done),
+        (JobState::Done, ended.cells)
+    );
+    let ranking = pages(&server.client, all_of(&job, 1000))
+        .await
+        .expect("a ranking");
+
+    let elsewhere = tempfile::tempdir().expect("a directory");
+    let engine = open(elsewhere.path()).await;
+    let job = engine
+        .submit(submission(campaign))
+        .await
+        .expect("is accepted");
+    let mut states = engine.watch(&job.job).await.expect("is watched");
+    states
+        .wait_for(|job| job.state.is_ended())
+        .await
+        .expect("ends");
+    let mut query = all_of(&job.job, 1000);
+    let mut uninterrupted = Vec::new();
+    loop {
+        let page = engine.rank(query.clone()).await.expect("a page");
+        uninterrupted.extend(page.rows);
+        query.page_token = page.next_page_token;
+        if query.page_token.is_empty() {
+            break;
+        }
+    }
+    assert_eq!(ranking.len() as u64, ended.cells);
+    assert!(
+        ranking == uninterrupted,
+        "the ranking after two kills differs"
+    );
+}

@@ -1,0 +1,12 @@
+//! System tests: a real server with a real client, crash runs, the direction of the crates.
+//!
+//! What needs Python is in `python/`.
+
+mod campaigns;
+mod crash;
+mod directions;
+mod lifecycle;
+mod live;
+mod ranking;
+mod refusals;
+mod standards;

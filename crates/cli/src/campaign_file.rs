@@ -15,21 +15,35 @@ const LARGEST_BYTES: u64 = 256 << 20;
 pub(crate) fn read_campaign(path: &Path) -> Result<CampaignSpec, Fault> {
     let shown = path.display().to_string();
     let bytes = read_file(path).map_err(|reason| unreadable(&shown, &reason))?;
-    let campaign = String::from_utf8(bytes).map_err(|_| unreadable(&shown, "it is no UTF-8 text"))?;
+    let campaign =
+        String::from_utf8(bytes).map_err(|_| unreadable(&shown, "it is no UTF-8 text"))?;
     let folder = path.parent().map_or_else(PathBuf::new, Path::to_path_buf);
     let mut files = BTreeMap::new();
     for name in files_named(&campaign) {
         // A file that cannot be read stays out: the campaign's reader knows the line that names it.
         match read_file(&folder.join(&name)) {
             Ok(bytes) => drop(files.insert(name, bytes)),
-            Err(reason) => crate::output::talk(&format!("{}: {reason}", folder.join(&name).display())),
+            Err(reason) => {
+                crate::output::talk(&format!("{}: {reason}", folder.join(&name).display()))
+            }
         }
     }
-    read(&Sources { campaign_name: shown, campaign, files }).map_err(Fault::Input)
+    read(&Sources {
+        campaign_name: shown,
+        campaign,
+        files,
+    })
+    .map_err(Fault::Input)
 }
 
 fn unreadable(path: &str, reason: &str) -> Fault {
-    Fault::option("FILE", path, "FILE_MISSING", reason, "give the path of a campaign in TOML")
+    Fault::option(
+        "FILE",
+        path,
+        "FILE_MISSING",
+        reason,
+        "give the path of a campaign in TOML",
+    )
 }
 
 fn read_file(path: &Path) -> Result<Vec<u8>, String> {
@@ -38,7 +52,10 @@ fn read_file(path: &Path) -> Result<Vec<u8>, String> {
         return Err("it is no file".to_owned());
     }
     if about.len() > LARGEST_BYTES {
-        return Err(format!("it has {} bytes, more than {LARGEST_BYTES}", about.len()));
+        return Err(format!(
+            "it has {} bytes, more than {LARGEST_BYTES}",
+            about.len()
+        ));
     }
     fs::read(path).map_err(|error| error.to_string())
 }
@@ -46,7 +63,9 @@ fn read_file(path: &Path) -> Result<Vec<u8>, String> {
 /// The values of every `file` key of the axes; nothing where the text is no TOML, which the
 /// campaign's reader reports.
 fn files_named(campaign: &str) -> Vec<String> {
-    let Ok(campaign) = campaign.parse::<toml::Table>() else { return Vec::new() };
+    let Ok(campaign) = campaign.parse::<toml::Table>() else {
+        return Vec::new();
+    };
     let axes = campaign.values().filter_map(toml::Value::as_table);
     axes.filter_map(|axis| axis.get("file"))
         .flat_map(|value| match value {

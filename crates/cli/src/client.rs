@@ -1,7 +1,8 @@
 //! An engine in this process or behind a server: the commands cannot tell them apart.
 
 use enolattice_engine::{
-    CellDescription, Engine, EngineConfig, ExplainTarget, Job, RankPage, RankQuery, ReagentRow, SiteReport, Submission,
+    CellDescription, Engine, EngineConfig, ExplainTarget, Job, RankPage, RankQuery, ReagentRow,
+    SiteReport, Submission,
 };
 use enolattice_model::Explanation;
 
@@ -46,9 +47,14 @@ impl Client {
     /// Opens the data directory or connects to the server.
     pub(crate) async fn open(options: &EngineOptions, need: Need) -> Result<Client, Fault> {
         if let Some(server) = &options.server {
-            return Ok(Client::Remote(enolattice_wire::Client::connect(server).await?));
+            return Ok(Client::Remote(
+                enolattice_wire::Client::connect(server).await?,
+            ));
         }
-        let config = EngineConfig { data_dir: options.data_dir(), threads: options.threads };
+        let config = EngineConfig {
+            data_dir: options.data_dir(),
+            threads: options.threads,
+        };
         Ok(Client::Embedded(match need {
             Need::Chemistry => Engine::without_data().await?,
             Need::Jobs => Engine::open_idle(config).await?,
@@ -77,7 +83,10 @@ impl Client {
 
     pub(crate) async fn watch(&self, job: &str) -> Result<Changes, Fault> {
         match self {
-            Client::Embedded(engine) => Ok(Changes::Embedded { receiver: engine.watch(job).await?, begun: false }),
+            Client::Embedded(engine) => Ok(Changes::Embedded {
+                receiver: engine.watch(job).await?,
+                begun: false,
+            }),
             Client::Remote(server) => Ok(Changes::Remote(server.watch(job).await?)),
         }
     }
@@ -102,9 +111,10 @@ impl Client {
         target: ExplainTarget,
     ) -> Result<(CellDescription, Explanation), Fault> {
         match self {
-            Client::Embedded(engine) => {
-                Ok((engine.describe(target.clone()).await?, engine.explain(target).await?))
-            }
+            Client::Embedded(engine) => Ok((
+                engine.describe(target.clone()).await?,
+                engine.explain(target).await?,
+            )),
             Client::Remote(server) => Ok(server.explain(target).await?),
         }
     }
@@ -136,7 +146,10 @@ impl Changes {
     /// The present state at first, then each change; none after the end.
     pub(crate) async fn next(&mut self) -> Result<Option<Job>, Fault> {
         match self {
-            Changes::Embedded { receiver, begun: begun @ false } => {
+            Changes::Embedded {
+                receiver,
+                begun: begun @ false,
+            } => {
                 *begun = true;
                 Ok(Some(receiver.borrow_and_update().clone()))
             }

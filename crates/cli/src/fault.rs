@@ -32,9 +32,18 @@ impl Fault {
     }
 
     /// One fault of one option or argument.
-    pub(crate) fn option(field: &str, value: &str, code: &'static str, reason: &str, remedy: &str) -> Fault {
+    pub(crate) fn option(
+        field: &str,
+        value: &str,
+        code: &'static str,
+        reason: &str,
+        remedy: &str,
+    ) -> Fault {
         Fault::Input(vec![InputError {
-            place: Place { field: field.to_owned(), ..Place::default() },
+            place: Place {
+                field: field.to_owned(),
+                ..Place::default()
+            },
             value: value.to_owned(),
             code,
             reason: reason.to_owned(),
@@ -59,7 +68,9 @@ impl Fault {
 impl fmt::Display for Fault {
     fn fmt(&self, f: &mut fmt::Formatter<'_>) -> fmt::Result {
         match self {
-            Fault::Job(reason) | Fault::Asked(reason) | Fault::Service(reason) => write!(f, "error: {reason}"),
+            Fault::Job(reason) | Fault::Asked(reason) | Fault::Service(reason) => {
+                write!(f, "error: {reason}")
+            }
             Fault::Input(faults) => {
                 let lines: Vec<String> = faults.iter().map(ToString::to_string).collect();
                 write!(f, "{}", lines.join("\n"))
@@ -85,7 +96,10 @@ impl From<RemoteError> for Fault {
         let reason = error.to_string();
         match error {
             RemoteError::Input(faults) => Fault::Input(faults),
-            RemoteError::Refused { reason: ErrorReason::ModelFailed, .. } => Fault::Job(reason),
+            RemoteError::Refused {
+                reason: ErrorReason::ModelFailed,
+                ..
+            } => Fault::Job(reason),
             error if error.is_callers_fault() => Fault::Asked(reason),
             _ => Fault::Service(reason),
         }

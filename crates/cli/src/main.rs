@@ -19,9 +19,15 @@ use clap::Parser;
 fn main() -> ExitCode {
     let program = commands::Program::parse();
     commands::start_log(&program);
-    let runtime = match tokio::runtime::Builder::new_multi_thread().worker_threads(2).enable_all().build() {
+    let runtime = match tokio::runtime::Builder::new_multi_thread()
+        .worker_threads(2)
+        .enable_all()
+        .build()
+    {
         Ok(runtime) => runtime,
-        Err(error) => return fault::Fault::service(format!("no threads can be started: {error}")).report(),
+        Err(error) => {
+            return fault::Fault::service(format!("no threads can be started: {error}")).report();
+        }
     };
     match runtime.block_on(commands::run(program)) {
         Ok(()) => ExitCode::SUCCESS,

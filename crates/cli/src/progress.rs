@@ -32,11 +32,16 @@ impl Progress {
         let done_since = job.cells_done.saturating_sub(at_first) as f64;
         let mut message = match job.state {
             JobState::Queued => "waiting for its turn".to_owned(),
-            _ => format!("{} of {} cells", HumanCount(job.cells_done), HumanCount(job.cells)),
+            _ => format!(
+                "{} of {} cells",
+                HumanCount(job.cells_done),
+                HumanCount(job.cells)
+            ),
         };
         if seconds > 0.0 && done_since > 0.0 {
             let rate = done_since / seconds;
-            let left = Duration::from_secs_f64((job.cells - job.cells_done.min(job.cells)) as f64 / rate);
+            let left =
+                Duration::from_secs_f64((job.cells - job.cells_done.min(job.cells)) as f64 / rate);
             message += &format!(", {}/s, {} left", HumanCount(rate as u64), clock(left));
         }
         if let Some(best) = job.best_yield {

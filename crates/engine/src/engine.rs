@@ -101,7 +101,12 @@ impl Engine {
 
     /// Stops between two blocks; unfinished jobs go on when the directory is opened again.
     pub async fn shutdown(&self) {
-        if let Some(Queue { scheduler: Some(scheduler), watchers, .. }) = &self.queue {
+        if let Some(Queue {
+            scheduler: Some(scheduler),
+            watchers,
+            ..
+        }) = &self.queue
+        {
             scheduler.shutdown().await;
             watchers.end();
         }
@@ -140,7 +145,12 @@ fn cancel_waiting(store: &Store, job: JobId) -> Result<(), EngineError> {
         state: refused.state.name(),
         remedy: "a job that has ended cannot be cancelled",
     })?;
-    let change = StateChange { from, to, at_unix_ms: now_unix_ms(), failure: String::new() };
+    let change = StateChange {
+        from,
+        to,
+        at_unix_ms: now_unix_ms(),
+        failure: String::new(),
+    };
     store.change_state(job, &change)?;
     Ok(())
 }

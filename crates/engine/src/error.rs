@@ -37,7 +37,9 @@ pub enum EngineError {
         remedy: &'static str,
     },
     /// The request id was used for another request.
-    #[error("the request id `{request_id}` belongs to job `{job}`, which was another request; choose a new request id")]
+    #[error(
+        "the request id `{request_id}` belongs to job `{job}`, which was another request; choose a new request id"
+    )]
     RequestIdReused {
         /// The request id.
         request_id: String,
@@ -66,9 +68,18 @@ pub enum EngineError {
 
 impl EngineError {
     /// One fault of one field.
-    pub(crate) fn field(field: &str, value: &str, code: &'static str, reason: &str, remedy: &str) -> EngineError {
+    pub(crate) fn field(
+        field: &str,
+        value: &str,
+        code: &'static str,
+        reason: &str,
+        remedy: &str,
+    ) -> EngineError {
         EngineError::Input(vec![InputError {
-            place: Place { field: field.to_owned(), ..Place::default() },
+            place: Place {
+                field: field.to_owned(),
+                ..Place::default()
+            },
             value: value.chars().take(80).collect(),
             code,
             reason: reason.to_owned(),
@@ -78,7 +89,9 @@ impl EngineError {
 
     /// The store was asked for although the engine was opened without one.
     pub(crate) fn without_store() -> EngineError {
-        EngineError::Store { reason: "this engine was opened without a data directory".to_owned() }
+        EngineError::Store {
+            reason: "this engine was opened without a data directory".to_owned(),
+        }
     }
 }
 
@@ -86,9 +99,10 @@ impl From<StoreError> for EngineError {
     fn from(error: StoreError) -> EngineError {
         match error {
             StoreError::JobUnknown { job } => EngineError::JobUnknown { job },
-            StoreError::RequestIdReused { request_id, job } => {
-                EngineError::RequestIdReused { request_id, job: job.to_string() }
-            }
+            StoreError::RequestIdReused { request_id, job } => EngineError::RequestIdReused {
+                request_id,
+                job: job.to_string(),
+            },
             StoreError::RequestIdTooLong { length, limit } => EngineError::field(
                 "request_id",
                 "",
@@ -101,10 +115,12 @@ impl From<StoreError> for EngineError {
                 state: found.name(),
                 remedy: "its state changed meanwhile; look at it and ask again",
             },
-            StoreError::PageOutdated => {
-                EngineError::PageToken { reason: "the job was screened anew since the page before".to_owned() }
-            }
-            other => EngineError::Store { reason: other.to_string() },
+            StoreError::PageOutdated => EngineError::PageToken {
+                reason: "the job was screened anew since the page before".to_owned(),
+            },
+            other => EngineError::Store {
+                reason: other.to_string(),
+            },
         }
     }
 }
@@ -119,7 +135,9 @@ impl From<SchedulerError> for EngineError {
             },
             SchedulerError::Store(error) => error.into(),
             SchedulerError::ShutDown => EngineError::Stopping,
-            SchedulerError::Threads { .. } => EngineError::Store { reason: error.to_string() },
+            SchedulerError::Threads { .. } => EngineError::Store {
+                reason: error.to_string(),
+            },
         }
     }
 }
@@ -130,7 +148,9 @@ impl From<TokenError> for EngineError {
             reason: match error {
                 TokenError::Damaged => "it is damaged".to_owned(),
                 TokenError::OtherVersion => "it is of another version".to_owned(),
-                TokenError::OtherArguments { argument } => format!("it was made for another {argument}"),
+                TokenError::OtherArguments { argument } => {
+                    format!("it was made for another {argument}")
+                }
             },
         }
     }
@@ -143,6 +163,12 @@ impl From<GridError> for EngineError {
             GridError::EmptyAxis { axis } => (axis, "AXIS_EMPTY"),
             GridError::ShrunkAxis { axis, .. } => (axis, "AXIS_EMPTY"),
         };
-        EngineError::field(field, "", code, &error.to_string(), "change the axis and ask again")
+        EngineError::field(
+            field,
+            "",
+            code,
+            &error.to_string(),
+            "change the axis and ask again",
+        )
     }
 }

@@ -53,7 +53,12 @@ impl Engine {
                 let model = self.model.clone();
                 blocking(move || {
                     let cell = given::cell(&query, &model)?;
-                    Ok(Target { number: None, cell, yield_at_least: query.yield_at_least, scored_with: None })
+                    Ok(Target {
+                        number: None,
+                        cell,
+                        yield_at_least: query.yield_at_least,
+                        scored_with: None,
+                    })
                 })
                 .await
             }
@@ -63,11 +68,13 @@ impl Engine {
                 blocking(move || {
                     let record = store.job(id)?;
                     let grid = grids.of_record(&record)?;
-                    let cell = grid.cell(CellId(number)).ok_or_else(|| EngineError::CellUnknown {
-                        job,
-                        cell: number,
-                        last: grid.cells().saturating_sub(1),
-                    })?;
+                    let cell =
+                        grid.cell(CellId(number))
+                            .ok_or_else(|| EngineError::CellUnknown {
+                                job,
+                                cell: number,
+                                last: grid.cells().saturating_sub(1),
+                            })?;
                     Ok(Target {
                         number: Some(number),
                         cell,
@@ -99,7 +106,11 @@ impl CellDescription {
             concentration_m: conditions.concentration_m,
             time_h: conditions.time_h,
             dosing_min: conditions.dosing_min,
-            addition: conditions.addition.unwrap_or_else(|| cell.base.usual_addition()).name().to_owned(),
+            addition: conditions
+                .addition
+                .unwrap_or_else(|| cell.base.usual_addition())
+                .name()
+                .to_owned(),
         }
     }
 }

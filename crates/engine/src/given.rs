@@ -1,8 +1,8 @@
 //! A cell given by names, checked as a campaign of one cell.
 
 use enolattice_grid::{
-    AxisSpec, Campaign, CampaignSpec, CellId, ConditionsSpec, Entry, Grid, InputError, Place, SubstrateEntry,
-    TargetSpec,
+    AxisSpec, Campaign, CampaignSpec, CellId, ConditionsSpec, Entry, Grid, InputError, Place,
+    SubstrateEntry, TargetSpec,
 };
 use enolattice_model::{Cell, Model};
 use enolattice_molecule::Molecule;
@@ -19,22 +19,43 @@ pub(crate) fn cell(query: &CellQuery, model: &Arc<Model>) -> Result<Cell, Engine
         .map_err(|faults| EngineError::Input(faults.into_iter().map(as_field).collect()))?;
     let grid = Grid::new(campaign, model.clone())?;
     grid.cell(CellId(0)).ok_or_else(|| {
-        EngineError::field("cell", "", "AXIS_EMPTY", "the cell has an empty axis", "name every reagent")
+        EngineError::field(
+            "cell",
+            "",
+            "AXIS_EMPTY",
+            "the cell has an empty axis",
+            "name every reagent",
+        )
     })
 }
 
 fn campaign_of_one(query: &CellQuery, model: &Model) -> CampaignSpec {
     let library = model.library();
-    let place = |field: &str| Place { field: field.to_owned(), ..Place::default() };
+    let place = |field: &str| Place {
+        field: field.to_owned(),
+        ..Place::default()
+    };
     let named = |field: &str, name: &str| AxisSpec {
         all: false,
-        entries: vec![Entry { name: name.to_owned(), smiles: String::new(), place: place(field) }],
+        entries: vec![Entry {
+            name: name.to_owned(),
+            smiles: String::new(),
+            place: place(field),
+        }],
     };
     // Salts are no molecules, so a base given by SMILES is looked for as the table writes it.
-    let base = library.bases().iter().find(|base| base.smiles == query.base);
-    let solvent = library.solvents().iter().find(|solvent| is_same(&solvent.smiles, &query.solvent));
+    let base = library
+        .bases()
+        .iter()
+        .find(|base| base.smiles == query.base);
+    let solvent = library
+        .solvents()
+        .iter()
+        .find(|solvent| is_same(&solvent.smiles, &query.solvent));
     let mut electrophiles = named("electrophile", &query.electrophile);
-    if library.electrophile(&query.electrophile).is_none() && Molecule::parse(&query.electrophile).is_ok() {
+    if library.electrophile(&query.electrophile).is_none()
+        && Molecule::parse(&query.electrophile).is_ok()
+    {
         for entry in &mut electrophiles.entries {
             entry.smiles = std::mem::take(&mut entry.name);
         }
@@ -49,7 +70,10 @@ fn campaign_of_one(query: &CellQuery, model: &Model) -> CampaignSpec {
         }],
         bases: named("base", base.map_or(&query.base, |base| &base.name)),
         electrophiles,
-        solvents: named("solvent", solvent.map_or(&query.solvent, |solvent| &solvent.name)),
+        solvents: named(
+            "solvent",
+            solvent.map_or(&query.solvent, |solvent| &solvent.name),
+        ),
         additives: AxisSpec::default(),
         conditions: ConditionsSpec {
             temperature_c: vec![query.temperature_c],
@@ -61,7 +85,9 @@ fn campaign_of_one(query: &CellQuery, model: &Model) -> CampaignSpec {
             dosing_min: vec![query.dosing_min],
             addition: query.addition.iter().cloned().collect(),
         },
-        target: TargetSpec { yield_at_least: Some(query.yield_at_least) },
+        target: TargetSpec {
+            yield_at_least: Some(query.yield_at_least),
+        },
     }
 }
 
@@ -78,7 +104,11 @@ fn as_field(mut fault: InputError) -> InputError {
     let field = fault.place.field.as_str();
     let known = ["substrate", "base", "electrophile", "solvent"];
     let first = field.split(['.', '[']).next().unwrap_or_default();
-    let name = if known.contains(&first) { first } else { field.rsplit('.').next().unwrap_or(field) };
+    let name = if known.contains(&first) {
+        first
+    } else {
+        field.rsplit('.').next().unwrap_or(field)
+    };
     fault.place.field = name.split('[').next().unwrap_or(name).to_owned();
     fault
 }

@@ -21,7 +21,10 @@ pub(crate) struct Grids {
 
 impl Grids {
     pub(crate) fn new(model: Arc<Model>) -> Grids {
-        Grids { model, kept: Mutex::default() }
+        Grids {
+            model,
+            kept: Mutex::default(),
+        }
     }
 
     /// Checks a campaign and builds its grid. Takes time.
@@ -52,6 +55,10 @@ impl Grids {
     }
 
     fn kept(&self, job: JobId) -> Option<Arc<Grid>> {
-        self.kept.lock().unwrap_or_else(PoisonError::into_inner).get(&job).cloned()
+        self.kept
+            .lock()
+            .unwrap_or_else(PoisonError::into_inner)
+            .get(&job)
+            .cloned()
     }
 }

@@ -25,7 +25,10 @@ pub enum JobState {
 impl JobState {
     /// Whether the job has ended.
     pub fn is_ended(self) -> bool {
-        !matches!(self, JobState::Queued | JobState::Running | JobState::Paused)
+        !matches!(
+            self,
+            JobState::Queued | JobState::Running | JobState::Paused
+        )
     }
 }
 

@@ -23,6 +23,7 @@ pub use error::EngineError;
 pub use job::{Job, JobState, Submission};
 pub use open::EngineConfig;
 pub use query::{
-    Axis, CellDescription, CellQuery, ExplainTarget, Order, RankPage, RankQuery, RankedCell, ReagentRow, SiteReport,
+    Axis, CellDescription, CellQuery, ExplainTarget, Order, RankPage, RankQuery, RankedCell,
+    ReagentRow, SiteReport,
 };
 pub use sites::element_symbol;

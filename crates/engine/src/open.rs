@@ -33,10 +33,16 @@ impl Engine {
         if let Some(queue) = &mut engine.queue {
             let (grids, store) = (queue.grids.clone(), queue.store.clone());
             let work = move |record: &enolattice_store::JobRecord| {
-                grids.of_record(record).map(Work::of_grid).map_err(|error| error.to_string())
+                grids
+                    .of_record(record)
+                    .map(Work::of_grid)
+                    .map_err(|error| error.to_string())
             };
-            let config =
-                SchedulerConfig { threads, work: Arc::new(work), notify: queue.watchers.clone().follow(store) };
+            let config = SchedulerConfig {
+                threads,
+                work: Arc::new(work),
+                notify: queue.watchers.clone().follow(store),
+            };
             queue.scheduler = Some(Scheduler::start(queue.store.clone(), config)?);
         }
         Ok(engine)
@@ -61,7 +67,10 @@ impl Engine {
                 scheduler: None,
                 notices,
             };
-            Ok(Engine { model, queue: Some(queue) })
+            Ok(Engine {
+                model,
+                queue: Some(queue),
+            })
         })
         .await
     }
@@ -72,17 +81,26 @@ impl Engine {
     /// # Errors
     /// [`EngineError::Store`] where the built-in library is damaged.
     pub async fn without_data() -> Result<Engine, EngineError> {
-        blocking(|| Ok(Engine { model: builtin_model()?, queue: None })).await
+        blocking(|| {
+            Ok(Engine {
+                model: builtin_model()?,
+                queue: None,
+            })
+        })
+        .await
     }
 }
 
 fn builtin_model() -> Result<Arc<Model>, EngineError> {
-    let library = Library::builtin()
-        .map_err(|fault| EngineError::Store { reason: format!("the built-in library is damaged: {fault}") })?;
+    let library = Library::builtin().map_err(|fault| EngineError::Store {
+        reason: format!("the built-in library is damaged: {fault}"),
+    })?;
     Ok(Arc::new(Model::new(Arc::new(library))))
 }
 
 /// The clock, milliseconds since 1970-01-01 UTC.
 pub(crate) fn now_unix_ms() -> u64 {
-    SystemTime::now().duration_since(UNIX_EPOCH).map_or(0, |since| since.as_millis() as u64)
+    SystemTime::now()
+        .duration_since(UNIX_EPOCH)
+        .map_or(0, |since| since.as_millis() as u64)
 }

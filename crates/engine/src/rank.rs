@@ -24,10 +24,13 @@ impl Engine {
         let (store, grids) = (queue.store.clone(), queue.grids.clone());
         blocking(move || {
             let job = job_id(&query.job)?;
-            let filter = Filter::read(&query.filter).map_err(|fault| EngineError::Input(vec![*fault]))?;
+            let filter =
+                Filter::read(&query.filter).map_err(|fault| EngineError::Input(vec![*fault]))?;
             let record = store.job(job)?;
             let grid = grids.of_record(&record)?;
-            let filter = filter.bind(grid.campaign()).map_err(|fault| EngineError::Input(vec![*fault]))?;
+            let filter = filter
+                .bind(grid.campaign())
+                .map_err(|fault| EngineError::Input(vec![*fault]))?;
             let token = PageToken {
                 job,
                 order: query.order.into(),
@@ -39,27 +42,40 @@ impl Engine {
                 text => Some(token.decode(text)?),
             };
             let keeps = |cell: u64, score: &Score| {
-                grid.digits(CellId(cell)).is_some_and(|digits| filter.passes(&digits, score))
+                grid.digits(CellId(cell))
+                    .is_some_and(|digits| filter.passes(&digits, score))
             };
             let digit = query.best_per.map(Axis::digit);
             let group = |cell: u64| match (digit, grid.digits(CellId(cell))) {
                 (Some(digit), Some(digits)) => digit(&digits),
                 _ => 0,
             };
-            let page_size = if query.page_size == 0 { USUAL_PAGE } else { query.page_size.min(LARGEST_PAGE) };
+            let page_size = if query.page_size == 0 {
+                USUAL_PAGE
+            } else {
+                query.page_size.min(LARGEST_PAGE)
+            };
             let request = RankRequest {
                 order: token.order,
                 after,
                 skip: query.skip,
                 limit: page_size as usize,
-                filter: if filter.passes_all() { None } else { Some(&keeps) },
+                filter: if filter.passes_all() {
+                    None
+                } else {
+                    Some(&keeps)
+                },
                 best_per: if digit.is_some() { Some(&group) } else { None },
             };
             let ranking = store.rank(job, &request)?;
             let rows = (ranking.first_rank..).zip(&ranking.rows);
             Ok(RankPage {
-                rows: rows.filter_map(|(rank, (cell, score))| ranked(&grid, rank, *cell, score)).collect(),
-                next_page_token: ranking.next.map_or_else(String::new, |position| token.encode(&position)),
+                rows: rows
+                    .filter_map(|(rank, (cell, score))| ranked(&grid, rank, *cell, score))
+                    .collect(),
+                next_page_token: ranking
+                    .next
+                    .map_or_else(String::new, |position| token.encode(&position)),
                 total: ranking.total,
                 cells_done: ranking.cells,
             })
@@ -105,8 +121,17 @@ impl From<Order> for enolattice_store::Order {
 /// A cell with its names and numbers.
 fn ranked(grid: &Grid, rank: u64, number: u64, score: &Score) -> Option<RankedCell> {
     let cell = grid.cell(CellId(number))?;
-    let Cell { substrate, base, electrophile, solvent, conditions, .. } = &cell;
-    let cautions = Category::ALL.into_iter().filter(|category| score.cautions & category.bit() != 0);
+    let Cell {
+        substrate,
+        base,
+        electrophile,
+        solvent,
+        conditions,
+        ..
+    } = &cell;
+    let cautions = Category::ALL
+        .into_iter()
+        .filter(|category| score.cautions & category.bit() != 0);
     Some(RankedCell {
         rank,
         cell: number,
@@ -121,13 +146,19 @@ fn ranked(grid: &Grid, rank: u64, number: u64, score: &Score) -> Option<RankedCe
         concentration_m: conditions.concentration_m,
         time_h: conditions.time_h,
         dosing_min: conditions.dosing_min,
-        addition: conditions.addition.unwrap_or_else(|| base.usual_addition()).name().to_owned(),
+        addition: conditions
+            .addition
+            .unwrap_or_else(|| base.usual_addition())
+            .name()
+            .to_owned(),
         expected_yield: score.expected_yield,
         p_hit: score.p_hit,
         feasibility: score.feasibility,
         selectivity: score.selectivity,
         largest_loss: score.largest_loss,
-        cautions: cautions.map(|category| category.name().to_owned()).collect(),
+        cautions: cautions
+            .map(|category| category.name().to_owned())
+            .collect(),
         severity: Severity::from_bits(score.cautions).map(|severity| severity.name().to_owned()),
     })
 }

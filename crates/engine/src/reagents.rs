@@ -10,7 +10,13 @@ impl Engine {
     /// # Errors
     /// None yet; a word that nothing has gives an empty list.
     pub async fn reagents(&self, word: &str) -> Result<Vec<ReagentRow>, EngineError> {
-        Ok(self.model.library().search(word).into_iter().map(row).collect())
+        Ok(self
+            .model
+            .library()
+            .search(word)
+            .into_iter()
+            .map(row)
+            .collect())
     }
 }
 

@@ -20,10 +20,16 @@ impl Engine {
                 match Molecule::parse(&text) {
                     Ok(molecule) => {
                         let sites = acid_sites(&molecule, model.library());
-                        reports.push(SiteReport { smiles: text, sites });
+                        reports.push(SiteReport {
+                            smiles: text,
+                            sites,
+                        });
                     }
                     Err(error) => faults.push(InputError {
-                        place: Place { field: format!("smiles[{i}]"), ..Place::default() },
+                        place: Place {
+                            field: format!("smiles[{i}]"),
+                            ..Place::default()
+                        },
                         value: text.chars().take(80).collect(),
                         code: FaultCode::StructureInvalid.name(),
                         reason: error.reason,
@@ -31,7 +37,11 @@ impl Engine {
                     }),
                 }
             }
-            if faults.is_empty() { Ok(reports) } else { Err(EngineError::Input(faults)) }
+            if faults.is_empty() {
+                Ok(reports)
+            } else {
+                Err(EngineError::Input(faults))
+            }
         })
         .await
     }

@@ -24,7 +24,11 @@ impl Watchers {
         job: JobId,
         works: bool,
     ) -> Result<watch::Receiver<Job>, EngineError> {
-        let receiver = self.senders().entry(job).or_insert(watch::Sender::new(read_job(store, job)?)).subscribe();
+        let receiver = self
+            .senders()
+            .entry(job)
+            .or_insert(watch::Sender::new(read_job(store, job)?))
+            .subscribe();
         // Read again: what changed between the first look and the entry has told nobody.
         self.tell(store, job);
         if !works {
@@ -34,12 +38,17 @@ impl Watchers {
     }
 
     /// What the scheduler calls: it only passes the job's id on, a task reads and tells.
-    pub(crate) fn follow(self: Arc<Self>, store: Arc<Store>) -> Arc<dyn Fn(Progress) + Send + Sync> {
+    pub(crate) fn follow(
+        self: Arc<Self>,
+        store: Arc<Store>,
+    ) -> Arc<dyn Fn(Progress) + Send + Sync> {
         let (changed, mut changes) = mpsc::unbounded_channel::<JobId>();
         let watchers = Arc::downgrade(&self);
         tokio::spawn(async move {
             while let Some(job) = changes.recv().await {
-                let Some(watchers) = watchers.upgrade() else { return };
+                let Some(watchers) = watchers.upgrade() else {
+                    return;
+                };
                 let store = store.clone();
                 let told = tokio::task::spawn_blocking(move || watchers.tell(&store, job)).await;
                 if told.is_err() {
@@ -62,7 +71,9 @@ impl Watchers {
         if !self.senders().contains_key(&job) {
             return;
         }
-        let Ok(present) = read_job(store, job) else { return };
+        let Ok(present) = read_job(store, job) else {
+            return;
+        };
         let ended = present.state.is_ended();
         let mut senders = self.senders();
         if let Some(sender) = senders.get(&job) {

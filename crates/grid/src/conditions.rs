@@ -30,7 +30,7 @@ impl Quantity {
         if above && value <= self.high {
             Ok(value + 0.0)
         } else {
-            Err(format!("{} is {self}", self.name()))
+            Err(format!("outside the range of {}, {self}", self.name()))
         }
     }
 
@@ -174,7 +174,7 @@ mod tests {
         assert!(
             TEMPERATURE
                 .check(-110.1)
-                .is_err_and(|why| why == "temperature_c is -110 to 250 °C")
+                .is_err_and(|why| why == "outside the range of temperature_c, -110 to 250 °C")
         );
         assert!(BASE_EQUIV.check(0.0).is_err());
         assert_eq!(BASE_EQUIV.check(20.0), Ok(20.0));

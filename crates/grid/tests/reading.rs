@@ -176,6 +176,19 @@ fn the_example_of_the_page_can_be_read() {
 }
 
 #[test]
+fn the_demo_can_be_read() {
+    let campaign = include_str!("../../../deploy/demo/campaign.toml");
+    assert_eq!(files_named(campaign), ["substrates.csv"]);
+    let files = [(
+        "substrates.csv",
+        include_str!("../../../deploy/demo/substrates.csv"),
+    )];
+    let library = Library::builtin().expect("the tables are sound");
+    let read = read_against(&sources(campaign, &files), &library);
+    assert!(read.is_ok_and(|spec| spec.substrates.len() >= 12));
+}
+
+#[test]
 fn all_faults_of_all_files_are_listed_at_once() {
     let campaign = r#"titel = "misspelt"
 [substrates]

@@ -6,12 +6,12 @@ use enolattice_molecule::Molecule;
 use enolattice_reagents::Library;
 use sha2::{Digest, Sha256};
 
+use crate::acidity::acidity_texts;
 use crate::explain::explain;
 use crate::parameters::{PARAMETERS, Parameter, Values};
 use crate::screen::score;
 use crate::{
     Base, Cell, Electrophile, Explanation, MeasuredPka, Pair, Score, Solvent, Substrate,
-    coefficients,
 };
 
 /// SHA-256 over code version, data, coefficients and arithmetic.
@@ -95,9 +95,8 @@ impl Model {
             hash.update(p.mean.to_le_bytes());
             hash.update(p.sigma.to_le_bytes());
         }
-        for coefficient in coefficients() {
-            hash.update(coefficient.name.as_bytes());
-            hash.update(coefficient.value.to_le_bytes());
+        for text in acidity_texts() {
+            hash.update(text.as_bytes());
         }
         Fingerprint(hash.finalize().into())
     }

@@ -84,7 +84,8 @@ parameters! {
     EXCHANGE_APOLAR = -1.0, 1.0, "log10 L/(mol s)", MEMORY;
     EXCHANGE_LITHIUM = -1.5, 0.7, "log10 L/(mol s)", MEMORY;
     EXCHANGE_POTASSIUM = 0.3, 0.3, "log10 L/(mol s)", MEMORY;
-    EXCHANGE_NITRO = -1.5, 0.7, "log10 L/(mol s)", "slow proton transfer of nitroalkanes (Bordwell and Boyle, J. Am. Chem. Soc. 1972, 94, 3907, from memory)";
+    EXCHANGE_NITRO_PROTIC = -4.0, 0.7, "log10 L/(mol s)", "nitromethane with hydroxide in water, 27 L/(mol s) at ΔpKa 5.5 (Bordwell and Boyle, J. Am. Chem. Soc. 1972, 94, 3907, from memory)";
+    EXCHANGE_NITRO = -0.5, 0.7, "log10 L/(mol s)", "the anomaly of nitroalkanes is small outside hydrogen-bonding media (from memory)";
     EXCHANGE_BRONSTED = 0.7, 0.1, "1", MEMORY;
     /// Sensitivity of the kinetic distribution to the acidity of the sites.
     KINETIC_BRONSTED = 0.4, 0.1, "1", "fitted to the enolate_regiochemistry table (House and others, from memory)";

@@ -9,9 +9,10 @@ use crate::ModelError;
 use crate::network::{Amounts, Network, Reaction, Species, Stage};
 
 /// Relative tolerance of the amounts.
-const RELATIVE: f64 = 1e-6;
-/// Absolute tolerance of the amounts, mol/L.
-const ABSOLUTE_M: f64 = 1e-9;
+const RELATIVE: f64 = 1e-5;
+/// Absolute tolerance of the amounts, mol/L: far below any amount that matters, so that reagents
+/// that are nearly used up stay positive.
+const ABSOLUTE_M: f64 = 1e-13;
 /// Points of the time course in each stage.
 const POINTS: usize = 12;
 

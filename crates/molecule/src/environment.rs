@@ -6,6 +6,7 @@ mod group;
 mod hammett;
 mod heteroatom;
 mod neighbours;
+mod nitrogen;
 mod shape;
 mod skeleton;
 
@@ -60,7 +61,7 @@ fn site(molecule: &Molecule, index: usize) -> Option<Site> {
         {
             always(heteroatom::alkyne(molecule, index)?)
         }
-        7 => always(heteroatom::nitrogen(molecule, index)?),
+        7 => always(nitrogen::describe(molecule, index)?),
         8 => always(heteroatom::oxygen(molecule, index)?),
         16 | 34 => always(heteroatom::sulfur(molecule, index)?),
         _ => return None,
@@ -128,7 +129,7 @@ mod tests {
     #[test]
     fn small_bridgeheads_are_no_acids() {
         assert_eq!(activated("O=C1CC2CCC1C2"), [2]);
-        assert_eq!(activated("CC1(C)C2CCC1(C)C(=O)C2"), [9]);
+        assert_eq!(activated("CC1(C)C2CCC1(C)C(=O)C2"), [10]);
         assert_eq!(activated("O=C1C2CC3CC(C2)CC1C3"), Vec::<usize>::new());
         assert_eq!(activated("CC1(C)CC2CCCC(C2)C1=O"), [8]);
         // Fused rings have no bridgehead.

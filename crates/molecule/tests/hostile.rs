@@ -12,7 +12,7 @@ fn exercise(text: &str) {
     };
     assert!(text.trim().len() <= Molecule::MAX_BYTES);
     let atoms = molecule.atoms().len();
-    assert!(atoms >= 1 && atoms <= Molecule::MAX_ATOMS);
+    assert!((1..=Molecule::MAX_ATOMS).contains(&atoms));
     assert_eq!(molecule.symmetry_classes().len(), atoms);
     let bonds: usize = (0..atoms).map(|a| molecule.neighbours(a).len()).sum();
     assert!(bonds / 2 <= Molecule::MAX_BONDS);

@@ -6,7 +6,6 @@
 //! gain nothing.
 
 use enolattice_engine::EngineError;
-use enolattice_grid::InputError;
 use enolattice_wire::page_size;
 
 use crate::status::Refusal;
@@ -38,7 +37,7 @@ impl Asked<'_> {
         rows: &'a [T],
         key: impl Fn(&T) -> String,
     ) -> Result<Page<'a, T>, Refusal> {
-        let size = page_size(self.page_size).map_err(|fault: InputError| vec![fault])?;
+        let size = page_size(self.page_size)?;
         let start = if self.page_token.is_empty() {
             0
         } else {

@@ -33,49 +33,120 @@ pub(super) struct Explain {
 #[derive(Debug, Args)]
 struct Given {
     /// SMILES of the substrate.
-    #[arg(long, value_name = "SMILES", conflicts_with = "job", required_unless_present = "job")]
+    #[arg(
+        long,
+        value_name = "SMILES",
+        conflicts_with = "job",
+        required_unless_present = "job"
+    )]
     substrate: Option<String>,
     /// Base.
-    #[arg(long, value_name = "NAME", conflicts_with = "job", required_unless_present = "job")]
+    #[arg(
+        long,
+        value_name = "NAME",
+        conflicts_with = "job",
+        required_unless_present = "job"
+    )]
     base: Option<String>,
     /// Electrophile, by name or SMILES.
-    #[arg(long, value_name = "NAME", conflicts_with = "job", required_unless_present = "job")]
+    #[arg(
+        long,
+        value_name = "NAME",
+        conflicts_with = "job",
+        required_unless_present = "job"
+    )]
     electrophile: Option<String>,
     /// Solvent.
-    #[arg(long, value_name = "NAME", conflicts_with = "job", required_unless_present = "job")]
+    #[arg(
+        long,
+        value_name = "NAME",
+        conflicts_with = "job",
+        required_unless_present = "job"
+    )]
     solvent: Option<String>,
     /// Temperature of the reaction, °C.
-    #[arg(long, value_name = "T", conflicts_with = "job", required_unless_present = "job", allow_negative_numbers = true)]
+    #[arg(
+        long,
+        value_name = "T",
+        conflicts_with = "job",
+        required_unless_present = "job",
+        allow_negative_numbers = true
+    )]
     temperature_c: Option<f64>,
     /// Temperature of the deprotonation, °C; default: that of the reaction.
-    #[arg(long, value_name = "T", conflicts_with = "job", allow_negative_numbers = true)]
+    #[arg(
+        long,
+        value_name = "T",
+        conflicts_with = "job",
+        allow_negative_numbers = true
+    )]
     formation_temperature_c: Option<f64>,
     /// Base, equivalents.
-    #[arg(long, value_name = "N", conflicts_with = "job", default_value_t = 1.1, allow_negative_numbers = true)]
+    #[arg(
+        long,
+        value_name = "N",
+        conflicts_with = "job",
+        default_value_t = 1.1,
+        allow_negative_numbers = true
+    )]
     base_equiv: f64,
     /// Electrophile, equivalents.
-    #[arg(long, value_name = "N", conflicts_with = "job", default_value_t = 1.2, allow_negative_numbers = true)]
+    #[arg(
+        long,
+        value_name = "N",
+        conflicts_with = "job",
+        default_value_t = 1.2,
+        allow_negative_numbers = true
+    )]
     electrophile_equiv: f64,
     /// Time after the electrophile, h.
-    #[arg(long, value_name = "T", conflicts_with = "job", default_value_t = 16.0, allow_negative_numbers = true)]
+    #[arg(
+        long,
+        value_name = "T",
+        conflicts_with = "job",
+        default_value_t = 16.0,
+        allow_negative_numbers = true
+    )]
     time_h: f64,
     /// Time over which the electrophile is added, min.
-    #[arg(long, value_name = "T", conflicts_with = "job", default_value_t = 10.0, allow_negative_numbers = true)]
+    #[arg(
+        long,
+        value_name = "T",
+        conflicts_with = "job",
+        default_value_t = 10.0,
+        allow_negative_numbers = true
+    )]
     dosing_min: f64,
     /// Substrate, mol/L.
-    #[arg(long, value_name = "C", conflicts_with = "job", default_value_t = 0.2, allow_negative_numbers = true)]
+    #[arg(
+        long,
+        value_name = "C",
+        conflicts_with = "job",
+        default_value_t = 0.2,
+        allow_negative_numbers = true
+    )]
     concentration_m: f64,
     /// Order of addition; default: the usual one of the base.
     #[arg(long, value_name = "ORDER", conflicts_with = "job")]
     addition: Option<String>,
     /// Yield that makes a hit, 0 to 1.
-    #[arg(long, value_name = "Y", conflicts_with = "job", default_value_t = 0.5, allow_negative_numbers = true)]
+    #[arg(
+        long,
+        value_name = "Y",
+        conflicts_with = "job",
+        default_value_t = 0.5,
+        allow_negative_numbers = true
+    )]
     yield_at_least: f64,
 }
 
 impl Explain {
     pub(super) async fn run(self) -> Result<(), Fault> {
-        let need = if self.job.is_some() { Need::Jobs } else { Need::Chemistry };
+        let need = if self.job.is_some() {
+            Need::Jobs
+        } else {
+            Need::Chemistry
+        };
         let target = match (self.job, self.cell) {
             (Some(job), Some(cell)) => ExplainTarget::OfJob { job, cell },
             _ => ExplainTarget::Given(self.given.query()),

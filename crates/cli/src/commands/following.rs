@@ -43,13 +43,14 @@ pub(super) fn expect_done(job: &Job) -> Result<(), Fault> {
     let id = &job.job;
     match job.state {
         JobState::Done => Ok(()),
-        JobState::DoneWithGaps => {
-            Err(Fault::Job(format!("job `{id}` has gaps, its other cells can be ranked: {}", job.failure)))
-        }
+        JobState::DoneWithGaps => Err(Fault::Job(format!(
+            "job `{id}` has gaps, its other cells can be ranked: {}",
+            job.failure
+        ))),
         JobState::Failed => Err(Fault::Job(format!("job `{id}` failed: {}", job.failure))),
         JobState::Cancelled => Err(Fault::Job(format!("job `{id}` was cancelled"))),
-        JobState::Queued | JobState::Running | JobState::Paused => {
-            Err(Fault::Service(format!("the engine stopped before job `{id}` ended; the job is kept and goes on when it is back")))
-        }
+        JobState::Queued | JobState::Running | JobState::Paused => Err(Fault::Service(format!(
+            "the engine stopped before job `{id}` ended; the job is kept and goes on when it is back"
+        ))),
     }
 }

@@ -47,9 +47,18 @@ enum Command {
 
 /// Starts the log on stderr; `ENOLATTICE_LOG` says what it takes, e.g. `debug`.
 pub(crate) fn start_log(program: &Program) {
-    let usual = if matches!(program.command, Command::Serve(_)) { "info" } else { "warn" };
-    let filter = EnvFilter::try_from_env("ENOLATTICE_LOG").unwrap_or_else(|_| EnvFilter::new(usual));
-    tracing_subscriber::fmt().with_env_filter(filter).with_writer(std::io::stderr).with_target(false).init();
+    let usual = if matches!(program.command, Command::Serve(_)) {
+        "info"
+    } else {
+        "warn"
+    };
+    let filter =
+        EnvFilter::try_from_env("ENOLATTICE_LOG").unwrap_or_else(|_| EnvFilter::new(usual));
+    tracing_subscriber::fmt()
+        .with_env_filter(filter)
+        .with_writer(std::io::stderr)
+        .with_target(false)
+        .init();
 }
 
 /// Runs the command.

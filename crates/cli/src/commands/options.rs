@@ -25,7 +25,10 @@ pub(crate) struct EngineOptions {
 impl EngineOptions {
     /// An engine in this process that keeps its data in this directory.
     pub(crate) fn in_dir(data: Option<PathBuf>) -> EngineOptions {
-        EngineOptions { data, ..EngineOptions::default() }
+        EngineOptions {
+            data,
+            ..EngineOptions::default()
+        }
     }
 
     pub(crate) fn data_dir(&self) -> PathBuf {

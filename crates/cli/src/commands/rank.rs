@@ -53,7 +53,11 @@ impl Rank {
     }
 
     async fn print_pages(&self, client: &Client) -> Result<(), Fault> {
-        let limit = if self.limit == 0 { u64::MAX } else { self.limit };
+        let limit = if self.limit == 0 {
+            u64::MAX
+        } else {
+            self.limit
+        };
         let mut query = RankQuery {
             job: self.job.clone(),
             order: self.order.into(),
@@ -69,7 +73,9 @@ impl Rank {
             let page = client.rank(query.clone()).await?;
             given += page.rows.len() as u64;
             if self.json {
-                page.rows.into_iter().try_for_each(|row| print_json_line(&CellLine::from(row)))?;
+                page.rows
+                    .into_iter()
+                    .try_for_each(|row| print_json_line(&CellLine::from(row)))?;
             } else {
                 kept.extend(page.rows);
             }
@@ -85,7 +91,11 @@ impl Rank {
         if self.json {
             return Ok(());
         }
-        talk(&format!("{} cells in this ranking, {} screened", count(total), count(cells_done)));
+        talk(&format!(
+            "{} cells in this ranking, {} screened",
+            count(total),
+            count(cells_done)
+        ));
         if kept.is_empty() {
             return Ok(());
         }

@@ -29,7 +29,12 @@ impl Reagents {
         client.close().await?;
         let rows = rows?;
         if self.json {
-            return print_json(&rows.into_iter().map(ReagentRecord::from).collect::<Vec<_>>());
+            return print_json(
+                &rows
+                    .into_iter()
+                    .map(ReagentRecord::from)
+                    .collect::<Vec<_>>(),
+            );
         }
         if rows.is_empty() {
             talk(&format!("the library has nothing like `{}`", self.word));

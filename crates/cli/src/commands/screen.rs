@@ -48,26 +48,60 @@ impl Screen {
         let campaign = read_campaign(&self.file)?;
         let client = Client::open(&self.engine, Need::Work).await?;
         if client.is_embedded() {
-            talk(&format!("results are kept in {}", self.engine.data_dir().display()));
+            talk(&format!(
+                "results are kept in {}",
+                self.engine.data_dir().display()
+            ));
         }
-        let outcome = self.screen(&client, Submission { campaign, request_id: String::new(), validate_only: false }).await;
+        let outcome = self
+            .screen(
+                &client,
+                Submission {
+                    campaign,
+                    request_id: String::new(),
+                    validate_only: false,
+                },
+            )
+            .await;
         client.close().await?;
         let screened = outcome?;
-        if self.json { print_json(&screened.document()) } else { self.print_page(&screened) }
+        if self.json {
+            print_json(&screened.document())
+        } else {
+            self.print_page(&screened)
+        }
     }
 
     async fn screen(&self, client: &Client, submission: Submission) -> Result<Screened, Fault> {
         let begun = Instant::now();
         let queued = client.submit(submission).await?;
-        queued.warnings.iter().for_each(|warning| talk(&format!("note: {warning}")));
-        talk(&format!("job {}: {} cells", queued.job, count(queued.cells)));
+        queued
+            .warnings
+            .iter()
+            .for_each(|warning| talk(&format!("note: {warning}")));
+        talk(&format!(
+            "job {}: {} cells",
+            queued.job,
+            count(queued.cells)
+        ));
         let job = follow(client, &queued.job, |_| Ok(())).await?;
         let time = begun.elapsed();
         expect_done(&job)?;
-        let top = RankQuery { job: job.job.clone(), page_size: TOP, ..RankQuery::default() };
-        let best =
-            RankQuery { page_size: MOST_SUBSTRATES, best_per: Some(Axis::Substrate), ..top.clone() };
-        let unknown = RankQuery { page_size: 1, filter: "NOT expected_yield:*".to_owned(), ..top.clone() };
+        let top = RankQuery {
+            job: job.job.clone(),
+            page_size: TOP,
+            ..RankQuery::default()
+        };
+        let best = RankQuery {
+            page_size: MOST_SUBSTRATES,
+            best_per: Some(Axis::Substrate),
+            ..top.clone()
+        };
+        let unknown = RankQuery {
+            page_size: 1,
+            filter: "NOT expected_yield:*".to_owned(),
+            ..top.clone()
+        };
         Ok(Screened {
             time,
             not_covered: client.rank(unknown).await?.total,
@@ -79,7 +113,11 @@ impl Screen {
 
     fn print_page(&self, screened: &Screened) -> Result<(), Fault> {
         let job = &screened.job;
-        let title = if job.title.is_empty() { "Campaign" } else { &job.title };
+        let title = if job.title.is_empty() {
+            "Campaign"
+        } else {
+            &job.title
+        };
         let page = [
             format!("{title}: {}", screened.summary()),
             format!("The top {} cells", screened.top.len()),
@@ -91,8 +129,14 @@ impl Screen {
         print(&page.join("\n\n"))?;
         let engine = self.engine.repeated();
         let first = screened.top.first().map_or(0, |cell| cell.cell);
-        talk(&format!("next: enolattice rank {}{engine} --filter 'p_hit >= 0.7'", job.job));
-        talk(&format!("      enolattice explain {} {first}{engine}", job.job));
+        talk(&format!(
+            "next: enolattice rank {}{engine} --filter 'p_hit >= 0.7'",
+            job.job
+        ));
+        talk(&format!(
+            "      enolattice explain {} {first}{engine}",
+            job.job
+        ));
         Ok(())
     }
 }

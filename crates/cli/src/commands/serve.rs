@@ -33,12 +33,23 @@ impl Serve {
     pub(super) async fn run(self) -> Result<(), Fault> {
         let data_dir = EngineOptions::in_dir(self.data).data_dir();
         let listener = TcpListener::bind(self.listen).await.map_err(|error| {
-            Fault::Service(format!("{} cannot be listened on: {error}; choose another address with --listen", self.listen))
+            Fault::Service(format!(
+                "{} cannot be listened on: {error}; choose another address with --listen",
+                self.listen
+            ))
         })?;
-        let address = listener.local_addr().map_err(|error| Fault::service(error.to_string()))?;
-        let config = EngineConfig { data_dir: data_dir.clone(), threads: self.threads };
+        let address = listener
+            .local_addr()
+            .map_err(|error| Fault::service(error.to_string()))?;
+        let config = EngineConfig {
+            data_dir: data_dir.clone(),
+            threads: self.threads,
+        };
         let engine = Arc::new(Engine::open(config).await?);
-        talk(&format!("serving {} on {address}; ctrl-c stops", data_dir.display()));
+        talk(&format!(
+            "serving {} on {address}; ctrl-c stops",
+            data_dir.display()
+        ));
         print(&format!("listening on {address}"))?;
         let served = enolattice_server::serve(engine.clone(), listener, stop_signal()).await;
         engine.shutdown().await;
@@ -50,7 +61,9 @@ impl Serve {
 async fn stop_signal() {
     let interrupt = tokio::signal::ctrl_c();
     #[cfg(unix)]
-    if let Ok(mut terminate) = tokio::signal::unix::signal(tokio::signal::unix::SignalKind::terminate()) {
+    if let Ok(mut terminate) =
+        tokio::signal::unix::signal(tokio::signal::unix::SignalKind::terminate())
+    {
         tokio::select! {
             _ = interrupt => {}
             _ = terminate.recv() => {}

@@ -30,7 +30,10 @@ impl Sites {
     pub(super) async fn run(self) -> Result<(), Fault> {
         let (smiles, places) = self.molecules()?;
         let client = Client::open(&self.engine, Need::Chemistry).await?;
-        let found = client.sites(&smiles).await.map_err(|fault| placed(fault, &places));
+        let found = client
+            .sites(&smiles)
+            .await
+            .map_err(|fault| placed(fault, &places));
         client.close().await?;
         let molecules: Vec<MoleculeSites> = found?.into_iter().map(MoleculeSites::from).collect();
         if self.json {
@@ -44,23 +47,42 @@ impl Sites {
     fn molecules(&self) -> Result<(Vec<String>, Vec<Place>), Fault> {
         if !self.smiles.is_empty() {
             let places = (1..=self.smiles.len())
-                .map(|i| Place { field: format!("SMILES {i}"), ..Place::default() })
+                .map(|i| Place {
+                    field: format!("SMILES {i}"),
+                    ..Place::default()
+                })
                 .collect();
             return Ok((self.smiles.clone(), places));
         }
         let stdin = std::io::stdin();
         if stdin.is_terminal() {
             let remedy = "give SMILES as arguments, or one a line on stdin";
-            return Err(Fault::option("SMILES", "", "VALUE_MISSING", "no molecule is given", remedy));
+            return Err(Fault::option(
+                "SMILES",
+                "",
+                "VALUE_MISSING",
+                "no molecule is given",
+                remedy,
+            ));
         }
         let (mut smiles, mut places) = (Vec::new(), Vec::new());
         for (line, text) in (1..).zip(stdin.lock().lines()) {
             let text = text.map_err(|error| {
-                Fault::option("stdin", "", "FILE_SYNTAX", &error.to_string(), "give text in UTF-8")
+                Fault::option(
+                    "stdin",
+                    "",
+                    "FILE_SYNTAX",
+                    &error.to_string(),
+                    "give text in UTF-8",
+                )
             })?;
             if !text.trim().is_empty() {
                 smiles.push(text.trim().to_owned());
-                places.push(Place { file: "stdin".to_owned(), line, field: "smiles".to_owned() });
+                places.push(Place {
+                    file: "stdin".to_owned(),
+                    line,
+                    field: "smiles".to_owned(),
+                });
             }
         }
         Ok((smiles, places))
@@ -70,9 +92,18 @@ impl Sites {
 /// Puts each fault, which names its molecule as `smiles[i]`, where the molecule was written.
 fn placed(fault: Fault, places: &[Place]) -> Fault {
     let place = |fault: InputError| {
-        let number = fault.place.field.strip_prefix("smiles[").and_then(|rest| rest.strip_suffix(']'));
-        let place = number.and_then(|number| places.get(number.parse::<usize>().ok()?)).cloned();
-        InputError { place: place.unwrap_or(fault.place), ..fault }
+        let number = fault
+            .place
+            .field
+            .strip_prefix("smiles[")
+            .and_then(|rest| rest.strip_suffix(']'));
+        let place = number
+            .and_then(|number| places.get(number.parse::<usize>().ok()?))
+            .cloned();
+        InputError {
+            place: place.unwrap_or(fault.place),
+            ..fault
+        }
     };
     match fault {
         Fault::Input(faults) => Fault::Input(faults.into_iter().map(place).collect()),

@@ -38,16 +38,29 @@ impl Submit {
     pub(super) async fn run(self) -> Result<(), Fault> {
         let campaign = read_campaign(&self.file)?;
         let client = Client::open(&self.engine, Need::Jobs).await?;
-        let submission =
-            Submission { campaign, request_id: self.request_id, validate_only: self.validate_only };
+        let submission = Submission {
+            campaign,
+            request_id: self.request_id,
+            validate_only: self.validate_only,
+        };
         let submitted = client.submit(submission).await;
         client.close().await?;
         let job = submitted?;
-        job.warnings.iter().for_each(|warning| talk(&format!("note: {warning}")));
+        job.warnings
+            .iter()
+            .for_each(|warning| talk(&format!("note: {warning}")));
         if self.validate_only {
-            talk(&format!("the campaign is valid: {} cells; nothing was queued", count(job.cells)));
+            talk(&format!(
+                "the campaign is valid: {} cells; nothing was queued",
+                count(job.cells)
+            ));
         } else {
-            talk(&format!("queued {} cells; next: enolattice watch {}{}", count(job.cells), job.job, self.engine.repeated()));
+            talk(&format!(
+                "queued {} cells; next: enolattice watch {}{}",
+                count(job.cells),
+                job.job,
+                self.engine.repeated()
+            ));
         }
         match (self.json, self.validate_only) {
             (true, _) => print_json(&JobRecord::from(job)),

@@ -25,7 +25,13 @@ pub(super) struct Watch {
 impl Watch {
     pub(super) async fn run(self) -> Result<(), Fault> {
         let client = Client::open(&self.engine, Need::Work).await?;
-        let each = |job: &_| if self.json { print_json_line(&JobRecord::from(Clone::clone(job))) } else { Ok(()) };
+        let each = |job: &_| {
+            if self.json {
+                print_json_line(&JobRecord::from(Clone::clone(job)))
+            } else {
+                Ok(())
+            }
+        };
         let ended = follow(&client, &self.job, each).await;
         client.close().await?;
         let job = ended?;

@@ -145,13 +145,21 @@ impl From<CellDescription> for CellRecord {
 
 impl From<ExplainedRate> for RateRecord {
     fn from(rate: ExplainedRate) -> RateRecord {
-        RateRecord { step: rate.step, log10_k: rate.log10_k, sigma: rate.sigma, source: rate.source }
+        RateRecord {
+            step: rate.step,
+            log10_k: rate.log10_k,
+            sigma: rate.sigma,
+            source: rate.source,
+        }
     }
 }
 
 impl From<(Channel, f64)> for LossRecord {
     fn from((channel, fraction): (Channel, f64)) -> LossRecord {
-        LossRecord { channel: channel.name(), fraction }
+        LossRecord {
+            channel: channel.name(),
+            fraction,
+        }
     }
 }
 
@@ -179,6 +187,9 @@ impl From<Caution> for CautionRecord {
 
 impl From<Advice> for AdviceRecord {
     fn from(advice: Advice) -> AdviceRecord {
-        AdviceRecord { change: advice.change, expected_yield: advice.expected_yield }
+        AdviceRecord {
+            change: advice.change,
+            expected_yield: advice.expected_yield,
+        }
     }
 }

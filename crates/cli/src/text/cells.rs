@@ -27,8 +27,17 @@ pub(crate) fn cell_table(cells: &[RankedCell]) -> String {
         ("cautions", Left),
     ];
     let dispensable = ["selectivity", "cautions"];
-    let kept: Vec<bool> = columns.iter().map(|(name, _)| !narrow || !dispensable.contains(name)).collect();
-    let keep = |row: Vec<String>| row.into_iter().zip(&kept).filter(|(_, kept)| **kept).map(|(text, _)| text).collect();
+    let kept: Vec<bool> = columns
+        .iter()
+        .map(|(name, _)| !narrow || !dispensable.contains(name))
+        .collect();
+    let keep = |row: Vec<String>| {
+        row.into_iter()
+            .zip(&kept)
+            .filter(|(_, kept)| **kept)
+            .map(|(text, _)| text)
+            .collect()
+    };
     let rows: Vec<Vec<String>> = cells.iter().map(|cell| keep(row(cell))).collect();
     columns.retain(|(name, _)| !narrow || !dispensable.contains(name));
     table(&columns, rows)
@@ -46,7 +55,9 @@ fn row(cell: &RankedCell) -> Vec<String> {
         percent(cell.expected_yield),
         percent(cell.p_hit),
         percent(cell.selectivity),
-        cell.largest_loss.map_or("", |channel| channel.name()).to_owned(),
+        cell.largest_loss
+            .map_or("", |channel| channel.name())
+            .to_owned(),
         match &cell.severity {
             Some(severity) => format!("{severity}: {}", cell.cautions.join(", ")),
             None => String::new(),

@@ -18,12 +18,18 @@ pub(crate) fn explanation_page(cell: &CellDescription, told: &Explanation) -> St
         ("Acidic sites", sites(told)),
         ("Rates", rates(told)),
         ("Losses (of the substrate charged)", losses(told)),
-        ("Time course (reference, parameters at their means)", course(told)),
+        (
+            "Time course (reference, parameters at their means)",
+            course(told),
+        ),
         ("Cautions", cautions(told)),
         ("Limits", sentences(&told.limits, "the model names none")),
         ("What a change would bring", advice(told)),
     ];
-    let mut page: Vec<String> = sections.iter().map(|(heading, text)| format!("{heading}\n{text}")).collect();
+    let mut page: Vec<String> = sections
+        .iter()
+        .map(|(heading, text)| format!("{heading}\n{text}"))
+        .collect();
     page.push(wrapped("", SAFETY));
     page.push(format!("model {}", told.model));
     page.join("\n\n")
@@ -35,8 +41,14 @@ fn cell_section(cell: &CellDescription) -> String {
         lines.push(("number", number.to_string()));
     }
     lines.extend([
-        ("substrate", with_smiles(&cell.substrate, &cell.substrate_smiles)),
-        ("base", format!("{}, {} equiv", cell.base, short(cell.base_equiv))),
+        (
+            "substrate",
+            with_smiles(&cell.substrate, &cell.substrate_smiles),
+        ),
+        (
+            "base",
+            format!("{}, {} equiv", cell.base, short(cell.base_equiv)),
+        ),
         (
             "electrophile",
             format!(
@@ -45,22 +57,51 @@ fn cell_section(cell: &CellDescription) -> String {
                 short(cell.electrophile_equiv)
             ),
         ),
-        ("solvent", format!("{}, substrate {} mol/L", cell.solvent, short(cell.concentration_m))),
-        ("temperature", format!("{} °C", temperatures(cell.formation_temperature_c, cell.temperature_c))),
-        ("time", format!("{} h; electrophile over {} min", short(cell.time_h), short(cell.dosing_min))),
+        (
+            "solvent",
+            format!(
+                "{}, substrate {} mol/L",
+                cell.solvent,
+                short(cell.concentration_m)
+            ),
+        ),
+        (
+            "temperature",
+            format!(
+                "{} °C",
+                temperatures(cell.formation_temperature_c, cell.temperature_c)
+            ),
+        ),
+        (
+            "time",
+            format!(
+                "{} h; electrophile over {} min",
+                short(cell.time_h),
+                short(cell.dosing_min)
+            ),
+        ),
         ("addition", cell.addition.clone()),
     ]);
     pairs(lines)
 }
 
 fn with_smiles(name: &str, smiles: &str) -> String {
-    if name == smiles { name.to_owned() } else { format!("{name} ({smiles})") }
+    if name == smiles {
+        name.to_owned()
+    } else {
+        format!("{name} ({smiles})")
+    }
 }
 
 fn numbers(told: &Explanation) -> String {
-    let uncertain = told.yield_sigma.map_or_else(String::new, |sigma| format!(" ± {}", percent(Some(sigma))));
+    let uncertain = told
+        .yield_sigma
+        .map_or_else(String::new, |sigma| format!(" ± {}", percent(Some(sigma))));
     pairs(vec![
-        ("expected yield", format!("{}{uncertain}", percent(told.expected_yield))),
+        (
+            "expected yield",
+            format!("{}{uncertain}", percent(told.expected_yield)),
+        ),
         ("yield on limiting", percent(told.yield_on_limiting)),
         ("p_hit", percent(told.p_hit)),
         ("feasibility", percent(told.feasibility)),
@@ -68,7 +109,10 @@ fn numbers(told: &Explanation) -> String {
         ("reference yield", percent(told.reference_yield)),
         ("fast yield", percent(told.fast_yield)),
         ("log10 K", fixed(told.log10_k, 2)),
-        ("ΔG° deprotonation", with_unit(told.delta_g_deprotonation_kj_mol, 1, "kJ/mol")),
+        (
+            "ΔG° deprotonation",
+            with_unit(told.delta_g_deprotonation_kj_mol, 1, "kJ/mol"),
+        ),
         ("enolate fraction", percent(told.enolate_fraction)),
     ])
 }
@@ -83,8 +127,14 @@ fn with_unit(number: Option<f64>, decimals: usize, unit: &str) -> String {
 fn product(told: &Explanation) -> String {
     let unknown = || "unknown".to_owned();
     let mut lines = vec![
-        ("SMILES", told.product_smiles.clone().unwrap_or_else(unknown)),
-        ("formula", told.product_formula.clone().unwrap_or_else(unknown)),
+        (
+            "SMILES",
+            told.product_smiles.clone().unwrap_or_else(unknown),
+        ),
+        (
+            "formula",
+            told.product_formula.clone().unwrap_or_else(unknown),
+        ),
         ("monoisotopic mass", with_unit(told.product_mass, 4, "Da")),
     ];
     if let Some(condensed) = &told.condensation_smiles {
@@ -95,21 +145,46 @@ fn product(told: &Explanation) -> String {
 
 fn sites(told: &Explanation) -> String {
     let records: Vec<SiteRecord> = told.sites.iter().cloned().map(SiteRecord::from).collect();
-    if records.is_empty() { "  none known".to_owned() } else { indented(&site_table(&records, true)) }
+    if records.is_empty() {
+        "  none known".to_owned()
+    } else {
+        indented(&site_table(&records, true))
+    }
 }
 
 fn rates(told: &Explanation) -> String {
-    let columns = [("step", Side::Left), ("log10 k", Side::Right), ("σ", Side::Right), ("source", Side::Left)];
+    let columns = [
+        ("step", Side::Left),
+        ("log10 k", Side::Right),
+        ("σ", Side::Right),
+        ("source", Side::Left),
+    ];
     let rows = told.rates.iter().map(|rate| {
-        vec![rate.step.clone(), fixed(Some(rate.log10_k), 2), fixed(Some(rate.sigma), 1), rate.source.clone()]
+        vec![
+            rate.step.clone(),
+            fixed(Some(rate.log10_k), 2),
+            fixed(Some(rate.sigma), 1),
+            rate.source.clone(),
+        ]
     });
-    if told.rates.is_empty() { "  none known".to_owned() } else { indented(&table(&columns, rows)) }
+    if told.rates.is_empty() {
+        "  none known".to_owned()
+    } else {
+        indented(&table(&columns, rows))
+    }
 }
 
 fn losses(told: &Explanation) -> String {
-    let rows = told.losses.iter().map(|(channel, fraction)| vec![channel.name().to_owned(), percent(Some(*fraction))]);
+    let rows = told
+        .losses
+        .iter()
+        .map(|(channel, fraction)| vec![channel.name().to_owned(), percent(Some(*fraction))]);
     let columns = [("channel", Side::Left), ("fraction", Side::Right)];
-    if told.losses.is_empty() { "  none known".to_owned() } else { indented(&table(&columns, rows)) }
+    if told.losses.is_empty() {
+        "  none known".to_owned()
+    } else {
+        indented(&table(&columns, rows))
+    }
 }
 
 fn course(told: &Explanation) -> String {
@@ -121,10 +196,21 @@ fn course(told: &Explanation) -> String {
         ("product", Side::Right),
     ];
     let rows = thinned(&told.course).map(|point| {
-        let amounts = [point.substrate, point.anions, point.electrophile, point.product];
-        std::iter::once(time(point.time_s)).chain(amounts.map(|amount| percent(Some(amount)))).collect()
+        let amounts = [
+            point.substrate,
+            point.anions,
+            point.electrophile,
+            point.product,
+        ];
+        std::iter::once(time(point.time_s))
+            .chain(amounts.map(|amount| percent(Some(amount))))
+            .collect()
     });
-    if told.course.is_empty() { "  unknown".to_owned() } else { indented(&table(&columns, rows)) }
+    if told.course.is_empty() {
+        "  unknown".to_owned()
+    } else {
+        indented(&table(&columns, rows))
+    }
 }
 
 /// At most about twenty points, the last among them; JSON has them all.
@@ -132,7 +218,11 @@ fn thinned(course: &[CoursePoint]) -> impl Iterator<Item = &CoursePoint> {
     let step = course.len().div_ceil(20).max(1);
     let last = course.len().saturating_sub(1);
     let kept = move |(i, _): &(usize, &CoursePoint)| i % step == 0 || *i == last;
-    course.iter().enumerate().filter(kept).map(|(_, point)| point)
+    course
+        .iter()
+        .enumerate()
+        .filter(kept)
+        .map(|(_, point)| point)
 }
 
 /// A time after the electrophile begins to be added; before it is negative.
@@ -149,27 +239,57 @@ fn cautions(told: &Explanation) -> String {
     let lines: Vec<String> = told
         .cautions
         .iter()
-        .map(|caution| wrapped(&format!("  {} ({}): ", caution.category.name(), caution.severity.name()), &caution.text))
+        .map(|caution| {
+            wrapped(
+                &format!(
+                    "  {} ({}): ",
+                    caution.category.name(),
+                    caution.severity.name()
+                ),
+                &caution.text,
+            )
+        })
         .collect();
-    if lines.is_empty() { "  none known to the model".to_owned() } else { lines.join("\n") }
+    if lines.is_empty() {
+        "  none known to the model".to_owned()
+    } else {
+        lines.join("\n")
+    }
 }
 
 fn sentences(texts: &[String], none: &str) -> String {
     let lines: Vec<String> = texts.iter().map(|text| wrapped("  - ", text)).collect();
-    if lines.is_empty() { format!("  {none}") } else { lines.join("\n") }
+    if lines.is_empty() {
+        format!("  {none}")
+    } else {
+        lines.join("\n")
+    }
 }
 
 fn advice(told: &Explanation) -> String {
     let columns = [("change", Side::Left), ("expected yield", Side::Right)];
-    let rows = told.advice.iter().map(|advice| vec![advice.change.clone(), percent(Some(advice.expected_yield))]);
-    if told.advice.is_empty() { "  none that helps".to_owned() } else { indented(&table(&columns, rows)) }
+    let rows = told
+        .advice
+        .iter()
+        .map(|advice| vec![advice.change.clone(), percent(Some(advice.expected_yield))]);
+    if told.advice.is_empty() {
+        "  none that helps".to_owned()
+    } else {
+        indented(&table(&columns, rows))
+    }
 }
 
 fn pairs(lines: Vec<(&str, String)>) -> String {
-    let lines: Vec<String> = lines.into_iter().map(|(name, value)| format!("  {name:<19}{value}")).collect();
+    let lines: Vec<String> = lines
+        .into_iter()
+        .map(|(name, value)| format!("  {name:<19}{value}"))
+        .collect();
     lines.join("\n")
 }
 
 fn indented(text: &str) -> String {
-    text.lines().map(|line| format!("  {line}")).collect::<Vec<_>>().join("\n")
+    text.lines()
+        .map(|line| format!("  {line}"))
+        .collect::<Vec<_>>()
+        .join("\n")
 }

@@ -27,14 +27,17 @@ pub(crate) fn job_table(jobs: &[Job]) -> String {
 
 fn row(job: &Job) -> Vec<String> {
     let submitted = UNIX_EPOCH + Duration::from_millis(job.submitted_unix_ms);
-    let age = SystemTime::now().duration_since(submitted).unwrap_or_default();
+    let age = SystemTime::now()
+        .duration_since(submitted)
+        .unwrap_or_default();
     vec![
         job.job.clone(),
         job.title.clone(),
         state_name(job.state).to_owned(),
         count(job.cells),
         percent(Some(job.cells_done as f64 / job.cells.max(1) as f64)),
-        job.best_yield.map_or_else(|| "none yet".to_owned(), |best| percent(Some(best))),
+        job.best_yield
+            .map_or_else(|| "none yet".to_owned(), |best| percent(Some(best))),
         format!("{} ago", HumanDuration(age)),
         job.failure.clone(),
     ]

@@ -2,7 +2,10 @@
 
 /// A fraction in percent; `unknown` where there is none.
 pub(crate) fn percent(fraction: Option<f64>) -> String {
-    fraction.map_or_else(|| "unknown".to_owned(), |fraction| format!("{:.1} %", 100.0 * fraction))
+    fraction.map_or_else(
+        || "unknown".to_owned(),
+        |fraction| format!("{:.1} %", 100.0 * fraction),
+    )
 }
 
 /// A count with thousands apart.
@@ -19,7 +22,10 @@ pub(super) fn short(number: f64) -> String {
 
 /// A number with fixed decimals; `unknown` where there is none.
 pub(super) fn fixed(number: Option<f64>, decimals: usize) -> String {
-    number.map_or_else(|| "unknown".to_owned(), |number| minus(&format!("{number:.decimals$}")))
+    number.map_or_else(
+        || "unknown".to_owned(),
+        |number| minus(&format!("{number:.decimals$}")),
+    )
 }
 
 /// The program of temperatures: that of the deprotonation first where it is another.
@@ -41,7 +47,13 @@ mod tests {
 
     #[test]
     fn numbers_read_as_on_paper() {
-        for (number, text) in [(-78.0, "−78"), (0.2, "0.2"), (25.0, "25"), (1.0 / 3.0, "0.333"), (-0.0001, "0")] {
+        for (number, text) in [
+            (-78.0, "−78"),
+            (0.2, "0.2"),
+            (25.0, "25"),
+            (1.0 / 3.0, "0.333"),
+            (-0.0001, "0"),
+        ] {
             assert_eq!(short(number), text);
         }
         assert_eq!(percent(Some(0.8314)), "83.1 %");

@@ -7,13 +7,23 @@ use super::table::{Side, table};
 /// A table of reagents.
 pub(crate) fn reagent_table(rows: &[ReagentRow]) -> String {
     use Side::Left;
-    let columns =
-        [("kind", Left), ("name", Left), ("other names", Left), ("CAS", Left), ("facts", Left), ("GHS H-codes", Left)];
+    let columns = [
+        ("kind", Left),
+        ("name", Left),
+        ("other names", Left),
+        ("CAS", Left),
+        ("facts", Left),
+        ("GHS H-codes", Left),
+    ];
     table(&columns, rows.iter().map(row))
 }
 
 fn row(reagent: &ReagentRow) -> Vec<String> {
-    let codes = if reagent.h_codes.is_empty() { "unknown".to_owned() } else { reagent.h_codes.join(" ") };
+    let codes = if reagent.h_codes.is_empty() {
+        "unknown".to_owned()
+    } else {
+        reagent.h_codes.join(" ")
+    };
     vec![
         reagent.kind.clone(),
         reagent.name.clone(),

@@ -7,9 +7,16 @@ use crate::json::{MoleculeSites, SiteRecord};
 /// A molecule with its sites.
 pub(crate) fn molecule_page(molecule: &MoleculeSites) -> String {
     if molecule.sites.is_empty() {
-        return format!("{}\n  no acidic site is known to the model", molecule.smiles);
+        return format!(
+            "{}\n  no acidic site is known to the model",
+            molecule.smiles
+        );
     }
-    format!("{}\n{}", molecule.smiles, site_table(&molecule.sites, false))
+    format!(
+        "{}\n{}",
+        molecule.smiles,
+        site_table(&molecule.sites, false)
+    )
 }
 
 /// A table of sites; with the molecule and the pKa in the medium where there is one.

@@ -15,9 +15,14 @@ pub(super) enum Side {
 }
 
 /// A table without frames; numbers to the right.
-pub(super) fn table(columns: &[(&str, Side)], rows: impl IntoIterator<Item = Vec<String>>) -> String {
+pub(super) fn table(
+    columns: &[(&str, Side)],
+    rows: impl IntoIterator<Item = Vec<String>>,
+) -> String {
     let mut table = Table::new();
-    table.load_preset(presets::NOTHING).set_content_arrangement(ContentArrangement::Dynamic);
+    table
+        .load_preset(presets::NOTHING)
+        .set_content_arrangement(ContentArrangement::Dynamic);
     if !std::io::stdout().is_terminal() {
         table.set_width(PLAIN_WIDTH);
     }
@@ -29,13 +34,20 @@ pub(super) fn table(columns: &[(&str, Side)], rows: impl IntoIterator<Item = Vec
         }
         column.set_padding((0, 2));
     }
-    let lines: Vec<String> = table.lines().map(|line| line.trim_end().to_owned()).collect();
+    let lines: Vec<String> = table
+        .lines()
+        .map(|line| line.trim_end().to_owned())
+        .collect();
     lines.join("\n")
 }
 
 /// The width that there is, columns.
 pub(super) fn width() -> usize {
-    let wide = if std::io::stdout().is_terminal() { Table::new().width() } else { None };
+    let wide = if std::io::stdout().is_terminal() {
+        Table::new().width()
+    } else {
+        None
+    };
     usize::from(wide.unwrap_or(PLAIN_WIDTH))
 }
 
@@ -54,5 +66,8 @@ pub(super) fn wrapped(first: &str, sentence: &str) -> String {
         line.push_str(word);
     }
     lines.push(line);
-    format!("{first}{}", lines.join(&format!("\n{}", " ".repeat(indent))))
+    format!(
+        "{first}{}",
+        lines.join(&format!("\n{}", " ".repeat(indent)))
+    )
 }

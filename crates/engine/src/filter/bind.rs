@@ -21,17 +21,34 @@ enum Question {
     Any(Vec<Question>),
     Not(Box<Question>),
     /// A table over one axis.
-    Axis { digit: Digit, passes: Vec<bool> },
+    Axis {
+        digit: Digit,
+        passes: Vec<bool>,
+    },
     /// A table over two axes.
-    Axes { digits: (Digit, Digit), passes: Vec<Vec<bool>> },
+    Axes {
+        digits: (Digit, Digit),
+        passes: Vec<Vec<bool>>,
+    },
     /// A comparison of a fraction; no value: it is known.
-    Fraction { of: fn(&Score) -> Option<f64>, operator: Operator, with: Option<f64> },
+    Fraction {
+        of: fn(&Score) -> Option<f64>,
+        operator: Operator,
+        with: Option<f64>,
+    },
     /// A set of channels by number, bit 0 for none.
-    LargestLoss { passes: u32 },
+    LargestLoss {
+        passes: u32,
+    },
     /// Any of these bits of caution.
-    Cautions { any_of: u32 },
+    Cautions {
+        any_of: u32,
+    },
     /// A comparison of the level of severity.
-    Severity { operator: Operator, with: usize },
+    Severity {
+        operator: Operator,
+        with: usize,
+    },
 }
 
 impl Filter {
@@ -40,7 +57,11 @@ impl Filter {
     /// # Errors
     /// A name that no value of the axis has.
     pub(crate) fn bind(&self, campaign: &Campaign) -> Result<BoundFilter, Fault> {
-        let question = self.expression.as_ref().map(|e| bind(e, campaign)).transpose()?;
+        let question = self
+            .expression
+            .as_ref()
+            .map(|e| bind(e, campaign))
+            .transpose()?;
         Ok(BoundFilter { question })
     }
 }
@@ -53,7 +74,9 @@ impl BoundFilter {
 
     /// Whether this cell passes.
     pub(crate) fn passes(&self, digits: &CellDigits, score: &Score) -> bool {
-        self.question.as_ref().is_none_or(|question| question.answer(digits, score))
+        self.question
+            .as_ref()
+            .is_none_or(|question| question.answer(digits, score))
     }
 }
 
@@ -64,9 +87,10 @@ impl Question {
             Question::Any(parts) => parts.iter().any(|part| part.answer(digits, score)),
             Question::Not(part) => !part.answer(digits, score),
             Question::Axis { digit, passes } => passes[digit(digits) as usize],
-            Question::Axes { digits: (first, second), passes } => {
-                passes[first(digits) as usize][second(digits) as usize]
-            }
+            Question::Axes {
+                digits: (first, second),
+                passes,
+            } => passes[first(digits) as usize][second(digits) as usize],
             Question::Fraction { of, operator, with } => match (of(score), with) {
                 (Some(value), Some(with)) => operator.holds(value, *with),
                 (value, _) => value.is_some() && with.is_none(),
@@ -86,7 +110,12 @@ impl Question {
 }
 
 fn bind(expression: &Expression, campaign: &Campaign) -> Result<Question, Fault> {
-    let all = |parts: &[Expression]| parts.iter().map(|part| bind(part, campaign)).collect::<Result<_, Fault>>();
+    let all = |parts: &[Expression]| {
+        parts
+            .iter()
+            .map(|part| bind(part, campaign))
+            .collect::<Result<_, Fault>>()
+    };
     Ok(match expression {
         Expression::All(parts) => Question::All(all(parts)?),
         Expression::Any(parts) => Question::Any(all(parts)?),
@@ -98,23 +127,38 @@ fn bind(expression: &Expression, campaign: &Campaign) -> Result<Question, Fault>
 fn bind_test(test: &Test, campaign: &Campaign) -> Result<Question, Fault> {
     let numbers = |digit: Digit, values: &[f64]| Question::Axis {
         digit,
-        passes: values.iter().map(|value| number_passes(test, *value)).collect(),
+        passes: values
+            .iter()
+            .map(|value| number_passes(test, *value))
+            .collect(),
     };
     Ok(match test.field {
         Field::Substrate => {
-            let names = campaign.substrates.iter().map(|s| molecule_names(&s.name, &s.molecule));
+            let names = campaign
+                .substrates
+                .iter()
+                .map(|s| molecule_names(&s.name, &s.molecule));
             axis(test, |d| d.substrate, names.collect())?
         }
         Field::Electrophile => {
-            let names = campaign.electrophiles.iter().map(|e| molecule_names(&e.name, &e.molecule));
+            let names = campaign
+                .electrophiles
+                .iter()
+                .map(|e| molecule_names(&e.name, &e.molecule));
             axis(test, |d| d.electrophile, names.collect())?
         }
         Field::Base => {
-            let names = campaign.bases.iter().map(|b| library_names(&b.record.name, &b.record.synonyms));
+            let names = campaign
+                .bases
+                .iter()
+                .map(|b| library_names(&b.record.name, &b.record.synonyms));
             axis(test, |d| d.base, names.collect())?
         }
         Field::Solvent => {
-            let names = campaign.solvents.iter().map(|s| library_names(&s.record.name, &s.record.synonyms));
+            let names = campaign
+                .solvents
+                .iter()
+                .map(|s| library_names(&s.record.name, &s.record.synonyms));
             axis(test, |d| d.solvent, names.collect())?
         }
         Field::TemperatureC => numbers(|d| d.temperature, &campaign.temperature_c),
@@ -131,42 +175,73 @@ fn bind_test(test: &Test, campaign: &Campaign) -> Result<Question, Fault> {
         Field::Feasibility => fraction(test, |score| score.feasibility),
         Field::LargestLoss => {
             let none = u32::from(test.operator == Operator::NotEqual);
-            let passes = Channel::ALL.into_iter().filter(|channel| name_passes(test, channel.name()));
-            Question::LargestLoss { passes: passes.fold(none, |bits, channel| bits | 1 << channel as u32) }
+            let passes = Channel::ALL
+                .into_iter()
+                .filter(|channel| name_passes(test, channel.name()));
+            Question::LargestLoss {
+                passes: passes.fold(none, |bits, channel| bits | 1 << channel as u32),
+            }
         }
         Field::Cautions => {
-            let any_of = Category::ALL.into_iter().filter(|category| name_passes(test, category.name()));
-            Question::Cautions { any_of: any_of.fold(0, |bits, category| bits | category.bit()) }
+            let any_of = Category::ALL
+                .into_iter()
+                .filter(|category| name_passes(test, category.name()));
+            Question::Cautions {
+                any_of: any_of.fold(0, |bits, category| bits | category.bit()),
+            }
         }
         Field::Severity => severity(test),
     })
 }
 
 fn molecule_names(name: &str, molecule: &enolattice_molecule::Molecule) -> Vec<String> {
-    vec![name.to_owned(), molecule.smiles().to_owned(), molecule.canonical().to_owned()]
+    vec![
+        name.to_owned(),
+        molecule.smiles().to_owned(),
+        molecule.canonical().to_owned(),
+    ]
 }
 
 fn library_names(name: &str, synonyms: &[String]) -> Vec<String> {
-    std::iter::once(name.to_owned()).chain(synonyms.iter().cloned()).collect()
+    std::iter::once(name.to_owned())
+        .chain(synonyms.iter().cloned())
+        .collect()
 }
 
-/// A test of the names of an axis; a value has several names and passes by any of them.
+/// A test of the names of an axis. A value has several names and is meant by any of them; a
+/// pattern is held only against the first, which is the one that rankings show.
 fn axis(test: &Test, digit: Digit, names: Vec<Vec<String>>) -> Result<Question, Fault> {
-    let matches: Vec<bool> =
-        names.iter().map(|of_value| of_value.iter().any(|name| name_matches(test, name))).collect();
+    let is_pattern = test.operator == Operator::Has
+        || matches!(&test.value, Value::Name(name) if name.contains('*'));
+    let asked = |of_value: &Vec<String>| if is_pattern { 1 } else { of_value.len() };
+    let matches: Vec<bool> = names
+        .iter()
+        .map(|of_value| {
+            of_value
+                .iter()
+                .take(asked(of_value))
+                .any(|name| name_matches(test, name))
+        })
+        .collect();
     match &test.value {
-        Value::Name(name) if test.operator != Operator::Has && !matches.contains(&true) => {
+        Value::Name(name) if !is_pattern && !matches.contains(&true) => {
             let all = names.iter().flatten().map(String::as_str);
             let remedy = match nearest(name, all) {
                 Some(known) => format!("did you mean \"{known}\"?"),
-                None => format!("write a name that the campaign has, or `{} : \"…\"` for a part of it", test.field.name()),
+                None => format!(
+                    "write a name that the campaign has, or `{} : \"…\"` for a part of it",
+                    test.field.name()
+                ),
             };
             let reason = format!("the campaign has no {} of this name", test.field.name());
             Err(fault(test.position, name.clone(), &reason, remedy))
         }
         _ => {
             let wanted = test.operator != Operator::NotEqual;
-            Ok(Question::Axis { digit, passes: matches.into_iter().map(|m| m == wanted).collect() })
+            Ok(Question::Axis {
+                digit,
+                passes: matches.into_iter().map(|m| m == wanted).collect(),
+            })
         }
     }
 }
@@ -174,7 +249,9 @@ fn axis(test: &Test, digit: Digit, names: Vec<Vec<String>>) -> Result<Question, 
 fn formation_temperature(test: &Test, campaign: &Campaign) -> Question {
     let of_reaction = |reaction: &f64| {
         let formation = campaign.formation_temperature_c.iter();
-        formation.map(|formation| number_passes(test, formation.unwrap_or(*reaction))).collect()
+        formation
+            .map(|formation| number_passes(test, formation.unwrap_or(*reaction)))
+            .collect()
     };
     Question::Axes {
         digits: (|d| d.temperature, |d| d.formation_temperature),
@@ -186,7 +263,9 @@ fn addition(test: &Test, campaign: &Campaign) -> Question {
     let passes = |order: Addition| name_passes(test, order.name());
     let of_base = |base: &std::sync::Arc<enolattice_model::Base>| {
         let orders = campaign.addition.iter();
-        orders.map(|order| passes(order.unwrap_or_else(|| base.usual_addition()))).collect()
+        orders
+            .map(|order| passes(order.unwrap_or_else(|| base.usual_addition())))
+            .collect()
     };
     Question::Axes {
         digits: (|d| d.base, |d| d.addition),
@@ -199,13 +278,23 @@ fn fraction(test: &Test, of: fn(&Score) -> Option<f64>) -> Question {
         Value::Number(number) => Some(number),
         _ => None,
     };
-    Question::Fraction { of, operator: test.operator, with }
+    Question::Fraction {
+        of,
+        operator: test.operator,
+        with,
+    }
 }
 
 fn severity(test: &Test) -> Question {
     match test.value {
-        Value::Level(with) => Question::Severity { operator: test.operator, with },
-        _ => Question::Severity { operator: Operator::Greater, with: 0 },
+        Value::Level(with) => Question::Severity {
+            operator: test.operator,
+            with,
+        },
+        _ => Question::Severity {
+            operator: Operator::Greater,
+            with: 0,
+        },
     }
 }
 
@@ -223,7 +312,9 @@ fn name_passes(test: &Test, name: &str) -> bool {
 
 /// Whether a name matches the pattern, whatever the case.
 fn name_matches(test: &Test, name: &str) -> bool {
-    let Value::Name(pattern) = &test.value else { return true };
+    let Value::Name(pattern) = &test.value else {
+        return true;
+    };
     let (name, pattern) = (name.to_lowercase(), pattern.to_lowercase());
     let contained = test.operator == Operator::Has && test.field != Field::Cautions;
     let (open_start, pattern) = match pattern.strip_prefix('*') {

@@ -48,7 +48,11 @@ impl Field {
         (Field::Electrophile, "electrophile", Kind::Name),
         (Field::Solvent, "solvent", Kind::Name),
         (Field::TemperatureC, "temperature_c", Kind::Number),
-        (Field::FormationTemperatureC, "formation_temperature_c", Kind::Number),
+        (
+            Field::FormationTemperatureC,
+            "formation_temperature_c",
+            Kind::Number,
+        ),
         (Field::BaseEquiv, "base_equiv", Kind::Number),
         (Field::ElectrophileEquiv, "electrophile_equiv", Kind::Number),
         (Field::ConcentrationM, "concentration_m", Kind::Number),
@@ -65,7 +69,10 @@ impl Field {
     ];
 
     pub(super) fn from_name(name: &str) -> Option<Field> {
-        Self::ALL.iter().find(|(_, known, _)| *known == name).map(|(field, _, _)| *field)
+        Self::ALL
+            .iter()
+            .find(|(_, known, _)| *known == name)
+            .map(|(field, _, _)| *field)
     }
 
     pub(super) fn name(self) -> &'static str {
@@ -81,7 +88,10 @@ impl Field {
         match self {
             Field::Addition => Addition::ALL.iter().map(|order| order.name()).collect(),
             Field::LargestLoss => Channel::ALL.iter().map(|channel| channel.name()).collect(),
-            Field::Cautions => Category::ALL.iter().map(|category| category.name()).collect(),
+            Field::Cautions => Category::ALL
+                .iter()
+                .map(|category| category.name())
+                .collect(),
             Field::Severity => LEVELS.iter().map(|(name, _)| *name).collect(),
             _ => Vec::new(),
         }
@@ -141,9 +151,15 @@ impl Kind {
         match self {
             Kind::Name => &[Equal, NotEqual, Has],
             Kind::Set => &[Has],
-            Kind::Number | Kind::Fraction | Kind::Level => {
-                &[Equal, NotEqual, Less, LessOrEqual, Greater, GreaterOrEqual, Has]
-            }
+            Kind::Number | Kind::Fraction | Kind::Level => &[
+                Equal,
+                NotEqual,
+                Less,
+                LessOrEqual,
+                Greater,
+                GreaterOrEqual,
+                Has,
+            ],
         }
     }
 }

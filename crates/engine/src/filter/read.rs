@@ -27,7 +27,10 @@ pub(super) type Fault = Box<InputError>;
 /// A fault at a character of the filter, counted from 1.
 pub(super) fn fault(position: usize, value: String, reason: &str, remedy: String) -> Fault {
     Box::new(InputError {
-        place: Place { field: "filter".to_owned(), ..Place::default() },
+        place: Place {
+            field: "filter".to_owned(),
+            ..Place::default()
+        },
         value,
         code: "FILTER_INVALID",
         reason: format!("at character {position}: {reason}"),
@@ -79,23 +82,44 @@ impl Filter {
     /// The first fault, with its position and a remedy.
     pub(crate) fn read(text: &str) -> Result<Filter, Fault> {
         if text.len() > MOST_BYTES {
-            let reason = format!("the filter has {} bytes, more than {MOST_BYTES}", text.len());
+            let reason = format!(
+                "the filter has {} bytes, more than {MOST_BYTES}",
+                text.len()
+            );
             return Err(fault(1, String::new(), &reason, "shorten it".to_owned()));
         }
         let tokens = tokens(text)?;
         if tokens.is_empty() {
             return Ok(Filter::default());
         }
-        let mut reader = Reader { tokens: &tokens, at: 0, terms: 0, depth: 0, end: text.chars().count() + 1 };
+        let mut reader = Reader {
+            tokens: &tokens,
+            at: 0,
+            terms: 0,
+            depth: 0,
+            end: text.chars().count() + 1,
+        };
         let expression = reader.all()?;
         match reader.next() {
-            None => Ok(Filter { expression: Some(expression) }),
-            Some(token) if token.what == What::Close => {
-                Err(fault(token.position, ")".into(), "no parenthesis is open here", "remove it".into()))
-            }
+            None => Ok(Filter {
+                expression: Some(expression),
+            }),
+            Some(token) if token.what == What::Close => Err(fault(
+                token.position,
+                ")".into(),
+                "no parenthesis is open here",
+                "remove it".into(),
+            )),
             Some(token) => {
-                let remedy = "write AND or OR between two comparisons, and names with blanks in quotes".to_owned();
-                Err(fault(token.position, token.what.shown(), "a second comparison begins here", remedy))
+                let remedy =
+                    "write AND or OR between two comparisons, and names with blanks in quotes"
+                        .to_owned();
+                Err(fault(
+                    token.position,
+                    token.what.shown(),
+                    "a second comparison begins here",
+                    remedy,
+                ))
             }
         }
     }
@@ -145,10 +169,18 @@ impl<'a> Reader<'a> {
 
     fn term(&mut self) -> Result<Expression, Fault> {
         self.depth += 1;
-        let position = self.tokens.get(self.at).map_or(self.end, |token| token.position);
+        let position = self
+            .tokens
+            .get(self.at)
+            .map_or(self.end, |token| token.position);
         if self.depth > DEEPEST {
             let reason = format!("parentheses and NOTs are nested more than {DEEPEST} deep");
-            return Err(fault(position, String::new(), &reason, "write the filter flatter".to_owned()));
+            return Err(fault(
+                position,
+                String::new(),
+                &reason,
+                "write the filter flatter".to_owned(),
+            ));
         }
         let term = if self.takes("NOT") || self.takes("-") {
             Expression::Not(Box::new(self.term()?))
@@ -156,12 +188,26 @@ impl<'a> Reader<'a> {
             self.at += 1;
             let inner = self.all()?;
             match self.next() {
-                Some(Token { what: What::Close, .. }) => inner,
+                Some(Token {
+                    what: What::Close, ..
+                }) => inner,
                 Some(token) => {
                     let remedy = "write AND, OR or ) here".to_owned();
-                    return Err(fault(token.position, token.what.shown(), "a ) is missing before this", remedy));
+                    return Err(fault(
+                        token.position,
+                        token.what.shown(),
+                        "a ) is missing before this",
+                        remedy,
+                    ));
                 }
-                None => return Err(fault(self.end, String::new(), "a ( is never closed", "add a )".to_owned())),
+                None => {
+                    return Err(fault(
+                        self.end,
+                        String::new(),
+                        "a ( is never closed",
+                        "add a )".to_owned(),
+                    ));
+                }
             }
         } else {
             self.test()?
@@ -173,59 +219,127 @@ impl<'a> Reader<'a> {
     fn test(&mut self) -> Result<Expression, Fault> {
         self.terms += 1;
         let (name, position) = match self.next() {
-            Some(Token { what: What::Word(name), position }) => (name.as_str(), *position),
+            Some(Token {
+                what: What::Word(name),
+                position,
+            }) => (name.as_str(), *position),
             Some(token) => {
                 let remedy = "begin a comparison with a field, e.g. base = \"LDA\"".to_owned();
-                return Err(fault(token.position, token.what.shown(), "a field is missing here", remedy));
+                return Err(fault(
+                    token.position,
+                    token.what.shown(),
+                    "a field is missing here",
+                    remedy,
+                ));
             }
             None => {
                 let remedy = "add a comparison, e.g. expected_yield >= 0.5".to_owned();
-                return Err(fault(self.end, String::new(), "a comparison is missing at the end", remedy));
+                return Err(fault(
+                    self.end,
+                    String::new(),
+                    "a comparison is missing at the end",
+                    remedy,
+                ));
             }
         };
         if self.terms > MOST_TERMS {
             let reason = format!("the filter has more than {MOST_TERMS} comparisons");
-            return Err(fault(position, name.to_owned(), &reason, "use * in names, or ask in parts".to_owned()));
+            return Err(fault(
+                position,
+                name.to_owned(),
+                &reason,
+                "use * in names, or ask in parts".to_owned(),
+            ));
         }
         let negated = name.len() > 1 && name.starts_with('-');
         let test = self.comparison(name.trim_start_matches('-'), position)?;
-        Ok(if negated { Expression::Not(Box::new(Expression::Test(test))) } else { Expression::Test(test) })
+        Ok(if negated {
+            Expression::Not(Box::new(Expression::Test(test)))
+        } else {
+            Expression::Test(test)
+        })
     }
 
     fn comparison(&mut self, name: &str, position: usize) -> Result<Test, Fault> {
         let field = Field::from_name(name).ok_or_else(|| unknown_field(name, position))?;
         let operator = self.operator(field)?;
         let (value, position) = self.value(field, operator)?;
-        Ok(Test { field, operator, value, position })
+        Ok(Test {
+            field,
+            operator,
+            value,
+            position,
+        })
     }
 
     fn operator(&mut self, field: Field) -> Result<Operator, Fault> {
         let allowed = field.kind().operators();
-        let signs = allowed.iter().map(|operator| operator.sign()).collect::<Vec<_>>().join(" ");
+        let signs = allowed
+            .iter()
+            .map(|operator| operator.sign())
+            .collect::<Vec<_>>()
+            .join(" ");
         match self.next() {
-            Some(Token { what: What::Operator(operator), .. }) if allowed.contains(operator) => Ok(*operator),
-            Some(Token { what: What::Operator(operator), position }) => {
-                let reason = format!("`{}` cannot be compared with {}", field.name(), operator.sign());
-                Err(fault(*position, operator.sign().to_owned(), &reason, format!("use one of {signs}")))
+            Some(Token {
+                what: What::Operator(operator),
+                ..
+            }) if allowed.contains(operator) => Ok(*operator),
+            Some(Token {
+                what: What::Operator(operator),
+                position,
+            }) => {
+                let reason = format!(
+                    "`{}` cannot be compared with {}",
+                    field.name(),
+                    operator.sign()
+                );
+                Err(fault(
+                    *position,
+                    operator.sign().to_owned(),
+                    &reason,
+                    format!("use one of {signs}"),
+                ))
             }
             other => {
                 let reason = format!("an operator is missing after `{}`", field.name());
-                let (position, shown) =
-                    other.map_or((self.end, String::new()), |token| (token.position, token.what.shown()));
-                Err(fault(position, shown, &reason, format!("write one of {signs}")))
+                let (position, shown) = other.map_or((self.end, String::new()), |token| {
+                    (token.position, token.what.shown())
+                });
+                Err(fault(
+                    position,
+                    shown,
+                    &reason,
+                    format!("write one of {signs}"),
+                ))
             }
         }
     }
 
     fn value(&mut self, field: Field, operator: Operator) -> Result<(Value, usize), Fault> {
         let (text, quoted, position) = match self.next() {
-            Some(Token { what: What::Word(text), position }) => (text, false, *position),
-            Some(Token { what: What::Quoted(text), position }) => (text, true, *position),
+            Some(Token {
+                what: What::Word(text),
+                position,
+            }) => (text, false, *position),
+            Some(Token {
+                what: What::Quoted(text),
+                position,
+            }) => (text, true, *position),
             other => {
-                let reason = format!("a value is missing after `{} {}`", field.name(), operator.sign());
-                let (position, shown) =
-                    other.map_or((self.end, String::new()), |token| (token.position, token.what.shown()));
-                return Err(fault(position, shown, &reason, "write a number or a name in quotes".to_owned()));
+                let reason = format!(
+                    "a value is missing after `{} {}`",
+                    field.name(),
+                    operator.sign()
+                );
+                let (position, shown) = other.map_or((self.end, String::new()), |token| {
+                    (token.position, token.what.shown())
+                });
+                return Err(fault(
+                    position,
+                    shown,
+                    &reason,
+                    "write a number or a name in quotes".to_owned(),
+                ));
             }
         };
         if operator == Operator::Has && text == "*" && !quoted {
@@ -235,6 +349,7 @@ impl<'a> Reader<'a> {
             Kind::Number => number(field, text, position)?,
             Kind::Fraction => fraction(field, text, position)?,
             Kind::Level => level(text, position)?,
+            Kind::Name if operator == Operator::Has => pattern(text, position)?,
             Kind::Name | Kind::Set => name_value(field, text, position)?,
         };
         Ok((value, position))
@@ -267,7 +382,12 @@ fn number(field: Field, text: &str, position: usize) -> Result<Value, Fault> {
         Ok(number) if number.is_finite() => Ok(Value::Number(number)),
         _ => {
             let reason = format!("`{}` is compared with a number", field.name());
-            Err(fault(position, text.to_owned(), &reason, "write a number such as -78 or 0.5".to_owned()))
+            Err(fault(
+                position,
+                text.to_owned(),
+                &reason,
+                "write a number such as -78 or 0.5".to_owned(),
+            ))
         }
     }
 }
@@ -276,7 +396,12 @@ fn fraction(field: Field, text: &str, position: usize) -> Result<Value, Fault> {
     match number(field, text, position)? {
         Value::Number(number) if !(0.0..=1.0).contains(&number) => {
             let reason = format!("`{}` runs from 0 to 1", field.name());
-            Err(fault(position, text.to_owned(), &reason, "write 0.5 for 50 %".to_owned()))
+            Err(fault(
+                position,
+                text.to_owned(),
+                &reason,
+                "write 0.5 for 50 %".to_owned(),
+            ))
         }
         value => Ok(value),
     }
@@ -288,22 +413,42 @@ fn level(text: &str, position: usize) -> Result<Value, Fault> {
         Some(level) => Ok(Value::Level(level)),
         None => {
             let remedy = "write none, note, warning or stop".to_owned();
-            Err(fault(position, text.to_owned(), "there is no such severity", remedy))
+            Err(fault(
+                position,
+                text.to_owned(),
+                "there is no such severity",
+                remedy,
+            ))
         }
     }
 }
 
-fn name_value(field: Field, text: &str, position: usize) -> Result<Value, Fault> {
+/// A name or a part of one, with `*` only at its ends.
+fn pattern(text: &str, position: usize) -> Result<Value, Fault> {
     let inner = text.strip_prefix('*').unwrap_or(text);
     let inner = inner.strip_suffix('*').unwrap_or(inner);
-    // A * inside is no wildcard: SMILES and names may hold one only in principle, so refuse it.
     if inner.contains('*') {
         let remedy = "put * at the beginning or the end of the name".to_owned();
-        return Err(fault(position, text.to_owned(), "a * stands inside the name", remedy));
+        return Err(fault(
+            position,
+            text.to_owned(),
+            "a * stands inside the name",
+            remedy,
+        ));
     }
+    Ok(Value::Name(text.to_owned()))
+}
+
+fn name_value(field: Field, text: &str, position: usize) -> Result<Value, Fault> {
+    let name = pattern(text, position)?;
     let vocabulary = field.vocabulary();
     let plain = !text.contains('*');
-    if plain && !vocabulary.is_empty() && !vocabulary.iter().any(|known| known.eq_ignore_ascii_case(text)) {
+    if plain
+        && !vocabulary.is_empty()
+        && !vocabulary
+            .iter()
+            .any(|known| known.eq_ignore_ascii_case(text))
+    {
         let reason = format!("`{}` never has this value", field.name());
         let remedy = match nearest(text, vocabulary.iter().copied()) {
             Some(known) => format!("did you mean \"{known}\"?"),
@@ -311,5 +456,5 @@ fn name_value(field: Field, text: &str, position: usize) -> Result<Value, Fault>
         };
         return Err(fault(position, text.to_owned(), &reason, remedy));
     }
-    Ok(Value::Name(text.to_owned()))
+    Ok(name)
 }

@@ -68,14 +68,22 @@ fn quoted(characters: &[char], at: &mut usize, mark: char) -> Result<What, Fault
         *at += 1;
         match c {
             c if c == mark => return Ok(What::Quoted(text)),
-            '\\' if characters.get(*at).is_some_and(|next| matches!(next, '\\' | '"' | '\'')) => {
+            '\\' if characters
+                .get(*at)
+                .is_some_and(|next| matches!(next, '\\' | '"' | '\'')) =>
+            {
                 text.push(characters[*at]);
                 *at += 1;
             }
             c => text.push(c),
         }
     }
-    Err(fault(start + 1, mark.to_string(), "the quotation never ends", format!("close it with {mark}")))
+    Err(fault(
+        start + 1,
+        mark.to_string(),
+        "the quotation never ends",
+        format!("close it with {mark}"),
+    ))
 }
 
 fn operator(characters: &[char], at: &mut usize) -> Result<What, Fault> {
@@ -90,10 +98,22 @@ fn operator(characters: &[char], at: &mut usize) -> Result<What, Fault> {
         ('>', false) => (Operator::Greater, 1),
         (':', _) => (Operator::Has, 1),
         ('=', false) => (Operator::Equal, 1),
-        ('=', true) => return Err(fault(position, "==".into(), "there is no such operator", "write =".into())),
+        ('=', true) => {
+            return Err(fault(
+                position,
+                "==".into(),
+                "there is no such operator",
+                "write =".into(),
+            ));
+        }
         _ => {
             let remedy = "write != for `is not`, or NOT before a comparison".to_owned();
-            return Err(fault(position, "!".into(), "`!` alone means nothing", remedy));
+            return Err(fault(
+                position,
+                "!".into(),
+                "`!` alone means nothing",
+                remedy,
+            ));
         }
     };
     *at += length;

@@ -64,22 +64,22 @@ pub fn coefficients() -> &'static [Coefficient] {
 }
 
 /// The values of the coefficients, in the order of [`coefficients`].
-pub(crate) fn values() -> &'static [f64] {
+pub(super) fn values() -> &'static [f64] {
     &VALUES
 }
 
 /// The estimate's form over [`coefficients`].
-pub(crate) fn form() -> &'static Form {
+pub(super) fn form() -> &'static Form {
     &FORM
 }
 
 /// What the fit has seen.
-pub(crate) fn coverage() -> &'static Coverage {
+pub(super) fn coverage() -> &'static Coverage {
     &COVERAGE
 }
 
 /// Standard error of an estimate for an anion of this class, from cross-validation, pK units.
-pub(crate) fn typical_error(class: AnionClass) -> f64 {
+pub(super) fn typical_error(class: AnionClass) -> f64 {
     /// Where the table has not even a line for all classes together; it always has.
     const UNKNOWN: f64 = 2.0;
     let errors = &*TYPICAL_ERRORS;

@@ -191,39 +191,27 @@ impl Surroundings<'_> {
                 None => AnionClass::BetaDicarbonyl,
             };
         }
-        let single: [(fn(Group) -> bool, AnionClass); 7] = [
-            (|kind| kind == Group::Aldehyde, AnionClass::Aldehyde),
-            (|kind| kind == Group::ArylKetone, AnionClass::ArylKetone),
-            (
-                |kind| matches!(kind, Group::AlkylKetone | Group::AcylHalide),
-                AnionClass::Ketone,
-            ),
-            (
-                |kind| {
-                    matches!(
-                        kind,
-                        Group::Ester
-                            | Group::Imide
-                            | Group::CarboxylicAcid
-                            | Group::Thioester
-                            | Group::Thiocarbonyl
-                    )
-                },
-                AnionClass::Ester,
-            ),
-            (
-                |kind| matches!(kind, Group::Amide | Group::Thioamide | Group::Imidoyl),
-                AnionClass::Amide,
-            ),
-            (|kind| kind == Group::Nitrile, AnionClass::Nitrile),
-            (
-                |kind| kind.is_sulfonyl() || kind == Group::Sulfoxide,
-                AnionClass::Sulfone,
-            ),
-        ];
-        single
+        kinds
             .into_iter()
-            .find(|(is, _)| has(*is))
-            .map_or(AnionClass::Carbanion, |(_, class)| class)
+            .map(class_alone)
+            .min()
+            .unwrap_or(AnionClass::Carbanion)
+    }
+}
+
+/// Class of the anion beside this group and no other acceptor; classes sort by what the charge
+/// prefers.
+fn class_alone(acceptor: Group) -> AnionClass {
+    use Group::*;
+    match acceptor {
+        AlkylKetone | AcylHalide => AnionClass::Ketone,
+        ArylKetone => AnionClass::ArylKetone,
+        Aldehyde => AnionClass::Aldehyde,
+        Ester | Imide | CarboxylicAcid | Thioester | Thiocarbonyl => AnionClass::Ester,
+        Amide | Thioamide | Imidoyl => AnionClass::Amide,
+        Nitrile => AnionClass::Nitrile,
+        Sulfoxide => AnionClass::Sulfone,
+        kind if kind.is_sulfonyl() => AnionClass::Sulfone,
+        _ => AnionClass::Carbanion,
     }
 }

@@ -8,7 +8,7 @@ use std::sync::atomic::{AtomicUsize, Ordering};
 use std::time::Duration;
 
 use crate::common::{START_MS, block, columns, new_job, noise, open};
-use enolattice_store::{Commit, JobId, Store};
+use enolattice_store::{Commit, JobId, Store, StoreError};
 
 /// Names the directory to a copy of this test that is to be killed.
 const VICTIM: &str = "ENOLATTICE_STORE_VICTIM";
@@ -143,4 +143,73 @@ fn victim(dir: &Path) -> ! {
         writeln!(out, "made {made}").unwrap();
         out.flush().unwrap();
     }
+}
+
+/// Names the directory to a copy of the next test that may write only small files.
+const CRAMPED: &str = "ENOLATTICE_STORE_CRAMPED";
+
+/// A limit on the size of files stands in for a full disk: writes fail, the process lives on.
+#[test]
+fn nothing_is_acknowledged_after_a_failed_write() {
+    if let Some(dir) = std::env::var_os(CRAMPED) {
+        return cramped(Path::new(&dir));
+    }
+    let dir = tempfile::tempdir().unwrap();
+    let job = open(dir.path())
+        .create_job(new_job("cramped", ""), START_MS)
+        .unwrap()
+        .record
+        .id;
+    let test = "crash::nothing_is_acknowledged_after_a_failed_write";
+    let output = Command::new("sh")
+        .args(["-c", "trap '' XFSZ; ulimit -f 20000; exec \"$0\" \"$@\""])
+        .arg(std::env::current_exe().unwrap())
+        .args(["--exact", test, "--nocapture"])
+        .env(CRAMPED, dir.path())
+        .output()
+        .unwrap();
+    assert!(
+        output.status.success(),
+        "{}",
+        String::from_utf8_lossy(&output.stderr)
+    );
+    let said = String::from_utf8(output.stdout).unwrap();
+    let indices = said
+        .lines()
+        .filter_map(|line| line.rsplit_once("acknowledged "));
+    let acknowledged: BTreeSet<u32> = indices.map(|(_, index)| index.parse().unwrap()).collect();
+    assert!(acknowledged.len() > BATCH, "{said}");
+    check(
+        &open(dir.path()),
+        job,
+        &acknowledged,
+        &BTreeSet::from([job]),
+    );
+}
+
+fn cramped(dir: &Path) {
+    let (store, _) = Store::open(dir, START_MS).unwrap();
+    let job = store.jobs()[0].id;
+    let commit = |index: u32| {
+        let first = u64::from(index) * FULL;
+        store.commit_block(job, block(index), first, &columns(first, FULL))
+    };
+    let mut out = std::io::stdout();
+    let failed = (0..10_000).find(|index| {
+        let stored = commit(*index).and_then(|_| store.acknowledge());
+        if stored.is_ok() {
+            writeln!(out, "acknowledged {index}").unwrap();
+        }
+        stored.is_err()
+    });
+    let failed = failed.expect("the limit was never met");
+    let seen = store.progress(job).unwrap().cells_acknowledged;
+    assert_eq!(seen, u64::from(failed) * FULL);
+    for again in [
+        store.acknowledge().unwrap_err(),
+        commit(failed + 1).unwrap_err(),
+    ] {
+        assert!(matches!(again, StoreError::Stopped { .. }), "{again}");
+    }
+    assert_eq!(store.progress(job).unwrap().cells_acknowledged, seen);
 }

@@ -196,7 +196,7 @@ fn solvent_axis(axis: v1::SolventAxis, faults: &mut Vec<InputError>) -> AxisSpec
     for (i, medium) in axis.media.into_iter().enumerate() {
         match solvent_entry(medium, &format!("solvents.media[{i}]")) {
             Ok(entry) => entries.push(entry),
-            Err(fault) => faults.push(fault),
+            Err(found) => faults.extend(found),
         }
     }
     AxisSpec {
@@ -210,7 +210,7 @@ fn conditions_message(spec: &ConditionsSpec, faults: &mut Vec<InputError>) -> v1
     for (i, name) in spec.addition.iter().enumerate() {
         match addition_from_name(name, &format!("conditions.addition[{i}]")) {
             Ok(order) => addition.push(order.into()),
-            Err(fault) => faults.push(fault),
+            Err(found) => faults.extend(found),
         }
     }
     v1::ConditionAxes {
@@ -238,7 +238,7 @@ fn conditions(axes: v1::ConditionAxes, faults: &mut Vec<InputError>) -> Conditio
                 "the usual order cannot stand beside others",
                 "name the order, or leave the axis empty for the usual order of each base",
             )),
-            Err(fault) => faults.push(fault),
+            Err(found) => faults.extend(found),
         }
     }
     ConditionsSpec {

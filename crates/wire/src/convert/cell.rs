@@ -18,9 +18,7 @@ impl TryFrom<&ExplainTarget> for v1::ExplainCellRequest {
                 job_id: job.clone(),
                 cell: numbers::to_wire(*cell),
             }),
-            ExplainTarget::Given(query) => {
-                Target::GivenCell(given_cell_message(query).map_err(|fault| vec![fault])?)
-            }
+            ExplainTarget::Given(query) => Target::GivenCell(given_cell_message(query)?),
         };
         Ok(v1::ExplainCellRequest {
             target: Some(target),
@@ -53,7 +51,7 @@ fn negative_cell(cell: i64) -> InputError {
     )
 }
 
-fn given_cell_message(query: &CellQuery) -> Result<v1::GivenCell, InputError> {
+fn given_cell_message(query: &CellQuery) -> Result<v1::GivenCell, Vec<InputError>> {
     let addition = match &query.addition {
         Some(name) => addition_from_name(name, "addition")?.into(),
         None => v1::AdditionOrder::Unspecified.into(),
@@ -95,8 +93,8 @@ fn given_cell(cell: v1::GivenCell) -> Result<CellQuery, Vec<InputError>> {
     let mut faults = Vec::new();
     let conditions = cell.conditions.unwrap_or_default();
     let addition = addition_from_wire(conditions.addition, "given_cell.conditions.addition")
-        .unwrap_or_else(|fault| {
-            faults.push(fault);
+        .unwrap_or_else(|found| {
+            faults.extend(found);
             None
         });
     if conditions.temperature_c.is_none() {
@@ -107,8 +105,8 @@ fn given_cell(cell: v1::GivenCell) -> Result<CellQuery, Vec<InputError>> {
         faults.push(additive_fault("given_cell.additives", ""));
     }
     let solvent = solvent_entry(cell.solvent.unwrap_or_default(), "given_cell.solvent")
-        .unwrap_or_else(|fault| {
-            faults.push(fault);
+        .unwrap_or_else(|found| {
+            faults.extend(found);
             Entry::default()
         });
     let substrate = cell.substrate.unwrap_or_default();
@@ -159,29 +157,29 @@ pub(crate) fn name_or_smiles(reagent: &v1::Reagent) -> String {
 }
 
 /// The one solvent of a medium.
-pub(crate) fn solvent_entry(mut medium: v1::Medium, field: &str) -> Result<Entry, InputError> {
+pub(crate) fn solvent_entry(mut medium: v1::Medium, field: &str) -> Result<Entry, Vec<InputError>> {
     let count = medium.components.len();
     let Some(component) = medium.components.pop() else {
-        return Err(missing(field, "give a component"));
+        return Err(vec![missing(field, "give a component")]);
     };
     if count > 1 {
-        return Err(bad_field(
+        return Err(vec![bad_field(
             ErrorReason::NotYetAllowed,
             field,
             format!("{count} components"),
             "mixtures of solvents are not covered yet",
             "give one component a medium",
-        ));
+        )]);
     }
     let fraction = component.volume_fraction.unwrap_or(1.0);
     if fraction != 1.0 {
-        return Err(bad_field(
+        return Err(vec![bad_field(
             ErrorReason::ValueOutOfRange,
             format!("{field}.components[0].volume_fraction"),
             fraction.to_string(),
             "the fractions of a medium add up to 1",
             "leave it out for a pure solvent",
-        ));
+        )]);
     }
     let solvent = component.solvent.unwrap_or_default();
     let place = Place {
@@ -196,32 +194,38 @@ pub(crate) fn solvent_entry(mut medium: v1::Medium, field: &str) -> Result<Entry
 }
 
 /// The order of addition of this name.
-pub(crate) fn addition_from_name(name: &str, field: &str) -> Result<v1::AdditionOrder, InputError> {
+pub(crate) fn addition_from_name(
+    name: &str,
+    field: &str,
+) -> Result<v1::AdditionOrder, Vec<InputError>> {
     let names = Addition::ALL
         .map(|order| format!("`{}`", order.name()))
         .join(", ");
     Addition::from_name(name).map(Into::into).ok_or_else(|| {
-        bad_field(
+        vec![bad_field(
             ErrorReason::ValueUnknown,
             field,
             name,
             "there is no such order of addition",
             format!("use one of {names}"),
-        )
+        )]
     })
 }
 
 /// The order of addition of this number; `None`: the usual one of the base.
-pub(crate) fn addition_from_wire(number: i32, field: &str) -> Result<Option<Addition>, InputError> {
+pub(crate) fn addition_from_wire(
+    number: i32,
+    field: &str,
+) -> Result<Option<Addition>, Vec<InputError>> {
     enums::optional_from_wire::<_, v1::AdditionOrder>("addition", &Addition::ALL, number).map_err(
         |_| {
-            bad_field(
+            vec![bad_field(
                 ErrorReason::ValueUnknown,
                 field,
                 number.to_string(),
                 "there is no such order of addition",
                 "use a value of `AdditionOrder`",
-            )
+            )]
         },
     )
 }

@@ -41,7 +41,7 @@ impl TryFrom<v1::RankCellsRequest> for RankQuery {
 
     fn try_from(request: v1::RankCellsRequest) -> Result<Self, Vec<InputError>> {
         let mut faults = Vec::new();
-        let mut told = |fault| faults.push(fault);
+        let mut told = |found: Vec<InputError>| faults.extend(found);
         let page_size = page_size(request.page_size)
             .map_err(&mut told)
             .unwrap_or_default();
@@ -71,16 +71,16 @@ impl TryFrom<v1::RankCellsRequest> for RankQuery {
 ///
 /// # Errors
 /// A negative number.
-pub fn page_size(page_size: i32) -> Result<u32, InputError> {
+pub fn page_size(page_size: i32) -> Result<u32, Vec<InputError>> {
     match u32::try_from(page_size) {
         Ok(0) => Ok(DEFAULT_PAGE_SIZE),
         Ok(rows) => Ok(rows.min(MAX_PAGE_SIZE)),
-        Err(_) => Err(negative("page_size", page_size.into())),
+        Err(_) => Err(vec![negative("page_size", page_size.into())]),
     }
 }
 
-fn skip(skip: i64) -> Result<u64, InputError> {
-    u64::try_from(skip).map_err(|_| negative("skip", skip))
+fn skip(skip: i64) -> Result<u64, Vec<InputError>> {
+    u64::try_from(skip).map_err(|_| vec![negative("skip", skip)])
 }
 
 fn negative(field: &str, value: i64) -> InputError {
@@ -93,14 +93,14 @@ fn negative(field: &str, value: i64) -> InputError {
     )
 }
 
-fn order(order_by: &str) -> Result<Order, InputError> {
+fn order(order_by: &str) -> Result<Order, Vec<InputError>> {
     let words = order_by.split_whitespace().collect::<Vec<_>>().join(" ");
     if words.is_empty() {
         return Ok(Order::default());
     }
     let known = ORDERS.iter().find(|(text, _)| *text == words);
     known.map(|(_, order)| *order).ok_or_else(|| {
-        bad_field(
+        vec![bad_field(
             ErrorReason::OrderInvalid,
             "order_by",
             order_by,
@@ -109,19 +109,19 @@ fn order(order_by: &str) -> Result<Order, InputError> {
                 "use one of {}",
                 ORDERS.map(|(text, _)| format!("`{text}`")).join(", ")
             ),
-        )
+        )]
     })
 }
 
-fn best_per(number: i32) -> Result<Option<Axis>, InputError> {
+fn best_per(number: i32) -> Result<Option<Axis>, Vec<InputError>> {
     enums::optional_from_wire::<_, v1::Axis>("best_per", &enums::AXES, number).map_err(|_| {
-        bad_field(
+        vec![bad_field(
             ErrorReason::ValueUnknown,
             "best_per",
             number.to_string(),
             "there is no such axis",
             "use a value of `Axis`",
-        )
+        )]
     })
 }
 

@@ -1,0 +1,242 @@
+//! The fields of `--json` are those that `docs/commands.md` lists, in its order.
+
+use enolattice_engine::{CellDescription, Job, JobState, RankedCell, ReagentRow};
+use enolattice_model::{
+    Advice, Category, Caution, Channel, CoursePoint, ExplainedRate, ExplainedSite, Explanation,
+    Origin, Severity,
+};
+use serde::Serialize;
+use serde_json::Value;
+
+use super::{
+    CellLine, ExplanationDocument, JobRecord, MoleculeSites, ReagentRecord, ScreenedDocument,
+};
+
+const DOCUMENT: &str = include_str!("../../docs/commands.md");
+
+/// The fields in the table below a heading.
+fn documented(heading: &str) -> Vec<String> {
+    let mut lines = DOCUMENT.lines().skip_while(|line| *line != heading).skip(1);
+    let section: Vec<&str> = lines
+        .by_ref()
+        .take_while(|line| !line.starts_with('#'))
+        .collect();
+    let names = section
+        .iter()
+        .filter_map(|line| line.strip_prefix("| `")?.split('`').next());
+    names.map(str::to_owned).collect()
+}
+
+/// The fields of an object, or of the first element of a list, in their order in the text.
+fn fields(value: &impl Serialize) -> Vec<String> {
+    let text = serde_json::to_string(value).expect("serialises");
+    let value: Value = serde_json::from_str(&text).expect("is JSON");
+    let object = value
+        .as_object()
+        .or_else(|| value.get(0)?.as_object())
+        .expect("an object");
+    let mut names: Vec<&String> = object.keys().collect();
+    names.sort_by_key(|name| text.find(&format!("\"{name}\":")));
+    names.into_iter().cloned().collect()
+}
+
+fn cell() -> RankedCell {
+    RankedCell {
+        rank: 1,
+        cell: 2,
+        substrate: String::new(),
+        base: String::new(),
+        electrophile: String::new(),
+        solvent: String::new(),
+        temperature_c: 25.0,
+        formation_temperature_c: 25.0,
+        base_equiv: 1.1,
+        electrophile_equiv: 1.2,
+        concentration_m: 0.2,
+        time_h: 16.0,
+        dosing_min: 10.0,
+        addition: String::new(),
+        expected_yield: None,
+        p_hit: None,
+        feasibility: None,
+        selectivity: None,
+        largest_loss: None,
+        cautions: Vec::new(),
+        severity: None,
+    }
+}
+
+fn job() -> Job {
+    Job {
+        job: String::new(),
+        title: String::new(),
+        state: JobState::Done,
+        cells: 1,
+        cells_done: 1,
+        best_yield: None,
+        campaign_fingerprint: String::new(),
+        model_fingerprint: String::new(),
+        submitted_unix_ms: 0,
+        ended_unix_ms: None,
+        failure: String::new(),
+        warnings: Vec::new(),
+    }
+}
+
+fn description() -> CellDescription {
+    CellDescription {
+        cell: None,
+        substrate: String::new(),
+        substrate_smiles: String::new(),
+        base: String::new(),
+        electrophile: String::new(),
+        electrophile_smiles: String::new(),
+        solvent: String::new(),
+        temperature_c: 25.0,
+        formation_temperature_c: 25.0,
+        base_equiv: 1.1,
+        electrophile_equiv: 1.2,
+        concentration_m: 0.2,
+        time_h: 16.0,
+        dosing_min: 10.0,
+        addition: String::new(),
+    }
+}
+
+fn explanation() -> Explanation {
+    Explanation {
+        expected_yield: None,
+        yield_sigma: None,
+        yield_on_limiting: None,
+        p_hit: None,
+        feasibility: None,
+        selectivity: None,
+        reference_yield: None,
+        fast_yield: None,
+        product_smiles: None,
+        product_formula: None,
+        product_mass: None,
+        condensation_smiles: None,
+        delta_g_deprotonation_kj_mol: None,
+        log10_k: None,
+        enolate_fraction: None,
+        sites: vec![site()],
+        rates: vec![ExplainedRate {
+            step: String::new(),
+            log10_k: 0.0,
+            sigma: 0.7,
+            source: String::new(),
+        }],
+        losses: vec![(Channel::SlowAttack, 0.5)],
+        course: vec![CoursePoint {
+            time_s: 0.0,
+            substrate: 1.0,
+            anions: 0.0,
+            electrophile: 0.0,
+            product: 0.0,
+        }],
+        cautions: vec![Caution {
+            category: Category::Gas,
+            severity: Severity::Note,
+            text: String::new(),
+        }],
+        limits: Vec::new(),
+        advice: vec![Advice {
+            change: String::new(),
+            expected_yield: 0.5,
+        }],
+        model: String::new(),
+    }
+}
+
+fn site() -> ExplainedSite {
+    ExplainedSite {
+        molecule: "substrate",
+        atom: 0,
+        element: "C",
+        hydrogens: 3,
+        pka_dmso: 26.5,
+        pka_medium: 19.3,
+        sigma: 0.2,
+        origin: Origin::Measured,
+        source: String::new(),
+    }
+}
+
+fn reagent() -> ReagentRow {
+    ReagentRow {
+        kind: String::new(),
+        name: String::new(),
+        synonyms: Vec::new(),
+        cas: String::new(),
+        smiles: String::new(),
+        facts: String::new(),
+        h_codes: Vec::new(),
+    }
+}
+
+#[test]
+fn every_field_is_documented_and_every_documented_field_is_there() {
+    let explained = serde_json::to_value(ExplanationDocument::new(description(), explanation()))
+        .expect("serialises");
+    let screened = ScreenedDocument {
+        job: job().into(),
+        seconds: 1.0,
+        cells_per_second: 1.0,
+        cells_not_covered: 0,
+        top: Vec::new(),
+        best_of_each_substrate: Vec::new(),
+    };
+    let sites = MoleculeSites {
+        smiles: String::new(),
+        sites: Vec::new(),
+    };
+    for (heading, found) in [
+        ("### `screen --json`", fields(&screened)),
+        ("### `jobs --json`", fields(&JobRecord::from(job()))),
+        ("### `rank --json`", fields(&CellLine::from(cell()))),
+        (
+            "### `explain --json`",
+            fields(&ExplanationDocument::new(description(), explanation())),
+        ),
+        ("### `sites --json`", fields(&sites)),
+        (
+            "### `reagents --json`",
+            fields(&ReagentRecord::from(reagent())),
+        ),
+    ] {
+        assert_eq!(documented(heading), found, "{heading}");
+    }
+    // Within a value the order of keys is lost: compare as sets.
+    for part in [
+        "sites", "rates", "losses", "course", "cautions", "advice", "cell",
+    ] {
+        let mut documented = documented(&format!("#### `{part}`"));
+        let mut found = fields(&explained[part]);
+        documented.sort();
+        found.sort();
+        assert_eq!(documented, found, "{part}");
+    }
+}
+
+#[test]
+fn the_document_has_the_closed_vocabularies() {
+    for name in Category::ALL.iter().map(|category| category.name()) {
+        assert!(DOCUMENT.contains(&format!("`{name}`")), "{name}");
+    }
+    for command in [
+        "screen FILE",
+        "serve",
+        "submit FILE",
+        "jobs",
+        "watch JOB",
+        "cancel JOB",
+        "rank JOB",
+        "explain JOB CELL",
+    ] {
+        assert!(
+            DOCUMENT.contains(&format!("\n## `{command}`\n")),
+            "{command}"
+        );
+    }
+}

@@ -1,0 +1,282 @@
+"""The service as a Python program sees it, over plain grpcio."""
+
+import itertools
+import json
+import subprocess
+
+import grpc
+import pytest
+from google.protobuf import descriptor_pool, message_factory
+from google.rpc import error_details_pb2
+from grpc_health.v1 import health_pb2, health_pb2_grpc
+from grpc_reflection.v1alpha.proto_reflection_descriptor_database import (
+    ProtoReflectionDescriptorDatabase,
+)
+from grpc_status import rpc_status
+
+
+@pytest.fixture(scope="module")
+def jobs(server, stubs):
+    return stubs.job_service_grpc.JobServiceStub(server.channel)
+
+
+@pytest.fixture(scope="module")
+def chemistry(server, stubs):
+    return stubs.chemistry_service_grpc.ChemistryServiceStub(server.channel)
+
+
+def small_campaign(stubs):
+    """2 substrates x 3 bases x 2 electrophiles x 2 solvents."""
+    reagent = lambda name: stubs.reagent.Reagent(name=name)
+    medium = lambda name: stubs.reagent.Medium(
+        components=[stubs.reagent.SolventComponent(solvent=reagent(name))]
+    )
+    return stubs.campaign.Campaign(
+        title="From Python",
+        substrates=[
+            stubs.reagent.Substrate(name="ethyl phenylacetate", smiles="CCOC(=O)Cc1ccccc1"),
+            stubs.reagent.Substrate(name="cyclohexanone", smiles="O=C1CCCCC1"),
+        ],
+        bases={"reagents": [reagent(name) for name in ("LDA", "KOtBu", "Et3N")]},
+        electrophiles={"reagents": [reagent("MeI"), stubs.reagent.Reagent(smiles="BrCc1ccccc1")]},
+        solvents={"media": [medium("THF"), medium("DMF")]},
+        conditions={"temperature_c": [-20.0], "formation_temperature_c": [-78.0]},
+        target={"yield_at_least": 0.5},
+    )
+
+
+@pytest.fixture(scope="module")
+def done(jobs, stubs):
+    """A job watched to its end."""
+    submitted = jobs.SubmitJob(stubs.job.SubmitJobRequest(campaign=small_campaign(stubs)))
+    request = stubs.job.WatchJobRequest(job_id=submitted.job_id)
+    states = [message.job for message in jobs.WatchJob(request)]
+    assert states[-1].state == stubs.job.JOB_STATE_DONE
+    assert states[-1].cells == states[-1].cells_done == 24
+    assert [job.cells_done for job in states] == sorted(job.cells_done for job in states)
+    return states[-1]
+
+
+def pages(jobs, stubs, **arguments):
+    """All cells of a ranking, page by page."""
+    token = ""
+    while True:
+        request = stubs.ranking.RankCellsRequest(page_token=token, **arguments)
+        page = jobs.RankCells(request)
+        yield from page.cells
+        token = page.next_page_token
+        if not token:
+            return
+
+
+def refusal(call):
+    """Status, ErrorInfo and BadRequest of a call that is refused."""
+    with pytest.raises(grpc.RpcError) as caught:
+        call()
+    status = rpc_status.from_call(caught.value)
+    info, bad = error_details_pb2.ErrorInfo(), error_details_pb2.BadRequest()
+    for detail in status.details:
+        for message in (info, bad):
+            if detail.Is(message.DESCRIPTOR):
+                detail.Unpack(message)
+    assert info.domain == "enolattice.v1"
+    return caught.value.code(), info, bad
+
+
+def test_pages_end_to_end_are_the_ranking(jobs, stubs, done):
+    whole = list(pages(jobs, stubs, job_id=done.job_id, page_size=1000))
+    assert sorted(cell.cell for cell in whole) == list(range(24))
+    assert list(pages(jobs, stubs, job_id=done.job_id, page_size=5)) == whole
+    assert list(pages(jobs, stubs, job_id=done.job_id)) == whole
+    yields = [c.expected_yield if c.HasField("expected_yield") else -1 for c in whole]
+    assert yields == sorted(yields, reverse=True)
+
+
+def test_filters_and_orders(jobs, stubs, done):
+    whole = list(pages(jobs, stubs, job_id=done.job_id))
+    in_thf = list(pages(jobs, stubs, job_id=done.job_id, filter='solvent = "THF"'))
+    assert [c.cell for c in in_thf] == [c.cell for c in whole if c.solvent == "THF"]
+    best = list(
+        pages(jobs, stubs, job_id=done.job_id, best_per=stubs.ranking.AXIS_SUBSTRATE)
+    )
+    firsts = {}
+    for cell in whole:
+        firsts.setdefault(cell.substrate, cell.cell)
+    assert {c.substrate: c.cell for c in best} == firsts
+    by_p_hit = list(pages(jobs, stubs, job_id=done.job_id, order_by="p_hit desc"))
+    p_hits = [c.p_hit if c.HasField("p_hit") else -1 for c in by_p_hit]
+    assert p_hits == sorted(p_hits, reverse=True)
+
+
+def test_the_command_line_prints_the_same_ranking(binary, server, jobs, stubs, done):
+    printed = subprocess.run(
+        [binary, "rank", done.job_id, "--json", "--limit", "0", "--server", server.address],
+        check=True,
+        capture_output=True,
+        text=True,
+    ).stdout
+    rows = [json.loads(line) for line in printed.splitlines()]
+    cells = list(pages(jobs, stubs, job_id=done.job_id))
+    assert [row["cell"] for row in rows] == [cell.cell for cell in cells]
+    for row, cell in zip(rows, cells):
+        has = cell.HasField("expected_yield")
+        assert row["expected_yield"] == (cell.expected_yield if has else None)
+        assert row["temperature_c"] == cell.conditions.temperature_c
+        assert len(row["cautions"]) == len(cell.cautions)
+
+
+def test_a_cell_is_explained_both_ways(chemistry, stubs, jobs, done):
+    cell = next(pages(jobs, stubs, job_id=done.job_id))
+    answer = chemistry.ExplainCell(
+        stubs.explanation.ExplainCellRequest(
+            job_cell={"job_id": done.job_id, "cell": cell.cell}
+        )
+    )
+    assert answer.cell.substrate.name == cell.substrate
+    assert answer.explanation.model == done.model_fingerprint
+    assert len(answer.explanation.sites) > 0
+    given = stubs.explanation.GivenCell(
+        substrate={"smiles": answer.cell.substrate.smiles},
+        base={"name": answer.cell.base},
+        electrophile={"smiles": answer.cell.electrophile.smiles},
+        solvent={"components": [{"solvent": {"name": answer.cell.solvent}}]},
+        conditions=answer.cell.conditions,
+        yield_at_least=0.5,
+    )
+    again = chemistry.ExplainCell(stubs.explanation.ExplainCellRequest(given_cell=given))
+    assert again.explanation.expected_yield == answer.explanation.expected_yield
+    assert again.explanation.product_smiles == answer.explanation.product_smiles
+
+
+def test_sites_and_reagents(chemistry, stubs):
+    answer = chemistry.ListSites(stubs.acidity.ListSitesRequest(smiles=["CC(=O)CC(=O)OCC"]))
+    (molecule,) = answer.molecules
+    assert molecule.sites[0].atom == 3, "the CH2 between the carbonyls is the most acidic"
+    names, token = [], ""
+    while True:
+        page = chemistry.ListReagents(
+            stubs.library.ListReagentsRequest(page_size=7, page_token=token)
+        )
+        names += [(reagent.kind, reagent.name) for reagent in page.reagents]
+        token = page.next_page_token
+        if not token:
+            break
+    assert len(names) == len(set(names)) > 40
+    assert (stubs.library.REAGENT_KIND_BASE, "LDA") in names
+
+
+def test_a_request_id_makes_one_job(jobs, stubs):
+    request = stubs.job.SubmitJobRequest(
+        campaign=small_campaign(stubs), request_id="2f6d1c1e-8f0a-4c77-8a55-0a4a3f1f9a10"
+    )
+    assert jobs.SubmitJob(request).job_id == jobs.SubmitJob(request).job_id
+    request.campaign.title = "Another"
+    request.campaign.conditions.time_h.append(1.0)
+    code, info, _ = refusal(lambda: jobs.SubmitJob(request))
+    assert (code, info.reason) == (grpc.StatusCode.ALREADY_EXISTS, "REQUEST_ID_REUSED")
+
+
+def test_a_campaign_may_come_in_chunks(jobs, stubs):
+    campaign = small_campaign(stubs)
+    whole = jobs.SubmitJob(stubs.job.SubmitJobRequest(campaign=campaign, validate_only=True))
+    substrates = list(campaign.substrates)
+    electrophiles = list(campaign.electrophiles.reagents)
+    del campaign.substrates[:], campaign.electrophiles.reagents[:]
+    part = stubs.job.SubmitJobStreamRequest
+    header = part(
+        header=stubs.job.SubmitJobRequest(campaign=campaign, validate_only=True)
+    )
+    chunks = [
+        part(chunk=stubs.job.AxisChunk(substrates=[s], electrophiles=[e]))
+        for s, e in itertools.zip_longest(substrates, electrophiles)
+    ]
+    streamed = jobs.SubmitJobStream(iter([header] + chunks))
+    assert streamed.cells == whole.cells == 24
+    assert streamed.campaign_fingerprint == whole.campaign_fingerprint
+    assert streamed.job_id == ""
+
+
+def test_every_fault_of_a_campaign_is_told(jobs, stubs):
+    campaign = small_campaign(stubs)
+    campaign.substrates[1].smiles = "C1CC"
+    campaign.bases.reagents[0].name = "LDDA"
+    campaign.conditions.temperature_c.append(-400.0)
+    code, info, bad = refusal(
+        lambda: jobs.SubmitJob(stubs.job.SubmitJobRequest(campaign=campaign))
+    )
+    assert (code, info.reason) == (grpc.StatusCode.INVALID_ARGUMENT, "INPUT_INVALID")
+    told = {violation.field: violation.reason for violation in bad.field_violations}
+    assert told["campaign.substrates[1].smiles"] == "STRUCTURE_INVALID"
+    assert told["campaign.bases.reagents[0]"] == "REAGENT_UNKNOWN"
+    assert told["campaign.conditions.temperature_c[1]"] == "VALUE_OUT_OF_RANGE"
+    assert all(reason in stubs.error.ErrorReason.keys() for reason in told.values())
+
+
+def test_many_faults_do_not_burst_the_trailers(jobs, stubs):
+    campaign = small_campaign(stubs)
+    campaign.substrates.extend(
+        stubs.reagent.Substrate(name=f"broken {i}", smiles="C1CC" + "C" * i) for i in range(300)
+    )
+    request = stubs.job.SubmitJobRequest(campaign=campaign, validate_only=True)
+    _, info, bad = refusal(lambda: jobs.SubmitJob(request))
+    assert info.metadata["faults"] == "300"
+    assert 0 < len(bad.field_violations) < 300
+    assert int(info.metadata["faults_listed"]) == len(bad.field_violations)
+
+
+def test_a_client_that_takes_large_trailers_gets_every_fault(server, stubs):
+    campaign = small_campaign(stubs)
+    campaign.substrates.extend(
+        stubs.reagent.Substrate(name=f"broken {i}", smiles="C1CC" + "C" * i) for i in range(300)
+    )
+    request = stubs.job.SubmitJobRequest(campaign=campaign, validate_only=True)
+    limits = ("grpc.max_metadata_size", "grpc.absolute_max_metadata_size")
+    options = [(limit, 1 << 20) for limit in limits]
+    with grpc.insecure_channel(server.address, options=options) as channel:
+        jobs = stubs.job_service_grpc.JobServiceStub(channel)
+        metadata = [("enolattice-detail-bytes", "500000")]
+        _, _, bad = refusal(lambda: jobs.SubmitJob(request, metadata=metadata))
+    assert len(bad.field_violations) == 300
+
+
+def test_unknown_things_have_their_reasons(jobs, chemistry, stubs, done):
+    code, info, _ = refusal(lambda: jobs.GetJob(stubs.job.GetJobRequest(job_id="nothing")))
+    assert (code, info.reason) == (grpc.StatusCode.NOT_FOUND, "JOB_UNKNOWN")
+    request = stubs.explanation.ExplainCellRequest(job_cell={"job_id": done.job_id, "cell": 24})
+    code, info, _ = refusal(lambda: chemistry.ExplainCell(request))
+    assert (code, info.reason) == (grpc.StatusCode.NOT_FOUND, "CELL_UNKNOWN")
+    assert info.metadata["last_cell"] == "23"
+    request = stubs.job.CancelJobRequest(job_id=done.job_id)
+    code, info, _ = refusal(lambda: jobs.CancelJob(request))
+    assert (code, info.reason) == (grpc.StatusCode.FAILED_PRECONDITION, "JOB_WRONG_STATE")
+    request = stubs.ranking.RankCellsRequest(job_id=done.job_id, page_token="damaged")
+    code, info, _ = refusal(lambda: jobs.RankCells(request))
+    assert (code, info.reason) == (grpc.StatusCode.INVALID_ARGUMENT, "PAGE_TOKEN_INVALID")
+    request = stubs.ranking.RankCellsRequest(job_id=done.job_id, filter="p_hit >> 1", skip=-1)
+    code, _, bad = refusal(lambda: jobs.RankCells(request))
+    assert [violation.field for violation in bad.field_violations] == ["skip"]
+
+
+def test_health(server):
+    health = health_pb2_grpc.HealthStub(server.channel)
+    for service in ("", "enolattice.v1.JobService", "enolattice.v1.ChemistryService"):
+        answer = health.Check(health_pb2.HealthCheckRequest(service=service))
+        assert answer.status == health_pb2.HealthCheckResponse.SERVING
+
+
+def test_a_client_without_stubs_finds_its_way_by_reflection(server, done):
+    database = ProtoReflectionDescriptorDatabase(server.channel)
+    assert {"enolattice.v1.JobService", "enolattice.v1.ChemistryService"} <= set(
+        database.get_services()
+    )
+    pool = descriptor_pool.DescriptorPool(database)
+    method = pool.FindServiceByName("enolattice.v1.JobService").FindMethodByName("GetJob")
+    question = message_factory.GetMessageClass(method.input_type)
+    answer = message_factory.GetMessageClass(method.output_type)
+    get_job = server.channel.unary_unary(
+        f"/{method.containing_service.full_name}/{method.name}",
+        request_serializer=question.SerializeToString,
+        response_deserializer=answer.FromString,
+    )
+    job = get_job(question(job_id=done.job_id))
+    assert (job.title, job.cells) == ("From Python", 24)

@@ -51,7 +51,7 @@ pub(crate) fn long(concentrations: u32) -> CampaignSpec {
     campaign.title = "The same, at many conditions".into();
     campaign.conditions.temperature_c = (0..100).map(|i| -40.0 + f64::from(i)).collect();
     campaign.conditions.concentration_m =
-        (1..=concentrations).map(|i| 0.01 * f64::from(i)).collect();
+        (1..=concentrations).map(|i| 0.005 * f64::from(i)).collect();
     campaign
 }
 

@@ -60,7 +60,7 @@ async fn a_cancelled_job_ends_its_watch() {
     let live = Live::start().await;
     let job = live
         .client
-        .submit(submission(long(100)))
+        .submit(submission(long(1000)))
         .await
         .expect("is accepted")
         .job;
@@ -83,7 +83,7 @@ async fn stopping_ends_watch_streams_and_says_so() {
     let live = Live::start().await;
     let job = live
         .client
-        .submit(submission(long(100)))
+        .submit(submission(long(1000)))
         .await
         .expect("is accepted")
         .job;

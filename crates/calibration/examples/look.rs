@@ -18,5 +18,5 @@ fn main() {
     println!("yield {:?} sigma {:?} ref {:?} fast {:?} p {:?} feas {:?} sel {:?} enolate {:?} logK {:?}", x.expected_yield, x.yield_sigma, x.reference_yield, x.fast_yield, x.p_hit, x.feasibility, x.selectivity, x.enolate_fraction, x.log10_k);
     for s in &x.sites { println!("{} {}{} H{} dmso {:.1} medium {:.1} ± {:.1} {:?}", s.molecule, s.element, s.atom, s.hydrogens, s.pka_dmso, s.pka_medium, s.sigma, s.origin); }
     for r in &x.rates { println!("{:70} {:.2}", r.step, r.log10_k); }
-    println!("{:?}\n{:?}\n{:?} {:?}", x.losses, x.limits, x.product_smiles, x.advice);
+    println!("L {:?}\n{:?}\n{:?} {:?}", x.losses, x.limits, x.product_smiles, x.advice);
 }

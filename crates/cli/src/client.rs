@@ -26,7 +26,7 @@ pub(crate) enum Client {
     /// In this process.
     Embedded(Engine),
     /// Behind a server.
-    Remote(enolattice_wire::Client),
+    Remote(Box<enolattice_wire::Client>),
 }
 
 /// The changes of a job.
@@ -40,16 +40,16 @@ pub(crate) enum Changes {
         begun: bool,
     },
     /// From a server.
-    Remote(enolattice_wire::JobWatch),
+    Remote(Box<enolattice_wire::JobWatch>),
 }
 
 impl Client {
     /// Opens the data directory or connects to the server.
     pub(crate) async fn open(options: &EngineOptions, need: Need) -> Result<Client, Fault> {
         if let Some(server) = &options.server {
-            return Ok(Client::Remote(
+            return Ok(Client::Remote(Box::new(
                 enolattice_wire::Client::connect(server).await?,
-            ));
+            )));
         }
         let config = EngineConfig {
             data_dir: options.data_dir(),
@@ -87,7 +87,7 @@ impl Client {
                 receiver: engine.watch(job).await?,
                 begun: false,
             }),
-            Client::Remote(server) => Ok(Changes::Remote(server.watch(job).await?)),
+            Client::Remote(server) => Ok(Changes::Remote(Box::new(server.watch(job).await?))),
         }
     }
 

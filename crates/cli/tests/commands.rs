@@ -279,36 +279,39 @@ fn sites_from_arguments_and_stdin_are_the_same() {
 fn all_faults_of_the_input_are_told_at_once() {
     let folder = folder();
     let folder = folder.path();
-    fs::write(
-        folder.join("substrates.csv"),
-        "name,smiles\na,CC(C)=O\nb,C1CC\nc,CC(\n",
-    )
-    .expect("written");
-    fs::write(
-        folder.join("bad.toml"),
-        CAMPAIGN
-            .replace("LDA", "LDE")
-            .replace("temperature_c", "temprature_c"),
-    )
-    .expect("written");
-    let (code, told) = refused(folder, &["screen", "bad.toml"]);
-    assert_eq!(code, Some(2));
-    for part in [
-        "substrates.csv:3: ",
-        "substrates.csv:4: ",
-        "`C1CC`",
-        "bad.toml:6: ",
-        "LDE",
-        "LDA",
-        "temprature_c",
-        "temperature_c",
+    let unread = CAMPAIGN.replace("temperature_c", "temprature_c");
+    fs::write(folder.join("unread.toml"), unread).expect("written");
+    let unknown = CAMPAIGN
+        .replace("LDA", "LDE")
+        .replace("MeI", "MeIodide!")
+        .replace("substrates.csv", "other.csv");
+    fs::write(folder.join("unknown.toml"), unknown).expect("written");
+    let broken = "name,smiles\na,CC(C)=O\nb,C1CC\nc,CC(\n";
+    fs::write(folder.join("substrates.csv"), broken).expect("written");
+    fs::write(folder.join("other.csv"), SUBSTRATES).expect("written");
+    for (file, parts) in [
+        (
+            "unread.toml",
+            [
+                "substrates.csv:3: smiles: `C1CC`: ",
+                "substrates.csv:4: smiles: `CC(`: ",
+                "unread.toml:13: ",
+                "did you mean `temperature_c`?",
+            ],
+        ),
+        (
+            "unknown.toml",
+            ["unknown.toml:6: ", "`LDE`", "LDA", "MeIodide!"],
+        ),
     ] {
-        assert!(told.contains(part), "{part}: {told}");
+        let (code, told) = refused(folder, &["screen", file]);
+        assert_eq!(code, Some(2));
+        for part in parts {
+            assert!(told.contains(part), "{part}: {told}");
+        }
     }
-    assert!(
-        !folder.join("enolattice-data").exists(),
-        "nothing is queued"
-    );
+    let jobs = json(folder, &["jobs", "--json"]);
+    assert_eq!(jobs.as_array().map(Vec::len), Some(0), "nothing is queued");
 
     let given = [
         "explain",
@@ -495,14 +498,21 @@ impl Drop for Server {
     }
 }
 
+fn on_server<'a>(url: &'a str, arguments: &[&'a str]) -> Vec<&'a str> {
+    [arguments, &["--server", url]].concat()
+}
+
 #[test]
 fn a_server_answers_as_the_embedded_engine_does() {
     let folder = folder();
     let folder = folder.path();
     let mut server = Server::start(folder);
-    let on_server = |arguments: &[&str]| [arguments, &["--server", &server.url]].concat();
+    let url = server.url.clone();
     let embedded = json(folder, &["screen", "campaign.toml", "--json"]);
-    let served = json(folder, &on_server(&["screen", "campaign.toml", "--json"]));
+    let served = json(
+        folder,
+        &on_server(&url, &["screen", "campaign.toml", "--json"]),
+    );
     for part in ["top", "best_of_each_substrate", "cells_not_covered"] {
         assert_eq!(embedded[part], served[part], "{part}");
     }
@@ -521,12 +531,12 @@ fn a_server_answers_as_the_embedded_engine_does() {
     let rank_here = stdout(folder, &[&["rank", here], filter.as_slice()].concat());
     let rank_there = stdout(
         folder,
-        &on_server(&[&["rank", there], filter.as_slice()].concat()),
+        &on_server(&url, &[&["rank", there], filter.as_slice()].concat()),
     );
     assert_eq!(rank_here, rank_there);
     assert_eq!(
         stdout(folder, &["explain", here, "3"]),
-        stdout(folder, &on_server(&["explain", there, "3"]))
+        stdout(folder, &on_server(&url, &["explain", there, "3"]))
     );
     let given = [
         "explain",
@@ -544,7 +554,10 @@ fn a_server_answers_as_the_embedded_engine_does() {
         "--addition",
         "all together",
     ];
-    assert_eq!(stdout(folder, &given), stdout(folder, &on_server(&given)));
+    assert_eq!(
+        stdout(folder, &given),
+        stdout(folder, &on_server(&url, &given))
+    );
     for same in [
         vec!["sites", "--json", "CC(C)=O"],
         vec!["reagents", "--json"],
@@ -552,7 +565,7 @@ fn a_server_answers_as_the_embedded_engine_does() {
     ] {
         assert_eq!(
             stdout(folder, &same),
-            stdout(folder, &on_server(&same)),
+            stdout(folder, &on_server(&url, &same)),
             "{same:?}"
         );
     }
@@ -579,7 +592,7 @@ fn a_server_answers_as_the_embedded_engine_does() {
             .iter()
             .map(|word| if *word == there { here } else { word })
             .collect();
-        let (code, told) = refused(folder, &on_server(&wrong));
+        let (code, told) = refused(folder, &on_server(&url, &wrong));
         let (code_here, told_here) = refused(folder, &embedded);
         assert_eq!(
             (code, told.replace(there, here)),
@@ -590,7 +603,7 @@ fn a_server_answers_as_the_embedded_engine_does() {
     let (code, told) = refused(folder, &["jobs", "--data", "served"]);
     assert_eq!(code, Some(3), "the server has the directory: {told}");
     assert_eq!(
-        json(folder, &on_server(&["jobs", "--json"]))[0]["job"],
+        json(folder, &on_server(&url, &["jobs", "--json"]))[0]["job"],
         there
     );
 

@@ -1,5 +1,6 @@
 //! Everything about one cell, in numbers and sentences.
 
+use enolattice_molecule::AnionClass;
 use enolattice_units::delta_g_kj_mol;
 
 use crate::advice::advice;
@@ -181,7 +182,7 @@ fn sites(cell: &Cell, kinetics: &Kinetics<'_>) -> Vec<ExplainedSite> {
     sites.push(ExplainedSite {
         molecule: "base",
         atom: 0,
-        element: "",
+        element: protonated_element(base.class),
         hydrogens: 1,
         pka_dmso: base.pka_dmso.value,
         pka_medium: kinetics.pka_base(),
@@ -193,7 +194,7 @@ fn sites(cell: &Cell, kinetics: &Kinetics<'_>) -> Vec<ExplainedSite> {
         sites.push(ExplainedSite {
             molecule: "solvent",
             atom: 0,
-            element: if class.is_carbanion() { "C" } else { "O" },
+            element: protonated_element(*class),
             hydrogens: 1,
             pka_dmso: acid.value,
             pka_medium: kinetics.pka(acid.value, *class),
@@ -203,6 +204,19 @@ fn sites(cell: &Cell, kinetics: &Kinetics<'_>) -> Vec<ExplainedSite> {
         });
     }
     sites
+}
+
+/// Symbol of the atom that takes the proton of an anion of this class.
+fn protonated_element(class: AnionClass) -> &'static str {
+    use AnionClass::*;
+    match class {
+        AmideNitrogen | ImideNitrogen | AzoleNitrogen | ArylNitrogen | AlkylNitrogen
+        | SilylNitrogen | Neutral => "N",
+        Thiolate => "S",
+        Hydride => "H",
+        carbon if carbon.is_carbanion() => "C",
+        _ => "O",
+    }
 }
 
 fn symbol(element: u8) -> &'static str {

@@ -1,7 +1,7 @@
 //! The constants of a cell at one temperature, from its reagents and the parameters.
 
 use enolattice_molecule::{AlkylGroup, AnionClass, ElectrophileKind, LeavingGroup};
-use enolattice_reagents::{Cation, SolventClass};
+use enolattice_reagents::{BaseKind, Cation, SolventClass};
 use enolattice_units::{KCAL_IN_KJ, LN_10, R_KJ, kelvin, math};
 
 use crate::carbonyl::Carbonyl;
@@ -20,6 +20,10 @@ pub(crate) const PKA_WATER: f64 = 31.4;
 const HYDROXIDE_RELATIVE: f64 = -1.0;
 /// Bulk of alkoxides and hydroxide of the solvent (the scale of the bases' table, from memory).
 const LYATE_BULK: f64 = 0.2;
+
+/// Only a carbanion this stabilised, pKa (DMSO), loses a second proton to the bases of the trade:
+/// the dianions of 1,3-dicarbonyl compounds (common practice).
+const STABILISED_PKA: f64 = 20.0;
 
 /// How the electrophile's bond forms.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
@@ -144,7 +148,7 @@ impl<'a> Kinetics<'a> {
             return None;
         }
         let carbon = &self.cell.substrate.carbon;
-        let first = carbon.first()?;
+        let first = carbon.first().filter(|site| site.acid.pka_dmso < STABILISED_PKA)?;
         carbon
             .iter()
             .enumerate()
@@ -161,15 +165,36 @@ impl<'a> Kinetics<'a> {
             .min_by(|a, b| a.1.total_cmp(&b.1))
     }
 
+    /// A dianion that reacts at a site: no aggregate, and as reactive as its basicity says.
+    pub(crate) fn dianion(&self, site: &CarbonSite, pka_dmso: f64) -> Nucleophile {
+        let carbanion = self.carbanion(site, pka_dmso);
+        Nucleophile {
+            aggregated_at_m: None,
+            is_dianion: true,
+            ..carbanion
+        }
+    }
+
+    /// The substrate's carbanion at a site; a dianion where its heteroatom went first.
+    pub(crate) fn substrate_carbanion(&self, site: &CarbonSite) -> Nucleophile {
+        let pka = self.site_pka_dmso(site);
+        if self.first_heteroatom().is_some() {
+            self.dianion(site, pka)
+        } else {
+            self.carbanion(site, pka)
+        }
+    }
+
     /// A carbanion at a site.
     pub(crate) fn carbanion(&self, site: &CarbonSite, pka_dmso: f64) -> Nucleophile {
         Nucleophile {
             pka_dmso,
             class: site.acid.class,
-            substituents: site.substituents,
+            crowding: site.crowding,
             branches: site.branches,
             relative: 0.0,
             aggregated_at_m: Some(self.cell.conditions.concentration_m),
+            is_dianion: false,
         }
     }
 
@@ -178,10 +203,11 @@ impl<'a> Kinetics<'a> {
         Nucleophile {
             pka_dmso: record.pka_dmso.value,
             class: record.class,
-            substituents: 0,
+            crowding: 0,
             branches: 0,
             relative: record.nucleophilicity.value,
             aggregated_at_m: None,
+            is_dianion: false,
         }
     }
 
@@ -220,10 +246,11 @@ impl<'a> Kinetics<'a> {
         Nucleophile {
             pka_dmso,
             class,
-            substituents: 0,
+            crowding: 0,
             branches: 0,
             relative: HYDROXIDE_RELATIVE,
             aggregated_at_m: None,
+            is_dianion: false,
         }
     }
 
@@ -249,7 +276,16 @@ impl<'a> Kinetics<'a> {
             )),
             _ => {
                 let (e, _, _) = self.cell.electrophile.e.as_ref()?;
-                Some(rates::addition(nucleophile, *e, &self.medium, self.values))
+                let crowded = nucleophile.crowding + nucleophile.branches > 0;
+                let pair = match group.kind {
+                    ElectrophileKind::Michael { beta_alkyl, beta_aryl, .. }
+                        if crowded && beta_alkyl + beta_aryl > 0 =>
+                    {
+                        self.v(P::STERIC_PAIR)
+                    }
+                    _ => 0.0,
+                };
+                Some(rates::addition(nucleophile, *e, &self.medium, self.values) + pair)
             }
         }
     }
@@ -423,7 +459,13 @@ impl<'a> Kinetics<'a> {
             _ => bulk * self.v(P::KINETIC_TERTIARY),
         };
         let delta = site.acid.pka_dmso - first.acid.pka_dmso;
-        let excess = (self.v(P::EXCHANGE_BRONSTED) - self.v(P::KINETIC_BRONSTED)) * delta;
+        let by_amide = by_base && self.cell.base.record.kind == BaseKind::Amide;
+        let beta = if by_amide {
+            P::AMIDE_BRONSTED
+        } else {
+            P::EXCHANGE_BRONSTED
+        };
+        let excess = (self.v(beta) - self.v(P::KINETIC_BRONSTED)) * delta;
         site.hydrogens / first.hydrogens * math::exp10(excess - hindrance(site) + hindrance(first))
     }
 

@@ -27,8 +27,8 @@ mod score;
 mod screen;
 
 pub use acidity::{
-    AcidSite, Coefficient, Contribution, Form, Origin, Role, Uptake,
-    acid_sites, coefficients, estimate,
+    AcidSite, Coefficient, Contribution, Coverage, Form, Origin, Role, Uptake, acid_sites,
+    coefficients, estimate,
 };
 pub use cautions::{
     Category, Caution, Severity, base_electrophile_cautions, base_solvent_cautions,

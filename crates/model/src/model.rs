@@ -10,9 +10,7 @@ use crate::acidity::acidity_texts;
 use crate::explain::explain;
 use crate::parameters::{PARAMETERS, Parameter, Values};
 use crate::screen::score;
-use crate::{
-    Base, Cell, Electrophile, Explanation, MeasuredPka, Pair, Score, Solvent, Substrate,
-};
+use crate::{Base, Cell, Electrophile, Explanation, MeasuredPka, Pair, Score, Solvent, Substrate};
 
 /// SHA-256 over code version, data, coefficients and arithmetic.
 #[derive(Clone, Copy, Debug, PartialEq, Eq, Hash, PartialOrd, Ord)]

@@ -83,10 +83,14 @@ parameters! {
     EXCHANGE_DIPOLAR = 0.5, 1.0, "log10 L/(mol s)", MEMORY;
     EXCHANGE_APOLAR = -1.0, 1.0, "log10 L/(mol s)", MEMORY;
     EXCHANGE_LITHIUM = -1.5, 0.7, "log10 L/(mol s)", MEMORY;
+    /// Amines and amidines exchange without an ion pair to break.
+    EXCHANGE_AMINE = 1.5, 0.7, "log10 L/(mol s)", MEMORY;
     EXCHANGE_POTASSIUM = 0.3, 0.3, "log10 L/(mol s)", MEMORY;
     EXCHANGE_NITRO_PROTIC = -4.0, 0.7, "log10 L/(mol s)", "nitromethane with hydroxide in water, 27 L/(mol s) at ΔpKa 5.5 (Bordwell and Boyle, J. Am. Chem. Soc. 1972, 94, 3907, from memory)";
     EXCHANGE_NITRO = -0.5, 0.7, "log10 L/(mol s)", "the anomaly of nitroalkanes is small outside hydrogen-bonding media (from memory)";
     EXCHANGE_BRONSTED = 0.7, 0.1, "1", MEMORY;
+    AMIDE_EXCHANGE = 1.2, 0.7, "log10 L/(mol s)", "half-lives of ketones, esters and amides with lithium amides in THF at −78 °C: seconds to minutes (from memory)";
+    AMIDE_BRONSTED = 0.2, 0.1, "1", "half-lives of ketones, esters and amides with lithium amides in THF at −78 °C: seconds to minutes (from memory)";
     /// Sensitivity of the kinetic distribution to the acidity of the sites.
     KINETIC_BRONSTED = 0.4, 0.1, "1", "fitted to the enolate_regiochemistry table (House and others, from memory)";
     KINETIC_SECONDARY = 0.65, 0.2, "log10", "fitted to the enolate_regiochemistry table (House and others, from memory)";
@@ -105,6 +109,8 @@ parameters! {
     TETRAMER = 8.7, 0.4, "log10 L³/mol³", "Abbotto, Streitwieser and others on lithium ketone enolates in THF: 5·10^8 M^-3 (from memory)";
     STERIC_SN2 = -0.9, 0.3, "log10", MEMORY;
     STERIC_POLAR = -0.7, 0.3, "log10", MEMORY;
+    /// A crowded carbanion and a substituted β carbon together.
+    STERIC_PAIR = -1.5, 0.5, "log10", MEMORY;
     STERIC_BRANCH = -1.0, 0.3, "log10", MEMORY;
     /// N = intercept + slope·pKa(DMSO) of carbanions, and its loss by hydrogen bonds.
     MAYR_N_INTERCEPT = 8.35, 0.8, "1", "line through mayr_nucleophiles against pka_dmso_ch (leave-one-out MAE 1.9)";
@@ -151,6 +157,7 @@ parameters! {
     DEHYDRATION_ALKYL = -4.0, 0.8, "log10 L/(mol s)", MEMORY;
     /// Hydroxide with an alkyl ester in water.
     SAPONIFICATION = -1.0, 0.4, "log10 L/(mol s)", "ethyl acetate with hydroxide in water at 25 °C, 0.11 L/(mol s) (standard textbooks, from memory)";
+    ORGANOLITHIUM_EXCHANGE = 2.0, 1.0, "log10 L/(mol s)", "alkyllithiums add to carbonyl groups faster than they ionise them (common practice)";
     ORGANOLITHIUM_ADDITION = 3.5, 1.0, "log10 L/(mol s)", MEMORY;
     /// Second ionisation: the other charge conjugated or remote.
     SECOND_CONJUGATED = 7.5, 1.5, "pK", MEMORY;

@@ -32,9 +32,9 @@ pub(crate) struct CarbonSite {
     pub(crate) hydrogens: f64,
     /// Heavy neighbours of the atom: 1 for a methyl group.
     pub(crate) degree: u8,
-    /// Carbon substituents that are no acceptors.
-    pub(crate) substituents: u8,
-    /// Branches of these substituents next to the site.
+    /// Heavy neighbours beyond two: 1 where the new bond makes a quaternary carbon.
+    pub(crate) crowding: u8,
+    /// Branches of the plain carbon substituents next to the site.
     pub(crate) branches: u8,
 }
 
@@ -109,27 +109,21 @@ fn carbon_site(molecule: &Molecule, site: &AcidSite) -> CarbonSite {
     let neighbours = molecule.neighbours(site.atom);
     let plain = |atom: usize| {
         atoms[atom].element == 6
-            && (atoms[atom].aromatic
-                || molecule
-                    .neighbours(atom)
-                    .iter()
-                    .all(|&(_, bond)| bond == Bond::Single))
+            && molecule
+                .neighbours(atom)
+                .iter()
+                .all(|&(_, bond)| bond == Bond::Single)
     };
-    let substituents: Vec<usize> = neighbours
+    let branches: usize = neighbours
         .iter()
-        .map(|&(atom, _)| atom)
-        .filter(|&atom| plain(atom))
-        .collect();
-    let branches: usize = substituents
-        .iter()
-        .filter(|&&atom| !atoms[atom].aromatic)
-        .map(|&atom| molecule.neighbours(atom).len().saturating_sub(2))
+        .filter(|&&(atom, _)| plain(atom))
+        .map(|&(atom, _)| molecule.neighbours(atom).len().saturating_sub(2))
         .sum();
     CarbonSite {
         acid: site.clone(),
         hydrogens: f64::from(site.hydrogens) * site.equivalent.len().max(1) as f64,
         degree: neighbours.len() as u8,
-        substituents: substituents.len() as u8,
+        crowding: neighbours.len().saturating_sub(2) as u8,
         branches: branches as u8,
     }
 }

@@ -59,6 +59,7 @@ pub(crate) fn exchange(delta: f64, class: AnionClass, medium: &Medium, values: &
     let cation = match medium.cation {
         Cation::Lithium if medium.is_paired() => values.get(P::EXCHANGE_LITHIUM),
         Cation::Potassium | Cation::Caesium => values.get(P::EXCHANGE_POTASSIUM),
+        Cation::None => values.get(P::EXCHANGE_AMINE),
         _ => 0.0,
     };
     let nitro = if class == AnionClass::Nitronate {
@@ -67,8 +68,28 @@ pub(crate) fn exchange(delta: f64, class: AnionClass, medium: &Medium, values: &
         0.0
     };
     let at_25 = values.get(solvent) + cation + nitro + beta * delta.abs();
+    both_ways(at_25, delta, medium, values)
+}
+
+/// log10 k of proton transfer from a C–H acid to a metal dialkylamide or disilylamide.
+///
+/// `log k = k₀ + β·Δ`: amides bind the substrate's oxygen and deprotonate within the complex, so
+/// that the rate depends little on the driving force.
+pub(crate) fn exchange_with_amide(delta: f64, medium: &Medium<'_>, values: &Values) -> f64 {
+    let at_25 = values.get(P::AMIDE_EXCHANGE) + values.get(P::AMIDE_BRONSTED) * delta.abs();
+    both_ways(at_25, delta, medium, values)
+}
+
+/// log10 k of proton transfer from a C–H acid to an alkyllithium.
+pub(crate) fn exchange_with_organolithium(delta: f64, medium: &Medium<'_>, values: &Values) -> f64 {
+    both_ways(values.get(P::ORGANOLITHIUM_EXCHANGE), delta, medium, values)
+}
+
+/// Brings a downhill rate to the temperature, caps it, and takes |Δ| off where the step is uphill.
+fn both_ways(downhill_at_25: f64, delta: f64, medium: &Medium<'_>, values: &Values) -> f64 {
     let entropy = values.get(P::DS_EXCHANGE);
-    let downhill = at_temperature(at_25, 25.0, medium.temperature_c, entropy).min(EXCHANGE_CAP);
+    let downhill =
+        at_temperature(downhill_at_25, 25.0, medium.temperature_c, entropy).min(EXCHANGE_CAP);
     if delta < 0.0 { downhill + delta } else { downhill }
 }
 
@@ -79,14 +100,16 @@ pub(crate) struct Nucleophile {
     pub(crate) pka_dmso: f64,
     /// Class.
     pub(crate) class: AnionClass,
-    /// Non-hydrogen, non-acceptor substituents on the carbanion.
-    pub(crate) substituents: u8,
+    /// Heavy neighbours of the carbanion beyond two.
+    pub(crate) crowding: u8,
     /// Branches on these substituents.
     pub(crate) branches: u8,
     /// log10 units relative to a carbanion of the same pKa.
     pub(crate) relative: f64,
     /// Whether it is a metal enolate that aggregates; concentration of anions, mol/L.
     pub(crate) aggregated_at_m: Option<f64>,
+    /// Whether it carries two charges.
+    pub(crate) is_dianion: bool,
 }
 
 /// log10 of the share of monomer of a lithium enolate at a total concentration.
@@ -176,9 +199,13 @@ fn pairing(nucleophile: &Nucleophile, medium: &Medium, values: &Values, aggregat
     }
 }
 
-/// Whether the nucleophile is a lithium carbanion in a medium of contact pairs.
+/// Whether the nucleophile is a lithium salt in a medium of contact pairs, whose reactivity depends
+/// little on basicity; dianions are the exception.
 fn is_paired_lithium(nucleophile: &Nucleophile, medium: &Medium) -> bool {
-    medium.is_paired() && medium.cation == Cation::Lithium && nucleophile.class.is_carbanion()
+    medium.is_paired()
+        && medium.cation == Cation::Lithium
+        && nucleophile.class != AnionClass::Neutral
+        && !nucleophile.is_dianion
 }
 
 /// log10 k of substitution at saturated carbon at the medium's temperature.
@@ -204,7 +231,7 @@ pub(crate) fn substitution(
         values.get(P::SN2_ANCHOR) + alkyl_group(group) + leaving_group(leaving) + bronsted * above
             - values.get(P::SN2_SOLVATION) * shift
             + pairing(nucleophile, medium, values, true)
-            + f64::from(nucleophile.substituents) * values.get(P::STERIC_SN2)
+            + f64::from(nucleophile.crowding) * values.get(P::STERIC_SN2)
             + f64::from(nucleophile.branches) * values.get(P::STERIC_BRANCH)
             + nucleophile.relative;
     diffusion_limited(at_temperature(
@@ -238,7 +265,7 @@ pub(crate) fn addition(nucleophile: &Nucleophile, e: f64, medium: &Medium, value
     let at_20 = s_n * (n + e)
         + extra
         + pairing(nucleophile, medium, values, false)
-        + f64::from(nucleophile.substituents) * values.get(P::STERIC_POLAR)
+        + f64::from(nucleophile.crowding) * values.get(P::STERIC_POLAR)
         + f64::from(nucleophile.branches) * values.get(P::STERIC_BRANCH)
         + nucleophile.relative;
     diffusion_limited(at_temperature(

@@ -253,7 +253,14 @@ impl<'a> Reactions<'a> {
                     Species::Carbanion(site) => k.kinetic_weight(site, by_base),
                     _ => 1.0,
                 };
-                let log_k = rates::exchange(base.pka - acid.pka, acid.class, &k.medium, k.values);
+                let delta = base.pka - acid.pka;
+                let log_k = match k.cell.base.record.kind {
+                    BaseKind::Amide if by_base => rates::exchange_with_amide(delta, &k.medium, k.values),
+                    BaseKind::Organolithium if by_base => {
+                        rates::exchange_with_organolithium(delta, &k.medium, k.values)
+                    }
+                    _ => rates::exchange(delta, acid.class, &k.medium, k.values),
+                };
                 self.transfer(acid, base, math::exp10(log_k) * weight);
             }
         }
@@ -283,7 +290,7 @@ impl<'a> Reactions<'a> {
             Species::Substrate
         };
         for (i, site) in k.cell.substrate.carbon.iter().enumerate() {
-            let nucleophile = k.carbanion(site, k.site_pka_dmso(site));
+            let nucleophile = k.substrate_carbanion(site);
             let product = k.cell.pair.by_site.get(i).and_then(Option::as_ref);
             let rate = match product {
                 Some(_) => k.attack(&nucleophile).map_or(0.0, math::exp10) * nudge,
@@ -334,7 +341,7 @@ impl<'a> Reactions<'a> {
         let Some((site, pka_dmso)) = k.second_site() else {
             return;
         };
-        let nucleophile = k.carbanion(&k.cell.substrate.carbon[site], pka_dmso);
+        let nucleophile = k.dianion(&k.cell.substrate.carbon[site], pka_dmso);
         let rate = k.attack(&nucleophile).map_or(0.0, math::exp10) * math::exp10(k.nudge.attack);
         let e = Some(Species::Electrophile);
         if k.bonding() == Bonding::Substitution {
@@ -460,7 +467,7 @@ impl<'a> Reactions<'a> {
             k.aldol_hydroxyl()
         };
         for (i, site) in k.cell.substrate.carbon.iter().enumerate() {
-            let nucleophile = k.carbanion(site, k.site_pka_dmso(site));
+            let nucleophile = k.substrate_carbanion(site);
             let log_k = rates::addition(&nucleophile, e, &k.medium, k.values);
             let anion = Species::Carbanion(i);
             self.add(

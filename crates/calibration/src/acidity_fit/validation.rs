@@ -1,6 +1,8 @@
 //! Cross-validation: what the fit says of compounds it has not seen.
 
-use super::observations::Candidate;
+use enolattice_model::{Contribution, Coverage, Form};
+
+use super::observations::{Candidate, Observed};
 use super::{Fit, FitError, Observation, Term};
 
 /// A prediction of a compound that was held out.
@@ -12,6 +14,8 @@ pub(crate) struct Held {
     pub(crate) at: usize,
     /// Predicted minus measured.
     pub(crate) error: f64,
+    /// Whether the rows that were kept have nothing like it.
+    pub(crate) outside: bool,
 }
 
 /// Errors of held-out compounds under several ways of holding out.
@@ -62,6 +66,7 @@ fn hold_out(terms: &[Term], rows: &[Observation], groups: &[usize]) -> Result<Ve
     let mut distinct: Vec<usize> = groups.to_vec();
     distinct.sort_unstable();
     distinct.dedup();
+    let form = Form::new(terms.iter().map(|term| (term.name, term.role)));
     let mut held = Vec::new();
     for group in distinct {
         let out = |i: usize| rows[i].measured && groups[i] == group;
@@ -73,12 +78,27 @@ fn hold_out(terms: &[Term], rows: &[Observation], groups: &[usize]) -> Result<Ve
             .map(|i| rows[i].clone())
             .collect();
         let fit = Fit::new(terms, &kept)?;
+        let coverage = Coverage::new(seen(&kept, &fit), &form, &fit.values);
         for row in (0..rows.len()).filter(|i| out(*i)) {
             let value = |candidate: &Candidate| candidate.contribution.value(&fit.values);
             let at = rows[row].most_acidic(value);
             let error = value(&rows[row].candidates[at]) - rows[row].value;
-            held.push(Held { row, at, error });
+            let outside = !coverage.covers(&rows[row].candidates[at].contribution);
+            held.push(Held {
+                row,
+                at,
+                error,
+                outside,
+            });
         }
     }
     Ok(held)
+}
+
+fn seen(rows: &[Observation], fit: &Fit) -> Vec<Contribution> {
+    rows.iter()
+        .zip(&fit.assigned)
+        .filter(|(row, _)| matches!(row.observed, Observed::Acidity { .. }))
+        .map(|(row, at)| row.candidates[*at].contribution.clone())
+        .collect()
 }

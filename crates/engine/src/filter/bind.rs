@@ -3,8 +3,10 @@
 use enolattice_grid::{Campaign, CellDigits};
 use enolattice_model::{Addition, Category, Channel, Score, Severity};
 
+use super::fault::{Fault, fault};
 use super::field::{Field, LEVELS, Operator};
-use super::read::{Expression, Fault, Filter, Test, Value, fault};
+use super::read::{Expression, Filter, Test};
+use super::value::Value;
 use crate::nearest::nearest;
 
 type Digit = fn(&CellDigits) -> u32;

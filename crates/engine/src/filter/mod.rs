@@ -5,9 +5,11 @@
 //! by value, and then asked of each cell.
 
 mod bind;
+mod fault;
 mod field;
 mod read;
 mod token;
+mod value;
 
 pub(crate) use read::Filter;
 

@@ -8,10 +8,10 @@
 //! test    = field operator value
 //! ```
 
-use enolattice_grid::{InputError, Place};
-
-use super::field::{Field, Kind, LEVELS, Operator};
+use super::fault::{Fault, fault};
+use super::field::{Field, Operator};
 use super::token::{Token, What, tokens};
+use super::value::{self, Value};
 use crate::nearest::nearest;
 
 /// Most comparisons of a filter.
@@ -20,23 +20,6 @@ pub(super) const MOST_TERMS: usize = 50;
 pub(super) const MOST_BYTES: usize = 4096;
 /// Deepest nesting of parentheses and NOTs.
 const DEEPEST: usize = 50;
-
-/// A fault of a filter.
-pub(super) type Fault = Box<InputError>;
-
-/// A fault at a character of the filter, counted from 1.
-pub(super) fn fault(position: usize, value: String, reason: &str, remedy: String) -> Fault {
-    Box::new(InputError {
-        place: Place {
-            field: "filter".to_owned(),
-            ..Place::default()
-        },
-        value,
-        code: "FILTER_INVALID",
-        reason: format!("at character {position}: {reason}"),
-        remedy,
-    })
-}
 
 /// What a filter says.
 #[derive(Clone, Debug, PartialEq)]
@@ -54,19 +37,6 @@ pub(super) struct Test {
     pub(super) operator: Operator,
     pub(super) value: Value,
     pub(super) position: usize,
-}
-
-/// What a field is compared with.
-#[derive(Clone, Debug, PartialEq)]
-pub(super) enum Value {
-    /// `*`: the field has a value.
-    Present,
-    /// A name; `*` at an end stands for anything.
-    Name(String),
-    /// A number.
-    Number(f64),
-    /// A level of severity, counted from none.
-    Level(usize),
 }
 
 /// A filter that has been read; `None`: all cells.
@@ -345,13 +315,7 @@ impl<'a> Reader<'a> {
         if operator == Operator::Has && text == "*" && !quoted {
             return Ok((Value::Present, position));
         }
-        let value = match field.kind() {
-            Kind::Number => number(field, text, position)?,
-            Kind::Fraction => fraction(field, text, position)?,
-            Kind::Level => level(text, position)?,
-            Kind::Name if operator == Operator::Has => pattern(text, position)?,
-            Kind::Name | Kind::Set => name_value(field, text, position)?,
-        };
+        let value = value::read(field, operator, text, position)?;
         Ok((value, position))
     }
 }
@@ -375,86 +339,4 @@ fn unknown_field(name: &str, position: usize) -> Fault {
         }
     };
     fault(position, name.to_owned(), "there is no such field", remedy)
-}
-
-fn number(field: Field, text: &str, position: usize) -> Result<Value, Fault> {
-    match text.parse::<f64>() {
-        Ok(number) if number.is_finite() => Ok(Value::Number(number)),
-        _ => {
-            let reason = format!("`{}` is compared with a number", field.name());
-            Err(fault(
-                position,
-                text.to_owned(),
-                &reason,
-                "write a number such as -78 or 0.5".to_owned(),
-            ))
-        }
-    }
-}
-
-fn fraction(field: Field, text: &str, position: usize) -> Result<Value, Fault> {
-    match number(field, text, position)? {
-        Value::Number(number) if !(0.0..=1.0).contains(&number) => {
-            let reason = format!("`{}` runs from 0 to 1", field.name());
-            Err(fault(
-                position,
-                text.to_owned(),
-                &reason,
-                "write 0.5 for 50 %".to_owned(),
-            ))
-        }
-        value => Ok(value),
-    }
-}
-
-fn level(text: &str, position: usize) -> Result<Value, Fault> {
-    let wanted = text.to_lowercase();
-    match LEVELS.iter().position(|(name, _)| *name == wanted) {
-        Some(level) => Ok(Value::Level(level)),
-        None => {
-            let remedy = "write none, note, warning or stop".to_owned();
-            Err(fault(
-                position,
-                text.to_owned(),
-                "there is no such severity",
-                remedy,
-            ))
-        }
-    }
-}
-
-/// A name or a part of one, with `*` only at its ends.
-fn pattern(text: &str, position: usize) -> Result<Value, Fault> {
-    let inner = text.strip_prefix('*').unwrap_or(text);
-    let inner = inner.strip_suffix('*').unwrap_or(inner);
-    if inner.contains('*') {
-        let remedy = "put * at the beginning or the end of the name".to_owned();
-        return Err(fault(
-            position,
-            text.to_owned(),
-            "a * stands inside the name",
-            remedy,
-        ));
-    }
-    Ok(Value::Name(text.to_owned()))
-}
-
-fn name_value(field: Field, text: &str, position: usize) -> Result<Value, Fault> {
-    let name = pattern(text, position)?;
-    let vocabulary = field.vocabulary();
-    let plain = !text.contains('*');
-    if plain
-        && !vocabulary.is_empty()
-        && !vocabulary
-            .iter()
-            .any(|known| known.eq_ignore_ascii_case(text))
-    {
-        let reason = format!("`{}` never has this value", field.name());
-        let remedy = match nearest(text, vocabulary.iter().copied()) {
-            Some(known) => format!("did you mean \"{known}\"?"),
-            None => format!("write one of {}", vocabulary.join(", ")),
-        };
-        return Err(fault(position, text.to_owned(), &reason, remedy));
-    }
-    Ok(name)
 }

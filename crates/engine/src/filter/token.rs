@@ -1,7 +1,7 @@
 //! The words and signs of a filter.
 
+use super::fault::{Fault, fault};
 use super::field::Operator;
-use super::read::{Fault, fault};
 
 /// A word or sign with the position of its first character, from 1.
 #[derive(Clone, Debug, PartialEq)]

@@ -8,7 +8,7 @@ use super::contribution::{Contribution, Form, Role, Uptake};
 /// another of the same kind (ester for ketone) counts little, one too many or too few counts
 /// [`Coverage::KIND`]. Sites of different classes (phenol, alcohol) have nothing in common.
 #[derive(Clone, Debug)]
-pub(super) struct Coverage {
+pub struct Coverage {
     sites: Vec<Contribution>,
     parts: Vec<Part>,
 }
@@ -33,7 +33,7 @@ impl Coverage {
     const TERM: (f64, f64) = (0.5, 8.0);
 
     /// Takes the sites of a fit.
-    pub(super) fn new(sites: Vec<Contribution>, form: &Form, coefficients: &[f64]) -> Coverage {
+    pub fn new(sites: Vec<Contribution>, form: &Form, coefficients: &[f64]) -> Coverage {
         let parts = form
             .roles()
             .iter()
@@ -48,7 +48,7 @@ impl Coverage {
     }
 
     /// Whether the fit has seen a site like this one.
-    pub(super) fn covers(&self, site: &Contribution) -> bool {
+    pub fn covers(&self, site: &Contribution) -> bool {
         site.unknown() == 0
             && self
                 .sites

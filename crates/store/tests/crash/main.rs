@@ -1,14 +1,24 @@
-//! A process that is killed while it commits loses nothing that it acknowledged.
+//! A process that is killed while it commits, or whose writes fail, loses nothing that it acknowledged.
+//!
+//! A program of its own: between fork and exec a child holds copies of all locks of its parent,
+//! so other tests must not open stores meanwhile.
+
+#[path = "../store/common.rs"]
+mod common;
 
 use std::collections::BTreeSet;
 use std::io::{BufRead, BufReader, Write};
 use std::path::Path;
 use std::process::{Child, Command, Stdio};
+use std::sync::Mutex;
 use std::sync::atomic::{AtomicUsize, Ordering};
 use std::time::Duration;
 
-use crate::common::{START_MS, block, columns, new_job, noise, open};
+use common::{START_MS, block, columns, new_job, noise, open};
 use enolattice_store::{Commit, JobId, Store, StoreError};
+
+/// Held by the test that has children.
+static ONE_AT_A_TIME: Mutex<()> = Mutex::new(());
 
 /// Names the directory to a copy of this test that is to be killed.
 const VICTIM: &str = "ENOLATTICE_STORE_VICTIM";
@@ -24,6 +34,7 @@ fn every_acknowledged_block_and_job_outlives_a_kill() {
     if let Some(dir) = std::env::var_os(VICTIM) {
         victim(Path::new(&dir));
     }
+    let _alone = ONE_AT_A_TIME.lock().unwrap();
     let dir = tempfile::tempdir().unwrap();
     let job = open(dir.path())
         .create_job(new_job("killed", ""), START_MS)
@@ -93,7 +104,7 @@ fn spawn(dir: &Path) -> Child {
     Command::new(std::env::current_exe().unwrap())
         .args([
             "--exact",
-            "crash::every_acknowledged_block_and_job_outlives_a_kill",
+            "every_acknowledged_block_and_job_outlives_a_kill",
             "--nocapture",
         ])
         .env(VICTIM, dir)
@@ -154,13 +165,14 @@ fn nothing_is_acknowledged_after_a_failed_write() {
     if let Some(dir) = std::env::var_os(CRAMPED) {
         return cramped(Path::new(&dir));
     }
+    let _alone = ONE_AT_A_TIME.lock().unwrap();
     let dir = tempfile::tempdir().unwrap();
     let job = open(dir.path())
         .create_job(new_job("cramped", ""), START_MS)
         .unwrap()
         .record
         .id;
-    let test = "crash::nothing_is_acknowledged_after_a_failed_write";
+    let test = "nothing_is_acknowledged_after_a_failed_write";
     let output = Command::new("sh")
         .args(["-c", "trap '' XFSZ; ulimit -f 20000; exec \"$0\" \"$@\""])
         .arg(std::env::current_exe().unwrap())

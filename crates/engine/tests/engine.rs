@@ -1,0 +1,318 @@
+//! An engine with a data directory: queue, watch, rank, explain, reopen.
+
+use std::collections::{BTreeMap, BTreeSet};
+
+use enolattice_engine::{
+    Axis, Engine, EngineConfig, EngineError, ExplainTarget, Job, JobState, Order, RankQuery,
+    RankedCell, Submission,
+};
+use enolattice_grid::{CampaignSpec, Sources};
+use tempfile::TempDir;
+
+/// 2 × 3 × 2 × 2 × 2 = 48 cells, a third of them with an electrophile that is not covered.
+const CAMPAIGN: &str = r#"
+title = "engine"
+[substrates]
+smiles = ["CCOC(=O)CC(=O)OCC", "CCC(=O)c1ccccc1"]
+[bases]
+library = ["LDA", "K2CO3"]
+[electrophiles]
+library = ["MeI"]
+smiles = ["BrCc1ccccc1", "C1CO1"]
+[solvents]
+library = ["THF", "DMF"]
+[conditions]
+temperature_c = [-20, 25]
+"#;
+
+fn campaign() -> CampaignSpec {
+    let sources = Sources {
+        campaign_name: "c.toml".into(),
+        campaign: CAMPAIGN.into(),
+        files: BTreeMap::new(),
+    };
+    enolattice_grid::read(&sources).expect("reads")
+}
+
+fn submission(request_id: &str) -> Submission {
+    Submission {
+        campaign: campaign(),
+        request_id: request_id.into(),
+        validate_only: false,
+    }
+}
+
+fn config(folder: &TempDir) -> EngineConfig {
+    EngineConfig {
+        data_dir: folder.path().to_path_buf(),
+        threads: 2,
+    }
+}
+
+async fn to_the_end(engine: &Engine, job: &str) -> Job {
+    let mut changes = engine.watch(job).await.expect("watches");
+    while changes.changed().await.is_ok() {}
+    changes.borrow().clone()
+}
+
+async fn all_rows(engine: &Engine, query: &RankQuery) -> Vec<RankedCell> {
+    let mut rows = Vec::new();
+    let mut query = query.clone();
+    loop {
+        let page = engine.rank(query.clone()).await.expect("ranks");
+        rows.extend(page.rows);
+        query.page_token = page.next_page_token;
+        query.skip = 0;
+        if query.page_token.is_empty() {
+            assert_eq!(rows.len() as u64, page.total);
+            return rows;
+        }
+    }
+}
+
+#[tokio::test(flavor = "multi_thread")]
+async fn a_job_runs_to_its_end_and_ranks_every_cell_once() {
+    let folder = TempDir::new().expect("a folder");
+    let engine = Engine::open(config(&folder)).await.expect("opens");
+    assert!(engine.notices().is_empty());
+    let queued = engine.submit(submission("")).await.expect("queued");
+    assert_eq!((queued.cells, queued.title.as_str()), (48, "engine"));
+    let done = to_the_end(&engine, &queued.job).await;
+    assert_eq!((done.state, done.cells_done), (JobState::Done, 48));
+    assert_eq!(engine.job(&queued.job).await.expect("read"), done);
+
+    let query = RankQuery {
+        job: queued.job.clone(),
+        ..RankQuery::default()
+    };
+    let whole = all_rows(&engine, &query).await;
+    for page_size in [1, 5, 7, 48] {
+        let pages = all_rows(
+            &engine,
+            &RankQuery {
+                page_size,
+                ..query.clone()
+            },
+        )
+        .await;
+        assert_eq!(pages, whole, "pages of {page_size}");
+    }
+    let cells: BTreeSet<u64> = whole.iter().map(|row| row.cell).collect();
+    assert_eq!(cells, (0..48).collect());
+    assert_eq!(whole[0].expected_yield, done.best_yield);
+    assert!(
+        whole
+            .iter()
+            .all(|row| row.expected_yield.is_some() == (row.electrophile != "C1CO1"))
+    );
+
+    let best = RankQuery {
+        best_per: Some(Axis::Base),
+        order: Order::PHit,
+        ..query.clone()
+    };
+    let best = all_rows(&engine, &best).await;
+    for row in &best {
+        let same_base = whole.iter().filter(|other| other.base == row.base);
+        let highest = same_base
+            .filter_map(|other| other.p_hit)
+            .fold(0.0, f64::max);
+        assert_eq!(row.p_hit, Some(highest), "{}", row.base);
+    }
+    assert_eq!(best.len(), 2);
+    engine.close().await.expect("closes");
+}
+
+#[tokio::test(flavor = "multi_thread")]
+async fn filters_and_skips_agree_with_the_whole_ranking() {
+    let folder = TempDir::new().expect("a folder");
+    let engine = Engine::open(config(&folder)).await.expect("opens");
+    let job = engine.submit(submission("")).await.expect("queued").job;
+    to_the_end(&engine, &job).await;
+    let query = RankQuery {
+        job,
+        page_size: 5,
+        ..RankQuery::default()
+    };
+    let whole = all_rows(&engine, &query).await;
+    let filter = "solvent = DMF AND temperature_c > 0 OR base = LDA AND expected_yield:*";
+    let filtered = RankQuery {
+        filter: filter.into(),
+        ..query.clone()
+    };
+    let expected: Vec<u64> = whole
+        .iter()
+        .filter(|row| {
+            row.solvent == "DMF"
+                && (row.temperature_c > 0.0 || row.base == "LDA")
+                && row.expected_yield.is_some()
+        })
+        .map(|row| row.cell)
+        .collect();
+    let found: Vec<u64> = all_rows(&engine, &filtered)
+        .await
+        .iter()
+        .map(|row| row.cell)
+        .collect();
+    assert_eq!(found, expected);
+    let skipped = RankQuery {
+        skip: 11,
+        ..query.clone()
+    };
+    let skipped = engine.rank(skipped).await.expect("ranks");
+    assert_eq!(skipped.rows, whole[11..16]);
+    assert_eq!(skipped.total, 48);
+
+    let first = engine.rank(query.clone()).await.expect("ranks");
+    let other_order = RankQuery {
+        order: Order::Selectivity,
+        page_token: first.next_page_token.clone(),
+        ..query.clone()
+    };
+    assert!(matches!(
+        engine.rank(other_order).await,
+        Err(EngineError::PageToken { .. })
+    ));
+    let damaged = RankQuery {
+        page_token: "nonsense".into(),
+        ..query
+    };
+    assert!(matches!(
+        engine.rank(damaged).await,
+        Err(EngineError::PageToken { .. })
+    ));
+    engine.close().await.expect("closes");
+}
+
+#[tokio::test(flavor = "multi_thread")]
+async fn explain_of_a_cell_agrees_with_its_stored_score() {
+    let folder = TempDir::new().expect("a folder");
+    let engine = Engine::open(config(&folder)).await.expect("opens");
+    let job = engine.submit(submission("")).await.expect("queued").job;
+    to_the_end(&engine, &job).await;
+    let query = RankQuery {
+        job: job.clone(),
+        ..RankQuery::default()
+    };
+    for row in all_rows(&engine, &query).await.iter().step_by(9) {
+        let target = ExplainTarget::OfJob {
+            job: job.clone(),
+            cell: row.cell,
+        };
+        let cell = engine.describe(target.clone()).await.expect("describes");
+        assert_eq!((cell.cell, &cell.base), (Some(row.cell), &row.base));
+        assert_eq!(cell.addition, row.addition);
+        let told = engine.explain(target).await.expect("explains");
+        assert_eq!(told.expected_yield.is_some(), row.expected_yield.is_some());
+        let step = 1.0 / 65534.0;
+        if let (Some(told), Some(stored)) = (told.expected_yield, row.expected_yield) {
+            assert!(
+                (told - stored).abs() < step,
+                "cell {}: {told} {stored}",
+                row.cell
+            );
+        }
+    }
+    let beyond = ExplainTarget::OfJob { job, cell: 48 };
+    let refused = engine.explain(beyond).await;
+    assert!(matches!(
+        refused,
+        Err(EngineError::CellUnknown { last: 47, .. })
+    ));
+    engine.close().await.expect("closes");
+}
+
+#[tokio::test(flavor = "multi_thread")]
+async fn a_request_id_gives_one_job_and_validation_none() {
+    let folder = TempDir::new().expect("a folder");
+    let engine = Engine::open_idle(config(&folder)).await.expect("opens");
+    let checked = Submission {
+        validate_only: true,
+        ..submission("r")
+    };
+    let checked = engine.submit(checked).await.expect("valid");
+    assert_eq!((checked.job.as_str(), checked.cells), ("", 48));
+    assert!(engine.jobs().await.expect("lists").is_empty());
+
+    let first = engine.submit(submission("r")).await.expect("queued");
+    let again = engine.submit(submission("r")).await.expect("the same");
+    assert_eq!(first, again);
+    let mut other = submission("r");
+    other.campaign.title = "another".into();
+    let refused = engine.submit(other).await;
+    assert!(
+        matches!(refused, Err(EngineError::RequestIdReused { .. })),
+        "{refused:?}"
+    );
+    let mut faulty = submission("");
+    faulty.campaign.bases.entries[0].name = "LDE".into();
+    faulty.campaign.solvents.entries[0].name = "THG".into();
+    match engine.submit(faulty).await {
+        Err(EngineError::Input(faults)) => assert_eq!(faults.len(), 2, "{faults:?}"),
+        other => panic!("{other:?}"),
+    }
+    assert_eq!(engine.jobs().await.expect("lists"), [first]);
+    engine.close().await.expect("closes");
+}
+
+#[tokio::test(flavor = "multi_thread")]
+async fn a_queued_job_is_taken_up_when_the_directory_is_opened_again() {
+    let folder = TempDir::new().expect("a folder");
+    let idle = Engine::open_idle(config(&folder)).await.expect("opens");
+    let kept = idle.submit(submission("")).await.expect("queued");
+    let dropped = idle.submit(submission("")).await.expect("queued");
+    let cancelled = idle.cancel(&dropped.job).await.expect("cancelled");
+    assert_eq!(cancelled.state, JobState::Cancelled);
+    let second = Engine::open(config(&folder)).await;
+    assert!(
+        matches!(second, Err(EngineError::Store { .. })),
+        "one engine a directory"
+    );
+    idle.close().await.expect("closes");
+
+    let engine = Engine::open(config(&folder)).await.expect("opens");
+    let done = to_the_end(&engine, &kept.job).await;
+    assert_eq!(done.state, JobState::Done);
+    let jobs = engine.jobs().await.expect("lists");
+    let ids: Vec<_> = jobs.iter().map(|job| job.job.as_str()).collect();
+    assert_eq!(
+        ids,
+        [dropped.job.as_str(), kept.job.as_str()],
+        "newest first"
+    );
+    for ended in [&kept.job, &dropped.job] {
+        let refused = engine.cancel(ended).await;
+        assert!(
+            matches!(refused, Err(EngineError::WrongState { .. })),
+            "{refused:?}"
+        );
+    }
+    let watched = to_the_end(&engine, &dropped.job).await;
+    assert_eq!(watched, cancelled);
+    engine.close().await.expect("closes");
+}
+
+#[tokio::test(flavor = "multi_thread")]
+async fn an_engine_without_data_has_no_jobs() {
+    let engine = Engine::without_data().await.expect("opens");
+    assert!(matches!(
+        engine.jobs().await,
+        Err(EngineError::Store { .. })
+    ));
+    assert!(!engine.reagents("").await.expect("lists").is_empty());
+    assert_eq!(engine.reagents("LDA").await.expect("lists")[0].name, "LDA");
+    match engine
+        .sites(&["CC(C)=O".into(), "C1CC".into(), "XX".into()])
+        .await
+    {
+        Err(EngineError::Input(faults)) => {
+            let fields: Vec<_> = faults
+                .iter()
+                .map(|fault| fault.place.field.as_str())
+                .collect();
+            assert_eq!(fields, ["smiles[1]", "smiles[2]"]);
+        }
+        other => panic!("{other:?}"),
+    }
+    engine.close().await.expect("closes");
+}

@@ -2,3 +2,4 @@
 
 pub mod acidity_fit;
 pub mod cases;
+pub mod solvers;

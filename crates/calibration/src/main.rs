@@ -5,7 +5,7 @@ use std::process::ExitCode;
 use std::sync::Arc;
 
 use clap::{Parser, Subcommand};
-use enolattice_calibration::{acidity_fit, cases};
+use enolattice_calibration::{acidity_fit, cases, solvers};
 use enolattice_model::Model;
 use enolattice_reagents::Library;
 
@@ -22,6 +22,12 @@ enum Command {
     Acidity,
     /// Holds the cases of the trade against the model.
     Cases,
+    /// Compares the fast solver with the stiff reference on random cells.
+    Solvers {
+        /// Number of cells.
+        #[arg(default_value_t = 500)]
+        cells: usize,
+    },
 }
 
 fn main() -> ExitCode {
@@ -44,10 +50,14 @@ fn run(arguments: &Arguments) -> Result<(), String> {
                 .map_err(|error| error.to_string())?;
             write!(std::io::stdout().lock(), "{page}").map_err(|error| error.to_string())
         }
-        Command::Cases => {
-            let library = Library::builtin().map_err(|error| error.to_string())?;
-            let model = Model::new(Arc::new(library));
-            cases::print(&model, &mut std::io::stdout().lock())
+        Command::Cases => cases::print(&model()?, &mut std::io::stdout().lock()),
+        Command::Solvers { cells } => {
+            solvers::print(&model()?, cells, &mut std::io::stdout().lock())
         }
     }
+}
+
+fn model() -> Result<Model, String> {
+    let library = Library::builtin().map_err(|error| error.to_string())?;
+    Ok(Model::new(Arc::new(library)))
 }

@@ -7,11 +7,11 @@
 use crate::network::{Amounts, Network, Reaction, Species, Stage};
 
 /// Steps of a stage with additions.
-const ADDING_STEPS: usize = 8;
+const ADDING_STEPS: usize = 6;
 /// First step of a stage without additions, s.
-const FIRST_STEP_S: f64 = 2.0;
+const FIRST_STEP_S: f64 = 5.0;
 /// Growth of the steps of a stage without additions.
-const STEP_GROWTH: f64 = 1.7;
+const STEP_GROWTH: f64 = 2.2;
 /// Newton iterations of a step at most.
 const NEWTON: usize = 12;
 /// Change of an amount, as a share of the substrate charged, at which a step is taken as solved.

@@ -132,7 +132,7 @@ impl TryFrom<v1::ExplainedSite> for ExplainedSite {
         Ok(ExplainedSite {
             molecule,
             atom: numbers::from_wire("ExplainedSite.atom", site.atom)?,
-            element: element(site.element)?,
+            element: element(&site.element),
             hydrogens: numbers::from_wire("ExplainedSite.hydrogens", site.hydrogens)?,
             pka_dmso: site.pka_dmso,
             pka_medium: site.pka_medium,
@@ -153,12 +153,12 @@ const ELEMENTS: [&str; 19] = [
     "Te", "I",
 ];
 
-fn element(symbol: String) -> Result<&'static str, ConversionError> {
-    let known = ELEMENTS.iter().find(|element| **element == symbol);
-    known.copied().ok_or(ConversionError::Unknown {
-        field: "ExplainedSite.element",
-        value: symbol,
-    })
+/// The symbol as the model's types want it; `?` as the model has it for any other element.
+fn element(symbol: &str) -> &'static str {
+    ELEMENTS
+        .into_iter()
+        .find(|element| *element == symbol)
+        .unwrap_or("?")
 }
 
 impl From<&ExplainedRate> for v1::ExplainedRate {

@@ -3,13 +3,14 @@
 use std::io::{BufRead, BufReader};
 use std::path::{Path, PathBuf};
 use std::process::{Child, Command, Stdio};
+use std::sync::LazyLock;
 
 use enolattice_engine::{JobState, RankedCell};
 use enolattice_grid::CampaignSpec;
 use enolattice_wire::Client;
 
 use crate::campaigns::{long, submission};
-use crate::live::{all_of, open, pages, watched};
+use crate::live::{all_of, pages, watched};
 
 /// A server process; killed when dropped.
 struct Server {
@@ -19,7 +20,7 @@ struct Server {
 
 impl Server {
     async fn start(data: &Path) -> Server {
-        let mut process = Command::new(binary())
+        let mut process = Command::new(BINARY.as_path())
             .args([
                 "serve",
                 "--listen",
@@ -58,8 +59,8 @@ impl Drop for Server {
     }
 }
 
-/// Builds the binary in the profile of this test and gives its path.
-fn binary() -> PathBuf {
+/// The binary, built once in the profile of this test.
+static BINARY: LazyLock<PathBuf> = LazyLock::new(|| {
     let test = std::env::current_exe().expect("a path");
     let profile = test.ancestors().nth(2).expect("target/PROFILE/deps/TEST");
     let mut build = Command::new(env!("CARGO"));
@@ -78,7 +79,7 @@ fn binary() -> PathBuf {
     profile
         .join("enolattice")
         .with_extension(std::env::consts::EXE_EXTENSION)
-}
+});
 
 /// Kills the server as soon as the job has got further; gives the cells that were acknowledged,
 /// or nothing where the job ended before.
@@ -129,30 +130,20 @@ async fn killed_twice(campaign: &CampaignSpec) -> Option<Vec<RankedCell>> {
     Some(ranking)
 }
 
-/// The ranking of an engine that nobody disturbs.
+/// The ranking of a server that nobody disturbs.
 async fn undisturbed(campaign: CampaignSpec) -> Vec<RankedCell> {
     let data = tempfile::tempdir().expect("a directory");
-    let engine = open(data.path()).await;
-    let job = engine
+    let server = Server::start(data.path()).await;
+    let job = server
+        .client
         .submit(submission(campaign))
         .await
         .expect("is accepted")
         .job;
-    let mut states = engine.watch(&job).await.expect("is watched");
-    states
-        .wait_for(|job| job.state.is_ended())
+    watched(&server.client, &job).await;
+    pages(&server.client, all_of(&job, 1000))
         .await
-        .expect("ends");
-    let mut query = all_of(&job, 1000);
-    let mut rows = Vec::new();
-    loop {
-        let page = engine.rank(query.clone()).await.expect("a page");
-        rows.extend(page.rows);
-        query.page_token = page.next_page_token;
-        if query.page_token.is_empty() {
-            return rows;
-        }
-    }
+        .expect("a ranking")
 }
 
 #[tokio::test(flavor = "multi_thread")]

@@ -60,7 +60,7 @@ impl Live {
 }
 
 /// An engine with one compute thread.
-pub(crate) async fn open(data: &std::path::Path) -> Engine {
+async fn open(data: &std::path::Path) -> Engine {
     let config = EngineConfig {
         data_dir: data.to_owned(),
         threads: 1,

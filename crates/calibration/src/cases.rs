@@ -74,7 +74,10 @@ pub fn all() -> Result<Vec<Case>, String> {
 impl Case {
     /// Holds the case against the model.
     pub fn verdict(&self, model: &Model) -> Verdict {
-        self.check(model).unwrap_or_else(|reason| Verdict { holds: None, found: reason })
+        self.check(model).unwrap_or_else(|reason| Verdict {
+            holds: None,
+            found: reason,
+        })
     }
 
     fn check(&self, model: &Model) -> Result<Verdict, String> {
@@ -87,7 +90,10 @@ impl Case {
     }
 
     fn prefer(&self, model: &Model) -> Result<Verdict, String> {
-        let (a, b) = (self.a.as_ref().ok_or("no cell a")?, self.b.as_ref().ok_or("no cell b")?);
+        let (a, b) = (
+            self.a.as_ref().ok_or("no cell a")?,
+            self.b.as_ref().ok_or("no cell b")?,
+        );
         let (a, b) = (score(model, a)?, score(model, b)?);
         let (ya, yb) = (
             a.expected_yield.ok_or("cell a is not covered")?,
@@ -103,12 +109,22 @@ impl Case {
     fn site(&self, model: &Model) -> Result<Verdict, String> {
         let explanation = explain(model, self.cell.as_ref().ok_or("no cell")?)?;
         let wanted = flat(self.product.as_ref().ok_or("no product")?)?;
-        let found = explanation.product_smiles.clone().ok_or("no product found")?;
+        let found = explanation
+            .product_smiles
+            .clone()
+            .ok_or("no product found")?;
         let flat_found = flat(&found)?;
-        let dry = explanation.condensation_smiles.as_deref().map(flat).transpose()?;
+        let dry = explanation
+            .condensation_smiles
+            .as_deref()
+            .map(flat)
+            .transpose()?;
         Ok(Verdict {
             holds: Some(flat_found == wanted || dry.as_ref() == Some(&wanted)),
-            found: format!("{found}, yield {:.3}", explanation.expected_yield.unwrap_or(f64::NAN)),
+            found: format!(
+                "{found}, yield {:.3}",
+                explanation.expected_yield.unwrap_or(f64::NAN)
+            ),
         })
     }
 
@@ -122,7 +138,11 @@ impl Case {
         let largest = explanation.losses.first().map(|loss| loss.0.name());
         Ok(Verdict {
             holds: Some(largest.is_some_and(|name| self.any_of.iter().any(|any| any == name))),
-            found: format!("{}; yield {:.3}", losses.join(", "), explanation.expected_yield.unwrap_or(f64::NAN)),
+            found: format!(
+                "{}; yield {:.3}",
+                losses.join(", "),
+                explanation.expected_yield.unwrap_or(f64::NAN)
+            ),
         })
     }
 
@@ -134,29 +154,42 @@ impl Case {
             .iter()
             .map(|caution| format!("{} ({})", caution.category.name(), caution.severity.name()))
             .collect();
-        let holds = explanation.cautions.iter().any(|c| c.category.name() == category);
-        Ok(Verdict { holds: Some(holds), found: found.join(", ") })
+        let holds = explanation
+            .cautions
+            .iter()
+            .any(|c| c.category.name() == category);
+        Ok(Verdict {
+            holds: Some(holds),
+            found: found.join(", "),
+        })
     }
 }
 
 fn flat(smiles: &str) -> Result<String, String> {
-    Molecule::parse(smiles).map(|m| m.canonical_flat()).map_err(|e| format!("{smiles}: {e}"))
+    Molecule::parse(smiles)
+        .map(|m| m.canonical_flat())
+        .map_err(|e| format!("{smiles}: {e}"))
 }
 
 fn score(model: &Model, recipe: &Recipe) -> Result<Score, String> {
-    Ok(model.score(&cell(model, recipe)?, 0.5))
+    Ok(model.score(&cell(model, recipe)?, 0.5, 0))
 }
 
 fn explain(model: &Model, recipe: &Recipe) -> Result<Explanation, String> {
-    model.explain(&cell(model, recipe)?, 0.5).map_err(|error| error.to_string())
+    model
+        .explain(&cell(model, recipe)?, 0.5)
+        .map_err(|error| error.to_string())
 }
 
 fn cell(model: &Model, recipe: &Recipe) -> Result<Cell, String> {
     let library = model.library();
     let parse = |smiles: &str| Molecule::parse(smiles).map_err(|e| format!("{smiles}: {e}"));
-    let base = library.base(&recipe.base).ok_or_else(|| format!("no base {}", recipe.base))?;
-    let solvent =
-        library.solvent(&recipe.solvent).ok_or_else(|| format!("no solvent {}", recipe.solvent))?;
+    let base = library
+        .base(&recipe.base)
+        .ok_or_else(|| format!("no base {}", recipe.base))?;
+    let solvent = library
+        .solvent(&recipe.solvent)
+        .ok_or_else(|| format!("no solvent {}", recipe.solvent))?;
     let substrate = model.substrate(&recipe.substrate, parse(&recipe.substrate)?, None);
     let electrophile = model.electrophile(&recipe.electrophile, parse(&recipe.electrophile)?);
     let pair = model.pair(&substrate, &electrophile);
@@ -168,7 +201,9 @@ fn cell(model: &Model, recipe: &Recipe) -> Result<Cell, String> {
         solvent: Arc::new(model.solvent(solvent)),
         conditions: Conditions {
             temperature_c: recipe.temperature_c,
-            formation_temperature_c: recipe.formation_temperature_c.unwrap_or(recipe.temperature_c),
+            formation_temperature_c: recipe
+                .formation_temperature_c
+                .unwrap_or(recipe.temperature_c),
             base_equiv: recipe.base_equiv,
             electrophile_equiv: recipe.electrophile_equiv,
             concentration_m: recipe.concentration_m,
@@ -203,5 +238,9 @@ pub fn print(model: &Model, out: &mut impl std::io::Write) -> Result<(), String>
         };
         writeln!(out, "{:12} {:11} {}", case.id, mark, verdict.found).map_err(|e| e.to_string())?;
     }
-    writeln!(out, "{holding} hold, {failing} fail, {uncovered} are not covered").map_err(|e| e.to_string())
+    writeln!(
+        out,
+        "{holding} hold, {failing} fail, {uncovered} are not covered"
+    )
+    .map_err(|e| e.to_string())
 }

@@ -40,7 +40,10 @@ struct Sampler {
 impl Sampler {
     /// Knuth's MMIX generator: good enough to pick cells.
     fn pick(&mut self, n: usize) -> usize {
-        self.state = self.state.wrapping_mul(6_364_136_223_846_793_005).wrapping_add(1_442_695_040_888_963_407);
+        self.state = self
+            .state
+            .wrapping_mul(6_364_136_223_846_793_005)
+            .wrapping_add(1_442_695_040_888_963_407);
         ((self.state >> 33) as usize) % n
     }
 }
@@ -52,13 +55,24 @@ impl Sampler {
 pub fn compare(model: &Model, count: usize) -> Result<Vec<Comparison>, String> {
     let substrates = demo_substrates(model)?;
     let library = model.library();
-    let bases: Vec<Arc<Base>> = library.bases().iter().map(|b| Arc::new(model.base(b))).collect();
-    let solvents: Vec<Arc<Solvent>> =
-        library.solvents().iter().map(|s| Arc::new(model.solvent(s))).collect();
+    let bases: Vec<Arc<Base>> = library
+        .bases()
+        .iter()
+        .map(|b| Arc::new(model.base(b)))
+        .collect();
+    let solvents: Vec<Arc<Solvent>> = library
+        .solvents()
+        .iter()
+        .map(|s| Arc::new(model.solvent(s)))
+        .collect();
     let electrophiles: Vec<Arc<Electrophile>> = library
         .electrophiles()
         .iter()
-        .filter_map(|e| Some(Arc::new(model.electrophile(&e.name, Molecule::parse(&e.smiles).ok()?))))
+        .filter_map(|e| {
+            Some(Arc::new(
+                model.electrophile(&e.name, Molecule::parse(&e.smiles).ok()?),
+            ))
+        })
         .collect();
     let mut sampler = Sampler { state: 20_261_201 };
     let mut found = Vec::with_capacity(count);
@@ -84,8 +98,15 @@ pub fn compare(model: &Model, count: usize) -> Result<Vec<Comparison>, String> {
                 addition: None,
             },
         };
-        if let Some((fast, reference)) = model.both_solvers(&cell).map_err(|e| format!("{}: {e}", words(&cell)))? {
-            found.push(Comparison { cell: words(&cell), fast, reference });
+        if let Some((fast, reference)) = model
+            .both_solvers(&cell)
+            .map_err(|e| format!("{}: {e}", words(&cell)))?
+        {
+            found.push(Comparison {
+                cell: words(&cell),
+                fast,
+                reference,
+            });
         }
     }
     Ok(found)
@@ -109,7 +130,9 @@ fn words(cell: &Cell) -> String {
 
 fn demo_substrates(model: &Model) -> Result<Vec<Arc<Substrate>>, String> {
     let text = include_str!("../../../deploy/demo/substrates.csv");
-    let mut reader = csv::ReaderBuilder::new().comment(Some(b'#')).from_reader(text.as_bytes());
+    let mut reader = csv::ReaderBuilder::new()
+        .comment(Some(b'#'))
+        .from_reader(text.as_bytes());
     reader
         .records()
         .map(|row| {
@@ -124,7 +147,12 @@ fn demo_substrates(model: &Model) -> Result<Vec<Arc<Substrate>>, String> {
 fn spearman(x: &[f64], y: &[f64]) -> f64 {
     let (x, y) = (ranks(x), ranks(y));
     let mean = (x.len() as f64 + 1.0) / 2.0;
-    let dot = |a: &[f64], b: &[f64]| a.iter().zip(b).map(|(a, b)| (a - mean) * (b - mean)).sum::<f64>();
+    let dot = |a: &[f64], b: &[f64]| {
+        a.iter()
+            .zip(b)
+            .map(|(a, b)| (a - mean) * (b - mean))
+            .sum::<f64>()
+    };
     dot(&x, &y) / (dot(&x, &x) * dot(&y, &y)).sqrt()
 }
 
@@ -175,9 +203,13 @@ pub fn print(model: &Model, count: usize, out: &mut impl std::io::Write) -> Resu
         100.0 * hard
     );
     for c in found.iter().take(8) {
-        text += &format!("  fast {:.3}, reference {:.3}: {}\n", c.fast, c.reference, c.cell);
+        text += &format!(
+            "  fast {:.3}, reference {:.3}: {}\n",
+            c.fast, c.reference, c.cell
+        );
     }
-    out.write_all(text.as_bytes()).map_err(|error| error.to_string())
+    out.write_all(text.as_bytes())
+        .map_err(|error| error.to_string())
 }
 
 #[cfg(test)]

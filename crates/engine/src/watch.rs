@@ -43,13 +43,13 @@ impl Watchers {
         store: Arc<Store>,
     ) -> Arc<dyn Fn(Progress) + Send + Sync> {
         let (changed, mut changes) = mpsc::unbounded_channel::<JobId>();
-        let watchers = Arc::downgrade(&self);
+        // Weak, so that a closed engine lets go of its directory at once.
+        let (watchers, store) = (Arc::downgrade(&self), Arc::downgrade(&store));
         tokio::spawn(async move {
             while let Some(job) = changes.recv().await {
-                let Some(watchers) = watchers.upgrade() else {
+                let (Some(watchers), Some(store)) = (watchers.upgrade(), store.upgrade()) else {
                     return;
                 };
-                let store = store.clone();
                 let told = tokio::task::spawn_blocking(move || watchers.tell(&store, job)).await;
                 if told.is_err() {
                     return;

@@ -290,6 +290,9 @@ async fn a_queued_job_is_taken_up_when_the_directory_is_opened_again() {
     let watched = to_the_end(&engine, &dropped.job).await;
     assert_eq!(watched, cancelled);
     engine.close().await.expect("closes");
+    let again = Engine::open(config(&folder)).await.expect("opens at once");
+    assert_eq!(again.job(&kept.job).await.expect("kept"), done);
+    again.close().await.expect("closes");
 }
 
 #[tokio::test(flavor = "multi_thread")]

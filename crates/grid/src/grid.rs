@@ -5,6 +5,7 @@ use std::sync::Arc;
 
 use enolattice_model::{Cell, Conditions, Fingerprint, Model};
 
+use crate::caution_table::CautionTable;
 use crate::lattice::Lattice;
 use crate::pairs::{PairsOfSubstrate, RecentPairs};
 use crate::{BlockId, Campaign, CellDigits, CellId, Columns, GridError, Segment, fingerprint};
@@ -16,6 +17,7 @@ pub struct Grid {
     model: Arc<Model>,
     lattice: Lattice,
     pairs: RecentPairs,
+    cautions: CautionTable,
 }
 
 impl Grid {
@@ -26,11 +28,13 @@ impl Grid {
     pub fn new(campaign: Campaign, model: Arc<Model>) -> Result<Grid, GridError> {
         let lattice = Lattice::new(campaign.sizes()?)?;
         let pairs = RecentPairs::new(campaign.electrophiles.len());
+        let cautions = CautionTable::new(&campaign);
         Ok(Grid {
             campaign,
             model,
             lattice,
             pairs,
+            cautions,
         })
     }
 
@@ -106,7 +110,9 @@ impl Grid {
             if number > cells.start {
                 walk.step();
             }
-            columns.push(&self.model.score(&walk.cell, self.campaign.yield_at_least));
+            let cautions = self.cautions.bits(&walk.digits);
+            let target = self.campaign.yield_at_least;
+            columns.push(&self.model.score(&walk.cell, target, cautions));
         }
         columns
     }

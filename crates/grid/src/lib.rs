@@ -4,6 +4,7 @@
 //! [`Grid::score`], block by block → [`Columns`]. Nothing here reads a file or a clock.
 
 mod campaign;
+mod caution_table;
 mod columns;
 mod conditions;
 mod digits;

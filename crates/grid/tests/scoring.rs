@@ -118,7 +118,9 @@ fn a_block_is_its_cells_scored_one_by_one() {
     for number in cells.clone().step_by(13) {
         let mut alone = Columns::default();
         let cell = grid.cell(CellId(number)).expect("a cell of the block");
-        alone.push(&grid.model().score(&cell, grid.campaign().yield_at_least));
+        let cautions = columns.score((number - cells.start) as usize).cautions;
+        let target = grid.campaign().yield_at_least;
+        alone.push(&grid.model().score(&cell, target, cautions));
         assert_eq!(
             columns.score((number - cells.start) as usize),
             alone.score(0),

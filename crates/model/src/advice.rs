@@ -14,7 +14,7 @@ pub(crate) fn advice(model: &Model, cell: &Cell, yield_at_least: f64, now: f64) 
     let mut tried: Vec<Advice> = changes(model, cell)
         .into_iter()
         .filter_map(|(change, changed)| {
-            let expected_yield = model.score(&changed, yield_at_least).expected_yield?;
+            let expected_yield = model.score(&changed, yield_at_least, 0).expected_yield?;
             (expected_yield > now + LEAST_GAIN).then_some(Advice {
                 change,
                 expected_yield,

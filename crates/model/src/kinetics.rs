@@ -148,7 +148,9 @@ impl<'a> Kinetics<'a> {
             return None;
         }
         let carbon = &self.cell.substrate.carbon;
-        let first = carbon.first().filter(|site| site.acid.pka_dmso < STABILISED_PKA)?;
+        let first = carbon
+            .first()
+            .filter(|site| site.acid.pka_dmso < STABILISED_PKA)?;
         carbon
             .iter()
             .enumerate()
@@ -278,11 +280,11 @@ impl<'a> Kinetics<'a> {
                 let (e, _, _) = self.cell.electrophile.e.as_ref()?;
                 let crowded = nucleophile.crowding + nucleophile.branches > 0;
                 let pair = match group.kind {
-                    ElectrophileKind::Michael { beta_alkyl, beta_aryl, .. }
-                        if crowded && beta_alkyl + beta_aryl > 0 =>
-                    {
-                        self.v(P::STERIC_PAIR)
-                    }
+                    ElectrophileKind::Michael {
+                        beta_alkyl,
+                        beta_aryl,
+                        ..
+                    } if crowded && beta_alkyl + beta_aryl > 0 => self.v(P::STERIC_PAIR),
                     _ => 0.0,
                 };
                 Some(rates::addition(nucleophile, *e, &self.medium, self.values) + pair)

@@ -133,9 +133,10 @@ impl Model {
         Pair::new(substrate, electrophile, &self.library)
     }
 
-    /// Screens one cell with the fast solver and quadrature.
-    pub fn score(&self, cell: &Cell, yield_at_least: f64) -> Score {
-        score(cell, &self.means, yield_at_least)
+    /// Screens one cell with the fast solver and quadrature. `cautions` are the cell's caution
+    /// bits, which depend on few axes at a time and are tabled by the caller.
+    pub fn score(&self, cell: &Cell, yield_at_least: f64, cautions: u32) -> Score {
+        score(cell, &self.means, yield_at_least, cautions)
     }
 
     /// Yield of the wanted product at the mean of all parameters by the fast solver and by the

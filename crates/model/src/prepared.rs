@@ -185,6 +185,11 @@ pub struct Electrophile {
 }
 
 impl Electrophile {
+    /// The library's row, if the electrophile is in it.
+    pub fn named(&self) -> Option<&NamedElectrophile> {
+        self.named.as_ref()
+    }
+
     pub(crate) fn new(name: &str, molecule: Molecule, library: &Library) -> Electrophile {
         let (group, not_covered) = match recognise(&molecule) {
             Ok(group) => (Some(group), None),

@@ -62,10 +62,10 @@ pub(crate) fn exchange(delta: f64, class: AnionClass, medium: &Medium, values: &
         Cation::None => values.get(P::EXCHANGE_AMINE),
         _ => 0.0,
     };
-    let nitro = if class == AnionClass::Nitronate {
-        values.get(P::EXCHANGE_NITRO)
-    } else {
-        0.0
+    let nitro = match (class, medium.is_protic()) {
+        (AnionClass::Nitronate, true) => values.get(P::EXCHANGE_NITRO_PROTIC),
+        (AnionClass::Nitronate, false) => values.get(P::EXCHANGE_NITRO),
+        _ => 0.0,
     };
     let at_25 = values.get(solvent) + cation + nitro + beta * delta.abs();
     both_ways(at_25, delta, medium, values)
@@ -90,7 +90,11 @@ fn both_ways(downhill_at_25: f64, delta: f64, medium: &Medium<'_>, values: &Valu
     let entropy = values.get(P::DS_EXCHANGE);
     let downhill =
         at_temperature(downhill_at_25, 25.0, medium.temperature_c, entropy).min(EXCHANGE_CAP);
-    if delta < 0.0 { downhill + delta } else { downhill }
+    if delta < 0.0 {
+        downhill + delta
+    } else {
+        downhill
+    }
 }
 
 /// A nucleophile as the rate equations see it.

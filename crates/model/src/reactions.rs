@@ -255,7 +255,9 @@ impl<'a> Reactions<'a> {
                 };
                 let delta = base.pka - acid.pka;
                 let log_k = match k.cell.base.record.kind {
-                    BaseKind::Amide if by_base => rates::exchange_with_amide(delta, &k.medium, k.values),
+                    BaseKind::Amide if by_base => {
+                        rates::exchange_with_amide(delta, &k.medium, k.values)
+                    }
                     BaseKind::Organolithium if by_base => {
                         rates::exchange_with_organolithium(delta, &k.medium, k.values)
                     }

@@ -3,7 +3,7 @@
 use enolattice_molecule::ElectrophileKind;
 use enolattice_units::math;
 
-use crate::cautions::{caution_bits, cautions};
+use crate::cautions::cautions;
 use crate::kinetics::{Bonding, Kinetics, Nudge};
 use crate::march::{Marched, march};
 use crate::network::Network;
@@ -242,12 +242,11 @@ fn addition_conversion(k: f64, concentration_m: f64, electrophile_equiv: f64) ->
     2.0 * electrophile_equiv / (b + (b * b - 4.0 * electrophile_equiv).sqrt())
 }
 
-/// Screens one cell.
-pub(crate) fn score(cell: &Cell, values: &Values, yield_at_least: f64) -> Score {
-    let caution_bits = caution_bits(&cautions_of(cell));
+/// Screens one cell; `cautions` are its caution bits, which the caller has tabled.
+pub(crate) fn score(cell: &Cell, values: &Values, yield_at_least: f64, cautions: u32) -> Score {
     match coverage(cell) {
         Coverage::Unknown(_) => Score {
-            cautions: caution_bits,
+            cautions,
             ..Score::default()
         },
         Coverage::Nothing(channel, _) => Score {
@@ -256,7 +255,7 @@ pub(crate) fn score(cell: &Cell, values: &Values, yield_at_least: f64) -> Score 
             selectivity: Some(0.0),
             feasibility: Some(0.0),
             largest_loss: Some(channel),
-            cautions: caution_bits,
+            cautions,
         },
         Coverage::Covered => {
             let kinetics = Kinetics::new(
@@ -266,17 +265,60 @@ pub(crate) fn score(cell: &Cell, values: &Values, yield_at_least: f64) -> Score 
                 Nudge::default(),
             );
             let centre = solve(cell, values, Nudge::default());
-            let uncertain = over_uncertainty(cell, values, &centre, yield_at_least);
+            let uncertain = if is_negligible(cell, &kinetics) {
+                Uncertain {
+                    mean: centre.outcome.product,
+                    sigma: 0.0,
+                    p_hit: 0.0,
+                }
+            } else {
+                over_uncertainty(cell, values, &centre, yield_at_least)
+            };
             Score {
                 expected_yield: Some(uncertain.mean),
                 p_hit: Some(uncertain.p_hit),
                 selectivity: Some(centre.outcome.selectivity),
                 feasibility: Some(feasibility(cell, &kinetics)),
                 largest_loss: centre.outcome.losses.first().map(|loss| loss.0),
-                cautions: caution_bits,
+                cautions,
             }
         }
     }
+}
+
+/// Standard uncertainties by which a bound must miss before a cell counts as hopeless.
+const HOPELESS_SIGMAS: f64 = 3.0;
+/// log10 of the conversion below which nothing is worth averaging.
+const HOPELESS_LOG10: f64 = -3.0;
+
+/// Whether the wanted product stays negligible however the parameters fall: a cheap exact bound.
+///
+/// With every carbanion comes one molecule of the base's acid, so that at equilibrium
+/// `[A] ≤ √(K·[S]·[B])`, and no more than all of the substrate; the conversion in time t is at most
+/// `k·[E]·t·[A]/[S]₀`. Both are taken at three standard uncertainties on the hopeful side.
+fn is_negligible(cell: &Cell, kinetics: &Kinetics<'_>) -> bool {
+    let spread = Spread::of(cell);
+    let conditions = &cell.conditions;
+    let base = math::log10(conditions.base_equiv);
+    let electrophile = math::log10(conditions.electrophile_equiv * conditions.concentration_m);
+    let time = math::log10(conditions.time_h * 3600.0);
+    let hope = |site: &crate::prepared::CarbonSite| {
+        let log10_k =
+            kinetics.pka_base() - kinetics.site_pka(site) + HOPELESS_SIGMAS * spread.acidity;
+        let carbanion = (0.5 * (log10_k + base)).min(0.0);
+        let attack = kinetics
+            .attack(&kinetics.substrate_carbanion(site))
+            .map_or(f64::NEG_INFINITY, |k| k + HOPELESS_SIGMAS * spread.attack);
+        carbanion + attack + electrophile + time
+    };
+    kinetics.second_site().is_none()
+        && cell
+            .substrate
+            .carbon
+            .iter()
+            .map(hope)
+            .fold(f64::NEG_INFINITY, f64::max)
+            < HOPELESS_LOG10
 }
 
 /// All cautions of a cell.

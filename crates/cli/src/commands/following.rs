@@ -2,6 +2,7 @@
 
 use enolattice_engine::{Job, JobState};
 
+use super::EngineOptions;
 use crate::client::Client;
 use crate::fault::Fault;
 use crate::progress::Progress;
@@ -10,6 +11,7 @@ use crate::progress::Progress;
 pub(super) async fn follow(
     client: &Client,
     job: &str,
+    engine: &EngineOptions,
     mut each: impl FnMut(&Job) -> Result<(), Fault>,
 ) -> Result<Job, Fault> {
     let mut changes = client.watch(job).await?;
@@ -20,7 +22,7 @@ pub(super) async fn follow(
             change = changes.next() => change?,
             _ = tokio::signal::ctrl_c() => {
                 progress.end();
-                return Err(Fault::Job(format!("stopped watching; job `{job}` is kept: `enolattice watch {job}` goes on")));
+                return Err(Fault::Job(format!("stopped watching; job `{job}` is kept: `enolattice watch {job}{}` goes on", engine.repeated())));
             }
         };
         match (change, last) {

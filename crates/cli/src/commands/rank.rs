@@ -9,7 +9,7 @@ use crate::client::{Client, Need};
 use crate::fault::Fault;
 use crate::json::CellLine;
 use crate::output::{print, print_json_line, talk};
-use crate::text::{SAFETY, cell_table, count};
+use crate::text::{cell_table, count, safety_notice};
 
 /// Most rows asked for at once.
 const LARGEST_PAGE: u64 = 1000;
@@ -99,6 +99,6 @@ impl Rank {
         if kept.is_empty() {
             return Ok(());
         }
-        print(&format!("{}\n\n{SAFETY}", cell_table(kept)))
+        print(&format!("{}\n\n{}", cell_table(kept), safety_notice()))
     }
 }

@@ -7,7 +7,7 @@ use crate::client::{Client, Need};
 use crate::fault::Fault;
 use crate::json::ReagentRecord;
 use crate::output::{print, print_json, talk};
-use crate::text::{SAFETY, reagent_table};
+use crate::text::{reagent_table, safety_notice};
 
 /// List the library of bases, solvents and electrophiles.
 #[derive(Debug, Args)]
@@ -40,6 +40,6 @@ impl Reagents {
             talk(&format!("the library has nothing like `{}`", self.word));
             return Ok(());
         }
-        print(&format!("{}\n\n{SAFETY}", reagent_table(&rows)))
+        print(&format!("{}\n\n{}", reagent_table(&rows), safety_notice()))
     }
 }

@@ -13,7 +13,7 @@ use crate::client::{Client, Need};
 use crate::fault::Fault;
 use crate::json::{CellLine, ScreenedDocument};
 use crate::output::{print, print_json, talk};
-use crate::text::{SAFETY, cell_table, count};
+use crate::text::{cell_table, count, safety_notice};
 
 /// Rows of the table of top cells.
 const TOP: u32 = 20;
@@ -84,7 +84,7 @@ impl Screen {
             queued.job,
             count(queued.cells)
         ));
-        let job = follow(client, &queued.job, |_| Ok(())).await?;
+        let job = follow(client, &queued.job, &self.engine, |_| Ok(())).await?;
         let time = begun.elapsed();
         expect_done(&job)?;
         let top = RankQuery {
@@ -124,7 +124,7 @@ impl Screen {
             cell_table(&screened.top),
             "The best cell of each substrate".to_owned(),
             cell_table(&screened.best),
-            SAFETY.to_owned(),
+            safety_notice(),
         ];
         print(&page.join("\n\n"))?;
         let engine = self.engine.repeated();

@@ -32,7 +32,7 @@ impl Watch {
                 Ok(())
             }
         };
-        let ended = follow(&client, &self.job, each).await;
+        let ended = follow(&client, &self.job, &self.engine, each).await;
         client.close().await?;
         let job = ended?;
         if !self.json {

@@ -5,62 +5,52 @@ use enolattice_engine::RankedCell;
 use super::numbers::{percent, temperatures};
 use super::table::{Side, table, width};
 
-/// Below this width the columns that can be done without are left out.
+/// Below this width selectivity is left out and of the cautions only the severity is shown.
 const NARROW: usize = 120;
+
+/// Heading, side and text of a column.
+type Column = (&'static str, Side, fn(&RankedCell) -> String);
 
 /// A table of ranked cells.
 pub(crate) fn cell_table(cells: &[RankedCell]) -> String {
     use Side::{Left, Right};
     let narrow = width() < NARROW;
-    let mut columns = vec![
-        ("rank", Right),
-        ("cell", Right),
-        ("substrate", Left),
-        ("base", Left),
-        ("electrophile", Left),
-        ("solvent", Left),
-        ("T/°C", Right),
-        ("yield", Right),
-        ("p_hit", Right),
-        ("selectivity", Right),
-        ("largest loss", Left),
-        ("cautions", Left),
+    let columns: Vec<Column> = vec![
+        ("rank", Right, |cell| cell.rank.to_string()),
+        ("cell", Right, |cell| cell.cell.to_string()),
+        ("substrate", Left, |cell| cell.substrate.clone()),
+        ("base", Left, |cell| cell.base.clone()),
+        ("electrophile", Left, |cell| cell.electrophile.clone()),
+        ("solvent", Left, |cell| cell.solvent.clone()),
+        ("T/°C", Right, |cell| {
+            temperatures(cell.formation_temperature_c, cell.temperature_c)
+        }),
+        ("yield", Right, |cell| percent(cell.expected_yield)),
+        ("p_hit", Right, |cell| percent(cell.p_hit)),
+        ("selectivity", Right, |cell| percent(cell.selectivity)),
+        ("largest loss", Left, |cell| {
+            cell.largest_loss
+                .map_or("", |channel| channel.name())
+                .to_owned()
+        }),
+        ("cautions", Left, if narrow { severity } else { cautions }),
     ];
-    let dispensable = ["selectivity", "cautions"];
-    let kept: Vec<bool> = columns
-        .iter()
-        .map(|(name, _)| !narrow || !dispensable.contains(name))
+    let shown: Vec<_> = columns
+        .into_iter()
+        .filter(|(name, ..)| !narrow || *name != "selectivity")
         .collect();
-    let keep = |row: Vec<String>| {
-        row.into_iter()
-            .zip(&kept)
-            .filter(|(_, kept)| **kept)
-            .map(|(text, _)| text)
-            .collect()
-    };
-    let rows: Vec<Vec<String>> = cells.iter().map(|cell| keep(row(cell))).collect();
-    columns.retain(|(name, _)| !narrow || !dispensable.contains(name));
-    table(&columns, rows)
+    let headings: Vec<(&str, Side)> = shown.iter().map(|(name, side, _)| (*name, *side)).collect();
+    let row = |cell| shown.iter().map(|(.., text)| text(cell)).collect();
+    table(&headings, cells.iter().map(row))
 }
 
-fn row(cell: &RankedCell) -> Vec<String> {
-    vec![
-        cell.rank.to_string(),
-        cell.cell.to_string(),
-        cell.substrate.clone(),
-        cell.base.clone(),
-        cell.electrophile.clone(),
-        cell.solvent.clone(),
-        temperatures(cell.formation_temperature_c, cell.temperature_c),
-        percent(cell.expected_yield),
-        percent(cell.p_hit),
-        percent(cell.selectivity),
-        cell.largest_loss
-            .map_or("", |channel| channel.name())
-            .to_owned(),
-        match &cell.severity {
-            Some(severity) => format!("{severity}: {}", cell.cautions.join(", ")),
-            None => String::new(),
-        },
-    ]
+fn severity(cell: &RankedCell) -> String {
+    cell.severity.clone().unwrap_or_default()
+}
+
+fn cautions(cell: &RankedCell) -> String {
+    match &cell.severity {
+        Some(severity) => format!("{severity}: {}", cell.cautions.join(", ")),
+        None => String::new(),
+    }
 }

@@ -3,8 +3,8 @@
 use enolattice_engine::CellDescription;
 use enolattice_model::{CoursePoint, Explanation};
 
-use super::SAFETY;
 use super::numbers::{fixed, percent, short, temperatures};
+use super::safety_notice;
 use super::sites::site_table;
 use super::table::{Side, table, wrapped};
 use crate::json::SiteRecord;
@@ -30,7 +30,7 @@ pub(crate) fn explanation_page(cell: &CellDescription, told: &Explanation) -> St
         .iter()
         .map(|(heading, text)| format!("{heading}\n{text}"))
         .collect();
-    page.push(wrapped("", SAFETY));
+    page.push(safety_notice());
     page.push(format!("model {}", told.model));
     page.join("\n\n")
 }

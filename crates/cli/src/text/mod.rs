@@ -15,6 +15,11 @@ pub(crate) use numbers::{count, percent};
 pub(crate) use reagents::reagent_table;
 pub(crate) use sites::molecule_page;
 
-/// Stands below everything that is printed for the bench.
-pub(crate) const SAFETY: &str = "Predictions and cautions are no substitute for a hazard assessment: the supplier's \
-safety data sheet, local rules and qualified staff take precedence. No caution does not mean no hazard.";
+const SAFETY: &str = "Predictions and cautions are no substitute for a hazard assessment: the \
+supplier's safety data sheet, local rules and qualified staff take precedence. No caution does not \
+mean no hazard.";
+
+/// What stands below everything that is printed for the bench.
+pub(crate) fn safety_notice() -> String {
+    table::wrapped("", SAFETY)
+}

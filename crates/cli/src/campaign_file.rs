@@ -4,7 +4,8 @@ use std::collections::BTreeMap;
 use std::fs;
 use std::path::{Path, PathBuf};
 
-use enolattice_grid::{CampaignSpec, Sources, read};
+use enolattice_grid::{CampaignSpec, InputError, Sources, files_named, read, read_against};
+use enolattice_reagents::Library;
 
 use crate::fault::Fault;
 
@@ -28,12 +29,21 @@ pub(crate) fn read_campaign(path: &Path) -> Result<CampaignSpec, Fault> {
             }
         }
     }
-    read(&Sources {
+    let sources = Sources {
         campaign_name: shown,
         campaign,
         files,
-    })
-    .map_err(Fault::Input)
+    };
+    read(&sources).map_err(|faults| Fault::Input(with_unknown_names(&sources, faults)))
+}
+
+/// Adds the names of reagents that the library of this program does not know to the faults of a
+/// campaign that is refused anyway. A sound one is left to the library of its engine.
+fn with_unknown_names(sources: &Sources, faults: Vec<InputError>) -> Vec<InputError> {
+    let Ok(library) = Library::builtin() else {
+        return faults;
+    };
+    read_against(sources, &library).err().unwrap_or(faults)
 }
 
 fn unreadable(path: &str, reason: &str) -> Fault {
@@ -58,20 +68,4 @@ fn read_file(path: &Path) -> Result<Vec<u8>, String> {
         ));
     }
     fs::read(path).map_err(|error| error.to_string())
-}
-
-/// The values of every `file` key of the axes; nothing where the text is no TOML, which the
-/// campaign's reader reports.
-fn files_named(campaign: &str) -> Vec<String> {
-    let Ok(campaign) = campaign.parse::<toml::Table>() else {
-        return Vec::new();
-    };
-    let axes = campaign.values().filter_map(toml::Value::as_table);
-    axes.filter_map(|axis| axis.get("file"))
-        .flat_map(|value| match value {
-            toml::Value::Array(names) => names.clone(),
-            name => vec![name.clone()],
-        })
-        .filter_map(|name| name.as_str().map(str::to_owned))
-        .collect()
 }

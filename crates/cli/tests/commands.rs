@@ -279,7 +279,9 @@ fn sites_from_arguments_and_stdin_are_the_same() {
 fn all_faults_of_the_input_are_told_at_once() {
     let folder = folder();
     let folder = folder.path();
-    let unread = CAMPAIGN.replace("temperature_c", "temprature_c");
+    let unread = CAMPAIGN
+        .replace("temperature_c", "temprature_c")
+        .replace("LDA", "LDE");
     fs::write(folder.join("unread.toml"), unread).expect("written");
     let unknown = CAMPAIGN
         .replace("LDA", "LDE")
@@ -295,13 +297,14 @@ fn all_faults_of_the_input_are_told_at_once() {
             [
                 "substrates.csv:3: smiles: `C1CC`: ",
                 "substrates.csv:4: smiles: `CC(`: ",
+                "unread.toml:6: bases.library[0]: `LDE`: ",
                 "unread.toml:13: ",
                 "did you mean `temperature_c`?",
             ],
         ),
         (
             "unknown.toml",
-            ["unknown.toml:6: ", "`LDE`", "LDA", "MeIodide!"],
+            ["unknown.toml:6: ", "`LDE`", "LDA", "MeIodide!", "unknown.toml:8: "],
         ),
     ] {
         let (code, told) = refused(folder, &["screen", file]);

@@ -45,11 +45,23 @@ impl Grids {
     }
 
     /// The grid of a job that has been read from the store.
+    ///
+    /// # Errors
+    /// [`EngineError::WrongState`] where this version makes another campaign of the record, so
+    /// that its cell numbers would be read wrongly.
     pub(crate) fn of_record(&self, record: &JobRecord) -> Result<Arc<Grid>, EngineError> {
         if let Some(grid) = self.kept(record.id) {
             return Ok(grid);
         }
         let grid = self.build(&record.spec)?;
+        if grid.fingerprint() != record.campaign_fingerprint {
+            return Err(EngineError::WrongState {
+                job: record.id.to_string(),
+                state: record.state.name(),
+                remedy: "its campaign does not mean the same to this version of the program and \
+                         its library; submit it again",
+            });
+        }
         self.keep(record.id, grid.clone());
         Ok(grid)
     }

@@ -32,7 +32,7 @@ impl Engine {
                 blocks: grid.blocks().count() as u64,
                 request_id: submission.request_id,
                 warnings: grid.campaign().warnings.clone(),
-                spec: submission.campaign,
+                spec: submission.campaign.spelled_out(grid.model().library()),
             };
             let created = store.create_job(new, now_unix_ms())?;
             let id = created.record.id;

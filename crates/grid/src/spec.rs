@@ -1,9 +1,14 @@
 //! What a user asks for, as read: names, SMILES and numbers, each with its place in the input.
+//!
+//! Jobs are kept in this form. Whatever a record lacks takes its default, so that a field added
+//! later leaves old records readable.
 
+use enolattice_reagents::Library;
 use serde::{Deserialize, Serialize};
 
 /// Where a value was written, for error messages.
 #[derive(Clone, Debug, Default, PartialEq, Eq, Serialize, Deserialize)]
+#[serde(default)]
 pub struct Place {
     /// File name as the user gave it; empty over gRPC.
     pub file: String,
@@ -27,6 +32,7 @@ impl Place {
 
 /// A named reagent of the library or a SMILES.
 #[derive(Clone, Debug, Default, PartialEq, Serialize, Deserialize)]
+#[serde(default)]
 pub struct Entry {
     /// Name in the library or given by the user; empty where only a SMILES is given.
     pub name: String,
@@ -38,6 +44,7 @@ pub struct Entry {
 
 /// A substrate.
 #[derive(Clone, Debug, Default, PartialEq, Serialize, Deserialize)]
+#[serde(default)]
 pub struct SubstrateEntry {
     /// Name; the SMILES where none is given.
     pub name: String,
@@ -53,6 +60,7 @@ pub struct SubstrateEntry {
 
 /// An axis of library reagents.
 #[derive(Clone, Debug, Default, PartialEq, Serialize, Deserialize)]
+#[serde(default)]
 pub struct AxisSpec {
     /// Take the whole library.
     pub all: bool,
@@ -65,10 +73,22 @@ impl AxisSpec {
     pub fn is_empty(&self) -> bool {
         !self.all && self.entries.is_empty()
     }
+
+    /// Puts these names in the place of "all", which comes before the entries.
+    fn spell_out<'a>(&mut self, names: impl Iterator<Item = &'a String>) {
+        if std::mem::take(&mut self.all) {
+            let named = names.map(|name| Entry {
+                name: name.clone(),
+                ..Entry::default()
+            });
+            self.entries.splice(0..0, named);
+        }
+    }
 }
 
 /// Values of the condition axes, as written. Empty: the default of the axis.
 #[derive(Clone, Debug, Default, PartialEq, Serialize, Deserialize)]
+#[serde(default)]
 pub struct ConditionsSpec {
     /// Temperature of the reaction, °C.
     pub temperature_c: Vec<f64>,
@@ -90,6 +110,7 @@ pub struct ConditionsSpec {
 
 /// What counts as a hit.
 #[derive(Clone, Debug, Default, PartialEq, Serialize, Deserialize)]
+#[serde(default)]
 pub struct TargetSpec {
     /// Yield that makes a hit, 0–1.
     pub yield_at_least: Option<f64>,
@@ -97,6 +118,7 @@ pub struct TargetSpec {
 
 /// A campaign as read.
 #[derive(Clone, Debug, Default, PartialEq, Serialize, Deserialize)]
+#[serde(default)]
 pub struct CampaignSpec {
     /// Title.
     pub title: String,
@@ -114,6 +136,20 @@ pub struct CampaignSpec {
     pub conditions: ConditionsSpec,
     /// Target.
     pub target: TargetSpec,
+}
+
+impl CampaignSpec {
+    /// The same campaign with the names of the library in the place of every "all", so that it
+    /// means the same to a later library.
+    pub fn spelled_out(mut self, library: &Library) -> CampaignSpec {
+        self.bases
+            .spell_out(library.bases().iter().map(|known| &known.name));
+        self.electrophiles
+            .spell_out(library.electrophiles().iter().map(|known| &known.name));
+        self.solvents
+            .spell_out(library.solvents().iter().map(|known| &known.name));
+        self
+    }
 }
 
 /// The bytes of a campaign file and of the files it names, by the names it uses.

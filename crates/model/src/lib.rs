@@ -12,6 +12,7 @@ mod electrophilicity;
 mod explain;
 mod explanation;
 mod kinetics;
+mod lanes;
 mod march;
 mod medium;
 mod model;

@@ -1,9 +1,13 @@
-//! The fast solver: few implicit steps, exact in mass.
+//! The fast solver: few implicit steps, exact in mass, several networks side by side.
+//!
+//! Networks of one cell that differ in their rate constants alone are marched in lanes: every
+//! amount is a short array, and one pass over the reactions serves all.
 //!
 //! Only species that react are unknowns; what can only be formed is booked from the extents.
 //! Each step is a backward Euler step solved by Newton's method, `y = y₀ + Δt·f(y)`; Newton's
 //! steps keep every linear invariant, so substrate is conserved to rounding however few are taken.
 
+use crate::lanes::Lanes;
 use crate::network::{Amounts, Network, Reaction, Species, Stage};
 
 /// Steps of a stage with additions.
@@ -14,15 +18,16 @@ const FIRST_STEP_S: f64 = 5.0;
 const STEP_GROWTH: f64 = 2.2;
 /// Newton iterations of a step at most.
 const NEWTON: usize = 12;
-/// Change of an amount, as a share of the substrate charged, at which a step is taken as solved.
+/// Change of an amount, as a share of the substrate charged, at which a step is taken as solved:
+/// the change is still made, and what is left is of the order of its square.
 const TOLERANCE: f64 = 1e-4;
 /// Largest negative amount left by Newton's method, as a share of the substrate charged.
-const NEGATIVE: f64 = 1e-9;
+const NEGATIVE: f64 = 1e-8;
 /// Least share of an amount that one iteration leaves.
 const CUT: f64 = 0.1;
 
 /// What the march found.
-#[derive(Clone, Debug)]
+#[derive(Clone, Copy, Debug)]
 pub(crate) struct Marched {
     /// Amounts at the end.
     pub(crate) end: Amounts,
@@ -30,24 +35,27 @@ pub(crate) struct Marched {
     pub(crate) formed: Amounts,
 }
 
-/// Marches a network through its program.
-pub(crate) fn march(network: &Network) -> Marched {
-    let mut pot = network.start;
-    let mut formed = pot;
-    let mut solver = Solver::new(network);
-    for (index, stage) in network.stages.iter().enumerate() {
-        if index == network.first_reacting_stage {
-            formed = pot;
+/// Marches networks through their program, which must be one and the same.
+///
+/// The networks have the same reactions in the same order, with rate constants of their own.
+pub(crate) fn march<const L: usize>(networks: &[Network; L]) -> [Marched; L] {
+    let program = &networks[0];
+    let mut pots: [Amounts; L] = std::array::from_fn(|l| networks[l].start);
+    let mut formed = pots;
+    let mut solver = Solver::new(networks);
+    for (index, stage) in program.stages.iter().enumerate() {
+        if index == program.first_reacting_stage {
+            formed = pots;
         }
-        solver.set_temperature(&network.reactions, stage.temperature);
+        solver.set_temperature(networks, stage.temperature);
         for_each_step(stage, |dt, share| {
             if let Some((species, amount)) = stage.added {
-                pot.add(species, amount * share);
+                pots.iter_mut().for_each(|pot| pot.add(species, amount * share));
             }
-            solver.step(&mut pot, dt);
+            solver.step(&mut pots, dt);
         });
     }
-    Marched { end: pot, formed }
+    std::array::from_fn(|l| Marched { end: pots[l], formed: formed[l] })
 }
 
 /// Calls `step` with each duration and the share of the stage's addition that comes with it.
@@ -71,137 +79,204 @@ fn for_each_step(stage: &Stage, mut step: impl FnMut(f64, f64)) {
     }
 }
 
+/// No unknown.
 const ABSENT: usize = usize::MAX;
+/// Room for unknowns: a power of two, so that a masked index needs no check.
+const ROOM: usize = Species::COUNT.next_power_of_two();
 
 /// A reaction in terms of unknowns.
 #[derive(Clone, Copy)]
-struct Term {
-    k: f64,
+struct Term<const L: usize> {
+    k: Lanes<L>,
     first: usize,
     second: usize,
-    /// Unknowns that change, with the change per extent.
-    changes: [(usize, f64); 5],
+    /// Range of its entries in [`Solver::changes`].
+    changes: (usize, usize),
 }
 
-/// Scratch of one network.
-struct Solver {
+/// Scratch of the networks that are marched together.
+struct Solver<const L: usize> {
     /// Species of each unknown.
     unknowns: Vec<Species>,
-    terms: Vec<Term>,
-    /// Species that are only formed, by reaction and number of products.
+    terms: Vec<Term<L>>,
+    /// Unknowns that change, with the change per extent, reaction by reaction.
+    changes: Vec<(usize, f64)>,
+    /// Species that are only formed, by reaction.
     sinks: Vec<(usize, Species)>,
     scale: f64,
-    y: Vec<f64>,
-    residual: Vec<f64>,
-    matrix: Vec<f64>,
-    delta: Vec<f64>,
+    y: [Lanes<L>; ROOM],
+    residual: [Lanes<L>; ROOM],
+    delta: [Lanes<L>; ROOM],
+    matrix: Vec<[Lanes<L>; ROOM]>,
 }
 
-impl Solver {
-    fn new(network: &Network) -> Solver {
+impl<const L: usize> Solver<L> {
+    fn new(networks: &[Network; L]) -> Solver<L> {
+        let reactions = &networks[0].reactions;
         let mut place = [ABSENT; Species::COUNT];
-        let mut unknowns = Vec::with_capacity(20);
+        let mut unknowns = Vec::with_capacity(ROOM);
         let mut enter = |species: Species| {
             if place[species.index()] == ABSENT {
                 place[species.index()] = unknowns.len();
                 unknowns.push(species);
             }
         };
-        for reaction in &network.reactions {
+        for reaction in reactions {
             enter(reaction.first);
-            reaction
-                .second
-                .into_iter()
-                .chain(reaction.with)
-                .for_each(&mut enter);
+            reaction.second.into_iter().chain(reaction.with).for_each(&mut enter);
         }
-        let mut sinks = Vec::new();
-        let terms = network
-            .reactions
-            .iter()
-            .enumerate()
-            .map(|(index, reaction)| {
-                for product in reaction.products.iter().flatten() {
-                    if place[product.index()] == ABSENT {
-                        sinks.push((index, *product));
-                    }
-                }
-                term(reaction, &place)
-            })
-            .collect();
         let n = unknowns.len();
-        Solver {
+        let nothing = [Lanes::all(0.0); ROOM];
+        let mut solver = Solver {
             unknowns,
-            terms,
-            sinks,
-            scale: network.charged[0],
-            y: vec![0.0; n],
-            residual: vec![0.0; n],
-            matrix: vec![0.0; n * n],
-            delta: vec![0.0; n],
+            terms: Vec::with_capacity(reactions.len()),
+            changes: Vec::with_capacity(4 * reactions.len()),
+            sinks: Vec::with_capacity(8),
+            scale: networks[0].charged[0],
+            y: nothing,
+            residual: nothing,
+            delta: nothing,
+            matrix: vec![nothing; n],
+        };
+        for (index, reaction) in reactions.iter().enumerate() {
+            for product in reaction.products.iter().flatten() {
+                if place[product.index()] == ABSENT {
+                    solver.sinks.push((index, *product));
+                }
+            }
+            solver.enter(reaction, &place);
+        }
+        solver
+    }
+
+    fn enter(&mut self, reaction: &Reaction, place: &[usize; Species::COUNT]) {
+        let start = self.changes.len();
+        let used = reaction.second.into_iter().chain(reaction.with).map(|s| (s, -1.0));
+        let formed = reaction.products.into_iter().flatten().map(|s| (s, 1.0));
+        for (species, change) in [(reaction.first, -1.0)].into_iter().chain(used).chain(formed) {
+            let i = place[species.index()];
+            if i == ABSENT {
+                continue;
+            }
+            match self.changes[start..].iter_mut().find(|entry| entry.0 == i) {
+                Some(entry) => entry.1 += change,
+                None => self.changes.push((i, change)),
+            }
+        }
+        self.terms.push(Term {
+            k: Lanes::all(0.0),
+            first: place[reaction.first.index()],
+            second: reaction.second.map_or(ABSENT, |s| place[s.index()]),
+            changes: (start, self.changes.len()),
+        });
+    }
+
+    fn set_temperature(&mut self, networks: &[Network; L], temperature: usize) {
+        for (index, term) in self.terms.iter_mut().enumerate() {
+            term.k = Lanes::each(|l| networks[l].reactions[index].k[temperature]);
         }
     }
 
-    fn set_temperature(&mut self, reactions: &[Reaction], temperature: usize) {
-        for (term, reaction) in self.terms.iter_mut().zip(reactions) {
-            term.k = reaction.k[temperature];
-        }
-    }
-
-    /// One backward Euler step.
-    fn step(&mut self, pot: &mut Amounts, dt: f64) {
+    /// One backward Euler step of every lane.
+    fn step(&mut self, pots: &mut [Amounts; L], dt: f64) {
         for (y, species) in self.y.iter_mut().zip(&self.unknowns) {
-            *y = pot.of(*species).max(0.0);
+            *y = Lanes::each(|l| pots[l].of(*species).max(0.0));
         }
         for iteration in 1..=NEWTON {
-            self.linearise(pot, dt);
-            solve(&mut self.matrix, &mut self.residual, &mut self.delta);
-            let (mut change, mut least) = (0.0_f64, 0.0_f64);
-            for (y, delta) in self.y.iter().zip(&self.delta) {
-                change = change.max(delta.abs());
-                least = least.min(y + delta);
-            }
-            let solved = change < TOLERANCE * self.scale && least > -NEGATIVE * self.scale;
-            if solved || iteration == NEWTON {
+            self.linearise(pots, dt);
+            self.eliminate();
+            if iteration == NEWTON || self.is_solved() {
                 break;
             }
             // a step that would leave the positive root is cut; the next full one mends the mass
-            for (y, delta) in self.y.iter_mut().zip(&self.delta) {
-                *y = (*y + delta).max(CUT * *y);
+            let n = self.unknowns.len();
+            for (y, delta) in self.y.iter_mut().zip(&self.delta).take(n) {
+                *y = Lanes::each(|l| (y.0[l] + delta.0[l]).max(CUT * y.0[l]));
             }
         }
-        self.book(pot, dt);
+        self.book(pots, dt);
+    }
+
+    fn is_solved(&self) -> bool {
+        let (mut change, mut least) = (0.0_f64, 0.0_f64);
+        for (y, delta) in self.y.iter().zip(&self.delta).take(self.unknowns.len()) {
+            for l in 0..L {
+                change = change.max(delta.0[l].abs());
+                least = least.min(y.0[l] + delta.0[l]);
+            }
+        }
+        change < TOLERANCE * self.scale && least > -NEGATIVE * self.scale
     }
 
     /// Residual `y₀ + Δt·f(y) − y` and matrix `1 − Δt·∂f/∂y`.
-    fn linearise(&mut self, pot: &Amounts, dt: f64) {
-        let n = self.y.len();
-        self.matrix.fill(0.0);
-        for i in 0..n {
-            self.matrix[i * n + i] = 1.0;
-            self.residual[i] = pot.of(self.unknowns[i]) - self.y[i];
+    fn linearise(&mut self, pots: &[Amounts; L], dt: f64) {
+        for (i, row) in self.matrix.iter_mut().enumerate() {
+            row.fill(Lanes::all(0.0));
+            row[i % ROOM] = Lanes::all(1.0);
+            let species = self.unknowns[i];
+            self.residual[i % ROOM] = Lanes::each(|l| pots[l].of(species)) - self.y[i % ROOM];
         }
+        let dt = Lanes::all(dt);
         for term in &self.terms {
-            let a = self.y[term.first];
             let kdt = term.k * dt;
+            let changes = &self.changes[term.changes.0..term.changes.1];
+            let a = self.y[term.first % ROOM];
             if term.second == ABSENT {
-                for &(i, change) in term.changes.iter().take_while(|c| c.0 != ABSENT) {
-                    self.residual[i] += change * kdt * a;
-                    self.matrix[i * n + term.first] -= change * kdt;
+                for &(i, change) in changes {
+                    let change = Lanes::all(change) * kdt;
+                    self.residual[i % ROOM] += change * a;
+                    self.matrix[i][term.first % ROOM] -= change;
                 }
             } else {
-                let b = self.y[term.second];
-                for &(i, change) in term.changes.iter().take_while(|c| c.0 != ABSENT) {
-                    self.residual[i] += change * kdt * a * b;
-                    self.matrix[i * n + term.first] -= change * kdt * b;
-                    self.matrix[i * n + term.second] -= change * kdt * a;
+                let b = self.y[term.second % ROOM];
+                let (by_first, by_second) = (kdt * b, kdt * a);
+                let rate = by_first * a;
+                for &(i, change) in changes {
+                    let change = Lanes::all(change);
+                    self.residual[i % ROOM] += change * rate;
+                    let row = &mut self.matrix[i];
+                    row[term.first % ROOM] -= change * by_first;
+                    row[term.second % ROOM] -= change * by_second;
                 }
             }
         }
     }
 
-    /// Moves the pot by the extents of the last linearisation: every linear invariant is kept.
-    fn book(&mut self, pot: &mut Amounts, dt: f64) {
+    /// Solves `matrix · delta = residual` in every lane by Gaussian elimination, in place.
+    ///
+    /// The matrix is the identity minus a step of mass action: what a species loses stands on its
+    /// diagonal, so the elimination needs no pivoting.
+    fn eliminate(&mut self) {
+        let n = self.matrix.len();
+        for column in 0..n {
+            let (above, below) = self.matrix.split_at_mut(column + 1);
+            let pivot_row = &above[column][..n];
+            let inverse = pivot_row[column].inverse();
+            let right = self.residual[column % ROOM];
+            for (i, row) in below.iter_mut().enumerate() {
+                let factor = row[column % ROOM];
+                if factor.is_zero() {
+                    continue;
+                }
+                let factor = factor * inverse;
+                for (entry, pivot) in row[..n].iter_mut().zip(pivot_row).skip(column + 1) {
+                    *entry -= factor * *pivot;
+                }
+                self.residual[(column + 1 + i) % ROOM] -= factor * right;
+            }
+        }
+        for i in (0..n).rev() {
+            let row = &self.matrix[i][..n];
+            let mut sum = self.residual[i % ROOM];
+            for (entry, x) in row.iter().zip(&self.delta).skip(i + 1) {
+                sum -= *entry * *x;
+            }
+            self.delta[i % ROOM] = sum * row[i].inverse();
+        }
+    }
+
+    /// Moves the pots by the extents of the last linearisation: every linear invariant is kept.
+    fn book(&mut self, pots: &mut [Amounts; L], dt: f64) {
         for &(reaction, product) in &self.sinks {
             let term = &self.terms[reaction];
             let (a, da) = (self.y[term.first], self.delta[term.first]);
@@ -211,78 +286,12 @@ impl Solver {
                 let (b, db) = (self.y[term.second], self.delta[term.second]);
                 a * b + da * b + a * db
             };
-            pot.add(product, term.k * dt * extent);
+            let extent = extent * term.k * Lanes::all(dt);
+            pots.iter_mut().zip(extent.0).for_each(|(pot, extent)| pot.add(product, extent));
         }
         for (i, species) in self.unknowns.iter().enumerate() {
-            pot.0[species.index()] = self.y[i] + self.delta[i];
+            let end = self.y[i] + self.delta[i];
+            pots.iter_mut().zip(end.0).for_each(|(pot, end)| pot.0[species.index()] = end);
         }
-    }
-}
-
-fn term(reaction: &Reaction, place: &[usize; Species::COUNT]) -> Term {
-    let mut changes = [(ABSENT, 0.0); 5];
-    let mut add = |species: Species, change: f64| {
-        let i = place[species.index()];
-        if i == ABSENT {
-            return;
-        }
-        let slot = changes
-            .iter_mut()
-            .find(|c| c.0 == i || c.0 == ABSENT)
-            .expect("five suffice");
-        *slot = (i, slot.1 + change);
-    };
-    add(reaction.first, -1.0);
-    reaction
-        .second
-        .into_iter()
-        .chain(reaction.with)
-        .for_each(|s| add(s, -1.0));
-    reaction
-        .products
-        .into_iter()
-        .flatten()
-        .for_each(|s| add(s, 1.0));
-    Term {
-        k: 0.0,
-        first: place[reaction.first.index()],
-        second: reaction.second.map_or(ABSENT, |s| place[s.index()]),
-        changes,
-    }
-}
-
-/// Solves `matrix · x = rhs` by Gaussian elimination with partial pivoting, in place.
-fn solve(matrix: &mut [f64], rhs: &mut [f64], x: &mut [f64]) {
-    let n = rhs.len();
-    for column in 0..n {
-        let pivot = (column..n)
-            .max_by(|&a, &b| {
-                matrix[a * n + column]
-                    .abs()
-                    .total_cmp(&matrix[b * n + column].abs())
-            })
-            .unwrap_or(column);
-        if pivot != column {
-            for j in column..n {
-                matrix.swap(column * n + j, pivot * n + j);
-            }
-            rhs.swap(column, pivot);
-        }
-        let (above, below) = matrix.split_at_mut((column + 1) * n);
-        let pivot_row = &above[column * n..];
-        let inverse = 1.0 / pivot_row[column];
-        for (i, row) in below.chunks_exact_mut(n).enumerate() {
-            let factor = row[column] * inverse;
-            if factor != 0.0 {
-                for j in column + 1..n {
-                    row[j] -= factor * pivot_row[j];
-                }
-                rhs[column + 1 + i] -= factor * rhs[column];
-            }
-        }
-    }
-    for i in (0..n).rev() {
-        let sum: f64 = (i + 1..n).map(|j| matrix[i * n + j] * x[j]).sum();
-        x[i] = (rhs[i] - sum) / matrix[i * n + i];
     }
 }

@@ -217,28 +217,26 @@ pub(crate) struct Network {
 }
 
 impl Network {
-    /// Drops reactions whose reactants can never be there or that are too slow to matter.
+    /// Drops, from networks that differ in rate constants alone, reactions whose reactants can never
+    /// be there or that are too slow to matter in any.
     ///
     /// Too slow: less than 1e-9 mol/L over the whole program at the largest amounts charged.
-    pub(crate) fn prune(&mut self) {
+    pub(crate) fn prune<const L: usize>(networks: &mut [Network; L]) {
         const LEAST_EXTENT_M: f64 = 1e-9;
-        let time: f64 = self.stages.iter().map(|stage| stage.duration_s).sum();
-        let largest = self.charged.iter().fold(1e-3_f64, |a, &b| a.max(b));
-        self.reactions.retain(|r| {
-            let k = r.k[0].max(r.k[1]);
-            let order = if r.second.is_some() {
-                largest * largest
-            } else {
-                largest
-            };
-            k * order * time > LEAST_EXTENT_M
-        });
+        let first = &networks[0];
+        let time: f64 = first.stages.iter().map(|stage| stage.duration_s).sum();
+        let largest = first.charged.iter().fold(1e-3_f64, |a, &b| a.max(b));
+        let matters = |index: usize| {
+            networks.iter().any(|network| {
+                let r = &network.reactions[index];
+                let order = if r.second.is_some() { largest * largest } else { largest };
+                r.k[0].max(r.k[1]) * order * time > LEAST_EXTENT_M
+            })
+        };
+        let mut kept: Vec<bool> = (0..first.reactions.len()).map(matters).collect();
         let mut reachable = [false; Species::COUNT];
-        let charged = self
-            .stages
-            .iter()
-            .filter_map(|stage| stage.added.map(|(s, _)| s.index()));
-        let in_pot = (0..Species::COUNT).filter(|&i| self.start.0[i] > 0.0);
+        let charged = first.stages.iter().filter_map(|stage| stage.added.map(|(s, _)| s.index()));
+        let in_pot = (0..Species::COUNT).filter(|&i| first.start.0[i] > 0.0);
         for index in charged.chain(in_pot) {
             reachable[index] = true;
         }
@@ -247,18 +245,23 @@ impl Network {
         };
         loop {
             let mut grew = false;
-            for r in &self.reactions {
-                if !can(r, &reachable) {
-                    continue;
-                }
-                for product in r.products.iter().flatten() {
-                    grew |= !std::mem::replace(&mut reachable[product.index()], true);
+            for (r, _) in first.reactions.iter().zip(&kept).filter(|(_, kept)| **kept) {
+                if can(r, &reachable) {
+                    for product in r.products.iter().flatten() {
+                        grew |= !std::mem::replace(&mut reachable[product.index()], true);
+                    }
                 }
             }
             if !grew {
                 break;
             }
         }
-        self.reactions.retain(|r| can(r, &reachable));
+        for (kept, r) in kept.iter_mut().zip(&first.reactions) {
+            *kept &= can(r, &reachable);
+        }
+        for network in networks {
+            let mut keep = kept.iter();
+            network.reactions.retain(|_| *keep.next().expect("one mark a reaction"));
+        }
     }
 }

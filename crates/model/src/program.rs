@@ -14,6 +14,22 @@ const WAITING_S: f64 = 1200.0;
 impl Network {
     /// The network of a cell with all parameters at `values`.
     pub(crate) fn new(cell: &Cell, values: &Values, nudge: Nudge) -> Network {
+        let [network] = Network::nudged(cell, values, [nudge]);
+        network
+    }
+
+    /// Networks of a cell that differ by a nudge each and have the same reactions.
+    pub(crate) fn nudged<const L: usize>(
+        cell: &Cell,
+        values: &Values,
+        nudges: [Nudge; L],
+    ) -> [Network; L] {
+        let mut networks = nudges.map(|nudge| Network::whole(cell, values, nudge));
+        Network::prune(&mut networks);
+        networks
+    }
+
+    fn whole(cell: &Cell, values: &Values, nudge: Nudge) -> Network {
         let conditions = &cell.conditions;
         let order = conditions
             .addition
@@ -57,7 +73,6 @@ impl Network {
             conditions.time_h * 3600.0,
             conditions.dosing_min * 60.0,
         );
-        network.prune();
         network
     }
 

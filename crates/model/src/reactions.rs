@@ -238,8 +238,8 @@ impl<'a> Reactions<'a> {
     fn proton_transfers(&mut self, fast: &[Acid], slow: &[Acid]) {
         for (i, a) in fast.iter().enumerate() {
             for b in &fast[i + 1..] {
-                let (from, to) = if a.pka < b.pka { (a, b) } else { (b, a) };
-                self.transfer(from, to, FAST_TRANSFER);
+                let uphill = (a.pka - b.pka).max(0.0);
+                self.transfer(a, b, FAST_TRANSFER * math::exp10(-uphill));
             }
         }
         let k = self.kinetics;
@@ -271,14 +271,9 @@ impl<'a> Reactions<'a> {
                 if a.anion == Species::Dianion || b.anion == Species::Dianion {
                     continue;
                 }
-                let (from, to) = if a.pka < b.pka { (a, b) } else { (b, a) };
-                let slower = if to.class == AnionClass::Nitronate {
-                    to.class
-                } else {
-                    from.class
-                };
-                let log_k = rates::exchange(to.pka - from.pka, slower, &k.medium, k.values);
-                self.transfer(from, to, math::exp10(log_k));
+                let slower = if b.class == AnionClass::Nitronate { b.class } else { a.class };
+                let log_k = rates::exchange(b.pka - a.pka, slower, &k.medium, k.values);
+                self.transfer(a, b, math::exp10(log_k));
             }
         }
     }

@@ -8,11 +8,10 @@ use differential_equations::prelude::*;
 use crate::ModelError;
 use crate::network::{Amounts, Network, Reaction, Species, Stage};
 
-/// Relative tolerance of the amounts.
-const RELATIVE: f64 = 1e-5;
-/// Absolute tolerance of the amounts, mol/L: far below any amount that matters, so that reagents
-/// that are nearly used up stay positive.
-const ABSOLUTE_M: f64 = 1e-13;
+/// Relative tolerance of the amounts and absolute one, mol/L, in the order in which they are tried.
+/// The absolute one is far below any amount that matters, so that reagents that are nearly used up
+/// stay positive; the looser pairs serve the few stages on which the integrator gives up.
+const TOLERANCES: [(f64, f64); 3] = [(1e-5, 1e-13), (1e-4, 1e-12), (1e-4, 1e-10)];
 /// Points of the time course in each stage.
 const POINTS: usize = 12;
 
@@ -113,22 +112,10 @@ pub(crate) fn integrate(network: &Network) -> Result<Course, ModelError> {
                     }
             })
             .collect();
-        let solution = IVP::ode(&system, 0.0, stage.duration_s, pot.0)
-            .t_eval(at)
-            .method(
-                ImplicitRungeKutta::radau5()
-                    .rtol(RELATIVE)
-                    .atol(ABSOLUTE_M)
-                    .h0(1e-7)
-                    .max_steps(100_000),
-            )
-            .solve()
-            .map_err(|error| ModelError::Integration {
-                reason: format!("{error:?}"),
-            })?;
-        for (t, y) in solution.iter() {
+        let solution = solve(&system, &pot, &at)?;
+        for (t, y) in solution {
             let mut amounts = Amounts::NONE;
-            amounts.0 = *y;
+            amounts.0 = y;
             points.push((time + t, amounts));
             pot = amounts;
         }
@@ -139,4 +126,30 @@ pub(crate) fn integrate(network: &Network) -> Result<Course, ModelError> {
         formed,
         end: pot,
     })
+}
+
+/// Integrates one stage; times and amounts at the points asked for.
+fn solve(system: &System<'_>, pot: &Amounts, at: &[f64]) -> Result<Vec<(f64, State)>, ModelError> {
+    let mut reason = String::new();
+    for (relative, absolute_m) in TOLERANCES {
+        let method = ImplicitRungeKutta::radau5()
+            .rtol(relative)
+            .atol(absolute_m)
+            .h0(1e-7)
+            .max_steps(20_000);
+        match IVP::ode(system, 0.0, system.stage.duration_s, pot.0).t_eval(at).method(method).solve() {
+            Ok(solution) => {
+                let points: Vec<_> = solution.iter().map(|(t, y)| (*t, *y)).collect();
+                if points.iter().all(|(_, y)| y.iter().all(|amount| amount.is_finite())) {
+                    return Ok(points);
+                }
+                reason = "an amount is not a number".to_owned();
+            }
+            Err(error) => {
+                let said = format!("{error:?}");
+                reason = said.split(" at (t, y)").next().unwrap_or_default().to_owned();
+            }
+        }
+    }
+    Err(ModelError::Integration { reason })
 }

@@ -96,7 +96,7 @@ pub(crate) struct Solved {
 /// Solves a cell's network with the fast solver.
 pub(crate) fn solve(cell: &Cell, values: &Values, nudge: Nudge) -> Solved {
     let network = Network::new(cell, values, nudge);
-    let marched = march(&network);
+    let [marched] = march(std::array::from_ref(&network));
     let kinetics = Kinetics::new(cell, cell.conditions.temperature_c, values, nudge);
     let outcome = Outcome::read(cell, &kinetics, &network, &marched.end, &marched.formed);
     Solved {
@@ -131,36 +131,17 @@ pub(crate) fn over_uncertainty(
     let spread = Spread::of(cell);
     let wanted = centre.outcome.site;
     let charged = centre.network.charged[0];
-    let at = |nudge: Nudge| {
-        let network = Network::new(cell, values, nudge);
-        (march(&network).end.product(wanted) / charged).clamp(0.0, 1.0)
+    let nudge = |acidity: f64, attack: f64| Nudge {
+        acidity: acidity * NODE * spread.acidity,
+        attack: attack * NODE * spread.attack,
     };
+    let nudges = [nudge(-1.0, 0.0), nudge(1.0, 0.0), nudge(0.0, -1.0), nudge(0.0, 1.0)];
+    let networks = Network::nudged(cell, values, nudges);
     let middle = logit(centre.outcome.product);
-    let axis = |nudge: fn(f64) -> Nudge, sigma: f64| {
-        let low = logit(at(nudge(-NODE * sigma))) - middle;
-        let high = logit(at(nudge(NODE * sigma))) - middle;
-        move |z: f64| {
-            if z < 0.0 {
-                -z / NODE * low
-            } else {
-                z / NODE * high
-            }
-        }
-    };
-    let acidity = axis(
-        |acidity| Nudge {
-            acidity,
-            attack: 0.0,
-        },
-        spread.acidity,
-    );
-    let attack = axis(
-        |attack| Nudge {
-            acidity: 0.0,
-            attack,
-        },
-        spread.attack,
-    );
+    let moved = march(&networks).map(|m| logit(m.end.product(wanted) / charged) - middle);
+    let line = |z: f64, low: f64, high: f64| if z < 0.0 { -z / NODE * low } else { z / NODE * high };
+    let acidity = |z: f64| line(z, moved[0], moved[1]);
+    let attack = |z: f64| line(z, moved[2], moved[3]);
     let target = logit(target);
     let (mut weights, mut mean, mut square, mut hit) = (0.0, 0.0, 0.0, 0.0);
     for i in 0..FINE {

@@ -57,7 +57,12 @@ mod tests {
     #[test]
     fn normal_cdf_at_tabulated_points() {
         // Abramowitz & Stegun 1964, table 26.1
-        for (z, p) in [(0.0, 0.5), (1.0, 0.841_344_746), (1.96, 0.975_002_105), (-3.0, 0.001_349_898)] {
+        for (z, p) in [
+            (0.0, 0.5),
+            (1.0, 0.841_344_746),
+            (1.96, 0.975_002_105),
+            (-3.0, 0.001_349_898),
+        ] {
             assert!((normal_cdf(z) - p).abs() < 1e-9, "{z}");
         }
     }

@@ -19,6 +19,7 @@ use tracing_subscriber::EnvFilter;
 pub(crate) use options::EngineOptions;
 
 use crate::fault::Fault;
+use options::LogFormat;
 
 /// Screens grids of substrate × base × electrophile × solvent × conditions and ranks every cell.
 ///
@@ -47,18 +48,20 @@ enum Command {
 
 /// Starts the log on stderr; `ENOLATTICE_LOG` says what it takes, e.g. `debug`.
 pub(crate) fn start_log(program: &Program) {
-    let usual = if matches!(program.command, Command::Serve(_)) {
-        "info"
-    } else {
-        "warn"
+    let (usual, format) = match &program.command {
+        Command::Serve(serve) => ("info", serve.log_format()),
+        _ => ("warn", LogFormat::Text),
     };
     let filter =
         EnvFilter::try_from_env("ENOLATTICE_LOG").unwrap_or_else(|_| EnvFilter::new(usual));
-    tracing_subscriber::fmt()
+    let log = tracing_subscriber::fmt()
         .with_env_filter(filter)
         .with_writer(std::io::stderr)
-        .with_target(false)
-        .init();
+        .with_target(false);
+    match format {
+        LogFormat::Text => log.init(),
+        LogFormat::Json => log.json().flatten_event(true).init(),
+    }
 }
 
 /// Runs the command.

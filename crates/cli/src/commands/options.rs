@@ -49,6 +49,16 @@ impl EngineOptions {
     }
 }
 
+/// Form of the log.
+#[derive(Clone, Copy, Debug, Default, ValueEnum)]
+pub(crate) enum LogFormat {
+    /// A sentence a line, for people.
+    #[default]
+    Text,
+    /// An object a line, for programs.
+    Json,
+}
+
 /// Order of a ranking.
 #[derive(Clone, Copy, Debug, Default, ValueEnum)]
 pub(crate) enum OrderName {

@@ -9,6 +9,7 @@ use enolattice_engine::{Engine, EngineConfig};
 use tokio::net::TcpListener;
 
 use super::EngineOptions;
+use super::options::LogFormat;
 use crate::fault::Fault;
 use crate::output::{print, talk};
 
@@ -27,9 +28,16 @@ pub(super) struct Serve {
     /// Compute threads; 0: one for each core.
     #[arg(long, value_name = "N", default_value_t = 0)]
     threads: usize,
+    /// Form of the log on stderr.
+    #[arg(long, value_name = "FORM", value_enum, default_value_t)]
+    log_format: LogFormat,
 }
 
 impl Serve {
+    pub(super) fn log_format(&self) -> LogFormat {
+        self.log_format
+    }
+
     pub(super) async fn run(self) -> Result<(), Fault> {
         let data_dir = EngineOptions::in_dir(self.data).data_dir();
         let listener = TcpListener::bind(self.listen).await.map_err(|error| {
@@ -46,10 +54,13 @@ impl Serve {
             threads: self.threads,
         };
         let engine = Arc::new(Engine::open(config).await?);
-        talk(&format!(
-            "serving {} on {address}; ctrl-c stops",
-            data_dir.display()
-        ));
+        // A program that reads the log as JSON wants nothing else there.
+        if let LogFormat::Text = self.log_format {
+            talk(&format!(
+                "serving {} on {address}; ctrl-c stops",
+                data_dir.display()
+            ));
+        }
         print(&format!("listening on {address}"))?;
         let served = enolattice_server::serve(engine.clone(), listener, stop_signal()).await;
         engine.shutdown().await;

@@ -7,6 +7,7 @@ mod crash;
 mod directions;
 mod lifecycle;
 mod live;
+mod portable;
 mod ranking;
 mod refusals;
 mod standards;

@@ -620,3 +620,31 @@ fn a_server_answers_as_the_embedded_engine_does() {
         there
     );
 }
+
+#[test]
+fn the_log_of_a_service_can_be_read_by_programs() {
+    let folder = folder();
+    let mut child = program(
+        folder.path(),
+        &["serve", "--listen", "127.0.0.1:0", "--log-format", "json"],
+    )
+    .stdout(Stdio::piped())
+    .stderr(Stdio::piped())
+    .spawn()
+    .expect("runs");
+    let mut line = String::new();
+    BufReader::new(child.stdout.as_mut().expect("piped"))
+        .read_line(&mut line)
+        .expect("a line");
+    let terminated = Command::new("kill")
+        .args(["-TERM", &child.id().to_string()])
+        .status();
+    assert!(terminated.expect("kill runs").success());
+    let output = child.wait_with_output().expect("ends");
+    assert_eq!(output.status.code(), Some(0));
+    let log = lines(&String::from_utf8(output.stderr).expect("UTF-8"));
+    assert!(
+        log.iter().any(|entry| entry["message"] == "shutting down"),
+        "{log:?}"
+    );
+}

@@ -7,6 +7,8 @@ use enolattice_engine::{
     RankedCell, Submission,
 };
 use enolattice_grid::{CampaignSpec, Sources};
+use enolattice_model::Fingerprint;
+use enolattice_store::{NewJob, Store};
 use tempfile::TempDir;
 
 /// 2 × 3 × 2 × 2 × 2 = 48 cells, a third of them with an electrophile that is not covered.
@@ -293,6 +295,39 @@ async fn a_queued_job_is_taken_up_when_the_directory_is_opened_again() {
     let again = Engine::open(config(&folder)).await.expect("opens at once");
     assert_eq!(again.job(&kept.job).await.expect("kept"), done);
     again.close().await.expect("closes");
+}
+
+/// A job as a version with another library left it: the same text, but another meaning.
+#[tokio::test(flavor = "multi_thread")]
+async fn a_job_whose_campaign_means_something_else_now_fails_and_says_so() {
+    let folder = TempDir::new().expect("a folder");
+    let (store, _) = Store::open(folder.path(), 0).expect("opens");
+    let new = NewJob {
+        spec: campaign(),
+        campaign_fingerprint: Fingerprint([7; 32]),
+        model_fingerprint: Fingerprint([8; 32]),
+        cells: 48,
+        blocks: 1,
+        request_id: String::new(),
+        warnings: Vec::new(),
+    };
+    let job = store.create_job(new, 0).expect("kept").record.id;
+    drop(store);
+
+    let engine = Engine::open(config(&folder)).await.expect("opens");
+    let failed = to_the_end(&engine, &job.to_string()).await;
+    assert_eq!((failed.state, failed.cells_done), (JobState::Failed, 0));
+    assert!(failed.failure.contains("submit it again"), "{failed:?}");
+    let query = RankQuery {
+        job: job.to_string(),
+        ..RankQuery::default()
+    };
+    let refused = engine.rank(query).await;
+    assert!(
+        matches!(refused, Err(EngineError::WrongState { .. })),
+        "{refused:?}"
+    );
+    engine.close().await.expect("closes");
 }
 
 #[tokio::test(flavor = "multi_thread")]

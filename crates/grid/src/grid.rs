@@ -112,7 +112,8 @@ impl Grid {
             }
             let cautions = self.cautions.bits(&walk.digits);
             let target = self.campaign.yield_at_least;
-            columns.push(&self.model.score(&walk.cell, target, cautions));
+            let (table, key) = (&walk.pairs.formations, walk.formation_key());
+            columns.push(&self.model.score_with(&walk.cell, target, cautions, table, key));
         }
         columns
     }
@@ -152,6 +153,16 @@ impl<'g> Walk<'g> {
             digits,
             pairs,
             cell,
+        })
+    }
+
+    /// Number of the cell's deprotonation among those of its substrate: the digits of all axes
+    /// that it depends on.
+    fn formation_key(&self) -> u64 {
+        const DEPENDS_ON: [usize; 8] = [2, 3, 4, 5, 6, 7, 9, 12];
+        let sizes = self.grid.lattice.sizes();
+        DEPENDS_ON.iter().fold(0, |key, &axis| {
+            key * u64::from(sizes[axis]) + u64::from(self.digits[axis])
         })
     }
 

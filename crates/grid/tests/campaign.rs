@@ -60,6 +60,41 @@ fn faults(spec: &CampaignSpec) -> Vec<(String, &'static str)> {
 }
 
 #[test]
+fn a_campaign_spelled_out_is_the_same_campaign() {
+    let model = model();
+    let all = AxisSpec {
+        all: true,
+        ..named(&["LDA"])
+    };
+    let short = CampaignSpec {
+        bases: all.clone(),
+        electrophiles: AxisSpec {
+            entries: Vec::new(),
+            ..all.clone()
+        },
+        solvents: AxisSpec {
+            entries: Vec::new(),
+            ..all
+        },
+        ..small()
+    };
+    let long = short.clone().spelled_out(model.library());
+    assert!(!long.bases.all && !long.electrophiles.all && !long.solvents.all);
+    assert_eq!(
+        long.bases.entries.len(),
+        model.library().bases().len() + 1,
+        "what is named beside `all` stays"
+    );
+    let grid = |spec| {
+        let campaign = Campaign::new(spec, &model).expect("a sound campaign");
+        Grid::new(campaign, model.clone()).expect("a grid within limits")
+    };
+    let (short, long) = (grid(&short), grid(&long));
+    assert_eq!(short.fingerprint(), long.fingerprint());
+    assert_eq!(short.campaign().warnings, long.campaign().warnings);
+}
+
+#[test]
 fn what_is_not_said_has_its_default() {
     let campaign = Campaign::new(&small(), &model()).expect("a sound campaign");
     assert_eq!(campaign.temperature_c, [25.0]);

@@ -5,10 +5,12 @@ use enolattice_units::delta_g_kj_mol;
 
 use crate::advice::advice;
 use crate::explanation::{CoursePoint, ExplainedRate, ExplainedSite};
+use crate::formation::Pots;
 use crate::kinetics::{Kinetics, Nudge};
 use crate::network::{Network, Species};
 use crate::outcome::Outcome;
 use crate::parameters::{P, PARAMETERS, Values};
+use crate::program::Charge;
 use crate::reference::{Course, integrate};
 use crate::screen::{Coverage, cautions_of, coverage, feasibility, over_uncertainty, solve};
 use crate::{AcidSite, Cell, Explanation, Model, ModelError, Origin};
@@ -18,10 +20,21 @@ pub(crate) fn both_solvers(cell: &Cell, values: &Values) -> Result<Option<(f64, 
     if !matches!(coverage(cell), Coverage::Covered) {
         return Ok(None);
     }
-    let fast = solve(cell, values, Nudge::default());
-    let course = integrate(&fast.network)?;
-    let reference = course.end.product(fast.outcome.site) / fast.network.charged[0];
+    let pots = Pots::form(cell, values);
+    let fast = solve(cell, values, &pots);
+    let (course, network) = reference(cell, values)?;
+    let reference = course.end.product(fast.outcome.site) / network.charged[0];
     Ok(Some((fast.outcome.product, reference)))
+}
+
+/// The stiff reference of a cell at the mean of all parameters, and its network of the reaction.
+fn reference(cell: &Cell, values: &Values) -> Result<(Course, Network), ModelError> {
+    let charge = Charge::of(cell);
+    let [forming] = charge.forming(cell, values, [Nudge::default()]);
+    let [reacting] = charge.reacting(cell, values, [Nudge::default()]);
+    let forming = charge.forms_first().then_some(&forming);
+    let course = integrate(forming, &reacting, charge.start())?;
+    Ok((course, reacting))
 }
 
 /// Explains one cell.
@@ -68,16 +81,10 @@ pub(crate) fn explain(
         }
         Coverage::Covered => {}
     }
-    let centre = solve(cell, values, Nudge::default());
-    let course = integrate(&centre.network)?;
-    let outcome = Outcome::read(
-        cell,
-        &kinetics,
-        &centre.network,
-        &course.end,
-        &course.formed,
-    );
-    let uncertain = over_uncertainty(cell, values, &centre, yield_at_least);
+    let pots = Pots::form(cell, values);
+    let (centre, uncertain) = over_uncertainty(cell, values, &pots, yield_at_least);
+    let (course, network) = reference(cell, values)?;
+    let outcome = Outcome::read(cell, &kinetics, &network, &course.end, &course.formed);
     explanation.expected_yield = Some(uncertain.mean);
     explanation.yield_sigma = Some(uncertain.sigma);
     explanation.p_hit = Some(uncertain.p_hit);
@@ -86,9 +93,9 @@ pub(crate) fn explain(
     explanation.selectivity = Some(outcome.selectivity);
     explanation.reference_yield = Some(outcome.product);
     explanation.fast_yield = Some(centre.outcome.product);
-    explanation.enolate_fraction = Some(enolate_fraction(&course, &centre.network));
-    explanation.rates = rates(cell, &kinetics, &centre.network);
-    explanation.course = course_points(&course, &centre.network, outcome.site);
+    explanation.enolate_fraction = Some(enolate_fraction(&course, &network, Charge::of(cell).forms_first()));
+    explanation.rates = rates(cell, &kinetics, &network);
+    explanation.course = course_points(&course, &network, outcome.site);
     product(&mut explanation, cell, outcome.site);
     explanation.limits.extend(limits(cell, &outcome));
     explanation.losses = outcome.losses;
@@ -98,10 +105,10 @@ pub(crate) fn explain(
 
 /// Carbanion as a share of the substrate when the electrophile comes; where it is there from the
 /// beginning, the largest share at any time.
-fn enolate_fraction(course: &Course, network: &Network) -> f64 {
+fn enolate_fraction(course: &Course, network: &Network, forms_first: bool) -> f64 {
     let charged = network.charged[0];
     let at_addition = course.formed.carbanions() / charged;
-    if network.first_reacting_stage > 0 {
+    if forms_first {
         return at_addition.clamp(0.0, 1.0);
     }
     let largest = course
@@ -254,7 +261,7 @@ fn rates(cell: &Cell, kinetics: &Kinetics<'_>, network: &Network) -> Vec<Explain
                 r.second == Some(Species::Substrate) && r.products[0] == Some(Species::DimerAnion);
             let deprotonation =
                 r.first == Species::Base && matches!(r.products[1], Some(Species::Carbanion(_)));
-            if !(with_electrophile || condensation || deprotonation) || r.k[1] <= 0.0 {
+            if !(with_electrophile || condensation || deprotonation) || r.k <= 0.0 {
                 return None;
             }
             let source = if with_electrophile {
@@ -266,7 +273,7 @@ fn rates(cell: &Cell, kinetics: &Kinetics<'_>, network: &Network) -> Vec<Explain
             };
             Some(ExplainedRate {
                 step: step(r),
-                log10_k: enolattice_units::math::log10(r.k[1]),
+                log10_k: enolattice_units::math::log10(r.k),
                 sigma,
                 source,
             })

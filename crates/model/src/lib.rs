@@ -11,6 +11,7 @@ mod channel;
 mod electrophilicity;
 mod explain;
 mod explanation;
+mod formation;
 mod kinetics;
 mod lanes;
 mod march;
@@ -39,6 +40,7 @@ pub use cautions::{
 pub use cell::{Addition, Cell, Conditions};
 pub use channel::Channel;
 pub use explanation::{Advice, CoursePoint, ExplainedRate, ExplainedSite, Explanation};
+pub use formation::FormationTable;
 pub use model::{Draw, Fingerprint, Model, ModelError};
 pub use parameters::Parameter;
 pub use prepared::{Base, Electrophile, MeasuredPka, Pair, Solvent, Substrate};

@@ -26,28 +26,11 @@ const NEGATIVE: f64 = 1e-8;
 /// Least share of an amount that one iteration leaves.
 const CUT: f64 = 0.1;
 
-/// What the march found.
-#[derive(Clone, Copy, Debug)]
-pub(crate) struct Marched {
-    /// Amounts at the end.
-    pub(crate) end: Amounts,
-    /// Amounts when the electrophile begins to be added.
-    pub(crate) formed: Amounts,
-}
-
-/// Marches networks through their program, which must be one and the same.
-///
-/// The networks have the same reactions in the same order, with rate constants of their own.
-pub(crate) fn march<const L: usize>(networks: &[Network; L]) -> [Marched; L] {
-    let program = &networks[0];
-    let mut pots: [Amounts; L] = std::array::from_fn(|l| networks[l].start);
-    let mut formed = pots;
+/// Marches networks of the same reactions and stages from the amounts given to the end.
+pub(crate) fn march<const L: usize>(networks: &[Network; L], start: [Amounts; L]) -> [Amounts; L] {
+    let mut pots = start;
     let mut solver = Solver::new(networks);
-    for (index, stage) in program.stages.iter().enumerate() {
-        if index == program.first_reacting_stage {
-            formed = pots;
-        }
-        solver.set_temperature(networks, stage.temperature);
+    for stage in &networks[0].stages {
         for_each_step(stage, |dt, share| {
             if let Some((species, amount)) = stage.added {
                 pots.iter_mut().for_each(|pot| pot.add(species, amount * share));
@@ -55,7 +38,7 @@ pub(crate) fn march<const L: usize>(networks: &[Network; L]) -> [Marched; L] {
             solver.step(&mut pots, dt);
         });
     }
-    std::array::from_fn(|l| Marched { end: pots[l], formed: formed[l] })
+    pots
 }
 
 /// Calls `step` with each duration and the share of the stage's addition that comes with it.
@@ -144,12 +127,13 @@ impl<const L: usize> Solver<L> {
                     solver.sinks.push((index, *product));
                 }
             }
-            solver.enter(reaction, &place);
+            let k = Lanes::each(|l| networks[l].reactions[index].k);
+            solver.enter(reaction, k, &place);
         }
         solver
     }
 
-    fn enter(&mut self, reaction: &Reaction, place: &[usize; Species::COUNT]) {
+    fn enter(&mut self, reaction: &Reaction, k: Lanes<L>, place: &[usize; Species::COUNT]) {
         let start = self.changes.len();
         let used = reaction.second.into_iter().chain(reaction.with).map(|s| (s, -1.0));
         let formed = reaction.products.into_iter().flatten().map(|s| (s, 1.0));
@@ -164,17 +148,11 @@ impl<const L: usize> Solver<L> {
             }
         }
         self.terms.push(Term {
-            k: Lanes::all(0.0),
+            k,
             first: place[reaction.first.index()],
             second: reaction.second.map_or(ABSENT, |s| place[s.index()]),
             changes: (start, self.changes.len()),
         });
-    }
-
-    fn set_temperature(&mut self, networks: &[Network; L], temperature: usize) {
-        for (index, term) in self.terms.iter_mut().enumerate() {
-            term.k = Lanes::each(|l| networks[l].reactions[index].k[temperature]);
-        }
     }
 
     /// One backward Euler step of every lane.

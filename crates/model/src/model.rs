@@ -8,6 +8,7 @@ use sha2::{Digest, Sha256};
 
 use crate::acidity::acidity_texts;
 use crate::explain::explain;
+use crate::formation::{FormationTable, Pots};
 use crate::parameters::{PARAMETERS, Parameter, Values};
 use crate::screen::score;
 use crate::{Base, Cell, Electrophile, Explanation, MeasuredPka, Pair, Score, Solvent, Substrate};
@@ -136,7 +137,21 @@ impl Model {
     /// Screens one cell with the fast solver and quadrature. `cautions` are the cell's caution
     /// bits, which depend on few axes at a time and are tabled by the caller.
     pub fn score(&self, cell: &Cell, yield_at_least: f64, cautions: u32) -> Score {
-        score(cell, &self.means, yield_at_least, cautions)
+        score(cell, &self.means, yield_at_least, cautions, || Pots::form(cell, &self.means))
+    }
+
+    /// The same score, with the deprotonation looked up in a table of the cell's substrate. Cells
+    /// with the same `key` must differ in the electrophile and in conditions after its addition alone.
+    pub fn score_with(
+        &self,
+        cell: &Cell,
+        yield_at_least: f64,
+        cautions: u32,
+        table: &FormationTable,
+        key: u64,
+    ) -> Score {
+        let pots = || table.of(key, cell, &self.means);
+        score(cell, &self.means, yield_at_least, cautions, pots)
     }
 
     /// Yield of the wanted product at the mean of all parameters by the fast solver and by the

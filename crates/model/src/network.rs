@@ -186,42 +186,37 @@ pub(crate) struct Reaction {
     pub(crate) products: [Option<Species>; 2],
     /// A proton source that is used up too but not in the rate.
     pub(crate) with: Option<Species>,
-    /// Rate constant at the temperature of the deprotonation and at that of the reaction; L, mol, s.
-    pub(crate) k: [f64; 2],
+    /// Rate constant; L, mol, s.
+    pub(crate) k: f64,
 }
 
-/// A stretch of time at one temperature, with constant additions.
+/// A stretch of time with constant additions.
 #[derive(Clone, Copy, Debug)]
 pub(crate) struct Stage {
     /// Duration, s.
     pub(crate) duration_s: f64,
-    /// Index of the rate constants: 0 deprotonation, 1 reaction.
-    pub(crate) temperature: usize,
     /// Species and total amount added over the stage, mol/L.
     pub(crate) added: Option<(Species, f64)>,
 }
 
-/// A cell as reactions and a program of additions.
+/// Reactions at one temperature and the stages they run through.
 #[derive(Clone, Debug)]
 pub(crate) struct Network {
-    /// The reactions that can happen, by reachability from what is charged.
+    /// The reactions that can happen and matter.
     pub(crate) reactions: Vec<Reaction>,
-    /// Substrate, base and electrophile charged, mol/L.
-    pub(crate) charged: [f64; 3],
-    /// What is in the pot before the first stage.
-    pub(crate) start: Amounts,
-    /// The program.
+    /// The program at this temperature.
     pub(crate) stages: Vec<Stage>,
-    /// Index of the first stage with electrophile.
-    pub(crate) first_reacting_stage: usize,
+    /// Substrate, base and electrophile charged in all, mol/L.
+    pub(crate) charged: [f64; 3],
 }
 
 impl Network {
     /// Drops, from networks that differ in rate constants alone, reactions whose reactants can never
     /// be there or that are too slow to matter in any.
     ///
-    /// Too slow: less than 1e-9 mol/L over the whole program at the largest amounts charged.
-    pub(crate) fn prune<const L: usize>(networks: &mut [Network; L]) {
+    /// `present` is what can be in the pot without any reaction. Too slow: less than 1e-9 mol/L
+    /// over the whole program at the largest amounts charged.
+    pub(crate) fn prune<const L: usize>(networks: &mut [Network; L], present: &[Species]) {
         const LEAST_EXTENT_M: f64 = 1e-9;
         let first = &networks[0];
         let time: f64 = first.stages.iter().map(|stage| stage.duration_s).sum();
@@ -230,15 +225,13 @@ impl Network {
             networks.iter().any(|network| {
                 let r = &network.reactions[index];
                 let order = if r.second.is_some() { largest * largest } else { largest };
-                r.k[0].max(r.k[1]) * order * time > LEAST_EXTENT_M
+                r.k * order * time > LEAST_EXTENT_M
             })
         };
         let mut kept: Vec<bool> = (0..first.reactions.len()).map(matters).collect();
         let mut reachable = [false; Species::COUNT];
-        let charged = first.stages.iter().filter_map(|stage| stage.added.map(|(s, _)| s.index()));
-        let in_pot = (0..Species::COUNT).filter(|&i| first.start.0[i] > 0.0);
-        for index in charged.chain(in_pot) {
-            reachable[index] = true;
+        for species in present {
+            reachable[species.index()] = true;
         }
         let can = |r: &Reaction, reachable: &[bool]| {
             reachable[r.first.index()] && r.second.is_none_or(|s| reachable[s.index()])

@@ -202,7 +202,7 @@ impl Unreacted<'_> {
 
     /// Whether even the fully ionised substrate would have been too slow for the time given.
     fn would_be_slow_anyway(&self) -> bool {
-        let time: f64 = self.network.stages[self.network.first_reacting_stage..]
+        let time: f64 = self.network.stages
             .iter()
             .map(|stage| stage.duration_s)
             .sum();
@@ -213,7 +213,7 @@ impl Unreacted<'_> {
             .filter(|r| {
                 matches!(r.first, Species::Carbanion(_)) && r.second == Some(Species::Electrophile)
             })
-            .map(|r| r.k[1])
+            .map(|r| r.k)
             .fold(0.0, f64::max);
         k * self.network.charged[2] * time < 1.0
     }
@@ -248,7 +248,7 @@ impl Unreacted<'_> {
         let back = self.network.reactions.iter().any(|r| {
             matches!(r.first, Species::ProductAnion(_))
                 && r.second.is_none()
-                && r.k[1] * 3600.0 > 1.0
+                && r.k * 3600.0 > 1.0
         });
         (back && log10_k + enolattice_units::math::log10(concentration) < 1.0)
             .then_some(Channel::Reversible)

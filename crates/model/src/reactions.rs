@@ -35,12 +35,12 @@ struct Acid {
 /// Collects reactions.
 pub(crate) struct Reactions<'a> {
     kinetics: &'a Kinetics<'a>,
-    list: Vec<(Reaction, f64)>,
+    list: Vec<Reaction>,
 }
 
 impl<'a> Reactions<'a> {
-    /// All reactions with their rate constants. The list has the same steps at every temperature.
-    pub(crate) fn of(kinetics: &'a Kinetics<'a>) -> Vec<(Reaction, f64)> {
+    /// All reactions. The list has the same steps whatever the parameters and the temperature.
+    pub(crate) fn of(kinetics: &'a Kinetics<'a>) -> Vec<Reaction> {
         let mut all = Reactions {
             kinetics,
             list: Vec::with_capacity(96),
@@ -62,16 +62,7 @@ impl<'a> Reactions<'a> {
 
     fn add(&mut self, first: Species, second: Option<Species>, products: &[Species], k: f64) {
         let products = [products.first().copied(), products.get(1).copied()];
-        self.list.push((
-            Reaction {
-                first,
-                second,
-                products,
-                with: None,
-                k: [0.0; 2],
-            },
-            k,
-        ));
+        self.list.push(Reaction { first, second, products, with: None, k });
     }
 
     /// Both directions of a proton transfer from an acid to another acid's anion.
@@ -304,7 +295,7 @@ impl<'a> Reactions<'a> {
             if is_dianion && k.bonding() != Bonding::Substitution {
                 // the second charge of the adduct takes a proton from the base's acid at once
                 self.add(anion, e, &[gives, Species::Base], rate);
-                self.list.last_mut().expect("just added").0.with = Some(Species::BaseAcid);
+                self.list.last_mut().expect("just added").with = Some(Species::BaseAcid);
             } else {
                 self.add(anion, e, &[gives], rate);
             }
@@ -350,7 +341,7 @@ impl<'a> Reactions<'a> {
                 &[Species::ProductAnion(site), Species::Base],
                 rate,
             );
-            self.list.last_mut().expect("just added").0.with = Some(Species::BaseAcid);
+            self.list.last_mut().expect("just added").with = Some(Species::BaseAcid);
         }
     }
 
@@ -377,7 +368,7 @@ impl<'a> Reactions<'a> {
             let e = Some(Species::Electrophile);
             if k.bonding() == Bonding::Michael {
                 self.add(anion, e, &[Species::OverReacted, Species::Base], rate);
-                self.list.last_mut().expect("just added").0.with = Some(Species::BaseAcid);
+                self.list.last_mut().expect("just added").with = Some(Species::BaseAcid);
             } else {
                 self.add(anion, e, &[Species::OverReacted], rate);
             }

@@ -51,7 +51,7 @@ impl ODE<f64, State> for System<'_> {
         dydt.fill(0.0);
         for reaction in self.reactions {
             let second = reaction.second.map_or(1.0, |s| y[s.index()]);
-            let rate = reaction.k[self.stage.temperature] * y[reaction.first.index()] * second;
+            let rate = reaction.k * y[reaction.first.index()] * second;
             System::each_change(reaction, |i, change| dydt[i] += change * rate);
         }
         if let Some((species, amount)) = self.stage.added {
@@ -66,7 +66,7 @@ impl ODE<f64, State> for System<'_> {
             }
         }
         for reaction in self.reactions {
-            let k = reaction.k[self.stage.temperature];
+            let k = reaction.k;
             let a = reaction.first.index();
             match reaction.second.map(Species::index) {
                 Some(b) => System::each_change(reaction, |i, change| {
@@ -79,53 +79,49 @@ impl ODE<f64, State> for System<'_> {
     }
 }
 
-/// Integrates a network through its program.
+/// Integrates a cell's networks through their program.
 ///
 /// # Errors
 /// [`ModelError::Integration`] if the integrator gives up.
-pub(crate) fn integrate(network: &Network) -> Result<Course, ModelError> {
-    let before: f64 = network.stages[..network.first_reacting_stage]
-        .iter()
-        .map(|s| s.duration_s)
-        .sum();
-    let mut time = -before;
-    let mut pot = network.start;
-    let mut formed = pot;
-    let mut points = vec![(time, pot)];
-    for (index, stage) in network.stages.iter().enumerate() {
-        if index == network.first_reacting_stage {
-            formed = pot;
-        }
-        let system = System {
-            reactions: &network.reactions,
-            stage,
-        };
+pub(crate) fn integrate(
+    forming: Option<&Network>,
+    reacting: &Network,
+    start: Amounts,
+) -> Result<Course, ModelError> {
+    let before = forming.map_or(0.0, |n| n.stages.iter().map(|s| s.duration_s).sum());
+    let mut points = vec![(-before, start)];
+    let formed = match forming {
+        Some(network) => follow(network, start, -before, &mut points)?,
+        None => start,
+    };
+    let end = follow(reacting, formed, 0.0, &mut points)?;
+    Ok(Course { points, formed, end })
+}
+
+/// Integrates one network from a time on; appends its points and returns its end.
+fn follow(
+    network: &Network,
+    start: Amounts,
+    from_s: f64,
+    points: &mut Vec<(f64, Amounts)>,
+) -> Result<Amounts, ModelError> {
+    let (mut time, mut pot) = (from_s, start);
+    for stage in &network.stages {
+        let system = System { reactions: &network.reactions, stage };
         let at: Vec<f64> = (1..=POINTS)
             .map(|i| {
                 let share = i as f64 / POINTS as f64;
                 // points crowd at the beginning, where things happen
-                stage.duration_s
-                    * if stage.added.is_some() {
-                        share
-                    } else {
-                        share * share * share
-                    }
+                stage.duration_s * if stage.added.is_some() { share } else { share * share * share }
             })
             .collect();
-        let solution = solve(&system, &pot, &at)?;
-        for (t, y) in solution {
-            let mut amounts = Amounts::NONE;
-            amounts.0 = y;
-            points.push((time + t, amounts));
-            pot = amounts;
+        for (t, y) in solve(&system, &pot, &at)? {
+            pot = Amounts(y);
+            points.push((time + t, pot));
         }
         time += stage.duration_s;
     }
-    Ok(Course {
-        points,
-        formed,
-        end: pot,
-    })
+    Ok(pot)
 }
 
 /// Integrates one stage; times and amounts at the points asked for.

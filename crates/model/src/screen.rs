@@ -5,10 +5,12 @@ use enolattice_units::math;
 
 use crate::cautions::cautions;
 use crate::kinetics::{Bonding, Kinetics, Nudge};
-use crate::march::{Marched, march};
-use crate::network::Network;
+use crate::formation::Pots;
+use crate::march::march;
+use crate::network::{Amounts, Network};
 use crate::outcome::Outcome;
 use crate::parameters::{P, PARAMETERS, Values};
+use crate::program::Charge;
 use crate::{Cell, Channel, Score};
 
 /// Distance of the outer points of the three-point rule from the mean, in σ: exact to the fifth moment.
@@ -16,9 +18,11 @@ const NODE: f64 = 1.732_050_807_568_877_2;
 /// Yields are compared as logits within these bounds.
 const LOGIT_BOUND: f64 = 9.0;
 /// Points of the rule that averages over the two surfaces of logits.
-const FINE: usize = 21;
+const FINE: usize = 13;
+/// Slope of the smoothed step that counts hits, per unit of logit.
+const STEP_SHARPNESS: f64 = 4.0;
 /// Largest deviate of the fine rule.
-const FINE_REACH: f64 = 4.0;
+const FINE_REACH: f64 = 3.5;
 
 /// Whether a cell is outside the model, or settled without solving its network.
 pub(crate) enum Coverage {
@@ -65,6 +69,11 @@ pub(crate) struct Spread {
 }
 
 impl Spread {
+    /// Shift of the site's pKa at the outer points of the three-point rule.
+    pub(crate) fn acidity_node(&self) -> f64 {
+        NODE * self.acidity
+    }
+
     /// Site, base and medium add in squares; the attack has its anchor, the electrophile and steric terms.
     pub(crate) fn of(cell: &Cell) -> Spread {
         let site = &cell.substrate.carbon[0].acid;
@@ -86,24 +95,21 @@ impl Spread {
     }
 }
 
-/// A network solved at one point.
+/// A cell solved with the fast solver at the mean of all parameters.
 pub(crate) struct Solved {
-    pub(crate) network: Network,
-    pub(crate) marched: Marched,
     pub(crate) outcome: Outcome,
 }
 
-/// Solves a cell's network with the fast solver.
-pub(crate) fn solve(cell: &Cell, values: &Values, nudge: Nudge) -> Solved {
-    let network = Network::new(cell, values, nudge);
-    let [marched] = march(std::array::from_ref(&network));
-    let kinetics = Kinetics::new(cell, cell.conditions.temperature_c, values, nudge);
-    let outcome = Outcome::read(cell, &kinetics, &network, &marched.end, &marched.formed);
-    Solved {
-        network,
-        marched,
-        outcome,
-    }
+/// Solves a cell's network at the mean of all parameters.
+pub(crate) fn solve(cell: &Cell, values: &Values, pots: &Pots) -> Solved {
+    let networks = Charge::of(cell).reacting(cell, values, [Nudge::default()]);
+    let [end] = march(&networks, [pots.mean]);
+    read(cell, values, &networks[0], &end, &pots.mean)
+}
+
+fn read(cell: &Cell, values: &Values, network: &Network, end: &Amounts, formed: &Amounts) -> Solved {
+    let kinetics = Kinetics::new(cell, cell.conditions.temperature_c, values, Nudge::default());
+    Solved { outcome: Outcome::read(cell, &kinetics, network, end, formed) }
 }
 
 /// Yields over the uncertainty of a cell.
@@ -117,7 +123,8 @@ pub(crate) struct Uncertain {
     pub(crate) p_hit: f64,
 }
 
-/// Mean, deviation and probability of a hit over the two main uncertainties.
+/// Solves a cell at the mean and around it; mean, deviation and probability of a hit over the two
+/// main uncertainties.
 ///
 /// The network is solved at the centre and at ±√3 σ on each axis. Through the logits of the three
 /// yields of an axis goes a piecewise line; the two axes add. Mean and probability are sums over
@@ -125,46 +132,55 @@ pub(crate) struct Uncertain {
 pub(crate) fn over_uncertainty(
     cell: &Cell,
     values: &Values,
-    centre: &Solved,
+    pots: &Pots,
     target: f64,
-) -> Uncertain {
+) -> (Solved, Uncertain) {
     let spread = Spread::of(cell);
+    let (acidity, attack) = (spread.acidity_node(), NODE * spread.attack);
+    let nudge = |acidity, attack| Nudge { acidity, attack };
+    let nudges = [
+        Nudge::default(),
+        nudge(-acidity, 0.0),
+        nudge(acidity, 0.0),
+        nudge(0.0, -attack),
+        nudge(0.0, attack),
+    ];
+    let networks = Charge::of(cell).reacting(cell, values, nudges);
+    let starts = [pots.mean, pots.lowered, pots.raised, pots.mean, pots.mean];
+    let ends = march(&networks, starts);
+    let centre = read(cell, values, &networks[0], &ends[0], &pots.mean);
     let wanted = centre.outcome.site;
-    let charged = centre.network.charged[0];
-    let nudge = |acidity: f64, attack: f64| Nudge {
-        acidity: acidity * NODE * spread.acidity,
-        attack: attack * NODE * spread.attack,
+    let logits = ends.map(|end| logit(end.product(wanted) / networks[0].charged[0]));
+    let uncertain = average(logits, logit(target));
+    (centre, uncertain)
+}
+
+/// Averages over the surface of logits: centre, acidity down and up, attack down and up.
+fn average(logits: [f64; 5], target: f64) -> Uncertain {
+    let middle = logits[0];
+    let line = |z: f64, low: f64, high: f64| {
+        if z < 0.0 { -z / NODE * (low - middle) } else { z / NODE * (high - middle) }
     };
-    let nudges = [nudge(-1.0, 0.0), nudge(1.0, 0.0), nudge(0.0, -1.0), nudge(0.0, 1.0)];
-    let networks = Network::nudged(cell, values, nudges);
-    let middle = logit(centre.outcome.product);
-    let moved = march(&networks).map(|m| logit(m.end.product(wanted) / charged) - middle);
-    let line = |z: f64, low: f64, high: f64| if z < 0.0 { -z / NODE * low } else { z / NODE * high };
-    let acidity = |z: f64| line(z, moved[0], moved[1]);
-    let attack = |z: f64| line(z, moved[2], moved[3]);
-    let target = logit(target);
     let (mut weights, mut mean, mut square, mut hit) = (0.0, 0.0, 0.0, 0.0);
     for i in 0..FINE {
         let (x, wx) = fine_point(i);
+        let by_acidity = line(x, logits[1], logits[2]);
         for j in 0..FINE {
             let (y, wy) = fine_point(j);
-            let value = (middle + acidity(x) + attack(y)).clamp(-LOGIT_BOUND, LOGIT_BOUND);
+            let value = middle + by_acidity + line(y, logits[3], logits[4]);
+            let value = value.clamp(-LOGIT_BOUND, LOGIT_BOUND);
             let share = 1.0 / (1.0 + math::exp(-value));
             let w = wx * wy;
             weights += w;
             mean += w * share;
             square += w * share * share;
             // a step smoothed by the grid's spacing
-            hit += w / (1.0 + math::exp(-(value - target) * 4.0));
+            hit += w / (1.0 + math::exp(-(value - target) * STEP_SHARPNESS));
         }
     }
     let mean = mean / weights;
     let sigma = (square / weights - mean * mean).max(0.0).sqrt();
-    Uncertain {
-        mean,
-        sigma,
-        p_hit: (hit / weights).clamp(0.0, 1.0),
-    }
+    Uncertain { mean, sigma, p_hit: (hit / weights).clamp(0.0, 1.0) }
 }
 
 fn fine_point(i: usize) -> (f64, f64) {
@@ -224,36 +240,34 @@ fn addition_conversion(k: f64, concentration_m: f64, electrophile_equiv: f64) ->
 }
 
 /// Screens one cell; `cautions` are its caution bits, which the caller has tabled.
-pub(crate) fn score(cell: &Cell, values: &Values, yield_at_least: f64, cautions: u32) -> Score {
+pub(crate) fn score(
+    cell: &Cell,
+    values: &Values,
+    yield_at_least: f64,
+    cautions: u32,
+    pots: impl FnOnce() -> Pots,
+) -> Score {
+    let nothing = |channel| Score {
+        expected_yield: Some(0.0),
+        p_hit: Some(0.0),
+        selectivity: Some(0.0),
+        feasibility: Some(0.0),
+        largest_loss: Some(channel),
+        cautions,
+    };
     match coverage(cell) {
-        Coverage::Unknown(_) => Score {
-            cautions,
-            ..Score::default()
-        },
-        Coverage::Nothing(channel, _) => Score {
-            expected_yield: Some(0.0),
-            p_hit: Some(0.0),
-            selectivity: Some(0.0),
-            feasibility: Some(0.0),
-            largest_loss: Some(channel),
-            cautions,
-        },
+        Coverage::Unknown(_) => Score { cautions, ..Score::default() },
+        Coverage::Nothing(channel, _) => nothing(channel),
         Coverage::Covered => {
-            let kinetics = Kinetics::new(
-                cell,
-                cell.conditions.temperature_c,
-                values,
-                Nudge::default(),
-            );
-            let centre = solve(cell, values, Nudge::default());
-            let uncertain = if is_negligible(cell, &kinetics) {
-                Uncertain {
-                    mean: centre.outcome.product,
-                    sigma: 0.0,
-                    p_hit: 0.0,
-                }
+            let kinetics =
+                Kinetics::new(cell, cell.conditions.temperature_c, values, Nudge::default());
+            let pots = pots();
+            let (centre, uncertain) = if is_negligible(cell, &kinetics) {
+                let centre = solve(cell, values, &pots);
+                let mean = centre.outcome.product;
+                (centre, Uncertain { mean, sigma: 0.0, p_hit: 0.0 })
             } else {
-                over_uncertainty(cell, values, &centre, yield_at_least)
+                over_uncertainty(cell, values, &pots, yield_at_least)
             };
             Score {
                 expected_yield: Some(uncertain.mean),

@@ -31,6 +31,7 @@ impl Server {
             ])
             .arg(data)
             .stdout(Stdio::piped())
+            .stderr(Stdio::null())
             .spawn()
             .expect("the binary starts");
         let mut line = String::new();

@@ -5,7 +5,7 @@ use std::process::ExitCode;
 use std::sync::Arc;
 
 use clap::{Parser, Subcommand};
-use enolattice_calibration::{acidity_fit, cases, solvers};
+use enolattice_calibration::{acidity_fit, balance, cases, solvers};
 use enolattice_model::Model;
 use enolattice_reagents::Library;
 
@@ -20,6 +20,8 @@ struct Arguments {
 enum Command {
     /// Fits the acidity estimate, cross-validates it and writes the model's tables and the page on them.
     Acidity,
+    /// Prints proton balances with our solution as JSON.
+    Balance,
     /// Holds the cases of the trade against the model.
     Cases,
     /// Compares the fast solver with the stiff reference on random cells.
@@ -50,6 +52,8 @@ fn run(arguments: &Arguments) -> Result<(), String> {
                 .map_err(|error| error.to_string())?;
             write!(std::io::stdout().lock(), "{page}").map_err(|error| error.to_string())
         }
+        Command::Balance => writeln!(std::io::stdout().lock(), "{}", balance::to_json())
+            .map_err(|error| error.to_string()),
         Command::Cases => cases::print(&model()?, &mut std::io::stdout().lock()),
         Command::Solvers { cells } => {
             solvers::print(&model()?, cells, &mut std::io::stdout().lock())

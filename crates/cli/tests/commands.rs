@@ -304,7 +304,13 @@ fn all_faults_of_the_input_are_told_at_once() {
         ),
         (
             "unknown.toml",
-            ["unknown.toml:6: ", "`LDE`", "LDA", "MeIodide!", "unknown.toml:8: "],
+            [
+                "unknown.toml:6: ",
+                "`LDE`",
+                "LDA",
+                "MeIodide!",
+                "unknown.toml:8: ",
+            ],
         ),
     ] {
         let (code, told) = refused(folder, &["screen", file]);

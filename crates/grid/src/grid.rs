@@ -113,7 +113,11 @@ impl Grid {
             let cautions = self.cautions.bits(&walk.digits);
             let target = self.campaign.yield_at_least;
             let (table, key) = (&walk.pairs.formations, walk.formation_key());
-            columns.push(&self.model.score_with(&walk.cell, target, cautions, table, key));
+            columns.push(
+                &self
+                    .model
+                    .score_with(&walk.cell, target, cautions, table, key),
+            );
         }
         columns
     }

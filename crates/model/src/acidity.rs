@@ -146,7 +146,9 @@ fn error_of_thin_terms(contribution: &Contribution) -> f64 {
         .slopes(values())
         .into_iter()
         .filter(|(i, _)| thin(*i))
-        .map(|(i, slope)| (slope * coefficients()[i].standard_error).powi(2))
+        .map(|(i, slope)| {
+            slope * slope * coefficients()[i].standard_error * coefficients()[i].standard_error
+        })
         .sum();
     variance.sqrt()
 }

@@ -4,6 +4,7 @@ use enolattice_molecule::AnionClass;
 use enolattice_units::delta_g_kj_mol;
 
 use crate::advice::advice;
+use crate::balance::{Acid, proton_balance};
 use crate::explanation::{CoursePoint, ExplainedRate, ExplainedSite};
 use crate::formation::Pots;
 use crate::kinetics::{Kinetics, Nudge};
@@ -93,11 +94,16 @@ pub(crate) fn explain(
     explanation.selectivity = Some(outcome.selectivity);
     explanation.reference_yield = Some(outcome.product);
     explanation.fast_yield = Some(centre.outcome.product);
-    explanation.enolate_fraction = Some(enolate_fraction(&course, &network, Charge::of(cell).forms_first()));
-    explanation.rates = rates(cell, &kinetics, &network);
+    explanation.enolate_fraction = Some(enolate_fraction(
+        &course,
+        &network,
+        Charge::of(cell).forms_first(),
+    ));
+    explanation.rates = rates(cell, &network);
     explanation.course = course_points(&course, &network, outcome.site);
     product(&mut explanation, cell, outcome.site);
     explanation.limits.extend(limits(cell, &outcome));
+    explanation.limits.push(at_equilibrium(cell, &kinetics));
     explanation.losses = outcome.losses;
     explanation.advice = advice(model, cell, yield_at_least, uncertain.mean);
     Ok(explanation)
@@ -240,7 +246,7 @@ fn symbol(element: u8) -> &'static str {
 
 /// The rate constants of steps that involve the electrophile or two molecules of substrate, and of
 /// the deprotonation by the base, fastest first.
-fn rates(cell: &Cell, kinetics: &Kinetics<'_>, network: &Network) -> Vec<ExplainedRate> {
+fn rates(cell: &Cell, network: &Network) -> Vec<ExplainedRate> {
     let attack_source = match &cell.electrophile.e {
         Some((e, sigma, source)) => {
             format!("log k = sN (N + E), E = {e:.1} ± {sigma:.1}: {source}")
@@ -279,7 +285,6 @@ fn rates(cell: &Cell, kinetics: &Kinetics<'_>, network: &Network) -> Vec<Explain
             })
         })
         .collect();
-    let _ = kinetics;
     rates.sort_by(|a, b| b.log10_k.total_cmp(&a.log10_k));
     rates
 }
@@ -311,6 +316,48 @@ fn course_points(course: &Course, network: &Network, site: usize) -> Vec<CourseP
             product: pot.product(site) / charged,
         })
         .collect()
+}
+
+/// What the proton balance alone, with all base dissolved and no electrophile, makes of the substrate.
+fn at_equilibrium(cell: &Cell, kinetics: &Kinetics<'_>) -> String {
+    let conditions = &cell.conditions;
+    let substrate_m = conditions.concentration_m;
+    let acid = |name: &str, pka: f64, acid_m: f64, anion_m: f64| Acid {
+        name: name.to_owned(),
+        pkas: vec![pka],
+        charged_m: vec![acid_m, anion_m],
+    };
+    let mut pkas: Vec<f64> = kinetics
+        .first_heteroatom()
+        .map(|x| kinetics.pka(x.pka_dmso, x.class))
+        .into_iter()
+        .collect();
+    pkas.push(kinetics.site_pka(&cell.substrate.carbon[0]));
+    let mut charged_m = vec![0.0; pkas.len() + 1];
+    charged_m[0] = substrate_m;
+    let mut acids = vec![
+        Acid {
+            name: "substrate".to_owned(),
+            pkas,
+            charged_m,
+        },
+        acid(
+            "base",
+            kinetics.pka_base(),
+            0.0,
+            substrate_m * conditions.base_equiv,
+        ),
+    ];
+    if let Some((value, class)) = &cell.solvent.record.acid {
+        let pka = kinetics.pka(value.value, *class);
+        acids.push(acid("solvent", pka, cell.solvent.concentration_m(), 0.0));
+    }
+    let forms = proton_balance(&acids);
+    let carbanion = forms[0].last().copied().unwrap_or_default() / substrate_m;
+    format!(
+        "proton balance with all base dissolved, before the electrophile: {:.3} of the substrate is carbanion at equilibrium",
+        carbanion
+    )
 }
 
 fn limits(cell: &Cell, outcome: &Outcome) -> Vec<String> {

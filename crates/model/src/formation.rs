@@ -35,13 +35,24 @@ impl Pots {
         let charge = Charge::of(cell);
         let start = charge.start();
         if !charge.forms_first() {
-            return Pots { mean: start, lowered: start, raised: start };
+            return Pots {
+                mean: start,
+                lowered: start,
+                raised: start,
+            };
         }
         let acidity = Spread::of(cell).acidity_node();
-        let nudges = [0.0, -acidity, acidity].map(|acidity| Nudge { acidity, attack: 0.0 });
+        let nudges = [0.0, -acidity, acidity].map(|acidity| Nudge {
+            acidity,
+            attack: 0.0,
+        });
         let networks = charge.forming(cell, values, nudges);
         let [mean, lowered, raised] = march(&networks, [start; 3]);
-        Pots { mean, lowered, raised }
+        Pots {
+            mean,
+            lowered,
+            raised,
+        }
     }
 }
 
@@ -58,6 +69,8 @@ impl FormationTable {
 
     fn lock(&self) -> std::sync::MutexGuard<'_, HashMap<u64, Pots>> {
         // a panic elsewhere cannot leave a half-written value: entries are inserted whole
-        self.pots.lock().unwrap_or_else(std::sync::PoisonError::into_inner)
+        self.pots
+            .lock()
+            .unwrap_or_else(std::sync::PoisonError::into_inner)
     }
 }

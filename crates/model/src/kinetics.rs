@@ -413,7 +413,9 @@ impl<'a> Kinetics<'a> {
 
     /// pKa of the hydroxyl of an aldol adduct in the medium.
     pub(crate) fn aldol_hydroxyl(&self) -> f64 {
-        self.pka(PKA_ALDOL_HYDROXYL, AnionClass::Alkoxide)
+        self.medium
+            .pka(PKA_ALDOL_HYDROXYL, AnionClass::Alkoxide, self.values)
+            - self.v(P::LOC_CHELATE) * self.medium.pair_strength(self.values)
     }
 
     /// log10 K of the substrate's condensation with itself, neutral to neutral.

@@ -4,6 +4,7 @@
 
 mod acidity;
 mod advice;
+mod balance;
 mod carbonyl;
 mod cautions;
 mod cell;
@@ -25,6 +26,8 @@ mod program;
 mod rates;
 mod reactions;
 mod reference;
+#[cfg(test)]
+mod sample;
 mod score;
 mod screen;
 
@@ -32,6 +35,7 @@ pub use acidity::{
     AcidSite, Coefficient, Contribution, Coverage, Form, Origin, Role, Uptake, acid_sites,
     coefficients, estimate,
 };
+pub use balance::{Acid, proton_balance};
 pub use cautions::{
     Category, Caution, Severity, base_electrophile_cautions, base_solvent_cautions,
     base_substrate_cautions, caution_bits, cautions, electrophile_solvent_cautions,

@@ -64,6 +64,18 @@ impl Medium<'_> {
         }
     }
 
+    /// Strength of the contact pair: that of the medium times that of the cation, Na⁺ = 1.
+    pub(crate) fn pair_strength(&self, values: &Values) -> f64 {
+        let cation = match self.cation {
+            Cation::Lithium => values.get(P::PAIR_LITHIUM),
+            Cation::Sodium => 1.0,
+            Cation::Potassium => values.get(P::PAIR_POTASSIUM),
+            Cation::Caesium => values.get(P::PAIR_CAESIUM),
+            Cation::None => 0.0,
+        };
+        cation * self.pairing()
+    }
+
     /// Part of the shift of the pKa that comes from hydrogen bonds to the anion, pK units.
     pub(crate) fn hydrogen_bond_shift(&self, class: AnionClass, values: &Values) -> f64 {
         hydrogen_bond(class).map_or(0.0, |p| values.get(p)) * self.donation()
@@ -95,14 +107,7 @@ impl Medium<'_> {
                 values.get(P::CHARGE_SEPARATION) * separation
             }
         } else {
-            let cation = match self.cation {
-                Cation::Lithium => values.get(P::PAIR_LITHIUM),
-                Cation::Sodium => 1.0,
-                Cation::Potassium => values.get(P::PAIR_POTASSIUM),
-                Cation::Caesium => values.get(P::PAIR_CAESIUM),
-                Cation::None => 0.0,
-            };
-            localisation(class).map_or(0.0, |p| values.get(p)) * cation * self.pairing()
+            localisation(class).map_or(0.0, |p| values.get(p)) * self.pair_strength(values)
         };
         log10_k_at(bonded - paired, self.temperature_c)
     }

@@ -137,7 +137,9 @@ impl Model {
     /// Screens one cell with the fast solver and quadrature. `cautions` are the cell's caution
     /// bits, which depend on few axes at a time and are tabled by the caller.
     pub fn score(&self, cell: &Cell, yield_at_least: f64, cautions: u32) -> Score {
-        score(cell, &self.means, yield_at_least, cautions, || Pots::form(cell, &self.means))
+        score(cell, &self.means, yield_at_least, cautions, || {
+            Pots::form(cell, &self.means)
+        })
     }
 
     /// The same score, with the deprotonation looked up in a table of the cell's substrate. Cells

@@ -164,6 +164,7 @@ impl Amounts {
     }
 
     /// Substrate in all its fates: constant once all is charged.
+    #[cfg(test)]
     pub(crate) fn substrate_balance(&self) -> f64 {
         self.unreacted()
             + (0..SITES).map(|site| self.product(site)).sum::<f64>()
@@ -224,7 +225,11 @@ impl Network {
         let matters = |index: usize| {
             networks.iter().any(|network| {
                 let r = &network.reactions[index];
-                let order = if r.second.is_some() { largest * largest } else { largest };
+                let order = if r.second.is_some() {
+                    largest * largest
+                } else {
+                    largest
+                };
                 r.k * order * time > LEAST_EXTENT_M
             })
         };
@@ -254,7 +259,9 @@ impl Network {
         }
         for network in networks {
             let mut keep = kept.iter();
-            network.reactions.retain(|_| *keep.next().expect("one mark a reaction"));
+            network
+                .reactions
+                .retain(|_| *keep.next().expect("one mark a reaction"));
         }
     }
 }

@@ -130,12 +130,6 @@ impl Unreacted<'_> {
         let [substrate, base, electrophile] = self.network.charged;
         let regenerated = self.kinetics.bonding() != Bonding::Substitution;
         let by_electrophile = 1.0 - electrophile / substrate;
-        let needed = if self.kinetics.first_heteroatom().is_some() {
-            2.0
-        } else {
-            1.0
-        };
-        let _ = needed;
         let by_base = if regenerated {
             0.0
         } else {
@@ -161,10 +155,9 @@ impl Unreacted<'_> {
     /// A reason that lies with the base, if the enolate never formed well and that is what held the cell up.
     fn base(&self) -> Option<Channel> {
         let charged = self.network.charged[0];
-        if let Some(x) = self.kinetics.first_heteroatom() {
+        if self.kinetics.first_heteroatom().is_some() {
             let on_carbon = self.formed.carbanions() / charged;
             if on_carbon < 0.5 {
-                let _ = x;
                 return Some(Channel::CompetingAcid);
             }
         }
@@ -202,7 +195,9 @@ impl Unreacted<'_> {
 
     /// Whether even the fully ionised substrate would have been too slow for the time given.
     fn would_be_slow_anyway(&self) -> bool {
-        let time: f64 = self.network.stages
+        let time: f64 = self
+            .network
+            .stages
             .iter()
             .map(|stage| stage.duration_s)
             .sum();
@@ -246,9 +241,7 @@ impl Unreacted<'_> {
         // at 0.2 mol/L half conversion needs K = 10 L/mol; slower than that is another matter
         let concentration = self.network.charged[0];
         let back = self.network.reactions.iter().any(|r| {
-            matches!(r.first, Species::ProductAnion(_))
-                && r.second.is_none()
-                && r.k * 3600.0 > 1.0
+            matches!(r.first, Species::ProductAnion(_)) && r.second.is_none() && r.k * 3600.0 > 1.0
         });
         (back && log10_k + enolattice_units::math::log10(concentration) < 1.0)
             .then_some(Channel::Reversible)

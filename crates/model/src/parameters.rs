@@ -20,7 +20,7 @@ pub struct Parameter {
 macro_rules! parameters {
     ($($(#[$doc:meta])* $id:ident = $mean:expr, $sigma:expr, $unit:expr, $source:expr;)*) => {
         /// Index of a parameter in the vector.
-        #[allow(non_camel_case_types, clippy::upper_case_acronyms)]
+        #[allow(non_camel_case_types, clippy::enum_variant_names, clippy::upper_case_acronyms)]
         #[derive(Clone, Copy, Debug, PartialEq, Eq)]
         #[repr(usize)]
         pub(crate) enum P { $($(#[$doc])* $id,)* }
@@ -72,6 +72,8 @@ parameters! {
     LOC_ALKYL_NITROGEN = 0.25, 0.5, "pK", "diisopropylamine 36 in DMSO (extrapolated) against 35.7 in THF (Fraser and others 1984, from memory)";
     LOC_SILYL_NITROGEN = 0.4, 0.7, "pK", "hexamethyldisilazane 30 in DMSO against 29.5 in THF (Fraser and others 1984, from memory)";
     LOC_ESTER = 0.4, 0.5, "pK", MEMORY;
+    /// Chelation of an aldolate by its carbonyl oxygen, on the same scale as the localisation.
+    LOC_CHELATE = 3.0, 1.0, "pK", "lithium aldolates in ethers do not revert at low temperature (from memory)";
     LOC_NITRONATE = -1.0, 0.7, "pK", MEMORY;
     PAIR_LITHIUM = 1.2, 0.2, "1", MEMORY;
     PAIR_POTASSIUM = 0.7, 0.15, "1", MEMORY;

@@ -1,8 +1,7 @@
 //! Reagents prepared for the model: structure, acidities, reactivity.
 
 use enolattice_molecule::{
-    Bond, ElectrophilicGroup, Molecule, Product, c_product, dehydrated, heteroatom_product,
-    o_product, recognise,
+    Bond, ElectrophilicGroup, Molecule, Product, c_product, dehydrated, o_product, recognise,
 };
 use enolattice_reagents::{BaseKind, Library, NamedElectrophile};
 
@@ -236,8 +235,6 @@ pub(crate) struct SiteProduct {
 pub struct Pair {
     /// By carbon site of the substrate, in the same order.
     pub(crate) by_site: Vec<Option<SiteProduct>>,
-    /// Product at the heteroatom.
-    pub(crate) by_heteroatom: Option<Molecule>,
 }
 
 impl Pair {
@@ -249,7 +246,6 @@ impl Pair {
         let Some(group) = &electrophile.group else {
             return Pair {
                 by_site: vec![None; substrate.carbon.len()],
-                by_heteroatom: None,
             };
         };
         let by_site = substrate
@@ -257,20 +253,7 @@ impl Pair {
             .iter()
             .map(|site| site_product(substrate, site.acid.atom, electrophile, group, library))
             .collect();
-        let by_heteroatom = substrate.heteroatom.as_ref().and_then(|site| {
-            heteroatom_product(
-                &substrate.molecule,
-                site.atom,
-                &electrophile.molecule,
-                group,
-            )
-            .ok()
-            .map(|product| product.molecule)
-        });
-        Pair {
-            by_site,
-            by_heteroatom,
-        }
+        Pair { by_site }
     }
 }
 

@@ -31,11 +31,21 @@ impl Charge {
     pub(crate) fn of(cell: &Cell) -> Charge {
         let conditions = &cell.conditions;
         let substrate_m = conditions.concentration_m;
-        let dissolves = cell.base.record.log_solubility_for(&cell.solvent.record).is_none();
+        let dissolves = cell
+            .base
+            .record
+            .log_solubility_for(&cell.solvent.record)
+            .is_none();
         let time_s = conditions.time_h * 3600.0;
         Charge {
-            order: conditions.addition.unwrap_or_else(|| cell.base.usual_addition()),
-            base: if dissolves { Species::Base } else { Species::Solid },
+            order: conditions
+                .addition
+                .unwrap_or_else(|| cell.base.usual_addition()),
+            base: if dissolves {
+                Species::Base
+            } else {
+                Species::Solid
+            },
             water_m: cell.solvent.water_m(),
             substrate_m,
             base_m: substrate_m * conditions.base_equiv,
@@ -76,19 +86,34 @@ impl Charge {
             _ => Some((self.base, self.base_m)),
         };
         vec![
-            Stage { duration_s: ADDING_S, added },
-            Stage { duration_s: WAITING_S, added: None },
+            Stage {
+                duration_s: ADDING_S,
+                added,
+            },
+            Stage {
+                duration_s: WAITING_S,
+                added: None,
+            },
         ]
     }
 
     fn reacting_stages(&self) -> Vec<Stage> {
         if self.order == Addition::AllTogether {
-            return vec![Stage { duration_s: self.time_s, added: None }];
+            return vec![Stage {
+                duration_s: self.time_s,
+                added: None,
+            }];
         }
         let dose = Some((Species::Electrophile, self.electrophile_m));
         vec![
-            Stage { duration_s: self.dosing_s, added: dose },
-            Stage { duration_s: self.time_s - self.dosing_s, added: None },
+            Stage {
+                duration_s: self.dosing_s,
+                added: dose,
+            },
+            Stage {
+                duration_s: self.time_s - self.dosing_s,
+                added: None,
+            },
         ]
     }
 
@@ -106,7 +131,10 @@ impl Charge {
             // nothing of the electrophile may show here: the result serves all electrophiles
             charged: [self.substrate_m, self.base_m, 0.0],
         });
-        Network::prune(&mut networks, &[Species::Substrate, self.base, Species::Water]);
+        Network::prune(
+            &mut networks,
+            &[Species::Substrate, self.base, Species::Water],
+        );
         networks
     }
 
@@ -123,7 +151,12 @@ impl Charge {
             stages: self.reacting_stages(),
             charged: self.charged(),
         });
-        let present = [Species::Substrate, self.base, Species::Water, Species::Electrophile];
+        let present = [
+            Species::Substrate,
+            self.base,
+            Species::Water,
+            Species::Electrophile,
+        ];
         Network::prune(&mut networks, &present);
         networks
     }

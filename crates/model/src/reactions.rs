@@ -16,6 +16,9 @@ const FAST_TRANSFER: f64 = 1e7;
 const PKA_ALCOHOL: f64 = 29.8;
 /// pKa (DMSO) of the C–H between the carbonyls of a Claisen product: ethyl acetoacetate 14.2.
 const PKA_CLAISEN: f64 = 14.2;
+/// pKa (DMSO) of the carbanion of an ester or nitrile that a Michael addition leaves (measured
+/// acidities of the library: 28 to 31).
+const ADDUCT_PKA: f64 = 28.0;
 /// A tert-alkyl ester is saponified about a hundred times more slowly (common practice).
 const TERT_ALKYL_SAPONIFICATION: f64 = -2.0;
 
@@ -62,7 +65,13 @@ impl<'a> Reactions<'a> {
 
     fn add(&mut self, first: Species, second: Option<Species>, products: &[Species], k: f64) {
         let products = [products.first().copied(), products.get(1).copied()];
-        self.list.push(Reaction { first, second, products, with: None, k });
+        self.list.push(Reaction {
+            first,
+            second,
+            products,
+            with: None,
+            k,
+        });
     }
 
     /// Both directions of a proton transfer from an acid to another acid's anion.
@@ -262,7 +271,11 @@ impl<'a> Reactions<'a> {
                 if a.anion == Species::Dianion || b.anion == Species::Dianion {
                     continue;
                 }
-                let slower = if b.class == AnionClass::Nitronate { b.class } else { a.class };
+                let slower = if b.class == AnionClass::Nitronate {
+                    b.class
+                } else {
+                    a.class
+                };
                 let log_k = rates::exchange(b.pka - a.pka, slower, &k.medium, k.values);
                 self.transfer(a, b, math::exp10(log_k));
             }
@@ -292,13 +305,8 @@ impl<'a> Reactions<'a> {
             } else {
                 Species::ProductAnion(i)
             };
-            if is_dianion && k.bonding() != Bonding::Substitution {
-                // the second charge of the adduct takes a proton from the base's acid at once
-                self.add(anion, e, &[gives, Species::Base], rate);
-                self.list.last_mut().expect("just added").with = Some(Species::BaseAcid);
-            } else {
-                self.add(anion, e, &[gives], rate);
-            }
+            // the second charge of a dianion's adduct stays on its oxygen until the work-up
+            self.add(anion, e, &[gives], rate);
             let back = match k.addition_log10_k(site) {
                 Some(log10_k) if !is_dianion => {
                     rate * math::exp10(k.adduct_pka(i) - log10_k - k.site_pka(site))
@@ -332,17 +340,8 @@ impl<'a> Reactions<'a> {
         let nucleophile = k.dianion(&k.cell.substrate.carbon[site], pka_dmso);
         let rate = k.attack(&nucleophile).map_or(0.0, math::exp10) * math::exp10(k.nudge.attack);
         let e = Some(Species::Electrophile);
-        if k.bonding() == Bonding::Substitution {
-            self.add(Species::Dianion, e, &[Species::ProductAnion(site)], rate);
-        } else {
-            self.add(
-                Species::Dianion,
-                e,
-                &[Species::ProductAnion(site), Species::Base],
-                rate,
-            );
-            self.list.last_mut().expect("just added").with = Some(Species::BaseAcid);
-        }
+        // an adduct keeps its second charge on oxygen until the work-up: none comes back as base
+        self.add(Species::Dianion, e, &[Species::ProductAnion(site)], rate);
     }
 
     /// The product's anion attacks again, unless it is an alkoxide.
@@ -366,7 +365,9 @@ impl<'a> Reactions<'a> {
                 k.attack(&nucleophile).map_or(0.0, math::exp10) * math::exp10(k.nudge.attack);
             let anion = Species::ProductAnion(site);
             let e = Some(Species::Electrophile);
-            if k.bonding() == Bonding::Michael {
+            // the carbanion of a double adduct takes a proton from the acid of a base that is weak
+            // enough to leave it one; a strong base does not come back
+            if k.bonding() == Bonding::Michael && k.pka_base() < ADDUCT_PKA {
                 self.add(anion, e, &[Species::OverReacted, Species::Base], rate);
                 self.list.last_mut().expect("just added").with = Some(Species::BaseAcid);
             } else {

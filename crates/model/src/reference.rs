@@ -89,13 +89,18 @@ pub(crate) fn integrate(
     start: Amounts,
 ) -> Result<Course, ModelError> {
     let before = forming.map_or(0.0, |n| n.stages.iter().map(|s| s.duration_s).sum());
-    let mut points = vec![(-before, start)];
+    // 0 − 0 is +0: a negative zero would not survive the wire
+    let mut points = vec![(0.0 - before, start)];
     let formed = match forming {
-        Some(network) => follow(network, start, -before, &mut points)?,
+        Some(network) => follow(network, start, 0.0 - before, &mut points)?,
         None => start,
     };
     let end = follow(reacting, formed, 0.0, &mut points)?;
-    Ok(Course { points, formed, end })
+    Ok(Course {
+        points,
+        formed,
+        end,
+    })
 }
 
 /// Integrates one network from a time on; appends its points and returns its end.
@@ -107,12 +112,20 @@ fn follow(
 ) -> Result<Amounts, ModelError> {
     let (mut time, mut pot) = (from_s, start);
     for stage in &network.stages {
-        let system = System { reactions: &network.reactions, stage };
+        let system = System {
+            reactions: &network.reactions,
+            stage,
+        };
         let at: Vec<f64> = (1..=POINTS)
             .map(|i| {
                 let share = i as f64 / POINTS as f64;
                 // points crowd at the beginning, where things happen
-                stage.duration_s * if stage.added.is_some() { share } else { share * share * share }
+                stage.duration_s
+                    * if stage.added.is_some() {
+                        share
+                    } else {
+                        share * share * share
+                    }
             })
             .collect();
         for (t, y) in solve(&system, &pot, &at)? {
@@ -133,17 +146,28 @@ fn solve(system: &System<'_>, pot: &Amounts, at: &[f64]) -> Result<Vec<(f64, Sta
             .atol(absolute_m)
             .h0(1e-7)
             .max_steps(20_000);
-        match IVP::ode(system, 0.0, system.stage.duration_s, pot.0).t_eval(at).method(method).solve() {
+        match IVP::ode(system, 0.0, system.stage.duration_s, pot.0)
+            .t_eval(at)
+            .method(method)
+            .solve()
+        {
             Ok(solution) => {
                 let points: Vec<_> = solution.iter().map(|(t, y)| (*t, *y)).collect();
-                if points.iter().all(|(_, y)| y.iter().all(|amount| amount.is_finite())) {
+                if points
+                    .iter()
+                    .all(|(_, y)| y.iter().all(|amount| amount.is_finite()))
+                {
                     return Ok(points);
                 }
                 reason = "an amount is not a number".to_owned();
             }
             Err(error) => {
                 let said = format!("{error:?}");
-                reason = said.split(" at (t, y)").next().unwrap_or_default().to_owned();
+                reason = said
+                    .split(" at (t, y)")
+                    .next()
+                    .unwrap_or_default()
+                    .to_owned();
             }
         }
     }

@@ -4,8 +4,8 @@ use enolattice_molecule::ElectrophileKind;
 use enolattice_units::math;
 
 use crate::cautions::cautions;
-use crate::kinetics::{Bonding, Kinetics, Nudge};
 use crate::formation::Pots;
+use crate::kinetics::{Bonding, Kinetics, Nudge};
 use crate::march::march;
 use crate::network::{Amounts, Network};
 use crate::outcome::Outcome;
@@ -53,10 +53,40 @@ pub(crate) fn coverage(cell: &Cell) -> Coverage {
             None => Coverage::Unknown(format!("substrate {}: no acidic C–H", cell.substrate.name)),
         };
     }
+    if let Some(reason) = destroyed_by_solvent(cell) {
+        return Coverage::Nothing(Channel::SolventLevelsBase, reason);
+    }
     if cell.pair.by_site.iter().all(Option::is_none) {
         return Coverage::Unknown("no product by one new bond at carbon could be drawn".to_owned());
     }
     Coverage::Covered
+}
+
+/// A solvent more acidic than a metal amide or alkyllithium by more than this destroys it at once.
+const DESTROYED_PKA: f64 = 5.0;
+
+/// Why the base never meets the substrate: nobody charges a metal amide or an alkyllithium into a
+/// solvent that it deprotonates; what is left is the solvent's own anion, to be charged as such.
+fn destroyed_by_solvent(cell: &Cell) -> Option<String> {
+    use enolattice_reagents::BaseKind;
+    let record = &cell.base.record;
+    if !matches!(record.kind, BaseKind::Amide | BaseKind::Organolithium) {
+        return None;
+    }
+    let (acid, _) = cell.solvent.record.acid.as_ref()?;
+    (record.pka_dmso.value - acid.value > DESTROYED_PKA && is_protic_or_enolisable(cell)).then(|| {
+        format!(
+            "{} is destroyed by {} (pKa {:.1} against {:.1} on the DMSO scale): charge the anion of the solvent as base, or change the solvent",
+            record.name, cell.solvent.record.name, acid.value, record.pka_dmso.value
+        )
+    })
+}
+
+/// Hydroxylic solvents give up their proton at once, and so do ketones, esters and chloroform;
+/// hydrocarbons only on paper.
+fn is_protic_or_enolisable(cell: &Cell) -> bool {
+    use enolattice_reagents::SolventClass;
+    cell.solvent.record.class != SolventClass::Hydrocarbon
 }
 
 /// The standard uncertainties of a cell's two main quantities.
@@ -107,9 +137,22 @@ pub(crate) fn solve(cell: &Cell, values: &Values, pots: &Pots) -> Solved {
     read(cell, values, &networks[0], &end, &pots.mean)
 }
 
-fn read(cell: &Cell, values: &Values, network: &Network, end: &Amounts, formed: &Amounts) -> Solved {
-    let kinetics = Kinetics::new(cell, cell.conditions.temperature_c, values, Nudge::default());
-    Solved { outcome: Outcome::read(cell, &kinetics, network, end, formed) }
+fn read(
+    cell: &Cell,
+    values: &Values,
+    network: &Network,
+    end: &Amounts,
+    formed: &Amounts,
+) -> Solved {
+    let kinetics = Kinetics::new(
+        cell,
+        cell.conditions.temperature_c,
+        values,
+        Nudge::default(),
+    );
+    Solved {
+        outcome: Outcome::read(cell, &kinetics, network, end, formed),
+    }
 }
 
 /// Yields over the uncertainty of a cell.
@@ -159,7 +202,11 @@ pub(crate) fn over_uncertainty(
 fn average(logits: [f64; 5], target: f64) -> Uncertain {
     let middle = logits[0];
     let line = |z: f64, low: f64, high: f64| {
-        if z < 0.0 { -z / NODE * (low - middle) } else { z / NODE * (high - middle) }
+        if z < 0.0 {
+            -z / NODE * (low - middle)
+        } else {
+            z / NODE * (high - middle)
+        }
     };
     let (mut weights, mut mean, mut square, mut hit) = (0.0, 0.0, 0.0, 0.0);
     for i in 0..FINE {
@@ -180,7 +227,11 @@ fn average(logits: [f64; 5], target: f64) -> Uncertain {
     }
     let mean = mean / weights;
     let sigma = (square / weights - mean * mean).max(0.0).sqrt();
-    Uncertain { mean, sigma, p_hit: (hit / weights).clamp(0.0, 1.0) }
+    Uncertain {
+        mean,
+        sigma,
+        p_hit: (hit / weights).clamp(0.0, 1.0),
+    }
 }
 
 fn fine_point(i: usize) -> (f64, f64) {
@@ -256,16 +307,30 @@ pub(crate) fn score(
         cautions,
     };
     match coverage(cell) {
-        Coverage::Unknown(_) => Score { cautions, ..Score::default() },
+        Coverage::Unknown(_) => Score {
+            cautions,
+            ..Score::default()
+        },
         Coverage::Nothing(channel, _) => nothing(channel),
         Coverage::Covered => {
-            let kinetics =
-                Kinetics::new(cell, cell.conditions.temperature_c, values, Nudge::default());
+            let kinetics = Kinetics::new(
+                cell,
+                cell.conditions.temperature_c,
+                values,
+                Nudge::default(),
+            );
             let pots = pots();
             let (centre, uncertain) = if is_negligible(cell, &kinetics) {
                 let centre = solve(cell, values, &pots);
                 let mean = centre.outcome.product;
-                (centre, Uncertain { mean, sigma: 0.0, p_hit: 0.0 })
+                (
+                    centre,
+                    Uncertain {
+                        mean,
+                        sigma: 0.0,
+                        p_hit: 0.0,
+                    },
+                )
             } else {
                 over_uncertainty(cell, values, &pots, yield_at_least)
             };

@@ -1,5 +1,6 @@
 //! `serve`: the engine behind gRPC.
 
+use std::io;
 use std::net::SocketAddr;
 use std::path::PathBuf;
 use std::sync::Arc;
@@ -54,6 +55,7 @@ impl Serve {
             threads: self.threads,
         };
         let engine = Arc::new(Engine::open(config).await?);
+        let stop = stop_signal().map_err(|error| Fault::service(error.to_string()))?;
         // A program that reads the log as JSON wants nothing else there.
         if let LogFormat::Text = self.log_format {
             talk(&format!(
@@ -62,27 +64,33 @@ impl Serve {
             ));
         }
         print(&format!("listening on {address}"))?;
-        let served = enolattice_server::serve(engine.clone(), listener, stop_signal()).await;
+        let served = enolattice_server::serve(engine.clone(), listener, stop).await;
         engine.shutdown().await;
         served.map_err(|error| Fault::service(error.to_string()))
     }
 }
 
-/// Waits for SIGTERM or ctrl-c.
-async fn stop_signal() {
-    let interrupt = tokio::signal::ctrl_c();
-    #[cfg(unix)]
-    if let Ok(mut terminate) =
-        tokio::signal::unix::signal(tokio::signal::unix::SignalKind::terminate())
-    {
+/// Ends at SIGTERM or ctrl-c; from this call on they are waited for and no longer end the process.
+#[cfg(unix)]
+fn stop_signal() -> io::Result<impl Future<Output = ()>> {
+    use tokio::signal::unix::{SignalKind, signal};
+    let mut interrupt = signal(SignalKind::interrupt())?;
+    let mut terminate = signal(SignalKind::terminate())?;
+    Ok(async move {
         tokio::select! {
-            _ = interrupt => {}
+            _ = interrupt.recv() => {}
             _ = terminate.recv() => {}
         }
-        return;
-    }
-    // Without a handler for signals only the end of the process stops the service.
-    if interrupt.await.is_err() {
-        std::future::pending::<()>().await;
-    }
+    })
+}
+
+/// Ends at ctrl-c.
+#[cfg(not(unix))]
+fn stop_signal() -> io::Result<impl Future<Output = ()>> {
+    Ok(async {
+        // Without a handler only the end of the process stops the service.
+        if tokio::signal::ctrl_c().await.is_err() {
+            std::future::pending::<()>().await;
+        }
+    })
 }

@@ -68,25 +68,25 @@ const DESTROYED_PKA: f64 = 5.0;
 /// Why the base never meets the substrate: nobody charges a metal amide or an alkyllithium into a
 /// solvent that it deprotonates; what is left is the solvent's own anion, to be charged as such.
 fn destroyed_by_solvent(cell: &Cell) -> Option<String> {
-    use enolattice_reagents::BaseKind;
+    use enolattice_reagents::{BaseKind, SolventClass};
     let record = &cell.base.record;
     if !matches!(record.kind, BaseKind::Amide | BaseKind::Organolithium) {
         return None;
     }
     let (acid, _) = cell.solvent.record.acid.as_ref()?;
-    (record.pka_dmso.value - acid.value > DESTROYED_PKA && is_protic_or_enolisable(cell)).then(|| {
+    let gap = record.pka_dmso.value - acid.value;
+    let is_destroyed = match cell.solvent.record.class {
+        // hydrogen bonds to the alkoxide make hydroxylic solvents far more acidic than in DMSO
+        SolventClass::Alcohol | SolventClass::Water => true,
+        SolventClass::Hydrocarbon => false,
+        _ => gap > DESTROYED_PKA,
+    };
+    is_destroyed.then(|| {
         format!(
-            "{} is destroyed by {} (pKa {:.1} against {:.1} on the DMSO scale): charge the anion of the solvent as base, or change the solvent",
-            record.name, cell.solvent.record.name, acid.value, record.pka_dmso.value
+            "{} is destroyed by {}: charge the anion of the solvent as base, or change the solvent",
+            record.name, cell.solvent.record.name
         )
     })
-}
-
-/// Hydroxylic solvents give up their proton at once, and so do ketones, esters and chloroform;
-/// hydrocarbons only on paper.
-fn is_protic_or_enolisable(cell: &Cell) -> bool {
-    use enolattice_reagents::SolventClass;
-    cell.solvent.record.class != SolventClass::Hydrocarbon
 }
 
 /// The standard uncertainties of a cell's two main quantities.

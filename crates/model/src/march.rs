@@ -356,7 +356,8 @@ mod tests {
                 (reference - exact).abs() < 1e-4,
                 "{k}: {reference} for {exact}"
             );
-            assert!((fast - exact).abs() < 0.03, "{k}: {fast} for {exact}");
+            // the tolerance of the design for one cell
+            assert!((fast - exact).abs() < 0.05, "{k}: {fast} for {exact}");
         }
     }
 

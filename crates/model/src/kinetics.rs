@@ -234,6 +234,13 @@ impl<'a> Kinetics<'a> {
         })
     }
 
+    /// Rate constant of elimination by a carbanion of the substrate, paired as it is for substitution.
+    pub(crate) fn elimination_by_carbanion(&self, site: &CarbonSite) -> f64 {
+        let nucleophile = self.substrate_carbanion(site);
+        let pairing = rates::pairing(&nucleophile, &self.medium, self.values, true);
+        self.elimination(self.site_pka(site)) * math::exp10(pairing)
+    }
+
     /// The substrate's heteroatom anion.
     pub(crate) fn heteroatom_nucleophile(&self) -> Option<Nucleophile> {
         let x = self.first_heteroatom()?;

@@ -185,7 +185,12 @@ pub(crate) fn oxygen_by_leaving_group(leaving: LeavingGroup) -> f64 {
 }
 
 /// Effect of contact ion pairs and aggregates on a nucleophile, log10.
-fn pairing(nucleophile: &Nucleophile, medium: &Medium, values: &Values, aggregates: bool) -> f64 {
+pub(crate) fn pairing(
+    nucleophile: &Nucleophile,
+    medium: &Medium,
+    values: &Values,
+    aggregates: bool,
+) -> f64 {
     if !medium.is_paired() || nucleophile.class == AnionClass::Neutral {
         return 0.0;
     }

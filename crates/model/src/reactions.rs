@@ -325,7 +325,7 @@ impl<'a> Reactions<'a> {
             };
             let oxygen = ratio.map_or(0.0, |ratio| rate * math::exp10(ratio));
             self.add(anion, e, &[Species::OxygenProduct], oxygen);
-            let eliminate = k.elimination(k.site_pka(site));
+            let eliminate = k.elimination_by_carbanion(site);
             self.add(anion, e, &[after, Species::Eliminated], eliminate);
             let ionise = k.ionisation(k.site_pka(site));
             self.add(anion, e, &[after, Species::Spent], ionise);

@@ -155,6 +155,31 @@ fn read(
     }
 }
 
+/// Yield of the wanted product with all parameters at `values` and the substrate's pKa shifted.
+pub(crate) fn yield_at(cell: &Cell, values: &Values, acidity: f64) -> Option<f64> {
+    match coverage(cell) {
+        Coverage::Unknown(_) => return None,
+        Coverage::Nothing(..) => return Some(0.0),
+        Coverage::Covered => {}
+    }
+    let nudge = Nudge {
+        acidity,
+        attack: 0.0,
+    };
+    let charge = Charge::of(cell);
+    let mut pots = [charge.start()];
+    if charge.forms_first() {
+        pots = march(&charge.forming(cell, values, [nudge]), pots);
+    }
+    let networks = charge.reacting(cell, values, [nudge]);
+    let [end] = march(&networks, pots);
+    Some(
+        read(cell, values, &networks[0], &end, &pots[0])
+            .outcome
+            .product,
+    )
+}
+
 /// Yields over the uncertainty of a cell.
 #[derive(Clone, Copy, Debug)]
 pub(crate) struct Uncertain {

@@ -201,8 +201,8 @@ impl Model {
     }
 }
 
-/// A standard normal deviate addressed by seed, draw and parameter, by SHA-256 and the inverse of
-/// the normal distribution (sum of twelve uniforms would cut the tails).
+/// A standard normal deviate addressed by seed, draw and parameter: two uniforms from SHA-256,
+/// transformed after Box and Muller, Ann. Math. Stat. 1958, 29, 610.
 fn standard_normal(seed: u64, number: u32, index: u64) -> f64 {
     let mut hash = Sha256::new();
     hash.update(seed.to_le_bytes());
@@ -213,7 +213,6 @@ fn standard_normal(seed: u64, number: u32, index: u64) -> f64 {
         let word = u64::from_le_bytes(bytes[from..from + 8].try_into().expect("eight bytes"));
         ((word >> 11) as f64 + 0.5) / (1u64 << 53) as f64
     };
-    // Box and Muller 1958
     let radius = (-2.0 * enolattice_units::math::ln(uniform(0))).sqrt();
     radius * enolattice_units::math::cos_turn(uniform(8))
 }

@@ -10,6 +10,23 @@ use crate::{Cell, Channel};
 /// A share of the substrate below which a loss is not named.
 const LEAST_LOSS: f64 = 5e-4;
 
+/// Working rules by which unreacted substrate is given to a reason; they move no yield (common practice).
+///
+/// Product below this share cannot have quenched the enolate.
+const QUENCHING_PRODUCT: f64 = 0.02;
+/// A dianion below this share means that the X–H took the base.
+const DIANION_FORMED: f64 = 0.5;
+/// Carbanion above this share means that the base was strong enough.
+const ENOLATE_FORMED: f64 = 0.3;
+/// Electrophile below this share is used up.
+const ELECTROPHILE_GONE: f64 = 0.05;
+/// Base undissolved above this share is the reason.
+const UNDISSOLVED: f64 = 0.5;
+/// Charge on the solvent above this share of the base levels it.
+const ON_SOLVENT: f64 = 0.4;
+/// Base left below this share was levelled.
+const BASE_LEFT: f64 = 0.1;
+
 /// What became of the substrate, as shares of what was charged.
 #[derive(Clone, Debug)]
 pub(crate) struct Outcome {
@@ -112,7 +129,7 @@ impl Unreacted<'_> {
             }
         };
         give(Channel::TooLittleReagent, self.missing_reagent(), &mut left);
-        if product > 0.02 {
+        if product > QUENCHING_PRODUCT {
             give(Channel::ProductQuenchesEnolate, self.quenched(), &mut left);
         }
         let reason = self
@@ -157,21 +174,23 @@ impl Unreacted<'_> {
         let charged = self.network.charged[0];
         if self.kinetics.first_heteroatom().is_some() {
             let on_carbon = self.formed.carbanions() / charged;
-            if on_carbon < 0.5 {
+            if on_carbon < DIANION_FORMED {
                 return Some(Channel::CompetingAcid);
             }
         }
         let enolate = self.end.carbanions().max(self.formed.carbanions()) / charged;
         let electrophile_left =
             self.end.of(Species::Electrophile) / self.network.charged[2].max(1e-12);
-        if enolate > 0.3 || electrophile_left < 0.05 && self.network.charged[2] >= charged {
+        if enolate > ENOLATE_FORMED
+            || electrophile_left < ELECTROPHILE_GONE && self.network.charged[2] >= charged
+        {
             return self.levelled_early();
         }
         if self.would_be_slow_anyway() {
             return None;
         }
         let undissolved = self.end.of(Species::Solid) / self.network.charged[1].max(1e-12);
-        if undissolved > 0.5 {
+        if undissolved > UNDISSOLVED {
             return Some(Channel::InsolubleBase);
         }
         self.levelled_early().or(Some(Channel::WeakBase))
@@ -184,12 +203,12 @@ impl Unreacted<'_> {
         let stronger = self.kinetics.pka(acid.value, *class) + 1.0 < self.kinetics.pka_base();
         let enolate = self.formed.carbanions() / self.network.charged[0];
         let on_solvent = self.formed.of(Species::SolventAnion) + self.formed.of(Species::Lyate);
-        let most = on_solvent > 0.4 * self.network.charged[1];
+        let most = on_solvent > ON_SOLVENT * self.network.charged[1];
         let own_lyate = *class == AnionClass::Alkoxide && (acid.value - base).abs() < 0.5;
         (stronger
             && !own_lyate
-            && enolate < 0.3
-            && (most || self.formed.of(Species::Base) < 0.1 * self.network.charged[1]))
+            && enolate < ENOLATE_FORMED
+            && (most || self.formed.of(Species::Base) < BASE_LEFT * self.network.charged[1]))
             .then_some(Channel::SolventLevelsBase)
     }
 

@@ -24,8 +24,20 @@ TOLERANCES = {
     "viscosity_mpa_s": (0.0, 0.05),
 }
 
+# Values where the package is not followed, and why.
+EXCEPTIONS = {
+    ("DMPU", "boiling_c"): "246 C in handbooks (from memory); the package's is one under reduced pressure",
+    ("dihydrolevoglucosenone", "melting_c"): "a liquid at room temperature (common practice)",
+    ("trifluorotoluene", "flash_c"): "12 C on labels (from memory)",
+    ("PhCN", "flash_c"): "71 C on labels (from memory)",
+    ("ethylene glycol", "flash_c"): "111 C on labels (from memory)",
+    ("NH3", "permittivity"): "at the boiling point, as it is used",
+    ("NH3", "density_g_ml"): "at the boiling point, as it is used",
+    ("NH3", "viscosity_mpa_s"): "at the boiling point, as it is used",
+}
+
 # Values that the package knew when this was written; fewer means that the check is broken.
-LEAST_COMPARED = 120
+LEAST_COMPARED = 325
 
 
 def celsius(kelvin):
@@ -74,7 +86,7 @@ REFERENCES = {
 
 
 def main():
-    compared, faults = 0, []
+    compared, faults, needed = 0, [], set()
     for row in rows("solvents"):
         for column, (absolute, fraction) in TOLERANCES.items():
             reference = REFERENCES[column](row["cas"])
@@ -82,8 +94,13 @@ def main():
                 continue
             compared += 1
             ours = float(row[column])
-            if abs(ours - reference) > max(absolute, fraction * abs(reference)):
+            if abs(ours - reference) <= max(absolute, fraction * abs(reference)):
+                continue
+            if (row["name"], column) in EXCEPTIONS:
+                needed.add((row["name"], column))
+            else:
                 faults.append(f"{row['name']}, {column}: {ours} here, {reference:.4g} there")
+    faults += [f"exception {what} is not needed" for what in EXCEPTIONS if what not in needed]
     if compared < LEAST_COMPARED:
         faults.append(f"only {compared} values could be compared")
     return report("solvents", compared, faults)

@@ -220,8 +220,11 @@ def test_many_faults_do_not_burst_the_trailers(jobs, stubs):
     request = stubs.job.SubmitJobRequest(campaign=campaign, validate_only=True)
     _, info, bad = refusal(lambda: jobs.SubmitJob(request))
     assert info.metadata["faults"] == "300"
-    assert 0 < len(bad.field_violations) < 300
-    assert int(info.metadata["faults_listed"]) == len(bad.field_violations)
+    listed = int(info.metadata["faults_listed"])
+    assert 0 < listed < 200
+    assert len(bad.field_violations) == listed + 1
+    assert bad.field_violations[-1].reason == "MORE_FAULTS"
+    assert f"{300 - listed} more faults" in bad.field_violations[-1].description
 
 
 def test_a_client_that_takes_large_trailers_gets_every_fault(server, stubs):
@@ -236,7 +239,49 @@ def test_a_client_that_takes_large_trailers_gets_every_fault(server, stubs):
         jobs = stubs.job_service_grpc.JobServiceStub(channel)
         metadata = [("enolattice-detail-bytes", "500000")]
         _, _, bad = refusal(lambda: jobs.SubmitJob(request, metadata=metadata))
-    assert len(bad.field_violations) == 300
+    assert len(bad.field_violations) == 201
+    assert "100 more faults" in bad.field_violations[-1].description
+
+
+def test_faults_of_the_message_and_of_its_names_come_in_one_answer(jobs, stubs):
+    campaign = small_campaign(stubs)
+    campaign.solvents.media[1].components.append(stubs.reagent.SolventComponent())
+    campaign.bases.reagents[0].name = "LDDA"
+    campaign.substrates[0].stock.price_per_g = 12.5
+    request = stubs.job.SubmitJobRequest(campaign=campaign, request_id="x" * 200)
+    _, _, bad = refusal(lambda: jobs.SubmitJob(request))
+    told = [violation.field for violation in bad.field_violations]
+    assert "request_id" in told
+    assert "campaign.solvents.media[1].components[1].solvent.name" in told
+    assert "campaign.bases.reagents[0]" in told
+    assert "campaign.substrates[0].currency" in told
+
+
+def test_mixtures_additives_and_a_dry_run(jobs, stubs):
+    campaign = small_campaign(stubs)
+    parts = (("THF", 0.8), ("DMF", 0.2))
+    campaign.solvents.media[1].CopyFrom(
+        stubs.reagent.Medium(
+            components=[
+                stubs.reagent.SolventComponent(
+                    solvent=stubs.reagent.Reagent(name=name), volume_fraction=part
+                )
+                for name, part in parts
+            ]
+        )
+    )
+    hmpa = stubs.reagent.Additive(reagent=stubs.reagent.Reagent(name="HMPA"), equiv=2.0)
+    campaign.additives.sets.extend(
+        [stubs.reagent.AdditiveSet(), stubs.reagent.AdditiveSet(additives=[hmpa])]
+    )
+    campaign.substrates[0].stock.stock_mg = 500
+    request = stubs.job.SubmitJobRequest(campaign=campaign, dry_run=True)
+    answer = jobs.SubmitJob(request)
+    assert (answer.job_id, answer.cells) == ("", 48)
+    sizes = {size.axis: size.values for size in answer.dry_run.axes}
+    assert (sizes["additives"], sizes["solvents"]) == (2, 2)
+    assert answer.dry_run.cells_scored == answer.dry_run.cells_looked_at == 48
+    assert answer.dry_run.disk_bytes > 0
 
 
 def test_unknown_things_have_their_reasons(jobs, chemistry, stubs, done):

@@ -199,7 +199,9 @@ fn cell(model: &Model, recipe: &Recipe) -> Result<Cell, String> {
         base: Arc::new(model.base(base)),
         electrophile: Arc::new(electrophile),
         solvent: Arc::new(model.solvent(solvent)),
+        additive: None,
         conditions: Conditions {
+            additive_equiv: 0.0,
             temperature_c: recipe.temperature_c,
             formation_temperature_c: recipe
                 .formation_temperature_c

@@ -3,4 +3,6 @@
 pub mod acidity_fit;
 pub mod balance;
 pub mod cases;
+pub mod medium;
+pub mod reactions;
 pub mod solvers;

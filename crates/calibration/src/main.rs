@@ -5,7 +5,7 @@ use std::process::ExitCode;
 use std::sync::Arc;
 
 use clap::{Parser, Subcommand};
-use enolattice_calibration::{acidity_fit, balance, cases, solvers};
+use enolattice_calibration::{acidity_fit, balance, cases, medium, reactions, solvers};
 use enolattice_model::Model;
 use enolattice_reagents::Library;
 
@@ -24,6 +24,10 @@ enum Command {
     Balance,
     /// Holds the cases of the trade against the model.
     Cases,
+    /// Holds the medium against published pKa in several solvents and writes the page on it.
+    Medium,
+    /// Holds published reactions against the model.
+    Reactions,
     /// Compares the fast solver with the stiff reference on random cells.
     Solvers {
         /// Number of cells.
@@ -55,6 +59,14 @@ fn run(arguments: &Arguments) -> Result<(), String> {
         Command::Balance => writeln!(std::io::stdout().lock(), "{}", balance::to_json())
             .map_err(|error| error.to_string()),
         Command::Cases => cases::print(&model()?, &mut std::io::stdout().lock()),
+        Command::Medium => {
+            let page = medium::page(&model()?)?;
+            let place = concat!(env!("CARGO_MANIFEST_DIR"), "/docs/medium.md");
+            std::fs::write(place, &page).map_err(|error| format!("{place}: {error}"))?;
+            write!(std::io::stdout().lock(), "{page}").map_err(|error| error.to_string())
+        }
+        Command::Reactions => write!(std::io::stdout().lock(), "{}", reactions::page(&model()?)?)
+            .map_err(|error| error.to_string()),
         Command::Solvers { cells } => {
             solvers::print(&model()?, cells, &mut std::io::stdout().lock())
         }

@@ -48,11 +48,14 @@ impl Sampler {
     }
 }
 
-/// Compares both solvers on `count` random covered cells.
+/// Cells solved by both solvers, and those on which the reference gave up, with its reason.
+pub type Compared = (Vec<Comparison>, Vec<String>);
+
+/// Compares both solvers on `count` random cells that the model covers.
 ///
 /// # Errors
-/// A sentence if the demo's substrates cannot be read or the reference gives up on a cell.
-pub fn compare(model: &Model, count: usize) -> Result<Vec<Comparison>, String> {
+/// A sentence if the demo's substrates cannot be read.
+pub fn compare(model: &Model, count: usize) -> Result<Compared, String> {
     let substrates = demo_substrates(model)?;
     let library = model.library();
     let bases: Vec<Arc<Base>> = library
@@ -75,7 +78,7 @@ pub fn compare(model: &Model, count: usize) -> Result<Vec<Comparison>, String> {
         })
         .collect();
     let mut sampler = Sampler { state: 20_261_201 };
-    let mut found = Vec::with_capacity(count);
+    let (mut found, mut given_up) = (Vec::with_capacity(count), Vec::new());
     while found.len() < count {
         let substrate = substrates[sampler.pick(substrates.len())].clone();
         let electrophile = electrophiles[sampler.pick(electrophiles.len())].clone();
@@ -87,7 +90,9 @@ pub fn compare(model: &Model, count: usize) -> Result<Vec<Comparison>, String> {
             pair,
             base: bases[sampler.pick(bases.len())].clone(),
             solvent: solvents[sampler.pick(solvents.len())].clone(),
+            additive: None,
             conditions: Conditions {
+                additive_equiv: 0.0,
                 temperature_c,
                 formation_temperature_c: temperature_c,
                 base_equiv: [0.1, 1.1, 2.2][sampler.pick(3)],
@@ -98,18 +103,17 @@ pub fn compare(model: &Model, count: usize) -> Result<Vec<Comparison>, String> {
                 addition: None,
             },
         };
-        if let Some((fast, reference)) = model
-            .both_solvers(&cell)
-            .map_err(|e| format!("{}: {e}", words(&cell)))?
-        {
-            found.push(Comparison {
+        match model.both_solvers(&cell) {
+            Ok(Some((fast, reference))) => found.push(Comparison {
                 cell: words(&cell),
                 fast,
                 reference,
-            });
+            }),
+            Ok(None) => {}
+            Err(error) => given_up.push(format!("{}: {error}", words(&cell))),
         }
     }
-    Ok(found)
+    Ok((found, given_up))
 }
 
 fn words(cell: &Cell) -> String {
@@ -188,7 +192,7 @@ fn close_share<'a>(comparisons: impl Iterator<Item = &'a Comparison>) -> f64 {
 /// # Errors
 /// As [`compare`].
 pub fn print(model: &Model, count: usize, out: &mut impl std::io::Write) -> Result<(), String> {
-    let mut found = compare(model, count)?;
+    let (mut found, given_up) = compare(model, count)?;
     let nontrivial = found.iter().filter(|c| !c.is_trivial()).count();
     let fast: Vec<f64> = found.iter().map(|c| c.fast).collect();
     let reference: Vec<f64> = found.iter().map(|c| c.reference).collect();
@@ -207,6 +211,9 @@ pub fn print(model: &Model, count: usize, out: &mut impl std::io::Write) -> Resu
             "  fast {:.3}, reference {:.3}: {}\n",
             c.fast, c.reference, c.cell
         );
+    }
+    for cell in &given_up {
+        text += &format!("  the reference gave up: {cell}\n");
     }
     out.write_all(text.as_bytes())
         .map_err(|error| error.to_string())

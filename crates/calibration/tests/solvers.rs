@@ -9,7 +9,8 @@ use enolattice_reagents::Library;
 #[test]
 fn most_random_cells_agree_within_five_percent() {
     let model = Model::new(Arc::new(Library::builtin().expect("the library reads")));
-    let found = solvers::compare(&model, 200).expect("the reference integrates every cell");
+    let (found, given_up) = solvers::compare(&model, 200).expect("the demo's substrates read");
+    assert!(given_up.len() <= 2, "{given_up:?}");
     let close = found
         .iter()
         .filter(|c| (c.fast - c.reference).abs() <= 0.05)

@@ -4,16 +4,15 @@ use std::collections::BTreeMap;
 use std::fs;
 use std::path::{Path, PathBuf};
 
-use enolattice_grid::{CampaignSpec, InputError, Sources, files_named, read, read_against};
-use enolattice_reagents::Library;
+use enolattice_grid::{CampaignSpec, MAX_FILE_BYTES, Reading, Sources, files_named, read};
+use enolattice_reagents::OwnTable;
 
+use crate::client::Client;
 use crate::fault::Fault;
-
-/// Largest file that is read, bytes.
-const LARGEST_BYTES: u64 = 256 << 20;
+use crate::output::talk;
 
 /// Reads a campaign; the files that it names are looked for beside it.
-pub(crate) fn read_campaign(path: &Path) -> Result<CampaignSpec, Fault> {
+pub(crate) fn read_campaign(path: &Path) -> Result<Reading, Fault> {
     let shown = path.display().to_string();
     let bytes = read_file(path).map_err(|reason| unreadable(&shown, &reason))?;
     let campaign =
@@ -24,26 +23,45 @@ pub(crate) fn read_campaign(path: &Path) -> Result<CampaignSpec, Fault> {
         // A file that cannot be read stays out: the campaign's reader knows the line that names it.
         match read_file(&folder.join(&name)) {
             Ok(bytes) => drop(files.insert(name, bytes)),
-            Err(reason) => {
-                crate::output::talk(&format!("{}: {reason}", folder.join(&name).display()))
-            }
+            Err(reason) => talk(&format!("{}: {reason}", folder.join(&name).display())),
         }
     }
-    let sources = Sources {
+    Ok(read(&Sources {
         campaign_name: shown,
         campaign,
         files,
-    };
-    read(&sources).map_err(|faults| Fault::Input(with_unknown_names(&sources, faults)))
+    }))
 }
 
-/// Adds the names of reagents that the library of this program does not know to the faults of a
-/// campaign that is refused anyway. A sound one is left to the library of its engine.
-fn with_unknown_names(sources: &Sources, faults: Vec<InputError>) -> Vec<InputError> {
-    let Ok(library) = Library::builtin() else {
-        return faults;
-    };
-    read_against(sources, &library).err().unwrap_or(faults)
+/// The campaign, if its text and files are sound. If not, the engine is asked for the faults of what
+/// could be read, so that the user sees all in one list.
+pub(crate) async fn sound(reading: Reading, client: &Client) -> Result<CampaignSpec, Fault> {
+    if reading.faults.is_empty() {
+        return Ok(reading.spec);
+    }
+    match client.faults(reading.spec.clone()).await {
+        Ok(found) => Err(Fault::Input(reading.with(found))),
+        Err(error) => {
+            talk(&format!("names and structures were not looked at: {error}"));
+            Err(Fault::Input(reading.faults))
+        }
+    }
+}
+
+/// The laboratory's own tables that the command line names.
+pub(crate) fn own_tables(files: &[PathBuf]) -> Result<Vec<OwnTable>, Fault> {
+    let mut tables = Vec::with_capacity(files.len());
+    for file in files {
+        let name = file.display().to_string();
+        let text = read_file(file)
+            .and_then(|bytes| String::from_utf8(bytes).map_err(|_| "it is no UTF-8 text".into()));
+        let text = text.map_err(|reason| {
+            let remedy = "give the path of a table of reagents";
+            Fault::option("--library", &name, "FILE_MISSING", &reason, remedy)
+        })?;
+        tables.push(OwnTable { name, text });
+    }
+    Ok(tables)
 }
 
 fn unreadable(path: &str, reason: &str) -> Fault {
@@ -61,9 +79,9 @@ fn read_file(path: &Path) -> Result<Vec<u8>, String> {
     if !about.is_file() {
         return Err("it is no file".to_owned());
     }
-    if about.len() > LARGEST_BYTES {
+    if about.len() > MAX_FILE_BYTES as u64 {
         return Err(format!(
-            "it has {} bytes, more than {LARGEST_BYTES}",
+            "it has {} bytes, more than {MAX_FILE_BYTES}",
             about.len()
         ));
     }

@@ -1,11 +1,13 @@
 //! An engine in this process or behind a server: the commands cannot tell them apart.
 
 use enolattice_engine::{
-    CellDescription, Engine, EngineConfig, ExplainTarget, Job, RankPage, RankQuery, ReagentRow,
-    SiteReport, Submission,
+    CellDescription, DryRun, Engine, EngineConfig, ExplainTarget, Job, RankPage, RankQuery,
+    ReagentRow, SiteReport, Submission,
 };
+use enolattice_grid::{CampaignSpec, InputError};
 use enolattice_model::Explanation;
 
+use crate::campaign_file::own_tables;
 use crate::commands::EngineOptions;
 use crate::fault::Fault;
 
@@ -54,9 +56,10 @@ impl Client {
         let config = EngineConfig {
             data_dir: options.data_dir(),
             threads: options.threads,
+            library: own_tables(&options.library)?,
         };
         Ok(Client::Embedded(match need {
-            Need::Chemistry => Engine::without_data().await?,
+            Need::Chemistry => Engine::without_data(config.threads, config.library).await?,
             Need::Jobs => Engine::open_idle(config).await?,
             Need::Work => Engine::open(config).await?,
         }))
@@ -71,6 +74,21 @@ impl Client {
         match self {
             Client::Embedded(engine) => Ok(engine.submit(submission).await?),
             Client::Remote(server) => Ok(server.submit(submission).await?),
+        }
+    }
+
+    /// Every fault in the values of a campaign.
+    pub(crate) async fn faults(&self, campaign: CampaignSpec) -> Result<Vec<InputError>, Fault> {
+        match self {
+            Client::Embedded(engine) => Ok(engine.faults(campaign).await?),
+            Client::Remote(server) => Ok(server.faults(campaign).await?),
+        }
+    }
+
+    pub(crate) async fn dry_run(&self, campaign: CampaignSpec) -> Result<DryRun, Fault> {
+        match self {
+            Client::Embedded(engine) => Ok(engine.dry_run(campaign).await?),
+            Client::Remote(server) => Ok(server.dry_run(campaign).await?),
         }
     }
 

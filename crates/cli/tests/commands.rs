@@ -17,7 +17,7 @@ file = "substrates.csv"
 library = ["LDA", "K2CO3"]
 [electrophiles]
 library = ["MeI"]
-smiles = ["C1CO1"]
+smiles = ["C=C=C"]
 [solvents]
 library = ["THF", "DMF"]
 [conditions]
@@ -273,6 +273,77 @@ fn sites_from_arguments_and_stdin_are_the_same() {
             Value::Null
         );
     }
+}
+
+#[test]
+fn a_dry_run_says_what_a_campaign_takes_and_leaves_nothing_behind() {
+    let folder = folder();
+    let folder = folder.path();
+    let run = json(folder, &["screen", "campaign.toml", "--dry-run", "--json"]);
+    let screened = json(
+        folder,
+        &["screen", "campaign.toml", "--json", "--data", "kept"],
+    );
+    assert_eq!(run["cells"], screened["job"]["cells"]);
+    assert_eq!(
+        run["cells_scored_not_covered"],
+        screened["cells_not_covered"]
+    );
+    assert_eq!(
+        run["campaign_fingerprint"],
+        screened["job"]["campaign_fingerprint"]
+    );
+    assert_eq!(run["not_covered"][0]["axis"], "electrophile");
+    for measure in ["seconds", "disk_bytes", "memory_bytes"] {
+        assert!(
+            run[measure].as_f64().is_some_and(|number| number > 0.0),
+            "{measure}"
+        );
+    }
+    let page = stdout(folder, &["screen", "campaign.toml", "--dry-run"]);
+    for part in [
+        "cells: ",
+        "what it takes",
+        "Not covered by the model",
+        "Severe cautions",
+    ] {
+        assert!(page.contains(part), "{part}: {page}");
+    }
+    assert!(
+        !folder.join("enolattice-data").exists(),
+        "no data directory is made"
+    );
+}
+
+#[test]
+fn a_cell_may_have_a_mixture_and_an_additive() {
+    let folder = folder();
+    let given = [
+        "explain",
+        "--substrate",
+        "CCOC(=O)CC(=O)OCC.Cl",
+        "--base",
+        "K2CO3",
+        "--electrophile",
+        "MeI",
+        "--solvent",
+        "THF/DMF 4:1",
+        "--additive",
+        "18-crown-6",
+        "--temperature-c",
+        "25",
+        "--json",
+    ];
+    let told = json(folder.path(), &given);
+    assert_eq!(told["cell"]["additive"], "18-crown-6");
+    assert_eq!(told["cell"]["additive_equiv"], 1.1);
+    assert!(
+        told["cell"]["solvent"]
+            .as_str()
+            .is_some_and(|name| name.contains('/'))
+    );
+    let limits = told["limits"].to_string();
+    assert!(limits.contains("hydrogen chloride"), "{limits}");
 }
 
 #[test]

@@ -7,6 +7,7 @@ use enolattice_scheduler::{Event, Scheduler, transition};
 use enolattice_store::{JobId, StateChange, Store};
 
 use crate::grids::Grids;
+use crate::models::Models;
 use crate::open::now_unix_ms;
 use crate::watch::Watchers;
 use crate::{EngineError, Job};
@@ -17,8 +18,11 @@ use crate::{EngineError, Job};
 /// blocking threads or the scheduler's own pool.
 #[derive(Debug)]
 pub struct Engine {
-    pub(crate) model: Arc<Model>,
+    pub(crate) models: Arc<Models>,
+    /// Compute threads; 0: one for each core.
+    pub(crate) threads: usize,
     pub(crate) queue: Option<Queue>,
+    pub(crate) notices: Vec<String>,
 }
 
 /// What an engine with a data directory has.
@@ -29,19 +33,24 @@ pub(crate) struct Queue {
     pub(crate) watchers: Arc<Watchers>,
     /// Absent where the engine only looks at its jobs.
     pub(crate) scheduler: Option<Scheduler>,
-    pub(crate) notices: Vec<String>,
 }
 
 impl Engine {
-    /// What the user should know about the data directory as it was found: a broken
-    /// database set aside, jobs queued again. Empty where all is well.
+    /// What the user should know about the data directory as it was found (a broken database set
+    /// aside, jobs queued again), and where the laboratory's own tables differ from the library.
+    /// Empty where all is well.
     pub fn notices(&self) -> &[String] {
-        self.queue.as_ref().map_or(&[], |queue| &queue.notices)
+        &self.notices
+    }
+
+    /// The engine's model; a campaign with a library of its own has another.
+    pub(crate) fn model(&self) -> &Arc<Model> {
+        self.models.engine()
     }
 
     /// Fingerprint of the model, hexadecimal.
     pub fn model_fingerprint(&self) -> String {
-        self.model.fingerprint().to_string()
+        self.model().fingerprint().to_string()
     }
 
     /// All jobs, newest first.

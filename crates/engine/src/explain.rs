@@ -1,7 +1,9 @@
 //! Everything about one cell.
 
+use std::sync::Arc;
+
 use enolattice_grid::CellId;
-use enolattice_model::{Cell, Explanation};
+use enolattice_model::{Cell, Explanation, Model};
 
 use crate::engine::{blocking, job_id};
 use crate::{CellDescription, Engine, EngineError, ExplainTarget, given};
@@ -10,9 +12,12 @@ use crate::{CellDescription, Engine, EngineError, ExplainTarget, given};
 struct Target {
     number: Option<u64>,
     cell: Cell,
+    model: Arc<Model>,
     yield_at_least: f64,
     /// Fingerprint of the model that scored the cell's job.
     scored_with: Option<String>,
+    /// What was changed of a given cell on the way in.
+    warnings: Vec<String>,
 }
 
 impl Engine {
@@ -23,9 +28,9 @@ impl Engine {
     /// [`EngineError::CellUnknown`], [`EngineError::Model`].
     pub async fn explain(&self, target: ExplainTarget) -> Result<Explanation, EngineError> {
         let target = self.target(target).await?;
-        let model = self.model.clone();
         blocking(move || {
-            let mut explanation = model.explain(&target.cell, target.yield_at_least)?;
+            let mut explanation = target.model.explain(&target.cell, target.yield_at_least)?;
+            explanation.limits.extend(target.warnings);
             if target.scored_with.is_some_and(|scored_with| scored_with != explanation.model) {
                 explanation.limits.push(
                     "The model has changed since the job was screened: these numbers are of the present \
@@ -50,14 +55,16 @@ impl Engine {
     async fn target(&self, target: ExplainTarget) -> Result<Target, EngineError> {
         match target {
             ExplainTarget::Given(query) => {
-                let model = self.model.clone();
+                let model = self.model().clone();
                 blocking(move || {
-                    let cell = given::cell(&query, &model)?;
+                    let (cell, warnings) = given::cell(&query, &model)?;
                     Ok(Target {
                         number: None,
                         cell,
+                        model,
                         yield_at_least: query.yield_at_least,
                         scored_with: None,
+                        warnings,
                     })
                 })
                 .await
@@ -78,8 +85,10 @@ impl Engine {
                     Ok(Target {
                         number: Some(number),
                         cell,
+                        model: grid.model().clone(),
                         yield_at_least: grid.campaign().yield_at_least,
                         scored_with: Some(record.model_fingerprint.to_string()),
+                        warnings: Vec::new(),
                     })
                 })
                 .await
@@ -99,10 +108,15 @@ impl CellDescription {
             electrophile: cell.electrophile.name.clone(),
             electrophile_smiles: cell.electrophile.molecule.smiles().to_owned(),
             solvent: cell.solvent.record.name.clone(),
+            additive: cell
+                .additive
+                .as_ref()
+                .map(|known| known.record.name.clone()),
             temperature_c: conditions.temperature_c,
             formation_temperature_c: conditions.formation_temperature_c,
             base_equiv: conditions.base_equiv,
             electrophile_equiv: conditions.electrophile_equiv,
+            additive_equiv: cell.additive.as_ref().map(|_| conditions.additive_equiv),
             concentration_m: conditions.concentration_m,
             time_h: conditions.time_h,
             dosing_min: conditions.dosing_min,

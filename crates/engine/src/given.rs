@@ -6,19 +6,24 @@ use enolattice_grid::{
 };
 use enolattice_model::{Cell, Model};
 use enolattice_molecule::Molecule;
+use enolattice_reagents::Library;
 use std::sync::Arc;
 
 use crate::{CellQuery, EngineError};
 
-/// Checks and prepares a cell.
+/// Checks and prepares a cell; says what was changed on the way in.
 ///
 /// # Errors
 /// [`EngineError::Input`] with every fault, named as the fields of [`CellQuery`].
-pub(crate) fn cell(query: &CellQuery, model: &Arc<Model>) -> Result<Cell, EngineError> {
-    let campaign = Campaign::new(&campaign_of_one(query, model), model)
+pub(crate) fn cell(
+    query: &CellQuery,
+    model: &Arc<Model>,
+) -> Result<(Cell, Vec<String>), EngineError> {
+    let campaign = Campaign::new(&campaign_of_one(query, model.library()), model)
         .map_err(|faults| EngineError::Input(faults.into_iter().map(as_field).collect()))?;
+    let warnings = campaign.warnings.clone();
     let grid = Grid::new(campaign, model.clone())?;
-    grid.cell(CellId(0)).ok_or_else(|| {
+    let cell = grid.cell(CellId(0)).ok_or_else(|| {
         EngineError::field(
             "cell",
             "",
@@ -26,40 +31,33 @@ pub(crate) fn cell(query: &CellQuery, model: &Arc<Model>) -> Result<Cell, Engine
             "the cell has an empty axis",
             "name every reagent",
         )
-    })
+    })?;
+    Ok((cell, warnings))
 }
 
-fn campaign_of_one(query: &CellQuery, model: &Model) -> CampaignSpec {
-    let library = model.library();
+fn campaign_of_one(query: &CellQuery, library: &Library) -> CampaignSpec {
     let place = |field: &str| Place {
         field: field.to_owned(),
         ..Place::default()
     };
-    let named = |field: &str, name: &str| AxisSpec {
+    // What is no name of the library may be a structure: the campaign looks at both.
+    let axis = |field: &str, word: &String, is_name: bool| AxisSpec {
         all: false,
         entries: vec![Entry {
-            name: name.to_owned(),
-            smiles: String::new(),
+            name: if is_name { word.clone() } else { String::new() },
+            smiles: if is_name { String::new() } else { word.clone() },
             place: place(field),
+            ..Entry::default()
         }],
     };
-    // Salts are no molecules, so a base given by SMILES is looked for as the table writes it.
-    let base = library
-        .bases()
-        .iter()
-        .find(|base| base.smiles == query.base);
-    let solvent = library
-        .solvents()
-        .iter()
-        .find(|solvent| is_same(&solvent.smiles, &query.solvent));
-    let mut electrophiles = named("electrophile", &query.electrophile);
-    if library.electrophile(&query.electrophile).is_none()
-        && Molecule::parse(&query.electrophile).is_ok()
-    {
-        for entry in &mut electrophiles.entries {
-            entry.smiles = std::mem::take(&mut entry.name);
-        }
-    }
+    let is_structure = |word: &str| Molecule::parse_salt(word).is_ok();
+    let electrophile = &query.electrophile;
+    let is_named = library.electrophile(electrophile).is_some() || !is_structure(electrophile);
+    let by_either = |field: &str, word: &String| {
+        let mut axis = axis(field, word, true);
+        axis.entries[0].smiles = word.clone();
+        axis
+    };
     CampaignSpec {
         title: "one cell".to_owned(),
         substrates: vec![SubstrateEntry {
@@ -68,18 +66,19 @@ fn campaign_of_one(query: &CellQuery, model: &Model) -> CampaignSpec {
             place: place("substrate"),
             ..SubstrateEntry::default()
         }],
-        bases: named("base", base.map_or(&query.base, |base| &base.name)),
-        electrophiles,
-        solvents: named(
-            "solvent",
-            solvent.map_or(&query.solvent, |solvent| &solvent.name),
-        ),
-        additives: AxisSpec::default(),
+        bases: by_either("base", &query.base),
+        electrophiles: axis("electrophile", electrophile, is_named),
+        solvents: by_either("solvent", &query.solvent),
+        additives: match &query.additive {
+            Some(additive) => by_either("additive", additive),
+            None => AxisSpec::default(),
+        },
         conditions: ConditionsSpec {
             temperature_c: vec![query.temperature_c],
             formation_temperature_c: query.formation_temperature_c.into_iter().collect(),
             base_equiv: vec![query.base_equiv],
             electrophile_equiv: vec![query.electrophile_equiv],
+            additive_equiv: query.additive_equiv.into_iter().collect(),
             concentration_m: vec![query.concentration_m],
             time_h: vec![query.time_h],
             dosing_min: vec![query.dosing_min],
@@ -88,21 +87,14 @@ fn campaign_of_one(query: &CellQuery, model: &Model) -> CampaignSpec {
         target: TargetSpec {
             yield_at_least: Some(query.yield_at_least),
         },
-    }
-}
-
-/// Whether two SMILES are the same molecule.
-fn is_same(known: &str, given: &str) -> bool {
-    match (Molecule::parse(known), Molecule::parse(given)) {
-        (Ok(known), Ok(given)) => known.canonical() == given.canonical(),
-        _ => false,
+        ..CampaignSpec::default()
     }
 }
 
 /// A fault of the campaign of one cell as a fault of the cell: `conditions.time_h[0]` is `time_h`.
 fn as_field(mut fault: InputError) -> InputError {
     let field = fault.place.field.as_str();
-    let known = ["substrate", "base", "electrophile", "solvent"];
+    let known = ["substrate", "base", "electrophile", "solvent", "additive"];
     let first = field.split(['.', '[']).next().unwrap_or_default();
     let name = if known.contains(&first) {
         first

@@ -3,11 +3,11 @@
 use std::collections::HashMap;
 use std::sync::{Arc, Mutex, PoisonError};
 
-use enolattice_grid::{Campaign, CampaignSpec, Grid};
-use enolattice_model::Model;
+use enolattice_grid::Grid;
 use enolattice_store::{JobId, JobRecord};
 
 use crate::EngineError;
+use crate::models::Models;
 
 /// Grids kept at most; a large campaign's takes tens of megabytes.
 const MOST_KEPT: usize = 8;
@@ -15,22 +15,16 @@ const MOST_KEPT: usize = 8;
 /// Grids by job.
 #[derive(Debug)]
 pub(crate) struct Grids {
-    model: Arc<Model>,
+    models: Arc<Models>,
     kept: Mutex<HashMap<JobId, Arc<Grid>>>,
 }
 
 impl Grids {
-    pub(crate) fn new(model: Arc<Model>) -> Grids {
+    pub(crate) fn new(models: Arc<Models>) -> Grids {
         Grids {
-            model,
+            models,
             kept: Mutex::default(),
         }
-    }
-
-    /// Checks a campaign and builds its grid. Takes time.
-    pub(crate) fn build(&self, spec: &CampaignSpec) -> Result<Arc<Grid>, EngineError> {
-        let campaign = Campaign::new(spec, &self.model).map_err(EngineError::Input)?;
-        Ok(Arc::new(Grid::new(campaign, self.model.clone())?))
     }
 
     /// Keeps the grid of a job.
@@ -53,7 +47,7 @@ impl Grids {
         if let Some(grid) = self.kept(record.id) {
             return Ok(grid);
         }
-        let grid = self.build(&record.spec)?;
+        let grid = self.models.grid(&record.spec)?;
         if grid.fingerprint() != record.campaign_fingerprint {
             return Err(EngineError::WrongState {
                 job: record.id.to_string(),

@@ -2,6 +2,7 @@
 //!
 //! Used embedded by the command line and behind the server, so that both give the same answer.
 
+mod dry_run;
 mod engine;
 mod error;
 mod explain;
@@ -9,6 +10,7 @@ mod filter;
 mod given;
 mod grids;
 mod job;
+mod models;
 mod nearest;
 mod open;
 mod query;
@@ -18,6 +20,7 @@ mod sites;
 mod submit;
 mod watch;
 
+pub use dry_run::{AxisSize, DryRun, NotCovered};
 pub use engine::Engine;
 pub use error::EngineError;
 pub use job::{Job, JobState, Submission};

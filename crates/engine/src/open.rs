@@ -4,22 +4,24 @@ use std::path::PathBuf;
 use std::sync::Arc;
 use std::time::{SystemTime, UNIX_EPOCH};
 
-use enolattice_model::Model;
-use enolattice_reagents::Library;
+use enolattice_reagents::{Library, OwnTable};
 use enolattice_scheduler::{Scheduler, SchedulerConfig, Work};
 use enolattice_store::Store;
 
 use crate::engine::{Queue, blocking};
 use crate::grids::Grids;
+use crate::models::{Models, OwnModel, laid_over};
 use crate::{Engine, EngineError};
 
 /// How an engine is opened.
-#[derive(Clone, Debug)]
+#[derive(Clone, Debug, Default)]
 pub struct EngineConfig {
     /// Directory of its data.
     pub data_dir: PathBuf,
     /// Compute threads; 0: one for each core.
     pub threads: usize,
+    /// The laboratory's own tables of reagents, laid over the library for all that the engine does.
+    pub library: Vec<OwnTable>,
 }
 
 impl Engine {
@@ -54,7 +56,8 @@ impl Engine {
     /// [`EngineError::Store`] where the directory is in use or cannot be read.
     pub async fn open_idle(config: EngineConfig) -> Result<Engine, EngineError> {
         blocking(move || {
-            let model = builtin_model()?;
+            let OwnModel { model, conflicts } = model(&config.library)?;
+            let models = Arc::new(Models::new(model));
             let (store, report) = Store::open(&config.data_dir, now_unix_ms())?;
             let notices = report.sentences();
             for notice in &notices {
@@ -62,28 +65,36 @@ impl Engine {
             }
             let queue = Queue {
                 store: Arc::new(store),
-                grids: Arc::new(Grids::new(model.clone())),
+                grids: Arc::new(Grids::new(models.clone())),
                 watchers: Arc::default(),
                 scheduler: None,
-                notices,
             };
             Ok(Engine {
-                model,
+                models,
+                notices: conflicts.into_iter().chain(notices).collect(),
+                threads: config.threads,
                 queue: Some(queue),
             })
         })
         .await
     }
 
-    /// An engine without a data directory: it explains given cells, finds sites and knows the
-    /// library, and refuses whatever needs a job.
+    /// An engine without a data directory: it explains given cells, finds sites, knows the library and
+    /// looks at campaigns, and refuses whatever needs a job.
     ///
     /// # Errors
-    /// [`EngineError::Store`] where the built-in library is damaged.
-    pub async fn without_data() -> Result<Engine, EngineError> {
-        blocking(|| {
+    /// [`EngineError::Input`] with every fault of the own tables, [`EngineError::Store`] where the
+    /// built-in library is damaged.
+    pub async fn without_data(
+        threads: usize,
+        library: Vec<OwnTable>,
+    ) -> Result<Engine, EngineError> {
+        blocking(move || {
+            let OwnModel { model, conflicts } = model(&library)?;
             Ok(Engine {
-                model: builtin_model()?,
+                models: Arc::new(Models::new(model)),
+                notices: conflicts,
+                threads,
                 queue: None,
             })
         })
@@ -91,11 +102,16 @@ impl Engine {
     }
 }
 
-fn builtin_model() -> Result<Arc<Model>, EngineError> {
+/// The model of the built-in library and what a laboratory lays over it.
+fn model(own: &[OwnTable]) -> Result<OwnModel, EngineError> {
     let library = Library::builtin().map_err(|fault| EngineError::Store {
         reason: format!("the built-in library is damaged: {fault}"),
     })?;
-    Ok(Arc::new(Model::new(Arc::new(library))))
+    let own = laid_over(&library, own).map_err(EngineError::Input)?;
+    for conflict in &own.conflicts {
+        tracing::warn!(conflict, "own library");
+    }
+    Ok(own)
 }
 
 /// The clock, milliseconds since 1970-01-01 UTC.

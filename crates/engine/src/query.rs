@@ -29,6 +29,8 @@ pub enum Axis {
     Solvent,
     /// Temperatures.
     Temperature,
+    /// Additives.
+    Additive,
 }
 
 /// A question for a page of a ranking.
@@ -65,6 +67,8 @@ pub struct RankedCell {
     pub electrophile: String,
     /// Solvent's name.
     pub solvent: String,
+    /// Additive's name; none without one.
+    pub additive: Option<String>,
     /// Temperature, °C.
     pub temperature_c: f64,
     /// Temperature of the deprotonation, °C.
@@ -73,6 +77,8 @@ pub struct RankedCell {
     pub base_equiv: f64,
     /// Equivalents of electrophile.
     pub electrophile_equiv: f64,
+    /// Equivalents of additive; none without one.
+    pub additive_equiv: Option<f64>,
     /// Concentration, mol/L.
     pub concentration_m: f64,
     /// Time, h.
@@ -119,8 +125,10 @@ pub struct CellQuery {
     pub base: String,
     /// Electrophile: library name or SMILES.
     pub electrophile: String,
-    /// Solvent: library name.
+    /// Solvent or mixture: library name.
     pub solvent: String,
+    /// Additive: library name; none without one.
+    pub additive: Option<String>,
     /// Temperature, °C.
     pub temperature_c: f64,
     /// Temperature of the deprotonation; `None`: that of the reaction.
@@ -129,6 +137,8 @@ pub struct CellQuery {
     pub base_equiv: f64,
     /// Equivalents of electrophile; default 1.2.
     pub electrophile_equiv: f64,
+    /// Equivalents of additive; `None`: 1.1.
+    pub additive_equiv: Option<f64>,
     /// Time, h; default 16.
     pub time_h: f64,
     /// Dosing time, min; default 10.
@@ -172,6 +182,8 @@ pub struct CellDescription {
     pub electrophile_smiles: String,
     /// Solvent's name.
     pub solvent: String,
+    /// Additive's name; none without one.
+    pub additive: Option<String>,
     /// Temperature, °C.
     pub temperature_c: f64,
     /// Temperature of the deprotonation, °C.
@@ -180,6 +192,8 @@ pub struct CellDescription {
     pub base_equiv: f64,
     /// Equivalents of electrophile.
     pub electrophile_equiv: f64,
+    /// Equivalents of additive; none without one.
+    pub additive_equiv: Option<f64>,
     /// Concentration, mol/L.
     pub concentration_m: f64,
     /// Time, h.
@@ -202,7 +216,7 @@ pub struct SiteReport {
 /// A reagent of the library.
 #[derive(Clone, Debug, PartialEq)]
 pub struct ReagentRow {
-    /// `base`, `solvent` or `electrophile`.
+    /// `base`, `solvent`, `electrophile` or `additive`.
     pub kind: String,
     /// Name.
     pub name: String,

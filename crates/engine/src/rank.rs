@@ -93,6 +93,7 @@ impl Axis {
             Axis::Electrophile => "electrophile",
             Axis::Solvent => "solvent",
             Axis::Temperature => "temperature",
+            Axis::Additive => "additive",
         }
     }
 
@@ -103,6 +104,7 @@ impl Axis {
             Axis::Electrophile => |digits| digits.electrophile,
             Axis::Solvent => |digits| digits.solvent,
             Axis::Temperature => |digits| digits.temperature,
+            Axis::Additive => |digits| digits.additive,
         }
     }
 }
@@ -126,6 +128,7 @@ fn ranked(grid: &Grid, rank: u64, number: u64, score: &Score) -> Option<RankedCe
         base,
         electrophile,
         solvent,
+        additive,
         conditions,
         ..
     } = &cell;
@@ -139,10 +142,12 @@ fn ranked(grid: &Grid, rank: u64, number: u64, score: &Score) -> Option<RankedCe
         base: base.record.name.clone(),
         electrophile: electrophile.name.clone(),
         solvent: solvent.record.name.clone(),
+        additive: additive.as_ref().map(|known| known.record.name.clone()),
         temperature_c: conditions.temperature_c,
         formation_temperature_c: conditions.formation_temperature_c,
         base_equiv: conditions.base_equiv,
         electrophile_equiv: conditions.electrophile_equiv,
+        additive_equiv: additive.as_ref().map(|_| conditions.additive_equiv),
         concentration_m: conditions.concentration_m,
         time_h: conditions.time_h,
         dosing_min: conditions.dosing_min,

@@ -1,6 +1,8 @@
 //! The library, in rows.
 
-use enolattice_reagents::{Base, Cation, NamedElectrophile, Reagent, Solvent};
+use enolattice_reagents::{
+    Additive, AdditiveKind, Base, Cation, NamedElectrophile, Reagent, Solvent,
+};
 
 use crate::{Engine, EngineError, ReagentRow};
 
@@ -11,7 +13,7 @@ impl Engine {
     /// None yet; a word that nothing has gives an empty list.
     pub async fn reagents(&self, word: &str) -> Result<Vec<ReagentRow>, EngineError> {
         Ok(self
-            .model
+            .model()
             .library()
             .search(word)
             .into_iter()
@@ -31,6 +33,7 @@ fn row(reagent: Reagent<'_>) -> ReagentRow {
             Reagent::Base(base) => base_facts(base),
             Reagent::Solvent(solvent) => solvent_facts(solvent),
             Reagent::Electrophile(electrophile) => electrophile_facts(electrophile),
+            Reagent::Additive(additive) => additive_facts(additive),
         },
         h_codes: reagent.hazards().h_codes.clone(),
     }
@@ -42,6 +45,9 @@ fn base_facts(base: &Base) -> String {
         Cation::Sodium => ", Na",
         Cation::Potassium => ", K",
         Cation::Caesium => ", Cs",
+        Cation::Ammonium => ", NR4",
+        Cation::Magnesium => ", Mg",
+        Cation::Zinc => ", Zn",
         Cation::None => "",
     };
     format!(
@@ -59,6 +65,16 @@ fn solvent_facts(solvent: &Solvent) -> String {
         solvent.melting_c,
         solvent.water_ppm
     )
+}
+
+fn additive_facts(additive: &Additive) -> String {
+    let kind = match additive.kind {
+        AdditiveKind::Crown => "takes up the counter-ion",
+        AdditiveKind::PhaseTransfer => "carries anions into the organic phase",
+        AdditiveKind::Donor => "solvates the counter-ion",
+        AdditiveKind::Salt => "breaks aggregates",
+    };
+    kind.to_owned()
 }
 
 fn electrophile_facts(electrophile: &NamedElectrophile) -> String {

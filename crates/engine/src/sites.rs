@@ -13,7 +13,7 @@ impl Engine {
     /// # Errors
     /// [`EngineError::Input`] with every SMILES that cannot be read, as `smiles[i]`.
     pub async fn sites(&self, smiles: &[String]) -> Result<Vec<SiteReport>, EngineError> {
-        let (model, smiles) = (self.model.clone(), smiles.to_vec());
+        let (model, smiles) = (self.model().clone(), smiles.to_vec());
         blocking(move || {
             let (mut reports, mut faults) = (Vec::with_capacity(smiles.len()), Vec::new());
             for (i, text) in smiles.into_iter().enumerate() {

@@ -1,8 +1,6 @@
 //! Queueing a campaign.
 
-use std::sync::Arc;
-
-use enolattice_grid::Grid;
+use enolattice_grid::{CampaignSpec, Grid, InputError};
 use enolattice_store::NewJob;
 
 use crate::engine::{blocking, read_job};
@@ -13,18 +11,20 @@ impl Engine {
     /// Queues a campaign. When this returns, the job survives a power cut.
     ///
     /// With `validate_only` the campaign is checked and the job that it would make is
-    /// described, without an id; nothing is queued.
+    /// described, without an id; nothing is queued, and no data directory is needed.
     ///
     /// # Errors
     /// [`EngineError::Input`] with every fault, [`EngineError::RequestIdReused`], [`EngineError::Store`].
     pub async fn submit(&self, submission: Submission) -> Result<Job, EngineError> {
+        if submission.validate_only {
+            let models = self.models.clone();
+            return blocking(move || Ok(would_be(&*models.grid(&submission.campaign)?))).await;
+        }
         let queue = self.queue()?;
         let (store, grids) = (queue.store.clone(), queue.grids.clone());
+        let models = self.models.clone();
         let (id, job) = blocking(move || {
-            let grid = grids.build(&submission.campaign)?;
-            if submission.validate_only {
-                return Ok((None, would_be(&grid)));
-            }
+            let grid = models.grid(&submission.campaign)?;
             let new = NewJob {
                 campaign_fingerprint: grid.fingerprint(),
                 model_fingerprint: grid.model().fingerprint(),
@@ -47,9 +47,20 @@ impl Engine {
         }
         Ok(job)
     }
+
+    /// Every fault in the values of a campaign; none where it is sound.
+    ///
+    /// For those who have found faults of form already and want to tell all in one answer.
+    ///
+    /// # Errors
+    /// [`EngineError::Stopping`].
+    pub async fn faults(&self, campaign: CampaignSpec) -> Result<Vec<InputError>, EngineError> {
+        let models = self.models.clone();
+        blocking(move || Ok(models.faults(&campaign))).await
+    }
 }
 
-fn would_be(grid: &Arc<Grid>) -> Job {
+pub(crate) fn would_be(grid: &Grid) -> Job {
     Job {
         job: String::new(),
         title: grid.campaign().title.clone(),

@@ -6,8 +6,9 @@ use enolattice_engine::{
     Axis, Engine, EngineConfig, EngineError, ExplainTarget, Job, JobState, Order, RankQuery,
     RankedCell, Submission,
 };
-use enolattice_grid::{CampaignSpec, Sources};
+use enolattice_grid::{CampaignSpec, Entry, LibraryTable, Sources};
 use enolattice_model::Fingerprint;
+use enolattice_reagents::OwnTable;
 use enolattice_store::{NewJob, Store};
 use tempfile::TempDir;
 
@@ -20,7 +21,7 @@ smiles = ["CCOC(=O)CC(=O)OCC", "CCC(=O)c1ccccc1"]
 library = ["LDA", "K2CO3"]
 [electrophiles]
 library = ["MeI"]
-smiles = ["BrCc1ccccc1", "C1CO1"]
+smiles = ["BrCc1ccccc1", "C=C=C"]
 [solvents]
 library = ["THF", "DMF"]
 [conditions]
@@ -33,7 +34,7 @@ fn campaign() -> CampaignSpec {
         campaign: CAMPAIGN.into(),
         files: BTreeMap::new(),
     };
-    enolattice_grid::read(&sources).expect("reads")
+    enolattice_grid::read(&sources).sound().expect("reads")
 }
 
 fn submission(request_id: &str) -> Submission {
@@ -48,6 +49,7 @@ fn config(folder: &TempDir) -> EngineConfig {
     EngineConfig {
         data_dir: folder.path().to_path_buf(),
         threads: 2,
+        library: Vec::new(),
     }
 }
 
@@ -105,7 +107,7 @@ async fn a_job_runs_to_its_end_and_ranks_every_cell_once() {
     assert!(
         whole
             .iter()
-            .all(|row| row.expected_yield.is_some() == (row.electrophile != "C1CO1"))
+            .all(|row| row.expected_yield.is_some() == (row.electrophile != "C=C=C"))
     );
 
     let best = RankQuery {
@@ -332,7 +334,7 @@ async fn a_job_whose_campaign_means_something_else_now_fails_and_says_so() {
 
 #[tokio::test(flavor = "multi_thread")]
 async fn an_engine_without_data_has_no_jobs() {
-    let engine = Engine::without_data().await.expect("opens");
+    let engine = Engine::without_data(0, Vec::new()).await.expect("opens");
     assert!(matches!(
         engine.jobs().await,
         Err(EngineError::Store { .. })
@@ -353,4 +355,114 @@ async fn an_engine_without_data_has_no_jobs() {
         other => panic!("{other:?}"),
     }
     engine.close().await.expect("closes");
+}
+
+/// A table of one additive: the first row of the library's under another name.
+fn own_table(name: &str) -> LibraryTable {
+    let library = include_str!("../../reagents/data/additives.tsv");
+    let (comments, rows): (Vec<&str>, Vec<&str>) =
+        library.lines().partition(|line| line.starts_with('#'));
+    let columns: Vec<&str> = rows[0].split('\t').collect();
+    let row = columns
+        .iter()
+        .zip(rows[1].split('\t'))
+        .map(|(column, value)| match *column {
+            "name" => name,
+            "synonyms" | "cas" => "",
+            _ => value,
+        });
+    let row: Vec<&str> = row.collect();
+    LibraryTable {
+        name: "own.tsv".into(),
+        text: format!("{}\n{}\n{}\n", comments.join("\n"), rows[0], row.join("\t")),
+    }
+}
+
+#[tokio::test(flavor = "multi_thread")]
+async fn a_campaign_brings_reagents_of_its_own() {
+    let folder = TempDir::new().expect("a folder");
+    let mut with_own = submission("");
+    with_own.campaign.additives.entries = ["none", "house crown"]
+        .map(|name| Entry {
+            name: name.into(),
+            ..Entry::default()
+        })
+        .to_vec();
+    let engine = Engine::open(config(&folder)).await.expect("opens");
+    match engine.submit(with_own.clone()).await {
+        Err(EngineError::Input(faults)) => assert_eq!(faults[0].code, "REAGENT_UNKNOWN"),
+        other => panic!("{other:?}"),
+    }
+    with_own.campaign.library = vec![own_table("house crown")];
+    let job = engine.submit(with_own.clone()).await.expect("is queued");
+    assert_eq!(to_the_end(&engine, &job.job).await.state, JobState::Done);
+    assert_ne!(job.model_fingerprint, engine.model_fingerprint());
+    let query = RankQuery {
+        job: job.job.clone(),
+        filter: "additive = \"house crown\"".into(),
+        ..RankQuery::default()
+    };
+    let ranked = all_rows(&engine, &query).await;
+    assert_eq!(ranked.len() as u64, job.cells / 2);
+    let target = ExplainTarget::OfJob {
+        job: job.job.clone(),
+        cell: ranked[0].cell,
+    };
+    let told = engine.explain(target).await.expect("explains");
+    assert_eq!(told.model, job.model_fingerprint);
+    engine.close().await.expect("closes");
+
+    // the tables are kept with the job
+    let engine = Engine::open_idle(config(&folder)).await.expect("opens");
+    assert_eq!(all_rows(&engine, &query).await, ranked);
+    with_own.campaign.library[0].text = "# table: additives\nname\tcolour\nx\tred\n".into();
+    match engine.submit(with_own).await {
+        Err(EngineError::Input(faults)) => {
+            assert!(
+                faults.iter().all(|fault| fault.code == "LIBRARY_INVALID"),
+                "{faults:?}"
+            );
+            assert!(
+                faults.iter().all(|fault| fault.place.file == "own.tsv"),
+                "{faults:?}"
+            );
+        }
+        other => panic!("{other:?}"),
+    }
+    engine.close().await.expect("closes");
+}
+
+#[tokio::test(flavor = "multi_thread")]
+async fn tables_of_the_engine_hold_for_all_that_it_does() {
+    let table = own_table("18-crown-6");
+    let own = OwnTable {
+        name: table.name,
+        text: table.text.replace("K 0.9", "K 0.8"),
+    };
+    let engine = Engine::without_data(1, vec![own]).await.expect("opens");
+    assert!(
+        engine
+            .notices()
+            .iter()
+            .any(|notice| notice.contains("K 0.8")),
+        "{:?}",
+        engine.notices()
+    );
+}
+
+#[tokio::test(flavor = "multi_thread")]
+async fn a_dry_run_says_what_is_not_covered_and_queues_nothing() {
+    let engine = Engine::without_data(1, Vec::new()).await.expect("opens");
+    let spec = campaign();
+    let run = engine.dry_run(spec).await.expect("a sound campaign");
+    assert_eq!(run.job.cells, 48);
+    assert_eq!((run.cells_scored, run.cells_scored_not_covered), (48, 16));
+    let cells: Vec<(Axis, u64)> = run
+        .not_covered
+        .iter()
+        .map(|known| (known.axis, known.cells))
+        .collect();
+    assert_eq!(cells, [(Axis::Electrophile, 16)]);
+    assert!(!run.not_covered[0].reason.is_empty());
+    assert_eq!(run.cells_looked_at, 48);
 }

@@ -1,99 +1,78 @@
-//! Caution bits of a campaign's cells, tabled by the few axes that each part depends on.
+//! Caution bits of a campaign's cells, joined from what each reagent brings.
 
-use enolattice_model::{
-    base_electrophile_cautions, base_solvent_cautions, base_substrate_cautions, caution_bits,
-    electrophile_solvent_cautions, join_caution_bits,
-};
+use enolattice_model::CautionShare;
 
 use crate::Campaign;
 
-/// Bits of the parts of the cautions, by digits.
+/// Shares of the reagents in the cautions, by digits.
 #[derive(Debug)]
 pub(crate) struct CautionTable {
-    /// base × solvent × temperature × temperature of the deprotonation
-    base_solvent: Vec<u32>,
-    /// electrophile × solvent × temperature
-    electrophile_solvent: Vec<u32>,
-    /// base × electrophile
-    base_electrophile: Vec<u32>,
-    /// base × substrate
-    base_substrate: Vec<u32>,
-    solvents: usize,
+    bases: Vec<CautionShare>,
+    /// solvent × temperature × temperature of the deprotonation
+    solvents: Vec<CautionShare>,
+    /// electrophile × temperature
+    electrophiles: Vec<CautionShare>,
+    substrates: Vec<CautionShare>,
+    additives: Vec<CautionShare>,
     temperatures: usize,
     formation_temperatures: usize,
-    electrophiles: usize,
-    substrates: usize,
 }
 
 impl CautionTable {
     pub(crate) fn new(campaign: &Campaign) -> CautionTable {
-        let Campaign {
-            bases,
-            solvents,
-            electrophiles,
-            substrates,
-            ..
-        } = campaign;
-        let mut base_solvent = Vec::new();
-        let mut base_electrophile = Vec::new();
-        let mut base_substrate = Vec::new();
-        for base in bases {
-            for solvent in solvents {
-                for &t in &campaign.temperature_c {
-                    for forming in &campaign.formation_temperature_c {
-                        let (base, solvent) = (&base.record, &solvent.record);
-                        let all = base_solvent_cautions(base, solvent, t, forming.unwrap_or(t));
-                        base_solvent.push(caution_bits(&all));
-                    }
-                }
-            }
-            for electrophile in electrophiles {
-                let all = base_electrophile_cautions(&base.record, &electrophile.molecule);
-                base_electrophile.push(caution_bits(&all));
-            }
-            for substrate in substrates {
-                let all = base_substrate_cautions(&base.record, &substrate.molecule);
-                base_substrate.push(caution_bits(&all));
-            }
-        }
-        let mut electrophile_solvent = Vec::new();
-        for electrophile in electrophiles {
-            for solvent in solvents {
-                for &t in &campaign.temperature_c {
-                    let named = electrophile.named();
-                    let solvent = &solvent.record;
-                    let all =
-                        electrophile_solvent_cautions(&electrophile.molecule, named, solvent, t);
-                    electrophile_solvent.push(caution_bits(&all));
-                }
-            }
-        }
+        let temperatures = &campaign.temperature_c;
+        let pairs = temperatures.iter().flat_map(|&t| {
+            let forming = campaign.formation_temperature_c.iter();
+            forming.map(move |forming| (t, forming.unwrap_or(t)))
+        });
+        let pairs: Vec<(f64, f64)> = pairs.collect();
+        let bases = campaign.bases.iter();
+        let solvents = campaign.solvents.iter();
+        let electrophiles = campaign.electrophiles.iter();
+        let substrates = campaign.substrates.iter();
+        let additives = campaign.additives.iter();
         CautionTable {
-            base_solvent,
-            electrophile_solvent,
-            base_electrophile,
-            base_substrate,
-            solvents: solvents.len(),
-            temperatures: campaign.temperature_c.len(),
+            bases: bases
+                .map(|base| CautionShare::of_base(&base.record))
+                .collect(),
+            solvents: solvents
+                .flat_map(|solvent| CautionShare::of_solvent(&solvent.record, &pairs))
+                .collect(),
+            electrophiles: electrophiles
+                .flat_map(|e| CautionShare::of_electrophile(&e.molecule, e.named(), temperatures))
+                .collect(),
+            substrates: substrates
+                .map(|substrate| CautionShare::of_substrate(&substrate.molecule))
+                .collect(),
+            additives: additives
+                .map(|dose| {
+                    CautionShare::of_additive(dose.as_ref().map(|dose| &dose.additive.record))
+                })
+                .collect(),
+            temperatures: temperatures.len(),
             formation_temperatures: campaign.formation_temperature_c.len(),
-            electrophiles: electrophiles.len(),
-            substrates: substrates.len(),
         }
     }
 
     /// Bits of the cell with these digits, in the order of [`crate::CellDigits`].
     pub(crate) fn bits(&self, digits: &[u32; 13]) -> u32 {
-        let [substrate, electrophile, base, solvent, _, t, forming, ..] =
-            digits.map(|digit| digit as usize);
-        let at = base * self.solvents + solvent;
-        let at = (at * self.temperatures + t) * self.formation_temperatures + forming;
-        let parts = [
-            self.base_solvent[at],
-            self.electrophile_solvent
-                [(electrophile * self.solvents + solvent) * self.temperatures + t],
-            self.base_electrophile[base * self.electrophiles + electrophile],
-            self.base_substrate[base * self.substrates + substrate],
-        ];
-        parts.into_iter().fold(0, join_caution_bits)
+        let [
+            substrate,
+            electrophile,
+            base,
+            solvent,
+            additive,
+            t,
+            forming,
+            ..,
+        ] = digits.map(|digit| digit as usize);
+        let solvent = (solvent * self.temperatures + t) * self.formation_temperatures + forming;
+        CautionShare::joined([
+            self.bases[base],
+            self.solvents[solvent],
+            self.electrophiles[electrophile * self.temperatures + t],
+            self.substrates[substrate],
+            self.additives[additive],
+        ])
     }
 }

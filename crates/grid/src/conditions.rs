@@ -15,11 +15,30 @@ pub(crate) struct Quantity {
     high: f64,
     /// Whether `low` itself is refused.
     above_low: bool,
+    /// What is often mistaken about it; empty where nothing is.
+    hint: &'static str,
     /// Taken where the campaign says nothing; `None` where nothing is a value of its own.
     pub(crate) default: Option<f64>,
 }
 
 impl Quantity {
+    /// A quantity without a default.
+    pub(crate) const fn of(key: &'static str, unit: &'static str, range: (f64, f64)) -> Quantity {
+        quantity(key, unit, range, None)
+    }
+
+    /// The same, with the lower end refused.
+    pub(crate) const fn above(
+        key: &'static str,
+        unit: &'static str,
+        range: (f64, f64),
+    ) -> Quantity {
+        Quantity {
+            above_low: true,
+            ..quantity(key, unit, range, None)
+        }
+    }
+
     /// The number as it is kept, or why it is refused. There is one zero: −0 becomes 0.
     pub(crate) fn check(&self, value: f64) -> Result<f64, String> {
         let above = if self.above_low {
@@ -32,6 +51,12 @@ impl Quantity {
         } else {
             Err(format!("outside the range of {}, {self}", self.name()))
         }
+    }
+
+    /// What to do about a number that is refused.
+    pub(crate) fn remedy(&self) -> String {
+        let hint = if self.hint.is_empty() { "" } else { ": " };
+        format!("give a number in this range{hint}{}", self.hint)
     }
 
     /// The last word of the key path.
@@ -68,6 +93,7 @@ const fn quantity(
         low,
         high,
         above_low: false,
+        hint: "",
         default,
     }
 }
@@ -75,18 +101,20 @@ const fn quantity(
 // The ranges are those of laboratory practice (common practice): the coldest bath in use is a
 // little above the melting point of pentane, the hottest block a little above the boiling point
 // of DMSO. The defaults are common practice too.
-pub(crate) const TEMPERATURE: Quantity = quantity(
-    "conditions.temperature_c",
-    "°C",
-    (-110.0, 250.0),
-    Some(25.0),
-);
-pub(crate) const FORMATION_TEMPERATURE: Quantity = quantity(
-    "conditions.formation_temperature_c",
-    "°C",
-    (-110.0, 250.0),
-    None,
-);
+pub(crate) const TEMPERATURE: Quantity = Quantity {
+    hint: "temperatures are in °C, not in K",
+    ..quantity(
+        "conditions.temperature_c",
+        "°C",
+        (-110.0, 250.0),
+        Some(25.0),
+    )
+};
+pub(crate) const FORMATION_TEMPERATURE: Quantity = Quantity {
+    key: "conditions.formation_temperature_c",
+    default: None,
+    ..TEMPERATURE
+};
 pub(crate) const BASE_EQUIV: Quantity = Quantity {
     above_low: true,
     ..quantity(
@@ -105,6 +133,15 @@ pub(crate) const ELECTROPHILE_EQUIV: Quantity = Quantity {
         Some(1.2),
     )
 };
+pub(crate) const ADDITIVE_EQUIV: Quantity = Quantity {
+    above_low: true,
+    ..quantity(
+        "conditions.additive_equiv",
+        "equivalents",
+        (0.0, 20.0),
+        Some(1.1),
+    )
+};
 pub(crate) const CONCENTRATION: Quantity = quantity(
     "conditions.concentration_m",
     "mol/L",
@@ -114,8 +151,10 @@ pub(crate) const CONCENTRATION: Quantity = quantity(
 pub(crate) const TIME: Quantity = quantity("conditions.time_h", "h", (0.001, 720.0), Some(16.0));
 pub(crate) const DOSING: Quantity =
     quantity("conditions.dosing_min", "min", (0.0, 1440.0), Some(10.0));
-pub(crate) const YIELD_AT_LEAST: Quantity =
-    quantity("target.yield_at_least", "", (0.0, 1.0), Some(0.5));
+pub(crate) const YIELD_AT_LEAST: Quantity = Quantity {
+    hint: "0.5 is half",
+    ..quantity("target.yield_at_least", "", (0.0, 1.0), Some(0.5))
+};
 /// From below the strongest acids to above the alkanes on the DMSO scale.
 pub(crate) const PKA_DMSO: Quantity = quantity("pka_dmso", "", (-20.0, 60.0), None);
 /// The default is from memory: what a careful determination repeats to.
@@ -125,11 +164,12 @@ pub(crate) const PKA_SIGMA: Quantity = Quantity {
 };
 
 /// The quantities of the table `conditions`, in the order of the axes.
-pub(crate) const CONDITIONS: [Quantity; 7] = [
+pub(crate) const CONDITIONS: [Quantity; 8] = [
     TEMPERATURE,
     FORMATION_TEMPERATURE,
     BASE_EQUIV,
     ELECTROPHILE_EQUIV,
+    ADDITIVE_EQUIV,
     CONCENTRATION,
     TIME,
     DOSING,
@@ -137,12 +177,13 @@ pub(crate) const CONDITIONS: [Quantity; 7] = [
 
 impl ConditionsSpec {
     /// The axes of numbers, in the order of [`CONDITIONS`].
-    pub(crate) fn axes(&self) -> [&Vec<f64>; 7] {
+    pub(crate) fn axes(&self) -> [&Vec<f64>; 8] {
         [
             &self.temperature_c,
             &self.formation_temperature_c,
             &self.base_equiv,
             &self.electrophile_equiv,
+            &self.additive_equiv,
             &self.concentration_m,
             &self.time_h,
             &self.dosing_min,
@@ -150,12 +191,13 @@ impl ConditionsSpec {
     }
 
     /// The axes of numbers, to be filled, in the order of [`CONDITIONS`].
-    pub(crate) fn axes_mut(&mut self) -> [&mut Vec<f64>; 7] {
+    pub(crate) fn axes_mut(&mut self) -> [&mut Vec<f64>; 8] {
         [
             &mut self.temperature_c,
             &mut self.formation_temperature_c,
             &mut self.base_equiv,
             &mut self.electrophile_equiv,
+            &mut self.additive_equiv,
             &mut self.concentration_m,
             &mut self.time_h,
             &mut self.dosing_min,

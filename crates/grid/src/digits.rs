@@ -28,7 +28,7 @@ pub struct CellDigits {
     pub base: u32,
     /// Solvent.
     pub solvent: u32,
-    /// Additive (one value yet: none).
+    /// Additive with its amount, or none.
     pub additive: u32,
     /// Temperature.
     pub temperature: u32,

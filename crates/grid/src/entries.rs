@@ -1,20 +1,20 @@
 //! Checks of single texts: names, SMILES, a laboratory's own pKa.
 
 use enolattice_model::MeasuredPka;
-use enolattice_molecule::Molecule;
+use enolattice_molecule::{Molecule, Salt};
 
 use crate::conditions::{PKA_DMSO, PKA_SIGMA};
 use crate::fault::{Faults, value_of_row};
-use crate::{FaultCode, Place, SubstrateEntry};
+use crate::{FaultCode, Place, SubstrateEntry, stock};
 
-/// Longest name or title, characters.
-const LONGEST_NAME: usize = 200;
+/// Longest name, title or other text, characters.
+const LONGEST_TEXT: usize = 200;
 
-/// Whether a name can be printed in a table; notes why not.
-pub(crate) fn check_name(name: &str, place: Place, faults: &mut Faults) -> bool {
+/// Whether a name or another text of the user can be printed in a table; notes why not.
+pub(crate) fn check_text(name: &str, place: Place, faults: &mut Faults) -> bool {
     let reason = if name.chars().any(char::is_control) {
         "there is a control character in it"
-    } else if name.chars().nth(LONGEST_NAME).is_some() {
+    } else if name.chars().nth(LONGEST_TEXT).is_some() {
         "it is longer than 200 characters"
     } else {
         return true;
@@ -24,13 +24,13 @@ pub(crate) fn check_name(name: &str, place: Place, faults: &mut Faults) -> bool 
         place,
         name,
         reason,
-        "write a short name in one line",
+        "write a short text in one line",
     );
     false
 }
 
-/// Reads a SMILES; notes why it cannot be read.
-pub(crate) fn molecule(smiles: &str, place: Place, faults: &mut Faults) -> Option<Molecule> {
+/// Reads a SMILES, of a salt too; notes why it cannot be read.
+pub(crate) fn structure(smiles: &str, place: Place, faults: &mut Faults) -> Option<Salt> {
     if smiles.is_empty() {
         let remedy = "give a SMILES or leave the whole row out";
         faults.note(
@@ -42,31 +42,46 @@ pub(crate) fn molecule(smiles: &str, place: Place, faults: &mut Faults) -> Optio
         );
         return None;
     }
-    match Molecule::parse(smiles) {
-        Ok(molecule) => Some(molecule),
+    match Molecule::parse_salt(smiles) {
+        Ok(salt) => Some(salt),
         Err(error) => {
-            faults.note(
-                FaultCode::StructureInvalid,
-                place,
-                smiles,
-                error.reason,
-                error.remedy,
-            );
+            // the fault shows the SMILES before the reason
+            let without_smiles = error.reason.strip_prefix(&format!("`{}` ", smiles.trim()));
+            let reason = match without_smiles {
+                Some(rest) => format!("it {rest}"),
+                None => error.reason,
+            };
+            let remedy = if looks_like_a_name(smiles) {
+                "this looks like a name: give the structure as SMILES".to_owned()
+            } else {
+                error.remedy
+            };
+            faults.note(FaultCode::StructureInvalid, place, smiles, reason, remedy);
             None
         }
     }
+}
+
+/// Whether a text has letters that no SMILES without brackets has.
+fn looks_like_a_name(text: &str) -> bool {
+    const OF_NAMES_ONLY: &str = "adfghjkmqtuvwxyz";
+    !text.contains('[')
+        && !text.contains(char::is_whitespace)
+        && text.chars().take(100).any(|c| OF_NAMES_ONLY.contains(c))
 }
 
 /// A substrate's structure and own pKa; notes every fault of the row.
 pub(crate) fn substrate(
     entry: &SubstrateEntry,
     faults: &mut Faults,
-) -> Option<(Molecule, Option<MeasuredPka>)> {
+) -> Option<(Salt, Option<MeasuredPka>)> {
     let place = |value: &str| value_of_row(&entry.place, value);
-    let named = check_name(&entry.name, place("name"), faults);
-    let molecule = molecule(&entry.smiles, place("smiles"), faults);
+    // a row without a name goes by its SMILES, of which the structure's own check says more
+    let named = entry.name == entry.smiles || check_text(&entry.name, place("name"), faults);
+    let structure = structure(&entry.smiles, place("smiles"), faults);
     let own = own_pka(entry, faults);
-    (named && own.is_ok()).then_some(molecule?).zip(own.ok())
+    stock::check(&entry.stock, &entry.place, faults);
+    (named && own.is_ok()).then_some(structure?).zip(own.ok())
 }
 
 fn own_pka(entry: &SubstrateEntry, faults: &mut Faults) -> Result<Option<MeasuredPka>, ()> {

@@ -1,82 +1,112 @@
-//! Substrates and electrophiles from the files that a campaign names.
+//! Substrates and reagents from the files that a campaign names.
+//!
+//! Only the form of a file is judged here. Names, structures and ranges are checked when the
+//! campaign is: then all places where a value can come from are treated alike.
 
-use crate::entries;
 use crate::fault::Faults;
-use crate::rows::{Column, Row, rows};
-use crate::{Entry, FaultCode, Place, SubstrateEntry};
+use crate::format::rows_of;
+use crate::rows::{Column, Heading, Row};
+use crate::stock::{NUMBERS, STOCK};
+use crate::{Entry, FaultCode, Place, Stock, SubstrateEntry};
 
-const NAME: Column = Column {
-    name: "name",
-    required: true,
-};
-const SMILES: Column = Column {
-    name: "smiles",
-    required: true,
-};
-const PKA_DMSO: Column = Column {
-    name: "pka_dmso",
-    required: false,
-};
-const PKA_SIGMA: Column = Column {
-    name: "pka_sigma",
-    required: false,
-};
+/// What is noted while files are read.
+pub(crate) struct Notebook<'n> {
+    pub(crate) faults: &'n mut Faults,
+    pub(crate) notes: &'n mut Vec<String>,
+}
 
-/// Substrates of a file; rows with a fault are noted and left out.
-pub(crate) fn substrates(file: &str, bytes: &[u8], faults: &mut Faults) -> Vec<SubstrateEntry> {
-    rows(file, bytes, &[NAME, SMILES, PKA_DMSO, PKA_SIGMA], faults)
+/// Substrates of a file; rows that cannot be read are noted and left out.
+pub(crate) fn substrates(file: &str, bytes: &[u8], notebook: Notebook<'_>) -> Vec<SubstrateEntry> {
+    let mut columns = vec![
+        Column::required("name"),
+        Column::required("smiles"),
+        Column::optional("pka_dmso"),
+        Column::optional("pka_sigma"),
+    ];
+    columns.extend(STOCK);
+    let Notebook { faults, notes } = notebook;
+    rows_of(file, bytes, &Heading::new(columns), faults, notes)
         .into_iter()
-        .filter_map(|row| substrate(file, row, faults))
+        .map(|row| substrate(file, row, faults))
         .collect()
 }
 
-fn substrate(file: &str, row: Row, faults: &mut Faults) -> Option<SubstrateEntry> {
-    let place = Place {
+fn substrate(file: &str, row: Row, faults: &mut Faults) -> SubstrateEntry {
+    let place = place_of(file, &row);
+    let mut values = row.values.into_iter();
+    let mut next = || values.next().unwrap_or_default();
+    let (name, smiles) = (next(), next());
+    let pka_dmso = number(&next(), &place, "pka_dmso", faults);
+    let pka_sigma = number(&next(), &place, "pka_sigma", faults);
+    let is_readable = pka_dmso.is_ok() && pka_sigma.is_ok();
+    SubstrateEntry {
+        name: if name.is_empty() {
+            smiles.clone()
+        } else {
+            name
+        },
+        smiles,
+        pka_dmso: pka_dmso.ok().flatten().filter(|_| is_readable),
+        pka_sigma: pka_sigma.ok().flatten().filter(|_| is_readable),
+        stock: stock(values, &place, faults),
+        place,
+    }
+}
+
+/// Reagents of a file, by name, by structure or by both; rows that cannot be read are noted and
+/// left out.
+pub(crate) fn reagents(file: &str, bytes: &[u8], notebook: Notebook<'_>) -> Vec<Entry> {
+    let mut columns = vec![Column::optional("name"), Column::optional("smiles")];
+    columns.extend(STOCK);
+    let Notebook { faults, notes } = notebook;
+    rows_of(file, bytes, &Heading::either(columns), faults, notes)
+        .into_iter()
+        .filter_map(|row| reagent(file, row, faults))
+        .collect()
+}
+
+fn reagent(file: &str, row: Row, faults: &mut Faults) -> Option<Entry> {
+    let place = place_of(file, &row);
+    let mut values = row.values.into_iter();
+    let (name, smiles) = (values.next()?, values.next()?);
+    let stock = stock(values, &place, faults);
+    if name.is_empty() && smiles.is_empty() {
+        let place = Place {
+            field: "name".to_owned(),
+            ..place
+        };
+        let reason = "the row has neither a name nor a SMILES";
+        let remedy = "give one of them or leave the whole row out";
+        faults.note(FaultCode::ValueMissing, place, "", reason, remedy);
+        return None;
+    }
+    Some(Entry {
+        name,
+        smiles,
+        stock,
+        place,
+        equiv: None,
+    })
+}
+
+fn place_of(file: &str, row: &Row) -> Place {
+    Place {
         file: file.to_owned(),
         line: row.line,
         field: String::new(),
-    };
-    let [name, smiles, pka_dmso, pka_sigma] = row.values.try_into().ok()?;
-    let pka_dmso = number(&pka_dmso, &place, PKA_DMSO.name, faults);
-    let pka_sigma = number(&pka_sigma, &place, PKA_SIGMA.name, faults);
-    let name = if name.is_empty() {
-        smiles.clone()
-    } else {
-        name
-    };
-    let readable = pka_dmso.is_ok() && pka_sigma.is_ok();
-    let entry = SubstrateEntry {
-        name,
-        smiles,
-        pka_dmso: pka_dmso.ok().flatten(),
-        pka_sigma: pka_sigma.ok().flatten().filter(|_| readable),
-        place,
-    };
-    (entries::substrate(&entry, faults).is_some() && readable).then_some(entry)
+    }
 }
 
-/// Electrophiles of a file; rows with a fault are noted and left out.
-pub(crate) fn electrophiles(file: &str, bytes: &[u8], faults: &mut Faults) -> Vec<Entry> {
-    rows(file, bytes, &[NAME, SMILES], faults)
-        .into_iter()
-        .filter_map(|row| electrophile(file, row, faults))
-        .collect()
-}
-
-fn electrophile(file: &str, row: Row, faults: &mut Faults) -> Option<Entry> {
-    let place = |field: &str| Place {
-        file: file.to_owned(),
-        line: row.line,
-        field: field.to_owned(),
-    };
-    let [name, smiles] = row.values.try_into().ok()?;
-    let named = entries::check_name(&name, place(NAME.name), faults);
-    let structure = entries::molecule(&smiles, place(SMILES.name), faults);
-    (named && structure.is_some()).then(|| Entry {
-        name,
-        smiles,
-        place: place(""),
-    })
+/// The columns of the stock, which are the last of a row.
+fn stock(mut values: impl Iterator<Item = String>, row: &Place, faults: &mut Faults) -> Stock {
+    let numbers: [Option<f64>; NUMBERS] = std::array::from_fn(|at| {
+        let text = values.next().unwrap_or_default();
+        number(&text, row, STOCK[at].name, faults).ok().flatten()
+    });
+    Stock::from_columns(
+        numbers,
+        std::array::from_fn(|_| values.next().unwrap_or_default()),
+    )
 }
 
 /// A number of a field, none where the field is empty.

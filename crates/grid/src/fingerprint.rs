@@ -3,12 +3,15 @@
 use enolattice_model::Fingerprint;
 use sha2::{Digest, Sha256};
 
-use crate::Campaign;
+use crate::{Campaign, Dose};
 
 /// Said first, so that no other digest of the house can be the same.
 const DOMAIN: &str = "enolattice campaign 1";
 
-/// SHA-256 over the canonical content of a campaign.
+/// SHA-256 over the canonical content of a campaign: what is screened.
+///
+/// The title, the names of substrates, what the laboratory has on its shelf and what was noticed
+/// while the files were read change no score and are not part of it.
 ///
 /// Texts are preceded by their length, lists by their number of values, numbers are the eight
 /// bytes of their `f64`, all little endian. Axes stand in the order of [`crate::AXES`].
@@ -34,7 +37,7 @@ pub(crate) fn of(campaign: &Campaign) -> Fingerprint {
             .iter()
             .map(|solvent| solvent.record.name.as_str()),
     );
-    content.count(0); // additives
+    additives(&campaign.additives, &mut content);
     content.numbers(&campaign.temperature_c);
     content.count(campaign.formation_temperature_c.len());
     campaign
@@ -54,6 +57,19 @@ pub(crate) fn of(campaign: &Campaign) -> Fingerprint {
     );
     content.number(campaign.yield_at_least);
     Fingerprint(content.0.finalize().into())
+}
+
+/// A campaign that knows no additives has the same content as one that names `none`.
+fn additives(doses: &[Option<Dose>], content: &mut Content) {
+    if let [None] = doses {
+        content.count(0);
+        return;
+    }
+    content.count(doses.len());
+    for dose in doses {
+        content.text(dose.as_ref().map_or("", |dose| &dose.additive.record.name));
+        content.optional(dose.as_ref().map(|dose| dose.equiv));
+    }
 }
 
 struct Content(Sha256);

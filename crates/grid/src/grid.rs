@@ -3,7 +3,7 @@
 use std::ops::Range;
 use std::sync::Arc;
 
-use enolattice_model::{Cell, Conditions, Fingerprint, Model};
+use enolattice_model::{Additive, Cell, Conditions, Fingerprint, Model};
 
 use crate::caution_table::CautionTable;
 use crate::lattice::Lattice;
@@ -96,6 +96,12 @@ impl Grid {
         Some(Walk::start(self, cell)?.cell)
     }
 
+    /// Caution bits of a cell; none of a cell that is not there.
+    pub fn caution_bits(&self, cell: CellId) -> u32 {
+        let digits = self.digits(cell);
+        digits.map_or(0, |digits| self.cautions.bits(&digits.to_array()))
+    }
+
     /// Scores all cells of a block, in the order of their numbers; none if there is no such block.
     ///
     /// Pairs (substrate × electrophile) are prepared once and kept for the next blocks. Threads
@@ -110,13 +116,12 @@ impl Grid {
             if number > cells.start {
                 walk.step();
             }
-            let cautions = self.cautions.bits(&walk.digits);
             let target = self.campaign.yield_at_least;
             let (table, key) = (&walk.pairs.formations, walk.formation_key());
             columns.push(
                 &self
                     .model
-                    .score_with(&walk.cell, target, cautions, table, key),
+                    .score_with(&walk.cell, target, walk.cautions, table, key),
             );
         }
         columns
@@ -133,6 +138,7 @@ struct Walk<'g> {
     digits: [u32; 13],
     pairs: Arc<PairsOfSubstrate>,
     cell: Cell,
+    cautions: u32,
 }
 
 impl<'g> Walk<'g> {
@@ -140,7 +146,8 @@ impl<'g> Walk<'g> {
         let (segment, offset) = grid.lattice.locate(cell)?;
         let segment = &grid.segments()[segment];
         let digits = segment.digits(offset);
-        let [substrate, electrophile, base, solvent, ..] = digits.map(|digit| digit as usize);
+        let [substrate, electrophile, base, solvent, additive, ..] =
+            digits.map(|digit| digit as usize);
         let campaign = &grid.campaign;
         let pairs = grid.pairs.of(digits[0]);
         let cell = Cell {
@@ -148,6 +155,7 @@ impl<'g> Walk<'g> {
             base: campaign.bases[base].clone(),
             electrophile: campaign.electrophiles[electrophile].clone(),
             solvent: campaign.solvents[solvent].clone(),
+            additive: campaign.additive(additive),
             pair: grid.pair(&pairs, &digits),
             conditions: campaign.conditions(&digits),
         };
@@ -157,6 +165,7 @@ impl<'g> Walk<'g> {
             digits,
             pairs,
             cell,
+            cautions: grid.cautions.bits(&digits),
         })
     }
 
@@ -173,7 +182,8 @@ impl<'g> Walk<'g> {
     fn step(&mut self) {
         let slowest = self.segment.advance(&mut self.digits);
         let campaign = &self.grid.campaign;
-        let [substrate, electrophile, base, solvent, ..] = self.digits.map(|digit| digit as usize);
+        let [substrate, electrophile, base, solvent, additive, ..] =
+            self.digits.map(|digit| digit as usize);
         if slowest == 0 {
             self.cell.substrate = campaign.substrates[substrate].clone();
             self.pairs = self.grid.pairs.of(self.digits[0]);
@@ -187,6 +197,13 @@ impl<'g> Walk<'g> {
         }
         if slowest <= 3 {
             self.cell.solvent = campaign.solvents[solvent].clone();
+        }
+        if slowest <= 4 {
+            self.cell.additive = campaign.additive(additive);
+        }
+        // amounts and times, the axes behind the temperatures, change no caution
+        if slowest <= 6 {
+            self.cautions = self.grid.cautions.bits(&self.digits);
         }
         self.cell.conditions = campaign.conditions(&self.digits);
     }
@@ -208,7 +225,7 @@ impl Campaign {
             self.electrophiles.len(),
             self.bases.len(),
             self.solvents.len(),
-            1, // additives: none
+            self.additives.len(),
             self.temperature_c.len(),
             self.formation_temperature_c.len(),
             self.base_equiv.len(),
@@ -224,10 +241,16 @@ impl Campaign {
         Ok(sizes.map(|size| size as u32))
     }
 
+    fn additive(&self, digit: usize) -> Option<Arc<Additive>> {
+        let dose = self.additives[digit].as_ref()?;
+        Some(dose.additive.clone())
+    }
+
     /// Conditions of the cell with these digits.
     fn conditions(&self, digits: &[u32; 13]) -> Conditions {
         let [
             ..,
+            additive,
             temperature,
             formation,
             base,
@@ -244,6 +267,9 @@ impl Campaign {
                 .unwrap_or(temperature_c),
             base_equiv: self.base_equiv[base],
             electrophile_equiv: self.electrophile_equiv[electrophile],
+            additive_equiv: self.additives[additive]
+                .as_ref()
+                .map_or(0.0, |dose| dose.equiv),
             concentration_m: self.concentration_m[concentration],
             time_h: self.time_h[time],
             dosing_min: self.dosing_min[dosing],

@@ -1,8 +1,9 @@
 //! The keys of a campaign file and what was probably meant by a wrong word.
 
 /// Key paths of a campaign file, table by table. `docs/campaign.md` has a row for each.
-pub(crate) const KEYS: [&str; 26] = [
+pub(crate) const KEYS: [&str; 47] = [
     "title",
+    "library.file",
     "substrates.file",
     "substrates.smiles",
     "substrates.inline",
@@ -10,6 +11,15 @@ pub(crate) const KEYS: [&str; 26] = [
     "substrates.inline.smiles",
     "substrates.inline.pka_dmso",
     "substrates.inline.pka_sigma",
+    "substrates.inline.stock_mg",
+    "substrates.inline.stock_ml",
+    "substrates.inline.supplied_concentration_m",
+    "substrates.inline.price_per_g",
+    "substrates.inline.price_per_ml",
+    "substrates.inline.currency",
+    "substrates.inline.lot",
+    "substrates.inline.location",
+    "bases.file",
     "bases.library",
     "electrophiles.file",
     "electrophiles.library",
@@ -17,12 +27,23 @@ pub(crate) const KEYS: [&str; 26] = [
     "electrophiles.inline",
     "electrophiles.inline.name",
     "electrophiles.inline.smiles",
+    "electrophiles.inline.stock_mg",
+    "electrophiles.inline.stock_ml",
+    "electrophiles.inline.supplied_concentration_m",
+    "electrophiles.inline.price_per_g",
+    "electrophiles.inline.price_per_ml",
+    "electrophiles.inline.currency",
+    "electrophiles.inline.lot",
+    "electrophiles.inline.location",
+    "solvents.file",
     "solvents.library",
+    "additives.file",
     "additives.library",
     "conditions.temperature_c",
     "conditions.formation_temperature_c",
     "conditions.base_equiv",
     "conditions.electrophile_equiv",
+    "conditions.additive_equiv",
     "conditions.concentration_m",
     "conditions.time_h",
     "conditions.dosing_min",
@@ -70,6 +91,11 @@ pub(crate) fn remedy_for_key(table: &str, key: &str) -> String {
 pub(crate) fn nearest<'k>(word: &str, known: impl IntoIterator<Item = &'k str>) -> Option<&'k str> {
     // below this similarity a suggestion misleads more than it helps
     const SIMILAR: f64 = 0.8;
+    // nobody misspells a known word into one so long, and comparing takes its length squared
+    const LONGEST: usize = 100;
+    if word.len() > LONGEST {
+        return None;
+    }
     let word = word.to_lowercase();
     let mut best = None;
     let mut similarity = SIMILAR;
@@ -163,7 +189,7 @@ mod tests {
         );
         assert_eq!(
             remedy_for_key("bases", "xyz"),
-            "the keys here are `library`"
+            "the keys here are `file`, `library`"
         );
     }
 }

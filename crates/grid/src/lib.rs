@@ -12,6 +12,7 @@ mod entries;
 mod fault;
 mod files;
 mod fingerprint;
+mod format;
 mod grid;
 mod keys;
 mod lattice;
@@ -19,19 +20,26 @@ mod page;
 mod pairs;
 mod reader;
 mod reading;
+mod records;
 mod resolve;
 mod rows;
+mod smiles_lines;
 mod spec;
+mod stock;
+mod survey;
 mod values;
 mod warnings;
 
-pub use campaign::Campaign;
+pub use campaign::{Campaign, Dose};
 pub use columns::Columns;
 pub use digits::{AXES, CellDigits};
-pub use fault::{FaultCode, InputError, Located, value_of_row};
+pub use fault::{FaultCode, InputError, Located, MAX_FAULTS, in_order, value_of_row};
+pub use format::MAX_FILE_BYTES;
 pub use grid::Grid;
 pub use lattice::{BlockId, CELLS_PER_BLOCK, CellId, GridError, Lattice, MAX_CELLS, Segment};
-pub use reading::{files_named, read, read_against};
+pub use reading::{Reading, files_named, read};
 pub use spec::{
-    AxisSpec, CampaignSpec, ConditionsSpec, Entry, Place, Sources, SubstrateEntry, TargetSpec,
+    AxisSpec, CampaignSpec, ConditionsSpec, Entry, LibraryTable, Place, Sources, Stock,
+    SubstrateEntry, TargetSpec,
 };
+pub use survey::{CautionCount, NotCovered};

@@ -5,9 +5,11 @@ use toml::de::{DeTable, DeValue};
 
 use crate::conditions::Quantity;
 use crate::fault::Faults;
+use crate::files::Notebook;
 use crate::keys::{keys_of, remedy_for_key};
 use crate::page::{Page, items, kind, number};
-use crate::{AxisSpec, Entry, FaultCode, Place, Sources};
+use crate::stock::QUANTITIES;
+use crate::{AxisSpec, Entry, FaultCode, LibraryTable, Place, Sources, Stock};
 
 pub(crate) type Value<'i> = Spanned<DeValue<'i>>;
 
@@ -15,6 +17,8 @@ pub(crate) type Value<'i> = Spanned<DeValue<'i>>;
 pub(crate) struct Reader<'a> {
     pub(crate) page: Page<'a>,
     pub(crate) faults: Faults,
+    /// What was noticed and is no fault.
+    pub(crate) notes: Vec<String>,
     /// Whether values may have been lost to faults of syntax.
     pub(crate) values_lost: bool,
     sources: &'a Sources,
@@ -32,6 +36,7 @@ impl<'a> Reader<'a> {
         Reader {
             page,
             faults: Faults::default(),
+            notes: Vec::new(),
             values_lost: false,
             sources,
         }
@@ -48,6 +53,9 @@ impl<'a> Reader<'a> {
             let name = key.get_ref().as_ref();
             if known.contains(&name) {
                 continue;
+            }
+            if self.faults.is_full() {
+                break;
             }
             let path = if table.is_empty() {
                 name.to_owned()
@@ -138,11 +146,19 @@ impl<'a> Reader<'a> {
             Err(reason) => {
                 let written = self.page.written(&value.span());
                 let place = self.place(value, path);
-                let remedy = "give a number in this range";
+                let remedy = quantity.remedy();
                 self.faults
                     .note(FaultCode::ValueOutOfRange, place, written, reason, remedy);
                 None
             }
+        }
+    }
+
+    /// Where the reader of a file notes what it finds.
+    pub(crate) fn notebook(&mut self) -> Notebook<'_> {
+        Notebook {
+            faults: &mut self.faults,
+            notes: &mut self.notes,
         }
     }
 
@@ -153,24 +169,14 @@ impl<'a> Reader<'a> {
             return axis;
         };
         for (path, item) in items(&format!("{name}.library"), value) {
-            if name == "solvents" && matches!(item.get_ref(), DeValue::Array(_) | DeValue::Table(_))
-            {
-                let place = self.place(item, &path);
-                let written = self.page.written(&item.span());
-                let reason = "mixtures of solvents are not covered yet";
-                let remedy = "name one solvent for each value";
-                self.faults
-                    .note(FaultCode::NotYetAllowed, place, written, reason, remedy);
-                continue;
-            }
             match self.text(item, &path) {
                 Some(text) if text == "all" => axis.all = true,
                 Some(text) => {
                     let place = self.place(item, &path);
                     axis.entries.push(Entry {
                         name: text,
-                        smiles: String::new(),
                         place,
+                        ..Entry::default()
                     });
                 }
                 None => {}
@@ -194,6 +200,31 @@ impl<'a> Reader<'a> {
             }
         }
         files
+    }
+
+    /// The texts of the laboratory's own tables.
+    pub(crate) fn library_tables(&mut self, table: &DeTable<'_>) -> Vec<LibraryTable> {
+        let mut tables = Vec::new();
+        for (name, bytes) in self.files(table, "library") {
+            match std::str::from_utf8(bytes) {
+                Ok(text) => tables.push(LibraryTable {
+                    name,
+                    text: text.to_owned(),
+                }),
+                Err(_) => {
+                    let place = Place {
+                        file: name,
+                        line: 0,
+                        field: "file".to_owned(),
+                    };
+                    let remedy = "save the file as UTF-8";
+                    let reason = "the text is not UTF-8";
+                    self.faults
+                        .note(FaultCode::FileSyntax, place, "", reason, remedy);
+                }
+            }
+        }
+        tables
     }
 
     /// The tables of the key `inline`.
@@ -239,6 +270,21 @@ impl<'a> Reader<'a> {
             None => Some(String::new()),
         };
         name.zip(smiles)
+    }
+
+    /// What the laboratory has of a substance that is written in the campaign itself.
+    pub(crate) fn stock(&mut self, inline: &Inline<'_, '_>) -> Stock {
+        let path = |key: &str| format!("{}.{key}", inline.place.field);
+        let numbers = QUANTITIES.map(|quantity| {
+            let value = inline.table.get(quantity.key)?;
+            self.number(&quantity, &path(quantity.key), value)
+        });
+        let texts = ["currency", "lot", "location"].map(|key| {
+            let value = inline.table.get(key);
+            let text = value.and_then(|value| self.text(value, &path(key)));
+            text.unwrap_or_default()
+        });
+        Stock::from_columns(numbers, texts)
     }
 
     fn wrong_kind(&mut self, value: &Value<'_>, path: &str, wanted: &str, remedy: &str) {

@@ -1,11 +1,10 @@
 //! Reads a campaign from TOML and the files it names.
 
-use enolattice_reagents::Library;
 use toml::Spanned;
 use toml::de::{DeTable, DeValue};
 
 use crate::conditions::{CONDITIONS, PKA_DMSO, PKA_SIGMA, Quantity, YIELD_AT_LEAST};
-use crate::fault::{Faults, value_of_row};
+use crate::fault::Faults;
 use crate::keys::{keys_of, quoted};
 use crate::page::items;
 use crate::reader::{Inline, Reader};
@@ -14,27 +13,52 @@ use crate::{
     TargetSpec, entries, files, resolve,
 };
 
-/// Reads a campaign from TOML and the files it names; reports all faults at once.
-///
-/// Names of reagents are not looked up: the library that counts may be that of a server.
-/// [`read_against`] looks them up too.
-///
-/// # Errors
-/// Every fault, with file, line, field, value, reason and remedy.
-pub fn read(sources: &Sources) -> Result<CampaignSpec, Vec<InputError>> {
-    let (spec, faults) = read_all(sources);
-    faults.unless_any(spec, &sources.campaign_name)
+/// A campaign as far as it could be read, and what is wrong with its text and files.
+#[derive(Clone, Debug)]
+pub struct Reading {
+    /// The campaign, without the values at fault.
+    pub spec: CampaignSpec,
+    /// Every fault of form: of the TOML, its keys, kinds and ranges, of the files and their columns.
+    pub faults: Vec<InputError>,
+    campaign_name: String,
 }
 
-/// Reads a campaign as [`read`] does and looks up every name in a library, so that unknown names
-/// stand in the same list as all other faults.
+/// Reads a campaign from TOML and the files it names.
 ///
-/// # Errors
-/// Every fault, with file, line, field, value, reason and remedy.
-pub fn read_against(sources: &Sources, library: &Library) -> Result<CampaignSpec, Vec<InputError>> {
-    let (spec, mut faults) = read_all(sources);
-    resolve::reagents(&spec, library, &mut faults);
-    faults.unless_any(spec, &sources.campaign_name)
+/// Names and structures are not looked at: they are for the engine that screens the campaign, whose
+/// library counts ([`crate::Campaign::new`]). What it finds is put together with what was found
+/// here by [`Reading::with`], so that a user sees all faults at once.
+pub fn read(sources: &Sources) -> Reading {
+    let (spec, faults) = read_all(sources);
+    Reading {
+        spec,
+        faults: faults.in_order(&sources.campaign_name),
+        campaign_name: sources.campaign_name.clone(),
+    }
+}
+
+impl Reading {
+    /// The campaign, if its text and files are sound.
+    ///
+    /// # Errors
+    /// Every fault of form.
+    pub fn sound(self) -> Result<CampaignSpec, Vec<InputError>> {
+        if self.faults.is_empty() {
+            Ok(self.spec)
+        } else {
+            Err(self.faults)
+        }
+    }
+
+    /// All faults together with those that an engine found in [`Reading::spec`].
+    ///
+    /// Axes that are empty there were noted here, or lost their values to faults.
+    pub fn with(&self, found: Vec<InputError>) -> Vec<InputError> {
+        let is_new = |fault: &InputError| fault.code != FaultCode::AxisEmpty.name();
+        let found = found.into_iter().filter(is_new);
+        let all: Faults = self.faults.iter().cloned().chain(found).collect();
+        all.in_order(&self.campaign_name)
+    }
 }
 
 /// Names of the files that a campaign wants to be given, as far as they can be made out.
@@ -44,7 +68,14 @@ pub fn read_against(sources: &Sources, library: &Library) -> Result<CampaignSpec
 pub fn files_named(campaign: &str) -> Vec<String> {
     let (top, _) = DeTable::parse_recoverable(campaign);
     let mut names: Vec<String> = Vec::new();
-    for table in ["substrates", "electrophiles"] {
+    for table in [
+        "library",
+        "substrates",
+        "bases",
+        "electrophiles",
+        "solvents",
+        "additives",
+    ] {
         let Some(DeValue::Table(table)) = top.get_ref().get(table).map(Spanned::get_ref) else {
             continue;
         };
@@ -78,7 +109,7 @@ fn read_all(sources: &Sources) -> (CampaignSpec, Faults) {
             FaultCode::CampaignSyntax,
             place,
             line,
-            error.message(),
+            told(error.message()),
             remedy,
         );
     }
@@ -88,12 +119,27 @@ fn read_all(sources: &Sources) -> (CampaignSpec, Faults) {
     (spec, faults)
 }
 
+/// The parser's message, in words for those who do not read grammars where it is a common one.
+fn told(message: &str) -> &str {
+    if message.starts_with("invalid basic string") || message.starts_with("invalid literal string")
+    {
+        "a text has no closing quotation mark"
+    } else if message.starts_with("invalid boolean") {
+        "a text has no quotation marks"
+    } else {
+        message
+    }
+}
+
 fn campaign(reader: &mut Reader<'_>, top: &DeTable<'_>) -> CampaignSpec {
     reader.refuse_unknown_keys("", top);
     let mut spec = CampaignSpec {
         title: title(reader, top),
         ..CampaignSpec::default()
     };
+    if let Some(table) = reader.table(top, "library") {
+        spec.library = reader.library_tables(table);
+    }
     spec.substrates = axis(reader, top, "substrates", substrates, Vec::is_empty);
     spec.bases = axis(reader, top, "bases", bases, AxisSpec::is_empty);
     spec.electrophiles = axis(
@@ -105,8 +151,7 @@ fn campaign(reader: &mut Reader<'_>, top: &DeTable<'_>) -> CampaignSpec {
     );
     spec.solvents = axis(reader, top, "solvents", solvents, AxisSpec::is_empty);
     if let Some(table) = reader.table(top, "additives") {
-        let additives = reader.library(table, "additives");
-        resolve::refuse_additives(&additives, &mut reader.faults);
+        spec.additives = reagents(reader, table, "additives");
     }
     if let Some(table) = reader.table(top, "conditions") {
         spec.conditions = conditions(reader, table);
@@ -116,6 +161,7 @@ fn campaign(reader: &mut Reader<'_>, top: &DeTable<'_>) -> CampaignSpec {
             yield_at_least: optional(reader, table, "target", &YIELD_AT_LEAST),
         };
     }
+    spec.notes = std::mem::take(&mut reader.notes);
     spec
 }
 
@@ -126,7 +172,7 @@ fn title(reader: &mut Reader<'_>, top: &DeTable<'_>) -> String {
     let place = reader.place(value, "title");
     let title = reader.text(value, "title");
     title
-        .filter(|title| entries::check_name(title, place, &mut reader.faults))
+        .filter(|title| entries::check_text(title, place, &mut reader.faults))
         .unwrap_or_default()
 }
 
@@ -167,39 +213,42 @@ fn axis<'i, T: Default>(
 }
 
 fn bases(reader: &mut Reader<'_>, table: &DeTable<'_>) -> AxisSpec {
-    reader.library(table, "bases")
+    reagents(reader, table, "bases")
 }
 
 fn solvents(reader: &mut Reader<'_>, table: &DeTable<'_>) -> AxisSpec {
-    reader.library(table, "solvents")
+    reagents(reader, table, "solvents")
+}
+
+/// An axis of library reagents: those of its files, then those it names.
+fn reagents(reader: &mut Reader<'_>, table: &DeTable<'_>, name: &str) -> AxisSpec {
+    let mut listed = Vec::new();
+    for (file, bytes) in reader.files(table, name) {
+        listed.extend(files::reagents(&file, bytes, reader.notebook()));
+    }
+    let mut axis = reader.library(table, name);
+    listed.append(&mut axis.entries);
+    AxisSpec {
+        all: axis.all,
+        entries: listed,
+    }
 }
 
 fn substrates(reader: &mut Reader<'_>, table: &DeTable<'_>) -> Vec<SubstrateEntry> {
     let mut substrates = Vec::new();
     for (file, bytes) in reader.files(table, "substrates") {
-        substrates.extend(files::substrates(&file, bytes, &mut reader.faults));
+        substrates.extend(files::substrates(&file, bytes, reader.notebook()));
     }
-    let mut add = |entry: SubstrateEntry, faults: &mut Faults| {
-        if entries::substrate(&entry, faults).is_some() {
-            substrates.push(entry);
-        }
-    };
     for (smiles, place) in reader.texts(table, "substrates", "smiles") {
-        let name = smiles.clone();
-        add(
-            SubstrateEntry {
-                name,
-                smiles,
-                place,
-                ..SubstrateEntry::default()
-            },
-            &mut reader.faults,
-        );
+        substrates.push(SubstrateEntry {
+            name: smiles.clone(),
+            smiles,
+            place,
+            ..SubstrateEntry::default()
+        });
     }
     for inline in reader.inline(table, "substrates") {
-        if let Some(entry) = inline_substrate(reader, inline) {
-            add(entry, &mut reader.faults);
-        }
+        substrates.extend(inline_substrate(reader, inline));
     }
     substrates
 }
@@ -210,6 +259,7 @@ fn inline_substrate(reader: &mut Reader<'_>, inline: Inline<'_, '_>) -> Option<S
     let pka_dmso = optional(reader, inline.table, path, &PKA_DMSO);
     let pka_sigma = optional(reader, inline.table, path, &PKA_SIGMA);
     let refused = reader.faults.count() > before;
+    let stock = reader.stock(&inline);
     let (name, smiles) = reader.named_structure(&inline)?;
     Some(SubstrateEntry {
         name: if name.is_empty() {
@@ -220,50 +270,33 @@ fn inline_substrate(reader: &mut Reader<'_>, inline: Inline<'_, '_>) -> Option<S
         smiles,
         pka_dmso: pka_dmso.filter(|_| !refused),
         pka_sigma: pka_sigma.filter(|_| !refused),
+        stock,
         place: inline.place,
     })
 }
 
 fn electrophiles(reader: &mut Reader<'_>, table: &DeTable<'_>) -> AxisSpec {
-    let mut listed = Vec::new();
-    for (file, bytes) in reader.files(table, "electrophiles") {
-        listed.extend(files::electrophiles(&file, bytes, &mut reader.faults));
-    }
-    let mut axis = reader.library(table, "electrophiles");
-    listed.append(&mut axis.entries);
-    let mut add = |entry: Entry, faults: &mut Faults| {
-        let named = entries::check_name(&entry.name, value_of_row(&entry.place, "name"), faults);
-        let place = value_of_row(&entry.place, "smiles");
-        if entries::molecule(&entry.smiles, place, faults).is_some() && named {
-            listed.push(entry);
-        }
-    };
+    let mut axis = reagents(reader, table, "electrophiles");
     for (smiles, place) in reader.texts(table, "electrophiles", "smiles") {
-        add(
-            Entry {
-                name: String::new(),
-                smiles,
-                place,
-            },
-            &mut reader.faults,
-        );
+        axis.entries.push(Entry {
+            smiles,
+            place,
+            ..Entry::default()
+        });
     }
     for inline in reader.inline(table, "electrophiles") {
+        let stock = reader.stock(&inline);
         if let Some((name, smiles)) = reader.named_structure(&inline) {
-            add(
-                Entry {
-                    name,
-                    smiles,
-                    place: inline.place,
-                },
-                &mut reader.faults,
-            );
+            axis.entries.push(Entry {
+                name,
+                smiles,
+                stock,
+                place: inline.place,
+                ..Entry::default()
+            });
         }
     }
-    AxisSpec {
-        all: axis.all,
-        entries: listed,
-    }
+    axis
 }
 
 fn conditions(reader: &mut Reader<'_>, table: &DeTable<'_>) -> ConditionsSpec {

@@ -1,78 +1,145 @@
 //! Names and structures of a specification looked up in the library.
 
+use std::cell::OnceCell;
+use std::collections::HashMap;
+
 use enolattice_model::Addition;
-use enolattice_molecule::Molecule;
-use enolattice_reagents::{Base, Library, ReagentKind, Solvent};
+use enolattice_molecule::{Molecule, Salt};
+use enolattice_reagents::{Additive, Base, Library, MixtureError, ReagentKind, Solvent};
 
 use crate::fault::{Faults, value_of_row};
 use crate::keys::{nearest, quoted};
-use crate::{AxisSpec, CampaignSpec, Entry, FaultCode, Place, entries};
+use crate::{AxisSpec, CampaignSpec, Entry, FaultCode, Place, entries, stock};
+
+/// The word for a cell without an additive.
+pub(crate) const NO_ADDITIVE: &str = "none";
+
+/// Longest name for which a similar one is looked for, characters.
+const LONGEST_NAME: usize = 100;
 
 /// The reagents of a campaign; those at fault are left out.
 pub(crate) struct Reagents<'l> {
     pub(crate) bases: Vec<&'l Base>,
     pub(crate) electrophiles: Vec<NamedStructure>,
-    pub(crate) solvents: Vec<&'l Solvent>,
+    pub(crate) solvents: Vec<Solvent>,
+    /// Additives with their equivalents where the entry says them; `None` inside: no additive.
+    pub(crate) additives: Vec<(Option<&'l Additive>, Option<f64>)>,
 }
 
 /// A structure with the name it goes by in the campaign.
 pub(crate) struct NamedStructure {
     pub(crate) name: String,
-    pub(crate) molecule: Molecule,
+    pub(crate) salt: Salt,
 }
 
-/// Looks up all bases, electrophiles and solvents.
+/// Looks up all bases, electrophiles, solvents and additives.
 pub(crate) fn reagents<'l>(
     spec: &CampaignSpec,
     library: &'l Library,
     faults: &mut Faults,
 ) -> Reagents<'l> {
-    let mut bases: Vec<&Base> = if spec.bases.all {
-        library.bases().iter().collect()
-    } else {
-        vec![]
-    };
-    for (entry, place) in placed(&spec.bases, "bases") {
-        let known = match entry.smiles.as_str() {
-            "" => library.base(&entry.name),
-            smiles => library
-                .bases()
-                .iter()
-                .find(|base| same_structure(&base.smiles, smiles)),
-        };
-        match known {
-            Some(base) => bases.push(base),
-            None => unknown(entry, place, ReagentKind::Base, library, faults),
-        }
-    }
-    let mut solvents: Vec<&Solvent> = if spec.solvents.all {
-        library.solvents().iter().collect()
-    } else {
-        vec![]
-    };
-    for (entry, place) in placed(&spec.solvents, "solvents") {
-        let known = match entry.smiles.as_str() {
-            "" => library.solvent(&entry.name),
-            smiles => library
-                .solvents()
-                .iter()
-                .find(|known| same_structure(&known.smiles, smiles)),
-        };
-        match known {
-            Some(solvent) => solvents.push(solvent),
-            None if is_mixture(&entry.name, library) => {
-                let reason = "mixtures of solvents are not covered yet";
-                let remedy = "name one solvent for each value";
-                faults.note(FaultCode::NotYetAllowed, place, &entry.name, reason, remedy);
-            }
-            None => unknown(entry, place, ReagentKind::Solvent, library, faults),
-        }
-    }
     Reagents {
-        bases,
+        bases: bases(&spec.bases, library, faults),
         electrophiles: electrophiles(&spec.electrophiles, library, faults),
-        solvents,
+        solvents: solvents(&spec.solvents, library, faults),
+        additives: additives(&spec.additives, library, faults),
     }
+}
+
+fn bases<'l>(axis: &AxisSpec, library: &'l Library, faults: &mut Faults) -> Vec<&'l Base> {
+    let all = if axis.all { library.bases() } else { &[] };
+    let mut found: Vec<&Base> = all.iter().collect();
+    let structures = Structures::of(library.bases(), |base| &base.smiles);
+    for (entry, place) in placed(axis, "bases") {
+        stock::check(&entry.stock, &place, faults);
+        let known = library.base(&entry.name);
+        match known.or_else(|| structures.find(&entry.smiles)) {
+            Some(base) => found.push(base),
+            None => unknown(entry, &place, ReagentKind::Base, library, faults),
+        }
+    }
+    found
+}
+
+fn solvents(axis: &AxisSpec, library: &Library, faults: &mut Faults) -> Vec<Solvent> {
+    let all = if axis.all { library.solvents() } else { &[] };
+    let mut found: Vec<Solvent> = all.to_vec();
+    let structures = Structures::of(library.solvents(), |solvent| &solvent.smiles);
+    for (entry, place) in placed(axis, "solvents") {
+        stock::check(&entry.stock, &place, faults);
+        let pure = library.solvent(&entry.name);
+        if let Some(solvent) = pure.or_else(|| structures.find(&entry.smiles)) {
+            found.push(solvent.clone());
+            continue;
+        }
+        if !is_mixture(&entry.name) {
+            unknown(entry, &place, ReagentKind::Solvent, library, faults);
+            continue;
+        }
+        match library.solvent_or_mixture(&entry.name) {
+            Ok(mixture) => found.push(mixture),
+            Err(error) => no_mixture(entry, &place, &error, faults),
+        }
+    }
+    found
+}
+
+fn no_mixture(entry: &Entry, place: &Place, error: &MixtureError, faults: &mut Faults) {
+    let usual = "write solvents and their volumes, e.g. `THF/DMF 4:1`";
+    let mut code = FaultCode::ValueOutOfRange;
+    let (reason, remedy) = match error {
+        MixtureError::Unknown { name, suggestion } => {
+            code = FaultCode::ReagentUnknown;
+            let near = suggestion.as_ref();
+            (
+                format!("the library has no solvent `{name}`"),
+                near.map_or(usual.to_owned(), |near| format!("did you mean `{near}`?")),
+            )
+        }
+        MixtureError::Parts { found } => (
+            format!("this is a mixture of {found}"),
+            "mix two or three solvents".to_owned(),
+        ),
+        MixtureError::Repeated { name } => (
+            format!("`{name}` is there twice"),
+            "write each solvent of a mixture once".to_owned(),
+        ),
+        MixtureError::Volumes { parts, volumes } => (
+            format!("there are {volumes} volumes for {parts} solvents"),
+            "write one for each, e.g. `THF/DMF 4:1`, or none for equal volumes".to_owned(),
+        ),
+        MixtureError::Volume { volume } => (
+            format!("`{volume}` is no volume"),
+            "write a number from 0.001 to 1000".to_owned(),
+        ),
+    };
+    faults.note(code, named(place, entry), &entry.name, reason, remedy);
+}
+
+/// Whether a name is written as a mixture is: parts by volume at its end.
+fn is_mixture(name: &str) -> bool {
+    name.contains('/') && name.chars().nth(LONGEST_NAME).is_none()
+}
+
+fn additives<'l>(
+    axis: &AxisSpec,
+    library: &'l Library,
+    faults: &mut Faults,
+) -> Vec<(Option<&'l Additive>, Option<f64>)> {
+    let all = if axis.all { library.additives() } else { &[] };
+    let mut found: Vec<_> = all.iter().map(|known| (Some(known), None)).collect();
+    let structures = Structures::of(library.additives(), |additive| &additive.smiles);
+    for (entry, place) in placed(axis, "additives") {
+        stock::check(&entry.stock, &place, faults);
+        let is_none = entry.name.eq_ignore_ascii_case(NO_ADDITIVE) && entry.smiles.is_empty();
+        let known = library.additive(&entry.name);
+        match known.or_else(|| structures.find(&entry.smiles)) {
+            Some(additive) => found.push((Some(additive), entry.equiv)),
+            None if is_none => found.push((None, None)),
+            None => unknown(entry, &place, ReagentKind::Additive, library, faults),
+        }
+    }
+    found
 }
 
 fn electrophiles(axis: &AxisSpec, library: &Library, faults: &mut Faults) -> Vec<NamedStructure> {
@@ -84,36 +151,40 @@ fn electrophiles(axis: &AxisSpec, library: &Library, faults: &mut Faults) -> Vec
     let mut found: Vec<NamedStructure> = Vec::new();
     for known in all {
         let place = Place::of_field(&format!("electrophiles `{}`", known.name));
-        let molecule = entries::molecule(&known.smiles, place, faults);
-        found.extend(molecule.map(|molecule| NamedStructure {
+        let salt = entries::structure(&known.smiles, place, faults);
+        found.extend(salt.map(|salt| NamedStructure {
             name: known.name.clone(),
-            molecule,
+            salt,
         }));
     }
     for (entry, place) in placed(axis, "electrophiles") {
+        if faults.is_full() {
+            break;
+        }
+        stock::check(&entry.stock, &place, faults);
         if entry.smiles.is_empty() {
             let Some(known) = library.electrophile(&entry.name) else {
-                unknown(entry, place, ReagentKind::Electrophile, library, faults);
+                unknown(entry, &place, ReagentKind::Electrophile, library, faults);
                 continue;
             };
-            let molecule = entries::molecule(&known.smiles, place, faults);
-            found.extend(molecule.map(|molecule| NamedStructure {
+            let salt = entries::structure(&known.smiles, place, faults);
+            found.extend(salt.map(|salt| NamedStructure {
                 name: known.name.clone(),
-                molecule,
+                salt,
             }));
             continue;
         }
-        let named = entries::check_name(&entry.name, value_of_row(&place, "name"), faults);
-        let molecule = entries::molecule(&entry.smiles, value_of_row(&place, "smiles"), faults);
-        let Some(molecule) = molecule.filter(|_| named) else {
+        let is_named = entries::check_text(&entry.name, value_of_row(&place, "name"), faults);
+        let salt = entries::structure(&entry.smiles, value_of_row(&place, "smiles"), faults);
+        let Some(salt) = salt.filter(|_| is_named) else {
             continue;
         };
-        let name = match library.electrophile_by_structure(molecule.canonical()) {
+        let name = match library.electrophile_by_structure(salt.molecule.canonical()) {
             _ if !entry.name.is_empty() => entry.name.clone(),
             Some(known) => known.name.clone(),
             None => entry.smiles.clone(),
         };
-        found.push(NamedStructure { name, molecule });
+        found.push(NamedStructure { name, salt });
     }
     found
 }
@@ -135,29 +206,72 @@ pub(crate) fn in_list(place: &Place, axis: &str, index: usize) -> Place {
     }
 }
 
-/// Whether two SMILES mean the same. Salts are no molecules: they must be written alike.
-fn same_structure(known: &str, given: &str) -> bool {
-    known == given
-        || matches!((Molecule::parse(known), Molecule::parse(given)),
-            (Ok(known), Ok(given)) if known.canonical() == given.canonical())
+/// Reagents of the library by their structure, prepared when the first one is looked for.
+struct Structures<'l, T> {
+    reagents: &'l [T],
+    smiles: fn(&T) -> &String,
+    by_structure: OnceCell<HashMap<String, &'l T>>,
 }
 
-/// Whether a name is several solvents of the library, as `THF/DMF` or `EtOH + water 9:1`.
-fn is_mixture(name: &str, library: &Library) -> bool {
-    let mut parts = name
-        .split(['/', '+', ',', ':', ' '])
-        .filter(|part| !part.is_empty());
-    parts
-        .by_ref()
-        .filter(|part| library.solvent(part).is_some())
-        .take(2)
-        .count()
-        == 2
+impl<'l, T> Structures<'l, T> {
+    fn of(reagents: &'l [T], smiles: fn(&T) -> &String) -> Structures<'l, T> {
+        Structures {
+            reagents,
+            smiles,
+            by_structure: OnceCell::new(),
+        }
+    }
+
+    fn find(&self, smiles: &str) -> Option<&'l T> {
+        if smiles.is_empty() || smiles.len() > Molecule::MAX_BYTES {
+            return None;
+        }
+        let by_structure = self.by_structure.get_or_init(|| {
+            // where two reagents have one structure, the first counts
+            let all = self.reagents.iter().rev();
+            all.map(|known| (structure((self.smiles)(known)), known))
+                .collect()
+        });
+        by_structure.get(&structure(smiles)).copied()
+    }
 }
 
-fn unknown(entry: &Entry, place: Place, kind: ReagentKind, library: &Library, faults: &mut Faults) {
+/// What is the same for two ways to write a structure; ions in any order.
+fn structure(smiles: &str) -> String {
+    let canonical = |part: &str| match Molecule::parse(part) {
+        Ok(molecule) => molecule.canonical().to_owned(),
+        // metal ions are no molecules: they are compared as they are written
+        Err(_) => part.to_owned(),
+    };
+    let mut parts: Vec<String> = smiles.split('.').map(canonical).collect();
+    parts.sort_unstable();
+    parts.join(".")
+}
+
+/// The place of an entry's name or structure, whichever it is known by.
+fn named(place: &Place, entry: &Entry) -> Place {
+    let value = if entry.name.is_empty() && !entry.smiles.is_empty() {
+        "smiles"
+    } else {
+        "name"
+    };
+    if place.field.is_empty() {
+        value_of_row(place, value)
+    } else {
+        place.clone()
+    }
+}
+
+fn unknown(
+    entry: &Entry,
+    place: &Place,
+    kind: ReagentKind,
+    library: &Library,
+    faults: &mut Faults,
+) {
     let kind_name = kind.name();
-    if !entry.smiles.is_empty() {
+    let place = named(place, entry);
+    if entry.name.is_empty() && !entry.smiles.is_empty() {
         let reason = format!("the library has no {kind_name} of this structure");
         let remedy = format!("give the name of a {kind_name} of the library");
         faults.note(
@@ -169,7 +283,13 @@ fn unknown(entry: &Entry, place: Place, kind: ReagentKind, library: &Library, fa
         );
         return;
     }
-    let remedy = match library.suggest(kind, &entry.name) {
+    let is_long = entry.name.chars().nth(LONGEST_NAME).is_some();
+    let near = if is_long || faults.is_full() {
+        None
+    } else {
+        library.suggest(kind, &entry.name)
+    };
+    let remedy = match near {
         _ if entry.name.is_empty() => {
             format!("give the name of a {kind_name} or leave the entry out")
         }
@@ -179,7 +299,11 @@ fn unknown(entry: &Entry, place: Place, kind: ReagentKind, library: &Library, fa
         Some(near) => format!("did you mean `{near}`?"),
         None => format!("`enolattice reagents` lists every {kind_name} of the library"),
     };
-    let reason = format!("the library has no {kind_name} of this name");
+    let reason = if entry.smiles.is_empty() {
+        format!("the library has no {kind_name} of this name")
+    } else {
+        format!("the library has no {kind_name} of this name or structure")
+    };
     faults.note(
         FaultCode::ReagentUnknown,
         place,
@@ -187,33 +311,6 @@ fn unknown(entry: &Entry, place: Place, kind: ReagentKind, library: &Library, fa
         reason,
         remedy,
     );
-}
-
-/// Additives have their place in a campaign but are not covered yet.
-pub(crate) fn refuse_additives(axis: &AxisSpec, faults: &mut Faults) {
-    let mut refuse = |place, value: &str| {
-        let reason = "additives are not covered yet";
-        faults.note(
-            FaultCode::NotYetAllowed,
-            place,
-            value,
-            reason,
-            "leave additives out",
-        );
-    };
-    if axis.all {
-        refuse(Place::of_field("additives"), "all");
-    }
-    for (entry, place) in placed(axis, "additives") {
-        refuse(
-            place,
-            if entry.name.is_empty() {
-                &entry.smiles
-            } else {
-                &entry.name
-            },
-        );
-    }
 }
 
 /// The order of addition with this name.

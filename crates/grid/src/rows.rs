@@ -1,13 +1,31 @@
 //! Rows of a CSV file (RFC 4180, UTF-8) that a campaign names.
 
 use crate::fault::Faults;
+use crate::format::{MAX_ROWS, too_many_rows};
 use crate::keys::{nearest, quoted};
 use crate::{FaultCode, Place};
 
 /// A column that a file may have.
+#[derive(Clone, Copy, Debug)]
 pub(crate) struct Column {
     pub(crate) name: &'static str,
     pub(crate) required: bool,
+}
+
+impl Column {
+    pub(crate) const fn optional(name: &'static str) -> Column {
+        Column {
+            name,
+            required: false,
+        }
+    }
+
+    pub(crate) const fn required(name: &'static str) -> Column {
+        Column {
+            name,
+            required: true,
+        }
+    }
 }
 
 /// A row: values in the order of the columns asked for, empty where the file has no such column.
@@ -16,17 +34,59 @@ pub(crate) struct Row {
     pub(crate) values: Vec<String>,
 }
 
+/// Most columns of a file of which each is looked at.
+const MOST_COLUMNS: usize = 100;
+
+/// The columns that a file may have.
+pub(crate) struct Heading {
+    columns: Vec<Column>,
+    /// Whether `name` or `smiles` must be there.
+    either: bool,
+}
+
+impl Heading {
+    pub(crate) fn new(columns: Vec<Column>) -> Heading {
+        Heading {
+            columns,
+            either: false,
+        }
+    }
+
+    /// Columns of which `name` or `smiles` must be there, or both.
+    pub(crate) fn either(columns: Vec<Column>) -> Heading {
+        Heading {
+            columns,
+            either: true,
+        }
+    }
+
+    pub(crate) fn names(&self) -> impl Iterator<Item = &'static str> + '_ {
+        self.columns.iter().map(|column| column.name)
+    }
+
+    /// A value for each column, in order.
+    pub(crate) fn values(&self, value: impl Fn(&'static str) -> String) -> Vec<String> {
+        self.names().map(value).collect()
+    }
+}
+
 /// Reads all rows; rows with a fault are noted and left out.
-pub(crate) fn rows(file: &str, bytes: &[u8], columns: &[Column], faults: &mut Faults) -> Vec<Row> {
-    let bytes = bytes.strip_prefix(b"\xef\xbb\xbf").unwrap_or(bytes);
-    let mut records = records(bytes).into_iter();
-    let Some((line, heading)) = records.next() else {
+pub(crate) fn rows(
+    file: &str,
+    bytes: &[u8],
+    delimiter: u8,
+    heading: &Heading,
+    faults: &mut Faults,
+) -> Vec<Row> {
+    let columns = &heading.columns;
+    let mut records = Records::of(bytes, delimiter).peekable();
+    let Some((line, titles)) = records.next() else {
         let place = Place {
             file: file.to_owned(),
             line: 1,
             field: "heading".to_owned(),
         };
-        let names: Vec<&str> = columns.iter().map(|column| column.name).collect();
+        let names: Vec<&str> = heading.names().collect();
         let remedy = format!("begin with a line of column names: {}", quoted(&names));
         faults.note(
             FaultCode::ColumnMissing,
@@ -37,27 +97,36 @@ pub(crate) fn rows(file: &str, bytes: &[u8], columns: &[Column], faults: &mut Fa
         );
         return Vec::new();
     };
-    let Some(positions) = positions(file, line, &heading, columns, faults) else {
+    let Some(positions) = positions(file, line, &titles, delimiter, heading, faults) else {
         return Vec::new();
     };
-    if bytes.iter().filter(|byte| **byte == b'"').count() % 2 == 1 {
-        unclosed(file, &records.next_back(), faults);
-    }
+    let is_unclosed = bytes.iter().filter(|byte| **byte == b'"').count() % 2 == 1;
     let mut rows = Vec::new();
-    for (line, record) in records {
+    while let Some((line, record)) = records.next() {
+        if is_unclosed && records.peek().is_none() {
+            note_unclosed(file, line, &record, faults);
+            break;
+        }
+        if rows.len() >= MAX_ROWS {
+            too_many_rows(file, line, faults);
+            break;
+        }
+        if faults.is_full() {
+            break;
+        }
         let place = |field: &str| Place {
             file: file.to_owned(),
             line,
             field: field.to_owned(),
         };
-        if record.len() != heading.len() {
+        if record.len() != titles.len() {
             let reason = format!(
                 "the row has {} fields and the heading {}",
                 record.len(),
-                heading.len()
+                titles.len()
             );
             let remedy = "give each column a field, empty where nothing is known, and put a field with a comma in quotation marks";
-            let shown = String::from_utf8_lossy(record.as_slice()).into_owned();
+            let shown = as_written(&record, delimiter);
             faults.note(FaultCode::FileSyntax, place("row"), &shown, reason, remedy);
             continue;
         }
@@ -70,8 +139,7 @@ pub(crate) fn rows(file: &str, bytes: &[u8], columns: &[Column], faults: &mut Fa
                 None => values.push(String::new()),
                 Some(Ok(text)) => values.push(text.trim().to_owned()),
                 Some(Err(_)) => {
-                    let shown =
-                        String::from_utf8_lossy(&record[position.unwrap_or(0)]).into_owned();
+                    let shown = start_of(&record[position.unwrap_or(0)]);
                     let reason = "the text is not UTF-8";
                     let remedy = "save the file as UTF-8";
                     faults.note(
@@ -91,52 +159,83 @@ pub(crate) fn rows(file: &str, bytes: &[u8], columns: &[Column], faults: &mut Fa
     rows
 }
 
-/// All records with the lines on which they begin; empty lines are none.
-fn records(bytes: &[u8]) -> Vec<(u32, csv::ByteRecord)> {
-    let mut reader = csv::ReaderBuilder::new()
-        .has_headers(false)
-        .flexible(true)
-        .from_reader(bytes);
-    let mut records = Vec::new();
-    // a flexible reader over bytes in memory has no way to fail
-    for record in reader.byte_records().flatten() {
+/// The records with the lines on which they begin; empty lines are none.
+struct Records<'b> {
+    bytes: &'b [u8],
+    reader: csv::Reader<&'b [u8]>,
+}
+
+impl<'b> Records<'b> {
+    fn of(bytes: &'b [u8], delimiter: u8) -> Records<'b> {
+        let reader = csv::ReaderBuilder::new()
+            .has_headers(false)
+            .flexible(true)
+            .delimiter(delimiter)
+            .from_reader(bytes);
+        Records { bytes, reader }
+    }
+}
+
+impl Iterator for Records<'_> {
+    type Item = (u32, csv::ByteRecord);
+
+    fn next(&mut self) -> Option<(u32, csv::ByteRecord)> {
+        let mut record = csv::ByteRecord::new();
+        // a flexible reader over bytes in memory has no way to fail
+        if !self.reader.read_byte_record(&mut record).unwrap_or(false) {
+            return None;
+        }
         let (byte, line) = record
             .position()
             .map_or((0, 1), |at| (at.byte(), at.line()));
         // the reader's position is that before the empty lines it skipped
-        let skipped = bytes[byte as usize..]
+        let skipped = self.bytes[byte as usize..]
             .iter()
             .take_while(|byte| matches!(byte, b'\r' | b'\n'));
         let line = line as u32 + skipped.filter(|byte| **byte == b'\n').count() as u32;
-        records.push((line, record));
+        Some((line, record))
     }
-    records
 }
 
 /// Where each column asked for stands; none if the heading is at fault.
 fn positions(
     file: &str,
     line: u32,
-    heading: &csv::ByteRecord,
-    columns: &[Column],
+    titles: &csv::ByteRecord,
+    delimiter: u8,
+    heading: &Heading,
     faults: &mut Faults,
 ) -> Option<Vec<Option<usize>>> {
+    let columns = &heading.columns;
     let mut positions = vec![None; columns.len()];
     let mut sound = true;
-    let names: Vec<&str> = columns.iter().map(|column| column.name).collect();
-    let written: Vec<String> = heading
+    let names: Vec<&str> = heading.names().collect();
+    let written: Vec<String> = titles
         .iter()
         .map(|name| String::from_utf8_lossy(name).trim().to_owned())
         .collect();
+    let shown = as_written(titles, delimiter);
     let mut note = |code, value: &str, reason: String, remedy: String| {
         let place = Place {
             file: file.to_owned(),
             line,
             field: value.to_owned(),
         };
-        faults.note(code, place, &written.join(","), reason, remedy);
+        faults.note(code, place, &shown, reason, remedy);
         sound = false;
     };
+    if written.len() > MOST_COLUMNS {
+        let reason = format!("the first line has {} columns", written.len());
+        let remedy = format!("name columns in it, of {}", quoted(&names));
+        note(FaultCode::FileSyntax, "heading", reason, remedy);
+        return None;
+    }
+    if let Some((mark, kind)) = other_delimiter(&written, delimiter) {
+        let reason = format!("the columns are separated by {mark}");
+        let remedy = format!("separate them by commas, or save the file as {kind}");
+        note(FaultCode::FileSyntax, "heading", reason, remedy);
+        return None;
+    }
     for (at, name) in written.iter().enumerate() {
         match names
             .iter()
@@ -169,22 +268,57 @@ fn positions(
     for (column, position) in columns.iter().zip(&positions) {
         if column.required && position.is_none() {
             let reason = format!("the column `{}` is missing", column.name);
-            let remedy = format!("name it in the first line of the file: {}", quoted(&names));
+            let remedy = "name it in the first line of the file".to_owned();
             note(FaultCode::ColumnMissing, column.name, reason, remedy);
         }
+    }
+    let is_there = |name| {
+        names
+            .iter()
+            .position(|known| *known == name)
+            .is_some_and(|at| positions[at].is_some())
+    };
+    if heading.either && !is_there("name") && !is_there("smiles") {
+        let reason = "there is neither a column `name` nor a column `smiles`".to_owned();
+        let remedy = "name one of them in the first line of the file, or both".to_owned();
+        note(FaultCode::ColumnMissing, "name", reason, remedy);
     }
     sound.then_some(positions)
 }
 
+/// What separates the columns of a heading that is one field to its reader.
+fn other_delimiter(written: &[String], delimiter: u8) -> Option<(&'static str, &'static str)> {
+    let [only] = written else { return None };
+    if only.contains(';') {
+        Some(("semicolons", "`.tsv` with tabs"))
+    } else if only.contains('\t') && delimiter != b'\t' {
+        Some(("tabs", "`.tsv`"))
+    } else if only.contains(',') {
+        Some(("commas", "`.csv`"))
+    } else {
+        None
+    }
+}
+
+/// A row as it was written, for a fault: its beginning, without quotation marks.
+fn as_written(record: &csv::ByteRecord, delimiter: u8) -> String {
+    let fields: Vec<&[u8]> = record.iter().take(20).collect();
+    start_of(&fields.join(&delimiter))
+}
+
+/// The first characters of a text, for a fault.
+pub(crate) fn start_of(bytes: &[u8]) -> String {
+    String::from_utf8_lossy(&bytes[..bytes.len().min(400)]).into_owned()
+}
+
 /// Notes a quotation mark without its fellow; the reader takes all that follows as one field.
-fn unclosed(file: &str, last: &Option<(u32, csv::ByteRecord)>, faults: &mut Faults) {
-    let Some((line, record)) = last else { return };
+fn note_unclosed(file: &str, line: u32, record: &csv::ByteRecord, faults: &mut Faults) {
     let place = Place {
         file: file.to_owned(),
-        line: *line,
+        line,
         field: "row".to_owned(),
     };
-    let shown = String::from_utf8_lossy(record.as_slice()).into_owned();
+    let shown = start_of(record.as_slice());
     let reason = "a quotation mark is not closed from here to the end of the file";
     let remedy = "close it, and write a quotation mark inside a quoted field twice";
     faults.note(FaultCode::FileSyntax, place, &shown, reason, remedy);
@@ -194,21 +328,11 @@ fn unclosed(file: &str, last: &Option<(u32, csv::ByteRecord)>, faults: &mut Faul
 mod tests {
     use super::*;
 
-    const COLUMNS: [Column; 2] = [
-        Column {
-            name: "name",
-            required: true,
-        },
-        Column {
-            name: "smiles",
-            required: true,
-        },
-    ];
-
     /// Rows, and line and code of each fault.
     fn read(text: &[u8]) -> (Vec<Row>, Vec<(u32, &'static str)>) {
         let mut faults = Faults::default();
-        let rows = rows("f.csv", text, &COLUMNS, &mut faults);
+        let heading = Heading::new(vec![Column::required("name"), Column::required("smiles")]);
+        let rows = crate::format::rows_of("f.csv", text, &heading, &mut faults, &mut Vec::new());
         let faults = faults.in_order("").into_iter();
         (
             rows,
@@ -243,14 +367,8 @@ mod tests {
         check(b"name\n", &[(1, "COLUMN_MISSING")]);
         check(b"name,smiles,mass\n", &[(1, "COLUMN_UNKNOWN")]);
         check(b"name,smiles,name\n", &[(1, "FILE_SYNTAX")]);
-        check(
-            b"name;smiles\n",
-            &[
-                (1, "COLUMN_UNKNOWN"),
-                (1, "COLUMN_MISSING"),
-                (1, "COLUMN_MISSING"),
-            ],
-        );
+        check(b"name;smiles\n", &[(1, "FILE_SYNTAX")]);
+        check(b"name\tsmiles\n", &[(1, "FILE_SYNTAX")]);
         check(
             b"name,smiles\na\nb,CC,d\n",
             &[(2, "FILE_SYNTAX"), (3, "FILE_SYNTAX")],

@@ -30,6 +30,43 @@ impl Place {
     }
 }
 
+/// What a laboratory has of a substance. Kept for plates; no score depends on it.
+#[derive(Clone, Debug, Default, PartialEq, Serialize, Deserialize)]
+#[serde(default)]
+pub struct Stock {
+    /// Mass on the shelf, mg.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub stock_mg: Option<f64>,
+    /// Volume on the shelf, mL.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub stock_ml: Option<f64>,
+    /// Concentration of the solution that is on the shelf, mol/L; none where it is no solution.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub supplied_concentration_m: Option<f64>,
+    /// Price of a gram, in `currency`.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub price_per_g: Option<f64>,
+    /// Price of a millilitre, in `currency`.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub price_per_ml: Option<f64>,
+    /// Currency of the prices, the three letters of ISO 4217.
+    #[serde(skip_serializing_if = "String::is_empty")]
+    pub currency: String,
+    /// Lot or batch.
+    #[serde(skip_serializing_if = "String::is_empty")]
+    pub lot: String,
+    /// Where it stands.
+    #[serde(skip_serializing_if = "String::is_empty")]
+    pub location: String,
+}
+
+impl Stock {
+    /// Whether nothing is known.
+    pub fn is_empty(&self) -> bool {
+        *self == Stock::default()
+    }
+}
+
 /// A named reagent of the library or a SMILES.
 #[derive(Clone, Debug, Default, PartialEq, Serialize, Deserialize)]
 #[serde(default)]
@@ -38,6 +75,12 @@ pub struct Entry {
     pub name: String,
     /// SMILES; empty where the name is to be looked up.
     pub smiles: String,
+    /// Equivalents of an additive on substrate; none: each of `conditions.additive_equiv`.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub equiv: Option<f64>,
+    /// What the laboratory has of it.
+    #[serde(skip_serializing_if = "Stock::is_empty")]
+    pub stock: Stock,
     /// Where it was written.
     pub place: Place,
 }
@@ -54,6 +97,9 @@ pub struct SubstrateEntry {
     pub pka_dmso: Option<f64>,
     /// Its standard uncertainty.
     pub pka_sigma: Option<f64>,
+    /// What the laboratory has of it.
+    #[serde(skip_serializing_if = "Stock::is_empty")]
+    pub stock: Stock,
     /// Where it was written.
     pub place: Place,
 }
@@ -98,6 +144,9 @@ pub struct ConditionsSpec {
     pub base_equiv: Vec<f64>,
     /// Electrophile, equivalents.
     pub electrophile_equiv: Vec<f64>,
+    /// Additive, equivalents; of no meaning where there is none.
+    #[serde(skip_serializing_if = "Vec::is_empty")]
+    pub additive_equiv: Vec<f64>,
     /// Substrate, mol/L.
     pub concentration_m: Vec<f64>,
     /// Time, h.
@@ -116,6 +165,16 @@ pub struct TargetSpec {
     pub yield_at_least: Option<f64>,
 }
 
+/// A table of reagents of a laboratory's own, laid over the library.
+#[derive(Clone, Debug, Default, PartialEq, Eq, Serialize, Deserialize)]
+#[serde(default)]
+pub struct LibraryTable {
+    /// Name for messages: that of the file.
+    pub name: String,
+    /// Its text, of the form of the library's tables.
+    pub text: String,
+}
+
 /// A campaign as read.
 #[derive(Clone, Debug, Default, PartialEq, Serialize, Deserialize)]
 #[serde(default)]
@@ -128,14 +187,20 @@ pub struct CampaignSpec {
     pub bases: AxisSpec,
     /// Electrophiles.
     pub electrophiles: AxisSpec,
-    /// Solvents; mixtures have their place here (one solvent a value is allowed yet).
+    /// Solvents and mixtures of solvents, as `THF/DMF 4:1`.
     pub solvents: AxisSpec,
-    /// Additives; empty means none, the only value allowed yet.
+    /// Additives; `none` is a value like any other, and the only one where the axis is empty.
     pub additives: AxisSpec,
     /// Conditions.
     pub conditions: ConditionsSpec,
     /// Target.
     pub target: TargetSpec,
+    /// The laboratory's own tables of reagents, the later over the earlier.
+    #[serde(skip_serializing_if = "Vec::is_empty")]
+    pub library: Vec<LibraryTable>,
+    /// What was noticed while the files were read and is no fault, for the user.
+    #[serde(skip_serializing_if = "Vec::is_empty")]
+    pub notes: Vec<String>,
 }
 
 impl CampaignSpec {
@@ -148,6 +213,8 @@ impl CampaignSpec {
             .spell_out(library.electrophiles().iter().map(|known| &known.name));
         self.solvents
             .spell_out(library.solvents().iter().map(|known| &known.name));
+        self.additives
+            .spell_out(library.additives().iter().map(|known| &known.name));
         self
     }
 }

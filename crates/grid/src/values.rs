@@ -13,7 +13,7 @@ pub(crate) fn numbers(
     spec: &CampaignSpec,
     faults: &mut Faults,
     warnings: &mut Warnings,
-) -> [Vec<f64>; 7] {
+) -> [Vec<f64>; 8] {
     let axes = spec.conditions.axes();
     std::array::from_fn(|axis| {
         let quantity = &CONDITIONS[axis];
@@ -26,7 +26,7 @@ pub(crate) fn numbers(
                 Ok(value) => values.push(value),
                 Err(reason) => {
                     let place = Place::of_field(&format!("{}[{i}]", quantity.key));
-                    let remedy = "give a number in this range";
+                    let remedy = quantity.remedy();
                     faults.note(
                         FaultCode::ValueOutOfRange,
                         place,
@@ -72,7 +72,7 @@ pub(crate) fn target(yield_at_least: Option<f64>, faults: &mut Faults) -> f64 {
         .unwrap_or_default();
     YIELD_AT_LEAST.check(value).unwrap_or_else(|reason| {
         let place = Place::of_field(YIELD_AT_LEAST.key);
-        let remedy = "give a yield in this range; 0.5 is half";
+        let remedy = YIELD_AT_LEAST.remedy();
         faults.note(
             FaultCode::ValueOutOfRange,
             place,

@@ -2,6 +2,8 @@
 
 use std::collections::HashMap;
 
+use enolattice_molecule::Salt;
+
 use crate::Campaign;
 
 /// Warnings of one kind that are written out; the others are counted.
@@ -29,6 +31,23 @@ impl Warnings {
             format!("{axis}: `{name}` is the same as `{first}` and counts once, as `{first}`")
         };
         self.add(&format!("{axis} given twice"), text);
+    }
+
+    /// What was noticed while the files were read.
+    pub(crate) fn noted(&mut self, note: &str) {
+        self.add("notes of the reader", note.to_owned());
+    }
+
+    /// A structure that was given as a salt or solvate and is screened without its companions.
+    pub(crate) fn of_salt(&mut self, axis: &str, name: &str, salt: &Salt) {
+        let Some(note) = salt.note() else { return };
+        let mut text =
+            format!("{axis}: `{name}` is screened without what stands beside it ({note})");
+        if salt.acid_equivalents > 0.0 {
+            let equiv = salt.acid_equivalents;
+            text += &format!("; charge {equiv} equivalents of base more");
+        }
+        self.add(&format!("{axis} that are salts"), text);
     }
 
     /// What the model says of the reagents once they are prepared.

@@ -3,8 +3,8 @@
 use std::sync::Arc;
 
 use enolattice_grid::{
-    AxisSpec, Campaign, CampaignSpec, ConditionsSpec, Entry, Grid, InputError, Place,
-    SubstrateEntry,
+    AxisSpec, Campaign, CampaignSpec, CellId, ConditionsSpec, Entry, Grid, InputError, Place,
+    Stock, SubstrateEntry,
 };
 use enolattice_model::{Addition, Model};
 use enolattice_reagents::Library;
@@ -160,6 +160,68 @@ fn the_same_structure_twice_counts_once() {
 }
 
 #[test]
+fn counter_ions_are_dropped_with_a_warning() {
+    let mut spec = small();
+    // the free ester, its hydrochloride, and a sodium enolate's acid as its salt
+    let ester = "CCOC(=O)CN";
+    spec.substrates = vec![
+        substrate("ester hydrochloride", "CCOC(=O)CN.Cl"),
+        substrate("ester", ester),
+        substrate("", "[Na+].CCOC(=O)[CH-]C(=O)OCC"),
+    ];
+    let campaign = Campaign::new(&spec, &model()).expect("a sound campaign");
+    let canonical: Vec<&str> = campaign
+        .substrates
+        .iter()
+        .map(|known| known.molecule.canonical())
+        .collect();
+    assert_eq!(canonical, ["CCOC(=O)CN", "CCOC(=O)CC(=O)OCC"]);
+    let told = |part: &str| campaign.warnings.iter().any(|text| text.contains(part));
+    assert!(
+        told("`ester` is the same as `ester hydrochloride`"),
+        "{:?}",
+        campaign.warnings
+    );
+    assert!(
+        told("charge 1 equivalents of base more"),
+        "{:?}",
+        campaign.warnings
+    );
+    spec.substrates = vec![substrate("a mixture", "CCOC(=O)CN.CC(=O)c1ccccc1")];
+    assert_eq!(
+        faults(&spec),
+        [("substrates[0].smiles".to_owned(), "STRUCTURE_INVALID")]
+    );
+}
+
+#[test]
+fn each_additive_is_a_value_in_each_of_its_amounts() {
+    let model = model();
+    let mut spec = small();
+    spec.additives = named(&["none", "HMPA", "TMEDA"]);
+    spec.additives.entries[2].equiv = Some(1.5);
+    spec.conditions.additive_equiv = vec![2.0, 4.0];
+    let grid = |spec: &CampaignSpec| {
+        let campaign = Campaign::new(spec, &model).expect("a sound campaign");
+        Grid::new(campaign, model.clone()).expect("a small grid")
+    };
+    let with = grid(&spec);
+    assert_eq!(with.cells(), 4 * grid(&small()).cells());
+    let found: std::collections::BTreeSet<String> = (0..with.cells())
+        .map(|cell| {
+            let cell = with.cell(CellId(cell)).expect("a cell");
+            let name = cell
+                .additive
+                .as_ref()
+                .map_or("none", |known| known.record.name.as_str());
+            format!("{name} {}", cell.conditions.additive_equiv)
+        })
+        .collect();
+    let expected = ["HMPA 2", "HMPA 4", "TMEDA 1.5", "none 0"];
+    assert_eq!(found.into_iter().collect::<Vec<_>>(), expected);
+}
+
+#[test]
 fn every_fault_has_the_field_of_the_request() {
     let mut spec = small();
     spec.substrates.push(substrate("broken", "C1CC"));
@@ -173,27 +235,34 @@ fn every_fault_has_the_field_of_the_request() {
     });
     spec.substrates.push(substrate("a\u{7}b", "CC#N"));
     spec.bases = named(&["LDA", "unobtainium amide"]);
-    spec.solvents = named(&["THF/DMF"]);
+    spec.solvents = named(&["THF/unobtainium 4:1"]);
     spec.electrophiles = AxisSpec::default();
-    spec.additives = named(&["HMPA"]);
+    spec.additives = named(&["none", "unobtainium"]);
+    spec.substrates[0].stock.price_per_g = Some(-1.0);
+    spec.bases.entries[0].stock.currency = "Euro".into();
     spec.conditions = ConditionsSpec {
         temperature_c: vec![25.0, -200.0],
         base_equiv: vec![0.0],
+        additive_equiv: vec![-1.0],
         concentration_m: vec![f64::INFINITY],
         addition: vec!["backwards".into()],
         ..ConditionsSpec::default()
     };
     spec.target.yield_at_least = Some(1.5);
     let expected = [
+        ("substrates[0].price_per_g", "VALUE_OUT_OF_RANGE"),
+        ("substrates[0].currency", "VALUE_MISSING"),
         ("substrates[2].smiles", "STRUCTURE_INVALID"),
         ("substrates[3].pka_dmso", "VALUE_OUT_OF_RANGE"),
         ("substrates[4].name", "VALUE_OUT_OF_RANGE"),
+        ("bases[0].currency", "VALUE_UNKNOWN"),
         ("bases[1]", "REAGENT_UNKNOWN"),
-        ("solvents[0]", "NOT_YET_ALLOWED"),
-        ("additives[0]", "NOT_YET_ALLOWED"),
+        ("solvents[0]", "REAGENT_UNKNOWN"),
+        ("additives[1]", "REAGENT_UNKNOWN"),
         ("electrophiles", "AXIS_EMPTY"),
         ("conditions.temperature_c[1]", "VALUE_OUT_OF_RANGE"),
         ("conditions.base_equiv[0]", "VALUE_OUT_OF_RANGE"),
+        ("conditions.additive_equiv[0]", "VALUE_OUT_OF_RANGE"),
         ("conditions.concentration_m[0]", "VALUE_OUT_OF_RANGE"),
         ("conditions.addition[0]", "VALUE_UNKNOWN"),
         ("target.yield_at_least", "VALUE_OUT_OF_RANGE"),
@@ -239,13 +308,24 @@ fn a_fingerprint_is_of_the_content_and_of_nothing_else() {
     same.conditions.temperature_c = vec![25.0];
     same.target.yield_at_least = Some(0.5);
     same.bases.entries[0].name = "lda".into();
+    same.bases.entries[0].stock = Stock {
+        stock_ml: Some(100.0),
+        supplied_concentration_m: Some(2.0),
+        ..Stock::default()
+    };
+    same.substrates[1].stock.lot = "L7".into();
+    same.notes = vec!["shelf.sdf: a data field was left out".into()];
+    same.additives = named(&["none"]);
+    same.conditions.additive_equiv = vec![3.0];
     assert_eq!(of(&same), first);
 
-    let changes: [fn(&mut CampaignSpec); 9] = [
+    let changes: [fn(&mut CampaignSpec); 11] = [
         |spec| spec.substrates.swap(0, 1),
         |spec| spec.substrates[0].pka_dmso = Some(24.7),
         |spec| spec.bases = named(&["LDA"]),
         |spec| spec.solvents = named(&["DMF", "THF"]),
+        |spec| spec.solvents = named(&["THF", "THF/DMF 4:1"]),
+        |spec| spec.additives = named(&["HMPA"]),
         |spec| spec.conditions.temperature_c = vec![25.0, 40.0],
         |spec| spec.conditions.formation_temperature_c = vec![25.0],
         |spec| spec.conditions.time_h = vec![10.0],

@@ -1,8 +1,9 @@
 //! Campaign files: what is read, and every fault with its place.
 
 use std::collections::BTreeMap;
+use std::sync::LazyLock;
 
-use enolattice_grid::{CampaignSpec, InputError, Sources, files_named, read, read_against};
+use enolattice_grid::{Campaign, CampaignSpec, InputError, Sources, Stock, files_named, read};
 use enolattice_reagents::Library;
 
 fn sources(campaign: &str, files: &[(&str, &str)]) -> Sources {
@@ -13,6 +14,19 @@ fn sources(campaign: &str, files: &[(&str, &str)]) -> Sources {
             .iter()
             .map(|(name, text)| ((*name).to_owned(), text.as_bytes().to_vec()))
             .collect::<BTreeMap<_, _>>(),
+    }
+}
+
+/// Reads a campaign and looks everything up; all faults, or the campaign.
+fn checked(sources: &Sources) -> Result<CampaignSpec, Vec<InputError>> {
+    static LIBRARY: LazyLock<Library> =
+        LazyLock::new(|| Library::builtin().expect("the tables are sound"));
+    let reading = read(sources);
+    let faults = reading.with(Campaign::faults(&reading.spec, &LIBRARY));
+    if faults.is_empty() {
+        reading.sound()
+    } else {
+        Err(faults)
     }
 }
 
@@ -41,6 +55,9 @@ name = "nitroethane of the house"
 smiles = "CC[N+](=O)[O-]"
 pka_dmso = 16.7
 pka_sigma = 0.2
+stock_mg = 500
+lot = "L7"
+location = "cabinet 3"
 [[substrates.inline]]
 smiles = "CC#N"
 [bases]
@@ -53,8 +70,9 @@ inline = [{ name = "an allyl bromide", smiles = "C=CCBr" }]
 [solvents]
 library = "THF"
 [additives]
-library = []
+library = ["none", "HMPA"]
 [conditions]
+additive_equiv = [1.5]
 temperature_c = [-20, 25.5]
 formation_temperature_c = -78
 base_equiv = [1.1]
@@ -76,7 +94,7 @@ fn complete() -> CampaignSpec {
         ("substrates.csv", SUBSTRATES),
         ("electrophiles.csv", ELECTROPHILES),
     ];
-    read(&sources(COMPLETE, &files)).expect("a sound campaign")
+    checked(&sources(COMPLETE, &files)).expect("a sound campaign")
 }
 
 #[test]
@@ -121,6 +139,15 @@ fn every_key_is_read() {
         ]
     );
     assert_eq!(names(&spec.solvents), [pair("THF", "")]);
+    assert_eq!(names(&spec.additives), [pair("none", ""), pair("HMPA", "")]);
+    let shelf = Stock {
+        stock_mg: Some(500.0),
+        lot: "L7".into(),
+        location: "cabinet 3".into(),
+        ..Stock::default()
+    };
+    assert_eq!(spec.substrates[3].stock, shelf);
+    assert_eq!(spec.conditions.additive_equiv, [1.5]);
     assert_eq!(spec.conditions.temperature_c, [-20.0, 25.5]);
     assert_eq!(spec.conditions.formation_temperature_c, [-78.0]);
     assert_eq!(spec.conditions.base_equiv, [1.1]);
@@ -143,7 +170,7 @@ fn values_keep_their_places() {
         ("substrates.csv", 3)
     );
     assert_eq!(spec.bases.entries[1].place.field, "bases.library[1]");
-    assert_eq!(spec.bases.entries[1].place.line, 14);
+    assert_eq!(spec.bases.entries[1].place.line, 17);
     assert_eq!(spec.solvents.entries[0].place.field, "solvents.library");
 }
 
@@ -160,6 +187,71 @@ fn the_files_a_campaign_wants_are_known_before_they_are_read() {
     assert_eq!(files_named("substrates = 3"), Vec::<String>::new());
 }
 
+/// A shelf in three forms: the same substrates, the same reagents.
+#[test]
+fn all_forms_of_files_give_the_same_rows() {
+    let campaign = |ending: &str| {
+        format!(
+            "[substrates]\nfile = 's.{ending}'\n[electrophiles]\nfile = 'e.{ending}'\n\
+             [bases]\nfile = 'b.csv'\n[solvents]\nfile = 'v.tsv'\n"
+        )
+    };
+    let csv =
+        "name,smiles,pka_dmso,stock_mg,lot\nester,CCOC(C)=O,29.5,120,L1\nsalt,CCOC(=O)CN.Cl,,,\n";
+    let electrophiles = "smiles,name,stock_mg\nCCOC(C)=O,,120\n";
+    let smi = "CCOC(C)=O ester\n# a comment\nCCOC(=O)CN.Cl\tsalt\n";
+    let sdf = include_str!("../testdata/shelf.sdf");
+    let bases =
+        "name,stock_ml,supplied_concentration_m,price_per_ml,currency\nLDA,100,2.0,0.45,EUR\n";
+    let solvents = "smiles\tlocation\nC1CCOC1\tcabinet 3\n";
+    let read = |ending: &str, text: &str| {
+        let files = [
+            (format!("s.{ending}"), text),
+            (
+                format!("e.{ending}"),
+                if ending == "csv" { electrophiles } else { text },
+            ),
+            ("b.csv".to_owned(), bases),
+            ("v.tsv".to_owned(), solvents),
+        ];
+        let files: Vec<(&str, &str)> = files
+            .iter()
+            .map(|(name, text)| (name.as_str(), *text))
+            .collect();
+        checked(&sources(&campaign(ending), &files)).expect("a sound campaign")
+    };
+    let library = Library::builtin().expect("the tables are sound");
+    let model = enolattice_model::Model::new(std::sync::Arc::new(library));
+    let structures = |spec: &CampaignSpec| -> Vec<(String, String)> {
+        let campaign = Campaign::new(spec, &model).expect("a sound campaign");
+        let structures = campaign.substrates.iter();
+        structures
+            .map(|s| (s.name.clone(), s.molecule.canonical().to_owned()))
+            .collect()
+    };
+    let (csv, smi, sdf) = (read("csv", csv), read("SMI", smi), read("sdf", sdf));
+    assert_eq!(structures(&csv), structures(&smi));
+    assert_eq!(structures(&csv), structures(&sdf));
+    assert_eq!(csv.substrates[0].pka_dmso, Some(29.5));
+    assert_eq!(sdf.substrates[0].pka_dmso, Some(29.5));
+    assert_eq!(sdf.substrates[0].stock, csv.substrates[0].stock);
+    assert_eq!(csv.electrophiles.entries[0].stock.stock_mg, Some(120.0));
+    let left_out = "data fields that are no columns of a campaign were left out:";
+    assert_eq!(
+        sdf.notes,
+        [
+            format!("s.sdf: {left_out} `Vendor.ID`"),
+            format!("e.sdf: {left_out} `PKA_DMSO`, `Vendor.ID`"),
+        ]
+    );
+    let base = &csv.bases.entries[0].stock;
+    assert_eq!(
+        (base.supplied_concentration_m, base.price_per_ml),
+        (Some(2.0), Some(0.45))
+    );
+    assert_eq!(csv.solvents.entries[0].stock.location, "cabinet 3");
+}
+
 #[test]
 fn the_example_of_the_page_can_be_read() {
     let page = include_str!("../docs/campaign.md");
@@ -167,11 +259,7 @@ fn the_example_of_the_page_can_be_read() {
         .split_once("```toml\n")
         .expect("the page has an example");
     let (example, _) = rest.split_once("```").expect("the example ends");
-    let library = Library::builtin().expect("the tables are sound");
-    let spec = read_against(
-        &sources(example, &[("substrates.csv", SUBSTRATES)]),
-        &library,
-    );
+    let spec = checked(&sources(example, &[("substrates.csv", SUBSTRATES)]));
     assert_eq!(spec.map(|spec| spec.substrates.len()), Ok(2));
 }
 
@@ -183,8 +271,7 @@ fn the_demo_can_be_read() {
         "substrates.csv",
         include_str!("../../../deploy/demo/substrates.csv"),
     )];
-    let library = Library::builtin().expect("the tables are sound");
-    let read = read_against(&sources(campaign, &files), &library);
+    let read = checked(&sources(campaign, &files));
     assert!(read.is_ok_and(|spec| spec.substrates.len() >= 12));
 }
 
@@ -204,9 +291,9 @@ library = ["LDA", "KOtBuu", 7]
 [electrophiles]
 smiles = "C1CC"
 [solvents]
-library = ["THF", ["THF", "DMF"], "THF/DMF"]
+library = ["THF", ["THF", "DMF"], "THF/DMFF 1:1"]
 [additives]
-library = "18-crown-6"
+library = "18-crown-66"
 [conditions]
 temperature = 25
 temperature_c = [25, 400, nan]
@@ -224,12 +311,8 @@ yield_at_least = 50
         short row,CC\n\
         two faults,C(,-99,\n\
         empty,,,\n";
-    let library = Library::builtin().expect("the tables are sound");
-    let faults = read_against(
-        &sources(campaign, &[("substrates.csv", substrates)]),
-        &library,
-    )
-    .expect_err("a broken campaign");
+    let faults = checked(&sources(campaign, &[("substrates.csv", substrates)]))
+        .expect_err("a broken campaign");
     let toml = |line, field, code| ("campaign.toml", line, field, code);
     let csv = |line, field, code| ("substrates.csv", line, field, code);
     assert_eq!(
@@ -243,9 +326,9 @@ yield_at_least = 50
             toml(11, "bases.library[2]", "VALUE_TYPE"),
             toml(11, "bases.library[1]", "REAGENT_UNKNOWN"),
             toml(13, "electrophiles.smiles", "STRUCTURE_INVALID"),
-            toml(15, "solvents.library[1]", "NOT_YET_ALLOWED"),
-            toml(15, "solvents.library[2]", "NOT_YET_ALLOWED"),
-            toml(17, "additives.library", "NOT_YET_ALLOWED"),
+            toml(15, "solvents.library[1]", "VALUE_TYPE"),
+            toml(15, "solvents.library[2]", "REAGENT_UNKNOWN"),
+            toml(17, "additives.library", "REAGENT_UNKNOWN"),
             toml(19, "conditions.temperature", "KEY_UNKNOWN"),
             toml(20, "conditions.temperature_c[1]", "VALUE_OUT_OF_RANGE"),
             toml(20, "conditions.temperature_c[2]", "VALUE_OUT_OF_RANGE"),
@@ -290,7 +373,7 @@ yield_at_least = 50
 fn faults_of_syntax_do_not_hide_the_others_nor_invent_any() {
     let campaign =
         "title = \"open\nunknown = 3\n[substrates]\nsmiles = [\"C1CC\"]\n[bases]\nlibrary = LDA\n";
-    let faults = read(&sources(campaign, &[])).expect_err("a broken campaign");
+    let faults = checked(&sources(campaign, &[])).expect_err("a broken campaign");
     assert_eq!(
         places(&faults),
         [
@@ -311,7 +394,7 @@ fn faults_of_syntax_do_not_hide_the_others_nor_invent_any() {
 #[test]
 fn an_axis_without_values_is_named() {
     let campaign = "[substrates]\nsmiles = []\n[bases]\nlibrary = \"all\"\n[solvents]\n";
-    let faults = read(&sources(campaign, &[])).expect_err("three axes are empty");
+    let faults = checked(&sources(campaign, &[])).expect_err("three axes are empty");
     assert_eq!(
         places(&faults),
         [
@@ -334,9 +417,7 @@ mod hostile {
         ) {
             let named = files_named(&campaign);
             let files: Vec<(&str, &str)> = named.iter().map(|name| (name.as_str(), csv.as_str())).collect();
-            let _ = read(&sources(&campaign, &files));
-            let campaign = "[substrates]\nfile = 'f'";
-            prop_assert!(read(&sources(campaign, &[("f", &csv)])).is_err());
+            let _ = checked(&sources(&campaign, &files));
         }
     }
 }

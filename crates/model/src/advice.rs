@@ -2,7 +2,8 @@
 
 use std::sync::Arc;
 
-use crate::{Addition, Advice, Cell, Model};
+use crate::screen::cautions_of;
+use crate::{Addition, Advice, Cell, Model, Severity};
 
 /// Changes that bring less than this are not worth a line.
 const LEAST_GAIN: f64 = 0.05;
@@ -13,6 +14,7 @@ const LINES: usize = 5;
 pub(crate) fn advice(model: &Model, cell: &Cell, yield_at_least: f64, now: f64) -> Vec<Advice> {
     let mut tried: Vec<Advice> = changes(model, cell)
         .into_iter()
+        .filter(|(_, changed)| can_be_recommended(changed))
         .filter_map(|(change, changed)| {
             let expected_yield = model.score(&changed, yield_at_least, 0).expected_yield?;
             (expected_yield > now + LEAST_GAIN).then_some(Advice {
@@ -24,6 +26,19 @@ pub(crate) fn advice(model: &Model, cell: &Cell, yield_at_least: f64, now: f64) 
     tried.sort_by(|a, b| b.expected_yield.total_cmp(&a.expected_yield));
     tried.truncate(LINES);
     tried
+}
+
+/// Whether the solvent is liquid throughout and no caution says never.
+fn can_be_recommended(cell: &Cell) -> bool {
+    let solvent = &cell.solvent.record;
+    let conditions = &cell.conditions;
+    let is_liquid = [conditions.temperature_c, conditions.formation_temperature_c]
+        .into_iter()
+        .all(|t| solvent.melting_c < t && t < solvent.boiling_c);
+    is_liquid
+        && cautions_of(cell)
+            .iter()
+            .all(|caution| caution.severity != Severity::Stop)
 }
 
 fn changes(model: &Model, cell: &Cell) -> Vec<(String, Cell)> {

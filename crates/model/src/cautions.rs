@@ -3,23 +3,22 @@
 //! What is known to be dangerous is said; what is not said is not known. Nothing here calls
 //! anything safe: safety data sheets, local rules and qualified staff decide.
 //!
-//! The cautions of a cell are the union of four parts, each of which depends on few axes, so
-//! that a screen computes the bits of each part once and joins them cell by cell.
+//! Rules stand as data in `rules/`; they ask for traits of the reagents (`traits/`) that are read
+//! off structures and records. A screen asks each reagent once for its [`CautionShare`] and joins
+//! the shares cell by cell; an explanation asks for [`cautions`] with their reasons.
 
-mod base_in_solvent;
-mod electrophile;
-mod groups;
+mod contents;
+mod phrases;
+mod rule;
+mod rules;
+mod share;
 mod statements;
-mod substrate;
 mod temperature;
+mod traits;
 
-use enolattice_molecule::Molecule;
-use enolattice_reagents::{Base, BaseKind, NamedElectrophile, Solvent};
-
-pub use base_in_solvent::base_solvent_cautions;
-pub use electrophile::{base_electrophile_cautions, electrophile_solvent_cautions};
+pub use contents::{Contents, additive_cautions, cautions};
+pub use share::CautionShare;
 pub use statements::hazard_statements;
-pub use substrate::base_substrate_cautions;
 
 /// Category of a caution.
 #[derive(Clone, Copy, Debug, PartialEq, Eq, Hash, PartialOrd, Ord)]
@@ -135,62 +134,26 @@ pub struct Caution {
     pub severity: Severity,
     /// Reason, for a person.
     pub text: String,
+    /// Who says so: a publication, a table of the library, `common practice` or `from memory`.
+    pub source: String,
 }
 
 impl Caution {
-    fn note(category: Category, text: impl Into<String>) -> Caution {
+    fn note(category: Category, text: impl Into<String>, source: &str) -> Caution {
         Caution {
             category,
             severity: Severity::Note,
             text: text.into(),
+            source: source.to_owned(),
         }
     }
-    fn warning(category: Category, text: impl Into<String>) -> Caution {
-        Caution {
-            category,
-            severity: Severity::Warning,
-            text: text.into(),
-        }
-    }
-    fn stop(category: Category, text: impl Into<String>) -> Caution {
-        Caution {
-            category,
-            severity: Severity::Stop,
-            text: text.into(),
-        }
-    }
-}
 
-/// All cautions of a cell, severest first, then by category.
-///
-/// The electrophile's row of the library, where it has one, brings hazard statements and a
-/// boiling point; the groups that make a molecule dangerous are read off its structure.
-pub fn cautions(
-    base: &Base,
-    electrophile: &Molecule,
-    named: Option<&NamedElectrophile>,
-    substrate: &Molecule,
-    solvent: &Solvent,
-    temperature_c: f64,
-    formation_temperature_c: f64,
-) -> Vec<Caution> {
-    let mut all = base_solvent_cautions(base, solvent, temperature_c, formation_temperature_c);
-    all.extend(electrophile_solvent_cautions(
-        electrophile,
-        named,
-        solvent,
-        temperature_c,
-    ));
-    all.extend(base_electrophile_cautions(base, electrophile));
-    all.extend(base_substrate_cautions(base, substrate));
-    all.sort_by(|a, b| {
-        let severity = b.severity.cmp(&a.severity);
-        severity
-            .then(a.category.cmp(&b.category))
-            .then_with(|| a.text.cmp(&b.text))
-    });
-    all.dedup();
-    all
+    fn warning(category: Category, text: impl Into<String>, source: &str) -> Caution {
+        Caution {
+            severity: Severity::Warning,
+            ..Caution::note(category, text, source)
+        }
+    }
 }
 
 /// The bits of cautions: those of their categories and the highest severity.
@@ -205,20 +168,6 @@ pub fn caution_bits(cautions: &[Caution]) -> u32 {
 pub fn join_caution_bits(a: u32, b: u32) -> u32 {
     const SEVERITY: u32 = 3 << 30;
     ((a | b) & !SEVERITY) | (a & SEVERITY).max(b & SEVERITY)
-}
-
-/// Bases that deprotonate, eliminate or polymerise with much heat.
-fn is_strong(base: &Base) -> bool {
-    is_destroyed_by_protic_media(base)
-        || matches!(base.kind, BaseKind::Alkoxide | BaseKind::Hydroxide)
-}
-
-/// Bases that water and alcohols destroy.
-fn is_destroyed_by_protic_media(base: &Base) -> bool {
-    matches!(
-        base.kind,
-        BaseKind::Amide | BaseKind::Hydride | BaseKind::Organolithium
-    )
 }
 
 #[cfg(test)]

@@ -2,7 +2,7 @@
 
 use std::sync::Arc;
 
-use crate::{Base, Electrophile, Pair, Solvent, Substrate};
+use crate::{Additive, Base, Electrophile, Pair, Solvent, Substrate};
 
 /// Order in which the reagents meet.
 #[derive(Clone, Copy, Debug, PartialEq, Eq, Hash)]
@@ -49,6 +49,8 @@ pub struct Conditions {
     pub base_equiv: f64,
     /// Electrophile, equivalents on substrate.
     pub electrophile_equiv: f64,
+    /// Additive, equivalents on substrate; without meaning where the cell has none.
+    pub additive_equiv: f64,
     /// Substrate, mol/L.
     pub concentration_m: f64,
     /// Time after the electrophile, h.
@@ -70,6 +72,8 @@ pub struct Cell {
     pub electrophile: Arc<Electrophile>,
     /// Solvent.
     pub solvent: Arc<Solvent>,
+    /// Additive, if any.
+    pub additive: Option<Arc<Additive>>,
     /// What substrate and electrophile make together.
     pub pair: Arc<Pair>,
     /// Conditions.

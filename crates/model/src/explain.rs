@@ -1,20 +1,24 @@
 //! Everything about one cell, in numbers and sentences.
 
+mod rates;
+
 use enolattice_molecule::AnionClass;
+use enolattice_reagents::Cation;
 use enolattice_units::delta_g_kj_mol;
 
 use crate::advice::advice;
 use crate::balance::{Acid, proton_balance};
-use crate::explanation::{CoursePoint, ExplainedRate, ExplainedSite};
+use crate::explanation::{CoursePoint, ExplainedSite};
 use crate::formation::Pots;
 use crate::kinetics::{Kinetics, Nudge};
+use crate::march::march;
 use crate::network::{Network, Species};
 use crate::outcome::Outcome;
-use crate::parameters::{P, PARAMETERS, Values};
+use crate::parameters::Values;
 use crate::program::Charge;
 use crate::reference::{Course, integrate};
 use crate::screen::{Coverage, cautions_of, coverage, feasibility, over_uncertainty, solve};
-use crate::{AcidSite, Cell, Explanation, Model, ModelError, Origin};
+use crate::{AcidSite, Cell, Contents, Explanation, Model, ModelError, Origin};
 
 /// Yield of the wanted product at the mean of all parameters: fast solver, then reference.
 pub(crate) fn both_solvers(cell: &Cell, values: &Values) -> Result<Option<(f64, f64)>, ModelError> {
@@ -38,6 +42,19 @@ fn reference(cell: &Cell, values: &Values) -> Result<(Course, Network), ModelErr
     Ok((course, reacting))
 }
 
+/// The end that the fast solver finds, without a time course, and its network of the reaction.
+fn by_fast_solver(cell: &Cell, values: &Values, pots: &Pots) -> (Course, Network) {
+    let networks = Charge::of(cell).reacting(cell, values, [Nudge::default()]);
+    let [end] = march(&networks, [pots.mean]);
+    let [network] = networks;
+    let course = Course {
+        points: Vec::new(),
+        formed: pots.mean,
+        end,
+    };
+    (course, network)
+}
+
 /// Explains one cell.
 pub(crate) fn explain(
     model: &Model,
@@ -54,6 +71,7 @@ pub(crate) fn explain(
     let mut explanation = Explanation {
         sites: sites(cell, &kinetics),
         cautions: cautions_of(cell),
+        hazards: Contents::from(cell).hazards(),
         model: model.fingerprint().to_string(),
         ..Explanation::default()
     };
@@ -84,7 +102,16 @@ pub(crate) fn explain(
     }
     let pots = Pots::form(cell, values);
     let (centre, uncertain) = over_uncertainty(cell, values, &pots, yield_at_least);
-    let (course, network) = reference(cell, values)?;
+    let (course, network) = match reference(cell, values) {
+        Ok(found) => found,
+        Err(error) => {
+            explanation
+                .limits
+                .push(format!("{error}; what follows is the fast solver's"));
+            by_fast_solver(cell, values, &pots)
+        }
+    };
+    let is_reference = !course.points.is_empty();
     let outcome = Outcome::read(cell, &kinetics, &network, &course.end, &course.formed);
     explanation.expected_yield = Some(uncertain.mean);
     explanation.yield_sigma = Some(uncertain.sigma);
@@ -92,14 +119,14 @@ pub(crate) fn explain(
     explanation.yield_on_limiting = Some(on_limiting(cell, uncertain.mean));
     explanation.feasibility = Some(feasibility(cell, &kinetics));
     explanation.selectivity = Some(outcome.selectivity);
-    explanation.reference_yield = Some(outcome.product);
+    explanation.reference_yield = is_reference.then_some(outcome.product);
     explanation.fast_yield = Some(centre.outcome.product);
     explanation.enolate_fraction = Some(enolate_fraction(
         &course,
         &network,
         Charge::of(cell).forms_first(),
     ));
-    explanation.rates = rates(cell, &network);
+    explanation.rates = rates::rates(cell, &network);
     explanation.course = course_points(&course, &network, outcome.site);
     product(&mut explanation, cell, outcome.site);
     explanation.limits.extend(limits(cell, &outcome));
@@ -154,13 +181,19 @@ fn deprotonation(explanation: &mut Explanation, cell: &Cell, kinetics: &Kinetics
 }
 
 fn sites(cell: &Cell, kinetics: &Kinetics<'_>) -> Vec<ExplainedSite> {
+    let medium = &kinetics.medium;
+    // contact ion pairs have no scale of free ions to be put on
+    let own_scale = match medium.is_paired() && medium.cation != Cation::None {
+        true => 0.0,
+        false => medium.own_scale(kinetics.values).unwrap_or(0.0),
+    };
     let explained = |molecule: &'static str, site: &AcidSite| ExplainedSite {
         molecule,
         atom: site.atom,
         element: symbol(site.element),
         hydrogens: site.hydrogens,
         pka_dmso: site.pka_dmso,
-        pka_medium: kinetics.pka(site.pka_dmso, site.class),
+        pka_medium: kinetics.pka(site.pka_dmso, site.class) + own_scale,
         sigma: site.sigma,
         origin: site.origin,
         source: site.source.clone(),
@@ -198,7 +231,7 @@ fn sites(cell: &Cell, kinetics: &Kinetics<'_>) -> Vec<ExplainedSite> {
         element: protonated_element(base.class),
         hydrogens: 1,
         pka_dmso: base.pka_dmso.value,
-        pka_medium: kinetics.pka_base(),
+        pka_medium: kinetics.pka_base() + own_scale,
         sigma: base.pka_dmso.sigma,
         origin: Origin::Measured,
         source: base.pka_dmso.source.clone(),
@@ -210,7 +243,7 @@ fn sites(cell: &Cell, kinetics: &Kinetics<'_>) -> Vec<ExplainedSite> {
             element: protonated_element(*class),
             hydrogens: 1,
             pka_dmso: acid.value,
-            pka_medium: kinetics.pka(acid.value, *class),
+            pka_medium: kinetics.pka(acid.value, *class) + own_scale,
             sigma: acid.sigma,
             origin: Origin::Measured,
             source: acid.source.clone(),
@@ -244,65 +277,6 @@ fn symbol(element: u8) -> &'static str {
     }
 }
 
-/// The rate constants of steps that involve the electrophile or two molecules of substrate, and of
-/// the deprotonation by the base, fastest first.
-fn rates(cell: &Cell, network: &Network) -> Vec<ExplainedRate> {
-    let attack_source = match &cell.electrophile.e {
-        Some((e, sigma, source)) => {
-            format!("log k = sN (N + E), E = {e:.1} ± {sigma:.1}: {source}")
-        }
-        None => format!(
-            "SN2 relative rates on: {}",
-            PARAMETERS[P::SN2_ANCHOR as usize].source
-        ),
-    };
-    let sigma = crate::screen::Spread::of(cell).attack;
-    let mut rates: Vec<_> = network
-        .reactions
-        .iter()
-        .filter_map(|r| {
-            let with_electrophile =
-                r.first == Species::Electrophile || r.second == Some(Species::Electrophile);
-            let condensation =
-                r.second == Some(Species::Substrate) && r.products[0] == Some(Species::DimerAnion);
-            let deprotonation =
-                r.first == Species::Base && matches!(r.products[1], Some(Species::Carbanion(_)));
-            if !(with_electrophile || condensation || deprotonation) || r.k <= 0.0 {
-                return None;
-            }
-            let source = if with_electrophile {
-                attack_source.clone()
-            } else if condensation {
-                "log k = sN (N + E) with the carbonyl group of the substrate".to_owned()
-            } else {
-                PARAMETERS[P::EXCHANGE_PROTIC as usize].source.to_owned()
-            };
-            Some(ExplainedRate {
-                step: step(r),
-                log10_k: enolattice_units::math::log10(r.k),
-                sigma,
-                source,
-            })
-        })
-        .collect();
-    rates.sort_by(|a, b| b.log10_k.total_cmp(&a.log10_k));
-    rates
-}
-
-fn step(reaction: &crate::network::Reaction) -> String {
-    let mut left = reaction.first.name();
-    if let Some(second) = reaction.second {
-        left = format!("{left} + {}", second.name());
-    }
-    let right: Vec<_> = reaction
-        .products
-        .iter()
-        .flatten()
-        .map(|s| s.name())
-        .collect();
-    format!("{left} → {}", right.join(" + "))
-}
-
 fn course_points(course: &Course, network: &Network, site: usize) -> Vec<CoursePoint> {
     let charged = network.charged[0];
     course
@@ -332,7 +306,14 @@ fn at_equilibrium(cell: &Cell, kinetics: &Kinetics<'_>) -> String {
         .map(|x| kinetics.pka(x.pka_dmso, x.class))
         .into_iter()
         .collect();
-    pkas.push(kinetics.site_pka(&cell.substrate.carbon[0]));
+    pkas.push(
+        match (kinetics.first_heteroatom(), kinetics.second_site()) {
+            (Some(_), Some((site, second))) => {
+                kinetics.pka(second, cell.substrate.carbon[site].acid.class)
+            }
+            _ => kinetics.site_pka(&cell.substrate.carbon[0]),
+        },
+    );
     let mut charged_m = vec![0.0; pkas.len() + 1];
     charged_m[0] = substrate_m;
     let mut acids = vec![
@@ -350,7 +331,7 @@ fn at_equilibrium(cell: &Cell, kinetics: &Kinetics<'_>) -> String {
     ];
     if let Some((value, class)) = &cell.solvent.record.acid {
         let pka = kinetics.pka(value.value, *class);
-        acids.push(acid("solvent", pka, cell.solvent.concentration_m(), 0.0));
+        acids.push(acid("solvent", pka, cell.solvent.record.acid_m, 0.0));
     }
     let forms = proton_balance(&acids);
     let carbanion = forms[0].last().copied().unwrap_or_default() / substrate_m;

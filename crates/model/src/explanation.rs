@@ -45,6 +45,8 @@ pub struct Explanation {
     pub course: Vec<CoursePoint>,
     /// Cautions, severest first.
     pub cautions: Vec<Caution>,
+    /// What is known of the hazards of each reagent, a sentence each; unknown where nothing is.
+    pub hazards: Vec<String>,
     /// What limits the cell or what the model does not cover, in sentences.
     pub limits: Vec<String>,
     /// What a change would bring; each was computed.

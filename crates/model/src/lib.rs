@@ -5,6 +5,7 @@
 mod acidity;
 mod advice;
 mod balance;
+mod bonding;
 mod carbonyl;
 mod cautions;
 mod cell;
@@ -37,8 +38,7 @@ pub use acidity::{
 };
 pub use balance::{Acid, proton_balance};
 pub use cautions::{
-    Category, Caution, Severity, base_electrophile_cautions, base_solvent_cautions,
-    base_substrate_cautions, caution_bits, cautions, electrophile_solvent_cautions,
+    Category, Caution, CautionShare, Contents, Severity, additive_cautions, caution_bits, cautions,
     hazard_statements, join_caution_bits,
 };
 pub use cell::{Addition, Cell, Conditions};
@@ -47,5 +47,5 @@ pub use explanation::{Advice, CoursePoint, ExplainedRate, ExplainedSite, Explana
 pub use formation::FormationTable;
 pub use model::{Draw, Fingerprint, Model, ModelError};
 pub use parameters::Parameter;
-pub use prepared::{Base, Electrophile, MeasuredPka, Pair, Solvent, Substrate};
+pub use prepared::{Additive, Base, Electrophile, MeasuredPka, Pair, Solvent, Substrate};
 pub use score::Score;

@@ -4,11 +4,13 @@ use enolattice_molecule::AnionClass;
 use enolattice_reagents::{Cation, SolventClass};
 use enolattice_units::log10_k_at;
 
-use crate::parameters::{P, Values, hydrogen_bond, localisation};
+use crate::parameters::{P, Values, hydrogen_bonding, localisation};
 use crate::prepared::Solvent;
 
 /// Kamlet–Taft α of water, the scale on which the class parameters are given.
 const ALPHA_WATER: f64 = 1.17;
+/// Kamlet–Taft β of DMSO, the medium of the scale.
+const ACCEPTANCE_DMSO: f64 = 0.76;
 /// Permittivity of DMSO, the medium of the scale.
 const PERMITTIVITY_DMSO: f64 = 46.7;
 /// 1/ε − 1/46.7 at the permittivity of THF, where the ion-pair parameters are given.
@@ -18,6 +20,15 @@ const PAIRING_CEILING: f64 = 1.6;
 /// Above this share of water's α the ions are solvated, not paired (from memory).
 const PROTIC_SHARE: f64 = 0.3;
 
+/// What an additive does to contact pairs and aggregates.
+#[derive(Clone, Copy, Debug, Default, PartialEq)]
+pub(crate) struct Loosening {
+    /// Share of contact pairs that it undoes, 0–1.
+    pub(crate) freed: f64,
+    /// log10 factor on the rates of aggregated lithium enolates.
+    pub(crate) disaggregated: f64,
+}
+
 /// Solvent, counter-ion and temperature.
 #[derive(Clone, Copy, Debug)]
 pub(crate) struct Medium<'a> {
@@ -25,6 +36,8 @@ pub(crate) struct Medium<'a> {
     pub(crate) solvent: &'a Solvent,
     /// Counter-ion of all anions.
     pub(crate) cation: Cation,
+    /// What additives do to the counter-ion.
+    pub(crate) additive: Loosening,
     /// Temperature, °C.
     pub(crate) temperature_c: f64,
 }
@@ -71,26 +84,35 @@ impl Medium<'_> {
             Cation::Sodium => 1.0,
             Cation::Potassium => values.get(P::PAIR_POTASSIUM),
             Cation::Caesium => values.get(P::PAIR_CAESIUM),
+            Cation::Ammonium => values.get(P::PAIR_AMMONIUM),
+            Cation::Magnesium => values.get(P::PAIR_MAGNESIUM),
+            Cation::Zinc => values.get(P::PAIR_ZINC),
             Cation::None => 0.0,
         };
-        cation * self.pairing()
+        cation * self.pairing() * (1.0 - self.additive.freed)
     }
 
     /// Part of the shift of the pKa that comes from hydrogen bonds to the anion, pK units.
-    pub(crate) fn hydrogen_bond_shift(&self, class: AnionClass, values: &Values) -> f64 {
-        hydrogen_bond(class).map_or(0.0, |p| values.get(p)) * self.donation()
+    pub(crate) fn hydrogen_bond_shift(
+        &self,
+        pka_dmso: f64,
+        class: AnionClass,
+        values: &Values,
+    ) -> f64 {
+        hydrogen_bonding(pka_dmso, class, values) * self.donation()
     }
 
-    /// The pKa of an acid in the medium.
+    /// The pKa of an acid in the medium, on a scale that agrees with the medium's own up to one
+    /// number for all acids ([`Medium::own_scale`]).
     ///
     /// `pKa(V, T) = [pKa(DMSO) − h·α/1.17 − loc·cat·g(ε)] · 298.15/T` for neutral acids;
-    /// for cationic acids `− c·(1/ε − 1/46.7)`, the cost of separating charges, in place
-    /// of the ion-pair term.
+    /// for cationic acids `− c·(1/ε − 1/46.7) − d·(0.76 − β)`, the cost of separating charges and
+    /// the hydrogen bond of the N–H to the solvent, in place of the ion-pair term.
     ///
     /// | symbol | meaning                                               |
     /// |--------|-------------------------------------------------------|
-    /// | h      | stabilisation of the class of anion by water, pK      |
-    /// | α      | Kamlet–Taft hydrogen-bond donation                    |
+    /// | h      | stabilisation of the anion by water, pK               |
+    /// | α, β   | Kamlet–Taft hydrogen-bond donation and acceptance     |
     /// | loc    | localisation against a ketone enolate, pK             |
     /// | cat    | counter-ion, Na⁺ = 1                                  |
     /// | g(ε)   | (1/ε − 1/46.7)/0.112, 0 in protic media, at most 1.6  |
@@ -98,17 +120,44 @@ impl Medium<'_> {
     /// # Source
     /// Form and parameters: see each entry of the parameter vector.
     pub(crate) fn pka(&self, pka_dmso: f64, class: AnionClass, values: &Values) -> f64 {
-        let bonded = pka_dmso - self.hydrogen_bond_shift(class, values);
-        let paired = if class == AnionClass::Neutral {
-            let separation = self.reciprocal_permittivity().max(0.0);
-            if self.is_protic() {
-                0.0
-            } else {
-                values.get(P::CHARGE_SEPARATION) * separation
-            }
+        let shift = if class == AnionClass::Neutral {
+            self.cationic_shift(1, values)
         } else {
-            localisation(class).map_or(0.0, |p| values.get(p)) * self.pair_strength(values)
+            let pairing = localisation(class).map_or(0.0, |p| values.get(p));
+            self.hydrogen_bond_shift(pka_dmso, class, values) + pairing * self.pair_strength(values)
         };
-        log10_k_at(bonded - paired, self.temperature_c)
+        log10_k_at(pka_dmso - shift, self.temperature_c)
+    }
+
+    /// The pKa of a cationic acid with this many N–H in the medium.
+    pub(crate) fn pka_cationic(&self, pka_dmso: f64, donors: u8, values: &Values) -> f64 {
+        let shift = self.cationic_shift(donors, values);
+        log10_k_at(pka_dmso - shift, self.temperature_c)
+    }
+
+    fn cationic_shift(&self, donors: u8, values: &Values) -> f64 {
+        let separation = if self.is_protic() {
+            0.0
+        } else {
+            values.get(P::CHARGE_SEPARATION) * self.reciprocal_permittivity().max(0.0)
+        };
+        let acceptance = ACCEPTANCE_DMSO - self.solvent.record.hydrogen_bond_acceptance;
+        values.get(P::H_CATIONIC_ACID) * self.donation()
+            + separation
+            + values.get(P::H_CATIONIC_DONOR) * f64::from(donors) * acceptance
+    }
+
+    /// What to add to [`Medium::pka`] for the pKa on the solvent's own scale: the proton's better or worse
+    /// solvation there than in DMSO. Zero in DMSO and, by the choice of the other parameters, in water and
+    /// alcohols; `None` where no scale is published.
+    pub(crate) fn own_scale(&self, values: &Values) -> Option<f64> {
+        let at_25 = match self.solvent.record.name.as_str() {
+            "MeCN" => values.get(P::SCALE_MECN),
+            "THF" => values.get(P::SCALE_THF),
+            "DMF" => values.get(P::SCALE_DMF),
+            "DMSO" | "water" | "MeOH" | "EtOH" | "iPrOH" | "tBuOH" => 0.0,
+            _ => return None,
+        };
+        Some(log10_k_at(at_25, self.temperature_c))
     }
 }

@@ -2,16 +2,19 @@
 
 use std::sync::Arc;
 
-use enolattice_molecule::Molecule;
-use enolattice_reagents::Library;
+use enolattice_molecule::{AnionClass, Molecule};
+use enolattice_reagents::{Cation, Library};
 use sha2::{Digest, Sha256};
 
 use crate::acidity::acidity_texts;
 use crate::explain::explain;
 use crate::formation::{FormationTable, Pots};
+use crate::medium::{Loosening, Medium};
 use crate::parameters::{PARAMETERS, Parameter, Values};
 use crate::screen::{score, yield_at};
-use crate::{Base, Cell, Electrophile, Explanation, MeasuredPka, Pair, Score, Solvent, Substrate};
+use crate::{
+    Additive, Base, Cell, Electrophile, Explanation, MeasuredPka, Pair, Score, Solvent, Substrate,
+};
 
 /// SHA-256 over code version, data, coefficients and arithmetic.
 #[derive(Clone, Copy, Debug, PartialEq, Eq, Hash, PartialOrd, Ord)]
@@ -60,7 +63,7 @@ impl Draw {
 }
 
 /// Raised whenever the meaning of a score changes without a change of data.
-const ARITHMETIC_VERSION: u32 = 1;
+const ARITHMETIC_VERSION: u32 = 2;
 
 /// The model with its library and parameters.
 #[derive(Debug)]
@@ -139,14 +142,51 @@ impl Model {
 
     /// Prepares a base.
     pub fn base(&self, record: &enolattice_reagents::Base) -> Base {
-        Base {
-            record: record.clone(),
-        }
+        Base::new(record)
     }
 
     /// Prepares a solvent.
     pub fn solvent(&self, record: &enolattice_reagents::Solvent) -> Solvent {
         Solvent {
+            record: record.clone(),
+        }
+    }
+
+    /// pKa of an acid in a solvent on the solvent's own scale, from its pKa in DMSO; `None` where no scale of
+    /// the solvent is known and lithium, sodium and other counter-ions do not define one.
+    ///
+    /// `donors` counts the N–H of a cationic acid (class [`AnionClass::Neutral`]); it is without meaning for
+    /// others.
+    pub fn pka_in_medium(
+        &self,
+        pka_dmso: f64,
+        class: AnionClass,
+        donors: u8,
+        solvent: &Solvent,
+        cation: Cation,
+        temperature_c: f64,
+    ) -> Option<f64> {
+        let medium = Medium {
+            solvent,
+            cation,
+            additive: Loosening::default(),
+            temperature_c,
+        };
+        let anchored = match class {
+            AnionClass::Neutral => medium.pka_cationic(pka_dmso, donors, &self.means),
+            _ => medium.pka(pka_dmso, class, &self.means),
+        };
+        // ion-pair acidities are relative to each other: they have no scale of free ions to be put on
+        let own = match cation {
+            Cation::None => medium.own_scale(&self.means)?,
+            _ => 0.0,
+        };
+        Some(anchored + own)
+    }
+
+    /// Prepares an additive.
+    pub fn additive(&self, record: &enolattice_reagents::Additive) -> Additive {
+        Additive {
             record: record.clone(),
         }
     }

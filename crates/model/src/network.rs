@@ -12,9 +12,9 @@ pub(crate) enum Species {
     Substrate,
     /// Substrate without the proton of its heteroatom.
     HeteroatomAnion,
-    /// Carbanion of the substrate at a site; a dianion where the heteroatom went first.
+    /// Carbanion of the substrate at a site.
     Carbanion(usize),
-    /// Substrate without two carbon protons.
+    /// Substrate without two protons, one of them from carbon at least.
     Dianion,
     /// Product at a site, neutral.
     Product(usize),
@@ -42,6 +42,12 @@ pub(crate) enum Species {
     Dimer,
     /// Its anion.
     DimerAnion,
+    /// The dimer after loss of water.
+    DryDimer,
+    /// Basic anion of the group that left the electrophile.
+    Leaving,
+    /// Its acid.
+    LeavingAcid,
     /// Product of the enolate's oxygen.
     OxygenProduct,
     /// Product of the substrate's heteroatom.
@@ -54,13 +60,18 @@ pub(crate) enum Species {
     Eliminated,
     /// Electrophile taken by solvent.
     Solvolysed,
-    /// Electrophile taken or ionised by base.
+    /// Electrophile taken by base.
     Spent,
+    /// Carbanion of the electrophile's own C–H.
+    ElectrophileAnion,
 }
+
+/// Index of the first species that exists once a site.
+const FIRST_OF_SITES: usize = 24;
 
 impl Species {
     /// Number of species.
-    pub(crate) const COUNT: usize = 20 + 4 * SITES;
+    pub(crate) const COUNT: usize = FIRST_OF_SITES + 4 * SITES;
 
     /// Name in explanations.
     pub(crate) fn name(self) -> String {
@@ -82,6 +93,9 @@ impl Species {
             Species::SolventAnion => "carbanion of the solvent",
             Species::Dimer => "dimer",
             Species::DimerAnion => "anion of the dimer",
+            Species::DryDimer => "dehydrated dimer",
+            Species::Leaving => "anion that left the electrophile",
+            Species::LeavingAcid => "its acid",
             Species::OxygenProduct => "O-product",
             Species::HeteroatomProduct => "product at the heteroatom",
             Species::OverReacted => "over-reacted product",
@@ -89,6 +103,7 @@ impl Species {
             Species::Eliminated => "eliminated electrophile",
             Species::Solvolysed => "solvolysed electrophile",
             Species::Spent => "electrophile spent on base",
+            Species::ElectrophileAnion => "carbanion of the electrophile",
         };
         plain.to_owned()
     }
@@ -116,10 +131,14 @@ impl Species {
             Species::Eliminated => 17,
             Species::Solvolysed => 18,
             Species::Spent => 19,
-            Species::Carbanion(site) => 20 + site,
-            Species::Product(site) => 20 + SITES + site,
-            Species::ProductAnion(site) => 20 + 2 * SITES + site,
-            Species::Dehydrated(site) => 20 + 3 * SITES + site,
+            Species::DryDimer => 20,
+            Species::Leaving => 21,
+            Species::LeavingAcid => 22,
+            Species::ElectrophileAnion => 23,
+            Species::Carbanion(site) => FIRST_OF_SITES + site,
+            Species::Product(site) => FIRST_OF_SITES + SITES + site,
+            Species::ProductAnion(site) => FIRST_OF_SITES + 2 * SITES + site,
+            Species::Dehydrated(site) => FIRST_OF_SITES + 3 * SITES + site,
         }
     }
 }
@@ -158,6 +177,11 @@ impl Amounts {
         self.over_sites(Species::Carbanion) + self.of(Species::Dianion)
     }
 
+    /// Dimer of the substrate in all its forms.
+    pub(crate) fn dimer(&self) -> f64 {
+        self.of(Species::Dimer) + self.of(Species::DimerAnion) + self.of(Species::DryDimer)
+    }
+
     /// Substrate that has not reacted.
     pub(crate) fn unreacted(&self) -> f64 {
         self.of(Species::Substrate) + self.of(Species::HeteroatomAnion) + self.carbanions()
@@ -171,7 +195,7 @@ impl Amounts {
             + self.of(Species::OxygenProduct)
             + self.of(Species::HeteroatomProduct)
             + self.of(Species::OverReacted)
-            + 2.0 * (self.of(Species::Dimer) + self.of(Species::DimerAnion))
+            + 2.0 * self.dimer()
             + self.of(Species::Taken)
     }
 }

@@ -2,7 +2,8 @@
 
 use enolattice_molecule::AnionClass;
 
-use crate::kinetics::{Bonding, Kinetics};
+use crate::bonding::Bonding;
+use crate::kinetics::Kinetics;
 use crate::network::{Amounts, Network, Species};
 use crate::prepared::SITES;
 use crate::{Cell, Channel};
@@ -26,6 +27,12 @@ const UNDISSOLVED: f64 = 0.5;
 const ON_SOLVENT: f64 = 0.4;
 /// Base left below this share was levelled.
 const BASE_LEFT: f64 = 0.1;
+/// Electrophile left below this share is nearly used up; then a fate that took [`FATE_COUNTS`] is the reason.
+const ELECTROPHILE_SHORT: f64 = 0.2;
+/// Share of the electrophile that a fate must have taken to count where little is left.
+const FATE_COUNTS: f64 = 0.1;
+/// Share of the electrophile that makes a fate the reason whatever is left.
+const FATE_DOMINATES: f64 = 0.4;
 
 /// What became of the substrate, as shares of what was charged.
 #[derive(Clone, Debug)]
@@ -72,10 +79,7 @@ impl Outcome {
                 Channel::OverAlkylation,
                 end.of(Species::OverReacted) / charged,
             ),
-            (
-                Channel::SelfCondensation,
-                2.0 * (end.of(Species::Dimer) + end.of(Species::DimerAnion)) / charged,
-            ),
+            (Channel::SelfCondensation, 2.0 * end.dimer() / charged),
             (
                 Channel::BaseAddsToSubstrate,
                 end.of(Species::Taken) / charged,
@@ -145,7 +149,7 @@ impl Unreacted<'_> {
     /// Share of the substrate that the electrophile or the base charged cannot serve.
     fn missing_reagent(&self) -> f64 {
         let [substrate, base, electrophile] = self.network.charged;
-        let regenerated = self.kinetics.bonding() != Bonding::Substitution;
+        let regenerated = self.kinetics.regenerates_base();
         let by_electrophile = 1.0 - electrophile / substrate;
         let by_base = if regenerated {
             0.0
@@ -241,7 +245,7 @@ impl Unreacted<'_> {
             (Channel::Solvolysis, self.end.of(Species::Solvolysed)),
             (
                 Channel::BaseConsumedByElectrophile,
-                self.end.of(Species::Spent),
+                self.end.of(Species::Spent) + self.end.of(Species::ElectrophileAnion),
             ),
         ];
         let (channel, lost) =
@@ -249,7 +253,8 @@ impl Unreacted<'_> {
                 fates[0],
                 |best, fate| if fate.1 > best.1 { fate } else { best },
             );
-        (left < 0.2 * charged && lost > 0.1 * charged || lost > 0.4 * charged).then_some(channel)
+        let counts = left < ELECTROPHILE_SHORT * charged && lost > FATE_COUNTS * charged;
+        (counts || lost > FATE_DOMINATES * charged).then_some(channel)
     }
 
     fn reversible(&self) -> Option<Channel> {
@@ -260,7 +265,16 @@ impl Unreacted<'_> {
         // at 0.2 mol/L half conversion needs K = 10 L/mol; slower than that is another matter
         let concentration = self.network.charged[0];
         let back = self.network.reactions.iter().any(|r| {
-            matches!(r.first, Species::ProductAnion(_)) && r.second.is_none() && r.k * 3600.0 > 1.0
+            let gives_back = r.products.contains(&Some(Species::Electrophile));
+            gives_back
+                && r.k
+                    * if r.second.is_some() {
+                        concentration
+                    } else {
+                        1.0
+                    }
+                    * 3600.0
+                    > 1.0
         });
         (back && log10_k + enolattice_units::math::log10(concentration) < 1.0)
             .then_some(Channel::Reversible)

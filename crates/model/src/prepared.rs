@@ -1,17 +1,23 @@
 //! Reagents prepared for the model: structure, acidities, reactivity.
 
 use enolattice_molecule::{
-    Bond, ElectrophilicGroup, Molecule, Product, c_product, dehydrated, o_product, recognise,
+    AnionClass, Bond, ElectrophilicGroup, Molecule, Product, c_product, dehydrated, o_product,
+    recognise,
 };
-use enolattice_reagents::{BaseKind, Library, NamedElectrophile};
+use enolattice_reagents::{BaseKind, Cation, Library, NamedElectrophile};
 
 use crate::Addition;
 use crate::acidity::{AcidSite, Origin, acid_sites};
 use crate::carbonyl::{Carbonyl, self_acceptor};
 use crate::electrophilicity::electrophilicity;
+use crate::medium::Loosening;
 
 /// Carbon sites that compete in a cell; further ones are less acidic and left out.
 pub(crate) const SITES: usize = 3;
+
+/// An N–H and a C–H that share an acceptor give one ambident anion, which takes the electrophile at
+/// carbon, unless the N–H is more acidic by more than this (oxindoles; common practice).
+const AMBIDENT_PK: f64 = 2.5;
 
 /// A laboratory's own pKa for a substrate.
 #[derive(Clone, Copy, Debug, PartialEq)]
@@ -99,7 +105,22 @@ impl Substrate {
             .carbon
             .first()
             .map_or(f64::INFINITY, |site| site.acid.pka_dmso);
-        (heteroatom.pka_dmso < carbon).then_some(heteroatom)
+        let margin = match self.carbon.first() {
+            Some(site) if self.share_an_acceptor(site.acid.atom, heteroatom.atom) => AMBIDENT_PK,
+            _ => 0.0,
+        };
+        (heteroatom.pka_dmso + margin < carbon).then_some(heteroatom)
+    }
+
+    /// Whether one carbonyl group or its kin activates both atoms.
+    fn share_an_acceptor(&self, carbon: usize, heteroatom: usize) -> bool {
+        let beside = |atom: usize| {
+            self.molecule
+                .neighbours(atom)
+                .iter()
+                .map(|&(other, _)| other)
+        };
+        beside(carbon).any(|middle| beside(heteroatom).any(|other| other == middle))
     }
 }
 
@@ -132,16 +153,69 @@ fn carbon_site(molecule: &Molecule, site: &AcidSite) -> CarbonSite {
 pub struct Base {
     /// The library's record.
     pub record: enolattice_reagents::Base,
+    /// N–H of its conjugate acid that donate hydrogen bonds: 1 for triethylammonium, 2 for piperidinium.
+    pub(crate) acid_donors: u8,
+    /// Whether it is a primary or secondary amine, which makes iminium ions of aldehydes.
+    pub(crate) makes_iminium: bool,
+    /// Whether it is a neutral amine without an N–H, which cannot keep an acyl or silyl group.
+    pub(crate) is_tertiary_amine: bool,
 }
 
 impl Base {
+    pub(crate) fn new(record: &enolattice_reagents::Base) -> Base {
+        let is_amine = record.kind == BaseKind::Amine;
+        let bears_hydrogen = nitrogen_hydrogens(&record.smiles, |_| true) > 0;
+        Base {
+            record: record.clone(),
+            acid_donors: nitrogen_hydrogens(&record.conjugate_acid, |charge| charge > 0),
+            makes_iminium: is_amine && has_amine_hydrogen(&record.smiles),
+            is_tertiary_amine: is_amine && !bears_hydrogen,
+        }
+    }
+
     /// `substrate into base` for metal amides of lithium, sodium and potassium, else `base into substrate`.
     pub fn usual_addition(&self) -> Addition {
-        match self.record.kind {
-            BaseKind::Amide => Addition::SubstrateIntoBase,
+        match (self.record.kind, self.record.cation) {
+            (BaseKind::Amide, Cation::Lithium | Cation::Sodium | Cation::Potassium) => {
+                Addition::SubstrateIntoBase
+            }
             _ => Addition::BaseIntoSubstrate,
         }
     }
+}
+
+/// Whether a nitrogen of a molecule is that of an amine with a hydrogen: saturated, not aromatic, and beside
+/// no double bond (amidines and guanidines have one).
+fn has_amine_hydrogen(smiles: &str) -> bool {
+    const NITROGEN: u8 = 7;
+    let Ok(molecule) = Molecule::parse(smiles) else {
+        return false;
+    };
+    let saturated = |atom: usize| {
+        let bonds = molecule.neighbours(atom);
+        bonds.iter().all(|&(_, bond)| bond == Bond::Single)
+    };
+    (0..molecule.atoms().len()).any(|i| {
+        let atom = &molecule.atoms()[i];
+        let beside = molecule.neighbours(i);
+        atom.element == NITROGEN
+            && atom.hydrogens > 0
+            && saturated(i)
+            && beside.iter().all(|&(other, _)| saturated(other))
+    })
+}
+
+/// Hydrogens on nitrogen atoms whose charge counts.
+fn nitrogen_hydrogens(smiles: &str, counts: impl Fn(i8) -> bool) -> u8 {
+    const NITROGEN: u8 = 7;
+    let Ok(molecule) = Molecule::parse(smiles) else {
+        return 0;
+    };
+    let nitrogens = molecule.atoms().iter();
+    nitrogens
+        .filter(|atom| atom.element == NITROGEN && counts(atom.charge))
+        .map(|atom| atom.hydrogens)
+        .sum()
 }
 
 /// A solvent.
@@ -152,15 +226,32 @@ pub struct Solvent {
 }
 
 impl Solvent {
-    /// Concentration of the pure solvent, mol/L.
-    pub(crate) fn concentration_m(&self) -> f64 {
-        1000.0 * self.record.density_g_ml / self.record.molar_mass_g_mol
-    }
-
-    /// Water of the usual grade, mol/L; 0 where the solvent is water.
+    /// Water of the usual grade, mol/L; 0 where water is the acid of the solvent itself.
     pub(crate) fn water_m(&self) -> f64 {
         const WATER_G_MOL: f64 = 18.015;
+        if matches!(self.record.acid, Some((_, AnionClass::Hydroxide))) {
+            return 0.0;
+        }
         self.record.water_ppm * 1e-6 * 1000.0 * self.record.density_g_ml / WATER_G_MOL
+    }
+}
+
+/// An additive.
+#[derive(Clone, Debug)]
+pub struct Additive {
+    /// The library's record.
+    pub record: enolattice_reagents::Additive,
+}
+
+impl Additive {
+    /// What this many equivalents on the base do to contact pairs of a counter-ion and to aggregates.
+    pub(crate) fn loosening(&self, cation: Cation, equiv_on_base: f64) -> Loosening {
+        let dose = equiv_on_base.clamp(0.0, 1.0);
+        let freed = self.record.frees.iter().find(|(known, _)| *known == cation);
+        Loosening {
+            freed: dose * freed.map_or(0.0, |(_, share)| *share),
+            disaggregated: dose * self.record.breaks_aggregates.value,
+        }
     }
 }
 

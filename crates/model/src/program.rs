@@ -46,7 +46,8 @@ impl Charge {
             } else {
                 Species::Solid
             },
-            water_m: cell.solvent.water_m(),
+            water_m: cell.solvent.water_m()
+                + substrate_m * conditions.base_equiv * cell.base.record.water_equiv,
             substrate_m,
             base_m: substrate_m * conditions.base_equiv,
             electrophile_m: substrate_m * conditions.electrophile_equiv,

@@ -47,7 +47,40 @@ pub(crate) fn diffusion_limited(log10_k: f64) -> f64 {
 ///
 /// `log k = k₀ + β·|Δ|` downhill, capped, and less by |Δ| uphill, so that forward and back keep K.
 pub(crate) fn exchange(delta: f64, class: AnionClass, medium: &Medium, values: &Values) -> f64 {
-    let beta = values.get(P::EXCHANGE_BRONSTED);
+    exchange_with_slope(P::EXCHANGE_BRONSTED, delta, class, medium, values)
+}
+
+/// log10 k of proton transfer from a C–H acid to a carbanion.
+///
+/// As [`exchange`]; contact ion pairs and aggregates of lithium, magnesium and zinc gain little from the
+/// driving force, which is why directed aldol additions outrun the loss of the aldehyde's proton.
+pub(crate) fn exchange_of_carbons(
+    delta: f64,
+    class: AnionClass,
+    medium: &Medium,
+    values: &Values,
+) -> f64 {
+    let is_held = medium.is_paired()
+        && matches!(
+            medium.cation,
+            Cation::Lithium | Cation::Magnesium | Cation::Zinc
+        );
+    let slope = if is_held {
+        P::EXCHANGE_PAIRED_BRONSTED
+    } else {
+        P::EXCHANGE_BRONSTED
+    };
+    exchange_with_slope(slope, delta, class, medium, values)
+}
+
+fn exchange_with_slope(
+    slope: P,
+    delta: f64,
+    class: AnionClass,
+    medium: &Medium,
+    values: &Values,
+) -> f64 {
+    let beta = values.get(slope);
     let solvent = if medium.is_protic() {
         P::EXCHANGE_PROTIC
     } else {
@@ -57,17 +90,26 @@ pub(crate) fn exchange(delta: f64, class: AnionClass, medium: &Medium, values: &
         }
     };
     let cation = match medium.cation {
-        Cation::Lithium if medium.is_paired() => values.get(P::EXCHANGE_LITHIUM),
-        Cation::Potassium | Cation::Caesium => values.get(P::EXCHANGE_POTASSIUM),
+        Cation::Lithium | Cation::Magnesium | Cation::Zinc if medium.is_paired() => {
+            values.get(P::EXCHANGE_LITHIUM) * (1.0 - medium.additive.freed)
+        }
+        Cation::Potassium | Cation::Caesium | Cation::Ammonium => values.get(P::EXCHANGE_POTASSIUM),
         Cation::None => values.get(P::EXCHANGE_AMINE),
         _ => 0.0,
     };
-    let nitro = match (class, medium.is_protic()) {
+    let by_class = match (class, medium.is_protic()) {
         (AnionClass::Nitronate, true) => values.get(P::EXCHANGE_NITRO_PROTIC),
         (AnionClass::Nitronate, false) => values.get(P::EXCHANGE_NITRO),
+        (
+            AnionClass::BetaDicarbonyl
+            | AnionClass::CyclicBetaDicarbonyl
+            | AnionClass::CyclicDiester,
+            _,
+        ) => values.get(P::EXCHANGE_DICARBONYL),
+        (AnionClass::Nitrile, _) => values.get(P::EXCHANGE_CYANO),
         _ => 0.0,
     };
-    let at_25 = values.get(solvent) + cation + nitro + beta * delta.abs();
+    let at_25 = values.get(solvent) + cation + by_class + beta * delta.abs();
     both_ways(at_25, delta, medium, values)
 }
 
@@ -80,9 +122,15 @@ pub(crate) fn exchange_with_amide(delta: f64, medium: &Medium<'_>, values: &Valu
     both_ways(at_25, delta, medium, values)
 }
 
-/// log10 k of proton transfer from a C–H acid to an alkyllithium.
-pub(crate) fn exchange_with_organolithium(delta: f64, medium: &Medium<'_>, values: &Values) -> f64 {
-    both_ways(values.get(P::ORGANOLITHIUM_EXCHANGE), delta, medium, values)
+/// log10 k of proton transfer from a C–H acid to an alkyllithium or an alkylmagnesium halide, whose
+/// rate at ΔpKa = 0 and 25 °C is `at_25`.
+pub(crate) fn exchange_with_organometal(
+    at_25: P,
+    delta: f64,
+    medium: &Medium<'_>,
+    values: &Values,
+) -> f64 {
+    both_ways(values.get(at_25), delta, medium, values)
 }
 
 /// Brings a downhill rate to the temperature, caps it, and takes |Δ| off where the step is uphill.
@@ -135,7 +183,8 @@ pub(crate) fn monomer_share(concentration_m: f64, log10_k_tetramer: f64) -> f64 
 /// Streitwieser, Chem. Rev. 1956, 56, 571, averages of many reactions (from memory):
 /// methyl 30, ethyl 1, propyl 0.4, isobutyl 0.03, neopentyl 1e-5, isopropyl 0.025, allyl 40,
 /// benzyl 120; Conant, Kirner and Hussey, J. Am. Chem. Soc. 1925, 47, 488 for α-carbonyl and
-/// cyclohexyl (from memory); tertiary: no SN2, a bound.
+/// cyclohexyl (from memory); tertiary: no SN2, a bound. Chloromethyl methyl ether 920 against butyl chloride
+/// with iodide (the same, from memory); dihalomethanes about as slow as ethyl or slower (from memory).
 pub(crate) fn alkyl_group(group: AlkylGroup) -> f64 {
     match group {
         AlkylGroup::Methyl => 1.48,
@@ -150,6 +199,8 @@ pub(crate) fn alkyl_group(group: AlkylGroup) -> f64 {
         AlkylGroup::Benzyl => 2.1,
         AlkylGroup::SecondaryActivated => 0.4,
         AlkylGroup::AlphaCarbonyl => 3.0,
+        AlkylGroup::AlphaHetero => 2.6,
+        AlkylGroup::Halomethyl => -0.5,
     }
 }
 
@@ -157,7 +208,8 @@ pub(crate) fn alkyl_group(group: AlkylGroup) -> f64 {
 ///
 /// # Source
 /// Streitwieser, Solvolytic Displacement Reactions, 1962, and compilations in textbooks (from memory);
-/// sulfonates with enolates are slower than with hard nucleophiles.
+/// sulfonates with enolates are slower than with hard nucleophiles. Trialkyloxonium ions and trialkyl
+/// phosphates by the conditions under which they alkylate (from memory).
 pub(crate) fn leaving_group(leaving: LeavingGroup) -> f64 {
     match leaving {
         LeavingGroup::Fluoride => -4.0,
@@ -168,6 +220,8 @@ pub(crate) fn leaving_group(leaving: LeavingGroup) -> f64 {
         LeavingGroup::Mesylate => 0.0,
         LeavingGroup::Triflate => 3.3,
         LeavingGroup::Sulfate => 1.3,
+        LeavingGroup::Ether => 4.0,
+        LeavingGroup::Phosphate => -2.0,
     }
 }
 
@@ -194,16 +248,22 @@ pub(crate) fn pairing(
     if !medium.is_paired() || nucleophile.class == AnionClass::Neutral {
         return 0.0;
     }
+    let bound = 1.0 - medium.additive.freed;
     match medium.cation {
         Cation::Lithium => {
             let share = match nucleophile.aggregated_at_m {
-                Some(c) if aggregates => monomer_share(c, values.get(P::TETRAMER)),
+                Some(c) if aggregates => (monomer_share(c, values.get(P::TETRAMER))
+                    + medium.additive.disaggregated)
+                    .min(0.0),
                 _ => 0.0,
             };
-            values.get(P::PAIRED_LITHIUM) + share
+            values.get(P::PAIRED_LITHIUM) * bound + share
         }
-        Cation::Sodium => values.get(P::PAIRED_SODIUM),
-        Cation::Potassium | Cation::Caesium => values.get(P::PAIRED_POTASSIUM),
+        Cation::Sodium => values.get(P::PAIRED_SODIUM) * bound,
+        Cation::Potassium | Cation::Caesium => values.get(P::PAIRED_POTASSIUM) * bound,
+        Cation::Ammonium => values.get(P::PAIRED_AMMONIUM) * bound,
+        Cation::Magnesium => values.get(P::PAIRED_MAGNESIUM) * bound,
+        Cation::Zinc => values.get(P::PAIRED_ZINC) * bound,
         Cation::None => values.get(P::PAIRED_ONIUM),
     }
 }
@@ -219,11 +279,13 @@ fn is_paired_lithium(nucleophile: &Nucleophile, medium: &Medium) -> bool {
 
 /// log10 k of substitution at saturated carbon at the medium's temperature.
 ///
-/// `log k(25 °C) = k₀ + group + leaving + β·(pKa − 22) − s·shift + pairing + steric + relative`
+/// `log k(25 °C) = k₀ + r + β·(pKa − 22) − s·shift + pairing + steric + relative`
+///
+/// `to_ethyl_bromide` is r, log10 k of the electrophile against ethyl bromide: [`alkyl_group`] plus
+/// [`leaving_group`], or a ring's own.
 pub(crate) fn substitution(
     nucleophile: &Nucleophile,
-    group: AlkylGroup,
-    leaving: LeavingGroup,
+    to_ethyl_bromide: f64,
     medium: &Medium,
     values: &Values,
 ) -> f64 {
@@ -234,15 +296,14 @@ pub(crate) fn substitution(
         values.get(P::SN2_BRONSTED)
     };
     let shift = medium
-        .hydrogen_bond_shift(nucleophile.class, values)
+        .hydrogen_bond_shift(nucleophile.pka_dmso, nucleophile.class, values)
         .max(0.0);
-    let at_25 =
-        values.get(P::SN2_ANCHOR) + alkyl_group(group) + leaving_group(leaving) + bronsted * above
-            - values.get(P::SN2_SOLVATION) * shift
-            + pairing(nucleophile, medium, values, true)
-            + f64::from(nucleophile.crowding) * values.get(P::STERIC_SN2)
-            + f64::from(nucleophile.branches) * values.get(P::STERIC_BRANCH)
-            + nucleophile.relative;
+    let at_25 = values.get(P::SN2_ANCHOR) + to_ethyl_bromide + bronsted * above
+        - values.get(P::SN2_SOLVATION) * shift
+        + pairing(nucleophile, medium, values, true)
+        + f64::from(nucleophile.crowding) * values.get(P::STERIC_SN2)
+        + f64::from(nucleophile.branches) * values.get(P::STERIC_BRANCH)
+        + nucleophile.relative;
     diffusion_limited(at_temperature(
         at_25,
         25.0,
@@ -260,7 +321,7 @@ pub(crate) fn substitution(
 pub(crate) fn addition(nucleophile: &Nucleophile, e: f64, medium: &Medium, values: &Values) -> f64 {
     let s_n = values.get(P::MAYR_S_N);
     let shift = medium
-        .hydrogen_bond_shift(nucleophile.class, values)
+        .hydrogen_bond_shift(nucleophile.pka_dmso, nucleophile.class, values)
         .max(0.0);
     let lithium = is_paired_lithium(nucleophile, medium);
     let above = nucleophile.pka_dmso - SN2_ANCHOR_PKA;

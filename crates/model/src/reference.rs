@@ -10,8 +10,16 @@ use crate::network::{Amounts, Network, Reaction, Species, Stage};
 
 /// Relative tolerance of the amounts and absolute one, mol/L, in the order in which they are tried.
 /// The absolute one is far below any amount that matters, so that reagents that are nearly used up
-/// stay positive; the looser pairs serve the few stages on which the integrator gives up.
-const TOLERANCES: [(f64, f64); 3] = [(1e-5, 1e-13), (1e-4, 1e-12), (1e-4, 1e-10)];
+/// stay positive; the other pairs serve the few stages on which the integrator gives up.
+const TOLERANCES: [(f64, f64); 5] = [
+    (1e-5, 1e-13),
+    (1e-4, 1e-12),
+    (1e-4, 1e-10),
+    (1e-6, 1e-13),
+    (1e-6, 1e-10),
+];
+/// An amount below this, mol/L, is no rounding error but a solution that has left the real one.
+const LEAST_M: f64 = -1e-6;
 /// Points of the time course in each stage.
 const POINTS: usize = 12;
 
@@ -153,13 +161,12 @@ fn solve(system: &System<'_>, pot: &Amounts, at: &[f64]) -> Result<Vec<(f64, Sta
         {
             Ok(solution) => {
                 let points: Vec<_> = solution.iter().map(|(t, y)| (*t, *y)).collect();
-                if points
-                    .iter()
-                    .all(|(_, y)| y.iter().all(|amount| amount.is_finite()))
-                {
+                // a comparison with what is not a number is false
+                let is_amount = |amount: &f64| *amount > LEAST_M;
+                if points.iter().all(|(_, y)| y.iter().all(is_amount)) {
                     return Ok(points);
                 }
-                reason = "an amount is not a number".to_owned();
+                reason = "an amount is negative or not a number".to_owned();
             }
             Err(error) => {
                 let said = format!("{error:?}");

@@ -31,7 +31,9 @@ pub(crate) fn cell(
         base: Arc::new(model.base(library.base(base).expect("a base"))),
         electrophile: Arc::new(electrophile),
         solvent: Arc::new(model.solvent(library.solvent(solvent).expect("a solvent"))),
+        additive: None,
         conditions: Conditions {
+            additive_equiv: 0.0,
             temperature_c: 25.0,
             formation_temperature_c: 25.0,
             base_equiv: 1.1,

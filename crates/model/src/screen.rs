@@ -5,7 +5,7 @@ use enolattice_units::math;
 
 use crate::cautions::cautions;
 use crate::formation::Pots;
-use crate::kinetics::{Bonding, Kinetics, Nudge};
+use crate::kinetics::{Kinetics, Nudge};
 use crate::march::march;
 use crate::network::{Amounts, Network};
 use crate::outcome::Outcome;
@@ -70,7 +70,10 @@ const DESTROYED_PKA: f64 = 5.0;
 fn destroyed_by_solvent(cell: &Cell) -> Option<String> {
     use enolattice_reagents::{BaseKind, SolventClass};
     let record = &cell.base.record;
-    if !matches!(record.kind, BaseKind::Amide | BaseKind::Organolithium) {
+    if !matches!(
+        record.kind,
+        BaseKind::Amide | BaseKind::Organolithium | BaseKind::Grignard
+    ) {
         return None;
     }
     let (acid, _) = cell.solvent.record.acid.as_ref()?;
@@ -279,7 +282,7 @@ pub(crate) fn feasibility(cell: &Cell, kinetics: &Kinetics<'_>) -> f64 {
     let conditions = &cell.conditions;
     let (base, electrophile) = (conditions.base_equiv, conditions.electrophile_equiv);
     let site = &cell.substrate.carbon[0];
-    let regenerated = kinetics.bonding() != Bonding::Substitution;
+    let regenerated = kinetics.regenerates_base();
     let cap = electrophile
         .min(if regenerated { 1.0 } else { base })
         .min(1.0);
@@ -408,13 +411,5 @@ fn is_negligible(cell: &Cell, kinetics: &Kinetics<'_>) -> bool {
 
 /// All cautions of a cell.
 pub(crate) fn cautions_of(cell: &Cell) -> Vec<crate::Caution> {
-    cautions(
-        &cell.base.record,
-        &cell.electrophile.molecule,
-        cell.electrophile.named.as_ref(),
-        &cell.substrate.molecule,
-        &cell.solvent.record,
-        cell.conditions.temperature_c,
-        cell.conditions.formation_temperature_c,
-    )
+    cautions(&cell.into())
 }

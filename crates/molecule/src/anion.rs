@@ -51,6 +51,8 @@ pub enum AnionClass {
     SilylNitrogen,
     /// Thiolate.
     Thiolate,
+    /// Fluoride.
+    Fluoride,
     /// Hydride.
     Hydride,
     /// A neutral base whose conjugate acid is a cation (amines, amidines).

@@ -15,6 +15,7 @@ pub(crate) struct Draft {
     hydrogens: Vec<u8>,
     geometry: Vec<ez_markers::EzFact>,
     removed: Vec<bool>,
+    cut: Vec<graph::BondIdx>,
 }
 
 fn index(atom: usize) -> AtomIdx {
@@ -29,6 +30,7 @@ impl Draft {
         clear_marks(&mut graph);
         Draft {
             removed: vec![false; graph.atom_count()],
+            cut: Vec::new(),
             hydrogens: molecule.atoms().iter().map(|a| a.hydrogens).collect(),
             graph,
             geometry,
@@ -78,13 +80,44 @@ impl Draft {
 
     /// Changes the order of a bond.
     pub(crate) fn reorder(&mut self, a: usize, b: usize, order: BondOrder) {
-        let bond = self
-            .graph
+        if let Some(bond) = self.bond(a, b) {
+            self.graph.set_bond_order(bond, order);
+        }
+    }
+
+    fn bond(&self, a: usize, b: usize) -> Option<graph::BondIdx> {
+        self.graph
             .neighbors(index(a))
             .find(|(other, _)| *other == index(b))
-            .map(|(_, bond)| bond);
-        if let Some(bond) = bond {
-            self.graph.set_bond_order(bond, order);
+            .map(|(_, bond)| bond)
+    }
+
+    /// Takes a bond away and keeps both its ends.
+    pub(crate) fn cut(&mut self, a: usize, b: usize) {
+        // Bonds keep their indices until the end, since the geometry names bonds.
+        self.cut.extend(self.bond(a, b));
+    }
+
+    /// Changes the formal charge of an atom.
+    pub(crate) fn set_charge(&mut self, atom: usize, charge: i8) {
+        self.graph.set_charge(index(atom), charge);
+        self.set_hydrogens(atom, self.hydrogens[atom]);
+    }
+
+    /// Atomic number of an atom.
+    pub(crate) fn element(&self, atom: usize) -> u8 {
+        self.graph.atom(index(atom)).element.atomic_number()
+    }
+
+    /// Hydrogens on an atom.
+    pub(crate) fn hydrogens(&self, atom: usize) -> u8 {
+        self.hydrogens[atom]
+    }
+
+    /// Removes all atoms from `first` on but one.
+    pub(crate) fn keep_only(&mut self, kept: usize, first: usize) {
+        for atom in first..self.removed.len() {
+            self.removed[atom] = atom != kept;
         }
     }
 
@@ -178,6 +211,11 @@ impl Draft {
     /// The edited molecule, and the new index of each atom of the draft (`None`: removed).
     pub(crate) fn finish(mut self) -> Result<(Molecule, Vec<Option<usize>>), StructureError> {
         self.write_geometry();
+        self.cut
+            .sort_unstable_by_key(|bond| std::cmp::Reverse(bond.0));
+        for bond in &self.cut {
+            self.graph.remove_bond(*bond);
+        }
         let mut kept: Vec<usize> = (0..self.removed.len()).collect();
         for atom in (0..self.removed.len()).rev() {
             if self.removed[atom] {
@@ -197,8 +235,9 @@ impl Draft {
     /// Marks the double bonds that are still there and still have both their references.
     fn write_geometry(&mut self) {
         let there = |bond: graph::BondIdx| {
+            let is_cut = self.cut.contains(&bond);
             let bond = self.graph.bond(bond);
-            !self.removed[bond.atom1.0 as usize] && !self.removed[bond.atom2.0 as usize]
+            !is_cut && !self.removed[bond.atom1.0 as usize] && !self.removed[bond.atom2.0 as usize]
         };
         let facts: Vec<ez_markers::EzFact> = self
             .geometry

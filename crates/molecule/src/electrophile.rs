@@ -1,140 +1,40 @@
 //! Electrophilic groups recognised from structure.
 
-mod aldehyde;
+mod acyl;
 mod alkylating;
+mod aromatic;
+mod carbonyl;
 mod conjugate;
+mod cumulene;
+mod donors;
+mod groups;
 mod hammett;
+mod imine;
+mod kind;
+mod matching;
+mod order;
+mod quinone;
+mod silyl;
 mod skeleton;
+mod strained;
+mod transfer;
 mod uncovered;
 
+pub use donors::{AcylDonor, ChalcogenDonor, Donor, HalogenDonor};
+pub use groups::{Acceptor, AlkylGroup, Cumulene, ImineNitrogen, LeavingGroup, RingHeteroatom};
+pub use kind::ElectrophileKind;
+
 use crate::Molecule;
-
-/// The carbon skeleton at the reacting carbon of an alkylating agent.
-#[derive(Clone, Copy, Debug, PartialEq, Eq, Hash)]
-pub enum AlkylGroup {
-    /// CH3–X.
-    Methyl,
-    /// CH3CH2–X.
-    Ethyl,
-    /// RCH2CH2–X without branch at the β carbon.
-    Primary,
-    /// R2CHCH2–X.
-    Isobutyl,
-    /// R3CCH2–X.
-    Neopentyl,
-    /// R2CH–X, open chain or ring of other size.
-    Secondary,
-    /// Cyclohexyl.
-    Cyclohexyl,
-    /// R3C–X.
-    Tertiary,
-    /// C=C–CH2–X.
-    Allyl,
-    /// C≡C–CH2–X.
-    Propargyl,
-    /// Aryl–CH2–X.
-    Benzyl,
-    /// Aryl–CHR–X, C=C–CHR–X, C≡C–CHR–X and X–CHR–C(=O)R.
-    SecondaryActivated,
-    /// X–CH2–C(=O)R and X–CH2–CN.
-    AlphaCarbonyl,
-}
-
-/// What leaves.
-#[derive(Clone, Copy, Debug, PartialEq, Eq, Hash)]
-pub enum LeavingGroup {
-    /// Fluoride.
-    Fluoride,
-    /// Chloride.
-    Chloride,
-    /// Bromide.
-    Bromide,
-    /// Iodide.
-    Iodide,
-    /// Arenesulfonate.
-    Tosylate,
-    /// Alkanesulfonate.
-    Mesylate,
-    /// Perfluoroalkanesulfonate.
-    Triflate,
-    /// Monoalkyl sulfate (from a dialkyl sulfate).
-    Sulfate,
-}
-
-/// The group that makes an alkene a Michael acceptor.
-#[derive(Clone, Copy, Debug, PartialEq, Eq, Hash, PartialOrd, Ord)]
-pub enum Acceptor {
-    /// Nitro.
-    Nitro,
-    /// Aldehyde.
-    Aldehyde,
-    /// Ketone.
-    Ketone,
-    /// Sulfone.
-    Sulfone,
-    /// Ester.
-    Ester,
-    /// Nitrile.
-    Nitrile,
-    /// Amide.
-    Amide,
-}
-
-/// How a group reacts.
-#[derive(Clone, Copy, Debug, PartialEq)]
-pub enum ElectrophileKind {
-    /// Nucleophilic substitution at saturated carbon.
-    Alkyl {
-        /// Skeleton at the carbon.
-        group: AlkylGroup,
-        /// What leaves.
-        leaving: LeavingGroup,
-        /// Number of β hydrogens on saturated carbon (0: no E2).
-        beta_hydrogens: u8,
-        /// Whether a β hydrogen is activated by aryl, vinyl or an acceptor.
-        activated_beta_hydrogen: bool,
-    },
-    /// Conjugate addition.
-    Michael {
-        /// Carbon that becomes the carbanion.
-        alpha: usize,
-        /// Strongest acceptor on the alkene.
-        acceptor: Acceptor,
-        /// Further acceptors on the α carbon.
-        further_acceptors: u8,
-        /// Acceptors on the β carbon (fumarates, maleimides).
-        beta_acceptors: u8,
-        /// Alkyl groups on the β carbon.
-        beta_alkyl: u8,
-        /// Aryl, alkenyl and alkynyl groups on the β carbon.
-        beta_aryl: u8,
-        /// Alkyl groups on the α carbon.
-        alpha_alkyl: u8,
-    },
-    /// Addition to an aldehyde.
-    Aldehyde {
-        /// Whether the carbonyl sits on an aromatic ring.
-        aromatic: bool,
-        /// Number of α hydrogens.
-        alpha_hydrogens: u8,
-        /// Sum of Hammett σ (para-like) of the substituents on an aromatic ring.
-        hammett_sigma: f64,
-    },
-    /// A carbon–halogen bond that does not react with carbanions under these conditions.
-    Inert {
-        /// Why, as a sentence for the user.
-        reason: &'static str,
-    },
-}
 
 /// The electrophilic group of a molecule that reacts.
 #[derive(Clone, Debug, PartialEq)]
 pub struct ElectrophilicGroup {
     /// How it reacts.
     pub kind: ElectrophileKind,
-    /// The carbon that is attacked.
-    pub carbon: usize,
-    /// The atom bound to `carbon` that leaves with everything behind it; none for additions.
+    /// The atom that is attacked.
+    pub atom: usize,
+    /// The atom bound to `atom` that leaves with everything behind it, or stays behind with a hydrogen
+    /// where a ring opens; none for additions and for three-membered rings.
     pub leaving_atom: Option<usize>,
     /// Other positions of the same kind that stay reactive after the first has reacted
     /// (1 for 1,4-dibromobutane; 0 for dimethyl sulfate and for fumarates).
@@ -143,46 +43,29 @@ pub struct ElectrophilicGroup {
 
 /// Recognises the group that reacts with carbanions, or says why the molecule is not covered.
 ///
-/// Alkylating groups, Michael acceptors and aldehydes are looked for. Esters,
-/// nitriles, ethers, ketones, nitroarenes, aryl halides and fluorides beside one
-/// of these are spectators. Vinyl and aryl halides alone are recognised as
-/// [`ElectrophileKind::Inert`]: there the model knows that nothing happens.
+/// Groups are looked for in this order of reactivity (common practice); what comes later in it is a
+/// spectator beside what comes earlier, and so are nitriles, ethers, nitroarenes and free O–H,
+/// N–H and S–H:
+///
+/// 1. transfer reagents (halogen, sulfur, selenium, nitrogen, oxygen) but disulfides;
+/// 2. heterocumulenes; 3. acid halides, sulfonyl donors, anhydrides, acyl cyanides and azoles,
+///    chloroformates, dicarbonates, carbamoyl chlorides; 4. silyl halides and sulfonates;
+/// 5. iminium ions and imines with sulfonyl, acyl or phosphinoyl on nitrogen;
+/// 6. alkylating groups, Michael acceptors, aldehydes: two of these in one molecule are refused;
+/// 7. epoxides, aziridines, thiiranes (refused beside an alkylating group or a ketone);
+/// 8. activated ketones; 9. active esters and oxalates; 10. disulfides;
+/// 11. aryl halides activated by nitro, two ring nitrogens or five halogens;
+/// 12. ketones; 13. aldimines;
+/// 14. formates, thioesters, esters, carbonates, tertiary amides;
+/// 15. aryl halides activated by other acceptors (by one ring nitrogen: refused beside 12 to
+///     14, but before tert-alkyl esters, carbonates and amides);
+/// 16. ketimines; 17. phosphates; 18. lone alkyl fluorides;
+/// 19. vinyl, aryl and bridgehead halides, as [`ElectrophileKind::Inert`]: there the model knows
+///     that nothing happens.
 ///
 /// # Errors
-/// The reason, as a sentence for the user: no known electrophilic group, several
-/// different ones, or a class that the model does not cover (epoxides, acyl
-/// halides, esters, ketones, halogenating agents, ...).
+/// The reason, as a sentence for the user: no known electrophilic group, two between which the
+/// order does not decide, or a class that the model does not cover.
 pub fn recognise(molecule: &Molecule) -> Result<ElectrophilicGroup, String> {
-    if let Some(reason) = uncovered::reactive(molecule) {
-        return Err(reason.to_owned());
-    }
-    let found = [
-        ("an alkylating group", alkylating::find(molecule)?),
-        ("a Michael acceptor", conjugate::find(molecule)?),
-        ("an aldehyde", aldehyde::find(molecule)),
-    ];
-    let mut groups = found
-        .into_iter()
-        .filter_map(|(name, group)| Some((name, group?)));
-    match (groups.next(), groups.next()) {
-        (Some((one, _)), Some((other, _))) => Err(format!(
-            "it has {one} and {other}: which of them reacts is not covered"
-        )),
-        (Some((_, group)), None) => Ok(group),
-        _ => unreactive(molecule),
-    }
-}
-
-/// What is left when there is no group that reacts readily.
-fn unreactive(molecule: &Molecule) -> Result<ElectrophilicGroup, String> {
-    if let Some(reason) = uncovered::sluggish(molecule) {
-        return Err(reason.to_owned());
-    }
-    alkylating::fluoride(molecule)
-        .or_else(|| alkylating::inert(molecule))
-        .ok_or_else(|| {
-            "it has no electrophilic group known here (alkyl, allyl or benzyl halide or \
-             sulfonate, Michael acceptor, aldehyde)"
-                .to_owned()
-        })
+    order::first_to_react(molecule)
 }

@@ -122,8 +122,51 @@ impl Molecule {
         self.element(atom) == SULFUR && self.bound_to(atom, OXYGEN, Bond::Double).count() == 2
     }
 
-    fn is_sulfone_sulfur(&self, atom: usize) -> bool {
-        self.is_sulfonyl_sulfur(atom) && self.bound_to(atom, CARBON, Bond::Single).count() == 2
+    /// Sulfone, sulfonic ester, sulfonamide, sulfonyl fluoride, sulfoxide.
+    fn sulfur_acceptor(&self, sulfur: usize) -> Option<Acceptor> {
+        if self.element(sulfur) != SULFUR {
+            return None;
+        }
+        let carbons = self.bound_to(sulfur, CARBON, Bond::Single).count();
+        match self.bound_to(sulfur, OXYGEN, Bond::Double).count() {
+            2 if carbons == 2 => Some(Acceptor::Sulfone),
+            2 if carbons == 1 => Some(Acceptor::Sulfonate),
+            1 if carbons == 2 => Some(Acceptor::Sulfoxide),
+            _ => None,
+        }
+    }
+
+    /// What a carbonyl carbon bound to nitrogen is as an acceptor: the nitrogen of an imide gives
+    /// little.
+    fn amide_acceptor(&self, carbon: usize) -> Acceptor {
+        let is_imide = self
+            .bound_to(carbon, NITROGEN, Bond::Single)
+            .flat_map(|nitrogen| self.neighbours(nitrogen))
+            .any(|(other, _)| {
+                *other != carbon
+                    && (self.carbonyl_oxygen(*other).is_some() || self.is_sulfonyl_sulfur(*other))
+            });
+        if is_imide {
+            Acceptor::Imide
+        } else {
+            Acceptor::Amide
+        }
+    }
+
+    /// Aromatic carbon at the 2 or 4 position of a six-membered ring to its nitrogen.
+    pub(crate) fn is_azine_position(&self, atom: usize) -> bool {
+        self.rings().iter().any(|ring| {
+            let place = ring.iter().position(|member| *member == atom);
+            ring.len() == 6
+                && self.atoms[atom].aromatic
+                && self.element(atom) == CARBON
+                && place.is_some_and(|at| {
+                    [1, 3, 5].iter().any(|step| {
+                        let member = ring[(at + step) % 6];
+                        self.element(member) == NITROGEN && self.neighbours(member).len() == 2
+                    })
+                })
+        })
     }
 
     /// The acceptor group that begins at an atom.
@@ -131,8 +174,11 @@ impl Molecule {
         if self.is_nitro_nitrogen(atom) {
             return Some(Acceptor::Nitro);
         }
-        if self.is_sulfone_sulfur(atom) {
-            return Some(Acceptor::Sulfone);
+        if let Some(acceptor) = self.sulfur_acceptor(atom) {
+            return Some(acceptor);
+        }
+        if self.element(atom) == 15 && self.bound_to(atom, OXYGEN, Bond::Double).count() == 1 {
+            return Some(Acceptor::Phosphonate);
         }
         if self.is_nitrile_carbon(atom) {
             return Some(Acceptor::Nitrile);
@@ -141,9 +187,24 @@ impl Molecule {
             Acyl::Aldehyde => Some(Acceptor::Aldehyde),
             Acyl::Ketone => Some(Acceptor::Ketone),
             Acyl::Ester => Some(Acceptor::Ester),
-            Acyl::Amide => Some(Acceptor::Amide),
+            Acyl::Amide => Some(self.amide_acceptor(atom)),
+            Acyl::Other if self.bound_to(atom, SULFUR, Bond::Single).count() == 1 => {
+                Some(Acceptor::Thioester)
+            }
             Acyl::Acid | Acyl::Other => None,
         }
+    }
+
+    /// The heteroatom of the three-membered ring around a carbon.
+    pub(crate) fn strained_heteroatom(&self, carbon: usize) -> Option<usize> {
+        self.rings()
+            .iter()
+            .filter(|ring| ring.len() == 3 && ring.contains(&carbon))
+            .find_map(|ring| {
+                ring.iter()
+                    .copied()
+                    .find(|atom| self.element(*atom) != CARBON)
+            })
     }
 
     /// Whether the atom is carbon in a non-aromatic C=C.

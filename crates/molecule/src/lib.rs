@@ -8,18 +8,25 @@ mod edit;
 mod electrophile;
 mod environment;
 mod groups;
+mod molfile;
+mod pattern;
 mod product;
 mod reading;
+mod salt;
 mod structure;
 mod symmetry;
 mod valence;
 
 pub use anion::AnionClass;
 pub use electrophile::{
-    Acceptor, AlkylGroup, ElectrophileKind, ElectrophilicGroup, LeavingGroup, recognise,
+    Acceptor, AcylDonor, AlkylGroup, ChalcogenDonor, Cumulene, Donor, ElectrophileKind,
+    ElectrophilicGroup, HalogenDonor, ImineNitrogen, LeavingGroup, RingHeteroatom, recognise,
 };
 pub use environment::{Site, sites};
+pub use pattern::Pattern;
 pub use product::{
-    Product, c_product, dehydrated, heteroatom_product, o_product, self_condensation_product,
+    Product, c_product, dehydrated, double_product, heteroatom_product, o_product,
+    self_condensation_product,
 };
+pub use salt::{CompanionRole, CounterIon, Salt};
 pub use structure::{Atom, Bond, Molecule, StructureError};

@@ -1,5 +1,7 @@
 //! Products by graph edit.
 
+mod attack;
+
 use chematic::core::BondOrder;
 
 use crate::edit::Draft;
@@ -19,14 +21,16 @@ pub struct Product {
 
 /// The product of one new bond between carbon `site` of the substrate and the electrophile.
 ///
-/// Alkylating agents lose their leaving group (an alkyl stereocentre is inverted),
-/// Michael acceptors take the carbon at β and the hydrogen at α, aldehydes give the
-/// β-hydroxy adduct. The site and every new stereocentre carry no configuration; other stereo
-/// is kept.
+/// What leaves goes with all behind it, or stays behind with a hydrogen where it was part of a
+/// ring; an alkyl stereocentre is inverted. Michael acceptors take the carbon at β and the hydrogen
+/// at α; quinones and quinone methides become aromatic; carbonyl groups give the β-hydroxy adduct;
+/// nitrites give the oxime and diazonium ions the hydrazone where the site has a second hydrogen,
+/// sulfonyl azides the diazo compound. The site and every new stereocentre carry no configuration;
+/// other stereo is kept.
 ///
 /// # Errors
-/// `site` is no carbon with a hydrogen, the electrophile is inert, or the product is
-/// beyond the caps of [`Molecule::parse`].
+/// `site` is no carbon with a hydrogen (with two for sulfonyl azides), the electrophile is inert,
+/// or the product is beyond the caps of [`Molecule::parse`].
 pub fn c_product(
     substrate: &Molecule,
     site: usize,
@@ -37,14 +41,32 @@ pub fn c_product(
     let mut draft = Draft::of(substrate);
     draft.take_hydrogen(site)?;
     draft.flatten(site);
-    joined(draft, site, electrophile, group)
+    attack::by_electrophile(draft, site, electrophile, group)
+}
+
+/// The product of a second attack by the site of a product on another molecule of the same
+/// electrophile; `None` where the site has no hydrogen left.
+///
+/// # Errors
+/// As [`c_product`].
+pub fn double_product(
+    product: &Product,
+    electrophile: &Molecule,
+    group: &ElectrophilicGroup,
+) -> Result<Option<Product>, StructureError> {
+    let site = product.molecule.atoms()[product.site];
+    if site.element != CARBON || site.hydrogens == 0 {
+        return Ok(None);
+    }
+    c_product(&product.molecule, product.site, electrophile, group).map(Some)
 }
 
 /// The product of attack by the oxygen of the enolate formed at carbon `site`; `None` where the
 /// anion has no such oxygen (nitriles, sulfones) or the electrophile adds reversibly.
 ///
-/// Ketones and β-dicarbonyls give the enol ether, esters the ketene acetal, nitro compounds the
-/// nitronate. Among several carbonyl groups the most enolisable one is taken. The geometry of the
+/// Alkylating, acylating, sulfonylating and silylating agents give enol ethers, enol esters, enol
+/// sulfonates and silyl enol ethers of ketones and β-dicarbonyls, ketene acetals of esters,
+/// nitronates of nitro compounds. Among several carbonyl groups the most enolisable one is taken. The geometry of the
 /// new double bond is left open.
 ///
 /// # Errors
@@ -56,8 +78,13 @@ pub fn o_product(
     group: &ElectrophilicGroup,
 ) -> Result<Option<Product>, StructureError> {
     require_element(substrate, site, &[CARBON], "carbon")?;
-    let alkylates = matches!(group.kind, ElectrophileKind::Alkyl { .. });
-    let Some((centre, oxygen)) = enolate_oxygen(substrate, site).filter(|_| alkylates) else {
+    let stays = matches!(
+        group.kind,
+        ElectrophileKind::Alkyl { .. }
+            | ElectrophileKind::Acyl { .. }
+            | ElectrophileKind::Silyl { .. }
+    );
+    let Some((centre, oxygen)) = enolate_oxygen(substrate, site).filter(|_| stays) else {
         return Ok(None);
     };
     let mut draft = Draft::of(substrate);
@@ -65,7 +92,7 @@ pub fn o_product(
     draft.flatten(site);
     draft.reorder(site, centre, BondOrder::Double);
     draft.reorder(centre, oxygen, BondOrder::Single);
-    joined(draft, oxygen, electrophile, group).map(Some)
+    attack::by_electrophile(draft, oxygen, electrophile, group).map(Some)
 }
 
 /// The product of attack by a heteroatom (O–H, N–H or S–H atom `atom`) of the substrate.
@@ -87,7 +114,7 @@ pub fn heteroatom_product(
     )?;
     let mut draft = Draft::of(substrate);
     draft.take_hydrogen(atom)?;
-    joined(draft, atom, electrophile, group)
+    attack::by_electrophile(draft, atom, electrophile, group)
 }
 
 /// The α,β-unsaturated product of loss of water from an aldol adduct; `None` without an α hydrogen.
@@ -119,26 +146,21 @@ pub fn dehydrated(adduct: &Product) -> Result<Option<Molecule>, StructureError> 
 }
 
 /// The product of a molecule with a second one of its kind: an aldol adduct where carbon
-/// `acceptor` is an aldehyde or ketone, the Claisen product where it is an ester.
+/// `acceptor` is an aldehyde or ketone, the Claisen product where it is an ester (of a lactone: the
+/// hydroxy compound).
 ///
 /// # Errors
-/// `site` is no carbon with a hydrogen, `acceptor` is none of these groups, a lactone would
-/// have to open, or the product is beyond the caps of [`Molecule::parse`].
+/// `site` is no carbon with a hydrogen, `acceptor` is none of these groups, or the product is
+/// beyond the caps of [`Molecule::parse`].
 pub fn self_condensation_product(
     substrate: &Molecule,
     site: usize,
     acceptor: usize,
 ) -> Result<Product, StructureError> {
     require_element(substrate, site, &[CARBON], "carbon")?;
-    let attack = match substrate.acyl(acceptor) {
-        Some(Acyl::Aldehyde | Acyl::Ketone) => Attack::Carbonyl { carbon: acceptor },
-        Some(Acyl::Ester) => {
-            let alkoxy = substrate.bound_to(acceptor, OXYGEN, Bond::Single).next();
-            Attack::Displace {
-                carbon: acceptor,
-                leaving: alkoxy.unwrap_or(acceptor),
-            }
-        }
+    let alkoxy = match substrate.acyl(acceptor) {
+        Some(Acyl::Aldehyde | Acyl::Ketone) => None,
+        Some(Acyl::Ester) => substrate.bound_to(acceptor, OXYGEN, Bond::Single).next(),
         _ => {
             return Err(StructureError::new(
                 format!("atom {acceptor} is no carbonyl carbon of an aldehyde, ketone or ester"),
@@ -149,7 +171,7 @@ pub fn self_condensation_product(
     let mut draft = Draft::of(substrate);
     draft.take_hydrogen(site)?;
     draft.flatten(site);
-    attacked(draft, site, substrate, attack)
+    attack::at_carbonyl(draft, site, substrate, acceptor, alkoxy)
 }
 
 fn require_element(
@@ -188,72 +210,4 @@ fn enolate_oxygen(substrate: &Molecule, site: usize) -> Option<(usize, usize)> {
         })
         .min()
         .map(|(_, centre, oxygen)| (centre, oxygen))
-}
-
-/// How the partner takes the new bond; indices in the partner.
-enum Attack {
-    Displace { carbon: usize, leaving: usize },
-    Conjugate { alpha: usize, beta: usize },
-    Carbonyl { carbon: usize },
-}
-
-fn joined(
-    draft: Draft,
-    atom: usize,
-    electrophile: &Molecule,
-    group: &ElectrophilicGroup,
-) -> Result<Product, StructureError> {
-    let carbon = group.carbon;
-    let attack = match (group.kind, group.leaving_atom) {
-        (ElectrophileKind::Alkyl { .. }, Some(leaving)) => Attack::Displace { carbon, leaving },
-        (ElectrophileKind::Michael { alpha, .. }, _) => Attack::Conjugate {
-            alpha,
-            beta: carbon,
-        },
-        (ElectrophileKind::Aldehyde { .. }, _) => Attack::Carbonyl { carbon },
-        _ => {
-            return Err(StructureError::new(
-                format!("{} gives no product", electrophile.smiles()),
-                "choose an electrophile that reacts",
-            ));
-        }
-    };
-    attacked(draft, atom, electrophile, attack)
-}
-
-fn attacked(
-    mut draft: Draft,
-    atom: usize,
-    partner: &Molecule,
-    attack: Attack,
-) -> Result<Product, StructureError> {
-    let offset = draft.append(partner);
-    let mut hydroxyl = None;
-    let attacked_carbon = match attack {
-        Attack::Displace { carbon, leaving } => {
-            draft.remove_branch(carbon + offset, leaving + offset)?;
-            draft.invert(carbon + offset, leaving + offset, atom);
-            carbon
-        }
-        Attack::Conjugate { alpha, beta } => {
-            draft.reorder(alpha + offset, beta + offset, BondOrder::Single);
-            draft.add_hydrogen(alpha + offset);
-            beta
-        }
-        Attack::Carbonyl { carbon } => {
-            if let Some(oxygen) = partner.carbonyl_oxygen(carbon) {
-                draft.reorder(carbon + offset, oxygen + offset, BondOrder::Single);
-                draft.add_hydrogen(oxygen + offset);
-                hydroxyl = Some(oxygen + offset);
-            }
-            carbon
-        }
-    };
-    draft.bind(atom, attacked_carbon + offset, BondOrder::Single);
-    let (molecule, places) = draft.finish()?;
-    Ok(Product {
-        molecule,
-        site: places[atom].unwrap_or_default(),
-        hydroxyl: hydroxyl.and_then(|oxygen| places[oxygen]),
-    })
 }

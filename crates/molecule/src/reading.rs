@@ -9,6 +9,7 @@ use crate::{Atom, Bond, Molecule, StructureError, symmetry, valence};
 pub(crate) fn read(text: &str) -> Result<Molecule, StructureError> {
     let given = text.trim();
     check_text(given)?;
+    check_single(given)?;
     let unmapped = without_atom_maps(given);
     let parsed = parse(given, &unmapped)?;
     check_graph(&parsed)?;
@@ -25,7 +26,7 @@ pub(crate) fn flat_smiles(molecule: &graph::Molecule) -> Option<String> {
 }
 
 /// The text in quotes, cut where it is long.
-fn quoted(text: &str) -> String {
+pub(crate) fn quoted(text: &str) -> String {
     const SHOWN: usize = 60;
     match text.char_indices().nth(SHOWN) {
         Some((end, _)) => format!("`{}…`", &text[..end]),
@@ -33,7 +34,8 @@ fn quoted(text: &str) -> String {
     }
 }
 
-fn check_text(given: &str) -> Result<(), StructureError> {
+/// Refuses text that is beyond the caps or cannot be SMILES, before anything else looks at it.
+pub(crate) fn check_text(given: &str) -> Result<(), StructureError> {
     if given.is_empty() {
         return Err(StructureError::new(
             "the SMILES is empty",
@@ -59,6 +61,10 @@ fn check_text(given: &str) -> Result<(), StructureError> {
             "give the SMILES alone, without name, blanks or extensions",
         ));
     }
+    Ok(())
+}
+
+fn check_single(given: &str) -> Result<(), StructureError> {
     if given.contains('.') {
         return Err(StructureError::new(
             format!("{} has more than one fragment", quoted(given)),

@@ -4,7 +4,7 @@ use std::fmt;
 
 use chematic::core as graph;
 
-use crate::reading;
+use crate::{Salt, reading, salt};
 
 /// Why a SMILES was refused.
 #[derive(Clone, Debug, PartialEq, thiserror::Error)]
@@ -94,6 +94,25 @@ impl Molecule {
     /// valence or an unpaired electron, wildcards. The error says what to change.
     pub fn parse(smiles: &str) -> Result<Molecule, StructureError> {
         reading::read(smiles)
+    }
+
+    /// Parses a SMILES that may be a salt or solvate: one molecule with counter-ions, acids or
+    /// solvent of crystallisation. A SMILES without a dot is read as by [`Molecule::parse`].
+    ///
+    /// ```
+    /// use enolattice_molecule::Molecule;
+    ///
+    /// let salt = Molecule::parse_salt("[Cl-].CCOC(=O)C[NH3+]")?;
+    /// assert_eq!(salt.molecule.canonical(), "CCOC(=O)CN");
+    /// assert_eq!(salt.acid_equivalents, 1.0);
+    /// # Ok::<(), enolattice_molecule::StructureError>(())
+    /// ```
+    ///
+    /// # Errors
+    /// As [`Molecule::parse`] for each fragment; more than twelve fragments, charges that do not
+    /// balance, no organic molecule, or more than one molecule that is no counter-ion.
+    pub fn parse_salt(smiles: &str) -> Result<Salt, StructureError> {
+        salt::read(smiles)
     }
 
     /// The SMILES as it was given.

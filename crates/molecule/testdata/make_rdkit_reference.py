@@ -11,6 +11,7 @@ from rdkit.Chem import AllChem, Descriptors
 from rdkit.Chem.rdMolDescriptors import CalcMolFormula
 
 ACCEPTOR = "$(C=O),$(C#N),$([N+](=O)[O-]),$(S(=O)(=O)[#6])"
+FURTHER_ACCEPTOR = "$(S(=O)),$(P=O),$(c:n),$(c:c:c:n),$(C(=O))"
 SULFONATE = "[OX2]S(=O)(=O)[#6,#8]"
 
 # One reaction SMARTS a kind; the reacting atom of the substrate is marked by the isotope 99.
@@ -19,6 +20,9 @@ REACTIONS = {
     "alkyl fluoride": "[99#6;!H0:1].[CX4:2]-F>>[#6:1]-[C:2]",
     "alkyl sulfonate": f"[99#6;!H0:1].[CX4:2]-{SULFONATE}>>[#6:1]-[C:2]",
     "michael": f"[99#6;!H0:1].[C:2]=[C:3]-[{ACCEPTOR}:4]>>[#6:1]-[C:2]-[C:3]-[*:4]",
+    "alkyl sulfonate of a ring": "[99#6;!H0:1].[CX4:2]@[O:3]@[S:4]>>([#6:1]-[C:2].[O:3]-[S:4])",
+    "alkyl oxonium": "[99#6;!H0:1].[CX4:2]-[O+]>>[#6:1]-[C:2]",
+    "alkyl phosphate": "[99#6;!H0:1].[CX4:2]-OP(=O)>>[#6:1]-[C:2]",
     "aldehyde": "[99#6;!H0:1].[CX3;!H0:2](=[O:3])[#6,#1:4]>>[#6:1]-[C:2](-[O:3])[*:4]",
     "formaldehyde": "[99#6;!H0:1].[CH2:2]=[O:3]>>[#6:1]-[C:2]-[O:3]",
     "aldol dehydrated": "[99#6;!H0:1].[CX3;!H0:2](=[O:3])[#6,#1:4]>>[#6:1]=[C:2]-[*:4]",
@@ -28,7 +32,67 @@ REACTIONS = {
     "heteroatom alkyl halide": "[99*;!H0:1].[CX4:2]-[Cl,Br,I]>>[*:1]-[C:2]",
     "heteroatom alkyl sulfonate": f"[99*;!H0:1].[CX4:2]-{SULFONATE}>>[*:1]-[C:2]",
     "heteroatom michael": f"[99*;!H0:1].[C:2]=[C:3]-[{ACCEPTOR}:4]>>[*:1]-[C:2]-[C:3]-[*:4]",
+    "michael to alkyne": f"[99#6;!H0:1].[C:2]#[C:3]-[{ACCEPTOR}:4]>>[#6:1]-[C:2]=[C:3]-[*:4]",
+    "michael, other acceptors": f"[99#6;!H0:1].[C:2]=[C:3]-[{FURTHER_ACCEPTOR}:4]>>[#6:1]-[C:2]-[C:3]-[*:4]",
+    "quinone": "[99#6;!H0:1].[C;!H0:2]1=[C:3][C:4](=[O:5])[C:6]=[C:7][C:8]1=[O:9]"
+    ">>[#6:1]-[C:2]1=[C:8](-[O:9])-[C:7]=[C:6]-[C:4](-[O:5])=[C:3]1",
+    "naphthoquinone": "[99#6;!H0:1].[C;!H0:2]1=[C:3][C:4](=[O:5])[c:6]:[c:7][C:8]1=[O:9]"
+    ">>[#6:1]-[C:2]1=[C:8](-[O:9])-[c:7]:[c:6]-[C:4](-[O:5])=[C:3]1",
+    "para-quinone methide": "[99#6;!H0:1].[C:2]=[C:3]1[C:4]=[C:5][C:6](=[O:7])[C:8]=[C:9]1"
+    ">>[#6:1]-[C:2]-[C:3]1=[C:4]-[C:5]=[C:6](-[O:7])-[C:8]=[C:9]1",
+    "ortho-quinone methide": "[99#6;!H0:1].[C:2]=[C:3]1[C:4]=[C:5][C:6]=[C:8][C:9]1=[O:7]"
+    ">>[#6:1]-[C:2]-[C:3]1=[C:9](-[O:7])-[C:8]=[C:6]-[C:5]=[C:4]1",
+    "ketone": "[99#6;!H0:1].[#6:4][CX3:2](=[O:3])[#6:5]>>[#6:1]-[C:2](-[O:3])([#6:4])[#6:5]",
+    "aldol of a ketone dehydrated": "[99#6;!H0:1].[#6:4][CX3:2](=[O:3])[#6:5]>>[#6:1]=[C:2]([#6:4])[#6:5]",
+    "imine": "[99#6;!H0:1].[CX3:2]=[NX2:3]>>[#6:1]-[C:2]-[N:3]",
+    "iminium": "[99#6;!H0:1].[CX3:2]=[N+:3]>>[#6:1]-[C:2]-[N+0:3]",
+    "acyl halide": "[99#6;!H0:1].[CX3:2](=[O:3])-[F,Cl,Br,I]>>[#6:1]-[C:2]=[O:3]",
+    "acyl oxygen": "[99#6;!H0:1].[CX3;!$(C([OX2])[OX2]):2](=[O:3])-[OX2]>>[#6:1]-[C:2]=[O:3]",
+    "acyl carbonate": "[99#6;!H0:1].[CX3:2](=[O:3])([OX2:4])-[OX2]>>[#6:1]-[C:2](=[O:3])[O:4]",
+    "acyl dicarbonate": "[99#6;!H0:1].[CX3:2](=[O:3])([OX2:4][CX4:5])-[OX2]C=O>>[#6:1]-[C:2](=[O:3])[O:4][C:5]",
+    "acyl oxygen of a ring": "[99#6;!H0:1].[C:2](=[O:3])@[O:4]>>([#6:1]-[C:2]=[O:3].[O:4])",
+    "acyl nitrogen": "[99#6;!H0:1].[CX3:2](=[O:3])-[N,n]>>[#6:1]-[C:2]=[O:3]",
+    "acyl nitrogen of a ring": "[99#6;!H0:1].[C:2](=[O:3])@[N:4]>>([#6:1]-[C:2]=[O:3].[N:4])",
+    "acyl sulfur": "[99#6;!H0:1].[CX3:2](=[O:3])-[SX2]>>[#6:1]-[C:2]=[O:3]",
+    "acyl cyanide": "[99#6;!H0:1].[CX3:2](=[O:3])-C#N>>[#6:1]-[C:2]=[O:3]",
+    "sulfonyl": "[99#6;!H0:1].[SX4:2](=[O:3])(=[O:5])-[F,Cl,$(OS),$(N(c)S)]>>[#6:1]-[S:2](=[O:3])=[O:5]",
+    "strained ring": "[99#6;!H0:1].[CX4;H2:2]1[CX4:3][O,N,S:4]1>>[#6:1]-[C:2]-[C:3]-[*:4]",
+    "strained ring at CH": "[99#6;!H0:1].[CX4;H1:2]1[CX4:3][O,N,S:4]1>>[#6:1]-[C:2]-[C:3]-[*:4]",
+    "carbon dioxide and kin": "[99#6;!H0:1].[O,S:2]=[C:3]=[O,S:4]>>[#6:1]-[C:3](=[*:2])-[*:4]",
+    "carbonyl sulfide": "[99#6;!H0:1].[O:2]=[C:3]=[S:4]>>[#6:1]-[C:3](=[O:2])-[S:4]",
+    "isocyanate and kin": "[99#6;!H0:1].[O,S:2]=[C:3]=[N:4]>>[#6:1]-[C:3](=[*:2])-[N:4]",
+    "carbodiimide": "[99#6;!H0:1].[N:2]=[C:3]=[N:4]>>[#6:1]-[C:3](=[N:2])-[N:4]",
+    "ketene": "[99#6;!H0:1].[O:2]=[C:3]=[C:4]>>[#6:1]-[C:3](=[O:2])-[C:4]",
+    "aryl halide": "[99#6;!H0:1].[c:2]-[F,Cl,Br,I]>>[#6:1]-[c:2]",
+    "halogen from N or O": "[99#6;!H0:1].[#7,#8]-[F,Cl,Br,I:2]>>[#6:1]-[*:2]",
+    "halogen from an element": "[99#6;!H0:1].[Br,I:2]-[Br,I,Cl]>>[#6:1]-[*:2]",
+    "iodine from iodine chloride": "[99#6;!H0:1].[I:2]-[Cl]>>[#6:1]-[I:2]",
+    "bromine from carbon": "[99#6;!H0:1].[CX4]-[Br:2]>>[#6:1]-[Br:2]",
+    "chlorine from carbon or sulfur": "[99#6;!H0:1].[CX4,SX4]-[Cl:2]>>[#6:1]-[Cl:2]",
+    "iodine from carbon": "[99#6;!H0:1].[CX4]-[I:2]>>[#6:1]-[I:2]",
+    "chalcogen": "[99#6;!H0:1].[SX2,SeX2:2](-[#6:3])-[!#6]>>[#6:1]-[*:2]-[#6:3]",
+    "azo": "[99#6;!H0:1].[N;$(NC=O):2]=[N:3]>>[#6:1]-[N:2]-[N:3]",
+    "nitroso": "[99#6;!H0:1].[c:4]-[N:2]=[O:3]>>[#6:1]-[N:2](-[O:3])-[c:4]",
+    "nitrosation": "[99#6;!H0:1].[N:2](=[O:3])-[O,Cl]>>[#6:1]-[N:2]=[O:3]",
+    "nitrosation, two hydrogens": "[99#6;!H0:1].[N:2](=[O:3])-[O,Cl]>>[#6:1]=[N:2]-[O:3]",
+    "diazonium": "[99#6;!H0:1].[N:2]#[N+:3]>>[#6:1]-[N:2]=[N+0:3]",
+    "diazonium, two hydrogens": "[99#6;!H0:1].[N:2]#[N+:3]>>[#6:1]=[N:2]-[N+0:3]",
+    "diazo transfer, two hydrogens": "[99#6;!H0:1].[N-:2]=[N+:3]=N>>[#6:1]=[N+:2]=[N-:3]",
+    "oxaziridine": "[99#6;!H0:1].[O:2]1NC1>>[#6:1]-[O:2]",
+    "silyl": "[99#6;!H0:1].[Si:2]-[Cl,Br,I,$(OS)]>>[#6:1]-[Si:2]",
+    "enolate O-acyl": "[99#6;!H0:1]-[C:2]=[O:3].[CX3:4](=[O:5])-[F,Cl,$(OC=O)]>>[#6:1]=[C:2]-[O:3]-[C:4]=[O:5]",
+    "enolate O-sulfonyl": "[99#6;!H0:1]-[C:2]=[O:3].[SX4:4](=[O:5])(=[O:6])-[Cl,$(OS),$(N(c)S)]"
+    ">>[#6:1]=[C:2]-[O:3]-[S:4](=[O:5])=[O:6]",
+    "enolate O-silyl": "[99#6;!H0:1]-[C:2]=[O:3].[Si:4]-[Cl,$(OS)]>>[#6:1]=[C:2]-[O:3]-[Si:4]",
+    "nitronate O-silyl": "[99#6;!H0:1]-[N+:2](=[O:3])[O-:5].[Si:4]-[Cl,$(OS)]>>[#6:1]=[N+:2](-[O:3]-[Si:4])[O-:5]",
+    "heteroatom acyl halide": "[99*;!H0:1].[CX3:2](=[O:3])-[F,Cl,Br,I]>>[*:1]-[C:2]=[O:3]",
+    "heteroatom strained ring": "[99*;!H0:1].[CX4;H2:2]1[CX4:3][O,N,S:4]1>>[*:1]-[C:2]-[C:3]-[*:4]",
+    "heteroatom isocyanate": "[99*;!H0:1].[O,S:2]=[C:3]=[N:4]>>[*:1]-[C:3](=[*:2])-[N:4]",
+    "heteroatom silyl": "[99*;!H0:1].[Si:2]-[Cl,Br,I,$(OS)]>>[*:1]-[Si:2]",
+    "heteroatom aryl halide": "[99*;!H0:1].[c:2]-[F,Cl,Br,I]>>[*:1]-[c:2]",
+    "heteroatom chalcogen": "[99*;!H0:1].[SX2,SeX2:2](-[#6:3])-[!#6]>>[*:1]-[*:2]-[#6:3]",
     "self aldol": "[99#6;!H0:1].[98C:2](=[O:3])>>[#6:1]-[C:2](-[O:3])",
+    "self claisen of a ring": "[99#6;!H0:1].[98C:2](=[O:3])@[O:4]>>([#6:1]-[C:2]=[O:3].[O:4])",
     "self claisen": "[99#6;!H0:1].[98C:2](=[O:3])-[O;!$(O=*)]-[#6]>>[#6:1]-[C:2](=[O:3])",
 }
 
@@ -104,12 +168,154 @@ ROWS = [
     ("heteroatom alkyl halide", "CC(=O)c1ccc(S)cc1", 7, "C=CCBr"),
     ("heteroatom alkyl sulfonate", "CC(=O)Nc1ccccc1", 3, "COS(=O)(=O)OC"),
     ("heteroatom michael", "SCC(=O)OC", 0, "C=CC#N"),
+    # further alkylating agents
+    ("alkyl halide", "CCOC(=O)CC(=O)OCC", 5, "COCCl"),
+    ("alkyl halide", "N#CCc1ccccc1", 2, "ICI"),
+    ("alkyl sulfonate of a ring", "CCOC(=O)CC(=O)OCC", 5, "O=S1(=O)CCCO1"),
+    ("alkyl oxonium", "O=C1CCCCC1", 2, "CC[O+](CC)CC.F[B-](F)(F)F"),
+    ("alkyl phosphate", "CC(=O)CC(C)=O", 3, "COP(=O)(OC)OC"),
+    # further Michael acceptors
+    ("michael to alkyne", "CCOC(=O)CC(=O)OCC", 5, "C#CC(=O)OCC"),
+    ("michael to alkyne", "CC(=O)CC(C)=O", 3, "COC(=O)C#CC(=O)OC"),
+    ("michael to alkyne", "CC1C(=O)CCCC1=O", 1, "C#CC(C)=O"),
+    ("michael, other acceptors", "CCOC(=O)CC#N", 5, "C=CS(=O)c1ccccc1"),
+    ("michael, other acceptors", "CCOC(=O)CC(=O)OCC", 5, "C=CP(=O)(OCC)OCC"),
+    ("michael, other acceptors", "CC(C)[N+](=O)[O-]", 1, "C=Cc1ccccn1"),
+    ("michael, other acceptors", "CCOC(=O)CC(=O)OCC", 5, "C=Cc1ccncc1"),
+    ("michael, other acceptors", "CC(=O)CC(=O)OCC", 3, "C=CS(=O)(=O)N(C)C"),
+    ("michael, other acceptors", "CC(=O)CC(C)=O", 3, "C=CC(=O)SCC"),
+    ("michael, other acceptors", "CCOC(=O)CC(=O)OCC", 5, "C=CS(=O)(=O)F"),
+    ("michael, other acceptors", "CC(=O)CC(=O)OCC", 3, "C=C1CCOC1=O"),
+    ("quinone", "CCOC(=O)CC(=O)OCC", 5, "O=C1C=CC(=O)C=C1"),
+    ("naphthoquinone", "CC(=O)CC(=O)OCC", 3, "O=C1C=CC(=O)c2ccccc12"),
+    ("para-quinone methide", "CCOC(=O)CC(=O)OCC", 5, "CC(C)(C)C1=CC(=Cc2ccccc2)C=C(C(C)(C)C)C1=O"),
+    ("ortho-quinone methide", "CC(=O)CC(C)=O", 3, "C=C1C=CC=CC1=O"),
+    # aldehydes, ketones, imines
+    ("aldehyde", "CC(=O)c1ccccc1", 0, "CCOC(=O)C=O"),
+    ("aldehyde", "C[N+](=O)[O-]", 0, "O=CC(Cl)(Cl)Cl"),
+    ("ketone", "CCOC(C)=O", 4, "CC(=O)c1ccccc1"),
+    ("ketone", "CC#N", 0, "O=C1CCCCC1"),
+    ("ketone", "C[N+](=O)[O-]", 0, "CCOC(=O)C(C)=O"),
+    ("ketone", "CC(=O)c1ccccc1", 0, "CN1C(=O)C(=O)c2ccccc21"),
+    ("aldol of a ketone dehydrated", "CCOC(=O)CC#N", 5, "O=C1CCCCC1"),
+    ("imine", "CCOC(=O)CC(=O)OCC", 5, "Cc1ccc(S(=O)(=O)N=Cc2ccccc2)cc1"),
+    ("imine", "CC[N+](=O)[O-]", 1, "CC(C)(C)OC(=O)/N=C/c1ccccc1"),
+    ("imine", "CCOC(C)=O", 4, "CC(C)(C)S(=O)N=Cc1ccccc1"),
+    ("imine", "COC(=O)C(C)C", 4, "C(=Nc1ccccc1)c1ccccc1"),
+    ("imine", "CC(=O)c1ccccc1", 0, "CC(C)=NC"),
+    ("iminium", "CC(=O)c1ccccc1", 0, "C=[N+](C)C.[I-]"),
+    ("iminium", "O=C1CCCCC1", 2, "C(c1ccccc1)=[N+]1CCCCC1.[Cl-]"),
+    # acyl groups
+    ("acyl halide", "CCOC(=O)CC(=O)OCC", 5, "CC(=O)Cl"),
+    ("acyl halide", "CC(=O)c1ccccc1", 0, "O=C(Cl)C(C)(C)C"),
+    ("acyl halide", "CCOC(C)=O", 4, "CCOC(=O)Cl"),
+    ("acyl halide", "CC(C)C#N", 1, "CN(C)C(=O)Cl"),
+    ("acyl halide", "CCOC(=O)CC#N", 5, "ClCC(=O)Cl"),
+    ("acyl oxygen", "CC(=O)c1ccccc1", 0, "CC(=O)OC(C)=O"),
+    ("acyl oxygen", "CC(=O)c1ccccc1", 0, "CCOC(=O)c1ccccc1"),
+    ("acyl oxygen", "O=C1CCCCC1", 2, "CCOC=O"),
+    ("acyl oxygen", "CC(C)=O", 0, "CCOC(=O)C(=O)OCC"),
+    ("acyl oxygen", "CC(=O)c1ccccc1", 0, "CCOC(=O)C(F)(F)F"),
+    ("acyl oxygen", "CCOC(C)=O", 4, "CC(=O)Oc1ccccc1"),
+    ("acyl oxygen", "CC#N", 0, "CC(=O)OC(C)(C)C"),
+    ("acyl carbonate", "CC(=O)c1ccccc1", 0, "COC(=O)OC"),
+    ("acyl dicarbonate", "N#CCc1ccccc1", 2, "CC(C)(C)OC(=O)OC(=O)OC(C)(C)C"),
+    ("acyl oxygen of a ring", "CC(=O)c1ccccc1", 0, "O=C1CCCO1"),
+    ("acyl oxygen of a ring", "CCOC(C)=O", 4, "O=C1CCC(=O)O1"),
+    ("acyl oxygen of a ring", "CC(=O)c1ccccc1", 0, "O=C1OCCO1"),
+    ("acyl oxygen of a ring", "CC(=O)c1ccccc1", 0, "O=C1CCO1"),
+    ("acyl nitrogen", "CCOC(C)=O", 4, "CC(=O)n1ccnc1"),
+    ("acyl nitrogen", "CC(=O)c1ccccc1", 0, "CON(C)C(C)=O"),
+    ("acyl nitrogen", "O=C1CCCCC1", 2, "CN(C)C=O"),
+    ("acyl nitrogen of a ring", "CCOC(C)=O", 4, "CN1CCCC1=O"),
+    ("acyl sulfur", "CC(=O)c1ccccc1", 0, "CC(=O)SCC"),
+    ("acyl cyanide", "O=C1CCCCC1", 2, "COC(=O)C#N"),
+    ("acyl cyanide", "CC(=O)c1ccccc1", 0, "CC(=O)C#N"),
+    ("sulfonyl", "CCOC(=O)CC(=O)OCC", 5, "Cc1ccc(S(=O)(=O)Cl)cc1"),
+    ("sulfonyl", "CC(=O)CC(C)=O", 3, "O=S(=O)(OS(=O)(=O)C(F)(F)F)C(F)(F)F"),
+    # strained rings
+    ("strained ring", "CCOC(=O)CC(=O)OCC", 5, "C1CO1"),
+    ("strained ring", "CC#N", 0, "CC1CO1"),
+    ("strained ring", "CC(=O)CC(C)=O", 3, "C1OC1c1ccccc1"),
+    ("strained ring", "CCOC(=O)CC(=O)OCC", 5, "Cc1ccc(S(=O)(=O)N2CC2)cc1"),
+    ("strained ring", "CC(=O)CC(=O)OCC", 3, "C1CS1"),
+    ("strained ring at CH", "CCOC(=O)CC#N", 5, "C1CCC2OC2C1"),
+    # heterocumulenes
+    ("carbon dioxide and kin", "CC(=O)c1ccccc1", 0, "O=C=O"),
+    ("carbon dioxide and kin", "CC(=O)c1ccccc1", 0, "S=C=S"),
+    ("carbonyl sulfide", "N#CCc1ccccc1", 2, "O=C=S"),
+    ("isocyanate and kin", "CCOC(=O)CC#N", 5, "O=C=Nc1ccccc1"),
+    ("isocyanate and kin", "CC(=O)CC(C)=O", 3, "S=C=Nc1ccccc1"),
+    ("carbodiimide", "CC(=O)CC(C)=O", 3, "CC(C)N=C=NC(C)C"),
+    ("ketene", "CCOC(=O)CC(=O)OCC", 5, "O=C=C(c1ccccc1)c1ccccc1"),
+    # aromatic substitution
+    ("aryl halide", "CCOC(=O)CC(=O)OCC", 5, "O=[N+]([O-])c1ccc(F)cc1"),
+    ("aryl halide", "CC(=O)CC(=O)OCC", 3, "O=[N+]([O-])c1ccc(Cl)c([N+](=O)[O-])c1"),
+    ("aryl halide", "CCOC(=O)CC#N", 5, "COc1cc2ncnc(Cl)c2cc1OC"),
+    ("aryl halide", "CC(C)C#N", 1, "Clc1ncccn1"),
+    ("aryl halide", "CCOC(=O)CC#N", 5, "Fc1c(F)c(F)c(F)c(F)c1F"),
+    # transfer of halogen
+    ("halogen from N or O", "CCOC(=O)CC(C)=O", 7, "O=C1CCC(=O)N1Cl"),
+    ("halogen from N or O", "CC(=O)c1ccccc1", 0, "O=C1CCC(=O)N1Br"),
+    ("halogen from N or O", "CC(=O)CC(C)=O", 3, "CC1(C)N(Br)C(=O)N(Br)C1=O"),
+    ("halogen from N or O", "CCOC(=O)C1CCCC1=O", 5, "O=S(=O)(N(F)S(=O)(=O)c1ccccc1)c1ccccc1"),
+    ("halogen from N or O", "CC(=O)CC(=O)OCC", 3, "F[N+]12CC[N+](CCl)(CC1)CC2.F[B-](F)(F)F.F[B-](F)(F)F"),
+    ("halogen from N or O", "O=C1CCCCC1", 2, "CC(C)(C)OCl"),
+    ("halogen from an element", "CC(=O)c1ccccc1", 0, "BrBr"),
+    ("halogen from an element", "O=C1CCCCC1", 2, "II"),
+    ("iodine from iodine chloride", "CC(=O)CC(C)=O", 3, "ICl"),
+    ("bromine from carbon", "CC(C)C#N", 1, "BrC(Br)(Br)Br"),
+    ("bromine from carbon", "CCOC(=O)C(C)C", 5, "BrC(Cl)(Cl)C(Cl)(Cl)Br"),
+    ("chlorine from carbon or sulfur", "CC(C)C(=O)OC", 1, "ClC(Cl)(Cl)Cl"),
+    ("chlorine from carbon or sulfur", "CC(=O)CC(=O)OCC", 3, "O=S(=O)(Cl)C(F)(F)F"),
+    ("iodine from carbon", "CC(C)C#N", 1, "FC(F)(F)I"),
+    # transfer of sulfur, selenium, nitrogen, oxygen
+    ("chalcogen", "O=C1CCCCC1", 2, "c1ccc(SSc2ccccc2)cc1"),
+    ("chalcogen", "CCOC(C)=O", 4, "CSS(C)(=O)=O"),
+    ("chalcogen", "CC(=O)CC(=O)OCC", 3, "ClSc1ccccc1"),
+    ("chalcogen", "CC(=O)CC(=O)OCC", 3, "O=C1c2ccccc2C(=O)N1SC(F)(F)F"),
+    ("chalcogen", "O=C1CCCCC1", 2, "Cl[Se]c1ccccc1"),
+    ("chalcogen", "O=C1CCCO1", 2, "c1ccc([Se][Se]c2ccccc2)cc1"),
+    ("azo", "CC(=O)CC(=O)OCC", 3, "CCOC(=O)/N=N/C(=O)OCC"),
+    ("azo", "CCOC(=O)CC#N", 5, "O=C1N=NC(=O)N1c1ccccc1"),
+    ("nitroso", "O=C1CCCCC1", 2, "O=Nc1ccccc1"),
+    ("nitrosation", "CC(C)C(=O)c1ccccc1", 1, "CC(C)(C)ON=O"),
+    ("nitrosation, two hydrogens", "CCOC(=O)CC(=O)OCC", 5, "CC(C)CCON=O"),
+    ("nitrosation, two hydrogens", "CC(=O)c1ccccc1", 0, "CC(C)(C)ON=O"),
+    ("diazonium", "CC(=O)C(C)C(=O)OCC", 3, "N#[N+]c1ccccc1.F[B-](F)(F)F"),
+    ("diazonium, two hydrogens", "CCOC(=O)CC(C)=O", 5, "N#[N+]c1ccc([N+](=O)[O-])cc1.F[B-](F)(F)F"),
+    ("diazo transfer, two hydrogens", "CCOC(=O)CC(C)=O", 5, "Cc1ccc(S(=O)(=O)N=[N+]=[N-])cc1"),
+    ("diazo transfer, two hydrogens", "O=C1CCCC(=O)C1", 7, "[N-]=[N+]=NS(=O)(=O)C(F)(F)F"),
+    ("oxaziridine", "CC(=O)c1ccccc1", 0, "O=S(=O)(N1OC1c1ccccc1)c1ccccc1"),
+    # silyl groups, and oxygen against acyl, sulfonyl and silyl
+    ("silyl", "CCOC(C)=O", 4, "C[Si](C)(C)Cl"),
+    ("silyl", "CC#N", 0, "CC(C)(C)[Si](C)(C)OS(=O)(=O)C(F)(F)F"),
+    ("enolate O-silyl", "O=C1CCCCC1", 2, "C[Si](C)(C)Cl"),
+    ("enolate O-silyl", "CCOC(C)=O", 4, "CC(C)(C)[Si](C)(C)Cl"),
+    ("enolate O-silyl", "CC(C)C=O", 1, "CC(C)[Si](OS(=O)(=O)C(F)(F)F)(C(C)C)C(C)C"),
+    ("nitronate O-silyl", "CC[N+](=O)[O-]", 1, "C[Si](C)(C)Cl"),
+    ("enolate O-acyl", "CC(=O)c1ccccc1", 0, "CC(=O)Cl"),
+    ("enolate O-acyl", "O=C1CCCC(=O)C1", 7, "CC(=O)OC(C)=O"),
+    ("enolate O-sulfonyl", "O=C1CCCCC1", 2, "O=S(=O)(N(c1ccccc1)S(=O)(=O)C(F)(F)F)C(F)(F)F"),
+    # heteroatoms against the new classes
+    ("heteroatom acyl halide", "CC(=O)c1ccc(O)cc1", 7, "O=C(Cl)c1ccccc1"),
+    ("heteroatom strained ring", "CC(=O)c1ccc(O)cc1", 7, "CC1CO1"),
+    ("heteroatom isocyanate", "CC(=O)c1ccc(N)cc1", 7, "O=C=Nc1ccccc1"),
+    ("heteroatom silyl", "CC(=O)CCO", 5, "CC(C)(C)[Si](C)(C)Cl"),
+    ("heteroatom aryl halide", "COC(=O)CS", 5, "O=[N+]([O-])c1ccc(F)cc1"),
+    ("heteroatom chalcogen", "COC(=O)CS", 5, "CSS(C)(=O)=O"),
+    # a second attack
+    ("double alkyl halide", "CCOC(=O)CC(=O)OCC", 5, "CCI"),
+    ("double michael", "CCOC(=O)CC#N", 5, "C=CC#N"),
+    ("double halogen from N or O", "CC(=O)c1ccccc1", 0, "O=C1CCC(=O)N1Br"),
+    ("double acyl halide", "CC#N", 0, "O=C(Cl)c1ccccc1"),
     # condensation of a substrate with itself
     ("self aldol", "CC(C)=O", 0, 1),
     ("self aldol", "O=C1CCCCC1", 2, 1),
     ("self aldol", "CCC=O", 1, 2),
     ("self claisen", "CCOC(C)=O", 4, 3),
     ("self claisen", "COC(=O)Cc1ccccc1", 4, 2),
+    ("self claisen of a ring", "O=C1CCCO1", 2, 1),
 ]
 
 
@@ -145,19 +351,27 @@ def product(kind, substrate, site, electrophile):
         second = marked(substrate, {electrophile: 98})
     else:
         second = Chem.MolFromSmiles(electrophile)
-    reaction = AllChem.ReactionFromSmarts(REACTIONS[kind])
+    reaction = AllChem.ReactionFromSmarts(REACTIONS[kind.removeprefix("double ")])
+    outcome = only_outcome(reaction, first, second)
+    if kind.startswith("double "):
+        outcome = only_outcome(reaction, outcome, second)
+    outcome = cleaned(outcome)
+    return Chem.MolToSmiles(outcome, isomericSmiles=False), outcome
+
+
+def only_outcome(reaction, first, second):
+    """The one outcome of a reaction, with its marks."""
     found = {}
     for (outcome,) in reaction.RunReactants((first, second)):
         for atom in outcome.GetAtoms():
             atom.SetNoImplicit(False)
-            if atom.GetIsotope() == 99:
+            if atom.GetIsotope() == 99 or atom.GetAtomicNum() != 6:
                 atom.SetNumExplicitHs(0)
         Chem.SanitizeMol(outcome)
-        outcome = cleaned(outcome)
         found[Chem.MolToSmiles(outcome, isomericSmiles=False)] = outcome
     if len(found) != 1:
-        raise SystemExit(f"{kind} {substrate} {site} {electrophile}: {sorted(found)}")
-    return next(iter(found.items()))
+        raise SystemExit(f"{Chem.MolToSmiles(first)} {Chem.MolToSmiles(second)}: {sorted(found)}")
+    return next(iter(found.values()))
 
 
 def write(path, comment, header, rows):

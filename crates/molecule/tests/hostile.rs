@@ -1,12 +1,13 @@
 //! Hostile text neither panics nor exceeds the caps.
 
 use enolattice_molecule::{
-    Molecule, c_product, dehydrated, heteroatom_product, o_product, recognise,
+    Molecule, c_product, dehydrated, double_product, heteroatom_product, o_product, recognise,
 };
 use proptest::prelude::*;
 
 /// Everything that can be done with a text, on a stack as small as a worker thread's.
 fn exercise(text: &str) {
+    exercise_salt(text);
     let Ok(molecule) = Molecule::parse(text) else {
         return;
     };
@@ -26,9 +27,30 @@ fn exercise(text: &str) {
             let _ = heteroatom_product(&molecule, atom, &molecule, &group);
             if let Ok(product) = product {
                 let _ = dehydrated(&product);
+                let _ = double_product(&product, &molecule, &group);
             }
         }
     }
+}
+
+fn exercise_salt(text: &str) {
+    let Ok(salt) = Molecule::parse_salt(text) else {
+        return;
+    };
+    assert!(text.trim().len() <= Molecule::MAX_BYTES);
+    assert!(salt.acid_equivalents.is_finite() && salt.deprotonated >= 0.0);
+    assert!(
+        salt.molar_mass_g_mol + 1e-6 >= salt.molecule.molar_mass() - 3.0,
+        "{text}"
+    );
+    let again = Molecule::parse(salt.molecule.smiles());
+    assert_eq!(
+        again.unwrap().canonical(),
+        salt.molecule.canonical(),
+        "{text}"
+    );
+    assert!(text.contains('.') || salt.note().is_none(), "{text}");
+    let _ = recognise(&salt.molecule);
 }
 
 /// What the random SMILES are strung together from.
@@ -59,6 +81,25 @@ proptest! {
     fn any_tokens(picks in proptest::collection::vec(any::<proptest::sample::Index>(), 0..40)) {
         let tokens: Vec<&str> = TOKENS.split(' ').collect();
         exercise(&picks.iter().map(|pick| *pick.get(&tokens)).collect::<String>());
+    }
+
+    #[test]
+    fn any_salt_of_sound_fragments(picks in proptest::collection::vec(any::<proptest::sample::Index>(), 1..8)) {
+        let fragments = ["CC[NH3+]", "[nH+]1ccccc1", "C[NH+](C)C", "CCN", "[O-]C(=O)CC", "[H][N+]([H])([H])C",
+            "C[N+](C)(C)C", "C=[N+](C)C", "N#[N+]c1ccccc1", "CC(=O)[CH-]C(C)=O", "[Na+]", "[K+]", "[Mg++]",
+            "[Cl-]", "Cl", "O", "F[P-](F)(F)(F)(F)F", "F[B-](F)(F)F", "OC(=O)C(=O)O", "[O-]S(=O)(=O)[O-]",
+            "CCO", "", "[NH4+]", "[S-]C", "[C@@H]([NH3+])(C)C(=O)[O-]"];
+        let text: Vec<&str> = picks.iter().map(|pick| *pick.get(&fragments)).collect();
+        exercise_salt(&text.join("."));
+    }
+
+    #[test]
+    fn any_reagent_of_sound_pieces(picks in proptest::collection::vec(0usize..40, 1..8)) {
+        let pieces = ["C", "C(=O)", "C(=O)Cl", "OC(=O)", "N(Br)", "S", "SS", "[Se]", "N=N", "N=C=O", "C1OC1", "C1NC1",
+            "C1SC1", "S(=O)(=O)", "N=[N+]=[N-]", "[N+]#N", "C=N", "N=O", "ON=O", "C#C", "C=C", "Cl", "Br", "I", "F",
+            "[Si](C)(C)", "P(=O)(O)O", "[O+](C)", "[N+](C)(F)", "c1ccc(F)cc1", "c1ncc(Cl)nc1", "C(F)(F)F", "C(Cl)(Cl)Cl",
+            "C1=CC(=O)C=CC1=O", "C1=CC(=C)C=CC1=O", "N1OC1", "O", "N", "C#N", "[N+](=O)[O-]"];
+        exercise(&picks.iter().map(|i| pieces[*i]).collect::<String>());
     }
 
     #[test]

@@ -146,7 +146,37 @@ fn impossible_requests_are_errors() {
             .reason
             .contains("no carbon")
     );
+    let azide = parse("Cc1ccc(S(=O)(=O)N=[N+]=[N-])cc1");
+    let transfer = recognise(&azide).unwrap();
+    assert!(
+        c_product(&parse("CC(C)C#N"), 1, &azide, &transfer)
+            .unwrap_err()
+            .reason
+            .contains("two hydrogens")
+    );
     let bromobenzene = parse("Brc1ccccc1");
     let inert = recognise(&bromobenzene).unwrap();
     assert!(c_product(&parse("CC(C)=O"), 0, &bromobenzene, &inert).is_err());
+}
+
+/// The ring of an epoxide is opened from behind: cis epoxides give trans products, and the carbon that
+/// keeps the oxygen keeps its configuration (CIP labels by RDKit: S where attacked, R at oxygen).
+#[test]
+fn a_strained_ring_opens_with_inversion() {
+    for (epoxide, product) in [
+        (
+            "C1CC[C@@H]2O[C@@H]2C1",
+            "CCOC(=O)C(C(=O)OCC)[C@@H]1CCCC[C@H]1O",
+        ),
+        ("C[C@@H]1O[C@@H]1C", "CCOC(=O)C(C(=O)OCC)[C@H](C)[C@@H](C)O"),
+    ] {
+        let electrophile = parse(epoxide);
+        let group = recognise(&electrophile).unwrap();
+        let made = c_product(&parse("CCOC(=O)CC(=O)OCC"), 5, &electrophile, &group).unwrap();
+        assert_eq!(
+            made.molecule.canonical(),
+            parse(product).canonical(),
+            "{epoxide}"
+        );
+    }
 }

@@ -1,9 +1,11 @@
 //! Reads the table of electrophiles known by name.
 
-use crate::table::{Row, Table, TableText};
+use enolattice_molecule::Molecule;
+
+use crate::table::{Lined, Table, TableText};
 use crate::{LibraryError, NamedElectrophile};
 
-const COLUMNS: [&str; 9] = [
+pub(crate) const COLUMNS: [&str; 9] = [
     "name",
     "synonyms",
     "cas",
@@ -15,22 +17,22 @@ const COLUMNS: [&str; 9] = [
     "source",
 ];
 
-/// All electrophiles of the table.
-pub(crate) fn read(text: TableText) -> Result<Vec<NamedElectrophile>, LibraryError> {
-    Table::read(text, &COLUMNS)?
-        .rows()
-        .map(electrophile)
-        .collect()
-}
+/// An electrophile with its structure, by which it is found too.
+pub(crate) type Drawn = (NamedElectrophile, Molecule);
 
-fn electrophile(row: Row<'_>) -> Result<NamedElectrophile, LibraryError> {
-    Ok(NamedElectrophile {
-        name: row.text("name")?.to_owned(),
-        synonyms: row.list("synonyms"),
-        cas: row.cas("cas")?,
-        smiles: row.text("smiles")?.to_owned(),
-        boiling_c: row.optional_number("boiling_c", -50.0, 400.0)?,
-        hazards: row.hazards()?,
-        source: row.source("source")?,
+/// All electrophiles of the table, or all its faults.
+pub(crate) fn read(text: TableText<'_>) -> Result<Vec<Lined<Drawn>>, Vec<LibraryError>> {
+    let table = Table::cut(text, &COLUMNS).map_err(|fault| vec![fault])?;
+    table.read(|row| {
+        let electrophile = NamedElectrophile {
+            name: row.text("name"),
+            synonyms: row.list("synonyms"),
+            cas: row.cas("cas"),
+            smiles: row.text_or_empty("smiles"),
+            boiling_c: row.optional_number("boiling_c", -100.0, 500.0),
+            hazards: row.hazards(),
+            source: row.source("source"),
+        };
+        Some((electrophile, row.molecule("smiles")?))
     })
 }

@@ -1,6 +1,6 @@
 //! A reagent of any kind, for lists and searches.
 
-use crate::{Base, Hazards, NamedElectrophile, Solvent};
+use crate::{Additive, Base, Hazards, NamedElectrophile, Solvent};
 
 /// What a reagent is used as.
 #[derive(Clone, Copy, Debug, PartialEq, Eq, Hash)]
@@ -11,15 +11,28 @@ pub enum ReagentKind {
     Solvent,
     /// An electrophile.
     Electrophile,
+    /// An additive.
+    Additive,
 }
 
 impl ReagentKind {
+    /// The name of its table, as in `# table: bases`.
+    pub(crate) fn table(self) -> &'static str {
+        match self {
+            ReagentKind::Base => "bases",
+            ReagentKind::Solvent => "solvents",
+            ReagentKind::Electrophile => "electrophiles",
+            ReagentKind::Additive => "additives",
+        }
+    }
+
     /// The word for it.
     pub fn name(self) -> &'static str {
         match self {
             ReagentKind::Base => "base",
             ReagentKind::Solvent => "solvent",
             ReagentKind::Electrophile => "electrophile",
+            ReagentKind::Additive => "additive",
         }
     }
 }
@@ -33,6 +46,8 @@ pub enum Reagent<'a> {
     Solvent(&'a Solvent),
     /// An electrophile.
     Electrophile(&'a NamedElectrophile),
+    /// An additive.
+    Additive(&'a Additive),
 }
 
 impl<'a> Reagent<'a> {
@@ -42,6 +57,7 @@ impl<'a> Reagent<'a> {
             Reagent::Base(_) => ReagentKind::Base,
             Reagent::Solvent(_) => ReagentKind::Solvent,
             Reagent::Electrophile(_) => ReagentKind::Electrophile,
+            Reagent::Additive(_) => ReagentKind::Additive,
         }
     }
     /// The trade's short name.
@@ -50,6 +66,7 @@ impl<'a> Reagent<'a> {
             Reagent::Base(b) => &b.name,
             Reagent::Solvent(s) => &s.name,
             Reagent::Electrophile(e) => &e.name,
+            Reagent::Additive(a) => &a.name,
         }
     }
     /// Other names.
@@ -58,14 +75,16 @@ impl<'a> Reagent<'a> {
             Reagent::Base(b) => &b.synonyms,
             Reagent::Solvent(s) => &s.synonyms,
             Reagent::Electrophile(e) => &e.synonyms,
+            Reagent::Additive(a) => &a.synonyms,
         }
     }
-    /// CAS registry number.
+    /// CAS registry number; empty where none is known.
     pub fn cas(self) -> &'a str {
         match self {
             Reagent::Base(b) => &b.cas,
             Reagent::Solvent(s) => &s.cas,
             Reagent::Electrophile(e) => &e.cas,
+            Reagent::Additive(a) => &a.cas,
         }
     }
     /// SMILES as in the table.
@@ -74,6 +93,7 @@ impl<'a> Reagent<'a> {
             Reagent::Base(b) => &b.smiles,
             Reagent::Solvent(s) => &s.smiles,
             Reagent::Electrophile(e) => &e.smiles,
+            Reagent::Additive(a) => &a.smiles,
         }
     }
     /// Hazard statements.
@@ -82,6 +102,7 @@ impl<'a> Reagent<'a> {
             Reagent::Base(b) => &b.hazards,
             Reagent::Solvent(s) => &s.hazards,
             Reagent::Electrophile(e) => &e.hazards,
+            Reagent::Additive(a) => &a.hazards,
         }
     }
     /// Name, synonyms and CAS number.

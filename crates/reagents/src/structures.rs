@@ -22,11 +22,13 @@ impl StructureIndex {
         }
     }
 
-    /// The rows by canonical SMILES, with stereo and without.
-    pub(crate) fn finish(self) -> HashMap<String, usize> {
-        let mut rows = self.flat;
-        rows.extend(self.exact);
-        rows
+    /// Lays the rows over those that are known by canonical SMILES. A structure drawn without
+    /// stereo finds the isomer that is there; it never hides a row that has no stereo itself.
+    pub(crate) fn lay_over(self, known: &mut HashMap<String, usize>) {
+        known.extend(self.exact);
+        for (flat, row) in self.flat {
+            known.entry(flat).or_insert(row);
+        }
     }
 }
 

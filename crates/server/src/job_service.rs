@@ -2,9 +2,9 @@
 
 use std::sync::Arc;
 
-use enolattice_engine::{Engine, RankQuery, Submission};
-use enolattice_wire::v1;
+use enolattice_engine::{Engine, RankQuery};
 use enolattice_wire::v1::job_service_server::JobService;
+use enolattice_wire::{submission, v1};
 use tokio::sync::watch;
 use tokio_stream::wrappers::ReceiverStream;
 use tonic::{Request, Response, Status, Streaming};
@@ -25,11 +25,19 @@ impl Jobs {
     }
 
     async fn submit(&self, request: v1::SubmitJobRequest) -> Result<v1::Job, Refusal> {
-        let submission = Submission::try_from(request)?;
+        let within = |error| Refusal::within("campaign", error);
+        let dry_run = request.dry_run;
+        let (submission, faults) = submission(request);
+        if !faults.is_empty() {
+            let found = self.engine.faults(submission.campaign).await;
+            return Err(Refusal::together(faults, found.map_err(within)?));
+        }
+        if dry_run {
+            let run = self.engine.dry_run(submission.campaign).await;
+            return Ok(v1::Job::from(&run.map_err(within)?));
+        }
         let job = self.engine.submit(submission).await;
-        Ok(v1::Job::from(
-            &job.map_err(|error| Refusal::within("campaign", error))?,
-        ))
+        Ok(v1::Job::from(&job.map_err(within)?))
     }
 }
 

@@ -9,6 +9,7 @@ use enolattice_grid::InputError;
 use enolattice_wire::v1::{self, ErrorReason};
 use enolattice_wire::{
     DEFAULT_DETAIL_BYTES, DETAIL_BYTES_KEY, ERROR_DOMAIN, INPUT_FAULTS_TYPE_URL, MAX_DETAIL_BYTES,
+    bad_field,
 };
 use prost::Message;
 use prost_types::Any;
@@ -57,10 +58,36 @@ impl Refusal {
                 .iter_mut()
                 .filter(|fault| fault.place.field != "request_id")
             {
-                fault.place.field = format!("{part}.{}", fault.place.field);
+                fault.place.field = match fault.place.field.as_str() {
+                    "" => part.to_owned(),
+                    field => format!("{part}.{field}"),
+                };
             }
         }
         refusal
+    }
+
+    /// Faults of the message itself together with those of its campaign, whose axes may be empty only
+    /// because all their values are among the first.
+    pub(crate) fn together(of_message: Vec<InputError>, of_campaign: Vec<InputError>) -> Refusal {
+        let is_of_axis = |fault: &InputError, axis: &str| {
+            let path = fault.place.field.strip_prefix("campaign.");
+            path.is_some_and(|path| path.starts_with(axis))
+        };
+        let follows = |fault: &InputError| {
+            let axis = fault.place.field.as_str();
+            fault.code == ErrorReason::AxisEmpty.as_str_name()
+                && of_message.iter().any(|known| is_of_axis(known, axis))
+        };
+        let new: Vec<InputError> = of_campaign
+            .into_iter()
+            .filter(|fault| !follows(fault))
+            .collect();
+        let new = match Refusal::within("campaign", EngineError::Input(new)) {
+            Refusal::Input(faults) => faults,
+            other => return other,
+        };
+        Refusal::Input(enolattice_grid::in_order(of_message.into_iter().chain(new)))
     }
 
     /// The status, with details as large as the client said it takes.
@@ -71,9 +98,13 @@ impl Refusal {
         let mut details = Vec::new();
         if let Refusal::Input(faults) = &self {
             let listed = fitting(faults, detail_bytes(metadata));
-            facts.insert("faults".into(), faults.len().to_string());
-            facts.insert("faults_listed".into(), listed.len().to_string());
-            details.push(any("google.rpc.BadRequest", &bad_request(listed)));
+            let (all, told) = (
+                counted(faults),
+                listed.iter().filter(|fault| !counts_others(fault)),
+            );
+            facts.insert("faults".into(), all.to_string());
+            facts.insert("faults_listed".into(), told.count().to_string());
+            details.push(any("google.rpc.BadRequest", &bad_request(&listed)));
             let faults = listed.iter().map(Into::into).collect();
             details.push(Any {
                 type_url: INPUT_FAULTS_TYPE_URL.to_owned(),
@@ -178,7 +209,10 @@ fn code(reason: ErrorReason) -> Code {
 fn bad_request(faults: &[InputError]) -> pb::BadRequest {
     let violations = faults.iter().map(|fault| pb::bad_request::FieldViolation {
         field: fault.place.field.clone(),
-        description: format!("`{}`: {}; {}", fault.value, fault.reason, fault.remedy),
+        description: match fault.value.as_str() {
+            "" => format!("{}; {}", fault.reason, fault.remedy),
+            value => format!("`{value}`: {}; {}", fault.reason, fault.remedy),
+        },
         reason: fault.code.to_owned(),
         localized_message: None,
     });
@@ -187,8 +221,8 @@ fn bad_request(faults: &[InputError]) -> pb::BadRequest {
     }
 }
 
-/// The first faults, as many as fit into details of this size.
-fn fitting(faults: &[InputError], bytes: usize) -> &[InputError] {
+/// The first faults, as many as fit into details of this size, and one that counts the others.
+fn fitting(faults: &[InputError], bytes: usize) -> Vec<InputError> {
     let mut used = 0;
     let fit = faults.iter().take_while(|fault| {
         // Twice: once in the standard detail, once in our own; on the wire in base 64.
@@ -196,7 +230,31 @@ fn fitting(faults: &[InputError], bytes: usize) -> &[InputError] {
         used <= bytes
     });
     let count = fit.count().max(1).min(faults.len());
-    &faults[..count]
+    if count == faults.len() {
+        return faults.to_vec();
+    }
+    let more = bad_field(
+        ErrorReason::MoreFaults,
+        "",
+        (counted(faults) - count).to_string(),
+        "they are not listed",
+        "",
+    );
+    enolattice_grid::in_order(faults[..count].iter().cloned().chain([more]))
+}
+
+/// Whether a fault only says how many others there are.
+fn counts_others(fault: &InputError) -> bool {
+    fault.code == ErrorReason::MoreFaults.as_str_name()
+}
+
+/// Number of faults, those included that are counted only.
+fn counted(faults: &[InputError]) -> usize {
+    let count = |fault: &InputError| match counts_others(fault) {
+        true => fault.value.parse().unwrap_or(1),
+        false => 1,
+    };
+    faults.iter().map(count).sum()
 }
 
 fn detail_bytes(metadata: &MetadataMap) -> usize {
@@ -219,7 +277,7 @@ fn any(name: &str, message: &impl Message) -> Any {
 #[cfg(test)]
 mod tests {
     use super::*;
-    use enolattice_wire::{RemoteError, bad_field};
+    use enolattice_wire::RemoteError;
     use tonic_types::StatusExt;
 
     fn faults(count: usize) -> Vec<InputError> {
@@ -272,7 +330,7 @@ mod tests {
 
     #[test]
     fn details_stay_within_what_the_client_takes() {
-        let small = Refusal::from(faults(1000)).status(&MetadataMap::new());
+        let small = Refusal::from(faults(200)).status(&MetadataMap::new());
         assert!(
             small.details().len() * 4 / 3 <= 8192,
             "{}",
@@ -280,12 +338,20 @@ mod tests {
         );
         let details = small.get_error_details();
         let facts = &details.error_info().expect("an ErrorInfo").metadata;
-        assert_eq!(facts["faults"], "1000");
+        assert_eq!(facts["faults"], "200");
+        let told = match received(&small) {
+            RemoteError::Input(faults) => faults,
+            other => panic!("{other:?}"),
+        };
+        let last = told.last().expect("faults");
+        assert_eq!(last.code, "MORE_FAULTS");
+        assert_eq!(facts["faults_listed"], (told.len() - 1).to_string());
+        assert_eq!(last.value, (201 - told.len()).to_string());
         let mut metadata = MetadataMap::new();
         metadata.insert(DETAIL_BYTES_KEY, "1000000".parse().expect("ASCII"));
-        let large = Refusal::from(faults(1000)).status(&metadata);
+        let large = Refusal::from(faults(200)).status(&metadata);
         match received(&large) {
-            RemoteError::Input(faults) => assert_eq!(faults.len(), 1000),
+            RemoteError::Input(faults) => assert_eq!(faults.len(), 200),
             other => panic!("{other:?}"),
         }
     }

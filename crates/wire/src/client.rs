@@ -14,8 +14,10 @@
 //! ```
 
 use enolattice_engine::{
-    CellDescription, ExplainTarget, Job, RankPage, RankQuery, ReagentRow, SiteReport, Submission,
+    CellDescription, DryRun, ExplainTarget, Job, RankPage, RankQuery, ReagentRow, SiteReport,
+    Submission,
 };
+use enolattice_grid::{CampaignSpec, InputError};
 use enolattice_model::Explanation;
 use tonic::metadata::MetadataValue;
 use tonic::transport::{Channel, Endpoint};
@@ -75,6 +77,38 @@ impl Client {
     /// As the embedded engine; faults have the places of `submission.campaign`.
     pub async fn submit(&self, submission: Submission) -> Result<Job, RemoteError> {
         let request = v1::SubmitJobRequest::try_from(&submission).map_err(RemoteError::Input)?;
+        Ok(self.send(request, &submission.campaign).await?.try_into()?)
+    }
+
+    /// What a campaign would take.
+    ///
+    /// # Errors
+    /// As the embedded engine; faults have the places of the campaign.
+    pub async fn dry_run(&self, campaign: CampaignSpec) -> Result<DryRun, RemoteError> {
+        let submission = checking(campaign);
+        let mut request =
+            v1::SubmitJobRequest::try_from(&submission).map_err(RemoteError::Input)?;
+        request.dry_run = true;
+        Ok(self.send(request, &submission.campaign).await?.try_into()?)
+    }
+
+    /// Every fault in the values of a campaign; none where it is sound.
+    ///
+    /// # Errors
+    /// As the embedded engine.
+    pub async fn faults(&self, campaign: CampaignSpec) -> Result<Vec<InputError>, RemoteError> {
+        match self.submit(checking(campaign)).await {
+            Ok(_) => Ok(Vec::new()),
+            Err(RemoteError::Input(faults)) => Ok(faults),
+            Err(error) => Err(error),
+        }
+    }
+
+    async fn send(
+        &self,
+        request: v1::SubmitJobRequest,
+        campaign: &CampaignSpec,
+    ) -> Result<v1::Job, RemoteError> {
         let mut jobs = self.jobs.clone();
         let answer = match upload::parts(request) {
             upload::Upload::One(request) => jobs.submit_job(with_details(*request)).await,
@@ -84,12 +118,10 @@ impl Client {
             }
         };
         let job = answer.map_err(|status| match self.error(&status) {
-            RemoteError::Input(faults) => {
-                RemoteError::Input(places::relocate(faults, &submission.campaign))
-            }
+            RemoteError::Input(faults) => RemoteError::Input(places::relocate(faults, campaign)),
             other => other,
         })?;
-        Ok(job.into_inner().try_into()?)
+        Ok(job.into_inner())
     }
 
     /// All jobs, newest first.
@@ -274,6 +306,15 @@ impl JobWatch {
             Some(v1::WatchJobResponse { job }) => Ok(Some(job.unwrap_or_default().try_into()?)),
             None => Ok(None),
         }
+    }
+}
+
+/// A submission that is checked only.
+fn checking(campaign: CampaignSpec) -> Submission {
+    Submission {
+        campaign,
+        request_id: String::new(),
+        validate_only: true,
     }
 }
 

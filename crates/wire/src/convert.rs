@@ -5,13 +5,17 @@ mod campaign;
 mod cell;
 mod conditions;
 mod description;
+mod dry_run;
 mod enums;
 mod explanation;
 mod job;
 mod library;
+mod media;
 mod numbers;
 mod ranking;
+mod stock;
 
+pub use campaign::submission;
 pub use description::explained;
 pub use ranking::page_size;
 

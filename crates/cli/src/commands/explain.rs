@@ -56,7 +56,7 @@ struct Given {
         required_unless_present = "job"
     )]
     electrophile: Option<String>,
-    /// Solvent.
+    /// Solvent or mixture, e.g. `THF/DMF 4:1`.
     #[arg(
         long,
         value_name = "NAME",
@@ -64,6 +64,9 @@ struct Given {
         required_unless_present = "job"
     )]
     solvent: Option<String>,
+    /// Additive; default: none.
+    #[arg(long, value_name = "NAME", conflicts_with = "job")]
+    additive: Option<String>,
     /// Temperature of the reaction, °C.
     #[arg(
         long,
@@ -99,6 +102,14 @@ struct Given {
         allow_negative_numbers = true
     )]
     electrophile_equiv: f64,
+    /// Additive, equivalents; default: 1.1.
+    #[arg(
+        long,
+        value_name = "N",
+        requires = "additive",
+        allow_negative_numbers = true
+    )]
+    additive_equiv: Option<f64>,
     /// Time after the electrophile, h.
     #[arg(
         long,
@@ -169,10 +180,12 @@ impl Given {
             base: self.base.unwrap_or_default(),
             electrophile: self.electrophile.unwrap_or_default(),
             solvent: self.solvent.unwrap_or_default(),
+            additive: self.additive,
             temperature_c: self.temperature_c.unwrap_or_default(),
             formation_temperature_c: self.formation_temperature_c,
             base_equiv: self.base_equiv,
             electrophile_equiv: self.electrophile_equiv,
+            additive_equiv: self.additive_equiv,
             time_h: self.time_h,
             dosing_min: self.dosing_min,
             concentration_m: self.concentration_m,

@@ -41,7 +41,7 @@ enum Command {
     Watch(watch::Watch),
     Cancel(cancel::Cancel),
     Rank(rank::Rank),
-    Explain(explain::Explain),
+    Explain(Box<explain::Explain>),
     Sites(sites::Sites),
     Reagents(reagents::Reagents),
 }

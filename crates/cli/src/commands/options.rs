@@ -20,6 +20,9 @@ pub(crate) struct EngineOptions {
     /// Compute threads of the engine in this process; 0: one for each core.
     #[arg(long, value_name = "N", default_value_t = 0, conflicts_with = "server")]
     pub(crate) threads: usize,
+    /// Lay a table of your own reagents over the library; may be given several times.
+    #[arg(long, value_name = "FILE", conflicts_with = "server")]
+    pub(crate) library: Vec<PathBuf>,
 }
 
 impl EngineOptions {
@@ -97,6 +100,8 @@ pub(crate) enum AxisName {
     Solvent,
     #[value(name = "temperature")]
     Temperature,
+    #[value(name = "additive")]
+    Additive,
 }
 
 impl From<AxisName> for Axis {
@@ -107,6 +112,7 @@ impl From<AxisName> for Axis {
             AxisName::Electrophile => Axis::Electrophile,
             AxisName::Solvent => Axis::Solvent,
             AxisName::Temperature => Axis::Temperature,
+            AxisName::Additive => Axis::Additive,
         }
     }
 }

@@ -5,15 +5,16 @@ use std::time::{Duration, Instant};
 
 use clap::Args;
 use enolattice_engine::{Axis, Job, RankQuery, RankedCell, Submission};
+use enolattice_grid::CampaignSpec;
 
 use super::EngineOptions;
 use super::following::{expect_done, follow};
-use crate::campaign_file::read_campaign;
+use crate::campaign_file::{read_campaign, sound};
 use crate::client::{Client, Need};
 use crate::fault::Fault;
-use crate::json::{CellLine, ScreenedDocument};
+use crate::json::{CellLine, DryRunDocument, ScreenedDocument};
 use crate::output::{print, print_json, talk};
-use crate::text::{cell_table, count, safety_notice};
+use crate::text::{cell_table, count, dry_run_page, safety_notice};
 
 /// Rows of the table of top cells.
 const TOP: u32 = 20;
@@ -27,6 +28,9 @@ const MOST_SUBSTRATES: u32 = 1000;
 pub(super) struct Screen {
     /// The campaign.
     file: PathBuf,
+    /// Only say what it would take, what the model does not cover and what is dangerous.
+    #[arg(long)]
+    dry_run: bool,
     #[command(flatten)]
     engine: EngineOptions,
     /// Print JSON.
@@ -45,7 +49,14 @@ struct Screened {
 
 impl Screen {
     pub(super) async fn run(self) -> Result<(), Fault> {
-        let campaign = read_campaign(&self.file)?;
+        let reading = read_campaign(&self.file)?;
+        if self.dry_run || !reading.faults.is_empty() {
+            // No data directory is opened for what is not screened.
+            let client = Client::open(&self.engine, Need::Chemistry).await?;
+            let campaign = sound(reading, &client).await?;
+            return self.look(&client, campaign).await;
+        }
+        let campaign = reading.spec;
         let client = Client::open(&self.engine, Need::Work).await?;
         if client.is_embedded() {
             talk(&format!(
@@ -70,6 +81,18 @@ impl Screen {
         } else {
             self.print_page(&screened)
         }
+    }
+
+    async fn look(&self, client: &Client, campaign: CampaignSpec) -> Result<(), Fault> {
+        let run = client.dry_run(campaign).await?;
+        run.job
+            .warnings
+            .iter()
+            .for_each(|warning| talk(&format!("note: {warning}")));
+        if self.json {
+            return print_json(&DryRunDocument::from(run));
+        }
+        print(&[dry_run_page(&run), safety_notice()].join("\n\n"))
     }
 
     async fn screen(&self, client: &Client, submission: Submission) -> Result<Screened, Fault> {

@@ -11,6 +11,7 @@ use tokio::net::TcpListener;
 
 use super::EngineOptions;
 use super::options::LogFormat;
+use crate::campaign_file::own_tables;
 use crate::fault::Fault;
 use crate::output::{print, talk};
 
@@ -29,6 +30,9 @@ pub(super) struct Serve {
     /// Compute threads; 0: one for each core.
     #[arg(long, value_name = "N", default_value_t = 0)]
     threads: usize,
+    /// Lay a table of your own reagents over the library; may be given several times.
+    #[arg(long, value_name = "FILE")]
+    library: Vec<PathBuf>,
     /// Form of the log on stderr.
     #[arg(long, value_name = "FORM", value_enum, default_value_t)]
     log_format: LogFormat,
@@ -53,6 +57,7 @@ impl Serve {
         let config = EngineConfig {
             data_dir: data_dir.clone(),
             threads: self.threads,
+            library: own_tables(&self.library)?,
         };
         let engine = Arc::new(Engine::open(config).await?);
         let stop = stop_signal().map_err(|error| Fault::service(error.to_string()))?;

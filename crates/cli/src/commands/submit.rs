@@ -6,7 +6,7 @@ use clap::Args;
 use enolattice_engine::Submission;
 
 use super::EngineOptions;
-use crate::campaign_file::read_campaign;
+use crate::campaign_file::{read_campaign, sound};
 use crate::client::{Client, Need};
 use crate::fault::Fault;
 use crate::json::JobRecord;
@@ -36,8 +36,15 @@ pub(super) struct Submit {
 
 impl Submit {
     pub(super) async fn run(self) -> Result<(), Fault> {
-        let campaign = read_campaign(&self.file)?;
-        let client = Client::open(&self.engine, Need::Jobs).await?;
+        let reading = read_campaign(&self.file)?;
+        let checks_only = self.validate_only || !reading.faults.is_empty();
+        let need = if checks_only {
+            Need::Chemistry
+        } else {
+            Need::Jobs
+        };
+        let client = Client::open(&self.engine, need).await?;
+        let campaign = sound(reading, &client).await?;
         let submission = Submission {
             campaign,
             request_id: self.request_id,

@@ -1,6 +1,6 @@
 //! The fields of `--json` are those that `docs/commands.md` lists, in its order.
 
-use enolattice_engine::{CellDescription, Job, JobState, RankedCell, ReagentRow};
+use enolattice_engine::{CellDescription, DryRun, Job, JobState, RankedCell, ReagentRow};
 use enolattice_model::{
     Advice, Category, Caution, Channel, CoursePoint, ExplainedRate, ExplainedSite, Explanation,
     Origin, Severity,
@@ -9,7 +9,8 @@ use serde::Serialize;
 use serde_json::Value;
 
 use super::{
-    CellLine, ExplanationDocument, JobRecord, MoleculeSites, ReagentRecord, ScreenedDocument,
+    CellLine, DryRunDocument, ExplanationDocument, JobRecord, MoleculeSites, ReagentRecord,
+    ScreenedDocument,
 };
 
 const DOCUMENT: &str = include_str!("../../docs/commands.md");
@@ -48,10 +49,12 @@ fn cell() -> RankedCell {
         base: String::new(),
         electrophile: String::new(),
         solvent: String::new(),
+        additive: None,
         temperature_c: 25.0,
         formation_temperature_c: 25.0,
         base_equiv: 1.1,
         electrophile_equiv: 1.2,
+        additive_equiv: None,
         concentration_m: 0.2,
         time_h: 16.0,
         dosing_min: 10.0,
@@ -92,10 +95,12 @@ fn description() -> CellDescription {
         electrophile: String::new(),
         electrophile_smiles: String::new(),
         solvent: String::new(),
+        additive: None,
         temperature_c: 25.0,
         formation_temperature_c: 25.0,
         base_equiv: 1.1,
         electrophile_equiv: 1.2,
+        additive_equiv: None,
         concentration_m: 0.2,
         time_h: 16.0,
         dosing_min: 10.0,
@@ -139,7 +144,9 @@ fn explanation() -> Explanation {
             category: Category::Gas,
             severity: Severity::Note,
             text: String::new(),
+            source: String::new(),
         }],
+        hazards: Vec::new(),
         limits: Vec::new(),
         advice: vec![Advice {
             change: String::new(),
@@ -191,8 +198,21 @@ fn every_field_is_documented_and_every_documented_field_is_there() {
         smiles: String::new(),
         sites: Vec::new(),
     };
+    let dry = DryRunDocument::from(DryRun {
+        job: job(),
+        axes: Vec::new(),
+        seconds: 1.0,
+        disk_bytes: 1,
+        memory_bytes: 1,
+        cells_scored: 1,
+        cells_scored_not_covered: 0,
+        not_covered: Vec::new(),
+        cells_looked_at: 1,
+        cautions: Vec::new(),
+    });
     for (heading, found) in [
         ("### `screen --json`", fields(&screened)),
+        ("### `screen --dry-run --json`", fields(&dry)),
         ("### `jobs --json`", fields(&JobRecord::from(job()))),
         ("### `rank --json`", fields(&CellLine::from(cell()))),
         (

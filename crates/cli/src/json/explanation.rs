@@ -29,6 +29,7 @@ pub(crate) struct ExplanationDocument {
     losses: Vec<LossRecord>,
     course: Vec<CourseRecord>,
     cautions: Vec<CautionRecord>,
+    hazards: Vec<String>,
     limits: Vec<String>,
     advice: Vec<AdviceRecord>,
     model: String,
@@ -44,10 +45,12 @@ struct CellRecord {
     electrophile: String,
     electrophile_smiles: String,
     solvent: String,
+    additive: Option<String>,
     temperature_c: f64,
     formation_temperature_c: f64,
     base_equiv: f64,
     electrophile_equiv: f64,
+    additive_equiv: Option<f64>,
     concentration_m: f64,
     time_h: f64,
     dosing_min: f64,
@@ -82,6 +85,7 @@ struct CautionRecord {
     category: &'static str,
     severity: &'static str,
     text: String,
+    source: String,
 }
 
 #[derive(Clone, Debug, Serialize)]
@@ -114,6 +118,7 @@ impl ExplanationDocument {
             losses: told.losses.into_iter().map(LossRecord::from).collect(),
             course: told.course.into_iter().map(CourseRecord::from).collect(),
             cautions: told.cautions.into_iter().map(CautionRecord::from).collect(),
+            hazards: told.hazards,
             limits: told.limits,
             advice: told.advice.into_iter().map(AdviceRecord::from).collect(),
             model: told.model,
@@ -131,10 +136,12 @@ impl From<CellDescription> for CellRecord {
             electrophile: cell.electrophile,
             electrophile_smiles: cell.electrophile_smiles,
             solvent: cell.solvent,
+            additive: cell.additive,
             temperature_c: cell.temperature_c,
             formation_temperature_c: cell.formation_temperature_c,
             base_equiv: cell.base_equiv,
             electrophile_equiv: cell.electrophile_equiv,
+            additive_equiv: cell.additive_equiv,
             concentration_m: cell.concentration_m,
             time_h: cell.time_h,
             dosing_min: cell.dosing_min,
@@ -181,6 +188,7 @@ impl From<Caution> for CautionRecord {
             category: caution.category.name(),
             severity: caution.severity.name(),
             text: caution.text,
+            source: caution.source,
         }
     }
 }

@@ -2,6 +2,7 @@
 //! fields may be added, none changes its meaning.
 
 mod cell;
+mod dry_run;
 mod explanation;
 mod job;
 mod reagent;
@@ -9,6 +10,7 @@ mod screened;
 mod site;
 
 pub(crate) use cell::CellLine;
+pub(crate) use dry_run::DryRunDocument;
 pub(crate) use explanation::ExplanationDocument;
 pub(crate) use job::{JobRecord, state_name};
 pub(crate) use reagent::ReagentRecord;

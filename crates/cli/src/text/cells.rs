@@ -15,6 +15,7 @@ type Column = (&'static str, Side, fn(&RankedCell) -> String);
 pub(crate) fn cell_table(cells: &[RankedCell]) -> String {
     use Side::{Left, Right};
     let narrow = width() < NARROW;
+    let has_additives = cells.iter().any(|cell| cell.additive.is_some());
     let columns: Vec<Column> = vec![
         ("rank", Right, |cell| cell.rank.to_string()),
         ("cell", Right, |cell| cell.cell.to_string()),
@@ -22,6 +23,9 @@ pub(crate) fn cell_table(cells: &[RankedCell]) -> String {
         ("base", Left, |cell| cell.base.clone()),
         ("electrophile", Left, |cell| cell.electrophile.clone()),
         ("solvent", Left, |cell| cell.solvent.clone()),
+        ("additive", Left, |cell| {
+            cell.additive.clone().unwrap_or_default()
+        }),
         ("T/°C", Right, |cell| {
             temperatures(cell.formation_temperature_c, cell.temperature_c)
         }),
@@ -38,6 +42,7 @@ pub(crate) fn cell_table(cells: &[RankedCell]) -> String {
     let shown: Vec<_> = columns
         .into_iter()
         .filter(|(name, ..)| !narrow || *name != "selectivity")
+        .filter(|(name, ..)| has_additives || *name != "additive")
         .collect();
     let headings: Vec<(&str, Side)> = shown.iter().map(|(name, side, _)| (*name, *side)).collect();
     let row = |cell| shown.iter().map(|(.., text)| text(cell)).collect();

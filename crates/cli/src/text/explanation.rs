@@ -23,6 +23,7 @@ pub(crate) fn explanation_page(cell: &CellDescription, told: &Explanation) -> St
             course(told),
         ),
         ("Cautions", cautions(told)),
+        ("Hazards", sentences(&told.hazards, "unknown")),
         ("Limits", sentences(&told.limits, "the model names none")),
         ("What a change would bring", advice(told)),
     ];
@@ -65,6 +66,12 @@ fn cell_section(cell: &CellDescription) -> String {
                 short(cell.concentration_m)
             ),
         ),
+    ]);
+    if let Some(additive) = &cell.additive {
+        let equiv = short(cell.additive_equiv.unwrap_or_default());
+        lines.push(("additive", format!("{additive}, {equiv} equiv")));
+    }
+    lines.extend([
         (
             "temperature",
             format!(
@@ -246,7 +253,7 @@ fn cautions(told: &Explanation) -> String {
                     caution.category.name(),
                     caution.severity.name()
                 ),
-                &caution.text,
+                &format!("{} [{}]", caution.text, caution.source),
             )
         })
         .collect();

@@ -1,6 +1,7 @@
 //! What a person reads: tables and pages of text.
 
 mod cells;
+mod dry_run;
 mod explanation;
 mod jobs;
 mod numbers;
@@ -9,6 +10,7 @@ mod sites;
 mod table;
 
 pub(crate) use cells::cell_table;
+pub(crate) use dry_run::dry_run_page;
 pub(crate) use explanation::explanation_page;
 pub(crate) use jobs::job_table;
 pub(crate) use numbers::{count, percent};

@@ -163,6 +163,26 @@ fn bind_test(test: &Test, campaign: &Campaign) -> Result<Question, Fault> {
                 .map(|s| library_names(&s.record.name, &s.record.synonyms));
             axis(test, |d| d.solvent, names.collect())?
         }
+        Field::Additive => {
+            let names = campaign.additives.iter().map(|dose| match dose {
+                Some(dose) => {
+                    library_names(&dose.additive.record.name, &dose.additive.record.synonyms)
+                }
+                None => vec!["none".to_owned()],
+            });
+            axis(test, |d| d.additive, names.collect())?
+        }
+        Field::AdditiveEquiv => Question::Axis {
+            digit: |d| d.additive,
+            passes: campaign
+                .additives
+                .iter()
+                .map(|dose| {
+                    dose.as_ref()
+                        .is_some_and(|dose| number_passes(test, dose.equiv))
+                })
+                .collect(),
+        },
         Field::TemperatureC => numbers(|d| d.temperature, &campaign.temperature_c),
         Field::BaseEquiv => numbers(|d| d.base_equiv, &campaign.base_equiv),
         Field::ElectrophileEquiv => numbers(|d| d.electrophile_equiv, &campaign.electrophile_equiv),

@@ -9,10 +9,12 @@ pub(super) enum Field {
     Base,
     Electrophile,
     Solvent,
+    Additive,
     TemperatureC,
     FormationTemperatureC,
     BaseEquiv,
     ElectrophileEquiv,
+    AdditiveEquiv,
     ConcentrationM,
     TimeH,
     DosingMin,
@@ -42,11 +44,12 @@ pub(super) enum Kind {
 }
 
 impl Field {
-    pub(super) const ALL: [(Field, &'static str, Kind); 19] = [
+    pub(super) const ALL: [(Field, &'static str, Kind); 21] = [
         (Field::Substrate, "substrate", Kind::Name),
         (Field::Base, "base", Kind::Name),
         (Field::Electrophile, "electrophile", Kind::Name),
         (Field::Solvent, "solvent", Kind::Name),
+        (Field::Additive, "additive", Kind::Name),
         (Field::TemperatureC, "temperature_c", Kind::Number),
         (
             Field::FormationTemperatureC,
@@ -55,6 +58,7 @@ impl Field {
         ),
         (Field::BaseEquiv, "base_equiv", Kind::Number),
         (Field::ElectrophileEquiv, "electrophile_equiv", Kind::Number),
+        (Field::AdditiveEquiv, "additive_equiv", Kind::Number),
         (Field::ConcentrationM, "concentration_m", Kind::Number),
         (Field::TimeH, "time_h", Kind::Number),
         (Field::DosingMin, "dosing_min", Kind::Number),

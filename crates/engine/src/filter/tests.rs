@@ -34,7 +34,7 @@ fn grid() -> &'static Grid {
             campaign: CAMPAIGN.into(),
             files: BTreeMap::new(),
         };
-        let spec = enolattice_grid::read(&sources).expect("reads");
+        let spec = enolattice_grid::read(&sources).sound().expect("reads");
         let model = Arc::new(Model::new(Arc::new(Library::builtin().expect("library"))));
         Grid::new(Campaign::new(&spec, &model).expect("campaign"), model).expect("grid")
     })

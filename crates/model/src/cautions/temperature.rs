@@ -2,13 +2,16 @@
 
 use enolattice_reagents::{Hazards, NamedElectrophile, Solvent};
 
+use super::statements::states_flammable;
 use super::{Category, Caution};
 
 /// Flammable by the GHS: a flash point of at most 60 °C (UN GHS, chapter 2.6).
 const FLAMMABLE_FLASH_C: f64 = 60.0;
 
-/// Statements for flammable liquids; H227 (combustible, up to 93 °C) is left to the flash point.
-const FLAMMABLE_STATEMENTS: [&str; 3] = ["H224", "H225", "H226"];
+/// Statements that make a vapour worse than a loss of reagent.
+const HARMFUL_VAPOUR: [&str; 8] = [
+    "H300", "H310", "H330", "H331", "H340", "H341", "H350", "H351",
+];
 
 /// Boiling, freezing and burning of the solvent between the two temperatures of a cell.
 pub(super) fn of_solvent(solvent: &Solvent, coldest_c: f64, hottest_c: f64) -> Vec<Caution> {
@@ -18,19 +21,28 @@ pub(super) fn of_solvent(solvent: &Solvent, coldest_c: f64, hottest_c: f64) -> V
         melting_c,
         ..
     } = solvent;
+    let what = if solvent.parts.is_empty() {
+        name.clone()
+    } else {
+        format!("the lowest-boiling part of {name}")
+    };
     let mut found = Vec::new();
     if hottest_c > *boiling_c {
+        let text = format!(
+            "{what} boils at {boiling_c} °C, below {hottest_c} °C: pressure in a closed well"
+        );
         found.push(Caution::warning(
             Category::AboveBoilingPoint,
-            format!(
-                "{name} boils at {boiling_c} °C, below {hottest_c} °C: pressure in a closed well"
-            ),
+            text,
+            &solvent.source,
         ));
     }
     if coldest_c < *melting_c {
+        let text = format!("{name} melts at {melting_c} °C, above {coldest_c} °C: it freezes");
         found.push(Caution::warning(
             Category::BelowMeltingPoint,
-            format!("{name} melts at {melting_c} °C, above {coldest_c} °C: it freezes"),
+            text,
+            &solvent.source,
         ));
     }
     found.extend(flammability(solvent, hottest_c));
@@ -41,20 +53,14 @@ fn flammability(solvent: &Solvent, hottest_c: f64) -> Option<Caution> {
     let name = &solvent.name;
     let text = match solvent.flash_c {
         Some(flash) if hottest_c >= flash => {
-            format!("{name} is at or above its flash point of {flash} °C")
+            format!("{name} at {hottest_c} °C is at or above its flash point of {flash} °C")
         }
-        Some(flash) if flash <= FLAMMABLE_FLASH_C => {
+        Some(flash) if flash <= FLAMMABLE_FLASH_C && !states_flammable(&solvent.hazards) => {
             format!("{name} is flammable, flash point {flash} °C")
         }
-        _ if states_flammable(&solvent.hazards) => format!("{name} is flammable"),
         _ => return None,
     };
-    Some(Caution::note(Category::Flammable, text))
-}
-
-/// Whether a hazard statement calls the substance a flammable liquid.
-pub(super) fn states_flammable(hazards: &Hazards) -> bool {
-    FLAMMABLE_STATEMENTS.iter().any(|code| hazards.has(code))
+    Some(Caution::note(Category::Flammable, text, &solvent.source))
 }
 
 /// Boiling of the electrophile; worse where its vapour is a poison or a carcinogen.
@@ -64,10 +70,14 @@ pub(super) fn of_electrophile(named: &NamedElectrophile, temperature_c: f64) -> 
         "{} boils at {boiling_c} °C, below {temperature_c} °C: it escapes from an open well",
         named.name
     );
-    let harmful = ["H330", "H331", "H340", "H341", "H350", "H351"];
-    Some(if harmful.iter().any(|code| named.hazards.has(code)) {
-        Caution::warning(Category::AboveBoilingPoint, text)
+    let caution = if is_harmful_vapour(&named.hazards) {
+        Caution::warning
     } else {
-        Caution::note(Category::AboveBoilingPoint, text)
-    })
+        Caution::note
+    };
+    Some(caution(Category::AboveBoilingPoint, text, &named.source))
+}
+
+fn is_harmful_vapour(hazards: &Hazards) -> bool {
+    HARMFUL_VAPOUR.iter().any(|code| hazards.has(code))
 }

@@ -1,7 +1,7 @@
-//! Alkyl, allyl, propargyl, benzyl and α-carbonyl halides and sulfonates.
+//! Alkyl, allyl, propargyl, benzyl and α-carbonyl halides and sulfonates, oxonium ions.
 
 use super::{AlkylGroup, ElectrophileKind, ElectrophilicGroup, LeavingGroup, skeleton};
-use crate::groups::{CARBON, OXYGEN};
+use crate::groups::{Acyl, CARBON, OXYGEN};
 use crate::{Bond, Molecule};
 
 /// One carbon with a leaving group.
@@ -42,10 +42,19 @@ pub(super) fn find(molecule: &Molecule) -> Result<Option<ElectrophilicGroup>, St
                 .to_owned(),
         );
     }
-    // The second alkyl group of a sulfate stays behind in the monoalkyl sulfate.
+    // The second alkyl group of a sulfate stays behind in the monoalkyl sulfate, and so do those of
+    // an oxonium ion in the ether.
     let further = match best.leaving {
-        LeavingGroup::Sulfate => 0,
-        _ => candidates.iter().filter(|c| same(c)).count() - 1,
+        LeavingGroup::Sulfate | LeavingGroup::Ether => 0,
+        _ => {
+            let mut carbons: Vec<usize> = candidates
+                .iter()
+                .filter(|c| same(c))
+                .map(|c| c.carbon)
+                .collect();
+            carbons.dedup();
+            carbons.len() - 1
+        }
     };
     Ok(Some(described(molecule, best, further)))
 }
@@ -70,6 +79,28 @@ pub(super) fn fluoride(molecule: &Molecule) -> Option<ElectrophilicGroup> {
         })
 }
 
+/// A trialkyl phosphate alone: a slow alkylating agent.
+pub(super) fn phosphate(molecule: &Molecule) -> Option<ElectrophilicGroup> {
+    let is_phosphate = |phosphorus: usize| {
+        molecule.element(phosphorus) == 15
+            && molecule.bound_to(phosphorus, OXYGEN, Bond::Double).count() == 1
+            && molecule.bound_to(phosphorus, OXYGEN, Bond::Single).count() == 3
+    };
+    (0..molecule.atoms().len())
+        .filter(|phosphorus| is_phosphate(*phosphorus))
+        .flat_map(|phosphorus| molecule.bound_to(phosphorus, OXYGEN, Bond::Single))
+        .find_map(|leaving_atom| {
+            let carbon = saturated_neighbour(molecule, leaving_atom)?;
+            let candidate = Candidate {
+                carbon,
+                leaving_atom,
+                group: skeleton::classify(molecule, carbon, leaving_atom).ok()?,
+                leaving: LeavingGroup::Phosphate,
+            };
+            Some(described(molecule, &candidate, 0))
+        })
+}
+
 /// A vinyl, aryl or bridgehead halide: known not to react.
 pub(super) fn inert(molecule: &Molecule) -> Option<ElectrophilicGroup> {
     let halides = (0..molecule.atoms().len()).filter(|atom| molecule.is_halogen(*atom));
@@ -89,7 +120,7 @@ pub(super) fn inert(molecule: &Molecule) -> Option<ElectrophilicGroup> {
             };
             Some(ElectrophilicGroup {
                 kind: ElectrophileKind::Inert { reason },
-                carbon,
+                atom: carbon,
                 leaving_atom: Some(halogen),
                 further_positions: 0,
             })
@@ -106,7 +137,7 @@ fn described(molecule: &Molecule, c: &Candidate, further: usize) -> Electrophili
             beta_hydrogens,
             activated_beta_hydrogen,
         },
-        carbon: c.carbon,
+        atom: c.carbon,
         leaving_atom: Some(c.leaving_atom),
         further_positions: u8::try_from(further).unwrap_or(u8::MAX),
     }
@@ -118,6 +149,7 @@ fn candidate(molecule: &Molecule, atom: usize) -> Result<Option<Candidate>, Stri
         17 => LeavingGroup::Chloride,
         35 => LeavingGroup::Bromide,
         53 => LeavingGroup::Iodide,
+        OXYGEN if is_oxonium(molecule, atom) => LeavingGroup::Ether,
         OXYGEN => match sulfonate(molecule, atom)? {
             Some(leaving) => leaving,
             None => return Ok(None),
@@ -127,16 +159,17 @@ fn candidate(molecule: &Molecule, atom: usize) -> Result<Option<Candidate>, Stri
     let Some(carbon) = saturated_neighbour(molecule, atom) else {
         return Ok(None);
     };
-    if molecule.is_halogen(atom) && halogens_on(molecule, carbon) > 1 {
+    if halogens_on(molecule, carbon) == 3 && is_on_aldehyde(molecule, carbon) {
+        return Ok(None);
+    }
+    if molecule.is_halogen(atom)
+        && halogens_on(molecule, carbon) > 1
+        && !skeleton::is_halomethyl(molecule, carbon)
+    {
         return Err(
             "a carbon with several halogens reacts by halogen transfer or as a carbene source, \
              which is not covered"
                 .to_owned(),
-        );
-    }
-    if molecule.bond_in_ring(carbon, atom) {
-        return Err(
-            "a cyclic sulfonate or sulfate opens its ring, which is not covered".to_owned(),
         );
     }
     if skeleton::is_bridgehead(molecule, carbon) {
@@ -155,6 +188,18 @@ fn saturated_neighbour(molecule: &Molecule, atom: usize) -> Option<usize> {
     molecule
         .bound_to(atom, CARBON, Bond::Single)
         .find(|carbon| molecule.is_saturated_carbon(*carbon))
+}
+
+/// Chloral is an aldehyde.
+fn is_on_aldehyde(molecule: &Molecule, carbon: usize) -> bool {
+    molecule
+        .bound_to(carbon, CARBON, Bond::Single)
+        .any(|other| molecule.acyl(other) == Some(Acyl::Aldehyde))
+}
+
+fn is_oxonium(molecule: &Molecule, oxygen: usize) -> bool {
+    molecule.atoms()[oxygen].charge == 1
+        && molecule.bound_to(oxygen, CARBON, Bond::Single).count() == 3
 }
 
 fn halogens_on(molecule: &Molecule, carbon: usize) -> usize {
@@ -212,6 +257,8 @@ fn log_reactivity(candidate: &Candidate) -> f64 {
         AlkylGroup::Benzyl => 2.1,
         AlkylGroup::SecondaryActivated => 0.5,
         AlkylGroup::AlphaCarbonyl => 3.0,
+        AlkylGroup::AlphaHetero => 2.6,
+        AlkylGroup::Halomethyl => 0.0,
     };
     let leaving = match candidate.leaving {
         LeavingGroup::Fluoride => -4.0,
@@ -221,6 +268,8 @@ fn log_reactivity(candidate: &Candidate) -> f64 {
         LeavingGroup::Tosylate | LeavingGroup::Mesylate => 0.1,
         LeavingGroup::Triflate => 3.3,
         LeavingGroup::Sulfate => 1.3,
+        LeavingGroup::Phosphate => -2.5,
+        LeavingGroup::Ether => 4.0,
     };
     group + leaving
 }

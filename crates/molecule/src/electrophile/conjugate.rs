@@ -1,6 +1,6 @@
-//! Michael acceptors.
+//! Michael acceptors: alkenes and alkynes with an acceptor, and vinylpyridines.
 
-use super::{Acceptor, ElectrophileKind, ElectrophilicGroup};
+use super::{Acceptor, ElectrophileKind, ElectrophilicGroup, quinone};
 use crate::groups::CARBON;
 use crate::{Bond, Molecule};
 
@@ -38,15 +38,25 @@ impl Alkene {
 /// The strongest Michael acceptor of a molecule.
 ///
 /// # Errors
-/// An acceptor alkene with a heteroatom on the double bond.
+/// An acceptor alkene with a heteroatom on the double bond, or a quinone that [`quinone::find`] refuses.
 pub(super) fn find(molecule: &Molecule) -> Result<Option<ElectrophilicGroup>, String> {
+    if let Some(group) = quinone::find(molecule)? {
+        return Ok(Some(group));
+    }
     let mut alkenes = Vec::new();
     for one in 0..molecule.atoms().len() {
-        for other in molecule.bound_to(one, CARBON, Bond::Double) {
+        let unsaturated = [Bond::Double, Bond::Triple];
+        for other in unsaturated
+            .into_iter()
+            .flat_map(|b| molecule.bound_to(one, CARBON, b))
+        {
             if molecule.element(one) == CARBON && one < other {
                 alkenes.extend(better_reading(molecule, one, other)?);
             }
         }
+    }
+    if alkenes.is_empty() {
+        alkenes.extend(vinyl_azines(molecule));
     }
     alkenes.sort_by_key(Alkene::precedence);
     let Some(best) = alkenes.first() else {
@@ -63,7 +73,7 @@ pub(super) fn find(molecule: &Molecule) -> Result<Option<ElectrophilicGroup>, St
             beta_aryl: best.beta_aryl,
             alpha_alkyl: best.alpha_alkyl,
         },
-        carbon: best.beta,
+        atom: best.beta,
         leaving_atom: None,
         further_positions: u8::try_from(further).unwrap_or(u8::MAX),
     }))
@@ -115,6 +125,34 @@ fn read(molecule: &Molecule, alpha: usize, beta: usize) -> Result<Option<Alkene>
         );
     }
     Ok(Some(alkene))
+}
+
+/// CH2=CH or CH2=CR at the 2 or 4 position of a pyridine or another azine.
+fn vinyl_azines(molecule: &Molecule) -> Vec<Alkene> {
+    let mut found = Vec::new();
+    for beta in 0..molecule.atoms().len() {
+        if molecule.element(beta) != CARBON || molecule.atoms()[beta].hydrogens != 2 {
+            continue;
+        }
+        for alpha in molecule.bound_to(beta, CARBON, Bond::Double) {
+            let around: Vec<usize> = substituents(molecule, alpha, beta).collect();
+            if around.iter().any(|atom| molecule.is_azine_position(*atom)) {
+                found.push(Alkene {
+                    alpha,
+                    beta,
+                    acceptors: vec![Acceptor::Pyridyl],
+                    beta_acceptors: 0,
+                    beta_alkyl: 0,
+                    beta_aryl: 0,
+                    alpha_alkyl: around
+                        .iter()
+                        .filter(|atom| molecule.is_saturated_carbon(**atom))
+                        .count() as u8,
+                });
+            }
+        }
+    }
+    found
 }
 
 fn substituents(

@@ -43,6 +43,12 @@ pub(super) fn classify(
         .map(|(other, _)| *other)
         .filter(|other| *other != leaving && molecule.element(*other) != 1)
         .collect();
+    if is_halomethyl(molecule, carbon) {
+        return Ok(AlkylGroup::Halomethyl);
+    }
+    if is_alpha_hetero(molecule, carbon, &around) {
+        return Ok(AlkylGroup::AlphaHetero);
+    }
     refuse_heteroatoms(molecule, &around)?;
     let kinds: Vec<Beside> = around.iter().map(|a| beside(molecule, *a)).collect();
     if kinds.contains(&Beside::Unknown) {
@@ -74,6 +80,27 @@ pub(super) fn classify(
         [_, _] => AlkylGroup::SecondaryActivated,
         _ => AlkylGroup::Tertiary,
     })
+}
+
+/// CH2 between two halogens.
+pub(super) fn is_halomethyl(molecule: &Molecule, carbon: usize) -> bool {
+    molecule.atoms()[carbon].hydrogens == 2
+        && molecule
+            .neighbours(carbon)
+            .iter()
+            .all(|(other, _)| molecule.is_halogen(*other))
+}
+
+/// CH2 whose other neighbour is an ether or ester oxygen, a thioether sulfur or a neutral nitrogen.
+fn is_alpha_hetero(molecule: &Molecule, carbon: usize, around: &[usize]) -> bool {
+    let [other] = around else { return false };
+    let divalent = molecule.neighbours(*other).len() == 2;
+    molecule.atoms()[carbon].hydrogens == 2
+        && match molecule.element(*other) {
+            8 | 16 => divalent && molecule.atoms()[*other].charge == 0,
+            7 => molecule.atoms()[*other].charge == 0,
+            _ => false,
+        }
 }
 
 fn refuse_heteroatoms(molecule: &Molecule, around: &[usize]) -> Result<(), &'static str> {

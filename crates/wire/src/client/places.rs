@@ -1,6 +1,6 @@
 //! Faults that a server found, brought back to where the user wrote the value.
 
-use enolattice_grid::{CampaignSpec, InputError, Place, value_of_row};
+use enolattice_grid::{CampaignSpec, Entry, InputError, Place, in_order, value_of_row};
 
 /// Gives faults in the values of axes the places of the campaign as read.
 pub(super) fn relocate(faults: Vec<InputError>, campaign: &CampaignSpec) -> Vec<InputError> {
@@ -10,12 +10,8 @@ pub(super) fn relocate(faults: Vec<InputError>, campaign: &CampaignSpec) -> Vec<
             fault.place = place;
         }
     }
-    // As the embedded engine has them: by file and line.
-    faults.sort_by_cached_key(|fault| {
-        let Place { file, line, .. } = &fault.place;
-        (file.clone(), *line)
-    });
-    faults
+    // As the embedded engine has them.
+    in_order(faults)
 }
 
 /// Faults with their fields relative to this part of the request.
@@ -49,8 +45,26 @@ fn written(field: &str, campaign: &CampaignSpec) -> Option<Place> {
     };
     Some(match value.strip_prefix('.') {
         Some(value) => value_of_row(place, value),
+        // what is wrong with a reagent of a file is its name, or its structure where it has none
+        None if place.field.is_empty() => value_of_row(place, known_by(list, index, campaign)),
         None => place.clone(),
     })
+}
+
+/// The column by which a reagent is looked up.
+fn known_by(list: &str, index: usize, campaign: &CampaignSpec) -> &'static str {
+    let axis = match list {
+        "bases.reagents" => &campaign.bases,
+        "electrophiles.reagents" => &campaign.electrophiles,
+        "solvents.media" => &campaign.solvents,
+        _ => &campaign.additives,
+    };
+    let has_name = |entry: &Entry| !entry.name.is_empty() || entry.smiles.is_empty();
+    if axis.entries.get(index).is_some_and(has_name) {
+        "name"
+    } else {
+        "smiles"
+    }
 }
 
 #[cfg(test)]
@@ -58,7 +72,7 @@ mod tests {
     use super::*;
     use crate::bad_field;
     use crate::v1::ErrorReason;
-    use enolattice_grid::{AxisSpec, Entry, SubstrateEntry};
+    use enolattice_grid::{AxisSpec, SubstrateEntry};
 
     fn place(file: &str, line: u32, field: &str) -> Place {
         Place {

@@ -82,7 +82,7 @@ impl TryFrom<v1::AcidSite> for AcidSite {
     }
 }
 
-const ANION_CLASSES: [AnionClass; 26] = [
+const ANION_CLASSES: [AnionClass; 27] = [
     AnionClass::Ketone,
     AnionClass::ArylKetone,
     AnionClass::Aldehyde,
@@ -109,6 +109,7 @@ const ANION_CLASSES: [AnionClass; 26] = [
     AnionClass::Thiolate,
     AnionClass::Hydride,
     AnionClass::Neutral,
+    AnionClass::Fluoride,
 ];
 
 impl From<AnionClass> for v1::AnionClass {
@@ -140,6 +141,7 @@ impl From<AnionClass> for v1::AnionClass {
             AnionClass::Thiolate => v1::AnionClass::Thiolate,
             AnionClass::Hydride => v1::AnionClass::Hydride,
             AnionClass::Neutral => v1::AnionClass::Neutral,
+            AnionClass::Fluoride => v1::AnionClass::Fluoride,
         }
     }
 }

@@ -5,12 +5,12 @@
 
 use enolattice_engine::Submission;
 use enolattice_grid::{
-    AxisSpec, CampaignSpec, ConditionsSpec, Entry, InputError, Place, SubstrateEntry, TargetSpec,
+    AxisSpec, CampaignSpec, ConditionsSpec, Entry, InputError, LibraryTable, Place, SubstrateEntry,
+    TargetSpec,
 };
 
-use super::cell::{
-    addition_from_name, addition_from_wire, additive_fault, name_or_smiles, solvent_entry,
-};
+use super::cell::{addition_from_name, addition_from_wire};
+use super::{media, stock};
 use crate::v1::{self, ErrorReason};
 use crate::{MAX_REQUEST_ID_BYTES, bad_field};
 
@@ -22,47 +22,41 @@ impl TryFrom<&Submission> for v1::SubmitJobRequest {
             campaign: Some(campaign_message(&submission.campaign)?),
             request_id: submission.request_id.clone(),
             validate_only: submission.validate_only,
+            dry_run: false,
         })
     }
 }
 
-impl TryFrom<v1::SubmitJobRequest> for Submission {
-    type Error = Vec<InputError>;
-
-    fn try_from(request: v1::SubmitJobRequest) -> Result<Self, Vec<InputError>> {
-        let mut faults = Vec::new();
-        if request.request_id.len() > MAX_REQUEST_ID_BYTES {
-            faults.push(bad_field(
-                ErrorReason::ValueOutOfRange,
-                "request_id",
-                format!("{} bytes", request.request_id.len()),
-                format!("it is longer than {MAX_REQUEST_ID_BYTES} bytes"),
-                "use a UUID",
-            ));
-        }
-        let mut campaign_faults = Vec::new();
-        let campaign = campaign(request.campaign.unwrap_or_default(), &mut campaign_faults);
-        for mut fault in campaign_faults {
-            fault.place.field = format!("campaign.{}", fault.place.field);
-            faults.push(fault);
-        }
-        if !faults.is_empty() {
-            return Err(faults);
-        }
-        Ok(Submission {
-            campaign,
-            request_id: request.request_id,
-            validate_only: request.validate_only,
-        })
+/// The submission that a request means, without the values that are at fault in the message
+/// itself, and those faults: with them the engine's can be told in one answer.
+pub fn submission(request: v1::SubmitJobRequest) -> (Submission, Vec<InputError>) {
+    let mut faults = Vec::new();
+    if request.request_id.len() > MAX_REQUEST_ID_BYTES {
+        faults.push(bad_field(
+            ErrorReason::ValueOutOfRange,
+            "request_id",
+            format!("{} bytes", request.request_id.len()),
+            format!("it is longer than {MAX_REQUEST_ID_BYTES} bytes"),
+            "use a UUID",
+        ));
     }
+    let mut campaign_faults = Vec::new();
+    let campaign = campaign(request.campaign.unwrap_or_default(), &mut campaign_faults);
+    for mut fault in campaign_faults {
+        fault.place.field = format!("campaign.{}", fault.place.field);
+        faults.push(fault);
+    }
+    let submission = Submission {
+        campaign,
+        request_id: request.request_id,
+        validate_only: request.validate_only,
+    };
+    (submission, faults)
 }
 
 fn campaign_message(spec: &CampaignSpec) -> Result<v1::Campaign, Vec<InputError>> {
     let mut faults = Vec::new();
     let conditions = conditions_message(&spec.conditions, &mut faults);
-    if spec.additives.all {
-        faults.push(additive_fault("additives", "all"));
-    }
     if !faults.is_empty() {
         return Err(faults);
     }
@@ -73,15 +67,23 @@ fn campaign_message(spec: &CampaignSpec) -> Result<v1::Campaign, Vec<InputError>
         electrophiles: Some(reagent_axis(&spec.electrophiles)),
         solvents: Some(v1::SolventAxis {
             whole_library: spec.solvents.all,
-            media: spec.solvents.entries.iter().map(Into::into).collect(),
+            media: spec.solvents.entries.iter().map(media::medium).collect(),
         }),
         additives: Some(v1::AdditiveAxis {
-            sets: spec.additives.entries.iter().map(additive_set).collect(),
+            sets: spec
+                .additives
+                .entries
+                .iter()
+                .map(media::additive_set)
+                .collect(),
+            whole_library: spec.additives.all,
         }),
         conditions: Some(conditions),
         target: Some(v1::Target {
             yield_at_least: spec.target.yield_at_least,
         }),
+        notes: spec.notes.clone(),
+        library: spec.library.iter().map(table_message).collect(),
     })
 }
 
@@ -102,18 +104,37 @@ fn campaign(campaign: v1::Campaign, faults: &mut Vec<InputError>) -> CampaignSpe
         target: TargetSpec {
             yield_at_least: campaign.target.and_then(|target| target.yield_at_least),
         },
+        notes: campaign.notes,
+        library: campaign.library.into_iter().map(table).collect(),
     }
 }
 
-/// The empty set alone is the only value of this axis so far.
+fn table_message(table: &LibraryTable) -> v1::LibraryTable {
+    v1::LibraryTable {
+        name: table.name.clone(),
+        text: table.text.clone(),
+    }
+}
+
+fn table(table: v1::LibraryTable) -> LibraryTable {
+    LibraryTable {
+        name: table.name,
+        text: table.text,
+    }
+}
+
 fn additive_axis(axis: v1::AdditiveAxis, faults: &mut Vec<InputError>) -> AxisSpec {
+    let mut entries = Vec::new();
     for (i, set) in axis.sets.into_iter().enumerate() {
-        if let Some(additive) = set.additives.into_iter().next() {
-            let value = name_or_smiles(&additive.reagent.unwrap_or_default());
-            faults.push(additive_fault(format!("additives.sets[{i}]"), value));
+        match media::additive(set, &format!("additives.sets[{i}]")) {
+            Ok(entry) => entries.push(entry),
+            Err(found) => faults.extend(found),
         }
     }
-    AxisSpec::default()
+    AxisSpec {
+        all: axis.whole_library,
+        entries,
+    }
 }
 
 impl From<&SubstrateEntry> for v1::Substrate {
@@ -123,6 +144,7 @@ impl From<&SubstrateEntry> for v1::Substrate {
             smiles: entry.smiles.clone(),
             pka_dmso: entry.pka_dmso,
             pka_sigma: entry.pka_sigma,
+            stock: stock::to_wire(&entry.stock),
         }
     }
 }
@@ -133,6 +155,7 @@ fn substrate_entry((i, substrate): (usize, v1::Substrate)) -> SubstrateEntry {
         smiles: substrate.smiles,
         pka_dmso: substrate.pka_dmso,
         pka_sigma: substrate.pka_sigma,
+        stock: stock::from_wire(substrate.stock),
         place: at(format!("substrates[{i}].smiles")),
     }
 }
@@ -154,6 +177,8 @@ fn axis(axis: Option<v1::ReagentAxis>, name: &str) -> AxisSpec {
             place: at(format!("{name}.reagents[{i}]")),
             name: reagent.name,
             smiles: reagent.smiles,
+            stock: stock::from_wire(reagent.stock),
+            equiv: None,
         });
     AxisSpec {
         all: axis.whole_library,
@@ -166,35 +191,15 @@ impl From<&Entry> for v1::Reagent {
         v1::Reagent {
             name: entry.name.clone(),
             smiles: entry.smiles.clone(),
+            stock: stock::to_wire(&entry.stock),
         }
-    }
-}
-
-impl From<&Entry> for v1::Medium {
-    fn from(entry: &Entry) -> Self {
-        let solvent = Some(v1::Reagent::from(entry));
-        v1::Medium {
-            components: vec![v1::SolventComponent {
-                solvent,
-                volume_fraction: None,
-            }],
-        }
-    }
-}
-
-fn additive_set(entry: &Entry) -> v1::AdditiveSet {
-    v1::AdditiveSet {
-        additives: vec![v1::Additive {
-            reagent: Some(entry.into()),
-            equiv: None,
-        }],
     }
 }
 
 fn solvent_axis(axis: v1::SolventAxis, faults: &mut Vec<InputError>) -> AxisSpec {
     let mut entries = Vec::new();
     for (i, medium) in axis.media.into_iter().enumerate() {
-        match solvent_entry(medium, &format!("solvents.media[{i}]")) {
+        match media::solvent(medium, &format!("solvents.media[{i}]")) {
             Ok(entry) => entries.push(entry),
             Err(found) => faults.extend(found),
         }
@@ -218,6 +223,7 @@ fn conditions_message(spec: &ConditionsSpec, faults: &mut Vec<InputError>) -> v1
         formation_temperature_c: spec.formation_temperature_c.clone(),
         base_equiv: spec.base_equiv.clone(),
         electrophile_equiv: spec.electrophile_equiv.clone(),
+        additive_equiv: spec.additive_equiv.clone(),
         concentration_m: spec.concentration_m.clone(),
         time_h: spec.time_h.clone(),
         dosing_min: spec.dosing_min.clone(),
@@ -246,6 +252,7 @@ fn conditions(axes: v1::ConditionAxes, faults: &mut Vec<InputError>) -> Conditio
         formation_temperature_c: axes.formation_temperature_c,
         base_equiv: axes.base_equiv,
         electrophile_equiv: axes.electrophile_equiv,
+        additive_equiv: axes.additive_equiv,
         concentration_m: axes.concentration_m,
         time_h: axes.time_h,
         dosing_min: axes.dosing_min,
@@ -263,12 +270,24 @@ fn at(field: String) -> Place {
 #[cfg(test)]
 mod tests {
     use super::*;
+    use enolattice_grid::Stock;
 
     fn entry(name: &str, smiles: &str, field: &str) -> Entry {
         Entry {
             name: name.into(),
             smiles: smiles.into(),
             place: at(field.into()),
+            ..Entry::default()
+        }
+    }
+
+    fn shelf() -> Stock {
+        Stock {
+            stock_mg: Some(250.0),
+            price_per_g: Some(12.5),
+            currency: "EUR".into(),
+            lot: "L7".into(),
+            ..Stock::default()
         }
     }
 
@@ -281,6 +300,7 @@ mod tests {
                     smiles: "CCC#N".into(),
                     pka_dmso: Some(32.5),
                     pka_sigma: Some(0.2),
+                    stock: shelf(),
                     place: at("substrates[0].smiles".into()),
                 }],
                 bases: AxisSpec {
@@ -290,20 +310,36 @@ mod tests {
                 electrophiles: AxisSpec {
                     all: false,
                     entries: vec![
-                        entry("MeI", "", "electrophiles.reagents[0]"),
+                        Entry {
+                            stock: shelf(),
+                            ..entry("MeI", "", "electrophiles.reagents[0]")
+                        },
                         entry("", "BrCc1ccccc1", "electrophiles.reagents[1]"),
                     ],
                 },
                 solvents: AxisSpec {
                     all: false,
-                    entries: vec![entry("THF", "", "solvents.media[0]")],
+                    entries: vec![
+                        entry("THF", "", "solvents.media[0]"),
+                        entry("THF/DMF 4:1", "", "solvents.media[1]"),
+                    ],
                 },
-                additives: AxisSpec::default(),
+                additives: AxisSpec {
+                    all: true,
+                    entries: vec![
+                        entry("none", "", "additives.sets[0]"),
+                        Entry {
+                            equiv: Some(2.0),
+                            ..entry("HMPA", "", "additives.sets[1]")
+                        },
+                    ],
+                },
                 conditions: ConditionsSpec {
                     temperature_c: vec![-20.0, 25.0],
                     formation_temperature_c: vec![-78.0],
                     base_equiv: vec![1.05],
                     electrophile_equiv: vec![1.3],
+                    additive_equiv: vec![1.1, 2.2],
                     concentration_m: vec![0.25],
                     time_h: vec![12.0],
                     dosing_min: vec![5.0],
@@ -312,6 +348,11 @@ mod tests {
                 target: TargetSpec {
                     yield_at_least: Some(0.6),
                 },
+                notes: vec!["shelf.sdf: data fields were left out".into()],
+                library: vec![LibraryTable {
+                    name: "own_bases.tsv".into(),
+                    text: "# table: bases\n".into(),
+                }],
             },
             request_id: "a-request".into(),
             validate_only: true,
@@ -321,8 +362,8 @@ mod tests {
     #[test]
     fn campaigns_come_back() {
         let sent = submitted();
-        let back = Submission::try_from(v1::SubmitJobRequest::try_from(&sent).expect("to wire"))
-            .expect("from wire");
+        let (back, faults) = submission(v1::SubmitJobRequest::try_from(&sent).expect("to wire"));
+        assert_eq!(faults, []);
         assert_eq!(back.campaign, sent.campaign);
         assert_eq!(
             (back.request_id, back.validate_only),
@@ -338,15 +379,19 @@ mod tests {
         let media = &mut campaign.solvents.as_mut().expect("solvents").media;
         let twice = media[0].components[0].clone();
         media[0].components.push(twice);
-        media.push(v1::Medium::default());
+        media[1] = v1::Medium::default();
         campaign.conditions.as_mut().expect("conditions").addition = vec![0, 1, 7];
         campaign.additives = Some(v1::AdditiveAxis {
             sets: vec![
                 v1::AdditiveSet::default(),
-                additive_set(&entry("HMPA", "", "")),
+                v1::AdditiveSet {
+                    additives: vec![v1::Additive::default(), v1::Additive::default()],
+                },
             ],
+            whole_library: false,
         });
-        let faults = Submission::try_from(request).expect_err("is refused");
+        let (sound, faults) = submission(request);
+        assert_eq!(sound.campaign.substrates, submitted().campaign.substrates);
         let told: Vec<_> = faults
             .iter()
             .map(|fault| (fault.place.field.as_str(), fault.code))
@@ -355,7 +400,14 @@ mod tests {
             told,
             [
                 ("request_id", "VALUE_OUT_OF_RANGE"),
-                ("campaign.solvents.media[0]", "NOT_YET_ALLOWED"),
+                (
+                    "campaign.solvents.media[0].components[0].volume_fraction",
+                    "VALUE_OUT_OF_RANGE"
+                ),
+                (
+                    "campaign.solvents.media[0].components[1].volume_fraction",
+                    "VALUE_OUT_OF_RANGE"
+                ),
                 ("campaign.solvents.media[1]", "VALUE_MISSING"),
                 ("campaign.additives.sets[1]", "NOT_YET_ALLOWED"),
                 ("campaign.conditions.addition[0]", "NOT_YET_ALLOWED"),

@@ -1,10 +1,10 @@
 //! Cells given by their reagents, and what they share with campaigns.
 
 use enolattice_engine::{CellQuery, ExplainTarget};
-use enolattice_grid::{Entry, InputError, Place};
+use enolattice_grid::{Entry, InputError};
 use enolattice_model::Addition;
 
-use super::{enums, numbers};
+use super::{enums, media, numbers};
 use crate::bad_field;
 use crate::v1::explain_cell_request::Target;
 use crate::v1::{self, ErrorReason};
@@ -58,8 +58,14 @@ fn given_cell_message(query: &CellQuery) -> Result<v1::GivenCell, Vec<InputError
     };
     let named = |name: &String| v1::Reagent {
         name: name.clone(),
-        smiles: String::new(),
+        ..Default::default()
     };
+    let additive = query.additive.as_ref().map(|name| v1::AdditiveSet {
+        additives: vec![v1::Additive {
+            reagent: Some(named(name)),
+            equiv: query.additive_equiv,
+        }],
+    });
     let solvent = v1::SolventComponent {
         solvent: Some(named(&query.solvent)),
         volume_fraction: None,
@@ -74,7 +80,7 @@ fn given_cell_message(query: &CellQuery) -> Result<v1::GivenCell, Vec<InputError
         solvent: Some(v1::Medium {
             components: vec![solvent],
         }),
-        additives: None,
+        additives: additive,
         conditions: Some(v1::CellConditions {
             temperature_c: Some(query.temperature_c),
             formation_temperature_c: query.formation_temperature_c,
@@ -84,6 +90,7 @@ fn given_cell_message(query: &CellQuery) -> Result<v1::GivenCell, Vec<InputError
             time_h: Some(query.time_h),
             dosing_min: Some(query.dosing_min),
             addition,
+            additive_equiv: None,
         }),
         yield_at_least: Some(query.yield_at_least),
     })
@@ -101,14 +108,19 @@ fn given_cell(cell: v1::GivenCell) -> Result<CellQuery, Vec<InputError>> {
         let field = "given_cell.conditions.temperature_c";
         faults.push(missing(field, "give the temperature of the reaction"));
     }
-    if !cell.additives.unwrap_or_default().additives.is_empty() {
-        faults.push(additive_fault("given_cell.additives", ""));
-    }
-    let solvent = solvent_entry(cell.solvent.unwrap_or_default(), "given_cell.solvent")
-        .unwrap_or_else(|found| {
+    let mut entry = |read: Result<Entry, Vec<InputError>>| {
+        read.unwrap_or_else(|found| {
             faults.extend(found);
             Entry::default()
-        });
+        })
+    };
+    let set = cell.additives.unwrap_or_default();
+    let has_additive = !set.additives.is_empty();
+    let additive = entry(media::additive(set, "given_cell.additives"));
+    let solvent = entry(media::solvent(
+        cell.solvent.unwrap_or_default(),
+        "given_cell.solvent",
+    ));
     let substrate = cell.substrate.unwrap_or_default();
     if substrate.pka_dmso.is_some() || substrate.pka_sigma.is_some() {
         faults.push(own_pka_fault());
@@ -125,6 +137,12 @@ fn given_cell(cell: v1::GivenCell) -> Result<CellQuery, Vec<InputError>> {
         } else {
             solvent.smiles
         },
+        additive_equiv: additive.equiv,
+        additive: has_additive.then_some(if additive.smiles.is_empty() {
+            additive.name
+        } else {
+            additive.smiles
+        }),
         temperature_c: conditions.temperature_c.unwrap_or_default(),
         formation_temperature_c: conditions.formation_temperature_c,
         base_equiv: conditions.base_equiv.unwrap_or(1.1),
@@ -154,43 +172,6 @@ pub(crate) fn name_or_smiles(reagent: &v1::Reagent) -> String {
     } else {
         reagent.smiles.clone()
     }
-}
-
-/// The one solvent of a medium.
-pub(crate) fn solvent_entry(mut medium: v1::Medium, field: &str) -> Result<Entry, Vec<InputError>> {
-    let count = medium.components.len();
-    let Some(component) = medium.components.pop() else {
-        return Err(vec![missing(field, "give a component")]);
-    };
-    if count > 1 {
-        return Err(vec![bad_field(
-            ErrorReason::NotYetAllowed,
-            field,
-            format!("{count} components"),
-            "mixtures of solvents are not covered yet",
-            "give one component a medium",
-        )]);
-    }
-    let fraction = component.volume_fraction.unwrap_or(1.0);
-    if fraction != 1.0 {
-        return Err(vec![bad_field(
-            ErrorReason::ValueOutOfRange,
-            format!("{field}.components[0].volume_fraction"),
-            fraction.to_string(),
-            "the fractions of a medium add up to 1",
-            "leave it out for a pure solvent",
-        )]);
-    }
-    let solvent = component.solvent.unwrap_or_default();
-    let place = Place {
-        field: field.to_owned(),
-        ..Place::default()
-    };
-    Ok(Entry {
-        name: solvent.name,
-        smiles: solvent.smiles,
-        place,
-    })
 }
 
 /// The order of addition of this name.
@@ -230,17 +211,6 @@ pub(crate) fn addition_from_wire(
     )
 }
 
-/// The fault of an additive; none is covered yet.
-pub(crate) fn additive_fault(field: impl Into<String>, value: impl Into<String>) -> InputError {
-    bad_field(
-        ErrorReason::NotYetAllowed,
-        field,
-        value,
-        "additives are not covered yet",
-        "leave additives out",
-    )
-}
-
 fn missing(field: &str, remedy: &str) -> InputError {
     bad_field(
         ErrorReason::ValueMissing,
@@ -261,6 +231,8 @@ mod tests {
             base: "LDA".into(),
             electrophile: "BrCc1ccccc1".into(),
             solvent: "THF".into(),
+            additive: Some("HMPA".into()),
+            additive_equiv: Some(2.0),
             temperature_c: -20.0,
             formation_temperature_c: Some(-78.0),
             base_equiv: 1.05,
@@ -288,6 +260,8 @@ mod tests {
         comes_back(&ExplainTarget::Given(CellQuery {
             formation_temperature_c: None,
             addition: None,
+            additive: None,
+            additive_equiv: None,
             ..query()
         }));
     }
@@ -324,7 +298,7 @@ mod tests {
                 ..Default::default()
             }),
             additives: Some(v1::AdditiveSet {
-                additives: vec![v1::Additive::default()],
+                additives: vec![v1::Additive::default(), v1::Additive::default()],
             }),
             ..Default::default()
         };

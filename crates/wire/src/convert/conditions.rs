@@ -5,8 +5,12 @@ use enolattice_model::{Addition, Conditions};
 use super::{ConversionError, enums};
 use crate::v1;
 
-/// Conditions for the wire; `addition` is the order's name.
-pub(crate) fn to_wire(conditions: &Conditions, addition: &str) -> v1::CellConditions {
+/// Conditions for the wire; `addition` is the order's name, `additive_equiv` is none without an additive.
+pub(crate) fn to_wire(
+    conditions: &Conditions,
+    additive_equiv: Option<f64>,
+    addition: &str,
+) -> v1::CellConditions {
     let order = Addition::from_name(addition);
     v1::CellConditions {
         temperature_c: Some(conditions.temperature_c),
@@ -19,6 +23,7 @@ pub(crate) fn to_wire(conditions: &Conditions, addition: &str) -> v1::CellCondit
         addition: order
             .map_or(v1::AdditionOrder::Unspecified, Into::into)
             .into(),
+        additive_equiv,
     }
 }
 
@@ -46,6 +51,7 @@ pub(crate) fn from_wire(
             "CellConditions.electrophile_equiv",
             message.electrophile_equiv,
         )?,
+        additive_equiv: message.additive_equiv.unwrap_or_default(),
         concentration_m: given("CellConditions.concentration_m", message.concentration_m)?,
         time_h: given("CellConditions.time_h", message.time_h)?,
         dosing_min: given("CellConditions.dosing_min", message.dosing_min)?,

@@ -3,7 +3,7 @@
 use enolattice_engine::CellDescription;
 use enolattice_model::{Conditions, Explanation};
 
-use super::{ConversionError, conditions, numbers};
+use super::{ConversionError, conditions, media, numbers};
 use crate::v1;
 
 /// A cell with its explanation, as an answer.
@@ -34,6 +34,7 @@ impl From<&CellDescription> for v1::CellDescription {
             formation_temperature_c: cell.formation_temperature_c,
             base_equiv: cell.base_equiv,
             electrophile_equiv: cell.electrophile_equiv,
+            additive_equiv: cell.additive_equiv.unwrap_or_default(),
             concentration_m: cell.concentration_m,
             time_h: cell.time_h,
             dosing_min: cell.dosing_min,
@@ -50,10 +51,15 @@ impl From<&CellDescription> for v1::CellDescription {
             electrophile: Some(v1::Reagent {
                 name: cell.electrophile.clone(),
                 smiles: cell.electrophile_smiles.clone(),
+                ..Default::default()
             }),
             solvent: cell.solvent.clone(),
-            additives: Vec::new(),
-            conditions: Some(conditions::to_wire(&conditions, &cell.addition)),
+            additives: media::additive_names(cell.additive.as_ref()),
+            conditions: Some(conditions::to_wire(
+                &conditions,
+                cell.additive_equiv,
+                &cell.addition,
+            )),
         }
     }
 }
@@ -62,6 +68,7 @@ impl TryFrom<v1::CellDescription> for CellDescription {
     type Error = ConversionError;
 
     fn try_from(cell: v1::CellDescription) -> Result<Self, ConversionError> {
+        let additive = media::additive_name(cell.additives)?;
         let (conditions, addition) = conditions::from_wire(cell.conditions)?;
         let number = |cell| numbers::from_wire("CellDescription.cell", cell);
         let substrate = cell.substrate.unwrap_or_default();
@@ -74,6 +81,8 @@ impl TryFrom<v1::CellDescription> for CellDescription {
             electrophile: electrophile.name,
             electrophile_smiles: electrophile.smiles,
             solvent: cell.solvent,
+            additive_equiv: additive.as_ref().map(|_| conditions.additive_equiv),
+            additive,
             temperature_c: conditions.temperature_c,
             formation_temperature_c: conditions.formation_temperature_c,
             base_equiv: conditions.base_equiv,
@@ -100,6 +109,8 @@ mod tests {
             electrophile: "BnBr".into(),
             electrophile_smiles: "BrCc1ccccc1".into(),
             solvent: "THF".into(),
+            additive: Some("HMPA".into()),
+            additive_equiv: Some(2.0),
             temperature_c: -20.0,
             formation_temperature_c: -78.0,
             base_equiv: 1.05,
@@ -112,6 +123,8 @@ mod tests {
         for cell in [
             CellDescription {
                 cell: None,
+                additive: None,
+                additive_equiv: None,
                 ..cell.clone()
             },
             cell,

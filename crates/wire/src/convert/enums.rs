@@ -67,17 +67,19 @@ impl From<Axis> for v1::Axis {
             Axis::Electrophile => v1::Axis::Electrophile,
             Axis::Solvent => v1::Axis::Solvent,
             Axis::Temperature => v1::Axis::Temperature,
+            Axis::Additive => v1::Axis::Additive,
         }
     }
 }
 
 /// All axes that a ranking knows.
-pub(crate) const AXES: [Axis; 5] = [
+pub(crate) const AXES: [Axis; 6] = [
     Axis::Substrate,
     Axis::Base,
     Axis::Electrophile,
     Axis::Solvent,
     Axis::Temperature,
+    Axis::Additive,
 ];
 
 impl From<Addition> for v1::AdditionOrder {

@@ -32,6 +32,7 @@ impl From<&Explanation> for v1::Explanation {
             losses: e.losses.iter().map(loss).collect(),
             course: e.course.iter().map(Into::into).collect(),
             cautions: e.cautions.iter().map(Into::into).collect(),
+            hazards: e.hazards.clone(),
             limits: e.limits.clone(),
             advice: e.advice.iter().map(Into::into).collect(),
             model: e.model.clone(),
@@ -72,6 +73,7 @@ impl TryFrom<v1::Explanation> for Explanation {
                 .into_iter()
                 .map(TryInto::try_into)
                 .collect::<Result<_, _>>()?,
+            hazards: e.hazards,
             limits: e.limits,
             advice: e.advice.into_iter().map(Into::into).collect(),
             model: e.model,
@@ -213,6 +215,7 @@ impl From<&Caution> for v1::Caution {
             category: v1::CautionCategory::from(caution.category).into(),
             severity: v1::CautionSeverity::from(caution.severity).into(),
             text: caution.text.clone(),
+            source: caution.source.clone(),
         }
     }
 }
@@ -233,6 +236,7 @@ impl TryFrom<v1::Caution> for Caution {
                 caution.severity,
             )?,
             text: caution.text,
+            source: caution.source,
         })
     }
 }
@@ -310,7 +314,9 @@ mod tests {
                 category: Category::Pyrophoric,
                 severity: Severity::Warning,
                 text: "the base catches fire in air".into(),
+                source: "common practice".into(),
             }],
+            hazards: vec!["hazards of the substrate: unknown".into()],
             limits: vec!["the attack is slow".into()],
             advice: vec![Advice {
                 change: "solvent THF → DMF".into(),

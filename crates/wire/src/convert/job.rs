@@ -21,6 +21,7 @@ impl From<&Job> for v1::Job {
             end_time: job.ended_unix_ms.map(timestamp),
             failure: job.failure.clone(),
             warnings: job.warnings.clone(),
+            dry_run: None,
         }
     }
 }

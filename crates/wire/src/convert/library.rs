@@ -5,10 +5,11 @@ use enolattice_engine::ReagentRow;
 use super::ConversionError;
 use crate::v1;
 
-const KINDS: [(&str, v1::ReagentKind); 3] = [
+const KINDS: [(&str, v1::ReagentKind); 4] = [
     ("base", v1::ReagentKind::Base),
     ("solvent", v1::ReagentKind::Solvent),
     ("electrophile", v1::ReagentKind::Electrophile),
+    ("additive", v1::ReagentKind::Additive),
 ];
 
 impl From<&ReagentRow> for v1::LibraryReagent {

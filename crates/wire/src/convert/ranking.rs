@@ -4,7 +4,7 @@ use enolattice_engine::{Axis, Order, RankPage, RankQuery, RankedCell};
 use enolattice_grid::InputError;
 use enolattice_model::{Category, Channel, Conditions, Severity};
 
-use super::{ConversionError, conditions, enums, numbers};
+use super::{ConversionError, conditions, enums, media, numbers};
 use crate::v1::{self, ErrorReason};
 use crate::{DEFAULT_PAGE_SIZE, MAX_PAGE_SIZE, bad_field};
 
@@ -162,7 +162,7 @@ impl From<&RankedCell> for v1::RankedCell {
             base: cell.base.clone(),
             electrophile: cell.electrophile.clone(),
             solvent: cell.solvent.clone(),
-            additives: Vec::new(),
+            additives: media::additive_names(cell.additive.as_ref()),
             conditions: Some(conditions_of(cell)),
             expected_yield: cell.expected_yield,
             p_hit: cell.p_hit,
@@ -188,12 +188,13 @@ fn conditions_of(cell: &RankedCell) -> v1::CellConditions {
         formation_temperature_c: cell.formation_temperature_c,
         base_equiv: cell.base_equiv,
         electrophile_equiv: cell.electrophile_equiv,
+        additive_equiv: cell.additive_equiv.unwrap_or_default(),
         concentration_m: cell.concentration_m,
         time_h: cell.time_h,
         dosing_min: cell.dosing_min,
         addition: None,
     };
-    conditions::to_wire(&conditions, &cell.addition)
+    conditions::to_wire(&conditions, cell.additive_equiv, &cell.addition)
 }
 
 fn category(name: &str) -> v1::CautionCategory {
@@ -214,6 +215,7 @@ impl TryFrom<v1::RankedCell> for RankedCell {
     type Error = ConversionError;
 
     fn try_from(cell: v1::RankedCell) -> Result<Self, ConversionError> {
+        let additive = media::additive_name(cell.additives)?;
         let (conditions, addition) = conditions::from_wire(cell.conditions)?;
         let cautions = cell.cautions.iter().map(|number| {
             enums::from_wire::<_, v1::CautionCategory>(
@@ -251,6 +253,8 @@ impl TryFrom<v1::RankedCell> for RankedCell {
             base: cell.base,
             electrophile: cell.electrophile,
             solvent: cell.solvent,
+            additive_equiv: additive.as_ref().map(|_| conditions.additive_equiv),
+            additive,
             expected_yield: cell.expected_yield,
             p_hit: cell.p_hit,
             feasibility: cell.feasibility,
@@ -271,6 +275,8 @@ mod tests {
             base: "LDA".into(),
             electrophile: "BnBr".into(),
             solvent: "THF".into(),
+            additive: Some("HMPA".into()),
+            additive_equiv: Some(2.0),
             temperature_c: -20.0,
             formation_temperature_c: -78.0,
             base_equiv: 1.05,
@@ -292,6 +298,8 @@ mod tests {
     #[test]
     fn pages_come_back() {
         let unknown = RankedCell {
+            additive: None,
+            additive_equiv: None,
             expected_yield: None,
             p_hit: None,
             largest_loss: None,

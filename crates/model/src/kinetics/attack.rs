@@ -1,0 +1,161 @@
+//! Attack on the electrophile: rates, ends of ambident anions, what leaves.
+
+use enolattice_molecule::{AcylDonor, AnionClass, ElectrophileKind, RingHeteroatom};
+use enolattice_reagents::SolventClass;
+
+use super::Kinetics;
+use crate::bonding::{self, Bonding, TakenByBase};
+use crate::parameters::P;
+use crate::rates::{self, Nucleophile};
+
+impl<'a> Kinetics<'a> {
+    /// Whether the bond-forming step gives the base back: the adduct's anion is about as strong a base
+    /// as the carbanion was.
+    pub(crate) fn regenerates_base(&self) -> bool {
+        const AS_STRONG_PK: f64 = 8.0;
+        match self.kind().and_then(bonding::adduct_acid) {
+            Some((pka, _)) => {
+                let site = &self.cell.substrate.carbon[0].acid;
+                pka + AS_STRONG_PK > site.pka_dmso
+            }
+            None => self.bonding() == Bonding::Michael,
+        }
+    }
+
+    /// The acid of the group that leaves where its anion is a base: pKa in the medium, class.
+    pub(crate) fn leaving_acid(&self) -> Option<(f64, AnionClass)> {
+        let (pka, class) = self.kind().and_then(bonding::leaving_acid)?;
+        Some((self.pka(pka, class), class))
+    }
+
+    /// Whether the electrophile is an ester or its kin, whose acylation comes back.
+    pub(crate) fn acylates_reversibly(&self) -> bool {
+        self.kind().is_some_and(bonding::is_claisen)
+    }
+
+    /// log10 k of a nucleophile with the electrophile, at its reacting atom.
+    pub(crate) fn attack(&self, nucleophile: &Nucleophile) -> Option<f64> {
+        let kind = self.kind()?;
+        let to_ethyl_bromide = match *kind {
+            ElectrophileKind::Alkyl { group, leaving, .. } => {
+                Some(rates::alkyl_group(group) + rates::leaving_group(leaving))
+            }
+            ElectrophileKind::Ring {
+                heteroatom,
+                degree,
+                activated,
+            } => Some(self.ring_opening(heteroatom, degree, activated)),
+            _ => None,
+        };
+        if let Some(relative) = to_ethyl_bromide {
+            let (medium, values) = (&self.medium, self.values);
+            return Some(rates::substitution(nucleophile, relative, medium, values));
+        }
+        let (e, _, _) = self.cell.electrophile.e.as_ref()?;
+        let crowded = nucleophile.crowding + nucleophile.branches > 0;
+        let pair = match *kind {
+            ElectrophileKind::Michael {
+                beta_alkyl,
+                beta_aryl,
+                ..
+            } if crowded && beta_alkyl + beta_aryl > 0 => self.v(P::STERIC_PAIR),
+            ElectrophileKind::Aldehyde { .. } if self.cell.base.makes_iminium => {
+                self.v(P::IMINIUM_ADDITION)
+            }
+            ElectrophileKind::Acyl { .. } | ElectrophileKind::Aryl { .. } => {
+                let breakdown = match self.leaving_acid() {
+                    Some((leaving, _)) if self.acylates_reversibly() => {
+                        self.return_from_adduct(nucleophile, leaving)
+                    }
+                    _ => 0.0,
+                };
+                f64::from(nucleophile.crowding) * self.v(P::STERIC_ACYL) + breakdown
+            }
+            _ => 0.0,
+        };
+        Some(rates::addition(nucleophile, *e, &self.medium, self.values) + pair)
+    }
+
+    /// What acyl transfer from an ester loses, log10, because the tetrahedral adduct gives back a nucleophile that is a
+    /// weaker base than the alkoxide; `leaving` is the pKa of its alcohol in the medium.
+    pub(crate) fn return_from_adduct(&self, nucleophile: &Nucleophile, leaving: f64) -> f64 {
+        let nucleophile = self.pka(nucleophile.pka_dmso, nucleophile.class);
+        -self.v(P::ACYL_BREAKDOWN) * (leaving - nucleophile).max(0.0)
+    }
+
+    /// log10 k of opening a three-membered ring against SN2 of ethyl bromide.
+    pub(super) fn ring_opening(
+        &self,
+        heteroatom: RingHeteroatom,
+        degree: u8,
+        activated: bool,
+    ) -> f64 {
+        let ring = match heteroatom {
+            RingHeteroatom::Oxygen => P::RING_EPOXIDE,
+            RingHeteroatom::ActivatedNitrogen => P::RING_ACTIVATED_AZIRIDINE,
+            RingHeteroatom::Nitrogen => P::RING_AZIRIDINE,
+            RingHeteroatom::Sulfur => P::RING_THIIRANE,
+        };
+        let activation = if activated {
+            self.v(P::RING_ACTIVATED)
+        } else {
+            0.0
+        };
+        self.v(ring) + f64::from(degree) * self.v(P::RING_SUBSTITUTED) + activation
+    }
+
+    /// Whether a base of this class that attacks the electrophile spends it for good.
+    pub(crate) fn spends_electrophile(&self, class: AnionClass) -> bool {
+        let Some(kind) = self.kind() else {
+            return false;
+        };
+        let carried = class == AnionClass::Neutral
+            && self.cell.base.is_tertiary_amine
+            && bonding::is_carried_by_amines(kind);
+        match bonding::taken_by_base(kind) {
+            _ if carried => false,
+            TakenByBase::Lost => true,
+            TakenByBase::ExceptByAlkoxides => class != AnionClass::Alkoxide,
+            TakenByBase::ByNitrogen => matches!(
+                class,
+                AnionClass::Neutral | AnionClass::AlkylNitrogen | AnionClass::SilylNitrogen
+            ),
+            TakenByBase::ComesBack => false,
+        }
+    }
+
+    /// log10 (kO/kC) of a carbanion; `None` where its oxygen does not attack.
+    pub(crate) fn oxygen_over_carbon(&self, class: AnionClass) -> Option<f64> {
+        let by_leaving = match *self.kind()? {
+            ElectrophileKind::Alkyl { leaving, .. } => rates::oxygen_by_leaving_group(leaving),
+            ElectrophileKind::Acyl { donor, .. } => self.v(match donor {
+                AcylDonor::Halide
+                | AcylDonor::Anhydride
+                | AcylDonor::Chloroformate
+                | AcylDonor::CarbamoylChloride
+                | AcylDonor::Dicarbonate => P::O_ACYL_HALIDE,
+                AcylDonor::Sulfonyl => P::O_SULFONYL,
+                _ => P::O_ACYL_MILD,
+            }),
+            ElectrophileKind::Silyl { .. } => self.v(P::O_SILYL),
+            _ => return None,
+        };
+        let by_class = match class {
+            AnionClass::BetaDicarbonyl
+            | AnionClass::CyclicBetaDicarbonyl
+            | AnionClass::CyclicDiester => P::O_BETA_DICARBONYL,
+            AnionClass::Ketone | AnionClass::ArylKetone | AnionClass::Aldehyde => P::O_KETONE,
+            AnionClass::Ester | AnionClass::Amide => P::O_ESTER,
+            AnionClass::Nitronate => P::O_NITRONATE,
+            _ => return None,
+        };
+        let by_solvent = if self.medium.is_protic() {
+            self.v(P::O_PROTIC)
+        } else if self.medium.class() == SolventClass::DipolarAprotic {
+            self.v(P::O_DIPOLAR)
+        } else {
+            self.v(P::O_ETHER)
+        };
+        Some(self.v(by_class) + by_leaving + by_solvent)
+    }
+}

@@ -1,0 +1,197 @@
+//! What else befalls electrophile, products and base: elimination, its own C–H, solvolysis, loss of water, decay.
+
+use enolattice_molecule::{AcylDonor, AlkylGroup, AnionClass, Cumulene, ElectrophileKind};
+use enolattice_reagents::{Cation, Component, Decay, SolventClass};
+use enolattice_units::math;
+
+use super::{Kinetics, PKA_WATER};
+use crate::carbonyl::Carbonyl;
+use crate::network::Species;
+use crate::parameters::P;
+use crate::prepared::CarbonSite;
+use crate::rates;
+
+impl<'a> Kinetics<'a> {
+    /// Rate constant of elimination by a carbanion of the substrate, paired as it is for substitution.
+    pub(crate) fn elimination_by_carbanion(&self, site: &CarbonSite) -> f64 {
+        let nucleophile = self.substrate_carbanion(site);
+        let pairing = rates::pairing(&nucleophile, &self.medium, self.values, true);
+        self.elimination(self.site_pka(site)) * math::exp10(pairing)
+    }
+
+    /// Rate constant of elimination by a base whose acid has this pKa in the medium.
+    pub(crate) fn elimination(&self, pka_medium: f64) -> f64 {
+        let Some((group, leaving, hydrogens, activated)) = self.alkyl() else {
+            return 0.0;
+        };
+        let medium = &self.medium;
+        rates::elimination(
+            pka_medium,
+            group,
+            leaving,
+            hydrogens,
+            activated,
+            medium,
+            self.values,
+        )
+        .map_or(0.0, math::exp10)
+    }
+
+    /// The electrophile's own C–H, where it gives its proton to bases: pKa in the medium, class. Alkylating
+    /// agents eliminate instead.
+    pub(crate) fn electrophile_acid(&self) -> Option<(f64, AnionClass)> {
+        let acid = self.cell.electrophile.acid.as_ref()?;
+        let is_carbon_acid = acid.element == 6 && self.alkyl().is_none();
+        is_carbon_acid.then(|| (self.pka(acid.pka_dmso, acid.class), acid.class))
+    }
+
+    pub(crate) fn solvolysis(&self) -> f64 {
+        if !self.medium.is_protic() {
+            return 0.0;
+        }
+        let Some((group, leaving, ..)) = self.alkyl() else {
+            return self.alcoholysis();
+        };
+        let (ethanol, ionising) = match group {
+            AlkylGroup::Tertiary => (P::SOLVOLYSIS_TERTIARY, 1.0),
+            AlkylGroup::SecondaryActivated => (P::SOLVOLYSIS_ACTIVATED, 0.8),
+            AlkylGroup::Benzyl | AlkylGroup::Allyl => (P::SOLVOLYSIS_PRIMARY, 0.5),
+            _ => (P::SOLVOLYSIS_PRIMARY, 0.3),
+        };
+        let water = if self.medium.class() == SolventClass::Water {
+            self.v(P::SOLVOLYSIS_WATER) * ionising
+        } else {
+            0.0
+        };
+        let benzylic = if group == AlkylGroup::Benzyl {
+            1.0
+        } else {
+            0.0
+        };
+        let at_25 = self.v(ethanol) + benzylic + water + rates::leaving_group(leaving);
+        math::exp10(rates::at_temperature(
+            at_25,
+            25.0,
+            self.medium.temperature_c,
+            self.v(P::DS_SN2),
+        ))
+    }
+
+    /// Rate at which a hydroxylic solvent takes an acyl, silyl or sulfonyl group, 1/s.
+    ///
+    /// # Source
+    /// Acetyl chloride with ethanol reacts within a minute, acetic anhydride within a day, chloroformates,
+    /// sulfonyl chlorides and isocyanates within hours (common practice); orders of magnitude.
+    pub(super) fn alcoholysis(&self) -> f64 {
+        let ethanol = match self.kind() {
+            Some(ElectrophileKind::Acyl { donor, .. }) => match donor {
+                AcylDonor::Halide => -1.5,
+                AcylDonor::Azole | AcylDonor::Cyanide => -4.0,
+                AcylDonor::Anhydride | AcylDonor::Chloroformate | AcylDonor::Sulfonyl => -4.5,
+                AcylDonor::CarbamoylChloride | AcylDonor::Dicarbonate => -5.5,
+                _ => return 0.0,
+            },
+            Some(ElectrophileKind::Silyl { bulk, .. }) => -0.5 - 1.5 * f64::from(*bulk),
+            Some(ElectrophileKind::Cumulene {
+                cumulene: Cumulene::Isocyanate | Cumulene::Ketene,
+            }) => -4.5,
+            _ => return 0.0,
+        };
+        math::exp10(rates::at_temperature(
+            ethanol,
+            25.0,
+            self.medium.temperature_c,
+            self.v(P::DS_ADDITION),
+        ))
+    }
+
+    /// The bases that take water from an aldol adduct, with the pKa of their acids in the medium. The solvent's
+    /// anion counts as a hydroxide where the solvent has no acid.
+    pub(crate) fn oxygen_bases(&self) -> [(Species, f64); 3] {
+        let hydroxide = self.pka(PKA_WATER, AnionClass::Hydroxide);
+        let lyate = match &self.cell.solvent.record.acid {
+            Some((acid, class)) => self.pka(acid.value, *class),
+            None => hydroxide,
+        };
+        [
+            (Species::Base, self.pka_base()),
+            (Species::Lyate, lyate),
+            (Species::Hydroxide, hydroxide),
+        ]
+    }
+
+    /// Rate constant of the loss of water from the substrate's own aldol dimer, by a base of this pKa.
+    pub(crate) fn dimer_dehydration(&self, acceptor: Carbonyl, base_pka: f64) -> f64 {
+        let p = match acceptor {
+            Carbonyl::Aldehyde => P::DEHYDRATION_DIMER_ALDEHYDE,
+            Carbonyl::Ketone => P::DEHYDRATION_DIMER_KETONE,
+            Carbonyl::Ester | Carbonyl::TertAlkylEster => return 0.0,
+        };
+        self.loss_of_water(p, base_pka)
+    }
+
+    /// Rate constant of the loss of water from the adduct, by a base of this pKa.
+    pub(crate) fn dehydration(&self, base_pka: f64) -> f64 {
+        match self.kind() {
+            Some(ElectrophileKind::Aldehyde { aromatic, .. }) => {
+                let p = if *aromatic {
+                    P::DEHYDRATION_ARYL
+                } else {
+                    P::DEHYDRATION_ALKYL
+                };
+                let amine = if self.cell.base.makes_iminium {
+                    math::exp10(self.v(P::IMINIUM_ELIMINATION))
+                } else {
+                    1.0
+                };
+                amine * self.loss_of_water(p, base_pka)
+            }
+            Some(ElectrophileKind::Ketone { .. }) => {
+                self.loss_of_water(P::DEHYDRATION_ALKYL, base_pka)
+            }
+            _ => 0.0,
+        }
+    }
+
+    pub(super) fn loss_of_water(&self, at_25: P, base_pka: f64) -> f64 {
+        // lithium aldolates in ethers are chelated and keep their oxygen (common practice)
+        const CHELATED: f64 = -4.0;
+        let holds = matches!(
+            self.medium.cation,
+            Cation::Lithium | Cation::Magnesium | Cation::Zinc
+        ) && self.medium.is_paired();
+        let weaker = (self.pka(PKA_WATER, AnionClass::Hydroxide) - base_pka).max(0.0);
+        let at_25 = self.v(at_25) + if holds { CHELATED } else { 0.0 }
+            - self.v(P::DEHYDRATION_BRONSTED) * weaker;
+        math::exp10(rates::at_temperature(
+            at_25,
+            25.0,
+            self.medium.temperature_c,
+            self.v(P::DS_SN2),
+        ))
+    }
+
+    /// Rate at which the base decays in the solvent, 1/s.
+    ///
+    /// `k = Σ φ·ln 2 / t½` over the parts of the solvent, each at the temperature of its half-life that is nearest
+    /// to that of the cell, by Eyring to the latter.
+    pub(crate) fn decay(&self) -> f64 {
+        let to_c = self.medium.temperature_c;
+        let base = &self.cell.base.record;
+        let in_part = |part: &Component<'_>| {
+            let known = base.decay_in(part);
+            let gap = |row: &&Decay| (row.temperature_c - to_c).abs();
+            let nearest = known.into_iter().min_by(|a, b| gap(a).total_cmp(&gap(b)))?;
+            let log10_k = math::log10(std::f64::consts::LN_2 / (nearest.half_life_h * 3600.0));
+            let entropy = self.v(P::DS_SN2);
+            let at_c = nearest.temperature_c;
+            Some(math::exp10(rates::at_temperature(
+                log10_k, at_c, to_c, entropy,
+            )))
+        };
+        let parts = self.cell.solvent.record.components();
+        parts
+            .filter_map(|part| Some(part.volume_fraction * in_part(&part)?))
+            .sum()
+    }
+}

@@ -64,6 +64,7 @@ async fn open(data: &std::path::Path) -> Engine {
     let config = EngineConfig {
         data_dir: data.to_owned(),
         threads: 1,
+        library: Vec::new(),
     };
     Engine::open(config).await.expect("opens")
 }

@@ -97,6 +97,8 @@ async fn explanations_are_the_same_embedded_and_remote() {
         base: "LDA".into(),
         electrophile: "BrCc1ccccc1".into(),
         solvent: "THF".into(),
+        additive: None,
+        additive_equiv: None,
         temperature_c: -20.0,
         formation_temperature_c: Some(-78.0),
         base_equiv: 1.1,

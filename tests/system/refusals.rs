@@ -1,7 +1,7 @@
 //! What is refused, and what the client learns from it.
 
 use enolattice_engine::{EngineError, ExplainTarget, RankQuery, Submission};
-use enolattice_grid::{CampaignSpec, InputError, Place};
+use enolattice_grid::{Campaign, CampaignSpec, InputError, MAX_FAULTS, Place, Sources, read};
 use enolattice_wire::RemoteError;
 use enolattice_wire::v1::ErrorReason;
 
@@ -77,6 +77,71 @@ async fn every_fault_is_told_where_it_was_written() {
 }
 
 #[tokio::test(flavor = "multi_thread")]
+async fn faults_of_files_and_of_names_come_in_one_list_from_a_server_too() {
+    let campaign = "titel = 1\n[substrates]\nfile = 's.csv'\n[bases]\nlibrary = 'LDDA'\n\
+                    [electrophiles]\nlibrary = 'MeI'\n[solvents]\nfile = 'v.csv'\n\
+                    [conditions]\ntemperature_c = 400\n";
+    let files = [
+        (
+            "s.csv",
+            "name,smiles,pka_dmso\nopen,C1CC,\nhigh,CC#N,much\n",
+        ),
+        ("v.csv", "name,smiles\nTHG,\n,CCCCCCCCCCCCCCCCCC\n"),
+    ];
+    let reading = read(&Sources {
+        campaign_name: "c.toml".into(),
+        campaign: campaign.into(),
+        files: files
+            .iter()
+            .map(|(name, text)| ((*name).to_owned(), text.as_bytes().to_vec()))
+            .collect(),
+    });
+    let live = Live::start().await;
+    let found = live.client.faults(reading.spec.clone()).await;
+    let remote = reading.with(found.expect("the server answers"));
+    let library = enolattice_reagents::Library::builtin().expect("the tables are sound");
+    let embedded = reading.with(Campaign::faults(&reading.spec, &library));
+    assert_eq!(remote, embedded);
+    let places: Vec<_> = remote.into_iter().map(|fault| fault.place).collect();
+    assert_eq!(
+        places,
+        [
+            place("c.toml", 1, "titel"),
+            place("c.toml", 5, "bases.library"),
+            place("c.toml", 11, "conditions.temperature_c"),
+            place("s.csv", 2, "smiles"),
+            place("s.csv", 3, "pka_dmso"),
+            place("v.csv", 2, "name"),
+            place("v.csv", 3, "smiles"),
+        ]
+    );
+    live.stop().await;
+}
+
+#[tokio::test(flavor = "multi_thread")]
+async fn a_dry_run_of_a_server_is_that_of_the_engine() {
+    let live = Live::start().await;
+    let remote = live
+        .client
+        .dry_run(small())
+        .await
+        .expect("a sound campaign");
+    let embedded = live
+        .engine
+        .dry_run(small())
+        .await
+        .expect("a sound campaign");
+    assert_eq!(remote.job.cells, 24);
+    // a campaign of less than a block is scored whole
+    assert_eq!((remote.cells_scored, remote.cells_looked_at), (24, 24));
+    assert_eq!(remote.axes, embedded.axes);
+    assert_eq!(remote.cautions, embedded.cautions);
+    assert_eq!(remote.disk_bytes, embedded.disk_bytes);
+    assert!(live.client.jobs().await.expect("jobs").is_empty());
+    live.stop().await;
+}
+
+#[tokio::test(flavor = "multi_thread")]
 async fn a_campaign_too_large_for_a_message_comes_through_as_a_stream() {
     let live = Live::start().await;
     let mut campaign = small();
@@ -92,7 +157,9 @@ async fn a_campaign_too_large_for_a_message_comes_through_as_a_stream() {
         ..submission(campaign)
     };
     let remote = faults(live.client.submit(check.clone()).await);
-    assert!(remote.len() >= 2500, "{} faults", remote.len());
+    let last = remote.last().expect("faults");
+    assert_eq!((remote.len(), last.code), (MAX_FAULTS + 1, "MORE_FAULTS"));
+    assert_eq!(last.value, (2500 - MAX_FAULTS).to_string());
     assert_eq!(remote, embedded_faults(&live, check).await);
     live.stop().await;
 }

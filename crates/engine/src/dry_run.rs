@@ -19,7 +19,7 @@ const DISK_OVERHEAD: f64 = 1.8;
 
 /// Memory of the engine at rest, and of each cell of a job whose blocks are looked at (both as they
 /// were measured; `docs/storage.md` of the store says why).
-const RESTING_BYTES: u64 = 96 << 20;
+const RESTING_BYTES: u64 = 64 << 20;
 const MEMORY_PER_CELL: u64 = 24;
 
 /// What a campaign would take, and what of it cannot be screened or should not be run.

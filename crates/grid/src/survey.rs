@@ -7,8 +7,8 @@ use crate::{AXES, CELLS_PER_BLOCK, CellId, Grid};
 /// Cells of which the cautions are looked up; of larger campaigns as many, evenly spread.
 const MOST_LOOKED_AT: u64 = 1 << 20;
 
-/// Bytes of the tables of one pair of substrate and electrophile, and of one prepared substance, as
-/// they were measured (rounded up).
+/// Bytes of the tables of one pair of substrate and electrophile, and of one prepared substance:
+/// estimates from the sizes of their parts, rounded up.
 const PAIR_BYTES: u64 = 8 << 10;
 const SUBSTANCE_BYTES: u64 = 16 << 10;
 /// Substrates whose tables are kept at once.

@@ -67,8 +67,9 @@ fn for_each_step(stage: &Stage, mut step: impl FnMut(f64, f64)) {
 
 /// No unknown.
 const ABSENT: usize = usize::MAX;
-/// Room for unknowns: a power of two, so that a masked index needs no check.
-const ROOM: usize = Species::COUNT.next_power_of_two();
+/// Room for unknowns: a power of two, so that a masked index needs no check. A row of the matrix must
+/// stay small: all of it has to lie in the fastest cache.
+const ROOM: usize = (Species::COUNT - Species::ONLY_FORMED).next_power_of_two();
 
 /// A reaction in terms of unknowns.
 #[derive(Clone, Copy)]
@@ -206,8 +207,9 @@ impl<const L: usize> Solver<L> {
 
     /// Residual `y₀ + Δt·f(y) − y` and matrix `1 − Δt·∂f/∂y`.
     fn linearise(&mut self, pots: &[Amounts; L], dt: f64) {
+        let n = self.unknowns.len();
         for (i, row) in self.matrix.iter_mut().enumerate() {
-            row.fill(Lanes::all(0.0));
+            row[..n].fill(Lanes::all(0.0));
             row[i % ROOM] = Lanes::all(1.0);
             let species = self.unknowns[i];
             self.residual[i % ROOM] = Lanes::each(|l| pots[l].of(species)) - self.y[i % ROOM];

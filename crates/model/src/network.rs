@@ -72,6 +72,9 @@ const FIRST_OF_SITES: usize = 24;
 impl Species {
     /// Number of species.
     pub(crate) const COUNT: usize = FIRST_OF_SITES + 4 * SITES;
+    /// Number of species that are formed and never react: O-product, product at the heteroatom, over-reacted product,
+    /// substrate taken by base, dehydrated dimer, eliminated, solvolysed and spent electrophile, dehydrated products.
+    pub(crate) const ONLY_FORMED: usize = 8 + SITES;
 
     /// Name in explanations.
     pub(crate) fn name(self) -> String {

@@ -171,7 +171,9 @@ parameters! {
     O_SULFONYL = 2.5, 0.8, "log10", MEMORY;
     O_SILYL = 5.0, 1.0, "log10", "silyl chlorides take enolates at oxygen (common practice)";
     /// Opening of a three-membered ring at CH2 against SN2 of ethyl bromide.
-    RING_EPOXIDE = -1.5, 0.8, "log10", "epoxides with alkoxides are about as fast as ethyl bromide, with carbanions slower: hours at 25 to 60 °C (from memory)";
+    RING_EPOXIDE = -3.5, 0.8, "log10", "in alcohols about as fast as ethyl bromide with alkoxides and slower with carbanions; in aprotic solvents hours at 60 °C and more (from memory)";
+    /// A hydroxylic solvent helps the alkoxide of an opening epoxide to leave.
+    RING_PROTIC = 2.0, 0.7, "log10", MEMORY;
     RING_ACTIVATED_AZIRIDINE = -0.8, 0.8, "log10", MEMORY;
     RING_AZIRIDINE = -6.0, 1.5, "log10", MEMORY;
     RING_THIIRANE = -2.0, 1.0, "log10", MEMORY;

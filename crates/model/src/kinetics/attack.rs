@@ -101,7 +101,12 @@ impl<'a> Kinetics<'a> {
         } else {
             0.0
         };
-        self.v(ring) + f64::from(degree) * self.v(P::RING_SUBSTITUTED) + activation
+        let helped = if heteroatom == RingHeteroatom::Oxygen && self.medium.is_protic() {
+            self.v(P::RING_PROTIC)
+        } else {
+            0.0
+        };
+        self.v(ring) + f64::from(degree) * self.v(P::RING_SUBSTITUTED) + activation + helped
     }
 
     /// Whether a base of this class that attacks the electrophile spends it for good.

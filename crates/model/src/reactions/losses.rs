@@ -121,8 +121,14 @@ impl Reactions<'_> {
     /// The aldol dimer of an aldehyde or ketone loses water for good.
     pub(super) fn loss_of_water_from_dimer(&mut self, acceptor: Carbonyl) {
         let k = self.kinetics;
+        // the new bond takes one hydrogen of the site, the water another
+        let can_lose = k.cell.substrate.carbon[0].acid.hydrogens > 1;
         for (base, pka) in k.oxygen_bases() {
-            let rate = k.dimer_dehydration(acceptor, pka);
+            let rate = if can_lose {
+                k.dimer_dehydration(acceptor, pka)
+            } else {
+                0.0
+            };
             let products = [Species::DryDimer, base];
             self.add(Species::Dimer, Some(base), &products, rate);
         }

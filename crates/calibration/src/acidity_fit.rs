@@ -112,12 +112,14 @@ pub fn run(places: &Places) -> Result<String, FitError> {
     let tables = tables(&terms, &observations, &fit);
     let report = page::page(&terms, &fit, &observations, &validation);
     let errors = page::errors(&observations.rows, &validation);
+    let held_out = page::held_out(&fit, &observations.rows, &validation);
     write(
         &places.model_data.join("acidity_coefficients.tsv"),
         &tables.coefficients,
     )?;
     write(&places.model_data.join("acidity_seen.tsv"), &tables.seen)?;
     write(&places.model_data.join("acidity_errors.tsv"), &errors)?;
+    write(&places.model_data.join("acidity_held_out.tsv"), &held_out)?;
     write(&places.docs.join("acidity.md"), &report)?;
     Ok(report)
 }

@@ -3,7 +3,7 @@
 use std::collections::BTreeMap;
 use std::fmt::Write;
 
-use enolattice_model::{Model, acid_sites};
+use enolattice_model::{AcidSite, Model, acid_sites};
 use enolattice_molecule::{AnionClass, Molecule};
 use enolattice_reagents::Cation;
 use serde::Deserialize;
@@ -94,10 +94,12 @@ fn compared(model: &Model, row: &Row) -> Result<Comparison, String> {
     let (class, donors) = match cationic_donors(&molecule) {
         0 => {
             let sites = acid_sites(&molecule, library);
-            let first = sites
-                .first()
+            let off = |site: &AcidSite| (site.pka_dmso - row.pka_dmso).abs();
+            let meant = sites
+                .iter()
+                .min_by(|a, b| off(a).total_cmp(&off(b)))
                 .ok_or_else(|| fault("it has no acidic site"))?;
-            (first.class, 1)
+            (meant.class, 1)
         }
         donors => (AnionClass::Neutral, donors),
     };

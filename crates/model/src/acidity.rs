@@ -2,6 +2,8 @@
 
 mod contribution;
 mod coverage;
+mod locality;
+mod reasons;
 mod table;
 
 use enolattice_molecule::{AnionClass, Molecule, Site, sites};
@@ -9,9 +11,12 @@ use enolattice_reagents::{Acidity, Library};
 
 pub use contribution::{Contribution, Form, Role, Uptake};
 pub use coverage::Coverage;
+use locality::NEIGHBOURS;
+pub use locality::{local_sigma, similarity};
+pub use reasons::{Neighbour, SiteReasons, Term, reasons};
 pub(crate) use table::texts as acidity_texts;
 pub use table::{Coefficient, coefficients};
-use table::{coverage, form, typical_error, values};
+use table::{coverage, error_of_thin_terms, form, seen_sites, typical_error, values};
 
 /// Where an acidity comes from.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
@@ -57,12 +62,6 @@ const LEAST_MEASURED_SIGMA: f64 = 0.2;
 /// An estimated site of the element that was measured is at least this much weaker than
 /// the measured one, for the measurement is of the most acidic site.
 const WEAKER_THAN_MEASURED: f64 = 0.3;
-/// Factor on σ where the fit has seen nothing alike: ratio of the errors outside and inside in
-/// cross-validation (1.45 to 1.17 with scaffold groups held out, `calibration/docs/acidity.md`).
-const OUTSIDE_FACTOR: f64 = 1.25;
-/// A coefficient that rests on fewer sites brings its own standard error into σ.
-const WELL_SUPPORTED: usize = 3;
-
 /// All acidic sites of a molecule, most acidic first.
 ///
 /// C–H that nothing activates is left out unless it was measured.
@@ -122,8 +121,13 @@ fn from_measurement(site: Site, contribution: Contribution, acidity: &Acidity) -
 
 fn from_estimate(site: Site, contribution: Contribution, pka: f64) -> AcidSite {
     let outside = !coverage().covers(&contribution);
-    let typical = typical_error(site.class) * if outside { OUTSIDE_FACTOR } else { 1.0 };
-    let sigma = typical.hypot(error_of_thin_terms(&contribution));
+    let nearby: Vec<(f64, f64)> = coverage()
+        .nearest(&contribution, NEIGHBOURS)
+        .into_iter()
+        .filter_map(|(i, distance)| Some((distance, seen_sites()[i].held_out_error?)))
+        .collect();
+    let sigma =
+        local_sigma(typical_error(site.class), &nearby).hypot(error_of_thin_terms(&contribution));
     AcidSite {
         atom: site.atom,
         element: site.element,
@@ -137,20 +141,6 @@ fn from_estimate(site: Site, contribution: Contribution, pka: f64) -> AcidSite {
         outside,
         contribution,
     }
-}
-
-/// Error that coefficients with next to no measurements behind them bring in.
-fn error_of_thin_terms(contribution: &Contribution) -> f64 {
-    let thin = |i: usize| coefficients()[i].training_sites < WELL_SUPPORTED;
-    let variance: f64 = contribution
-        .slopes(values())
-        .into_iter()
-        .filter(|(i, _)| thin(*i))
-        .map(|(i, slope)| {
-            slope * slope * coefficients()[i].standard_error * coefficients()[i].standard_error
-        })
-        .sum();
-    variance.sqrt()
 }
 
 /// The measured values of this compound, each with the candidate that it belongs to.

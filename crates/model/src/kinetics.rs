@@ -197,8 +197,10 @@ impl<'a> Kinetics<'a> {
             .record
             .log_solubility_for(&self.cell.solvent.record)?;
         let carried = self.cell.additive.as_ref().map_or(0.0, |additive| {
+            // a carrier works in proportion to its amount: catalytic ones by turning over
             let dose = self.cell.conditions.additive_equiv / self.cell.conditions.base_equiv;
-            additive.record.dissolves.value * dose.clamp(0.0, 1.0)
+            let at_one_equivalent = math::exp10(additive.record.dissolves.value);
+            math::log10(1.0 + dose.clamp(0.0, 1.0) * (at_one_equivalent - 1.0))
         });
         Some(math::exp10(log10 + carried))
     }

@@ -33,8 +33,8 @@ mod score;
 mod screen;
 
 pub use acidity::{
-    AcidSite, Coefficient, Contribution, Coverage, Form, Neighbour, Origin, Role, SiteReasons, Term,
-    Uptake, acid_sites, coefficients, estimate, local_sigma, reasons, similarity,
+    AcidSite, Coefficient, Contribution, Coverage, Form, Neighbour, Origin, Role, SiteReasons,
+    Term, Uptake, acid_sites, coefficients, estimate, local_sigma, reasons, similarity,
 };
 pub use balance::{Acid, proton_balance};
 pub use cautions::{

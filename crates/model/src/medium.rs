@@ -106,8 +106,9 @@ impl Medium<'_> {
     /// number for all acids ([`Medium::own_scale`]).
     ///
     /// `pKa(V, T) = [pKa(DMSO) − h·α/1.17 − loc·cat·g(ε)] · 298.15/T` for neutral acids;
-    /// for cationic acids `− c·(1/ε − 1/46.7) − d·(0.76 − β)`, the cost of separating charges and
-    /// the hydrogen bond of the N–H to the solvent, in place of the ion-pair term.
+    /// for cationic acids `− c·(1/ε − 1/46.7) − d·(0.76 − β) + p`, the cost of separating charges, the
+    /// hydrogen bond of the N–H to the solvent and, where ε < 12, contact pairs with the anions of the pot,
+    /// in place of the ion-pair term.
     ///
     /// | symbol | meaning                                               |
     /// |--------|-------------------------------------------------------|
@@ -121,7 +122,7 @@ impl Medium<'_> {
     /// Form and parameters: see each entry of the parameter vector.
     pub(crate) fn pka(&self, pka_dmso: f64, class: AnionClass, values: &Values) -> f64 {
         let shift = if class == AnionClass::Neutral {
-            self.cationic_shift(1, values)
+            self.cationic_shift(1, values) - self.onium_pairing(values)
         } else {
             let pairing = localisation(class).map_or(0.0, |p| values.get(p));
             self.hydrogen_bond_shift(pka_dmso, class, values) + pairing * self.pair_strength(values)
@@ -129,10 +130,25 @@ impl Medium<'_> {
         log10_k_at(pka_dmso - shift, self.temperature_c)
     }
 
-    /// The pKa of a cationic acid with this many N–H in the medium.
+    /// The pKa of a cationic acid with this many N–H as it acts in a pot: contact pairs with the anions of the
+    /// pot make its base stronger in media of low permittivity.
     pub(crate) fn pka_cationic(&self, pka_dmso: f64, donors: u8, values: &Values) -> f64 {
+        let shift = self.cationic_shift(donors, values) - self.onium_pairing(values);
+        log10_k_at(pka_dmso - shift, self.temperature_c)
+    }
+
+    /// The pKa of the same acid as free ions.
+    pub(crate) fn pka_cationic_free(&self, pka_dmso: f64, donors: u8, values: &Values) -> f64 {
         let shift = self.cationic_shift(donors, values);
         log10_k_at(pka_dmso - shift, self.temperature_c)
+    }
+
+    fn onium_pairing(&self, values: &Values) -> f64 {
+        if self.is_paired() {
+            values.get(P::ONIUM_PAIR)
+        } else {
+            0.0
+        }
     }
 
     fn cationic_shift(&self, donors: u8, values: &Values) -> f64 {

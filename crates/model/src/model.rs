@@ -63,7 +63,7 @@ impl Draw {
 }
 
 /// Raised whenever the meaning of a score changes without a change of data.
-const ARITHMETIC_VERSION: u32 = 2;
+const ARITHMETIC_VERSION: u32 = 3;
 
 /// The model with its library and parameters.
 #[derive(Debug)]
@@ -173,7 +173,7 @@ impl Model {
             temperature_c,
         };
         let anchored = match class {
-            AnionClass::Neutral => medium.pka_cationic(pka_dmso, donors, &self.means),
+            AnionClass::Neutral => medium.pka_cationic_free(pka_dmso, donors, &self.means),
             _ => medium.pka(pka_dmso, class, &self.means),
         };
         // ion-pair acidities are relative to each other: they have no scale of free ions to be put on

@@ -73,6 +73,9 @@ parameters! {
     H_CATIONIC_ACID = -2.1, 0.5, "pK", WATER_PAIRS;
     /// Hydrogen bond of an N–H of a cationic acid to the solvent, times β(DMSO) − β.
     H_CATIONIC_DONOR = 3.6, 0.7, "pK", "ammonium ions with one to four N–H in water, MeCN and DMSO (reference_pairs, from memory)";
+    /// Contact pairs of a cationic acid with the anions of the pot, for which it needs no solvent: effective pK
+    /// units in media of low permittivity at the concentrations of the trade.
+    ONIUM_PAIR = 3.0, 1.0, "pK", "phosphazenes and amidines ionise carbon acids of their own strength in dichloromethane and THF (common practice)";
     /// pKa on the medium's own scale less that on the scale anchored in DMSO: one number for all acids,
     /// which cancels in every equilibrium.
     SCALE_MECN = 11.0, 0.3, "pK", "neutral and cationic acids of reference_pairs in MeCN against DMSO (Kütt, Leito and others, from memory)";
@@ -100,14 +103,14 @@ parameters! {
     /// Cost of separating charges in a medium of low permittivity, times (1/ε − 1/46.7).
     CHARGE_SEPARATION = 15.0, 4.0, "pK", "Born, Z. Phys. 1920, 1, 45, with the size of an ion pair (from memory)";
     /// log10 k of C–H exchange at ΔpKa = 0 and 25 °C.
-    EXCHANGE_PROTIC = 3.0, 1.0, "log10 L/(mol s)", MEMORY;
+    EXCHANGE_PROTIC = 0.5, 0.5, "log10 L/(mol s)", "acetone with hydroxide in water, 0.2 L/(mol s) at ΔpKa −3.8 (Bell, The Proton in Chemistry, 1973, from memory)";
     EXCHANGE_DIPOLAR = 0.5, 1.0, "log10 L/(mol s)", MEMORY;
     EXCHANGE_APOLAR = -1.0, 1.0, "log10 L/(mol s)", MEMORY;
     EXCHANGE_LITHIUM = -1.5, 0.7, "log10 L/(mol s)", MEMORY;
     /// Amines and amidines exchange without an ion pair to break.
     EXCHANGE_AMINE = 1.5, 0.7, "log10 L/(mol s)", MEMORY;
     EXCHANGE_POTASSIUM = 0.3, 0.3, "log10 L/(mol s)", MEMORY;
-    EXCHANGE_NITRO_PROTIC = -4.0, 0.7, "log10 L/(mol s)", "nitromethane with hydroxide in water, 27 L/(mol s) at ΔpKa 5.5 (Bordwell and Boyle, J. Am. Chem. Soc. 1972, 94, 3907, from memory)";
+    EXCHANGE_NITRO_PROTIC = -3.6, 0.7, "log10 L/(mol s)", "nitromethane with hydroxide in water, 27 L/(mol s) at ΔpKa 5.5 (Bordwell and Boyle, J. Am. Chem. Soc. 1972, 94, 3907, from memory)";
     EXCHANGE_NITRO = -0.5, 0.7, "log10 L/(mol s)", "the anomaly of nitroalkanes is small outside hydrogen-bonding media (from memory)";
     /// 1,3-dicarbonyl compounds and nitriles have lower intrinsic barriers than ketones and esters.
     EXCHANGE_DICARBONYL = 1.5, 0.7, "log10 L/(mol s)", "acetylacetone against acetone with amines in water (from memory)";
@@ -119,7 +122,7 @@ parameters! {
     /// Sensitivity of the kinetic distribution to the acidity of the sites.
     KINETIC_BRONSTED = 0.4, 0.1, "1", "fitted to the enolate_regiochemistry table (House and others, from memory)";
     KINETIC_SECONDARY = 0.65, 0.2, "log10", "fitted to the enolate_regiochemistry table (House and others, from memory)";
-    KINETIC_TERTIARY = 1.3, 0.3, "log10", "fitted to the enolate_regiochemistry table (House and others, from memory)";
+    KINETIC_TERTIARY = 1.9, 0.4, "log10", "fitted to the enolate_regiochemistry table (House and others, from memory)";
     /// SN2 of ethyl bromide with a carbanion of pKa 22 in DMSO at 25 °C.
     SN2_ANCHOR = 0.0, 0.5, "log10 L/(mol s)", "Bordwell and Hughes, J. Org. Chem. 1980–1983 (range of carbanions with alkyl halides in DMSO, from memory)";
     SN2_BRONSTED = 0.35, 0.05, "1", "Bordwell and Hughes, J. Org. Chem. 1980–1983: 0.25–0.45 (from memory)";
@@ -133,6 +136,10 @@ parameters! {
     PAIRED_MAGNESIUM = -3.0, 0.8, "log10", "magnesium and zinc enolates are not alkylated in ethers (common practice)";
     PAIRED_ZINC = -3.5, 0.8, "log10", "magnesium and zinc enolates are not alkylated in ethers (common practice)";
     PAIRED_ONIUM = -0.6, 0.4, "log10", MEMORY;
+    /// A carbonyl group that binds the metal of a contact pair, or takes the hydrogen bond of a hydroxylic solvent,
+    /// is attacked faster than in DMSO.
+    CARBONYL_METAL = 2.0, 0.8, "log10", "lithium enolates add to esters and amides with chelating groups within minutes at −78 °C (common practice)";
+    CARBONYL_PROTIC = 2.0, 1.0, "log10", "nitronates add to benzaldehyde in methanol within minutes at 10 °C (common practice)";
     /// log10 of K of four lithium enolate monomers to a tetramer in THF at 25 °C.
     TETRAMER = 8.7, 0.4, "log10 L³/mol³", "Abbotto, Streitwieser and others on lithium ketone enolates in THF: 5·10^8 M^-3 (from memory)";
     STERIC_SN2 = -0.9, 0.3, "log10", MEMORY;
@@ -168,6 +175,8 @@ parameters! {
     /// What the group that leaves adds to it in acyl, silyl and sulfonyl transfer, on the scale of a sulfonate.
     O_ACYL_HALIDE = 1.0, 0.6, "log10", "acyl chlorides take sodium and lithium enolates of ketones at both ends (common practice)";
     O_ACYL_MILD = -1.5, 0.7, "log10", "acyl cyanides, azoles and esters acylate at carbon (common practice)";
+    O_ACYL_STABILISED = -1.5, 0.7, "log10", "sodium derivatives of malonates and acetoacetates are acylated mainly at carbon in ethers (common practice)";
+    O_MAGNESIUM = -2.0, 0.8, "log10", "magnesium chelates of 1,3-dicarbonyl compounds are acylated at carbon (common practice)";
     O_SULFONYL = 2.5, 0.8, "log10", MEMORY;
     O_SILYL = 5.0, 1.0, "log10", "silyl chlorides take enolates at oxygen (common practice)";
     /// Opening of a three-membered ring at CH2 against SN2 of ethyl bromide.
@@ -194,6 +203,7 @@ parameters! {
     DG_CLAISEN_CARBONATE = 1.0, 1.5, "kcal/mol", MEMORY;
     DG_IMINE = -4.0, 2.0, "kcal/mol", MEMORY;
     DG_ACTIVATED_KETONE = -3.0, 1.5, "kcal/mol", MEMORY;
+    DG_DEHYDRATION = -4.0, 1.5, "kcal/mol", "aldol condensations with aromatic aldehydes go to completion (common practice)";
     DG_ENTROPY = 0.030, 0.005, "kcal/(mol K)", "ΔS° of joining two molecules, about −30 cal/(mol K) (from memory)";
     /// Mayr E of carbonyl groups as acceptors of the substrate's own enolate.
     E_KETONE = -22.3, 1.0, "1", "Mayr database: cyclopentanone −21.0, cycloheptanone −22.1 (electrophilicities table)";
@@ -202,6 +212,7 @@ parameters! {
     E_TERT_ALKYL_ESTER = -31.0, 1.5, "1", MEMORY;
     /// Entropy of activation.
     DS_SN2 = -10.0, 5.0, "cal/(mol K)", MEMORY;
+    DS_SN2_PAIRED = -40.0, 7.0, "cal/(mol K)", "effective value: lithium ester enolates are methylated by iodomethane within hours at −78 °C (common practice)";
     DS_ADDITION = -25.0, 5.0, "cal/(mol K)", MEMORY;
     DS_EXCHANGE = -20.0, 5.0, "cal/(mol K)", MEMORY;
     /// What a primary or secondary amine gains by way of the iminium ion of an aldehyde, in the addition and

@@ -298,6 +298,12 @@ pub(crate) fn substitution(
     let shift = medium
         .hydrogen_bond_shift(nucleophile.pka_dmso, nucleophile.class, values)
         .max(0.0);
+    let is_metal_pair = medium.is_paired() && nucleophile.class != AnionClass::Neutral;
+    let entropy = if is_metal_pair && medium.cation != Cation::None {
+        P::DS_SN2_PAIRED
+    } else {
+        P::DS_SN2
+    };
     let at_25 = values.get(P::SN2_ANCHOR) + to_ethyl_bromide + bronsted * above
         - values.get(P::SN2_SOLVATION) * shift
         + pairing(nucleophile, medium, values, true)
@@ -308,7 +314,7 @@ pub(crate) fn substitution(
         at_25,
         25.0,
         medium.temperature_c,
-        values.get(P::DS_SN2),
+        values.get(entropy),
     ))
 }
 

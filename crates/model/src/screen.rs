@@ -53,6 +53,11 @@ pub(crate) fn coverage(cell: &Cell) -> Coverage {
             None => Coverage::Unknown(format!("substrate {}: no acidic C–H", cell.substrate.name)),
         };
     }
+    if makes_alkene_of_ylide(cell) {
+        let reason =
+            "a phosphonate or phosphonium carbanion makes an alkene of a carbonyl compound";
+        return Coverage::Unknown(format!("{reason}, which is not covered"));
+    }
     if let Some(reason) = destroyed_by_solvent(cell) {
         return Coverage::Nothing(Channel::SolventLevelsBase, reason);
     }
@@ -60,6 +65,20 @@ pub(crate) fn coverage(cell: &Cell) -> Coverage {
         return Coverage::Unknown("no product by one new bond at carbon could be drawn".to_owned());
     }
     Coverage::Covered
+}
+
+/// Whether the carbanion sits beside phosphorus and the electrophile is an aldehyde or ketone: the adduct loses
+/// phosphate (Wittig reaction and its kin).
+fn makes_alkene_of_ylide(cell: &Cell) -> bool {
+    const PHOSPHORUS: u8 = 15;
+    let is_carbonyl = matches!(
+        cell.electrophile.group.as_ref().map(|g| g.kind),
+        Some(ElectrophileKind::Aldehyde { .. } | ElectrophileKind::Ketone { .. })
+    );
+    let molecule = &cell.substrate.molecule;
+    let site = cell.substrate.carbon[0].acid.atom;
+    let mut beside = molecule.neighbours(site).iter();
+    is_carbonyl && beside.any(|&(atom, _)| molecule.atoms()[atom].element == PHOSPHORUS)
 }
 
 /// A solvent more acidic than a metal amide or alkyllithium by more than this destroys it at once.
@@ -293,6 +312,18 @@ pub(crate) fn feasibility(cell: &Cell, kinetics: &Kinetics<'_>) -> f64 {
             cap / (1.0 + math::exp10(uphill - SUBSTITUTION_LOG10_K))
         }
         Some(log10_k) => {
+            // the loss of water carries the addition along
+            let dehydrates = cell
+                .pair
+                .by_site
+                .first()
+                .and_then(Option::as_ref)
+                .is_some_and(|product| product.dehydrated.is_some());
+            let log10_k = if dehydrates {
+                log10_k + kinetics.dehydration_log10_k()
+            } else {
+                log10_k
+            };
             // the adduct's anion is stabilised where it is the weaker base
             let gain = (kinetics.site_pka(site) - kinetics.adduct_pka(0)).max(0.0) * base.min(1.0);
             cap.min(addition_conversion(

@@ -160,3 +160,54 @@ fn grignard_reagents_add_to_ketones_and_metal_amides_ionise_them() {
     assert_eq!(losses[0].0, Channel::BaseAddsToSubstrate, "{losses:?}");
     assert!(bench.expected_yield(&with("LDA")) > 0.5);
 }
+
+#[test]
+fn lithium_ester_enolates_are_methylated_in_the_cold() {
+    let bench = Bench::new();
+    let mut cell = bench.cell("COC(=O)C(C)C", "LDA", "CI", "THF", -78.0);
+    cell.conditions.time_h = 3.0;
+    assert!(bench.expected_yield(&cell) > 0.3);
+}
+
+#[test]
+fn a_catalytic_quaternary_salt_carries_hydroxide_into_toluene() {
+    let bench = Bench::new();
+    let with = |additive: Option<&str>| {
+        let mut cell = bench.cell("N#CCc1ccccc1", "KOH", "CCBr", "toluene", 40.0);
+        let library = bench.0.library();
+        cell.additive = additive.map(|name| {
+            Arc::new(
+                bench
+                    .0
+                    .additive(library.additive(name).expect("an additive")),
+            )
+        });
+        cell.conditions.base_equiv = 4.0;
+        cell.conditions.additive_equiv = 0.05;
+        bench.expected_yield(&cell)
+    };
+    let (carried, alone) = (with(Some("TEBAC")), with(None));
+    assert!(carried > 0.3 && alone < 0.1, "{carried}, {alone}");
+}
+
+#[test]
+fn phosphonates_with_aldehydes_are_left_unknown() {
+    let bench = Bench::new();
+    let phosphonate = "CCOP(=O)(OCC)CC(=O)OCC";
+    let cell = bench.cell(phosphonate, "NaH", "O=Cc1ccccc1", "THF", 25.0);
+    assert_eq!(bench.0.score(&cell, 0.5, 0).expected_yield, None);
+}
+
+#[test]
+fn magnesium_malonates_are_acylated_at_carbon() {
+    // ethyl magnesium malonate with acyl chlorides (common practice)
+    let bench = Bench::new();
+    let cell = bench.cell(MALONATE, "TMPMgCl.LiCl", "CC(=O)Cl", "THF", 0.0);
+    let explanation = bench.explain(&cell);
+    let at_oxygen = explanation
+        .losses
+        .iter()
+        .find(|(channel, _)| *channel == Channel::OAttack)
+        .map_or(0.0, |(_, share)| *share);
+    assert!(at_oxygen < 0.1, "{:?}", explanation.losses);
+}

@@ -4,6 +4,7 @@ mod carbon;
 mod descriptors;
 mod group;
 mod hammett;
+mod heteroaryl;
 mod heteroatom;
 mod neighbours;
 mod nitrogen;
@@ -35,8 +36,8 @@ pub struct Site {
 
 /// All candidate sites, one of each class of equivalent atoms, by atom index.
 ///
-/// C–H at saturated carbon and at terminal alkynes, N–H, O–H, S–H. Left out:
-/// C–H of aromatic rings, alkenes and aldehydes, and bridgeheads where Bredt's
+/// C–H at saturated carbon, at terminal alkynes and beside a heteroatom of five-membered aromatic
+/// rings, N–H, O–H, S–H. Left out: other C–H of aromatic rings, alkenes and aldehydes, and bridgeheads where Bredt's
 /// rule forbids the enolate.
 pub fn sites(molecule: &Molecule) -> Vec<Site> {
     let classes = molecule.symmetry_classes();
@@ -61,6 +62,7 @@ fn site(molecule: &Molecule, index: usize) -> Option<Site> {
         {
             always(heteroatom::alkyne(molecule, index)?)
         }
+        6 if atom.aromatic && atom.charge == 0 => heteroaryl::describe(molecule, index)?,
         7 => always(nitrogen::describe(molecule, index)?),
         8 => always(heteroatom::oxygen(molecule, index)?),
         16 | 34 => always(heteroatom::sulfur(molecule, index)?),

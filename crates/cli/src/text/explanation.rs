@@ -289,7 +289,7 @@ fn advice(told: &Explanation) -> String {
 fn pairs(lines: Vec<(&str, String)>) -> String {
     let lines: Vec<String> = lines
         .into_iter()
-        .map(|(name, value)| format!("  {name:<19}{value}"))
+        .map(|(name, value)| format!("  {name:<19} {value}"))
         .collect();
     lines.join("\n")
 }

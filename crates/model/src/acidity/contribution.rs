@@ -13,8 +13,10 @@ pub enum Uptake {
     Sulfonyl,
     /// Nitro.
     Nitro,
-    /// Cationic groups.
+    /// Phosphonium, sulfonium, ammonium: the charge stays at the carbon of the ylide.
     Onium,
+    /// Pyridinium: the charge goes into the ring.
+    Pyridinium,
     /// Aryl, vinyl, alkynyl.
     Aryl,
     /// Groups bound through a heteroatom.
@@ -23,7 +25,7 @@ pub enum Uptake {
 
 impl Uptake {
     /// Number of kinds.
-    pub(crate) const COUNT: usize = 7;
+    pub(crate) const COUNT: usize = 8;
 }
 
 /// What a coefficient does in the estimate.
@@ -51,6 +53,7 @@ impl Role {
             "group sulfonyl" => Role::Group(Uptake::Sulfonyl),
             "group nitro" => Role::Group(Uptake::Nitro),
             "group onium" => Role::Group(Uptake::Onium),
+            "group pyridinium" => Role::Group(Uptake::Pyridinium),
             "group aryl" => Role::Group(Uptake::Aryl),
             "group heteroatom" => Role::Group(Uptake::Heteroatom),
             _ => return None,
@@ -64,7 +67,11 @@ fn saturation(first: Uptake, second: Uptake) -> &'static str {
     let pair = (first.min(second), first.max(second));
     match pair {
         (Nitrile, Heteroatom) => "heteroatom with nitrile",
+        (Pyridinium, Heteroatom) => "pyridinium with any",
         (_, Heteroatom) => "heteroatom with any",
+        (Nitrile, Pyridinium) => "pyridinium with nitrile",
+        (Pyridinium, _) | (_, Pyridinium) => "pyridinium with any",
+        (Onium, Aryl) => "onium with aryl",
         (Onium, _) | (_, Onium) => "onium with any",
         (Nitro, _) | (_, Nitro) => "nitro with any",
         (Aryl, Aryl) => "aryl with aryl",
@@ -135,6 +142,45 @@ impl Contribution {
             slopes.push((pair.kappa, pair.count * a * b / 100.0));
         }
         slopes
+    }
+
+    /// What each coefficient adds to the pKa, by coefficient; the sum is [`Contribution::value`].
+    pub(crate) fn parts(&self, coefficients: &[f64]) -> Vec<(usize, f64)> {
+        let linear = self
+            .linear
+            .iter()
+            .map(|(i, factor)| (*i, factor * coefficients[*i]));
+        let saturation = self.pairs.iter().map(|pair| {
+            let charge = coefficients[pair.first] * coefficients[pair.second] / 100.0;
+            (pair.kappa, pair.count * coefficients[pair.kappa] * charge)
+        });
+        let mut parts: Vec<(usize, f64)> = Vec::new();
+        for (i, value) in linear.chain(saturation) {
+            match parts.iter_mut().find(|(known, _)| *known == i) {
+                Some((_, sum)) => *sum += value,
+                None => parts.push((i, value)),
+            }
+        }
+        parts
+    }
+
+    /// Error that coefficients with next to no measurements behind them bring in, pK units: those on
+    /// fewer than three sites count with their standard error.
+    pub fn error_of_thin_terms(
+        &self,
+        coefficients: &[f64],
+        standard_errors: &[f64],
+        training_sites: &[usize],
+    ) -> f64 {
+        /// A coefficient that rests on fewer sites brings its own standard error into σ.
+        const WELL_SUPPORTED: usize = 3;
+        let variance: f64 = self
+            .slopes(coefficients)
+            .into_iter()
+            .filter(|(i, _)| training_sites[*i] < WELL_SUPPORTED)
+            .map(|(i, slope)| (slope * standard_errors[i]) * (slope * standard_errors[i]))
+            .sum();
+        variance.sqrt()
     }
 
     /// Indices of the coefficients that enter, without those of saturation.

@@ -56,6 +56,25 @@ impl Coverage {
                 .any(|seen| self.distance(site, seen) <= Self::EDGE)
     }
 
+    /// The `count` sites of the fit nearest to this one, by their number in the fit, with their
+    /// distances, nearest first. Sites of another class of acid are none.
+    pub fn nearest(&self, site: &Contribution, count: usize) -> Vec<(usize, f64)> {
+        let mut distances: Vec<(usize, f64)> = self
+            .sites
+            .iter()
+            .enumerate()
+            .map(|(i, seen)| (i, self.distance(site, seen)))
+            .filter(|(_, distance)| distance.is_finite())
+            .collect();
+        let order = |a: &(usize, f64), b: &(usize, f64)| a.1.total_cmp(&b.1).then(a.0.cmp(&b.0));
+        if distances.len() > count {
+            distances.select_nth_unstable_by(count, order);
+            distances.truncate(count);
+        }
+        distances.sort_unstable_by(order);
+        distances
+    }
+
     fn distance(&self, first: &Contribution, second: &Contribution) -> f64 {
         let mut kinds = [0.0; Uptake::COUNT];
         let mut distance = 0.0;

@@ -10,6 +10,7 @@ use super::coverage::Coverage;
 
 const COEFFICIENTS: &str = include_str!("../../data/acidity_coefficients.tsv");
 const SEEN: &str = include_str!("../../data/acidity_seen.tsv");
+const HELD_OUT: &str = include_str!("../../data/acidity_held_out.tsv");
 const ERRORS: &str = include_str!("../../data/acidity_errors.tsv");
 
 /// A coefficient of the estimate.
@@ -29,6 +30,19 @@ pub struct Coefficient {
     pub unit: &'static str,
 }
 
+/// A site of the fit.
+#[derive(Clone, Debug)]
+pub(super) struct SeenSite {
+    pub(super) compound: &'static str,
+    pub(super) atom: usize,
+    pub(super) pka_dmso: f64,
+    /// Measured minus estimated.
+    pub(super) residual: f64,
+    /// Predicted minus measured with its scaffold group held out; `None` for a derived value.
+    pub(super) held_out_error: Option<f64>,
+    pub(super) contribution: Contribution,
+}
+
 static TABLE: LazyLock<Vec<Coefficient>> = LazyLock::new(|| {
     rows(COEFFICIENTS)
         .filter_map(|row| coefficient(&row))
@@ -43,9 +57,26 @@ static FORM: LazyLock<Form> = LazyLock::new(|| {
             .map(|coefficient| (coefficient.name, coefficient.role)),
     )
 });
+static STANDARD_ERRORS: LazyLock<Vec<f64>> = LazyLock::new(|| {
+    let errors = TABLE.iter().map(|coefficient| coefficient.standard_error);
+    errors.collect()
+});
+static TRAINING_SITES: LazyLock<Vec<usize>> = LazyLock::new(|| {
+    let sites = TABLE.iter().map(|coefficient| coefficient.training_sites);
+    sites.collect()
+});
+static SEEN_SITES: LazyLock<Vec<SeenSite>> = LazyLock::new(|| {
+    let errors: HashMap<(&str, usize), f64> = rows(HELD_OUT)
+        .filter_map(|row| {
+            let site = (*row.first()?, row.get(1)?.parse().ok()?);
+            Some((site, row.get(3)?.parse().ok()?))
+        })
+        .collect();
+    rows(SEEN).filter_map(|row| seen(&row, &errors)).collect()
+});
 static COVERAGE: LazyLock<Coverage> = LazyLock::new(|| {
-    let sites = rows(SEEN).filter_map(|row| seen(&row)).collect();
-    Coverage::new(sites, form(), values())
+    let sites = seen_sites().iter().map(|site| site.contribution.clone());
+    Coverage::new(sites.collect(), form(), values())
 });
 static TYPICAL_ERRORS: LazyLock<HashMap<&'static str, f64>> = LazyLock::new(|| {
     rows(ERRORS)
@@ -54,8 +85,8 @@ static TYPICAL_ERRORS: LazyLock<HashMap<&'static str, f64>> = LazyLock::new(|| {
 });
 
 /// The text of the tables that the estimate rests on, for a fingerprint of the model.
-pub(crate) fn texts() -> [&'static str; 3] {
-    [COEFFICIENTS, SEEN, ERRORS]
+pub(crate) fn texts() -> [&'static str; 4] {
+    [COEFFICIENTS, SEEN, HELD_OUT, ERRORS]
 }
 
 /// The coefficients of the estimate, in a fixed order.
@@ -78,10 +109,20 @@ pub(super) fn coverage() -> &'static Coverage {
     &COVERAGE
 }
 
-/// Standard error of an estimate for an anion of this class, from cross-validation, pK units.
+/// The sites of the fit, in the order of [`coverage`].
+pub(super) fn seen_sites() -> &'static [SeenSite] {
+    &SEEN_SITES
+}
+
+/// Standard error that thinly supported coefficients bring into an estimate, pK units.
+pub(super) fn error_of_thin_terms(contribution: &Contribution) -> f64 {
+    contribution.error_of_thin_terms(values(), &STANDARD_ERRORS, &TRAINING_SITES)
+}
+
+/// Mean absolute error of estimates for an anion of this class, from cross-validation, pK units.
 pub(super) fn typical_error(class: AnionClass) -> f64 {
     /// Where the table has not even a line for all classes together; it always has.
-    const UNKNOWN: f64 = 2.0;
+    const UNKNOWN: f64 = 1.6;
     let errors = &*TYPICAL_ERRORS;
     let name = format!("{class:?}");
     errors
@@ -113,8 +154,8 @@ fn coefficient(row: &[&'static str]) -> Option<Coefficient> {
     })
 }
 
-/// A site of the fit: compound, atom, pKa, residual, descriptors as `name:value; …`.
-fn seen(row: &[&'static str]) -> Option<Contribution> {
+/// A row of `acidity_seen.tsv`: compound, atom, pKa, residual, descriptors as `name:value; …`.
+fn seen(row: &[&'static str], errors: &HashMap<(&str, usize), f64>) -> Option<SeenSite> {
     let descriptors: Option<Vec<(&'static str, f64)>> = row
         .get(4)?
         .split("; ")
@@ -123,5 +164,13 @@ fn seen(row: &[&'static str]) -> Option<Contribution> {
             Some((name, value.parse().ok()?))
         })
         .collect();
-    Some(form().contribution(&descriptors?))
+    let (compound, atom) = (*row.first()?, row.get(1)?.parse().ok()?);
+    Some(SeenSite {
+        compound,
+        atom,
+        pka_dmso: row.get(2)?.parse().ok()?,
+        residual: row.get(3)?.parse().ok()?,
+        held_out_error: errors.get(&(compound, atom)).copied(),
+        contribution: form().contribution(&descriptors?),
+    })
 }

@@ -1,7 +1,7 @@
 //! Attack on the electrophile: rates, ends of ambident anions, what leaves.
 
 use enolattice_molecule::{AcylDonor, AnionClass, ElectrophileKind, RingHeteroatom};
-use enolattice_reagents::SolventClass;
+use enolattice_reagents::{Cation, SolventClass};
 
 use super::Kinetics;
 use crate::bonding::{self, Bonding, TakenByBase};
@@ -73,7 +73,36 @@ impl<'a> Kinetics<'a> {
             }
             _ => 0.0,
         };
-        Some(rates::addition(nucleophile, *e, &self.medium, self.values) + pair)
+        let carbonyl = self.carbonyl_activation(kind, nucleophile);
+        Some(rates::addition(nucleophile, *e, &self.medium, self.values) + pair + carbonyl)
+    }
+
+    /// What a carbonyl group gains, log10, by binding the metal of the nucleophile or the solvent's O–H.
+    fn carbonyl_activation(&self, kind: &ElectrophileKind, nucleophile: &Nucleophile) -> f64 {
+        let is_carbonyl = bonding::is_claisen(kind)
+            || matches!(
+                kind,
+                ElectrophileKind::Aldehyde { .. }
+                    | ElectrophileKind::Ketone { .. }
+                    | ElectrophileKind::Acyl {
+                        donor: AcylDonor::ChelatingAmide | AcylDonor::Amide | AcylDonor::Thioester,
+                        ..
+                    }
+            );
+        if !is_carbonyl || nucleophile.class == AnionClass::Neutral {
+            0.0
+        } else if self.medium.is_protic() {
+            self.v(P::CARBONYL_PROTIC)
+        } else if self.medium.is_paired()
+            && matches!(
+                self.medium.cation,
+                Cation::Lithium | Cation::Magnesium | Cation::Zinc
+            )
+        {
+            self.v(P::CARBONYL_METAL)
+        } else {
+            0.0
+        }
     }
 
     /// What acyl transfer from an ester loses, log10, because the tetrahedral adduct gives back a nucleophile that is a
@@ -81,6 +110,21 @@ impl<'a> Kinetics<'a> {
     pub(crate) fn return_from_adduct(&self, nucleophile: &Nucleophile, leaving: f64) -> f64 {
         let nucleophile = self.pka(nucleophile.pka_dmso, nucleophile.class);
         -self.v(P::ACYL_BREAKDOWN) * (leaving - nucleophile).max(0.0)
+    }
+
+    /// What acylation of a stabilised anion moves log10 (kO/kC), by class and metal.
+    fn acylation_of_stabilised(&self, class: AnionClass) -> f64 {
+        let is_stabilised = matches!(
+            class,
+            AnionClass::BetaDicarbonyl
+                | AnionClass::CyclicBetaDicarbonyl
+                | AnionClass::CyclicDiester
+        );
+        match self.medium.cation {
+            _ if !is_stabilised => 0.0,
+            Cation::Magnesium => self.v(P::O_ACYL_STABILISED) + self.v(P::O_MAGNESIUM),
+            _ => self.v(P::O_ACYL_STABILISED),
+        }
     }
 
     /// log10 k of opening a three-membered ring against SN2 of ethyl bromide.
@@ -133,15 +177,17 @@ impl<'a> Kinetics<'a> {
     pub(crate) fn oxygen_over_carbon(&self, class: AnionClass) -> Option<f64> {
         let by_leaving = match *self.kind()? {
             ElectrophileKind::Alkyl { leaving, .. } => rates::oxygen_by_leaving_group(leaving),
-            ElectrophileKind::Acyl { donor, .. } => self.v(match donor {
-                AcylDonor::Halide
-                | AcylDonor::Anhydride
-                | AcylDonor::Chloroformate
-                | AcylDonor::CarbamoylChloride
-                | AcylDonor::Dicarbonate => P::O_ACYL_HALIDE,
-                AcylDonor::Sulfonyl => P::O_SULFONYL,
-                _ => P::O_ACYL_MILD,
-            }),
+            ElectrophileKind::Acyl { donor, .. } => {
+                self.v(match donor {
+                    AcylDonor::Halide
+                    | AcylDonor::Anhydride
+                    | AcylDonor::Chloroformate
+                    | AcylDonor::CarbamoylChloride
+                    | AcylDonor::Dicarbonate => P::O_ACYL_HALIDE,
+                    AcylDonor::Sulfonyl => P::O_SULFONYL,
+                    _ => P::O_ACYL_MILD,
+                }) + self.acylation_of_stabilised(class)
+            }
             ElectrophileKind::Silyl { .. } => self.v(P::O_SILYL),
             _ => return None,
         };

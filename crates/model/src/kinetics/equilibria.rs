@@ -94,6 +94,11 @@ impl<'a> Kinetics<'a> {
         self.addition_free_energy(site).map(|dg| self.log10_k(dg))
     }
 
+    /// log10 K of the loss of water from an aldol adduct to the conjugated product and 1 mol/L of water.
+    pub(crate) fn dehydration_log10_k(&self) -> f64 {
+        self.log10_k(self.v(P::DG_DEHYDRATION))
+    }
+
     /// pKa in the medium of the anion first formed by addition at site `i`.
     pub(crate) fn adduct_pka(&self, i: usize) -> f64 {
         match self.product_heteroatom(i) {

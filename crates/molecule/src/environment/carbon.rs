@@ -107,11 +107,31 @@ fn increment(of: Group) -> Option<&'static str> {
 
 /// The acceptor conjugated with the site through the double bond at `vinyl`.
 fn vinylogous_acceptor(molecule: &Molecule, vinyl: usize, site: usize) -> Option<(usize, Group)> {
+    let (next, far, kind) = acceptor_or_vinyl(molecule, vinyl, site)?;
+    if kind.is_acceptor() {
+        return Some((next, kind));
+    }
+    // A second double bond passes the charge on about as well (sorbates).
+    let (end, _, kind) = acceptor_or_vinyl(molecule, next, far)?;
+    (kind.is_acceptor() && end != site).then_some((end, kind))
+}
+
+/// The acceptor on the far end of the double bond at `vinyl`, else a vinyl there, with that end.
+fn acceptor_or_vinyl(
+    molecule: &Molecule,
+    vinyl: usize,
+    from: usize,
+) -> Option<(usize, usize, Group)> {
     let far = double_bonded(molecule, vinyl, 6)?;
-    beyond(molecule, far, vinyl)
-        .filter(|(other, bond)| *bond == Bond::Single && *other != site)
-        .map(|(other, _)| (other, group(molecule, other, far)))
-        .find(|(_, kind)| kind.is_acceptor() && *kind != Group::Ammonium)
+    let ends: Vec<(usize, usize, Group)> = beyond(molecule, far, vinyl)
+        .filter(|(other, bond)| *bond == Bond::Single && *other != from)
+        .map(|(other, _)| (other, far, group(molecule, other, far)))
+        .collect();
+    let acceptor = |kind: Group| kind.is_acceptor() && kind != Group::Ammonium;
+    ends.iter()
+        .find(|(_, _, kind)| acceptor(*kind))
+        .or(ends.iter().find(|(_, _, kind)| *kind == Group::Vinyl))
+        .copied()
 }
 
 impl Surroundings<'_> {

@@ -52,6 +52,8 @@ fn constants(of: Group) -> (f64, f64, f64) {
 /// The constants of OCOR and NHCOR (same source).
 const ACYLOXY: (f64, f64, f64) = (0.39, 0.31, 0.20);
 const ACYLAMINO: (f64, f64, f64) = (0.21, 0.00, 0.00);
+/// The constants of SC6H5 (same source), whose sulfur has less to give than that of SCH3.
+const ARYLTHIO: (f64, f64, f64) = (0.23, 0.07, 0.18);
 
 /// σ of a ring nitrogen in place of CH: (ortho, meta, para), neutral.
 ///
@@ -66,20 +68,52 @@ const AZA_CATION: (f64, f64, f64) = (3.0, 2.1, 2.9);
 /// Read off the ortho-substituted phenols and anilines of the DMSO tables (0.8–1).
 const ORTHO_SHARE: f64 = 0.9;
 
+/// Share of σ that a further acceptor exerts where the ring alone takes a carbanion's charge: what
+/// the strongest has taken is not there for it. The ρ of such rings is about 13 pK, so that two whole
+/// nitro groups would make toluene an acid of pKa 10 (dinitrotoluenes are near 15 to 17; from memory).
+const SHARE_OF_FURTHER: f64 = 0.5;
+
 /// Sum of σ over the six-membered aromatic ring at `ipso`; 0 for other rings.
 pub(crate) fn ring_sigma(molecule: &Molecule, ipso: usize, conjugation: Conjugation) -> f64 {
+    position_sigmas(molecule, ipso, conjugation).iter().sum()
+}
+
+/// The same where the ring alone takes up the charge: the strongest acceptor counts whole, further
+/// ones by a share.
+pub(crate) fn ring_sigma_alone(molecule: &Molecule, ipso: usize) -> f64 {
+    let sigmas = position_sigmas(molecule, ipso, Conjugation::Direct);
+    let strongest = sigmas.iter().copied().fold(0.0, f64::max);
+    let acceptors: f64 = sigmas.iter().filter(|sigma| **sigma > 0.0).sum();
+    let donors: f64 = sigmas.iter().filter(|sigma| **sigma < 0.0).sum();
+    strongest + SHARE_OF_FURTHER * (acceptors - strongest) + donors
+}
+
+/// σ of each of the five positions of the ring beyond `ipso`.
+fn position_sigmas(molecule: &Molecule, ipso: usize, conjugation: Conjugation) -> [f64; 5] {
     let Some(ring) = six_ring(molecule, ipso) else {
-        return 0.0;
+        return [0.0; 5];
     };
     let start = ring.iter().position(|atom| *atom == ipso).unwrap_or(0);
-    (1..6)
-        .map(|step| {
-            let atom = ring[(start + step) % 6];
-            let distance = step.min(6 - step);
-            ring_nitrogen(molecule, atom, distance)
-                + substituents(molecule, ring, atom, distance, conjugation)
-        })
-        .sum()
+    [1, 2, 3, 4, 5].map(|step: usize| {
+        let atom = ring[(start + step) % 6];
+        let distance = step.min(6 - step);
+        ring_nitrogen(molecule, atom, distance)
+            + substituents(molecule, ring, atom, distance, conjugation)
+    })
+}
+
+/// Whether a nitro or acyl group stands para to `ipso` and takes the charge through the ring as
+/// the quinoid resonance form has it. Ortho groups are turned out of the plane.
+pub(crate) fn has_quinoid_acceptor(molecule: &Molecule, ipso: usize) -> bool {
+    let Some(ring) = six_ring(molecule, ipso) else {
+        return false;
+    };
+    let start = ring.iter().position(|atom| *atom == ipso).unwrap_or(0);
+    let para = ring[(start + 3) % 6];
+    molecule.neighbours(para).iter().any(|(other, _)| {
+        let kind = group(molecule, *other, para);
+        !ring.contains(other) && (kind == Group::Nitro || kind.is_carbonyl())
+    })
 }
 
 /// The six-membered aromatic ring that holds `atom`.
@@ -119,6 +153,11 @@ fn on_ring(molecule: &Molecule, atom: usize, from: usize) -> (f64, f64, f64) {
     match kind {
         Group::Alkoxy if drawn_away => ACYLOXY,
         Group::Amino if drawn_away => ACYLAMINO,
+        Group::Sulfanyl
+            if beyond(molecule, atom, from).any(|(far, _)| molecule.atoms()[far].aromatic) =>
+        {
+            ARYLTHIO
+        }
         _ => constants(kind),
     }
 }
@@ -137,8 +176,8 @@ fn substituents(
         .map(|(other, _)| {
             let (meta, para, para_minus) = on_ring(molecule, *other, atom);
             let conjugated = match conjugation {
-                Conjugation::Direct if para_minus > 0.0 => para_minus,
-                _ => para,
+                Conjugation::Direct => para_minus,
+                Conjugation::Insulated => para,
             };
             match distance {
                 1 => ORTHO_SHARE * meta.max(conjugated),

@@ -3,7 +3,9 @@
 use super::carbon::Surroundings;
 use super::descriptors::Descriptors;
 use super::group::{Group, beyond, double_bonded, group, is_saturated_carbon, is_trigonal};
-use super::hammett::{Conjugation, inductive, ring_sigma, six_ring};
+use super::hammett::{
+    Conjugation, has_quinoid_acceptor, inductive, ring_sigma, ring_sigma_alone, six_ring,
+};
 use super::skeleton::smallest_ring;
 use crate::Bond;
 
@@ -15,13 +17,23 @@ impl Surroundings<'_> {
             2 => "σ of aryl, charge shared by two",
             _ => "σ of aryl, charge shared by three",
         };
+        let quinoid_name = match sharing {
+            0 | 1 => "nitro or acyl through aryl, alone",
+            _ => "nitro or acyl through aryl, charge shared",
+        };
         for aryl in self.with(|kind| kind == Group::Aryl) {
             let in_site_ring = self.in_cyclopentadiene
                 && smallest_ring(self.molecule, &[aryl, self.site]) == Some(5);
             match six_ring(self.molecule, aryl) {
                 Some(ring) => {
-                    let sigma = ring_sigma(self.molecule, aryl, Conjugation::Direct);
+                    let sigma = if sharing <= 1 {
+                        ring_sigma_alone(self.molecule, aryl)
+                    } else {
+                        ring_sigma(self.molecule, aryl, Conjugation::Direct)
+                    };
                     descriptors.add(sigma_name, sigma);
+                    let quinoid = f64::from(has_quinoid_acceptor(self.molecule, aryl));
+                    descriptors.add(quinoid_name, quinoid);
                     if !in_site_ring {
                         let fused = self.fused_rings(ring);
                         let name = if self.acceptors() == 0 {
@@ -30,6 +42,10 @@ impl Surroundings<'_> {
                             "ring fused to aryl, with acceptor"
                         };
                         descriptors.add(name, fused as f64);
+                        if self.lies_between_fused_rings(aryl, ring) {
+                            let others = self.groups.len().saturating_sub(1);
+                            descriptors.add("group beside peri-crowded aryl", others as f64);
+                        }
                     }
                 }
                 None => descriptors.add("five-membered heteroaryl", 1.0),
@@ -38,6 +54,11 @@ impl Surroundings<'_> {
         if self.in_cyclopentadiene {
             return;
         }
+        let unsaturated =
+            self.count(|kind| matches!(kind, Group::Aryl | Group::Vinyl | Group::Alkynyl));
+        if unsaturated == 1 && self.acceptors() == 0 && self.vinylogous.is_empty() {
+            descriptors.add("nothing but one aryl or vinyl", 1.0);
+        }
         let crowded = match (self.count(|kind| kind == Group::Aryl), self.acceptors()) {
             (3, _) => "third aryl",
             (2, 1..) => "second aryl beside acceptor",
@@ -45,6 +66,22 @@ impl Surroundings<'_> {
             _ => return,
         };
         descriptors.add(crowded, 1.0);
+    }
+
+    /// Whether both ring atoms beside `aryl` bear fused rings, as in 9-anthryl.
+    fn lies_between_fused_rings(&self, aryl: usize, ring: &[usize]) -> bool {
+        self.molecule
+            .neighbours(aryl)
+            .iter()
+            .filter(|(other, _)| ring.contains(other))
+            .all(|(other, _)| {
+                self.molecule
+                    .rings()
+                    .iter()
+                    .filter(|fused| fused.contains(other))
+                    .count()
+                    >= 2
+            })
     }
 
     fn fused_rings(&self, ring: &[usize]) -> usize {
@@ -62,6 +99,11 @@ impl Surroundings<'_> {
     }
 
     pub(super) fn carbonyl_terms(&self, descriptors: &mut Descriptors) {
+        descriptors.add(
+            "third acceptor",
+            self.count(|kind| kind.is_acceptor() && kind != Group::Ammonium)
+                .saturating_sub(2) as f64,
+        );
         for (carbonyl, kind) in &self.groups {
             if !kind.is_carbonyl() {
                 continue;
@@ -175,8 +217,25 @@ impl Surroundings<'_> {
                     self.imino_terms(descriptors, *atom);
                     continue;
                 }
+                Group::Silyl | Group::Phosphanyl => {
+                    let aryls = beyond(self.molecule, *atom, self.site)
+                        .filter(|(far, _)| self.molecule.atoms()[*far].aromatic)
+                        .count();
+                    descriptors.add("aryl on silyl or phosphanyl", aryls as f64);
+                    continue;
+                }
+                Group::Fluoro => {
+                    self.lone_pairs_beside_sulfonyl(descriptors);
+                    continue;
+                }
                 _ => continue,
             };
+            if *kind == Group::Alkoxy {
+                if self.molecule.atoms()[*atom].hydrogens > 0 {
+                    descriptors.add("hydroxy in place of alkoxy", 1.0);
+                }
+                self.lone_pairs_beside_sulfonyl(descriptors);
+            }
             if self.molecule.atoms()[*atom].aromatic {
                 continue;
             }
@@ -186,6 +245,14 @@ impl Surroundings<'_> {
             if drawn_away {
                 descriptors.add(name, 1.0);
             }
+        }
+    }
+
+    /// The carbanion beside a sulfonyl is pyramidal and keeps its charge: lone pairs repel it.
+    fn lone_pairs_beside_sulfonyl(&self, descriptors: &mut Descriptors) {
+        let planar = self.count(Group::is_carbonyl) > 0 || self.has(Group::Nitro);
+        if self.count(Group::is_sulfonyl) > 0 && !planar {
+            descriptors.add("alkoxy or fluoro beside sulfonyl", 1.0);
         }
     }
 
@@ -200,6 +267,14 @@ impl Surroundings<'_> {
                 "aryl at far end of azaallyl, with acceptor"
             };
             descriptors.add(name, aryls as f64);
+            let substituents = |atom, from| {
+                beyond(self.molecule, atom, from)
+                    .filter(|(other, _)| self.molecule.atoms()[*other].element != 1)
+                    .count()
+            };
+            if substituents(far, nitrogen) >= 2 && substituents(self.site, nitrogen) >= 2 {
+                descriptors.add("two groups at each end of azaallyl", 1.0);
+            }
             let donors = beyond(self.molecule, far, nitrogen)
                 .filter(|(atom, _)| matches!(self.molecule.atoms()[*atom].element, 7 | 8 | 16))
                 .count();
@@ -231,6 +306,9 @@ impl Surroundings<'_> {
                 _ => "vinylogous nitrile or sulfone",
             };
             descriptors.add(name, 1.0);
+            if self.acceptors() > 0 {
+                descriptors.add("vinylogous acceptor beside acceptor", 1.0);
+            }
         }
     }
 }

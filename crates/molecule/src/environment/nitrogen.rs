@@ -2,7 +2,7 @@
 
 use super::descriptors::Descriptors;
 use super::group::{Group, beyond, double_bonded, group, is_trigonal};
-use super::hammett::{Conjugation, inductive, ring_sigma};
+use super::hammett::{Conjugation, has_quinoid_acceptor, inductive, ring_sigma};
 use super::skeleton::smallest_ring;
 use crate::{AnionClass, Bond, Molecule};
 
@@ -295,6 +295,10 @@ fn nitrogen_corrections(
             d.add("σ of aryl on amide-like nitrogen", sigma);
         } else {
             d.add("σ of aniline", sigma);
+            d.add(
+                "nitro or acyl through aniline",
+                f64::from(has_quinoid_acceptor(molecule, *aryl)),
+            );
             if i > 0 {
                 d.add("second aryl on aniline", 1.0);
             }
@@ -302,6 +306,14 @@ fn nitrogen_corrections(
     }
     for heteroatom in &s.heteroatoms {
         let oxygen = molecule.atoms()[*heteroatom].element == 8;
+        let aryls = molecule
+            .neighbours(*heteroatom)
+            .iter()
+            .filter(|(far, _)| molecule.atoms()[*far].aromatic)
+            .count();
+        if !oxygen && aryls > 0 {
+            d.add("aryl on amino of hydrazine", aryls as f64);
+        }
         d.add(
             match class {
                 AnionClass::ImideNitrogen => "oxygen or amino on imide-like nitrogen",

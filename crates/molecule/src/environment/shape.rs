@@ -6,6 +6,10 @@ use super::group::{Group, beyond, group, is_saturated_carbon};
 use super::hammett::inductive;
 use super::skeleton::{Bridge, cyclopentadiene_ring, smallest_ring};
 
+/// How much a triflyl asks for a planar carbanion, against nitro: its charge is half way out on
+/// oxygen and CF3, that beside other sulfonyls stays at a pyramidal carbon (from memory).
+const TRIFLYL_PLANARITY: f64 = 0.6;
+
 impl Surroundings<'_> {
     /// Alkyl in place of H: what it costs depends on what carries the charge.
     pub(super) fn alkyl_terms(&self, descriptors: &mut Descriptors) {
@@ -16,6 +20,14 @@ impl Surroundings<'_> {
         for alkyl in self.with(|kind| kind == Group::Alkyl) {
             descriptors.add("σI of alkyl", inductive(self.molecule, alkyl, self.site));
         }
+        if self.has(Group::Phosphonium) {
+            descriptors.add("alkyl beside phosphonium", alkyls as f64);
+            return;
+        }
+        if smallest_ring(self.molecule, &[self.site]) == Some(3) {
+            // The ring's own term has its two alkyl groups in it.
+            return;
+        }
         if self.acceptors() >= 2 && !self.has(Group::Nitro) {
             self.alkyl_between_acceptors(descriptors);
             return;
@@ -24,9 +36,6 @@ impl Surroundings<'_> {
         descriptors.add(name, count as f64);
         if name == "first alkyl beside carbonyl" && alkyls > 1 {
             descriptors.add("second alkyl beside carbonyl", 1.0);
-        }
-        if self.has(Group::Imino) {
-            descriptors.add("alkyl beside imino", alkyls as f64);
         }
     }
 
@@ -111,14 +120,16 @@ impl Surroundings<'_> {
             None => self.one_carbonyl_in_ring(descriptors),
         }
         if smallest_ring(molecule, &[self.site]) == Some(3) {
-            let name = if self.has(Group::Nitro) {
-                "cyclopropane beside nitro"
+            let (name, count) = if self.has(Group::Nitro) {
+                ("cyclopropane beside nitro or triflyl", 1.0)
+            } else if self.has(Group::Triflone) {
+                ("cyclopropane beside nitro or triflyl", TRIFLYL_PLANARITY)
             } else if self.count(Group::is_carbonyl) > 0 {
-                "cyclopropane beside carbonyl"
+                ("cyclopropane beside carbonyl", 1.0)
             } else {
-                "cyclopropane beside other acceptor"
+                ("cyclopropane beside other acceptor", 1.0)
             };
-            descriptors.add(name, 1.0);
+            descriptors.add(name, count);
         }
         match self.bridge {
             Bridge::Spanning => descriptors.add("in bridged bicycle", 1.0),

@@ -42,7 +42,7 @@ pub(crate) fn bridge(molecule: &Molecule, atom: usize) -> Bridge {
             if in_first && in_second && is_junction(molecule, atom, first, second) {
                 heads += 1;
                 smallest_head = Some(smallest_head.map_or(bicycle, |s: usize| s.min(bicycle)));
-            } else if (in_first || in_second) && bicycle < RELAXED_BICYCLE {
+            } else if (in_first || in_second) && bicycle < SMALLEST_BICYCLE {
                 spanning = true;
             }
         }

@@ -179,12 +179,38 @@ mod tests {
         }
     }
 
-    /// Marks to beat: 1.48 and 1.63 of an independent fit of the same form on the same rows.
+    /// Marks to beat: 1.48 and 1.63 of an independent fit of the same form on the same rows. No
+    /// compound inside what the fit has seen may be off by more than 6.
     #[test]
     fn held_out_compounds_are_estimated_within_the_mark() {
         let (one_in_five, scaffold_group) = errors_of_held_out().unwrap();
-        assert!(one_in_five < 1.2, "{one_in_five}");
-        assert!(scaffold_group < 1.3, "{scaffold_group}");
+        assert!(one_in_five < 0.9, "{one_in_five}");
+        assert!(scaffold_group < 1.0, "{scaffold_group}");
+    }
+
+    /// The page, the errors and the σ that the model reads are those of this validation, and as many
+    /// values as a normal distribution has lie within one and two σ, a few in a hundred apart.
+    #[test]
+    fn sigma_covers_what_was_held_out() {
+        let stored = Places::in_the_source_tree().model_data;
+        let text = std::fs::read_to_string(stored.join("acidity_held_out.tsv")).unwrap();
+        let rows: Vec<(f64, f64)> = text
+            .lines()
+            .filter_map(|line| {
+                let mut cells = line.split('\t').skip(3);
+                Some((cells.next()?.parse().ok()?, cells.next()?.parse().ok()?))
+            })
+            .collect();
+        assert!(rows.len() > 400);
+        let within = |k: f64| {
+            let inside = rows
+                .iter()
+                .filter(|(error, sigma)| error.abs() <= k * sigma);
+            inside.count() as f64 / rows.len() as f64
+        };
+        assert!((0.62..0.82).contains(&within(1.0)), "{}", within(1.0));
+        assert!((0.92..0.98).contains(&within(2.0)), "{}", within(2.0));
+        assert!(rows.iter().all(|(error, _)| error.abs() <= 6.0));
     }
 
     /// Physical signs: acceptors acidify, saturation takes back, σ acidifies.
@@ -193,10 +219,17 @@ mod tests {
         let (terms, observations) = load().unwrap();
         let fit = Fit::new(&terms, &observations.rows).unwrap();
         for (term, value) in terms.iter().zip(&fit.values) {
-            let sign = match term.role_text {
-                "saturation" => 1.0,
-                text if text.starts_with("group") => 1.0,
-                _ if term.name.starts_with('σ') => -1.0,
+            let sign = match (term.role_text, term.name) {
+                ("saturation", _) => 1.0,
+                (text, _) if text.starts_with("group") => 1.0,
+                (_, name) if name.starts_with('σ') => -1.0,
+                (_, name) if name.starts_with("nitro or acyl through") => -1.0,
+                (_, name) if name.starts_with("cyclopropane beside") => 1.0,
+                (_, "cyclopentadienide ring" | "lactone" | "azolium C–H" | "aza in azole") => {
+                    -1.0
+                }
+                (_, "antiaromatic enolate" | "at bridgehead") => 1.0,
+                (_, "two groups at each end of azaallyl") => 1.0,
                 _ => continue,
             };
             assert!(sign * value > 0.0, "{}: {value}", term.name);

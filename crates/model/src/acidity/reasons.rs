@@ -152,14 +152,4 @@ mod tests {
             "{found:?}"
         );
     }
-
-    #[test]
-    fn a_site_without_kin_has_no_neighbours() {
-        let hydrazoic = of("CC(C)NN");
-        assert!(
-            hydrazoic
-                .iter()
-                .all(|site| reasons(site).neighbours.len() <= SHOWN)
-        );
-    }
 }

@@ -111,6 +111,7 @@ impl Surroundings<'_> {
             match kind {
                 Group::Aldehyde => descriptors.add("aldehyde in place of ketone", 1.0),
                 Group::Thioester => descriptors.add("sulfur in place of ester oxygen", 1.0),
+                Group::Imidoyl => descriptors.add("imine or hydrazone in place of amide", 1.0),
                 _ => {}
             }
             let in_ring = smallest_ring(self.molecule, &[self.site, *carbonyl]).is_some();

@@ -318,6 +318,11 @@ fn nitrogen_corrections(
             match class {
                 AnionClass::ImideNitrogen => "oxygen or amino on imide-like nitrogen",
                 _ if oxygen => "oxygen on N–H",
+                AnionClass::ArylNitrogen | AnionClass::AlkylNitrogen
+                    if double_bonded(molecule, *heteroatom, 6).is_some() =>
+                {
+                    "imino on amine or aniline (hydrazone)"
+                }
                 AnionClass::ArylNitrogen | AnionClass::AlkylNitrogen => "amino on amine or aniline",
                 _ => "amino on amide-like nitrogen",
             },

@@ -58,6 +58,15 @@ impl Medium<'_> {
         !self.is_protic() && self.solvent.record.permittivity < 12.0
     }
 
+    /// Whether the anions are contact pairs or aggregates with a metal that holds oxygen firmly.
+    pub(crate) fn binds_oxygen(&self) -> bool {
+        self.is_paired()
+            && matches!(
+                self.cation,
+                Cation::Lithium | Cation::Magnesium | Cation::Zinc
+            )
+    }
+
     /// Class of the solvent.
     pub(crate) fn class(&self) -> SolventClass {
         self.solvent.record.class

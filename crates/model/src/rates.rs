@@ -60,12 +60,7 @@ pub(crate) fn exchange_of_carbons(
     medium: &Medium,
     values: &Values,
 ) -> f64 {
-    let is_held = medium.is_paired()
-        && matches!(
-            medium.cation,
-            Cation::Lithium | Cation::Magnesium | Cation::Zinc
-        );
-    let slope = if is_held {
+    let slope = if medium.binds_oxygen() {
         P::EXCHANGE_PAIRED_BRONSTED
     } else {
         P::EXCHANGE_BRONSTED
@@ -100,12 +95,7 @@ fn exchange_with_slope(
     let by_class = match (class, medium.is_protic()) {
         (AnionClass::Nitronate, true) => values.get(P::EXCHANGE_NITRO_PROTIC),
         (AnionClass::Nitronate, false) => values.get(P::EXCHANGE_NITRO),
-        (
-            AnionClass::BetaDicarbonyl
-            | AnionClass::CyclicBetaDicarbonyl
-            | AnionClass::CyclicDiester,
-            _,
-        ) => values.get(P::EXCHANGE_DICARBONYL),
+        (class, _) if class.is_dicarbonyl() => values.get(P::EXCHANGE_DICARBONYL),
         (AnionClass::Nitrile, _) => values.get(P::EXCHANGE_CYANO),
         _ => 0.0,
     };

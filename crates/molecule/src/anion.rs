@@ -64,4 +64,14 @@ impl AnionClass {
     pub fn is_carbanion(self) -> bool {
         self <= AnionClass::Carbanion
     }
+
+    /// Whether two carbonyl groups share the charge.
+    pub fn is_dicarbonyl(self) -> bool {
+        matches!(
+            self,
+            AnionClass::BetaDicarbonyl
+                | AnionClass::CyclicBetaDicarbonyl
+                | AnionClass::CyclicDiester
+        )
+    }
 }

@@ -12,6 +12,7 @@ impl<'a> Kinetics<'a> {
     /// Whether the bond-forming step gives the base back: the adduct's anion is about as strong a base
     /// as the carbanion was.
     pub(crate) fn regenerates_base(&self) -> bool {
+        // within this many pK units the next substrate is still ionised (a working rule, common practice)
         const AS_STRONG_PK: f64 = 8.0;
         match self.kind().and_then(bonding::adduct_acid) {
             Some((pka, _)) => {
@@ -93,12 +94,7 @@ impl<'a> Kinetics<'a> {
             0.0
         } else if self.medium.is_protic() {
             self.v(P::CARBONYL_PROTIC)
-        } else if self.medium.is_paired()
-            && matches!(
-                self.medium.cation,
-                Cation::Lithium | Cation::Magnesium | Cation::Zinc
-            )
-        {
+        } else if self.medium.binds_oxygen() {
             self.v(P::CARBONYL_METAL)
         } else {
             0.0
@@ -114,14 +110,8 @@ impl<'a> Kinetics<'a> {
 
     /// What acylation of a stabilised anion moves log10 (kO/kC), by class and metal.
     fn acylation_of_stabilised(&self, class: AnionClass) -> f64 {
-        let is_stabilised = matches!(
-            class,
-            AnionClass::BetaDicarbonyl
-                | AnionClass::CyclicBetaDicarbonyl
-                | AnionClass::CyclicDiester
-        );
         match self.medium.cation {
-            _ if !is_stabilised => 0.0,
+            _ if !class.is_dicarbonyl() => 0.0,
             Cation::Magnesium => self.v(P::O_ACYL_STABILISED) + self.v(P::O_MAGNESIUM),
             _ => self.v(P::O_ACYL_STABILISED),
         }
@@ -192,9 +182,7 @@ impl<'a> Kinetics<'a> {
             _ => return None,
         };
         let by_class = match class {
-            AnionClass::BetaDicarbonyl
-            | AnionClass::CyclicBetaDicarbonyl
-            | AnionClass::CyclicDiester => P::O_BETA_DICARBONYL,
+            class if class.is_dicarbonyl() => P::O_BETA_DICARBONYL,
             AnionClass::Ketone | AnionClass::ArylKetone | AnionClass::Aldehyde => P::O_KETONE,
             AnionClass::Ester | AnionClass::Amide => P::O_ESTER,
             AnionClass::Nitronate => P::O_NITRONATE,

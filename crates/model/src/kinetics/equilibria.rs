@@ -19,12 +19,7 @@ const PKA_ADDUCT: f64 = 30.0;
 impl<'a> Kinetics<'a> {
     /// ΔG° of adding the electrophile to a site, neutral to neutral, kcal/mol at the temperature; `None`: irreversible.
     pub(crate) fn addition_free_energy(&self, site: &CarbonSite) -> Option<f64> {
-        let stabilised = matches!(
-            site.acid.class,
-            AnionClass::BetaDicarbonyl
-                | AnionClass::CyclicBetaDicarbonyl
-                | AnionClass::CyclicDiester
-        );
+        let stabilised = site.acid.class.is_dicarbonyl();
         let at_25 = match self.cell.electrophile.group.as_ref()?.kind {
             ElectrophileKind::Michael {
                 beta_alkyl,

@@ -1,7 +1,7 @@
 //! What else befalls electrophile, products and base: elimination, its own C–H, solvolysis, loss of water, decay.
 
 use enolattice_molecule::{AcylDonor, AlkylGroup, AnionClass, Cumulene, ElectrophileKind};
-use enolattice_reagents::{Cation, Component, Decay, SolventClass};
+use enolattice_reagents::{Component, Decay, SolventClass};
 use enolattice_units::math;
 
 use super::{Kinetics, PKA_WATER};
@@ -156,12 +156,13 @@ impl<'a> Kinetics<'a> {
     pub(super) fn loss_of_water(&self, at_25: P, base_pka: f64) -> f64 {
         // lithium aldolates in ethers are chelated and keep their oxygen (common practice)
         const CHELATED: f64 = -4.0;
-        let holds = matches!(
-            self.medium.cation,
-            Cation::Lithium | Cation::Magnesium | Cation::Zinc
-        ) && self.medium.is_paired();
         let weaker = (self.pka(PKA_WATER, AnionClass::Hydroxide) - base_pka).max(0.0);
-        let at_25 = self.v(at_25) + if holds { CHELATED } else { 0.0 }
+        let at_25 = self.v(at_25)
+            + if self.medium.binds_oxygen() {
+                CHELATED
+            } else {
+                0.0
+            }
             - self.v(P::DEHYDRATION_BRONSTED) * weaker;
         math::exp10(rates::at_temperature(
             at_25,

@@ -209,13 +209,13 @@ impl<'a> Kinetics<'a> {
         self.cell.pair.by_site.get(i)?.as_ref()?.carbon.as_ref()
     }
 
-    /// Rate of deprotonation of a substrate site relative to its most acidic one beyond what the
-    /// Brønsted term of [`rates::exchange`] gives: hydrogens and bulk, and the lower sensitivity of
-    /// competition within one molecule.
+    /// log10 of the rate of deprotonation of a substrate site relative to its most acidic one beyond what
+    /// the Brønsted term of [`rates::exchange`] gives: hydrogens and bulk, and, between sites of one
+    /// kind, the lower sensitivity of competition within one molecule.
     pub(crate) fn kinetic_weight(&self, slow: usize, by_base: bool) -> f64 {
         let carbon = &self.cell.substrate.carbon;
         let Some(site) = carbon.get(slow) else {
-            return 1.0;
+            return 0.0;
         };
         let first = &carbon[0];
         let bulk = if by_base {
@@ -235,8 +235,12 @@ impl<'a> Kinetics<'a> {
         } else {
             P::EXCHANGE_BRONSTED
         };
-        let excess = (self.v(beta) - self.v(P::KINETIC_BRONSTED)) * delta;
-        site.hydrogens / first.hydrogens * math::exp10(excess - hindrance(site) + hindrance(first))
+        let excess = if site.acid.class == first.acid.class {
+            (self.v(beta) - self.v(P::KINETIC_BRONSTED)) * delta
+        } else {
+            0.0
+        };
+        math::log10(site.hydrogens / first.hydrogens) + excess - hindrance(site) + hindrance(first)
     }
 
     /// Whether the substrate condenses with itself by Claisen condensation.

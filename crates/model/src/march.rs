@@ -305,7 +305,7 @@ mod tests {
     use crate::parameters::Values;
     use crate::program::Charge;
     use crate::reference::integrate;
-    use crate::sample::{cells, model};
+    use crate::sample::{cell, cells, model};
 
     #[test]
     fn substrate_is_conserved_to_rounding() {
@@ -391,5 +391,40 @@ mod tests {
             "{} for {log10_k}",
             quotient.log10()
         );
+    }
+
+    #[test]
+    fn steps_of_very_different_speed_leave_every_amount_finite() {
+        // a diffusion-controlled attack of the dianion beside adducts that fall apart at once
+        let model = model();
+        for (substrate, base, electrophile, solvent, temperature_c) in [
+            ("CC(=O)CC(C)=O", "LDA", "CCOC(=O)N=NC(=O)OCC", "DMF", 60.0),
+            (
+                "CC(=O)CC(C)=O",
+                "TMPMgCl.LiCl",
+                "CCOC(=O)N=NC(=O)OCC",
+                "MeCN",
+                -20.0,
+            ),
+            (
+                "CC(=O)CC(C)=O",
+                "TMPMgCl.LiCl",
+                "O=S(=O)(N=Cc1ccccc1)c1ccc(C)cc1",
+                "MeCN",
+                -20.0,
+            ),
+        ] {
+            let mut cell = cell(&model, substrate, base, electrophile, solvent);
+            cell.conditions.temperature_c = temperature_c;
+            cell.conditions.formation_temperature_c = temperature_c;
+            let charge = Charge::of(&cell);
+            let values = Values::means();
+            let start = charge.start();
+            let formed = march(&charge.forming(&cell, &values, [Nudge::default()]), [start]);
+            let [end] = march(&charge.reacting(&cell, &values, [Nudge::default()]), formed);
+            assert!(end.0.iter().all(|x| x.is_finite()), "{base}: {end:?}");
+            let off = end.substrate_balance() / cell.conditions.concentration_m - 1.0;
+            assert!(off.abs() < 1e-6, "{base}: {off:e}");
+        }
     }
 }

@@ -63,7 +63,7 @@ impl Draw {
 }
 
 /// Raised whenever the meaning of a score changes without a change of data.
-const ARITHMETIC_VERSION: u32 = 3;
+const ARITHMETIC_VERSION: u32 = 4;
 
 /// The model with its library and parameters.
 #[derive(Debug)]

@@ -10,8 +10,8 @@ use crate::parameters::{P, Values};
 /// log10 of the largest second-order rate constant: diffusion in a mobile solvent.
 /// Smoluchowski's 8RT/(3η) is 7·10⁹ L/(mol s) at 1 mPa s and 25 °C.
 const DIFFUSION_LIMIT: f64 = 9.5;
-/// Exchange faster than this changes no selectivity; a cap keeps the network solvable.
-const EXCHANGE_CAP: f64 = 6.0;
+/// log10 k of exchange: faster changes no selectivity, and a cap keeps the network solvable.
+pub(crate) const EXCHANGE_CAP: f64 = 6.0;
 /// The pKa (DMSO) at which the SN2 anchor is given.
 const SN2_ANCHOR_PKA: f64 = 22.0;
 

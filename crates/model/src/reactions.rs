@@ -4,8 +4,23 @@ mod acids;
 mod attacks;
 mod losses;
 
+use enolattice_units::math;
+
 use crate::kinetics::Kinetics;
 use crate::network::{Reaction, Species};
+
+/// Fastest return of an adduct that the network distinguishes, 1/s: three decades below the vibration of
+/// a bond, and faster than any proton transfer at the concentrations of a pot. Beyond it only the ratio
+/// of the two rates matters, and the elimination of the solvers would lose its digits.
+const FASTEST_RETURN: f64 = 1e9;
+
+/// Rates of an addition and of its return, `k₋ = k·10^log10_return`, slowed together where the return is
+/// faster than [`FASTEST_RETURN`].
+fn forth_and_back(k: f64, log10_return: f64) -> (f64, f64) {
+    let ratio = math::exp10(log10_return);
+    let forth = k.min(FASTEST_RETURN / ratio);
+    (forth, forth * ratio)
+}
 
 /// Collects reactions.
 pub(crate) struct Reactions<'a> {

@@ -186,7 +186,7 @@ impl Reactions<'_> {
                 let by_base = base.anion == Species::Base;
                 let weight = match acid.anion {
                     Species::Carbanion(site) => k.kinetic_weight(site, by_base),
-                    _ => 1.0,
+                    _ => 0.0,
                 };
                 let delta = base.pka - acid.pka;
                 let log_k = match k.cell.base.record.kind {
@@ -203,14 +203,12 @@ impl Reactions<'_> {
                     }
                     _ => rates::exchange(delta, acid.class, &k.medium, k.values),
                 };
-                self.transfer(acid, base, math::exp10(log_k) * weight);
+                let fastest = rates::EXCHANGE_CAP + delta.min(0.0);
+                self.transfer(acid, base, math::exp10((log_k + weight).min(fastest)));
             }
         }
         for (i, a) in slow.iter().enumerate() {
             for b in &slow[i + 1..] {
-                if a.anion == Species::Dianion || b.anion == Species::Dianion {
-                    continue;
-                }
                 let slower = if b.class == AnionClass::Nitronate {
                     b.class
                 } else {

@@ -22,6 +22,12 @@ impl Reactions<'_> {
                 Some(_) => k.attack(&nucleophile).map_or(0.0, math::exp10) * nudge,
                 None => 0.0,
             };
+            let (rate, back) = match k.addition_log10_k(site) {
+                Some(log10_k) if !k.acylates_reversibly() => {
+                    super::forth_and_back(rate, k.adduct_pka(i) - log10_k - k.site_pka(site))
+                }
+                _ => (rate, 0.0),
+            };
             let anion = Species::Carbanion(i);
             let e = Some(Species::Electrophile);
             let gives = if k.bonding() == Bonding::Substitution {
@@ -34,12 +40,6 @@ impl Reactions<'_> {
                 None => self.add(anion, e, &[gives], rate),
             }
             self.return_of_acyl_group(i, site, rate);
-            let back = match k.addition_log10_k(site) {
-                Some(log10_k) if !k.acylates_reversibly() => {
-                    rate * math::exp10(k.adduct_pka(i) - log10_k - k.site_pka(site))
-                }
-                _ => 0.0,
-            };
             self.add(
                 Species::ProductAnion(i),
                 None,

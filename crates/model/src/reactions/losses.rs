@@ -83,15 +83,21 @@ impl Reactions<'_> {
             } else {
                 0.0
             };
-            let log_k = rates::addition(&nucleophile, e, &k.medium, k.values) + breakdown;
+            let rate =
+                math::exp10(rates::addition(&nucleophile, e, &k.medium, k.values) + breakdown);
+            let log10_return = dimer_anion - log10_k - k.site_pka(site);
+            let (forth, back) = if claisen {
+                (rate, rate * math::exp10(log10_return))
+            } else {
+                super::forth_and_back(rate, log10_return)
+            };
             let anion = Species::Carbanion(i);
             self.add(
                 anion,
                 Some(Species::Substrate),
                 &[Species::DimerAnion],
-                math::exp10(log_k),
+                forth,
             );
-            let back = math::exp10(log_k - log10_k - k.site_pka(site) + dimer_anion);
             if claisen {
                 let alkoxide = k.cell.base.record.kind == BaseKind::Alkoxide;
                 let by_base = if alkoxide { back } else { 0.0 };

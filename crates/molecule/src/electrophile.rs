@@ -8,7 +8,6 @@ mod conjugate;
 mod cumulene;
 mod donors;
 mod groups;
-mod hammett;
 mod imine;
 mod kind;
 mod matching;

@@ -12,6 +12,7 @@ mod shape;
 mod skeleton;
 
 use crate::{AnionClass, Bond, Molecule};
+pub(crate) use hammett::{Conjugation, ring_sigma};
 
 /// A candidate acidic X–H with what a group-contribution estimate needs to know of it.
 #[derive(Clone, Debug)]

@@ -40,7 +40,7 @@ impl Molecule {
         } else {
             mol::read_mol_with_diagnostics(block)
         };
-        let molecule = read.map_err(|error| unreadable(&error.to_string()))?.mol;
+        let molecule = read.map_err(|error| unreadable(&fault(&error)))?.mol;
         written(&molecule)
     }
 }
@@ -90,6 +90,24 @@ fn too_large(size: &str) -> StructureError {
         ),
         "give a smaller molecule or a model compound with the same reacting group",
     )
+}
+
+/// What is wrong, in our words.
+fn fault(error: &mol::MolParseError) -> String {
+    use mol::MolParseError as E;
+    match error {
+        E::ResourceLimit { .. } => "it is too large".to_owned(),
+        E::InvalidHeader { line, .. } => format!("line {line} does not belong to the heading"),
+        E::InvalidCountLine { line, .. } => format!("line {line} does not count atoms and bonds"),
+        E::InvalidAtomLine { line, .. } => format!("line {line} is no line of an atom"),
+        E::InvalidBondLine { line, .. } => format!("line {line} is no line of a bond"),
+        E::InvalidPropertyLine { line, .. } => format!("line {line} is no line of a property"),
+        E::UnknownElement { symbol, line } => {
+            format!("`{}` in line {line} is no element", symbol.escape_debug())
+        }
+        E::UnexpectedEnd | E::Io(_) => "it ends before all atoms and bonds are there".to_owned(),
+        E::V3000ParseError { line, .. } => format!("line {line} is not of the V3000 form"),
+    }
 }
 
 fn unreadable(why: &str) -> StructureError {

@@ -47,17 +47,62 @@ impl Pattern {
     /// Whether the molecule contains each of the patterns; aromaticity is perceived once for all.
     pub fn each_in(patterns: &[Pattern], molecule: &Molecule) -> Vec<bool> {
         let config = MatchConfig::default();
-        let atoms = molecule.atoms.iter();
-        let elements = atoms.fold(0, |all, atom| all | element_bit(atom.element));
-        let mut bonds = molecule.neighbours.iter().flatten();
-        let has_triple_bond = bonds.any(|(_, bond)| *bond == Bond::Triple);
+        let has = Has::of(molecule);
         smarts::with_perceived_target(&molecule.kekule, |target| {
-            let has = |pattern: &Pattern| {
-                pattern.needs.are_met(elements, has_triple_bond)
+            let is_in = |pattern: &Pattern| {
+                pattern.needs.are_met(has)
                     && smarts::has_match_with_config(&pattern.query, target, &config)
             };
-            patterns.iter().map(has).collect()
+            patterns.iter().map(is_in).collect()
         })
+    }
+
+    /// Whether the molecule contains the pattern.
+    pub(crate) fn is_in(&self, molecule: &Molecule) -> bool {
+        self.needs.are_met(Has::of(molecule))
+            && smarts::has_match_perceived(&self.query, &molecule.kekule, &MatchConfig::default())
+    }
+
+    /// Where the pattern is in the molecule: the atoms of each place in the order of the pattern, in
+    /// every orientation, sorted.
+    pub(crate) fn places_in(&self, molecule: &Molecule) -> Vec<Vec<usize>> {
+        if !self.needs.are_met(Has::of(molecule)) {
+            return Vec::new();
+        }
+        let config = MatchConfig {
+            uniquify: false,
+            ..MatchConfig::default()
+        };
+        let hits = smarts::find_matches_perceived(&self.query, &molecule.kekule, &config);
+        let mut places: Vec<Vec<usize>> = hits
+            .iter()
+            .filter_map(|hit| {
+                let atoms = 0..hit.len();
+                atoms
+                    .map(|i| hit.get(&i).map(|atom| atom.0 as usize))
+                    .collect()
+            })
+            .collect();
+        places.sort_unstable();
+        places
+    }
+}
+
+/// What a molecule has, as far as patterns need it.
+#[derive(Clone, Copy)]
+struct Has {
+    elements: u128,
+    triple_bond: bool,
+}
+
+impl Has {
+    fn of(molecule: &Molecule) -> Has {
+        let atoms = molecule.atoms.iter();
+        let mut bonds = molecule.neighbours.iter().flatten();
+        Has {
+            elements: atoms.fold(0, |all, atom| all | element_bit(atom.element)),
+            triple_bond: bonds.any(|(_, bond)| *bond == Bond::Triple),
+        }
     }
 }
 
@@ -72,9 +117,9 @@ impl Needs {
         }
     }
 
-    fn are_met(&self, elements: u128, has_triple_bond: bool) -> bool {
+    fn are_met(&self, has: Has) -> bool {
         let mut atoms = self.elements.iter();
-        (has_triple_bond || !self.triple_bond) && atoms.all(|may_be| may_be & elements != 0)
+        (has.triple_bond || !self.triple_bond) && atoms.all(|may_be| may_be & has.elements != 0)
     }
 }
 

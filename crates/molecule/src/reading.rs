@@ -1,9 +1,12 @@
 //! From text to a perceived molecule: caps, lexical checks, parsing, valence, perception.
 
+mod refusals;
+
 use chematic::core::{self as graph, AtomIdx, BondIdx, BondOrder};
 use chematic::{chem, perception, smiles};
 
 use crate::{Atom, Bond, Molecule, StructureError, symmetry, valence};
+use refusals::impossible;
 
 /// Reads a SMILES into a perceived molecule.
 pub(crate) fn read(text: &str) -> Result<Molecule, StructureError> {
@@ -100,33 +103,8 @@ fn parse(given: &str, unmapped: &str) -> Result<graph::Molecule, StructureError>
         max_atoms: Molecule::MAX_ATOMS,
         max_bonds: Molecule::MAX_BONDS,
     };
-    smiles::parse_with_limits(unmapped, &limits).map_err(|error| {
-        use smiles::SmilesError as E;
-        let (what, remedy) = match error {
-            E::ResourceLimit {
-                resource,
-                actual,
-                limit,
-            } => (
-                format!("it has {actual} {resource}, more than the {limit} that are read"),
-                "give a smaller molecule or a model compound with the same reacting group",
-            ),
-            E::UnmatchedRingClosure { ring_num, .. } => (
-                format!("ring label {ring_num} is opened and never closed"),
-                "write each ring label twice",
-            ),
-            E::UnmatchedExtendedRingClosure { ring_num, .. } => (
-                format!("ring label {ring_num} is opened and never closed"),
-                "write each ring label twice",
-            ),
-            E::NestingTooDeep { .. } => (
-                "its branches are nested too deeply".to_owned(),
-                "start the SMILES at an end of the longest chain",
-            ),
-            other => (other.to_string(), "check the SMILES against a drawing"),
-        };
-        StructureError::new(format!("{} cannot be read: {what}", quoted(given)), remedy)
-    })
+    smiles::parse_with_limits(unmapped, &limits)
+        .map_err(|error| refusals::unreadable(given, unmapped, error))
 }
 
 /// Refuses what parses and is no molecule.
@@ -184,25 +162,11 @@ fn check_graph(parsed: &graph::Molecule) -> Result<(), StructureError> {
     Ok(())
 }
 
-fn impossible(given: &str, detail: &str) -> StructureError {
-    StructureError::new(
-        format!("{} is no possible molecule: {detail}", quoted(given)),
-        "check valences, charges and aromatic rings against a drawing",
-    )
-}
-
-fn refused(given: &str, error: smiles::RdkitSmilesError) -> StructureError {
-    use smiles::RdkitSmilesError as E;
-    match error {
-        E::Unsupported(what) | E::Sanitization(what) => impossible(given, &what),
-    }
-}
-
 /// Charges and bonds of hypervalent nitrogen and its kin set right, hydrogens folded, Kekulé form.
 fn tidy(given: &str, mut molecule: graph::Molecule) -> Result<graph::Molecule, StructureError> {
     // The written form is checked first: the Kekulé form hides aromatic atoms outside rings.
-    smiles::rdkit_sanitized_model(&molecule).map_err(|e| refused(given, e))?;
-    let edits = smiles::rdkit_cleanup_edits(&molecule).map_err(|e| refused(given, e))?;
+    smiles::rdkit_sanitized_model(&molecule).map_err(|_| impossible(given, &molecule))?;
+    let edits = smiles::rdkit_cleanup_edits(&molecule).map_err(|_| impossible(given, &molecule))?;
     for edit in edits.into_iter() {
         for (atom, charge) in edit.charges {
             molecule.set_charge(AtomIdx(atom as u32), charge as i8);
@@ -217,7 +181,7 @@ fn tidy(given: &str, mut molecule: graph::Molecule) -> Result<graph::Molecule, S
     {
         molecule = chem::remove_hydrogens(&molecule);
     }
-    let orders = graph::kekulize(&molecule).map_err(|e| impossible(given, &e.detail))?;
+    let orders = graph::kekulize(&molecule).map_err(|_| impossible(given, &molecule))?;
     let mut molecule = graph::apply_kekule(&molecule, &orders);
     for atom in 0..molecule.atom_count() {
         molecule.set_atom_aromatic(AtomIdx(atom as u32), false);
@@ -227,8 +191,9 @@ fn tidy(given: &str, mut molecule: graph::Molecule) -> Result<graph::Molecule, S
 
 /// Perceives a Kekulé graph.
 fn perceive(given: &str, kekule: graph::Molecule) -> Result<Molecule, StructureError> {
-    let model = smiles::rdkit_sanitized_model(&kekule).map_err(|e| refused(given, e))?;
-    let canonical = smiles::rdkit_canonical_smiles(&kekule).map_err(|e| refused(given, e))?;
+    let model = smiles::rdkit_sanitized_model(&kekule).map_err(|_| impossible(given, &kekule))?;
+    let canonical =
+        smiles::rdkit_canonical_smiles(&kekule).map_err(|_| impossible(given, &kekule))?;
     let atoms = perceived_atoms(given, &kekule, &model)?;
     let neighbours = perceived_bonds(given, &kekule, &model)?;
     valence::check(&kekule, &atoms)?;
@@ -287,7 +252,7 @@ fn perceived_bonds(
             Some(BondOrder::Double) => Bond::Double,
             Some(BondOrder::Triple) => Bond::Triple,
             Some(BondOrder::Aromatic) => Bond::Aromatic,
-            _ => return Err(impossible(given, "it has a bond of no ordinary order")),
+            _ => return Err(impossible(given, kekule)),
         };
         let (a, b) = (bond.atom1.0 as usize, bond.atom2.0 as usize);
         neighbours[a].push((b, order));

@@ -58,13 +58,15 @@ const KINDS: [(&str, BaseKind); 10] = [
 ];
 
 /// Words of the tables for counter-ions.
-pub(crate) const CATIONS: [(&str, Cation); 8] = [
+pub(crate) const CATIONS: [(&str, Cation); 10] = [
     ("Li", Cation::Lithium),
     ("Na", Cation::Sodium),
     ("K", Cation::Potassium),
     ("Cs", Cation::Caesium),
     ("R4N", Cation::Ammonium),
     ("Mg", Cation::Magnesium),
+    ("Ca", Cation::Calcium),
+    ("Ba", Cation::Barium),
     ("Zn", Cation::Zinc),
     ("none", Cation::None),
 ];

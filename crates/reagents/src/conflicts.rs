@@ -20,7 +20,7 @@ pub struct ReplacedValue {
 }
 
 /// Where an own table and the library say different things; the own table holds.
-#[derive(Clone, Debug, PartialEq, Eq)]
+#[derive(Clone, Debug, PartialEq)]
 pub enum Conflict {
     /// An own row stands in place of another.
     Replaced {
@@ -49,6 +49,19 @@ pub enum Conflict {
         shared: String,
         /// Name of the row that it meant.
         other: String,
+    },
+    /// An own acidity stands in place of another one of the same structure and element.
+    Measured {
+        /// Name of the own table.
+        table: String,
+        /// Line of the row.
+        line: usize,
+        /// SMILES, as the own row has it.
+        smiles: String,
+        /// pKa in DMSO that was there.
+        library: f64,
+        /// pKa in DMSO that stands there now.
+        own: f64,
     },
 }
 
@@ -88,6 +101,16 @@ impl fmt::Display for Conflict {
                 f,
                 "{table}, line {line}: `{shared}` now means the {} `{name}`, no longer `{other}`",
                 kind.name()
+            ),
+            Conflict::Measured {
+                table,
+                line,
+                smiles,
+                library,
+                own,
+            } => write!(
+                f,
+                "{table}, line {line}: pKa of `{smiles}` is {own}, in place of {library} of the library"
             ),
         }
     }

@@ -5,15 +5,17 @@ use enolattice_molecule::Molecule;
 use crate::table::{Lined, Table, TableText};
 use crate::{LibraryError, NamedElectrophile};
 
-pub(crate) const COLUMNS: [&str; 9] = [
+pub(crate) const COLUMNS: [&str; 11] = [
     "name",
     "synonyms",
     "cas",
     "smiles",
+    "formula",
     "boiling_c",
     "h_codes",
     "h_source",
     "h_date",
+    "date",
     "source",
 ];
 
@@ -29,8 +31,10 @@ pub(crate) fn read(text: TableText<'_>) -> Result<Vec<Lined<Drawn>>, Vec<Library
             synonyms: row.list("synonyms"),
             cas: row.cas("cas"),
             smiles: row.text_or_empty("smiles"),
+            formula: row.formula(),
             boiling_c: row.optional_number("boiling_c", -100.0, 500.0),
             hazards: row.hazards(),
+            date: row.month("date"),
             source: row.source("source"),
         };
         Some((electrophile, row.molecule("smiles")?))

@@ -1,6 +1,6 @@
 //! The library: all tables, indexed.
 
-use std::collections::HashMap;
+use std::collections::{HashMap, HashSet};
 
 use sha2::{Digest, Sha256};
 
@@ -10,8 +10,8 @@ use crate::shelf::{Laid, Shelf};
 use crate::structures::{StructureIndex, without_stereo};
 use crate::table::{Lined, TableText};
 use crate::{
-    Acidity, Additive, Base, Electrophilicity, MixtureError, NamedElectrophile, OwnTable, Reagent,
-    ReagentKind, Solvent,
+    Acidity, Additive, Base, Conflict, Electrophilicity, MixtureError, NamedElectrophile, OwnTable,
+    Reagent, ReagentKind, Solvent,
 };
 use crate::{additives, bases, electrophiles, measured, mixture_text, mixtures, solvents};
 
@@ -307,14 +307,47 @@ impl Library {
 
     fn take_acidities(&mut self, rows: Vec<Lined<Measured<Acidity>>>) {
         for Measured { molecule, record } in rows.into_iter().map(|row| row.record) {
-            self.acidities.push(record.clone());
             if let Some(flat) = without_stereo(&molecule) {
                 let isomers = self.acidities_by_structure.entry(flat);
                 isomers.or_default().push(record.clone());
             }
             let same = self.acidities_by_structure.entry(record.canonical.clone());
-            same.or_default().push(record);
+            same.or_default().push(record.clone());
+            self.acidities.push(record);
         }
+    }
+
+    /// Lays measured acidities over those that are there: a row takes the place of all others of its
+    /// structure and element; drawn without stereo, of all isomers.
+    pub(crate) fn lay_acidities(
+        &mut self,
+        table: &str,
+        rows: Vec<Lined<Measured<Acidity>>>,
+    ) -> Result<Vec<Conflict>, Vec<LibraryError>> {
+        measured::check_sites(table, &rows)?;
+        let mut conflicts = Vec::new();
+        let mut replaced = HashSet::new();
+        for row in &rows {
+            let own = &row.record.record;
+            let known = self.acidities_of(&own.canonical).iter();
+            for known in known.filter(|known| known.element == own.element) {
+                conflicts.push(Conflict::Measured {
+                    table: table.to_owned(),
+                    line: row.line,
+                    smiles: own.smiles.clone(),
+                    library: known.pka_dmso.value,
+                    own: own.pka_dmso.value,
+                });
+                replaced.insert((known.canonical.clone(), known.element));
+            }
+        }
+        let stays = |known: &Acidity| !replaced.contains(&(known.canonical.clone(), known.element));
+        self.acidities.retain(stays);
+        for known in self.acidities_by_structure.values_mut() {
+            known.retain(stays);
+        }
+        self.take_acidities(rows);
+        Ok(conflicts)
     }
 
     fn take_electrophilicities(&mut self, rows: Vec<Lined<Measured<Electrophilicity>>>) {

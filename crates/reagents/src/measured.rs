@@ -1,5 +1,7 @@
 //! Reads the tables of measured acidities and electrophilicities.
 
+use std::collections::HashMap;
+
 use enolattice_molecule::Molecule;
 
 use crate::row::Row;
@@ -80,6 +82,52 @@ fn acidic_atom(row: Row<'_>, molecule: &Molecule, element: u8) -> Option<usize> 
         );
     }
     Some(index)
+}
+
+/// Refuses a laboratory's rows that give one site two values.
+pub(crate) fn check_sites(
+    table: &str,
+    rows: &[Lined<Measured<Acidity>>],
+) -> Result<(), Vec<LibraryError>> {
+    let mut earlier: HashMap<(&str, u8), Vec<&Lined<Measured<Acidity>>>> = HashMap::new();
+    let mut faults = Vec::new();
+    for row in rows {
+        let own = &row.record.record;
+        let known = earlier
+            .entry((own.canonical.as_str(), own.element))
+            .or_default();
+        if let Some(other) = known
+            .iter()
+            .find(|other| may_be_one_site(&other.record, &row.record))
+        {
+            faults.push(LibraryError {
+                table: table.to_owned(),
+                row: row.line,
+                column: "smiles".to_owned(),
+                value: own.smiles.clone(),
+                reason: format!(
+                    "the row of line {} has a value for this site: give one, or name another `atom` \
+                     in the same SMILES",
+                    other.line
+                ),
+            });
+        }
+        known.push(row);
+    }
+    if faults.is_empty() {
+        Ok(())
+    } else {
+        Err(faults)
+    }
+}
+
+/// Whether two rows of one structure and element speak of one site, as far as they say.
+fn may_be_one_site(one: &Measured<Acidity>, other: &Measured<Acidity>) -> bool {
+    let (Some(a), Some(b)) = (one.record.atom, other.record.atom) else {
+        return true;
+    };
+    let classes = one.molecule.symmetry_classes();
+    one.record.smiles != other.record.smiles || classes.get(a) == classes.get(b)
 }
 
 fn electrophilicity(row: Row<'_>) -> Option<Measured<Electrophilicity>> {

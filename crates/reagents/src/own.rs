@@ -6,14 +6,16 @@ use crate::conflicts::{Cells, replaced_values};
 use crate::library::{Library, builtin_table};
 use crate::shelf::{Laid, Shelf};
 use crate::table::{MOST_FAULTS, TableText};
-use crate::{Conflict, LibraryError, ReagentKind, additives, bases, electrophiles, solvents};
+use crate::{
+    Conflict, LibraryError, ReagentKind, additives, bases, electrophiles, measured, solvents,
+};
 
-/// A table of a laboratory's own reagents, of the same form as those of the library.
+/// A table of a laboratory's own reagents or measured acidities, of the same form as those of the library.
 #[derive(Clone, Debug, PartialEq, Eq)]
 pub struct OwnTable {
     /// Name for messages, e.g. of the file.
     pub name: String,
-    /// Its text; a line `# table: bases` (or solvents, electrophiles, additives) says what it is.
+    /// Its text; a line `# table: bases` (or solvents, electrophiles, additives, acidities) says what it is.
     pub text: String,
 }
 
@@ -28,7 +30,8 @@ impl Library {
     /// The library with a laboratory's own tables laid over it, the later over the earlier.
     ///
     /// A row whose name is known (as a name or a synonym) replaces that row and keeps its name; any
-    /// other is added. What differs from the library is reported as [`Conflict`].
+    /// other is added. A measured acidity takes the place of those of the same structure and element.
+    /// What differs from the library is reported as [`Conflict`].
     ///
     /// # Errors
     /// All faults of all rows of all tables, with line, column, value and reason.
@@ -64,7 +67,12 @@ impl Library {
         new_bases: &mut Vec<NewBase>,
     ) -> Result<Vec<Conflict>, Vec<LibraryError>> {
         let text = TableText::own(&table.name, &table.text);
-        let kind = kind_of(text).map_err(|fault| vec![fault])?;
+        let kind = match content_of(text).map_err(|fault| vec![fault])? {
+            Content::Acidities => {
+                return self.lay_acidities(text.file, measured::acidities(text)?);
+            }
+            Content::Reagents(kind) => kind,
+        };
         let laid = match kind {
             ReagentKind::Base => {
                 let rows = bases::read(text)?;
@@ -95,7 +103,7 @@ impl Library {
             .iter()
             .rev()
             .map(|table| TableText::own(&table.name, &table.text));
-        let earlier = earlier.filter(|text| kind_of(*text) == Ok(kind));
+        let earlier = earlier.filter(|text| content_of(*text) == Ok(Content::Reagents(kind)));
         let old: Vec<Cells> = earlier
             .chain([builtin_table(kind)])
             .map(|text| Cells::of(text, kind))
@@ -195,8 +203,15 @@ fn is_class(name: &str) -> bool {
     solvents::CLASSES.iter().any(|(class, _)| *class == name)
 }
 
+/// What the rows of an own table are.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+enum Content {
+    Reagents(ReagentKind),
+    Acidities,
+}
+
 /// What a table says that it is.
-fn kind_of(table: TableText<'_>) -> Result<ReagentKind, LibraryError> {
+fn content_of(table: TableText<'_>) -> Result<Content, LibraryError> {
     let words: HashSet<&str> = table
         .text
         .trim_start_matches('\u{feff}')
@@ -204,15 +219,19 @@ fn kind_of(table: TableText<'_>) -> Result<ReagentKind, LibraryError> {
         .filter_map(|line| line.strip_prefix("# table:"))
         .map(str::trim)
         .collect();
-    let kinds: Vec<ReagentKind> = KINDS
+    let reagents = KINDS.map(|kind| (kind.table(), Content::Reagents(kind)));
+    let known = reagents
         .into_iter()
-        .filter(|kind| words.contains(kind.table()))
+        .chain([("acidities", Content::Acidities)]);
+    let contents: Vec<Content> = known
+        .filter(|(word, _)| words.contains(word))
+        .map(|(_, content)| content)
         .collect();
-    match (kinds[..].first(), words.len()) {
-        (Some(kind), 1) => Ok(*kind),
+    match (contents.first(), words.len()) {
+        (Some(content), 1) => Ok(*content),
         _ => Err(table.fault(
             "write one heading line `# table: bases`, or solvents, electrophiles, additives, \
-             so that it is known what the rows are",
+             acidities, so that it is known what the rows are",
         )),
     }
 }

@@ -55,10 +55,14 @@ pub struct NamedElectrophile {
     pub cas: String,
     /// SMILES.
     pub smiles: String,
+    /// Molecular formula with counter-ions, Hill order.
+    pub formula: String,
     /// Boiling point, °C, where known.
     pub boiling_c: Option<f64>,
     /// Hazard statements.
     pub hazards: Hazards,
+    /// When the row was last checked, `YYYY-MM`.
+    pub date: String,
     /// Source of the row's facts.
     pub source: String,
 }

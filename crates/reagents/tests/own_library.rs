@@ -168,11 +168,12 @@ fn own_solvents_electrophiles_and_additives_are_read_too() {
     // a table laid over itself replaces every row by one that differs in nothing
     assert!(conflicts.iter().all(|conflict| match conflict {
         Conflict::Replaced { values, .. } => values.is_empty(),
-        Conflict::Renamed { .. } => false,
+        Conflict::Renamed { .. } | Conflict::Measured { .. } => false,
     }));
     let count = |wanted: ReagentKind| {
-        let kinds = conflicts.iter().map(|conflict| match conflict {
-            Conflict::Replaced { kind, .. } | Conflict::Renamed { kind, .. } => *kind,
+        let kinds = conflicts.iter().filter_map(|conflict| match conflict {
+            Conflict::Replaced { kind, .. } | Conflict::Renamed { kind, .. } => Some(*kind),
+            Conflict::Measured { .. } => None,
         });
         kinds.filter(|kind| *kind == wanted).count()
     };
@@ -192,7 +193,7 @@ fn an_own_electrophile_is_found_by_its_structure() {
         .lines()
         .filter(|line| line.starts_with("name\t"))
         .collect();
-    let row = "my iodide\t\t\tCI\t42\t\tunknown\t\tfrom memory";
+    let row = "my iodide\t\t\tCI\tCH3I\t42\t\tunknown\t\t2026-12\tfrom memory";
     let cells = heading[0].split('\t').count();
     assert_eq!(
         row.split('\t').count(),
@@ -218,4 +219,78 @@ fn text_cut_anywhere_is_refused_or_read_but_never_panics() {
             assert!(!faults.is_empty(), "refused without a reason at {end}");
         }
     }
+}
+
+/// The example of the page on the library.
+const OWN_ACIDITIES: &str = include_str!("../testdata/own_acidities.tsv");
+
+/// The measured values of a structure: element and pKa.
+fn measured(library: &Library, smiles: &str) -> Vec<(u8, f64)> {
+    let molecule = enolattice_molecule::Molecule::parse(smiles).unwrap();
+    let known = library.acidities_of(molecule.canonical());
+    known
+        .iter()
+        .map(|known| (known.element, known.pka_dmso.value))
+        .collect()
+}
+
+#[test]
+fn own_acidities_go_over_those_of_the_library() {
+    let builtin = library();
+    assert_eq!(measured(&builtin, "C1CCCCC1=O"), [(6, 26.4)]);
+    let (library, conflicts) = builtin.with_own(&[own(OWN_ACIDITIES)]).unwrap();
+    // one in place of ours, whatever the order of the atoms; three that were not there
+    assert_eq!(measured(&library, "C1CCCCC1=O"), [(6, 26.1)]);
+    let amide = "O=C(Nc1ccccc1)CC(=O)OCC";
+    assert_eq!(measured(&library, amide), [(6, 15.1), (7, 18.9)]);
+    assert_eq!(library.acidities().len(), builtin.acidities().len() + 3);
+    let texts: Vec<String> = conflicts.iter().map(ToString::to_string).collect();
+    assert_eq!(
+        texts,
+        ["own.tsv, line 7: pKa of `O=C1CCCCC1` is 26.1, in place of 26.4 of the library"]
+    );
+    assert_ne!(library.digest(), builtin.digest());
+    // a later table goes over an earlier one
+    let later = OWN_ACIDITIES.replace("\t26.1\t", "\t26.9\t");
+    let (library, conflicts) = builtin.with_own(&[own(OWN_ACIDITIES), own(later)]).unwrap();
+    assert_eq!(measured(&library, "O=C1CCCCC1"), [(6, 26.9)]);
+    assert_eq!(conflicts.len(), 5);
+}
+
+#[test]
+fn an_own_acidity_drawn_without_stereo_stands_for_all_isomers() {
+    let isomer = "h1\tOC(=O)/C=C/C\t0\tO\t12.7\t0.3\tno\town\tnotebook\n";
+    let heading = &OWN_ACIDITIES[..OWN_ACIDITIES.find("own1").unwrap()];
+    let drawn = own(format!("{heading}{isomer}"));
+    let flat = own(format!(
+        "{heading}h2\tCC=CC(O)=O\t4\tO\t12.9\t0.3\tno\town\tnotebook\n"
+    ));
+    let (both, conflicts) = library().with_own(&[drawn, flat]).unwrap();
+    assert_eq!(conflicts.len(), 1);
+    assert_eq!(measured(&both, "CC=CC(O)=O"), [(8, 12.9)]);
+    assert!(measured(&both, "C/C=C/C(O)=O").is_empty());
+}
+
+#[test]
+fn a_site_with_two_values_and_an_atom_that_is_none_are_faults() {
+    let twice = OWN_ACIDITIES
+        .replace("own4", "own3b")
+        .replace("\t8\tN\t18.9\t", "\t5\tC\t15.9\t");
+    assert_eq!(
+        faults(&[own(twice)])[0].to_string(),
+        "own.tsv, line 10, column `smiles`, `CCOC(=O)CC(=O)Nc1ccccc1`: the row of line 9 has a value for \
+         this site: give one, or name another `atom` in the same SMILES"
+    );
+    let wrong = OWN_ACIDITIES
+        .replace("O=C1CCCCC1\t2\t", "O=C1CCCCC1\t0\t")
+        .replace("\t30.1\t0.4\t", "\t130.1\t\t");
+    let places: Vec<(usize, String)> = faults(&[own(wrong)])
+        .into_iter()
+        .map(|fault| (fault.row, fault.column))
+        .collect();
+    let expected = [(7, "atom"), (8, "pka_dmso"), (8, "sigma")];
+    assert_eq!(
+        places,
+        expected.map(|(row, column)| (row, column.to_owned()))
+    );
 }

@@ -10,12 +10,14 @@ fn library() -> Library {
 }
 
 /// Ions and hydrogen that stand beside the base itself, with their charge and formula.
-const INORGANIC: [(&str, i32, &str); 8] = [
+const INORGANIC: [(&str, i32, &str); 10] = [
     ("[Li+]", 1, "Li"),
     ("[Na+]", 1, "Na"),
     ("[K+]", 1, "K"),
     ("[Cs+]", 1, "Cs"),
     ("[Mg+2]", 2, "Mg"),
+    ("[Ca+2]", 2, "Ca"),
+    ("[Ba+2]", 2, "Ba"),
     ("[Zn+2]", 2, "Zn"),
     ("[H-]", -1, "H"),
     ("[H][H]", 0, "H2"),
@@ -82,7 +84,12 @@ fn formulas_are_those_of_the_structures() {
         .additives()
         .iter()
         .map(|a| (&a.name, &a.smiles, &a.formula));
-    for (name, smiles, formula) in bases.chain(solvents).chain(additives) {
+    let electrophiles = library
+        .electrophiles()
+        .iter()
+        .map(|e| (&e.name, &e.smiles, &e.formula));
+    let all = bases.chain(solvents).chain(additives).chain(electrophiles);
+    for (name, smiles, formula) in all {
         let mut stated = BTreeMap::new();
         count(formula, &mut stated);
         assert_eq!(elements(smiles), stated, "{name}");

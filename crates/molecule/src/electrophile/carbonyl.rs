@@ -1,6 +1,7 @@
 //! Aldehydes and ketones that are not conjugated with an alkene.
 
-use super::{ElectrophileKind, ElectrophilicGroup, hammett};
+use super::{ElectrophileKind, ElectrophilicGroup};
+use crate::environment::{Conjugation, ring_sigma};
 use crate::groups::{Acyl, CARBON};
 use crate::{Bond, Molecule};
 
@@ -10,9 +11,9 @@ pub(super) fn aldehyde(molecule: &Molecule) -> Option<ElectrophilicGroup> {
     let carbon = carbons.next()?;
     let bearer = molecule.bound_to(carbon, CARBON, Bond::Single).next();
     let aromatic = bearer.is_some_and(|atom| molecule.atoms()[atom].aromatic);
-    let hammett_sigma = bearer
-        .filter(|_| aromatic)
-        .map_or(0.0, |ipso| hammett::sigma(molecule, ipso, carbon));
+    let hammett_sigma = bearer.filter(|_| aromatic).map_or(0.0, |ipso| {
+        ring_sigma(molecule, ipso, Conjugation::Insulated)
+    });
     Some(ElectrophilicGroup {
         kind: ElectrophileKind::Aldehyde {
             aromatic,

@@ -2,12 +2,13 @@
 
 use super::descriptors::Descriptors;
 use super::group::{Group, beyond, double_bonded, group};
-use super::hammett::{Conjugation, ring_sigma};
+use super::hammett::{Conjugation, aza_beside, ring_sigma};
 use super::skeleton::{Bridge, bridge, cyclopentadiene_ring};
 use crate::{AnionClass, Bond, Molecule};
 
-/// σ⁻ of a benzylic ring from which on the ring alone makes the carbon acidic (nitro, cyano).
-const ACTIVATING_SIGMA: f64 = 0.9;
+/// σ⁻ of a benzylic ring from which on the ring alone makes the carbon acidic enough for metal amides and
+/// alkyllithiums (nitro, cyano, ester, 2- and 4-pyridyl).
+const ACTIVATING_SIGMA: f64 = 0.7;
 
 /// What a carbon site is.
 pub(super) struct CarbonSite {
@@ -84,9 +85,11 @@ fn increment(of: Group) -> Option<&'static str> {
         Sulfone | SulfonicEster | Sulfonamide | SulfonylHalide | Thiosulfonate => "sulfone",
         Triflone => "triflone",
         Sulfoxide => "sulfoxide",
+        Sulfoximine => "sulfoximine",
+        Sulfilimine => "sulfilimine",
         Phosphonyl => "phosphonyl",
         Phosphonium => "phosphonium",
-        Sulfonium => "sulfonium",
+        Sulfonium | Sulfoxonium => "sulfonium",
         Ammonium => "ammonium",
         Pyridinium => "pyridinium",
         Aryl => "aryl",
@@ -169,8 +172,12 @@ impl Surroundings<'_> {
     }
 
     fn activated(&self) -> bool {
-        let carbanion_of_hydrocarbon = self.in_cyclopentadiene
-            || self.count(|kind| matches!(kind, Group::Aryl | Group::Vinyl | Group::Imino)) >= 2;
+        // dithianes and benzyl sulfides are lithiated like diarylmethanes
+        let supports = |kind| {
+            use Group::*;
+            matches!(kind, Aryl | Vinyl | Imino | Sulfanyl | Phosphanyl)
+        };
+        let carbanion_of_hydrocarbon = self.in_cyclopentadiene || self.count(supports) >= 2;
         let real_acceptor = self
             .groups
             .iter()
@@ -180,6 +187,7 @@ impl Surroundings<'_> {
             || !self.vinylogous.is_empty()
             || self.with(|kind| kind == Group::Aryl).any(|aryl| {
                 ring_sigma(self.molecule, aryl, Conjugation::Direct) >= ACTIVATING_SIGMA
+                    || aza_beside(self.molecule, aryl)
             })
     }
 
@@ -230,7 +238,7 @@ fn class_alone(acceptor: Group) -> AnionClass {
         Ester | Imide | CarboxylicAcid | Thioester | Thiocarbonyl => AnionClass::Ester,
         Amide | Thioamide | Imidoyl => AnionClass::Amide,
         Nitrile => AnionClass::Nitrile,
-        Sulfoxide => AnionClass::Sulfone,
+        Sulfoxide | Sulfoximine | Sulfilimine => AnionClass::Sulfone,
         kind if kind.is_sulfonyl() => AnionClass::Sulfone,
         _ => AnionClass::Carbanion,
     }

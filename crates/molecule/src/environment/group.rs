@@ -29,9 +29,15 @@ pub(crate) enum Group {
     SulfonylHalide,
     Thiosulfonate,
     Sulfoxide,
+    /// S(=O)(=N).
+    Sulfoximine,
+    /// S(=N).
+    Sulfilimine,
     Phosphonyl,
     Phosphonium,
     Sulfonium,
+    /// R2S(=O)⁺.
+    Sulfoxonium,
     Ammonium,
     Pyridinium,
     Aryl,
@@ -64,9 +70,12 @@ impl Group {
                     | Isocyano
                     | Nitro
                     | Sulfoxide
+                    | Sulfoximine
+                    | Sulfilimine
                     | Phosphonyl
                     | Phosphonium
                     | Sulfonium
+                    | Sulfoxonium
                     | Pyridinium
                     | Ammonium
             )
@@ -181,7 +190,10 @@ fn lone_pair_is_tied_up(molecule: &Molecule, nitrogen: usize, acyl: usize) -> bo
     molecule.atoms()[nitrogen].aromatic
         || beyond(molecule, nitrogen, acyl).any(|(other, _)| {
             match molecule.atoms()[other].element {
-                6 => double_bonded(molecule, other, 8).is_some(),
+                6 => {
+                    double_bonded(molecule, other, 8).is_some()
+                        || double_bonded(molecule, other, 16).is_some()
+                }
                 16 => oxo_count(molecule, other) == 2,
                 _ => false,
             }
@@ -285,11 +297,16 @@ fn sulfur(molecule: &Molecule, atom: usize, from: usize) -> Group {
         return Group::Sulfanyl;
     }
     if double_bonded(molecule, atom, 7).is_some() {
-        return Group::Other;
+        return match oxo_count(molecule, atom) {
+            0 => Group::Sulfilimine,
+            1 => Group::Sulfoximine,
+            _ => Group::Other,
+        };
     }
     match oxo_count(molecule, atom) {
         0 if this.charge > 0 => Group::Sulfonium,
         0 => Group::Sulfanyl,
+        1 if molecule.neighbours(atom).len() == 4 => Group::Sulfoxonium,
         1 => Group::Sulfoxide,
         2 => sulfonyl(molecule, atom, from),
         _ => Group::Other,

@@ -8,7 +8,7 @@ use crate::{Bond, Molecule};
 pub(crate) enum Conjugation {
     /// The charge reaches the ring: σ⁻ for acceptors.
     Direct,
-    /// A carbonyl stands between: σp.
+    /// A carbonyl stands between, or is the reaction centre itself: σp.
     Insulated,
 }
 
@@ -24,14 +24,14 @@ fn constants(of: Group) -> (f64, f64, f64) {
         SulfonylHalide => (0.80, 0.91, 1.40),
         Sulfone | SulfonicEster | Thiosulfonate => (0.62, 0.70, 1.10),
         Sulfonamide => (0.53, 0.60, 0.94),
-        Sulfoxide => (0.51, 0.47, 0.70),
+        Sulfoxide | Sulfoximine | Sulfilimine => (0.51, 0.47, 0.70),
         Perfluoroalkyl => (0.43, 0.54, 0.65),
         Aldehyde => (0.35, 0.42, 1.03),
         AlkylKetone | ArylKetone | Thioester | AcylHalide | Thiocarbonyl => (0.36, 0.47, 0.83),
         Ester | CarboxylicAcid | Imide => (0.36, 0.45, 0.70),
         Amide | Thioamide | Imidoyl => (0.30, 0.36, 0.55),
         Phosphonyl => (0.42, 0.53, 0.84),
-        Ammonium | Pyridinium | Phosphonium | Sulfonium => (0.88, 0.82, 0.77),
+        Ammonium | Pyridinium | Phosphonium | Sulfonium | Sulfoxonium => (0.88, 0.82, 0.77),
         Fluoro => (0.34, 0.06, -0.03),
         Chloro => (0.37, 0.23, 0.19),
         Bromo => (0.39, 0.23, 0.25),
@@ -61,12 +61,16 @@ const ARYLTHIO: (f64, f64, f64) = (0.23, 0.07, 0.18);
 const AZA: (f64, f64, f64) = (0.71, 0.62, 0.95);
 /// The same for an N-oxide (from memory).
 const AZA_OXIDE: (f64, f64, f64) = (1.0, 0.9, 1.1);
-/// The same for an N-alkylpyridinium or N-protonated ring (from memory).
+/// The same for an N-alkylpyridinium or N-protonated ring, of pyridinium N–H acids (from memory).
 const AZA_CATION: (f64, f64, f64) = (3.0, 2.1, 2.9);
 
 /// Share of the stronger of σm and σ⁻ that an ortho substituent exerts, steric effects aside.
 /// Read off the ortho-substituted phenols and anilines of the DMSO tables (0.8–1).
 const ORTHO_SHARE: f64 = 0.9;
+
+/// Largest σ of one position where the ring alone takes a carbanion's charge: an N-methylpicolinium ion, whose
+/// anion is a neutral anhydrobase, has a pKa of about 20, not 10 (from memory).
+const LARGEST_ALONE: f64 = 2.1;
 
 /// Share of σ that a further acceptor exerts where the ring alone takes a carbanion's charge: what
 /// the strongest has taken is not there for it. The ρ of such rings is about 13 pK, so that two whole
@@ -81,7 +85,8 @@ pub(crate) fn ring_sigma(molecule: &Molecule, ipso: usize, conjugation: Conjugat
 /// The same where the ring alone takes up the charge: the strongest acceptor counts whole, further
 /// ones by a share.
 pub(crate) fn ring_sigma_alone(molecule: &Molecule, ipso: usize) -> f64 {
-    let sigmas = position_sigmas(molecule, ipso, Conjugation::Direct);
+    let sigmas =
+        position_sigmas(molecule, ipso, Conjugation::Direct).map(|sigma| sigma.min(LARGEST_ALONE));
     let strongest = sigmas.iter().copied().fold(0.0, f64::max);
     let acceptors: f64 = sigmas.iter().filter(|sigma| **sigma > 0.0).sum();
     let donors: f64 = sigmas.iter().filter(|sigma| **sigma < 0.0).sum();
@@ -127,6 +132,18 @@ pub(crate) fn six_ring(molecule: &Molecule, atom: usize) -> Option<&[usize]> {
                 && ring.iter().all(|member| molecule.atoms()[*member].aromatic)
         })
         .map(Vec::as_slice)
+}
+
+/// Whether `ipso` is a carbon of a five-membered aromatic ring with a pyridine-like nitrogen beside it (2-thiazolyl,
+/// 2-benzoxazolyl), which takes up a charge.
+pub(crate) fn aza_beside(molecule: &Molecule, ipso: usize) -> bool {
+    molecule.atoms()[ipso].aromatic
+        && six_ring(molecule, ipso).is_none()
+        && molecule.neighbours(ipso).iter().any(|(other, _)| {
+            let atom = molecule.atoms()[*other];
+            let bonds = molecule.neighbours(*other).len() + usize::from(atom.hydrogens);
+            atom.element == 7 && atom.aromatic && bonds == 2
+        })
 }
 
 fn ring_nitrogen(molecule: &Molecule, atom: usize, distance: usize) -> f64 {
@@ -202,9 +219,9 @@ fn field(of: Group) -> f64 {
         Nitrile | Isocyano => 0.57,
         Triflone | SulfonylHalide => 0.70,
         Sulfone | SulfonicEster | Sulfonamide | Thiosulfonate => 0.59,
-        Sulfoxide => 0.50,
+        Sulfoxide | Sulfoximine | Sulfilimine => 0.50,
         Phosphonyl => 0.32,
-        Ammonium | Pyridinium | Phosphonium | Sulfonium => 0.93,
+        Ammonium | Pyridinium | Phosphonium | Sulfonium | Sulfoxonium => 0.93,
         Aldehyde | AlkylKetone | ArylKetone | Ester | CarboxylicAcid | Imide | Thioester
         | AcylHalide | Thiocarbonyl => 0.29,
         Amide | Thioamide | Imidoyl => 0.27,
@@ -223,10 +240,23 @@ fn field(of: Group) -> f64 {
 /// Share of σI that passes a saturated carbon: σI(CH2X)/σI(X) = 0.36 (Charton, as above).
 const THROUGH_CARBON: f64 = 0.36;
 
+/// Share of its σI that a halogen exerts beside a stronger one on the same carbon: σ* of CH2F, CHF2 and CF3 1.10, 2.05 and
+/// 2.6, pKa in water of acetic acid and its chloro derivatives 4.76, 2.86, 1.3, 0.65 (Taft; standard compilations; from memory).
+const HALOGEN_BESIDE_HALOGEN: f64 = 0.5;
+
 /// Field effect of what `carbon` carries beyond `from`: σI at the carbon itself, and what
 /// passes one more saturated carbon.
 pub(crate) fn inductive(molecule: &Molecule, carbon: usize, from: usize) -> f64 {
-    beyond(molecule, carbon, from)
+    let is_halogen = |atom: usize| matches!(molecule.atoms()[atom].element, 9 | 17 | 35 | 53);
+    let halogens: Vec<f64> = beyond(molecule, carbon, from)
+        .filter(|(other, _)| is_halogen(*other))
+        .map(|(other, _)| field(group(molecule, other, carbon)))
+        .collect();
+    let strongest = halogens.iter().copied().fold(0.0, f64::max);
+    let all: f64 = halogens.iter().sum();
+    let of_halogens = strongest + HALOGEN_BESIDE_HALOGEN * (all - strongest);
+    let others: f64 = beyond(molecule, carbon, from)
+        .filter(|(other, _)| !is_halogen(*other))
         .map(|(other, _)| match group(molecule, other, carbon) {
             Group::Alkyl => {
                 THROUGH_CARBON
@@ -236,5 +266,6 @@ pub(crate) fn inductive(molecule: &Molecule, carbon: usize, from: usize) -> f64 
             }
             near => field(near),
         })
-        .sum()
+        .sum();
+    of_halogens + others
 }

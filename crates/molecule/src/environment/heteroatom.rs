@@ -4,7 +4,7 @@
 
 use super::descriptors::Descriptors;
 use super::group::{Group, beyond, double_bonded, group, is_saturated_carbon, oxo_count};
-use super::hammett::{Conjugation, inductive, ring_sigma};
+use super::hammett::{Conjugation, inductive, ring_sigma, six_ring};
 use crate::{AnionClass, Bond, Molecule};
 
 /// Describes an O–H; `None` where it is no acid that the tables know.
@@ -23,10 +23,16 @@ pub(super) fn oxygen(molecule: &Molecule, site: usize) -> Option<(AnionClass, De
                 "σ of phenol",
                 ring_sigma(molecule, partner, Conjugation::Direct),
             );
+            d.add("benzo on phenol", fused_arenes(molecule, partner) as f64);
             AnionClass::Phenoxide
         }
         6 if double_bonded(molecule, partner, 8).is_some() => {
             carboxyl(molecule, partner, site, &mut d)
+        }
+        // the tautomer of a thiocarboxylic acid: the proton goes to sulfur
+        6 if double_bonded(molecule, partner, 16).is_some() => {
+            d.add("thiocarboxylic acid S–H", 1.0);
+            AnionClass::Carboxylate
         }
         6 if is_saturated_carbon(molecule, partner) => {
             d.add("alcohol O–H", 1.0);
@@ -77,8 +83,29 @@ fn carbons(molecule: &Molecule, atom: usize, from: usize) -> usize {
         .count()
 }
 
+/// Six-membered aromatic rings fused to that of `ipso`.
+fn fused_arenes(molecule: &Molecule, ipso: usize) -> usize {
+    let Some(ring) = six_ring(molecule, ipso) else {
+        return 0;
+    };
+    let aromatic = |other: &Vec<usize>| other.iter().all(|atom| molecule.atoms()[*atom].aromatic);
+    molecule
+        .rings()
+        .iter()
+        .filter(|other| {
+            other.len() == 6
+                && other.as_slice() != ring
+                && aromatic(other)
+                && other.iter().filter(|atom| ring.contains(atom)).count() == 2
+        })
+        .count()
+}
+
 fn carboxyl(molecule: &Molecule, carbon: usize, site: usize, d: &mut Descriptors) -> AnionClass {
     d.add("carboxylic acid O–H", 1.0);
+    if molecule.atoms()[carbon].hydrogens > 0 {
+        d.add("formyl in place of acyl", 1.0);
+    }
     for (far, bond) in beyond(molecule, carbon, site) {
         let atom = molecule.atoms()[far];
         match atom.element {

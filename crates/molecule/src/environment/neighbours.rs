@@ -4,7 +4,8 @@ use super::carbon::Surroundings;
 use super::descriptors::Descriptors;
 use super::group::{Group, beyond, double_bonded, group, is_saturated_carbon, is_trigonal};
 use super::hammett::{
-    Conjugation, has_quinoid_acceptor, inductive, ring_sigma, ring_sigma_alone, six_ring,
+    Conjugation, aza_beside, has_quinoid_acceptor, inductive, ring_sigma, ring_sigma_alone,
+    six_ring,
 };
 use super::skeleton::smallest_ring;
 use crate::Bond;
@@ -48,7 +49,7 @@ impl Surroundings<'_> {
                         }
                     }
                 }
-                None => descriptors.add("five-membered heteroaryl", 1.0),
+                None => self.five_ring_terms(descriptors, aryl, sharing),
             }
         }
         if self.in_cyclopentadiene {
@@ -56,16 +57,62 @@ impl Surroundings<'_> {
         }
         let unsaturated =
             self.count(|kind| matches!(kind, Group::Aryl | Group::Vinyl | Group::Alkynyl));
-        if unsaturated == 1 && self.acceptors() == 0 && self.vinylogous.is_empty() {
+        let donors =
+            self.count(|kind| matches!(kind, Group::Imino | Group::Sulfanyl | Group::Phosphanyl));
+        if unsaturated == 1 && donors == 0 && self.acceptors() == 0 && self.vinylogous.is_empty() {
             descriptors.add("nothing but one aryl or vinyl", 1.0);
         }
         let crowded = match (self.count(|kind| kind == Group::Aryl), self.acceptors()) {
             (3, _) => "third aryl",
             (2, 1..) => "second aryl beside acceptor",
-            (1, 2..) if self.count(Group::is_carbonyl) >= 2 => "aryl between carbonyls",
+            (1, 2..) if self.aryl_is_turned_between_carbonyls() => "aryl between carbonyls",
             _ => return,
         };
         descriptors.add(crowded, 1.0);
+    }
+
+    /// An aryl between two carbonyls is turned out of their plane, unless these are tied back in a ring of five.
+    fn aryl_is_turned_between_carbonyls(&self) -> bool {
+        let carbonyls: Vec<usize> = self.with(Group::is_carbonyl).collect();
+        match carbonyls.as_slice() {
+            [first, second] => {
+                smallest_ring(self.molecule, &[*first, self.site, *second]) != Some(5)
+            }
+            several => several.len() > 2,
+        }
+    }
+
+    /// Furyl and thienyl take up little charge; azolyl with its C=N on the site takes up much.
+    fn five_ring_terms(&self, descriptors: &mut Descriptors, aryl: usize, sharing: usize) {
+        descriptors.add("five-membered heteroaryl", 1.0);
+        if !aza_beside(self.molecule, aryl) {
+            return;
+        }
+        descriptors.add(
+            match sharing {
+                0 | 1 => "aza beside in five-membered heteroaryl, alone",
+                _ => "aza beside in five-membered heteroaryl, charge shared",
+            },
+            1.0,
+        );
+        let ring = self
+            .molecule
+            .rings()
+            .iter()
+            .find(|ring| ring.len() == 5 && ring.contains(&aryl));
+        let Some(ring) = ring else { return };
+        descriptors.add(
+            "benzo on five-membered heteroaryl",
+            self.fused_rings(ring) as f64,
+        );
+        let gives = |atom: &usize| {
+            let this = self.molecule.atoms()[*atom];
+            this.element == 7
+                && self.molecule.neighbours(*atom).len() + usize::from(this.hydrogens) == 3
+        };
+        if ring.iter().any(gives) {
+            descriptors.add("amine nitrogen in five-membered heteroaryl", 1.0);
+        }
     }
 
     /// Whether both ring atoms beside `aryl` bear fused rings, as in 9-anthryl.
@@ -192,6 +239,10 @@ impl Surroundings<'_> {
     pub(super) fn sulfur_terms(&self, descriptors: &mut Descriptors) {
         for (sulfur, kind) in &self.groups {
             match kind {
+                Group::Sulfoxonium => descriptors.add("sulfoxonium", 1.0),
+                Group::Sulfoximine | Group::Sulfilimine => {
+                    self.sulfoximine_terms(descriptors, *sulfur)
+                }
                 Group::SulfonicEster => descriptors.add("sulfonic ester", 1.0),
                 Group::Sulfonamide => descriptors.add("sulfonamide", 1.0),
                 Group::SulfonylHalide => descriptors.add("sulfonyl halide", 1.0),
@@ -208,12 +259,27 @@ impl Surroundings<'_> {
         }
     }
 
+    /// What the nitrogen of a sulfoximine or sulfilimine carries.
+    fn sulfoximine_terms(&self, descriptors: &mut Descriptors, sulfur: usize) {
+        let Some(nitrogen) = double_bonded(self.molecule, sulfur, 7) else {
+            return;
+        };
+        if self.molecule.atoms()[nitrogen].charge > 0 {
+            descriptors.add("charged sulfoximine", 1.0);
+        }
+        let drawn = beyond(self.molecule, nitrogen, sulfur)
+            .any(|(far, _)| group(self.molecule, far, nitrogen).is_sulfonyl());
+        if drawn {
+            descriptors.add("sulfonyl on sulfoximine nitrogen", 1.0);
+        }
+    }
+
     pub(super) fn heteroatom_terms(&self, descriptors: &mut Descriptors) {
         for (atom, kind) in &self.groups {
             let name = match kind {
                 Group::Sulfanyl => "aryl on sulfanyl",
                 Group::Alkoxy => "aryl or acyl on alkoxy",
-                Group::Amino => "aryl or acyl on amino",
+                Group::Amino => "aryl on amino",
                 Group::Imino => {
                     self.imino_terms(descriptors, *atom);
                     continue;
@@ -240,10 +306,17 @@ impl Surroundings<'_> {
             if self.molecule.atoms()[*atom].aromatic {
                 continue;
             }
-            let drawn_away = beyond(self.molecule, *atom, self.site).any(|(far, _)| {
-                is_trigonal(self.molecule, far) || group(self.molecule, far, *atom).is_acceptor()
-            });
-            if drawn_away {
+            let beyond_it: Vec<(usize, Group)> = beyond(self.molecule, *atom, self.site)
+                .map(|(far, _)| (far, group(self.molecule, far, *atom)))
+                .collect();
+            let is_acylated = beyond_it.iter().any(|(_, far)| far.is_acceptor());
+            if *kind == Group::Amino && is_acylated {
+                descriptors.add("acyl on amino", 1.0);
+            } else if is_acylated
+                || beyond_it
+                    .iter()
+                    .any(|(far, _)| is_trigonal(self.molecule, *far))
+            {
                 descriptors.add(name, 1.0);
             }
         }
@@ -296,8 +369,20 @@ impl Surroundings<'_> {
                 .count();
             descriptors.add(
                 "aryl or vinyl at far end of vinyl",
-                conjugated.min(2) as f64,
+                conjugated.min(1) as f64,
             );
+            let sulfanyls = beyond(self.molecule, far, vinyl)
+                .filter(|(atom, _)| group(self.molecule, *atom, far) == Group::Sulfanyl)
+                .count();
+            descriptors.add("sulfanyl at far end of vinyl", sulfanyls as f64);
+            descriptors.add(
+                "second aryl or vinyl at far end of vinyl",
+                f64::from(u8::from(conjugated > 1)),
+            );
+        }
+        if !self.in_cyclopentadiene && self.acceptors() == 0 && self.vinylogous.is_empty() {
+            let vinyls = self.count(|kind| kind == Group::Vinyl);
+            descriptors.add("vinyl of an open allyl anion", vinyls as f64);
         }
         for (_, kind) in &self.vinylogous {
             let name = match kind {
@@ -307,9 +392,9 @@ impl Surroundings<'_> {
                 _ => "vinylogous nitrile or sulfone",
             };
             descriptors.add(name, 1.0);
-            if self.acceptors() > 0 {
-                descriptors.add("vinylogous acceptor beside acceptor", 1.0);
-            }
+            // each acceptor on the site itself leaves less for the one at a distance
+            let beside = self.acceptors().min(2);
+            descriptors.add("vinylogous acceptor beside acceptor", beside as f64);
         }
     }
 }

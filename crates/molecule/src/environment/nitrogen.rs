@@ -6,6 +6,10 @@ use super::hammett::{Conjugation, has_quinoid_acceptor, inductive, ring_sigma};
 use super::skeleton::smallest_ring;
 use crate::{AnionClass, Bond, Molecule};
 
+/// Share of a sulfonyl's effect that a second one has on the same nitrogen: dibenzenesulfonimide is about as strong as
+/// saccharin (1.5 and 1.6 in water, from memory).
+const SHARE_OF_SECOND_SULFONYL: f64 = 0.3;
+
 /// What a nitrogen is bound to, as far as its acidity goes.
 #[derive(Default)]
 struct Substituents {
@@ -18,6 +22,14 @@ struct Substituents {
     nitriles: usize,
     amidines: Vec<usize>,
     heteroatoms: Vec<usize>,
+}
+
+impl Substituents {
+    /// The nitrogen with its acyls and sulfonyls.
+    fn all_acyls(&self, site: usize) -> Vec<usize> {
+        let bound = self.acyls.iter().chain(&self.sulfonyls).copied();
+        bound.chain([site]).collect()
+    }
 }
 
 fn substituents(molecule: &Molecule, site: usize) -> Substituents {
@@ -246,7 +258,17 @@ fn saturated(molecule: &Molecule, site: usize, d: &mut Descriptors) -> AnionClas
     let s = substituents(molecule, site);
     let class = if s.acyls.len() + s.sulfonyls.len() >= 2 {
         d.add("imide N–H", 1.0);
-        d.add("sulfonyl in imide", s.sulfonyls.len() as f64);
+        // the second takes what the first has left
+        let sulfonyls = [0.0, 1.0, 1.0 + SHARE_OF_SECOND_SULFONYL][s.sulfonyls.len().min(2)];
+        d.add("sulfonyl in imide", sulfonyls);
+        let thio = s
+            .acyls
+            .iter()
+            .filter(|acyl| double_bonded(molecule, **acyl, 16).is_some());
+        d.add("thio in imide", thio.count() as f64);
+        if smallest_ring(molecule, &s.all_acyls(site)).is_none() {
+            d.add("open-chain imide", 1.0);
+        }
         AnionClass::ImideNitrogen
     } else if let Some(sulfonyl) = s.sulfonyls.first() {
         sulfonamide(molecule, site, *sulfonyl, d);
@@ -359,6 +381,9 @@ fn amide(molecule: &Molecule, site: usize, acyl: usize, d: &mut Descriptors) {
     d.add("amide N–H", 1.0);
     if double_bonded(molecule, acyl, 16).is_some() {
         d.add("thioamide N–H", 1.0);
+    }
+    if molecule.atoms()[acyl].hydrogens > 0 {
+        d.add("formyl on amide nitrogen", 1.0);
     }
     for (far, bond) in beyond(molecule, acyl, site) {
         let atom = molecule.atoms()[far];

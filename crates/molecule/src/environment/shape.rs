@@ -28,6 +28,10 @@ impl Surroundings<'_> {
             // The ring's own term has its two alkyl groups in it.
             return;
         }
+        if self.in_cyclopentadiene && self.acceptors() == 0 {
+            self.alkyl_on_cyclopentadiene(descriptors, alkyls);
+            return;
+        }
         if self.acceptors() >= 2 && !self.has(Group::Nitro) {
             self.alkyl_between_acceptors(descriptors);
             return;
@@ -58,6 +62,17 @@ impl Surroundings<'_> {
             ("alkyl beside sulfonyl or phosphonyl", alkyls)
         } else {
             ("alkyl on hydrocarbon acid", alkyls)
+        }
+    }
+
+    /// 9-Alkylfluorenes: methyl acidifies a little, bulk turns that round.
+    fn alkyl_on_cyclopentadiene(&self, descriptors: &mut Descriptors, alkyls: usize) {
+        descriptors.add("alkyl at cyclopentadienide site", alkyls as f64);
+        for alkyl in self.with(|kind| kind == Group::Alkyl) {
+            let branches = beyond(self.molecule, alkyl, self.site)
+                .filter(|(atom, _)| is_saturated_carbon(self.molecule, *atom))
+                .count();
+            descriptors.add("branch beyond cyclopentadienide site", branches as f64);
         }
     }
 
@@ -119,6 +134,9 @@ impl Surroundings<'_> {
             Some(false) => descriptors.add("between two carbonyls of a ring", 1.0),
             None => self.one_carbonyl_in_ring(descriptors),
         }
+        if self.lies_between_aryls_of_a_ring() {
+            descriptors.add("two aryls held in one ring", 1.0);
+        }
         if smallest_ring(molecule, &[self.site]) == Some(3) {
             let (name, count) = if self.has(Group::Nitro) {
                 ("cyclopropane beside nitro or triflyl", 1.0)
@@ -138,6 +156,16 @@ impl Surroundings<'_> {
         }
     }
 
+    /// The site of 9,10-dihydroanthracene or xanthene: its aryls cannot turn out of the plane.
+    fn lies_between_aryls_of_a_ring(&self) -> bool {
+        let aryls: Vec<usize> = self.with(|kind| kind == Group::Aryl).collect();
+        aryls.iter().enumerate().any(|(i, first)| {
+            aryls[i + 1..].iter().any(|second| {
+                smallest_ring(self.molecule, &[*first, self.site, *second]) == Some(6)
+            })
+        })
+    }
+
     fn one_carbonyl_in_ring(&self, descriptors: &mut Descriptors) {
         let molecule = self.molecule;
         for (carbonyl, kind) in self.groups.iter().filter(|(_, kind)| kind.is_carbonyl()) {
@@ -152,6 +180,7 @@ impl Surroundings<'_> {
                 (Some(name), _) => name,
                 (None, Group::Ester) => "lactone",
                 (None, Group::AlkylKetone | Group::ArylKetone) => match size {
+                    5 if *kind == Group::ArylKetone => "aryl ketone in ring of five",
                     ..=5 => "ketone in ring of four or five",
                     6 => "ketone in ring of six",
                     7..=9 => "ketone in ring of seven to nine",
@@ -182,6 +211,7 @@ impl Surroundings<'_> {
     }
 
     fn cyclopentadiene_substituents(&self, descriptors: &mut Descriptors, ring: &[usize]) {
+        let mut aryls = 0_usize;
         for member in ring.iter().filter(|member| **member != self.site) {
             if self.molecule.atoms()[*member].aromatic {
                 continue;
@@ -192,10 +222,16 @@ impl Surroundings<'_> {
                 }
                 match group(self.molecule, *other, *member) {
                     Group::Alkyl => descriptors.add("alkyl on cyclopentadienide", 1.0),
-                    Group::Aryl => descriptors.add("aryl on cyclopentadienide", 1.0),
+                    Group::Aryl => aryls += 1,
                     _ => {}
                 }
             }
         }
+        // neighbouring aryls turn each other out of the plane: the first ones count
+        descriptors.add("aryl on cyclopentadienide", aryls.min(2) as f64);
+        descriptors.add(
+            "further aryl on cyclopentadienide",
+            aryls.saturating_sub(2) as f64,
+        );
     }
 }

@@ -20,6 +20,10 @@ pub enum Cation {
     Ammonium,
     /// Mg²⁺, as in Grignard reagents and magnesium amides.
     Magnesium,
+    /// Ca²⁺, of the hydride and hydroxide.
+    Calcium,
+    /// Ba²⁺, of the hydroxide.
+    Barium,
     /// Zn²⁺, as in zinc amides.
     Zinc,
     /// Neutral bases.

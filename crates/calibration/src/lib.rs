@@ -3,6 +3,12 @@
 pub mod acidity_fit;
 pub mod balance;
 pub mod cases;
+pub mod dianions;
+pub mod figures;
 pub mod medium;
+pub mod nucleophilicity;
+pub mod practice;
 pub mod reactions;
+mod refit;
+pub mod selectivity;
 pub mod solvers;

@@ -5,7 +5,10 @@ use std::process::ExitCode;
 use std::sync::Arc;
 
 use clap::{Parser, Subcommand};
-use enolattice_calibration::{acidity_fit, balance, cases, medium, reactions, solvers};
+use enolattice_calibration::{
+    acidity_fit, balance, cases, figures, medium, nucleophilicity, practice, reactions,
+    selectivity, solvers,
+};
 use enolattice_model::Model;
 use enolattice_reagents::Library;
 
@@ -24,10 +27,16 @@ enum Command {
     Balance,
     /// Holds the cases of the trade against the model.
     Cases,
+    /// Writes the page of all figures on acidity, medium and proton balance.
+    Figures,
     /// Holds the medium against published pKa in several solvents and writes the page on it.
     Medium,
+    /// Holds common reactions against the model.
+    Practice,
     /// Holds published reactions against the model.
     Reactions,
+    /// Holds published enolate distributions, C- against O-alkylation and nucleophilicities against the model.
+    Rates,
     /// Compares the fast solver with the stiff reference on random cells.
     Solvers {
         /// Number of cells.
@@ -56,21 +65,34 @@ fn run(arguments: &Arguments) -> Result<(), String> {
                 .map_err(|error| error.to_string())?;
             write!(std::io::stdout().lock(), "{page}").map_err(|error| error.to_string())
         }
-        Command::Balance => writeln!(std::io::stdout().lock(), "{}", balance::to_json())
-            .map_err(|error| error.to_string()),
-        Command::Cases => cases::print(&model()?, &mut std::io::stdout().lock()),
-        Command::Medium => {
-            let page = medium::page(&model()?)?;
-            let place = concat!(env!("CARGO_MANIFEST_DIR"), "/docs/medium.md");
-            std::fs::write(place, &page).map_err(|error| format!("{place}: {error}"))?;
-            write!(std::io::stdout().lock(), "{page}").map_err(|error| error.to_string())
+        Command::Balance => {
+            let pots = balance::to_json(&model()?)?;
+            writeln!(std::io::stdout().lock(), "{pots}").map_err(|error| error.to_string())
         }
+        Command::Cases => cases::print(&model()?, &mut std::io::stdout().lock()),
+        Command::Figures => written("figures.md", figures::page(&model()?)?),
+        Command::Medium => written("medium.md", medium::page(&model()?)?),
+        Command::Practice => practice::print(&model()?, &mut std::io::stdout().lock()),
         Command::Reactions => write!(std::io::stdout().lock(), "{}", reactions::page(&model()?)?)
             .map_err(|error| error.to_string()),
+        Command::Rates => {
+            let model = model()?;
+            let (selectivity, nucleophilicity) =
+                (selectivity::page(&model)?, nucleophilicity::page(&model)?);
+            write!(std::io::stdout().lock(), "{selectivity}{nucleophilicity}")
+                .map_err(|error| error.to_string())
+        }
         Command::Solvers { cells } => {
             solvers::print(&model()?, cells, &mut std::io::stdout().lock())
         }
     }
+}
+
+/// Keeps a page in `docs/` and prints it.
+fn written(name: &str, page: String) -> Result<(), String> {
+    let place = format!("{}/docs/{name}", env!("CARGO_MANIFEST_DIR"));
+    std::fs::write(&place, &page).map_err(|error| format!("{place}: {error}"))?;
+    write!(std::io::stdout().lock(), "{page}").map_err(|error| error.to_string())
 }
 
 fn model() -> Result<Model, String> {

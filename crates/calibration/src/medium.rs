@@ -4,7 +4,7 @@ use std::collections::BTreeMap;
 use std::fmt::Write;
 
 use enolattice_model::{AcidSite, Model, acid_sites};
-use enolattice_molecule::{AnionClass, Molecule};
+use enolattice_molecule::{AnionClass, Bond, Molecule};
 use enolattice_reagents::Cation;
 use serde::Deserialize;
 
@@ -119,7 +119,10 @@ fn compared(model: &Model, row: &Row) -> Result<Comparison, String> {
             Cation::Lithium => format!("{}{PAIRED}", row.solvent),
             _ => row.solvent.clone(),
         },
-        kind: kind(class),
+        kind: match class {
+            AnionClass::Neutral => kind_of_base(&molecule),
+            class => kind(class),
+        },
         pka_dmso: row.pka_dmso,
         published: row.pka,
         model: pka,
@@ -139,11 +142,30 @@ fn cationic_donors(molecule: &Molecule) -> u8 {
     if is_cation { donors } else { 0 }
 }
 
+/// Kind of the base whose cationic acid this is, by what its charged nitrogen is bound to.
+fn kind_of_base(molecule: &Molecule) -> &'static str {
+    let atoms = molecule.atoms();
+    let Some(nitrogen) = (0..atoms.len()).find(|i| atoms[*i].charge > 0) else {
+        return "bases";
+    };
+    let beside = molecule.neighbours(nitrogen);
+    if atoms[nitrogen].aromatic {
+        "pyridines and imidazole"
+    } else if beside.iter().any(|(other, _)| atoms[*other].element == 15) {
+        "phosphazenes"
+    } else if beside.iter().any(|(_, bond)| *bond == Bond::Double) {
+        "amidines and guanidines"
+    } else if beside.iter().any(|(other, _)| atoms[*other].aromatic) {
+        "anilines"
+    } else {
+        "alkylamines"
+    }
+}
+
 fn kind(class: AnionClass) -> &'static str {
     use AnionClass::*;
     match class {
         class if class.is_carbanion() => "carbon acids",
-        Neutral => "cationic acids of amines and their kin",
         Alkoxide | Hydroxide => "alcohols and water",
         Phenoxide | Carboxylate => "phenols and carboxylic acids",
         Thiolate => "thiols",

@@ -32,14 +32,20 @@ impl Comparison {
     }
 }
 
-/// Cells of the whole library with the demo's substrates, drawn with a fixed seed.
-struct Sampler {
+/// Picks from lists with a fixed seed.
+pub(crate) struct Sampler {
     state: u64,
+}
+
+impl Default for Sampler {
+    fn default() -> Sampler {
+        Sampler { state: 20_261_201 }
+    }
 }
 
 impl Sampler {
     /// Knuth's MMIX generator: good enough to pick cells.
-    fn pick(&mut self, n: usize) -> usize {
+    pub(crate) fn pick(&mut self, n: usize) -> usize {
         self.state = self
             .state
             .wrapping_mul(6_364_136_223_846_793_005)
@@ -77,7 +83,7 @@ pub fn compare(model: &Model, count: usize) -> Result<Compared, String> {
             ))
         })
         .collect();
-    let mut sampler = Sampler { state: 20_261_201 };
+    let mut sampler = Sampler::default();
     let (mut found, mut given_up) = (Vec::with_capacity(count), Vec::new());
     while found.len() < count {
         let substrate = substrates[sampler.pick(substrates.len())].clone();
@@ -132,7 +138,7 @@ fn words(cell: &Cell) -> String {
     )
 }
 
-fn demo_substrates(model: &Model) -> Result<Vec<Arc<Substrate>>, String> {
+pub(crate) fn demo_substrates(model: &Model) -> Result<Vec<Arc<Substrate>>, String> {
     let text = include_str!("../../../deploy/demo/substrates.csv");
     let mut reader = csv::ReaderBuilder::new()
         .comment(Some(b'#'))

@@ -1,5 +1,6 @@
 //! Acidities on the DMSO scale: measured where known, else estimated.
 
+mod bounds;
 mod contribution;
 mod coverage;
 mod locality;
@@ -94,7 +95,8 @@ pub fn acid_sites(molecule: &Molecule, library: &Library) -> Vec<AcidSite> {
                         .filter(|(_, acidity)| acidity.element == site.element)
                         .map(|(_, acidity)| acidity.pka_dmso.value + WEAKER_THAN_MEASURED)
                         .fold(f64::NEG_INFINITY, f64::max);
-                    from_estimate(site, contribution, pka.max(floor))
+                    let pka = bounds::held(pka, site.class).max(floor);
+                    from_estimate(site, contribution, pka)
                 }
             }
         })
@@ -314,7 +316,8 @@ mod tests {
         let sites = all("OC(=O)CC(=O)CCC#N", &library());
         assert!(sites.is_sorted_by(|a, b| a.pka_dmso <= b.pka_dmso));
         assert_eq!(sites[0].class, AnionClass::Carboxylate);
-        let strange = all("CS(C)(=N)=O", &library());
+        let strange = all("N#CCB(O)O", &library());
+        assert!(!strange.is_empty());
         assert!(strange.iter().all(|site| site.outside));
         assert!(!all("CCCC(=O)OC", &library())[0].outside);
     }
@@ -323,14 +326,10 @@ mod tests {
     fn every_descriptor_has_a_coefficient() {
         for acidity in library().acidities() {
             for site in sites(&Molecule::parse(&acidity.smiles).unwrap()) {
-                let contribution = form().contribution(&site.descriptors);
-                assert_eq!(
-                    contribution.unknown(),
-                    0,
-                    "{}: {:?}",
-                    acidity.smiles,
-                    site.descriptors
-                );
+                for (name, _) in &site.descriptors {
+                    let known = coefficients().iter().any(|term| term.name == *name);
+                    assert!(known, "{}: {name}", acidity.smiles);
+                }
             }
         }
     }

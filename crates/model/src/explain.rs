@@ -3,11 +3,11 @@
 mod rates;
 
 use enolattice_molecule::AnionClass;
-use enolattice_reagents::Cation;
-use enolattice_units::delta_g_kj_mol;
+use enolattice_reagents::{Cation, Library};
+use enolattice_units::{LN_10, R_KJ, delta_g_kj_mol, log10_k_at};
 
 use crate::advice::advice;
-use crate::balance::{Acid, proton_balance};
+use crate::balance::{Reached, proton_balance, whole_pot};
 use crate::explanation::{CoursePoint, ExplainedSite};
 use crate::formation::Pots;
 use crate::kinetics::{Kinetics, Nudge};
@@ -17,8 +17,12 @@ use crate::outcome::Outcome;
 use crate::parameters::Values;
 use crate::program::Charge;
 use crate::reference::{Course, integrate};
-use crate::screen::{Coverage, cautions_of, coverage, feasibility, over_uncertainty, solve};
-use crate::{AcidSite, Cell, Contents, Explanation, Model, ModelError, Origin};
+use crate::screen::{
+    Coverage, Spread, cautions_of, coverage, feasibility, over_uncertainty, solve,
+};
+use crate::{
+    AcidSite, Cell, Contents, Explanation, Model, ModelError, Origin, SiteReasons, Term, reasons,
+};
 
 /// Yield of the wanted product at the mean of all parameters: fast solver, then reference.
 pub(crate) fn both_solvers(cell: &Cell, values: &Values) -> Result<Option<(f64, f64)>, ModelError> {
@@ -69,7 +73,7 @@ pub(crate) fn explain(
         Nudge::default(),
     );
     let mut explanation = Explanation {
-        sites: sites(cell, &kinetics),
+        sites: sites(cell, &kinetics, model.library()),
         cautions: cautions_of(cell),
         hazards: Contents::from(cell).hazards(),
         model: model.fingerprint().to_string(),
@@ -175,12 +179,30 @@ fn deprotonation(explanation: &mut Explanation, cell: &Cell, kinetics: &Kinetics
     if let Some(site) = cell.substrate.carbon.first() {
         let log10_k = kinetics.pka_base() - kinetics.site_pka(site);
         explanation.log10_k = Some(log10_k);
+        explanation.log10_k_sigma = Some(log10_k_sigma(cell));
         explanation.delta_g_deprotonation_kj_mol =
             Some(delta_g_kj_mol(log10_k, cell.conditions.temperature_c));
     }
 }
 
-fn sites(cell: &Cell, kinetics: &Kinetics<'_>) -> Vec<ExplainedSite> {
+/// Standard uncertainty of what the charge of the first anion adds to a second pKa.
+const SECOND_CHARGE_SIGMA: f64 = 2.0;
+
+/// Standard uncertainty of ΔS° of a proton transfer between two acids, J/(mol K): charge and number of
+/// molecules stay, solvation of the anions differs (from memory).
+const ENTROPY_SIGMA_J: f64 = 15.0;
+
+/// Standard uncertainty of log10 K at the temperature of the reaction.
+///
+/// `log K(T) = ΔpKa·298.15/T + ΔS°·(1 − 298.15/T)/(R·ln 10)` with ΔS° = 0 ± [`ENTROPY_SIGMA_J`].
+fn log10_k_sigma(cell: &Cell) -> f64 {
+    let ratio = log10_k_at(1.0, cell.conditions.temperature_c);
+    let acidities = Spread::of(cell).acidity * ratio;
+    let entropy = ENTROPY_SIGMA_J * 1e-3 / (R_KJ * LN_10);
+    acidities.hypot(entropy * (1.0 - ratio))
+}
+
+fn sites(cell: &Cell, kinetics: &Kinetics<'_>, library: &Library) -> Vec<ExplainedSite> {
     let medium = &kinetics.medium;
     // contact ion pairs have no scale of free ions to be put on
     let own_scale = match medium.is_paired() && medium.cation != Cation::None {
@@ -197,6 +219,7 @@ fn sites(cell: &Cell, kinetics: &Kinetics<'_>) -> Vec<ExplainedSite> {
         sigma: site.sigma,
         origin: site.origin,
         source: site.source.clone(),
+        reasons: reasons(site, library),
     };
     let mut sites: Vec<_> = cell
         .substrate
@@ -204,6 +227,7 @@ fn sites(cell: &Cell, kinetics: &Kinetics<'_>) -> Vec<ExplainedSite> {
         .iter()
         .map(|site| explained("substrate", site))
         .collect();
+    sites.extend(second_proton(kinetics, own_scale, library));
     sites.extend(
         cell.electrophile
             .acid
@@ -235,6 +259,7 @@ fn sites(cell: &Cell, kinetics: &Kinetics<'_>) -> Vec<ExplainedSite> {
         sigma: base.pka_dmso.sigma,
         origin: Origin::Measured,
         source: base.pka_dmso.source.clone(),
+        reasons: SiteReasons::default(),
     });
     if let Some((acid, class)) = &cell.solvent.record.acid {
         sites.push(ExplainedSite {
@@ -247,9 +272,41 @@ fn sites(cell: &Cell, kinetics: &Kinetics<'_>) -> Vec<ExplainedSite> {
             sigma: acid.sigma,
             origin: Origin::Measured,
             source: acid.source.clone(),
+            reasons: SiteReasons::default(),
         });
     }
     sites
+}
+
+/// The C–H that the substrate's anion loses in its turn, where bases of the trade reach it.
+fn second_proton(
+    kinetics: &Kinetics<'_>,
+    own_scale: f64,
+    library: &Library,
+) -> Option<ExplainedSite> {
+    let (i, pka_dmso) = kinetics.second_site()?;
+    let site = &kinetics.cell.substrate.carbon[i].acid;
+    let mut reasons = reasons(site, library);
+    let charge = pka_dmso - site.pka_dmso;
+    if !reasons.terms.is_empty() {
+        reasons.terms.push(Term {
+            name: "charge of the first anion".to_owned(),
+            contribution: charge,
+            standard_error: SECOND_CHARGE_SIGMA,
+        });
+    }
+    Some(ExplainedSite {
+        molecule: "substrate anion",
+        atom: site.atom,
+        element: symbol(site.element),
+        hydrogens: site.hydrogens,
+        pka_dmso,
+        pka_medium: kinetics.pka(pka_dmso, site.class) + own_scale,
+        sigma: site.sigma.hypot(SECOND_CHARGE_SIGMA),
+        origin: Origin::Estimated,
+        source: format!("the first pKa of the site and {charge:.0} for the charge of the anion"),
+        reasons,
+    })
 }
 
 /// Symbol of the atom that takes the proton of an anion of this class.
@@ -294,50 +351,11 @@ fn course_points(course: &Course, network: &Network, site: usize) -> Vec<CourseP
 
 /// What the proton balance alone, with all base dissolved and no electrophile, makes of the substrate.
 fn at_equilibrium(cell: &Cell, kinetics: &Kinetics<'_>) -> String {
-    let conditions = &cell.conditions;
-    let substrate_m = conditions.concentration_m;
-    let acid = |name: &str, pka: f64, acid_m: f64, anion_m: f64| Acid {
-        name: name.to_owned(),
-        pkas: vec![pka],
-        charged_m: vec![acid_m, anion_m],
-    };
-    let mut pkas: Vec<f64> = kinetics
-        .first_heteroatom()
-        .map(|x| kinetics.pka(x.pka_dmso, x.class))
-        .into_iter()
-        .collect();
-    pkas.push(
-        match (kinetics.first_heteroatom(), kinetics.second_site()) {
-            (Some(_), Some((site, second))) => {
-                kinetics.pka(second, cell.substrate.carbon[site].acid.class)
-            }
-            _ => kinetics.site_pka(&cell.substrate.carbon[0]),
-        },
-    );
-    let mut charged_m = vec![0.0; pkas.len() + 1];
-    charged_m[0] = substrate_m;
-    let mut acids = vec![
-        Acid {
-            name: "substrate".to_owned(),
-            pkas,
-            charged_m,
-        },
-        acid(
-            "base",
-            kinetics.pka_base(),
-            0.0,
-            substrate_m * conditions.base_equiv,
-        ),
-    ];
-    if let Some((value, class)) = &cell.solvent.record.acid {
-        let pka = kinetics.pka(value.value, *class);
-        acids.push(acid("solvent", pka, cell.solvent.record.acid_m, 0.0));
-    }
-    let forms = proton_balance(&acids);
-    let carbanion = forms[0].last().copied().unwrap_or_default() / substrate_m;
+    let forms = proton_balance(&whole_pot(kinetics, Reached::BeforeElectrophile));
+    let carbanion = forms[0].free_m.last().copied().unwrap_or_default();
     format!(
         "proton balance with all base dissolved, before the electrophile: {:.3} of the substrate is carbanion at equilibrium",
-        carbanion
+        carbanion / cell.conditions.concentration_m
     )
 }
 

@@ -1,6 +1,6 @@
 //! Everything about one cell, with sources.
 
-use crate::{Caution, Channel, Origin};
+use crate::{Caution, Channel, Origin, SiteReasons};
 
 /// Everything the model has to say about one cell.
 #[derive(Clone, Debug, Default)]
@@ -31,8 +31,10 @@ pub struct Explanation {
     pub condensation_smiles: Option<String>,
     /// Standard free energy of the deprotonation of the favoured site in the medium, kJ/mol.
     pub delta_g_deprotonation_kj_mol: Option<f64>,
-    /// log10 K of the deprotonation.
+    /// log10 K of the deprotonation at the temperature of the reaction.
     pub log10_k: Option<f64>,
+    /// Standard uncertainty of `log10_k`: both pKa, the medium, and the entropy that is taken as zero.
+    pub log10_k_sigma: Option<f64>,
     /// Fraction of the substrate that is carbanion when the electrophile comes, 0–1.
     pub enolate_fraction: Option<f64>,
     /// Acidic sites of all molecules of the cell.
@@ -58,7 +60,7 @@ pub struct Explanation {
 /// An acidic site of a molecule in the cell.
 #[derive(Clone, Debug)]
 pub struct ExplainedSite {
-    /// `substrate`, `product`, `electrophile`, `solvent` or `base`.
+    /// `substrate`, `substrate anion` (its second proton), `product`, `electrophile`, `solvent` or `base`.
     pub molecule: &'static str,
     /// Atom index from 0 in the order of the molecule's SMILES.
     pub atom: usize,
@@ -76,6 +78,8 @@ pub struct ExplainedSite {
     pub origin: Origin,
     /// Source of the value.
     pub source: String,
+    /// Terms of an estimate and the measured neighbours that it rests on; empty for a measured value.
+    pub reasons: SiteReasons,
 }
 
 /// A rate constant of the cell.

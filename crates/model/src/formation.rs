@@ -57,6 +57,9 @@ impl Pots {
 }
 
 impl FormationTable {
+    /// About how many bytes a pot takes: a hash table is between half and nearly full.
+    pub const POT_BYTES: u64 = 2 * size_of::<(u64, Pots)>() as u64;
+
     /// The pots under this key, formed now if they are not there.
     pub(crate) fn of(&self, key: u64, cell: &Cell, values: &Values) -> Pots {
         if let Some(pots) = self.lock().get(&key) {

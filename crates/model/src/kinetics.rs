@@ -5,6 +5,8 @@ mod equilibria;
 mod fates;
 mod nucleophiles;
 
+pub(crate) use nucleophiles::nucleophilicity_of;
+
 use enolattice_molecule::{AlkylGroup, AnionClass, ElectrophileKind, LeavingGroup};
 use enolattice_reagents::BaseKind;
 use enolattice_units::math;

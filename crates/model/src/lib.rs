@@ -36,7 +36,7 @@ pub use acidity::{
     AcidSite, Coefficient, Contribution, Coverage, Form, Neighbour, Origin, Role, SiteReasons,
     Term, Uptake, acid_sites, coefficients, estimate, local_sigma, reasons, similarity,
 };
-pub use balance::{Acid, proton_balance};
+pub use balance::{Acid, Forms, proton_balance};
 pub use cautions::{
     Category, Caution, CautionShare, Contents, Severity, additive_cautions, caution_bits, cautions,
     hazard_statements, join_caution_bits,

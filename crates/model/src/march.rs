@@ -77,6 +77,7 @@ struct Term<const L: usize> {
     k: Lanes<L>,
     first: usize,
     second: usize,
+    third: usize,
     /// Range of its entries in [`Solver::changes`].
     changes: (usize, usize),
 }
@@ -111,10 +112,8 @@ impl<const L: usize> Solver<L> {
             }
         };
         for reaction in reactions {
-            enter(reaction.first);
             reaction
-                .second
-                .into_iter()
+                .reactants()
                 .chain(reaction.with)
                 .for_each(&mut enter);
         }
@@ -146,17 +145,9 @@ impl<const L: usize> Solver<L> {
 
     fn enter(&mut self, reaction: &Reaction, k: Lanes<L>, place: &[usize; Species::COUNT]) {
         let start = self.changes.len();
-        let used = reaction
-            .second
-            .into_iter()
-            .chain(reaction.with)
-            .map(|s| (s, -1.0));
+        let used = reaction.reactants().chain(reaction.with).map(|s| (s, -1.0));
         let formed = reaction.products.into_iter().flatten().map(|s| (s, 1.0));
-        for (species, change) in [(reaction.first, -1.0)]
-            .into_iter()
-            .chain(used)
-            .chain(formed)
-        {
+        for (species, change) in used.chain(formed) {
             let i = place[species.index()];
             if i == ABSENT {
                 continue;
@@ -170,6 +161,7 @@ impl<const L: usize> Solver<L> {
             k,
             first: place[reaction.first.index()],
             second: reaction.second.map_or(ABSENT, |s| place[s.index()]),
+            third: reaction.third.map_or(ABSENT, |s| place[s.index()]),
             changes: (start, self.changes.len()),
         });
     }
@@ -182,7 +174,7 @@ impl<const L: usize> Solver<L> {
         for iteration in 1..=NEWTON {
             self.linearise(pots, dt);
             self.eliminate();
-            if iteration == NEWTON || self.is_solved() {
+            if iteration == NEWTON || self.is_solved(dt) {
                 break;
             }
             // a step that would leave the positive root is cut; the next full one mends the mass
@@ -194,7 +186,7 @@ impl<const L: usize> Solver<L> {
         self.book(pots, dt);
     }
 
-    fn is_solved(&self) -> bool {
+    fn is_solved(&self, dt: f64) -> bool {
         let (mut change, mut least) = (0.0_f64, 0.0_f64);
         for (y, delta) in self.y.iter().zip(&self.delta).take(self.unknowns.len()) {
             for l in 0..L {
@@ -202,7 +194,28 @@ impl<const L: usize> Solver<L> {
                 least = least.min(y.0[l] + delta.0[l]);
             }
         }
-        change < TOLERANCE * self.scale && least > -NEGATIVE * self.scale
+        change < TOLERANCE * self.scale
+            && least > -NEGATIVE * self.scale
+            && self.left_out(dt) < TOLERANCE * self.scale
+    }
+
+    /// Largest extent that the linearisation of a rate leaves out, `Δt·k·δa·δb`.
+    fn left_out(&self, dt: f64) -> f64 {
+        let mut most = 0.0_f64;
+        for term in self.terms.iter().filter(|term| term.second != ABSENT) {
+            let (a, b) = (
+                self.delta[term.first % ROOM],
+                self.delta[term.second % ROOM],
+            );
+            let mut extent = term.k * a * b;
+            if term.third != ABSENT {
+                extent = extent * self.y[term.third % ROOM];
+            }
+            for l in 0..L {
+                most = most.max((dt * extent.0[l]).abs());
+            }
+        }
+        most
     }
 
     /// Residual `y₀ + Δt·f(y) − y` and matrix `1 − Δt·∂f/∂y`.
@@ -225,7 +238,7 @@ impl<const L: usize> Solver<L> {
                     self.residual[i % ROOM] += change * a;
                     self.matrix[i][term.first % ROOM] -= change;
                 }
-            } else {
+            } else if term.third == ABSENT {
                 let b = self.y[term.second % ROOM];
                 let (by_first, by_second) = (kdt * b, kdt * a);
                 let rate = by_first * a;
@@ -235,6 +248,21 @@ impl<const L: usize> Solver<L> {
                     let row = &mut self.matrix[i];
                     row[term.first % ROOM] -= change * by_first;
                     row[term.second % ROOM] -= change * by_second;
+                }
+            } else {
+                let (b, c) = (self.y[term.second % ROOM], self.y[term.third % ROOM]);
+                let slopes = [kdt * b * c, kdt * a * c, kdt * a * b];
+                let rate = slopes[0] * a;
+                for &(i, change) in changes {
+                    let change = Lanes::all(change);
+                    self.residual[i % ROOM] += change * rate;
+                    let row = &mut self.matrix[i];
+                    for (by, slope) in [term.first, term.second, term.third]
+                        .into_iter()
+                        .zip(slopes)
+                    {
+                        row[by % ROOM] -= change * slope;
+                    }
                 }
             }
         }
@@ -282,7 +310,13 @@ impl<const L: usize> Solver<L> {
                 a + da
             } else {
                 let (b, db) = (self.y[term.second], self.delta[term.second]);
-                a * b + da * b + a * db
+                let linear = a * b + da * b + a * db;
+                if term.third == ABSENT {
+                    linear
+                } else {
+                    let (c, dc) = (self.y[term.third], self.delta[term.third]);
+                    linear * c + a * b * dc
+                }
             };
             let extent = extent * term.k * Lanes::all(dt);
             pots.iter_mut()
@@ -328,7 +362,8 @@ mod tests {
             reactions: vec![Reaction {
                 first: Species::Substrate,
                 second: Some(Species::Electrophile),
-                products: [Some(Species::Product(0)), None],
+                third: None,
+                products: [Some(Species::Product(0)), None, None],
                 with: None,
                 k,
             }],

@@ -63,7 +63,11 @@ impl Medium<'_> {
         self.is_paired()
             && matches!(
                 self.cation,
-                Cation::Lithium | Cation::Magnesium | Cation::Zinc
+                Cation::Lithium
+                    | Cation::Magnesium
+                    | Cation::Calcium
+                    | Cation::Barium
+                    | Cation::Zinc
             )
     }
 
@@ -94,7 +98,8 @@ impl Medium<'_> {
             Cation::Potassium => values.get(P::PAIR_POTASSIUM),
             Cation::Caesium => values.get(P::PAIR_CAESIUM),
             Cation::Ammonium => values.get(P::PAIR_AMMONIUM),
-            Cation::Magnesium => values.get(P::PAIR_MAGNESIUM),
+            // no value is known for the other two: they are taken as magnesium (estimate)
+            Cation::Magnesium | Cation::Calcium | Cation::Barium => values.get(P::PAIR_MAGNESIUM),
             Cation::Zinc => values.get(P::PAIR_ZINC),
             Cation::None => 0.0,
         };
@@ -131,7 +136,7 @@ impl Medium<'_> {
     /// Form and parameters: see each entry of the parameter vector.
     pub(crate) fn pka(&self, pka_dmso: f64, class: AnionClass, values: &Values) -> f64 {
         let shift = if class == AnionClass::Neutral {
-            self.cationic_shift(1, values) - self.onium_pairing(values)
+            self.cationic_shift(1, values) + self.onium_charge(values)
         } else {
             let pairing = localisation(class).map_or(0.0, |p| values.get(p));
             self.hydrogen_bond_shift(pka_dmso, class, values) + pairing * self.pair_strength(values)
@@ -142,33 +147,37 @@ impl Medium<'_> {
     /// The pKa of a cationic acid with this many N–H as it acts in a pot: contact pairs with the anions of the
     /// pot make its base stronger in media of low permittivity.
     pub(crate) fn pka_cationic(&self, pka_dmso: f64, donors: u8, values: &Values) -> f64 {
-        let shift = self.cationic_shift(donors, values) - self.onium_pairing(values);
+        let shift = self.cationic_shift(donors, values) + self.onium_charge(values);
         log10_k_at(pka_dmso - shift, self.temperature_c)
     }
 
     /// The pKa of the same acid as free ions.
     pub(crate) fn pka_cationic_free(&self, pka_dmso: f64, donors: u8, values: &Values) -> f64 {
-        let shift = self.cationic_shift(donors, values);
+        let shift = self.cationic_shift(donors, values) + self.charge_separation(values);
         log10_k_at(pka_dmso - shift, self.temperature_c)
     }
 
-    fn onium_pairing(&self, values: &Values) -> f64 {
+    /// What the charges of an onium ion and its anion cost: a contact pair never parts them and gains by its own
+    /// hydrogen bond, free ions pay for the separation.
+    fn onium_charge(&self, values: &Values) -> f64 {
         if self.is_paired() {
-            values.get(P::ONIUM_PAIR)
+            -values.get(P::ONIUM_PAIR)
         } else {
+            self.charge_separation(values)
+        }
+    }
+
+    fn charge_separation(&self, values: &Values) -> f64 {
+        if self.is_protic() {
             0.0
+        } else {
+            values.get(P::CHARGE_SEPARATION) * self.reciprocal_permittivity().max(0.0)
         }
     }
 
     fn cationic_shift(&self, donors: u8, values: &Values) -> f64 {
-        let separation = if self.is_protic() {
-            0.0
-        } else {
-            values.get(P::CHARGE_SEPARATION) * self.reciprocal_permittivity().max(0.0)
-        };
         let acceptance = ACCEPTANCE_DMSO - self.solvent.record.hydrogen_bond_acceptance;
         values.get(P::H_CATIONIC_ACID) * self.donation()
-            + separation
             + values.get(P::H_CATIONIC_DONOR) * f64::from(donors) * acceptance
     }
 

@@ -7,13 +7,17 @@ use enolattice_reagents::{Cation, Library};
 use sha2::{Digest, Sha256};
 
 use crate::acidity::acidity_texts;
+use crate::balance::{Reached, whole_pot};
 use crate::explain::explain;
 use crate::formation::{FormationTable, Pots};
+use crate::kinetics::{Kinetics, Nudge, nucleophilicity_of};
 use crate::medium::{Loosening, Medium};
+use crate::network::Species;
 use crate::parameters::{PARAMETERS, Parameter, Values};
-use crate::screen::{score, yield_at};
+use crate::screen::{self, score, yield_at};
 use crate::{
-    Additive, Base, Cell, Electrophile, Explanation, MeasuredPka, Pair, Score, Solvent, Substrate,
+    Acid, Additive, Base, Cell, Electrophile, Explanation, MeasuredPka, Pair, Score, Solvent,
+    Substrate,
 };
 
 /// SHA-256 over code version, data, coefficients and arithmetic.
@@ -103,6 +107,41 @@ impl Model {
             seed,
             number,
         }
+    }
+
+    /// The means of all parameters, but for those named: what a fit of a few of them tries.
+    pub fn draw_with(&self, changes: &[(&str, f64)]) -> Draw {
+        Draw {
+            values: Values::changed(changes),
+            seed: 0,
+            number: 0,
+        }
+    }
+
+    /// The carbanions of a cell's substrate when the electrophile comes: atom of the site, share of all
+    /// carbanions, by the fast solver.
+    pub fn enolates(&self, cell: &Cell, draw: &Draw) -> Vec<(usize, f64)> {
+        let pot = Pots::form(cell, &draw.values).mean;
+        let all = pot.over_sites(Species::Carbanion).max(f64::MIN_POSITIVE);
+        let sites = cell.substrate.carbon.iter().enumerate();
+        sites
+            .map(|(i, site)| (site.acid.atom, pot.of(Species::Carbanion(i)) / all))
+            .collect()
+    }
+
+    /// Mayr's N in DMSO of a substrate's favoured carbanion, the room it takes counted in.
+    pub fn nucleophilicity(&self, substrate: &Substrate, draw: &Draw) -> Option<f64> {
+        let site = substrate.carbon.first()?;
+        Some(nucleophilicity_of(site, &draw.values))
+    }
+
+    /// log10 of the rate of attack by the oxygen of the substrate's favoured anion over that by its carbon;
+    /// `None` where its oxygen does not attack.
+    pub fn oxygen_over_carbon(&self, cell: &Cell, draw: &Draw) -> Option<f64> {
+        let nudge = Nudge::default();
+        let temperature_c = cell.conditions.temperature_c;
+        let site = cell.substrate.carbon.first()?;
+        Kinetics::new(cell, temperature_c, &draw.values, nudge).oxygen_over_carbon(site)
     }
 
     /// Yield of the wanted product of a cell in one draw, by the fast solver; `None` where the model
@@ -201,6 +240,16 @@ impl Model {
         Pair::new(substrate, electrophile, &self.library)
     }
 
+    /// Why the model does not cover a substrate and an electrophile together, although it knows
+    /// each of them; none where it does, or where one of them is to blame alone.
+    pub fn pair_not_covered(
+        &self,
+        substrate: &Substrate,
+        electrophile: &Electrophile,
+    ) -> Option<&'static str> {
+        screen::pair_not_covered(substrate, electrophile)
+    }
+
     /// Screens one cell with the fast solver and quadrature. `cautions` are the cell's caution
     /// bits, which depend on few axes at a time and are tabled by the caller.
     pub fn score(&self, cell: &Cell, yield_at_least: f64, cautions: u32) -> Score {
@@ -230,6 +279,14 @@ impl Model {
     /// [`ModelError::Integration`] if the reference integrator gives up.
     pub fn both_solvers(&self, cell: &Cell) -> Result<Option<(f64, f64)>, ModelError> {
         crate::explain::both_solvers(cell, &self.means)
+    }
+
+    /// All acids and bases of a cell's pot with their pKa in its medium, `converted` of its substrate having become
+    /// the wanted product (0–1, at most what base and electrophile suffice for): what [`crate::proton_balance`] takes.
+    pub fn pot(&self, cell: &Cell, converted: f64) -> Vec<Acid> {
+        let temperature_c = cell.conditions.temperature_c;
+        let kinetics = Kinetics::new(cell, temperature_c, &self.means, Nudge::default());
+        whole_pot(&kinetics, Reached::Converted(converted))
     }
 
     /// Explains one cell: reference integration, every number with its source.

@@ -150,6 +150,15 @@ impl Species {
 #[derive(Clone, Copy, Debug, PartialEq)]
 pub(crate) struct Amounts(pub(crate) [f64; Species::COUNT]);
 
+impl Reaction {
+    /// Reactants of the rate.
+    pub(crate) fn reactants(&self) -> impl Iterator<Item = Species> + '_ {
+        [Some(self.first), self.second, self.third]
+            .into_iter()
+            .flatten()
+    }
+}
+
 impl Amounts {
     pub(crate) const NONE: Amounts = Amounts([0.0; Species::COUNT]);
 
@@ -203,15 +212,17 @@ impl Amounts {
     }
 }
 
-/// An elementary step: `rate = k·[first]·[second]`, or `k·[first]`.
+/// An elementary step: `rate = k·[first]·[second]·[third]`, of those that there are.
 #[derive(Clone, Copy, Debug)]
 pub(crate) struct Reaction {
     /// First reactant.
     pub(crate) first: Species,
     /// Second reactant.
     pub(crate) second: Option<Species>,
+    /// Third reactant.
+    pub(crate) third: Option<Species>,
     /// Products; also the catalyst where there is one.
-    pub(crate) products: [Option<Species>; 2],
+    pub(crate) products: [Option<Species>; 3],
     /// A proton source that is used up too but not in the rate.
     pub(crate) with: Option<Species>,
     /// Rate constant; L, mol, s.
@@ -252,12 +263,8 @@ impl Network {
         let matters = |index: usize| {
             networks.iter().any(|network| {
                 let r = &network.reactions[index];
-                let order = if r.second.is_some() {
-                    largest * largest
-                } else {
-                    largest
-                };
-                r.k * order * time > LEAST_EXTENT_M
+                let amounts: f64 = r.reactants().map(|_| largest).product();
+                r.k * amounts * time > LEAST_EXTENT_M
             })
         };
         let mut kept: Vec<bool> = (0..first.reactions.len()).map(matters).collect();
@@ -265,9 +272,7 @@ impl Network {
         for species in present {
             reachable[species.index()] = true;
         }
-        let can = |r: &Reaction, reachable: &[bool]| {
-            reachable[r.first.index()] && r.second.is_none_or(|s| reachable[s.index()])
-        };
+        let can = |r: &Reaction, reachable: &[bool]| r.reactants().all(|s| reachable[s.index()]);
         loop {
             let mut grew = false;
             for (r, _) in first.reactions.iter().zip(&kept).filter(|(_, kept)| **kept) {

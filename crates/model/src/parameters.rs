@@ -33,6 +33,8 @@ macro_rules! parameters {
 }
 
 const WATER_PAIRS: &str = "mean pKa(DMSO) − pKa(water) of the class in reference_pairs (Bordwell 1988 and standard compilations, from memory)";
+const NUCLEOPHILES: &str =
+    "fitted to the carbanions of mayr_nucleophiles in DMSO with measured pKa";
 const MEMORY: &str = "from memory";
 
 parameters! {
@@ -75,7 +77,7 @@ parameters! {
     H_CATIONIC_DONOR = 3.6, 0.7, "pK", "ammonium ions with one to four N–H in water, MeCN and DMSO (reference_pairs, from memory)";
     /// Contact pairs of a cationic acid with the anions of the pot, for which it needs no solvent: effective pK
     /// units in media of low permittivity at the concentrations of the trade.
-    ONIUM_PAIR = 3.0, 1.0, "pK", "phosphazenes and amidines ionise carbon acids of their own strength in dichloromethane and THF (common practice)";
+    ONIUM_PAIR = 1.3, 1.0, "pK", "phosphazenes and amidines ionise carbon acids of their own strength in dichloromethane and THF, amines make ion pairs of phenols in benzene (common practice)";
     /// pKa on the medium's own scale less that on the scale anchored in DMSO: one number for all acids,
     /// which cancels in every equilibrium.
     SCALE_MECN = 11.0, 0.3, "pK", "neutral and cationic acids of reference_pairs in MeCN against DMSO (Kütt, Leito and others, from memory)";
@@ -139,7 +141,7 @@ parameters! {
     /// A carbonyl group that binds the metal of a contact pair, or takes the hydrogen bond of a hydroxylic solvent,
     /// is attacked faster than in DMSO.
     CARBONYL_METAL = 2.0, 0.8, "log10", "lithium enolates add to esters and amides with chelating groups within minutes at −78 °C (common practice)";
-    CARBONYL_PROTIC = 2.0, 1.0, "log10", "nitronates add to benzaldehyde in methanol within minutes at 10 °C (common practice)";
+    CARBONYL_PROTIC = 1.0, 1.0, "log10", "nitronates add to benzaldehyde in methanol within minutes at 10 °C (common practice)";
     /// log10 of K of four lithium enolate monomers to a tetramer in THF at 25 °C.
     TETRAMER = 8.7, 0.4, "log10 L³/mol³", "Abbotto, Streitwieser and others on lithium ketone enolates in THF: 5·10^8 M^-3 (from memory)";
     STERIC_SN2 = -0.9, 0.3, "log10", MEMORY;
@@ -152,9 +154,16 @@ parameters! {
     /// A crowded carbanion and a substituted β carbon together.
     STERIC_PAIR = -1.5, 0.5, "log10", MEMORY;
     STERIC_BRANCH = -1.0, 0.3, "log10", MEMORY;
-    /// N = intercept + slope·pKa(DMSO) of carbanions, and its loss by hydrogen bonds.
-    MAYR_N_INTERCEPT = 8.35, 0.8, "1", "line through mayr_nucleophiles against pka_dmso_ch (leave-one-out MAE 1.9)";
-    MAYR_N_SLOPE = 0.78, 0.04, "1", "line through mayr_nucleophiles against pka_dmso_ch";
+    /// N in DMSO = intercept + slope·pKa(DMSO) + class of carbanions, and its loss by hydrogen bonds.
+    MAYR_N_INTERCEPT = 9.1, 0.8, "1", NUCLEOPHILES;
+    MAYR_N_SLOPE = 0.79, 0.04, "1", NUCLEOPHILES;
+    MAYR_N_NITRILE = 2.0, 0.7, "1", NUCLEOPHILES;
+    MAYR_N_NITRONATE = -1.1, 0.7, "1", NUCLEOPHILES;
+    MAYR_N_SULFONE = -0.9, 0.7, "1", NUCLEOPHILES;
+    MAYR_N_DICARBONYL = -2.3, 0.7, "1", NUCLEOPHILES;
+    MAYR_N_IMINO = 2.9, 1.0, "1", NUCLEOPHILES;
+    MAYR_N_PHOSPHORYL = -3.0, 1.3, "1", NUCLEOPHILES;
+    MAYR_N_LARGEST = 28.5, 1.0, "1", "no carbanion in mayr_nucleophiles lies above 29.1";
     MAYR_N_SOLVATION = 1.05, 0.15, "1", "mayr_nucleophiles in water and alcohols against DMSO";
     MAYR_S_N = 0.62, 0.05, "1", "mean of carbanions in mayr_nucleophiles";
     /// E2 of a primary bromide with a base whose acid has pKa 19.9 in the medium.
@@ -165,13 +174,18 @@ parameters! {
     E2_LEAVING = 0.9, 0.1, "1", MEMORY;
     E2_BRONSTED = 0.25, 0.08, "1", MEMORY;
     /// log10 (kO/kC) of the classes of ambident anions.
-    O_BETA_DICARBONYL = 1.0, 0.4, "log10", "fitted to c_vs_o_alkylation (Kurts and others 1971, from memory)";
+    O_BETA_DICARBONYL = 0.7, 0.3, "log10", "fitted to c_vs_o_alkylation (Kurts and others 1971, from memory)";
+    O_DIESTER = -1.2, 0.6, "log10", "malonates and cyanoacetates are alkylated at carbon in every solvent (common practice)";
     O_KETONE = 0.6, 0.5, "log10", "fitted to c_vs_o_alkylation (from memory)";
     O_ESTER = -0.8, 0.5, "log10", MEMORY;
-    O_NITRONATE = 3.1, 0.6, "log10", "Hass and Bender, J. Am. Chem. Soc. 1949, 71, 1767 (from memory)";
-    O_DIPOLAR = -0.6, 0.3, "log10", "fitted to c_vs_o_alkylation (Kurts and others 1971, from memory)";
+    O_NITRONATE = 4.7, 0.6, "log10", "Hass and Bender, J. Am. Chem. Soc. 1949, 71, 1767 (from memory)";
+    O_IODIDE = -2.2, 0.5, "log10", "fitted to c_vs_o_alkylation (Kurts and others 1971, from memory)";
+    O_BROMIDE = -0.75, 0.3, "log10", "fitted to c_vs_o_alkylation (Kurts and others 1971, from memory)";
+    O_CHLORIDE = -0.5, 0.3, "log10", "fitted to c_vs_o_alkylation (Kurts and others 1971, from memory)";
+    O_BARE = 0.0, 0.3, "log10", "fitted to c_vs_o_alkylation (Kurts and others 1971, from memory)";
+    O_DIPOLAR = -0.4, 0.4, "log10", "less oxygen in DMF and DMSO than in HMPA (from memory)";
     O_ETHER = -1.3, 0.4, "log10", "fitted to c_vs_o_alkylation (from memory)";
-    O_PROTIC = -2.2, 0.4, "log10", "fitted to c_vs_o_alkylation (Kurts and others 1971, from memory)";
+    O_PROTIC = -2.6, 0.4, "log10", "fitted to c_vs_o_alkylation (Kurts and others 1971, from memory)";
     /// What the group that leaves adds to it in acyl, silyl and sulfonyl transfer, on the scale of a sulfonate.
     O_ACYL_HALIDE = 1.0, 0.6, "log10", "acyl chlorides take sodium and lithium enolates of ketones at both ends (common practice)";
     O_ACYL_MILD = -1.5, 0.7, "log10", "acyl cyanides, azoles and esters acylate at carbon (common practice)";
@@ -192,7 +206,8 @@ parameters! {
     DG_ALDOL_ALKYL = -2.5, 0.8, "kcal/mol", MEMORY;
     DG_ALDOL_ARYL = -1.5, 0.8, "kcal/mol", MEMORY;
     DG_ALDOL_NITRO = -2.7, 0.8, "kcal/mol", MEMORY;
-    DG_ALDOL_STABILISED = 0.0, 1.0, "kcal/mol", MEMORY;
+    DG_ALDOL_STABILISED = 3.0, 1.0, "kcal/mol", "adducts of malonates and acetoacetates to aldehydes are not found, they go back or lose water (common practice)";
+    DG_ALDOL_CYANO = -1.5, 1.0, "kcal/mol", "adducts of malononitrile are seen (from memory)";
     DG_ALDOL_KETONE_ACCEPTOR = 4.5, 1.0, "kcal/mol", MEMORY;
     DG_MICHAEL = -9.0, 1.5, "kcal/mol", MEMORY;
     DG_MICHAEL_BETA = 1.6, 0.5, "kcal/mol", MEMORY;
@@ -201,6 +216,11 @@ parameters! {
     DG_CLAISEN_KETONE = 0.5, 1.0, "kcal/mol", MEMORY;
     DG_CLAISEN_ACTIVE = -3.0, 1.5, "kcal/mol", "formates, oxalates and aryl esters acylate further downhill than alkyl esters (from memory)";
     DG_CLAISEN_CARBONATE = 1.0, 1.5, "kcal/mol", MEMORY;
+    /// log10 of the association constant of a carbanion with the acid of the base, which hands its proton over as the
+    /// new bond forms: onium ions in dipolar and in less polar solvents, neutral acids.
+    ASSISTED_DIPOLAR = 1.5, 0.7, "log10 L/mol", "contact pairs at a permittivity of 37 (Fuoss, J. Am. Chem. Soc. 1958, 80, 5059, from memory)";
+    ASSISTED_APOLAR = 4.0, 1.0, "log10 L/mol", "contact pairs at a permittivity of 7 (Fuoss, J. Am. Chem. Soc. 1958, 80, 5059, from memory)";
+    ASSISTED_NEUTRAL = 0.0, 0.7, "log10 L/mol", MEMORY;
     DG_IMINE = -4.0, 2.0, "kcal/mol", MEMORY;
     DG_ACTIVATED_KETONE = -3.0, 1.5, "kcal/mol", MEMORY;
     DG_DEHYDRATION = -4.0, 1.5, "kcal/mol", "aldol condensations with aromatic aldehydes go to completion (common practice)";
@@ -221,7 +241,9 @@ parameters! {
     IMINIUM_ELIMINATION = 4.0, 1.0, "log10", "the amine leaves where hydroxide would have to (common practice)";
     /// Loss of water from an aldol adduct by hydroxide or alkoxide; weaker bases are slower by the Brønsted
     /// term of the gap of their acids.
-    DEHYDRATION_BRONSTED = 0.4, 0.1, "1", "general base catalysis of ionisation at carbon, 0.4 to 0.6 (from memory)";
+    DEHYDRATION_BRONSTED = 0.5, 0.1, "1", "general base catalysis of ionisation at carbon, 0.4 to 0.6 (from memory)";
+    /// By how much an adduct loses water faster for each pK unit by which its C–H is more acidic than that of a ketone.
+    DEHYDRATION_ACIDITY = 0.45, 0.15, "1", "adducts of malononitrile and 1,3-dicarbonyl compounds lose water with catalytic amines at room temperature, those of ketones need alkali, those of esters stay (common practice)";
     DEHYDRATION_ARYL = -2.3, 0.7, "log10 L/(mol s)", MEMORY;
     DEHYDRATION_ALKYL = -4.0, 0.8, "log10 L/(mol s)", MEMORY;
     /// The same from the substrate's own aldol dimer: an aldehyde activates its α hydrogen more than a ketone.
@@ -236,6 +258,10 @@ parameters! {
     /// Second ionisation: the other charge conjugated or remote.
     SECOND_CONJUGATED = 7.5, 1.5, "pK", MEMORY;
     SECOND_REMOTE = 3.0, 1.0, "pK", MEMORY;
+    /// Halogen–lithium exchange of aryl and vinyl halides with alkyllithiums.
+    HALOGEN_LITHIUM_IODIDE = 5.0, 1.0, "log10 L/(mol s)", "aryl iodides exchange at −100 °C within minutes (common practice)";
+    HALOGEN_LITHIUM_BROMIDE = 3.5, 1.0, "log10 L/(mol s)", "aryl bromides exchange with butyllithium in THF at −78 °C within minutes (common practice)";
+    CANNIZZARO = -5.5, 1.0, "log10 L²/(mol² s)", "benzaldehyde needs concentrated alkali for a day (common practice)";
     /// Solvolysis of a tertiary bromide in ethanol; benzylic and allylic ones follow.
     SOLVOLYSIS_TERTIARY = -5.4, 0.3, "log10 1/s", "tert-butyl bromide in ethanol at 25 °C (Grunwald and Winstein, J. Am. Chem. Soc. 1948, 70, 846, from memory)";
     SOLVOLYSIS_ACTIVATED = -5.5, 0.7, "log10 1/s", MEMORY;
@@ -262,6 +288,15 @@ impl Values {
                 .map(|(i, p)| p.mean + p.sigma * deviate(i))
                 .collect(),
         )
+    }
+
+    /// The means, but for the parameters named; names that are no parameter's change nothing.
+    pub(crate) fn changed(changes: &[(&str, f64)]) -> Values {
+        let value = |p: &Parameter| {
+            let change = changes.iter().find(|(name, _)| *name == p.name);
+            change.map_or(p.mean, |(_, value)| *value)
+        };
+        Values(PARAMETERS.iter().map(value).collect())
     }
 
     /// The value of a parameter.

@@ -11,6 +11,7 @@ use crate::acidity::{AcidSite, Origin, acid_sites};
 use crate::carbonyl::{Carbonyl, self_acceptor};
 use crate::electrophilicity::electrophilicity;
 use crate::medium::Loosening;
+use crate::parameters::P;
 
 /// Carbon sites that compete in a cell; further ones are less acidic and left out.
 pub(crate) const SITES: usize = 3;
@@ -28,6 +29,15 @@ pub struct MeasuredPka {
     pub sigma: f64,
 }
 
+/// A group next to a carbanion that makes it a better or worse nucleophile than others of its basicity.
+#[derive(Clone, Copy, Debug, PartialEq, Eq)]
+pub(crate) enum Beside {
+    /// The nitrogen of an imine: a 2-azaallyl anion.
+    Imino,
+    /// A phosphoryl group.
+    Phosphoryl,
+}
+
 /// A carbon site of a substrate and what it is as a nucleophile.
 #[derive(Clone, Debug)]
 pub(crate) struct CarbonSite {
@@ -37,10 +47,17 @@ pub(crate) struct CarbonSite {
     pub(crate) hydrogens: f64,
     /// Heavy neighbours of the atom: 1 for a methyl group.
     pub(crate) degree: u8,
-    /// Heavy neighbours beyond two: 1 where the new bond makes a quaternary carbon.
+    /// Heavy neighbours beyond two, but for cyano and ethynyl groups, which take no room: 1 where the new bond makes a
+    /// quaternary carbon.
     pub(crate) crowding: u8,
     /// Branches of the plain carbon substituents next to the site.
     pub(crate) branches: u8,
+    /// A neighbour that counts for the rate.
+    pub(crate) beside: Option<Beside>,
+    /// Whether a ketone or aldehyde activates it, whose oxygen competes with the carbon more than that of an ester.
+    pub(crate) beside_ketone: bool,
+    /// Whether a cyano group activates it.
+    pub(crate) beside_cyano: bool,
 }
 
 /// A substrate with its acidic sites.
@@ -58,6 +75,8 @@ pub struct Substrate {
     pub(crate) heteroatom: Option<AcidSite>,
     /// The substrate's own carbonyl group as an acceptor.
     pub(crate) acceptor: Option<Carbonyl>,
+    /// Rate of exchange of the halogen on an arene or alkene that alkyllithiums take first.
+    pub(crate) exchangeable_halogen: Option<P>,
 }
 
 impl Substrate {
@@ -88,6 +107,7 @@ impl Substrate {
             .find(|site| site.element != 6 && site.hydrogens > 0)
             .cloned();
         let acceptor = self_acceptor(&molecule);
+        let exchangeable_halogen = exchangeable_halogen(&molecule);
         Substrate {
             name: name.to_owned(),
             molecule,
@@ -95,7 +115,18 @@ impl Substrate {
             carbon,
             heteroatom,
             acceptor,
+            exchangeable_halogen,
         }
+    }
+
+    /// The site by which the substrate condenses with itself: an acidic and open one.
+    pub(crate) fn condensing_site(&self) -> usize {
+        // a substituent costs an addition to a carbonyl group about as much as this in acidity (from memory)
+        const SUBSTITUENT_PK: f64 = 1.5;
+        let cost = |site: &CarbonSite| site.acid.pka_dmso + SUBSTITUENT_PK * f64::from(site.degree);
+        let sites = self.carbon.iter().enumerate();
+        let best = sites.min_by(|a, b| cost(a.1).total_cmp(&cost(b.1)));
+        best.map_or(0, |(i, _)| i)
     }
 
     /// The heteroatom site, where it is more acidic than every carbon site.
@@ -124,6 +155,63 @@ impl Substrate {
     }
 }
 
+/// Iodine goes before bromine; both sit on an arene or a double bond.
+fn exchangeable_halogen(molecule: &Molecule) -> Option<P> {
+    const BROMINE: u8 = 35;
+    const IODINE: u8 = 53;
+    let on_sp2 = |element: u8| {
+        let atoms = molecule.atoms();
+        (0..atoms.len()).any(|halogen| {
+            let mut carbons = molecule
+                .neighbours(halogen)
+                .iter()
+                .map(|&(carbon, _)| carbon);
+            atoms[halogen].element == element
+                && carbons.any(|carbon| {
+                    let mut bonds = molecule.neighbours(carbon).iter();
+                    atoms[carbon].aromatic || bonds.any(|&(_, bond)| bond == Bond::Double)
+                })
+        })
+    };
+    if on_sp2(IODINE) {
+        Some(P::HALOGEN_LITHIUM_IODIDE)
+    } else {
+        on_sp2(BROMINE).then_some(P::HALOGEN_LITHIUM_BROMIDE)
+    }
+}
+
+/// Whether an atom is the carbon of a ketone or an aldehyde.
+fn is_ketone(molecule: &Molecule, atom: usize) -> bool {
+    let atoms = molecule.atoms();
+    let (mut oxo, mut other) = (false, false);
+    for &(next, bond) in molecule.neighbours(atom) {
+        match (atoms[next].element, bond) {
+            (8, Bond::Double) => oxo = true,
+            (6, _) => {}
+            _ => other = true,
+        }
+    }
+    oxo && !other
+}
+
+fn beside(molecule: &Molecule, site: usize) -> Option<Beside> {
+    const NITROGEN: u8 = 7;
+    const OXYGEN: u8 = 8;
+    const PHOSPHORUS: u8 = 15;
+    const CARBON: u8 = 6;
+    let atoms = molecule.atoms();
+    let doubly = |atom: usize, element: u8| {
+        let mut bonds = molecule.neighbours(atom).iter();
+        bonds.any(|&(other, bond)| bond == Bond::Double && atoms[other].element == element)
+    };
+    let mut neighbours = molecule.neighbours(site).iter();
+    neighbours.find_map(|&(atom, _)| match atoms[atom].element {
+        PHOSPHORUS if doubly(atom, OXYGEN) => Some(Beside::Phosphoryl),
+        NITROGEN if doubly(atom, CARBON) => Some(Beside::Imino),
+        _ => None,
+    })
+}
+
 fn carbon_site(molecule: &Molecule, site: &AcidSite) -> CarbonSite {
     let atoms = molecule.atoms();
     let neighbours = molecule.neighbours(site.atom);
@@ -139,12 +227,25 @@ fn carbon_site(molecule: &Molecule, site: &AcidSite) -> CarbonSite {
         .filter(|&&(atom, _)| plain(atom))
         .map(|&(atom, _)| molecule.neighbours(atom).len().saturating_sub(2))
         .sum();
+    let is_linear = |atom: usize| {
+        let mut bonds = molecule.neighbours(atom).iter();
+        bonds.any(|&(_, bond)| bond == Bond::Triple)
+    };
+    let bulky = neighbours
+        .iter()
+        .filter(|&&(atom, _)| !is_linear(atom))
+        .count();
     CarbonSite {
         acid: site.clone(),
         hydrogens: f64::from(site.hydrogens) * site.equivalent.len().max(1) as f64,
         degree: neighbours.len() as u8,
-        crowding: neighbours.len().saturating_sub(2) as u8,
+        crowding: bulky.saturating_sub(2) as u8,
         branches: branches as u8,
+        beside: beside(molecule, site.atom),
+        beside_cyano: neighbours.iter().any(|&(atom, _)| is_linear(atom)),
+        beside_ketone: neighbours
+            .iter()
+            .any(|&(atom, _)| is_ketone(molecule, atom)),
     }
 }
 
@@ -168,14 +269,19 @@ impl Base {
         Base {
             record: record.clone(),
             acid_donors: nitrogen_hydrogens(&record.conjugate_acid, |charge| charge > 0),
-            makes_iminium: is_amine && has_amine_hydrogen(&record.smiles),
+            makes_iminium: is_amine && parts(&record.smiles).any(|part| has_amine_hydrogen(&part)),
             is_tertiary_amine: is_amine && !bears_hydrogen,
         }
     }
 
     /// `substrate into base` for metal amides of lithium, sodium and potassium, else `base into substrate`.
     pub fn usual_addition(&self) -> Addition {
-        match (self.record.kind, self.record.cation) {
+        Base::usual_addition_of(&self.record)
+    }
+
+    /// The same for a record of the library.
+    pub fn usual_addition_of(record: &enolattice_reagents::Base) -> Addition {
+        match (record.kind, record.cation) {
             (BaseKind::Amide, Cation::Lithium | Cation::Sodium | Cation::Potassium) => {
                 Addition::SubstrateIntoBase
             }
@@ -184,13 +290,17 @@ impl Base {
     }
 }
 
+/// The parts of a base's structure that are molecules: an ammonium acetate has two.
+fn parts(smiles: &str) -> impl Iterator<Item = Molecule> + '_ {
+    smiles
+        .split('.')
+        .filter_map(|part| Molecule::parse(part).ok())
+}
+
 /// Whether a nitrogen of a molecule is that of an amine with a hydrogen: saturated, not aromatic, and beside
 /// no double bond (amidines and guanidines have one).
-fn has_amine_hydrogen(smiles: &str) -> bool {
+fn has_amine_hydrogen(molecule: &Molecule) -> bool {
     const NITROGEN: u8 = 7;
-    let Ok(molecule) = Molecule::parse(smiles) else {
-        return false;
-    };
     let saturated = |atom: usize| {
         let bonds = molecule.neighbours(atom);
         bonds.iter().all(|&(_, bond)| bond == Bond::Single)
@@ -208,11 +318,8 @@ fn has_amine_hydrogen(smiles: &str) -> bool {
 /// Hydrogens on nitrogen atoms whose charge counts.
 fn nitrogen_hydrogens(smiles: &str, counts: impl Fn(i8) -> bool) -> u8 {
     const NITROGEN: u8 = 7;
-    let Ok(molecule) = Molecule::parse(smiles) else {
-        return 0;
-    };
-    let nitrogens = molecule.atoms().iter();
-    nitrogens
+    let atoms = parts(smiles).flat_map(|part| part.atoms().to_vec());
+    atoms
         .filter(|atom| atom.element == NITROGEN && counts(atom.charge))
         .map(|atom| atom.hydrogens)
         .sum()

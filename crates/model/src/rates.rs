@@ -6,12 +6,16 @@ use enolattice_units::{H, K_B, KCAL_IN_KJ, LN_10, R_KJ, kelvin, math};
 
 use crate::medium::Medium;
 use crate::parameters::{P, Values};
+use crate::prepared::Beside;
 
 /// log10 of the largest second-order rate constant: diffusion in a mobile solvent.
 /// Smoluchowski's 8RT/(3η) is 7·10⁹ L/(mol s) at 1 mPa s and 25 °C.
 const DIFFUSION_LIMIT: f64 = 9.5;
-/// log10 k of exchange: faster changes no selectivity, and a cap keeps the network solvable.
-pub(crate) const EXCHANGE_CAP: f64 = 6.0;
+/// log10 k of exchange between two carbon acids, or with a metal amide: faster changes no selectivity,
+/// and a cap keeps the network solvable.
+const EXCHANGE_CAP: f64 = 6.0;
+/// The same for X–H acids, which meet a carbanion at the speed of diffusion or give their proton to its oxygen.
+const HETEROATOM_CAP: f64 = 9.0;
 /// The pKa (DMSO) at which the SN2 anchor is given.
 const SN2_ANCHOR_PKA: f64 = 22.0;
 
@@ -45,9 +49,18 @@ pub(crate) fn diffusion_limited(log10_k: f64) -> f64 {
 
 /// log10 k of proton transfer from a C–H acid to a base, `delta` = pKa(base's acid) − pKa(C–H).
 ///
-/// `log k = k₀ + β·|Δ|` downhill, capped, and less by |Δ| uphill, so that forward and back keep K.
-pub(crate) fn exchange(delta: f64, class: AnionClass, medium: &Medium, values: &Values) -> f64 {
-    exchange_with_slope(P::EXCHANGE_BRONSTED, delta, class, medium, values)
+/// `log k = k₀ + w + β·|Δ|` downhill, capped, and less by |Δ| uphill, so that forward and back keep K;
+/// `weight` is w, what the site adds.
+pub(crate) fn exchange(
+    delta: f64,
+    class: AnionClass,
+    weight: f64,
+    medium: &Medium,
+    values: &Values,
+) -> f64 {
+    let slope = values.get(P::EXCHANGE_BRONSTED);
+    let at_25 = intrinsic(class, medium, values) + weight + slope * delta.abs();
+    both_ways(at_25, delta, HETEROATOM_CAP, medium, values)
 }
 
 /// log10 k of proton transfer from a C–H acid to a carbanion.
@@ -65,17 +78,12 @@ pub(crate) fn exchange_of_carbons(
     } else {
         P::EXCHANGE_BRONSTED
     };
-    exchange_with_slope(slope, delta, class, medium, values)
+    let at_25 = intrinsic(class, medium, values) + values.get(slope) * delta.abs();
+    both_ways(at_25, delta, EXCHANGE_CAP, medium, values)
 }
 
-fn exchange_with_slope(
-    slope: P,
-    delta: f64,
-    class: AnionClass,
-    medium: &Medium,
-    values: &Values,
-) -> f64 {
-    let beta = values.get(slope);
+/// log10 k of proton transfer at carbon at ΔpKa = 0 and 25 °C.
+fn intrinsic(class: AnionClass, medium: &Medium, values: &Values) -> f64 {
     let solvent = if medium.is_protic() {
         P::EXCHANGE_PROTIC
     } else {
@@ -85,7 +93,7 @@ fn exchange_with_slope(
         }
     };
     let cation = match medium.cation {
-        Cation::Lithium | Cation::Magnesium | Cation::Zinc if medium.is_paired() => {
+        _ if medium.binds_oxygen() => {
             values.get(P::EXCHANGE_LITHIUM) * (1.0 - medium.additive.freed)
         }
         Cation::Potassium | Cation::Caesium | Cation::Ammonium => values.get(P::EXCHANGE_POTASSIUM),
@@ -99,17 +107,22 @@ fn exchange_with_slope(
         (AnionClass::Nitrile, _) => values.get(P::EXCHANGE_CYANO),
         _ => 0.0,
     };
-    let at_25 = values.get(solvent) + cation + by_class + beta * delta.abs();
-    both_ways(at_25, delta, medium, values)
+    values.get(solvent) + cation + by_class
 }
 
 /// log10 k of proton transfer from a C–H acid to a metal dialkylamide or disilylamide.
 ///
 /// `log k = k₀ + β·Δ`: amides bind the substrate's oxygen and deprotonate within the complex, so
 /// that the rate depends little on the driving force.
-pub(crate) fn exchange_with_amide(delta: f64, medium: &Medium<'_>, values: &Values) -> f64 {
-    let at_25 = values.get(P::AMIDE_EXCHANGE) + values.get(P::AMIDE_BRONSTED) * delta.abs();
-    both_ways(at_25, delta, medium, values)
+pub(crate) fn exchange_with_amide(
+    delta: f64,
+    weight: f64,
+    medium: &Medium<'_>,
+    values: &Values,
+) -> f64 {
+    let slope = values.get(P::AMIDE_BRONSTED);
+    let at_25 = values.get(P::AMIDE_EXCHANGE) + weight + slope * delta.abs();
+    both_ways(at_25, delta, EXCHANGE_CAP, medium, values)
 }
 
 /// log10 k of proton transfer from a C–H acid to an alkyllithium or an alkylmagnesium halide, whose
@@ -117,17 +130,24 @@ pub(crate) fn exchange_with_amide(delta: f64, medium: &Medium<'_>, values: &Valu
 pub(crate) fn exchange_with_organometal(
     at_25: P,
     delta: f64,
+    weight: f64,
     medium: &Medium<'_>,
     values: &Values,
 ) -> f64 {
-    both_ways(values.get(at_25), delta, medium, values)
+    let at_25 = values.get(at_25) + weight;
+    both_ways(at_25, delta, EXCHANGE_CAP, medium, values)
 }
 
 /// Brings a downhill rate to the temperature, caps it, and takes |Δ| off where the step is uphill.
-fn both_ways(downhill_at_25: f64, delta: f64, medium: &Medium<'_>, values: &Values) -> f64 {
+fn both_ways(
+    downhill_at_25: f64,
+    delta: f64,
+    cap: f64,
+    medium: &Medium<'_>,
+    values: &Values,
+) -> f64 {
     let entropy = values.get(P::DS_EXCHANGE);
-    let downhill =
-        at_temperature(downhill_at_25, 25.0, medium.temperature_c, entropy).min(EXCHANGE_CAP);
+    let downhill = at_temperature(downhill_at_25, 25.0, medium.temperature_c, entropy).min(cap);
     if delta < 0.0 {
         downhill + delta
     } else {
@@ -146,6 +166,8 @@ pub(crate) struct Nucleophile {
     pub(crate) crowding: u8,
     /// Branches on these substituents.
     pub(crate) branches: u8,
+    /// A neighbour that makes it better or worse.
+    pub(crate) beside: Option<Beside>,
     /// log10 units relative to a carbanion of the same pKa.
     pub(crate) relative: f64,
     /// Whether it is a metal enolate that aggregates; concentration of anions, mol/L.
@@ -215,15 +237,12 @@ pub(crate) fn leaving_group(leaving: LeavingGroup) -> f64 {
     }
 }
 
-/// log10 (kO/kC) by leaving group: harder leaving groups favour oxygen.
-///
-/// # Source
-/// Fitted to c_vs_o_alkylation (Kurts and others 1971, from memory).
-pub(crate) fn oxygen_by_leaving_group(leaving: LeavingGroup) -> f64 {
+/// log10 (kO/kC) by leaving group: harder leaving groups favour oxygen; sulfonates and sulfates are the zero.
+pub(crate) fn oxygen_by_leaving_group(leaving: LeavingGroup, values: &Values) -> f64 {
     match leaving {
-        LeavingGroup::Iodide => -1.8,
-        LeavingGroup::Bromide => -1.0,
-        LeavingGroup::Chloride | LeavingGroup::Fluoride => -0.7,
+        LeavingGroup::Iodide => values.get(P::O_IODIDE),
+        LeavingGroup::Bromide => values.get(P::O_BROMIDE),
+        LeavingGroup::Chloride | LeavingGroup::Fluoride => values.get(P::O_CHLORIDE),
         _ => 0.0,
     }
 }
@@ -252,7 +271,9 @@ pub(crate) fn pairing(
         Cation::Sodium => values.get(P::PAIRED_SODIUM) * bound,
         Cation::Potassium | Cation::Caesium => values.get(P::PAIRED_POTASSIUM) * bound,
         Cation::Ammonium => values.get(P::PAIRED_AMMONIUM) * bound,
-        Cation::Magnesium => values.get(P::PAIRED_MAGNESIUM) * bound,
+        Cation::Magnesium | Cation::Calcium | Cation::Barium => {
+            values.get(P::PAIRED_MAGNESIUM) * bound
+        }
         Cation::Zinc => values.get(P::PAIRED_ZINC) * bound,
         Cation::None => values.get(P::PAIRED_ONIUM),
     }
@@ -310,7 +331,7 @@ pub(crate) fn substitution(
 
 /// log10 k of addition to an electrophile of Mayr's E at the medium's temperature.
 ///
-/// `log k(20 °C) = sN·(N + E) + pairing + steric`, `N = 8.35 + 0.78·pKa − 1.05·shift`
+/// `log k(20 °C) = sN·(N + E) + pairing + steric`, `N` of [`nucleophilicity`] less 1.05·shift
 ///
 /// # Source
 /// Mayr and Patz, Angew. Chem. Int. Ed. Engl. 1994, 33, 938.
@@ -326,8 +347,7 @@ pub(crate) fn addition(nucleophile: &Nucleophile, e: f64, medium: &Medium, value
     } else {
         (nucleophile.pka_dmso, 0.0)
     };
-    let n = values.get(P::MAYR_N_INTERCEPT) + values.get(P::MAYR_N_SLOPE) * pka
-        - values.get(P::MAYR_N_SOLVATION) * shift;
+    let n = nucleophilicity(pka, nucleophile, values) - values.get(P::MAYR_N_SOLVATION) * shift;
     let at_20 = s_n * (n + e)
         + extra
         + pairing(nucleophile, medium, values, false)
@@ -340,6 +360,23 @@ pub(crate) fn addition(nucleophile: &Nucleophile, e: f64, medium: &Medium, value
         medium.temperature_c,
         values.get(P::DS_ADDITION),
     ))
+}
+
+/// Mayr's N in DMSO of a nucleophile whose acid has this pKa, apart from the room that it takes.
+///
+/// `N = 9.1 + 0.79·pKa + class`, at most 28.5; the parameters name what the classes add.
+pub(crate) fn nucleophilicity(pka_dmso: f64, nucleophile: &Nucleophile, values: &Values) -> f64 {
+    let by_class = match (nucleophile.beside, nucleophile.class) {
+        (Some(Beside::Imino), _) => values.get(P::MAYR_N_IMINO),
+        (Some(Beside::Phosphoryl), _) => values.get(P::MAYR_N_PHOSPHORYL),
+        (None, AnionClass::Nitrile) => values.get(P::MAYR_N_NITRILE),
+        (None, AnionClass::Nitronate) => values.get(P::MAYR_N_NITRONATE),
+        (None, AnionClass::Sulfone) => values.get(P::MAYR_N_SULFONE),
+        (None, class) if class.is_dicarbonyl() => values.get(P::MAYR_N_DICARBONYL),
+        _ => 0.0,
+    };
+    let n = values.get(P::MAYR_N_INTERCEPT) + values.get(P::MAYR_N_SLOPE) * pka_dmso + by_class;
+    n.min(values.get(P::MAYR_N_LARGEST))
 }
 
 /// log10 k of bimolecular elimination by a base whose acid has `pka_medium`; `None` without β hydrogens.

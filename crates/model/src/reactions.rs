@@ -45,6 +45,7 @@ impl<'a> Reactions<'a> {
         all.attacks_of_products();
         all.attack_of_heteroatom();
         all.fates_of_electrophile_with_base(&fast);
+        all.fates_of_electrophile_alone();
         all.self_condensation();
         all.base_and_substrate();
         all.loss_of_water();
@@ -52,10 +53,11 @@ impl<'a> Reactions<'a> {
     }
 
     fn add(&mut self, first: Species, second: Option<Species>, products: &[Species], k: f64) {
-        let products = [products.first().copied(), products.get(1).copied()];
+        let products = std::array::from_fn(|i| products.get(i).copied());
         self.list.push(Reaction {
             first,
             second,
+            third: None,
             products,
             with: None,
             k,
@@ -97,6 +99,12 @@ impl<'a> Reactions<'a> {
     fn decay(&mut self) {
         let rate = self.kinetics.decay();
         self.add(Species::Base, None, &[Species::BaseAcid], rate);
+        let of_anion = if self.kinetics.solvent_anion_is_lost() {
+            rate
+        } else {
+            0.0
+        };
+        self.add(Species::SolventAnion, None, &[], of_anion);
     }
 
     fn loss_of_water(&mut self) {
@@ -105,7 +113,11 @@ impl<'a> Reactions<'a> {
             let dry = k.cell.pair.by_site.get(site).and_then(Option::as_ref);
             let can_lose = dry.is_some_and(|p| p.dehydrated.is_some());
             for (base, pka) in k.oxygen_bases() {
-                let rate = if can_lose { k.dehydration(pka) } else { 0.0 };
+                let rate = if can_lose {
+                    k.dehydration(site, pka)
+                } else {
+                    0.0
+                };
                 let products = [Species::Dehydrated(site), base];
                 self.add(Species::Product(site), Some(base), &products, rate);
             }

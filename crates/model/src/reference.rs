@@ -44,8 +44,7 @@ struct System<'a> {
 impl System<'_> {
     /// Change of each species per extent of a reaction.
     fn each_change(reaction: &Reaction, mut change: impl FnMut(usize, f64)) {
-        change(reaction.first.index(), -1.0);
-        for species in reaction.second.into_iter().chain(reaction.with) {
+        for species in reaction.reactants().chain(reaction.with) {
             change(species.index(), -1.0);
         }
         for species in reaction.products.into_iter().flatten() {
@@ -58,8 +57,7 @@ impl ODE<f64, State> for System<'_> {
     fn diff(&self, _t: f64, y: &State, dydt: &mut State) {
         dydt.fill(0.0);
         for reaction in self.reactions {
-            let second = reaction.second.map_or(1.0, |s| y[s.index()]);
-            let rate = reaction.k * y[reaction.first.index()] * second;
+            let rate = reaction.k * reaction.reactants().map(|s| y[s.index()]).product::<f64>();
             System::each_change(reaction, |i, change| dydt[i] += change * rate);
         }
         if let Some((species, amount)) = self.stage.added {
@@ -74,14 +72,15 @@ impl ODE<f64, State> for System<'_> {
             }
         }
         for reaction in self.reactions {
-            let k = reaction.k;
-            let a = reaction.first.index();
-            match reaction.second.map(Species::index) {
-                Some(b) => System::each_change(reaction, |i, change| {
-                    j[(i, a)] += change * k * y[b];
-                    j[(i, b)] += change * k * y[a];
-                }),
-                None => System::each_change(reaction, |i, change| j[(i, a)] += change * k),
+            for (place, by) in reaction.reactants().enumerate() {
+                let others = reaction.reactants().enumerate();
+                let slope: f64 = others
+                    .filter(|(other, _)| *other != place)
+                    .map(|(_, s)| y[s.index()])
+                    .product();
+                System::each_change(reaction, |i, change| {
+                    j[(i, by.index())] += change * reaction.k * slope;
+                });
             }
         }
     }

@@ -1,6 +1,6 @@
 //! The screened numbers of a cell: mean yield and probability of a hit by quadrature.
 
-use enolattice_molecule::ElectrophileKind;
+use enolattice_molecule::{ElectrophileKind, c_product};
 use enolattice_units::math;
 
 use crate::cautions::cautions;
@@ -11,7 +11,7 @@ use crate::network::{Amounts, Network};
 use crate::outcome::Outcome;
 use crate::parameters::{P, PARAMETERS, Values};
 use crate::program::Charge;
-use crate::{Cell, Channel, Score};
+use crate::{Cell, Channel, Electrophile, Score, Substrate};
 
 /// Distance of the outer points of the three-point rule from the mean, in σ: exact to the fifth moment.
 const NODE: f64 = 1.732_050_807_568_877_2;
@@ -53,30 +53,53 @@ pub(crate) fn coverage(cell: &Cell) -> Coverage {
             None => Coverage::Unknown(format!("substrate {}: no acidic C–H", cell.substrate.name)),
         };
     }
-    if makes_alkene_of_ylide(cell) {
-        let reason =
-            "a phosphonate or phosphonium carbanion makes an alkene of a carbonyl compound";
-        return Coverage::Unknown(format!("{reason}, which is not covered"));
+    if makes_alkene_of_ylide(&cell.substrate, &cell.electrophile) {
+        return Coverage::Unknown(ALKENE_OF_YLIDE.to_owned());
     }
     if let Some(reason) = destroyed_by_solvent(cell) {
         return Coverage::Nothing(Channel::SolventLevelsBase, reason);
     }
     if cell.pair.by_site.iter().all(Option::is_none) {
-        return Coverage::Unknown("no product by one new bond at carbon could be drawn".to_owned());
+        return Coverage::Unknown(NO_PRODUCT.to_owned());
     }
     Coverage::Covered
 }
 
+const ALKENE_OF_YLIDE: &str = "a phosphonate or phosphonium carbanion makes an alkene of a \
+                               carbonyl compound, which is not covered";
+const NO_PRODUCT: &str = "no product by one new bond at carbon could be drawn";
+
+/// Why the model does not cover a substrate and an electrophile together, although it knows each
+/// of them; none where it does, or where one of them is to blame alone.
+pub(crate) fn pair_not_covered(
+    substrate: &Substrate,
+    electrophile: &Electrophile,
+) -> Option<&'static str> {
+    let group = electrophile.group.as_ref()?;
+    if matches!(group.kind, ElectrophileKind::Inert { .. }) || substrate.carbon.is_empty() {
+        return None;
+    }
+    if makes_alkene_of_ylide(substrate, electrophile) {
+        return Some(ALKENE_OF_YLIDE);
+    }
+    let mut sites = substrate.carbon.iter();
+    let is_drawn = sites.any(|site| {
+        let (atom, reagent) = (site.acid.atom, &electrophile.molecule);
+        c_product(&substrate.molecule, atom, reagent, group).is_ok()
+    });
+    (!is_drawn).then_some(NO_PRODUCT)
+}
+
 /// Whether the carbanion sits beside phosphorus and the electrophile is an aldehyde or ketone: the adduct loses
 /// phosphate (Wittig reaction and its kin).
-fn makes_alkene_of_ylide(cell: &Cell) -> bool {
+fn makes_alkene_of_ylide(substrate: &Substrate, electrophile: &Electrophile) -> bool {
     const PHOSPHORUS: u8 = 15;
     let is_carbonyl = matches!(
-        cell.electrophile.group.as_ref().map(|g| g.kind),
+        electrophile.group.as_ref().map(|g| g.kind),
         Some(ElectrophileKind::Aldehyde { .. } | ElectrophileKind::Ketone { .. })
     );
-    let molecule = &cell.substrate.molecule;
-    let site = cell.substrate.carbon[0].acid.atom;
+    let molecule = &substrate.molecule;
+    let site = substrate.carbon[0].acid.atom;
     let mut beside = molecule.neighbours(site).iter();
     is_carbonyl && beside.any(|&(atom, _)| molecule.atoms()[atom].element == PHOSPHORUS)
 }

@@ -176,7 +176,7 @@ fn place(candidates: &[Candidate], atom: usize) -> Option<usize> {
 }
 
 fn anchor(row: &[&str], form: &Form) -> Option<Observation> {
-    let [name, smiles, atom, value, sigma, ..] = row else {
+    let [_, smiles, atom, value, sigma, ..] = row else {
         return None;
     };
     let molecule = Molecule::parse(smiles).ok()?;
@@ -189,7 +189,7 @@ fn anchor(row: &[&str], form: &Form) -> Option<Observation> {
     );
     let at = Some(place(&candidates, atom)?);
     Some(Observation {
-        name: (*name).to_owned(),
+        name: (*smiles).to_owned(),
         candidates,
         observed: Observed::Acidity { at },
         value: value.parse().ok()?,

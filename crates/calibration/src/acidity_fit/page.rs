@@ -88,25 +88,27 @@ pub(super) fn summary(errors: impl Iterator<Item = f64>) -> Errors {
 pub(super) fn held_out(fit: &Fit, rows: &[Observation], validation: &Validation) -> String {
     let mut text = String::from(
         "# Errors (predicted - measured, pK units) of each measured compound when one in five, and when its scaffold group, was held out.\n\
-         # sigma: what the model would have given it with its scaffold group held out.\n\
-         compound\tatom\tone_in_five\tscaffold_group\tsigma\n",
+         # sigma: what the model would have given it with its scaffold group held out; sigma_one_in_five: with one in five.\n\
+         # in_scope: whether it is a C-H acid beside C=O, CN, NO2 or S(O)n.\n\
+         compound\tatom\tone_in_five\tscaffold_group\tsigma\tsigma_one_in_five\tin_scope\n",
     );
     let mut five_fold = vec![None; rows.len()];
     for one in &validation.five_fold {
-        five_fold[one.row] = Some(one.error);
+        five_fold[one.row] = Some((one.error, one.sigma));
     }
     let mut held: Vec<&Held> = validation.leave_group_out.iter().collect();
     held.sort_by_key(|one| one.row);
     for one in held {
         let (row, at) = (&rows[one.row], fit.assigned[one.row]);
+        let (error, sigma) = five_fold[one.row].unwrap_or((one.error, one.sigma));
         let _ = writeln!(
             text,
-            "{}\t{}\t{:.2}\t{:.2}\t{:.2}",
+            "{}\t{}\t{error:.2}\t{:.2}\t{:.2}\t{sigma:.2}\t{}",
             row.name,
             row.candidates[at].site.atom,
-            five_fold[one.row].unwrap_or(one.error),
             one.error,
-            one.sigma
+            one.sigma,
+            if row.in_scope { "yes" } else { "no" }
         );
     }
     text

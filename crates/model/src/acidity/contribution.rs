@@ -87,6 +87,9 @@ fn saturation(first: Uptake, second: Uptake) -> &'static str {
     }
 }
 
+/// Descriptors of groups that nobody has described: their terms are zero with a wide error.
+const STRANGE: [&str; 2] = ["unknown group", "other N–H"];
+
 /// A pair of increments that saturate each other.
 #[derive(Clone, Copy, Debug, PartialEq)]
 struct Pair {
@@ -105,7 +108,7 @@ pub struct Contribution {
     /// Coefficient with the factor by which it enters linearly.
     linear: Vec<(usize, f64)>,
     pairs: Vec<Pair>,
-    /// Descriptors without a coefficient.
+    /// Descriptors without a coefficient, or of what the fit has never seen.
     unknown: usize,
 }
 
@@ -144,24 +147,23 @@ impl Contribution {
         slopes
     }
 
-    /// What each coefficient adds to the pKa, by coefficient; the sum is [`Contribution::value`].
-    pub(crate) fn parts(&self, coefficients: &[f64]) -> Vec<(usize, f64)> {
-        let linear = self
-            .linear
-            .iter()
-            .map(|(i, factor)| (*i, factor * coefficients[*i]));
+    /// The factor of each coefficient at these coefficients, by coefficient: factor times coefficient is
+    /// what it adds to the pKa, and the sum of that is [`Contribution::value`]. A saturation has the product of
+    /// its increments in its factor.
+    pub(crate) fn factors(&self, coefficients: &[f64]) -> Vec<(usize, f64)> {
+        let linear = self.linear.iter().copied();
         let saturation = self.pairs.iter().map(|pair| {
             let charge = coefficients[pair.first] * coefficients[pair.second] / 100.0;
-            (pair.kappa, pair.count * coefficients[pair.kappa] * charge)
+            (pair.kappa, pair.count * charge)
         });
-        let mut parts: Vec<(usize, f64)> = Vec::new();
-        for (i, value) in linear.chain(saturation) {
-            match parts.iter_mut().find(|(known, _)| *known == i) {
-                Some((_, sum)) => *sum += value,
-                None => parts.push((i, value)),
+        let mut factors: Vec<(usize, f64)> = Vec::new();
+        for (i, factor) in linear.chain(saturation) {
+            match factors.iter_mut().find(|(known, _)| *known == i) {
+                Some((_, sum)) => *sum += factor,
+                None => factors.push((i, factor)),
             }
         }
-        parts
+        factors
     }
 
     /// Error that coefficients with next to no measurements behind them bring in, pK units: those on
@@ -193,7 +195,7 @@ impl Contribution {
         self.pairs.iter().map(|pair| pair.kappa)
     }
 
-    /// Number of descriptors for which there is no coefficient.
+    /// Number of descriptors for which there is no coefficient, or one that says that nothing is known.
     pub fn unknown(&self) -> usize {
         self.unknown
     }
@@ -235,6 +237,7 @@ impl Form {
         let mut contribution = Contribution::default();
         let mut groups: Vec<(usize, Uptake, f64)> = Vec::new();
         for (name, x) in descriptors {
+            contribution.unknown += usize::from(STRANGE.contains(name));
             let Some(&i) = self.index.get(*name) else {
                 contribution.unknown += 1;
                 continue;

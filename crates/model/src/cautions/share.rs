@@ -8,9 +8,7 @@ use enolattice_reagents::{Additive, Base, NamedElectrophile, Solvent};
 use super::rule::{Rule, Seat};
 use super::rules::RULES;
 use super::traits::Traits;
-use super::{
-    Category, Caution, Severity, caution_bits, join_caution_bits, statements, temperature,
-};
+use super::{Caution, Severity, statements, temperature};
 
 /// Rules that ask for more than one reagent or for a temperature.
 pub(super) static JOINT: LazyLock<Vec<&'static Rule>> = LazyLock::new(|| {
@@ -24,9 +22,9 @@ pub(super) static ALONE: LazyLock<Vec<&'static Rule>> = LazyLock::new(|| {
     rules.filter(|rule| rule.is_of_one()).collect()
 });
 
-/// The bits of the joint rules, in their order.
-static JOINT_BITS: LazyLock<Vec<u32>> = LazyLock::new(|| {
-    let bits = |rule: &&Rule| rule_bits(rule.category, rule.severity);
+/// Severity and category bit of the joint rules, in their order.
+static JOINT_BITS: LazyLock<Vec<(usize, u32)>> = LazyLock::new(|| {
+    let bits = |rule: &&Rule| (row_of(rule.severity), rule.category.bit());
     JOINT.iter().map(bits).collect()
 });
 
@@ -36,17 +34,21 @@ const WORDS: usize = 3;
 #[cfg(test)]
 pub(super) const JOINT_MOST: usize = 64 * WORDS;
 
-fn rule_bits(category: Category, severity: Severity) -> u32 {
-    category.bit() | severity.bits()
+/// Bits of categories at each severity, in the order of [`Severity::ALL`].
+type Categories = [u32; Severity::ALL.len()];
+
+/// Index of a severity among [`Severity::ALL`].
+fn row_of(severity: Severity) -> usize {
+    severity as usize - 1
 }
 
 /// What one reagent brings to the cautions of any cell that holds it.
 ///
-/// It has the bits of the reagent's own cautions, and for each joint rule whether the reagent
+/// It has the reagent's own cautions, and for each joint rule whether the reagent
 /// leaves it open; a rule that all reagents of a cell leave open applies.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
 pub struct CautionShare {
-    bits: u32,
+    own: Categories,
     open: [u64; WORDS],
 }
 
@@ -112,31 +114,51 @@ impl CautionShare {
 
     fn new(seat: Seat, traits: Traits, own: &[Caution]) -> CautionShare {
         let alone = ALONE.iter().filter(|rule| traits.has_any(rule.anyone));
-        let bits = alone.fold(caution_bits(own), |bits, rule| {
-            join_caution_bits(bits, rule_bits(rule.category, rule.severity))
-        });
+        let alone = alone.map(|rule| (rule.severity, rule.category));
+        let stated = own
+            .iter()
+            .map(|caution| (caution.severity, caution.category));
+        let mut own = Categories::default();
+        for (severity, category) in alone.chain(stated) {
+            own[row_of(severity)] |= category.bit();
+        }
         let mut open = [0; WORDS];
         for (k, rule) in JOINT.iter().enumerate() {
             open[k / 64] |= u64::from(rule.allows(seat, traits)) << (k % 64);
         }
-        CautionShare { bits, open }
+        CautionShare { own, open }
     }
 
     /// The caution bits of the cell with these reagents: base, solvent, electrophile, substrate
     /// and additive, in any order.
     pub fn joined(shares: [CautionShare; 5]) -> u32 {
-        let own = shares.iter().map(|share| share.bits);
-        let mut bits = own.fold(0, join_caution_bits);
-        let rules: &[u32] = &JOINT_BITS;
+        let categories = CautionShare::categories(shares);
+        let severest = Severity::ALL
+            .into_iter()
+            .rfind(|severity| categories[row_of(*severity)] != 0);
+        let all = categories.into_iter().fold(0, |all, of_one| all | of_one);
+        all | severest.map_or(0, Severity::bits)
+    }
+
+    /// The bits of the categories of caution of that cell at each severity, in the order of
+    /// [`Severity::ALL`]. A category may be there at several severities.
+    pub fn categories(shares: [CautionShare; 5]) -> [u32; 3] {
+        let mut categories = Categories::default();
+        for share in &shares {
+            for (all, own) in categories.iter_mut().zip(share.own) {
+                *all |= own;
+            }
+        }
+        let rules: &[(usize, u32)] = &JOINT_BITS;
         for word in 0..WORDS {
             let all = shares.iter().map(|share| share.open[word]);
             let mut open = all.fold(u64::MAX, |open, of_one| open & of_one);
             while open != 0 {
-                let rule = 64 * word + open.trailing_zeros() as usize;
-                bits = join_caution_bits(bits, rules[rule]);
+                let (severity, category) = rules[64 * word + open.trailing_zeros() as usize];
+                categories[severity] |= category;
                 open &= open - 1;
             }
         }
-        bits
+        categories
     }
 }

@@ -77,15 +77,12 @@ fn origin_of_rate(cell: &Cell, r: &Reaction) -> Option<(f64, String)> {
 }
 
 fn step(reaction: &Reaction) -> String {
-    let mut left = reaction.first.name();
-    if let Some(second) = reaction.second {
-        left = format!("{left} + {}", second.name());
-    }
+    let left: Vec<_> = reaction.reactants().map(Species::name).collect();
     let right: Vec<_> = reaction
         .products
         .iter()
         .flatten()
         .map(|s| s.name())
         .collect();
-    format!("{left} → {}", right.join(" + "))
+    format!("{} → {}", left.join(" + "), right.join(" + "))
 }

@@ -6,6 +6,7 @@ use enolattice_reagents::{Cation, SolventClass};
 use super::Kinetics;
 use crate::bonding::{self, Bonding, TakenByBase};
 use crate::parameters::P;
+use crate::prepared::CarbonSite;
 use crate::rates::{self, Nucleophile};
 
 impl<'a> Kinetics<'a> {
@@ -163,10 +164,13 @@ impl<'a> Kinetics<'a> {
         }
     }
 
-    /// log10 (kO/kC) of a carbanion; `None` where its oxygen does not attack.
-    pub(crate) fn oxygen_over_carbon(&self, class: AnionClass) -> Option<f64> {
+    /// log10 (kO/kC) of the carbanion of a site; `None` where its oxygen does not attack.
+    pub(crate) fn oxygen_over_carbon(&self, site: &CarbonSite) -> Option<f64> {
+        let class = site.acid.class;
         let by_leaving = match *self.kind()? {
-            ElectrophileKind::Alkyl { leaving, .. } => rates::oxygen_by_leaving_group(leaving),
+            ElectrophileKind::Alkyl { leaving, .. } => {
+                rates::oxygen_by_leaving_group(leaving, self.values)
+            }
             ElectrophileKind::Acyl { donor, .. } => {
                 self.v(match donor {
                     AcylDonor::Halide
@@ -182,16 +186,23 @@ impl<'a> Kinetics<'a> {
             _ => return None,
         };
         let by_class = match class {
-            class if class.is_dicarbonyl() => P::O_BETA_DICARBONYL,
+            class if class.is_dicarbonyl() && site.beside_ketone => P::O_BETA_DICARBONYL,
+            class if class.is_dicarbonyl() => P::O_DIESTER,
             AnionClass::Ketone | AnionClass::ArylKetone | AnionClass::Aldehyde => P::O_KETONE,
             AnionClass::Ester | AnionClass::Amide => P::O_ESTER,
             AnionClass::Nitronate => P::O_NITRONATE,
             _ => return None,
         };
+        // HMPA and its kin bind the cation so well that the anion is bare
+        const BARE: f64 = 1.0;
         let by_solvent = if self.medium.is_protic() {
             self.v(P::O_PROTIC)
         } else if self.medium.class() == SolventClass::DipolarAprotic {
-            self.v(P::O_DIPOLAR)
+            if self.cell.solvent.record.hydrogen_bond_acceptance >= BARE {
+                self.v(P::O_BARE)
+            } else {
+                self.v(P::O_DIPOLAR)
+            }
         } else {
             self.v(P::O_ETHER)
         };

@@ -1,7 +1,8 @@
 //! Equilibria of the bond-forming steps and the acids that they make.
 
 use enolattice_molecule::{AcylDonor, AnionClass, ElectrophileKind, ImineNitrogen};
-use enolattice_units::{KCAL_IN_KJ, LN_10, R_KJ, kelvin};
+use enolattice_reagents::{BaseKind, SolventClass};
+use enolattice_units::{KCAL_IN_KJ, LN_10, R_KJ, kelvin, math};
 
 use super::Kinetics;
 use crate::bonding;
@@ -50,6 +51,7 @@ impl<'a> Kinetics<'a> {
                 activated: true, ..
             } => self.v(P::DG_ACTIVATED_KETONE),
             ElectrophileKind::Ketone { .. } => self.v(P::DG_ALDOL_KETONE_ACCEPTOR),
+            ElectrophileKind::Aldehyde { .. } if site.beside_cyano => self.v(P::DG_ALDOL_CYANO),
             ElectrophileKind::Aldehyde { .. } if stabilised => self.v(P::DG_ALDOL_STABILISED),
             ElectrophileKind::Aldehyde { .. } if site.acid.class == AnionClass::Nitronate => {
                 self.v(P::DG_ALDOL_NITRO)
@@ -104,25 +106,89 @@ impl<'a> Kinetics<'a> {
         }
     }
 
-    /// The X–H that an addition makes of the electrophile: pKa in the medium, class.
-    pub(super) fn adduct_acid(&self) -> Option<(f64, AnionClass)> {
-        let (pka_dmso, class) = self.kind().and_then(bonding::adduct_acid)?;
-        let chelate = if class == AnionClass::Alkoxide {
-            self.chelation()
-        } else {
-            0.0
-        };
-        Some((self.pka(pka_dmso, class) - chelate, class))
+    /// The X–H that an addition at site `i` makes of the electrophile: pKa in the medium, class.
+    ///
+    /// The hydroxyl of an adduct is as acidic as its own estimate says: acceptors in β strengthen it.
+    pub(super) fn adduct_acid(&self, i: usize) -> Option<(f64, AnionClass)> {
+        let (usual, class) = self.kind().and_then(bonding::adduct_acid)?;
+        if class != AnionClass::Alkoxide {
+            return Some((self.pka(usual, class), class));
+        }
+        let product = self.cell.pair.by_site.get(i).and_then(Option::as_ref);
+        let hydroxyl = product.and_then(|product| product.heteroatom.as_ref());
+        let estimated = hydroxyl.filter(|acid| acid.class == AnionClass::Alkoxide);
+        let pka_dmso = estimated.map_or(usual, |acid| acid.pka_dmso.min(usual));
+        Some((self.pka(pka_dmso, class) - self.chelation(), class))
     }
 
-    /// The X–H of the product at a site: that of the adduct, or the substrate's own.
+    /// pKa in the medium of the X–H that the addition itself makes at site `i`; of the substrate's own X–H where
+    /// it has one.
+    pub(crate) fn addition_pka(&self, i: usize) -> f64 {
+        self.own_heteroatom_of_product(i)
+            .or_else(|| self.adduct_acid(i))
+            .map_or_else(|| self.adduct_pka(i), |(pka, _)| pka)
+    }
+
+    /// The X–H of the product at a site, where it is more acidic than the product's C–H: that of the adduct, or the
+    /// substrate's own. The aldol adducts of nitroalkanes and 1,3-dicarbonyl compounds lose the C–H first.
     pub(crate) fn product_heteroatom(&self, i: usize) -> Option<(f64, AnionClass)> {
-        let product = self.cell.pair.by_site.get(i)?.as_ref()?;
-        if let Some(x) = self.first_heteroatom() {
-            let own = product.heteroatom.as_ref().unwrap_or(x);
-            return Some((self.pka(own.pka_dmso, own.class), own.class));
+        if let Some(own) = self.own_heteroatom_of_product(i) {
+            return Some(own);
         }
-        self.adduct_acid()
+        self.cell.pair.by_site.get(i)?.as_ref()?;
+        let carbon = self.product_carbon(i).map(|site| &site.acid);
+        let of_carbon = carbon.map_or(f64::INFINITY, |acid| self.pka(acid.pka_dmso, acid.class));
+        self.adduct_acid(i).filter(|(pka, _)| *pka <= of_carbon)
+    }
+
+    fn own_heteroatom_of_product(&self, i: usize) -> Option<(f64, AnionClass)> {
+        let product = self.cell.pair.by_site.get(i)?.as_ref()?;
+        let x = self.first_heteroatom()?;
+        let own = product.heteroatom.as_ref().unwrap_or(x);
+        Some((self.pka(own.pka_dmso, own.class), own.class))
+    }
+
+    /// pKa of the X–H of the solvent in the medium and its concentration, mol/L.
+    pub(crate) fn solvent_donor(&self) -> Option<(f64, f64)> {
+        let record = &self.cell.solvent.record;
+        let (acid, class) = record.acid.as_ref()?;
+        (!class.is_carbanion()).then(|| (self.pka(acid.value, *class), record.acid_m))
+    }
+
+    /// Association of a carbanion with the acid of the base where that can hand over a proton, L/mol. A
+    /// hydroxylic solvent is there first.
+    pub(crate) fn association_with_acid(&self) -> Option<f64> {
+        let record = &self.cell.base.record;
+        let has_acid = !matches!(
+            record.kind,
+            BaseKind::Hydride | BaseKind::Organolithium | BaseKind::Grignard
+        );
+        if !has_acid || self.solvent_donor().is_some() {
+            return None;
+        }
+        let p = match (record.class, self.medium.class()) {
+            (AnionClass::Neutral, SolventClass::DipolarAprotic) => P::ASSISTED_DIPOLAR,
+            (AnionClass::Neutral, _) => P::ASSISTED_APOLAR,
+            _ => P::ASSISTED_NEUTRAL,
+        };
+        Some(math::exp10(self.v(p)))
+    }
+
+    /// About how much of the base is in the form of its acid once it has met the substrate, mol/L:
+    /// `x² = K·(s − x)·(b − x)`.
+    pub(crate) fn acid_of_base_m(&self) -> f64 {
+        let conditions = &self.cell.conditions;
+        let substrate = conditions.concentration_m;
+        let base = substrate * conditions.base_equiv;
+        let pka = match self.first_heteroatom() {
+            Some(x) => self.pka(x.pka_dmso, x.class),
+            None => self.site_pka(&self.cell.substrate.carbon[0]),
+        };
+        let k = math::exp10(self.pka_base() - pka);
+        // the root of (1 − K)·x² + K·(s + b)·x − K·s·b = 0 that is positive and smaller than s and b
+        let half = 0.5 * k * (substrate + base);
+        let product = k * substrate * base;
+        product / (half + (half * half + (1.0 - k) * product).max(0.0).sqrt())
     }
 
     /// By how much a carbonyl oxygen in β holds the counter-ion of an alkoxide.

@@ -9,7 +9,7 @@ use crate::carbonyl::Carbonyl;
 use crate::network::Species;
 use crate::parameters::P;
 use crate::prepared::CarbonSite;
-use crate::rates;
+use crate::rates::{self, Nucleophile};
 
 impl<'a> Kinetics<'a> {
     /// Rate constant of elimination by a carbanion of the substrate, paired as it is for substitution.
@@ -43,6 +43,58 @@ impl<'a> Kinetics<'a> {
         let acid = self.cell.electrophile.acid.as_ref()?;
         let is_carbon_acid = acid.element == 6 && self.alkyl().is_none();
         is_carbon_acid.then(|| (self.pka(acid.pka_dmso, acid.class), acid.class))
+    }
+
+    /// The electrophile's own X–H, where that is its strongest acid: pKa in the medium, class.
+    pub(crate) fn electrophile_heteroatom(&self) -> Option<(f64, AnionClass)> {
+        let acid = self.cell.electrophile.acid.as_ref()?;
+        (acid.element != 6).then(|| (self.pka(acid.pka_dmso, acid.class), acid.class))
+    }
+
+    /// Rate constant at which the electrophile's carbanion attacks the next molecule of electrophile.
+    pub(crate) fn self_attack_of_electrophile(&self) -> f64 {
+        let carbanion = self.electrophile_acid().and_then(|(_, class)| {
+            let acid = self.cell.electrophile.acid.as_ref()?;
+            let nucleophile = Nucleophile {
+                relative: 0.0,
+                aggregated_at_m: Some(self.cell.conditions.concentration_m),
+                ..self.oxygen_anion(acid.pka_dmso, class)
+            };
+            self.attack(&nucleophile)
+        });
+        carbanion.map_or(0.0, math::exp10)
+    }
+
+    /// Rate at which the carbanion of an acyl halide or anhydride loses its leaving group and is a ketene, 1/s:
+    /// faster than anything else that it could do (from memory).
+    pub(crate) fn loss_to_ketene(&self) -> f64 {
+        const AT_ONCE_PER_S: f64 = 1e6;
+        match self.kind() {
+            Some(ElectrophileKind::Acyl {
+                donor: AcylDonor::Halide | AcylDonor::Anhydride,
+                ..
+            }) => AT_ONCE_PER_S,
+            _ => 0.0,
+        }
+    }
+
+    /// Rate constant of the disproportionation of an aldehyde without α hydrogen by hydroxide (Cannizzaro),
+    /// `k·[RCHO]²·[HO⁻]`, L²/(mol² s).
+    pub(crate) fn disproportionation(&self) -> f64 {
+        let electrophile = &self.cell.electrophile;
+        let cannot_enolise = electrophile
+            .acid
+            .as_ref()
+            .is_none_or(|acid| acid.element != 6);
+        let (Some(ElectrophileKind::Aldehyde { .. }), Some((e, _, _)), true) =
+            (self.kind(), electrophile.e.as_ref(), cannot_enolise)
+        else {
+            return 0.0;
+        };
+        // benzaldehyde, E −12.9, is the reference
+        let at_25 = self.v(P::CANNIZZARO) + self.v(P::MAYR_S_N) * (e + 12.9);
+        let (to_c, entropy) = (self.medium.temperature_c, self.v(P::DS_ADDITION));
+        math::exp10(rates::at_temperature(at_25, 25.0, to_c, entropy))
     }
 
     pub(crate) fn solvolysis(&self) -> f64 {
@@ -130,8 +182,10 @@ impl<'a> Kinetics<'a> {
         self.loss_of_water(p, base_pka)
     }
 
-    /// Rate constant of the loss of water from the adduct, by a base of this pKa.
-    pub(crate) fn dehydration(&self, base_pka: f64) -> f64 {
+    /// Rate constant of the loss of water from the adduct at a site, by a base of this pKa in the medium.
+    ///
+    /// The carbanion of the adduct expels hydroxide: `log k = k₀ + a·(25.5 − pKa(C–H)) − b·(pKa(H₂O) − pKa(base))`.
+    pub(crate) fn dehydration(&self, site: usize, base_pka: f64) -> f64 {
         match self.kind() {
             Some(ElectrophileKind::Aldehyde { aromatic, .. }) => {
                 let p = if *aromatic {
@@ -144,19 +198,35 @@ impl<'a> Kinetics<'a> {
                 } else {
                     1.0
                 };
-                amine * self.loss_of_water(p, base_pka)
+                amine * self.by_acidity_of_adduct(site) * self.loss_of_water(p, base_pka)
             }
             Some(ElectrophileKind::Ketone { .. }) => {
-                self.loss_of_water(P::DEHYDRATION_ALKYL, base_pka)
+                let rate = self.loss_of_water(P::DEHYDRATION_ALKYL, base_pka);
+                self.by_acidity_of_adduct(site) * rate
             }
             _ => 0.0,
+        }
+    }
+
+    /// How many times faster the adduct at a site loses water than one with the C–H of a ketone. Nitronates
+    /// keep their hydroxyl (common practice: nitroalkenes are made from the neutral nitroalcohol).
+    fn by_acidity_of_adduct(&self, site: usize) -> f64 {
+        const KETONE_PKA: f64 = 25.5;
+        match self.product_carbon(site).map(|site| &site.acid) {
+            Some(acid) if acid.class != AnionClass::Nitronate => {
+                math::exp10(self.v(P::DEHYDRATION_ACIDITY) * (KETONE_PKA - acid.pka_dmso))
+            }
+            _ => 1.0,
         }
     }
 
     pub(super) fn loss_of_water(&self, at_25: P, base_pka: f64) -> f64 {
         // lithium aldolates in ethers are chelated and keep their oxygen (common practice)
         const CHELATED: f64 = -4.0;
-        let weaker = (self.pka(PKA_WATER, AnionClass::Hydroxide) - base_pka).max(0.0);
+        // the acid of a weak base helps the hydroxide to leave
+        const HELPED: f64 = 10.0;
+        let weaker = self.pka(PKA_WATER, AnionClass::Hydroxide) - base_pka;
+        let weaker = weaker.clamp(0.0, HELPED);
         let at_25 = self.v(at_25)
             + if self.medium.binds_oxygen() {
                 CHELATED
@@ -170,6 +240,15 @@ impl<'a> Kinetics<'a> {
             self.medium.temperature_c,
             self.v(P::DS_SN2),
         ))
+    }
+
+    /// Whether a base is lost through the carbanion of the solvent, as fast as by itself: that of an ester
+    /// condenses with the solvent, that of a halogenated solvent gives a carbene.
+    pub(crate) fn solvent_anion_is_lost(&self) -> bool {
+        let record = &self.cell.solvent.record;
+        let acid = record.acid.as_ref().map(|(_, class)| *class);
+        acid == Some(AnionClass::Ester)
+            || acid.is_some() && record.class == SolventClass::Halogenated
     }
 
     /// Rate at which the base decays in the solvent, 1/s.

@@ -3,8 +3,9 @@
 use enolattice_molecule::AnionClass;
 
 use super::{Kinetics, PKA_WATER};
+use crate::parameters::{P, Values};
 use crate::prepared::CarbonSite;
-use crate::rates::Nucleophile;
+use crate::rates::{self, Nucleophile};
 
 /// log10 reactivity of hydroxide at carbon relative to a carbanion of the same pKa (from memory).
 const HYDROXIDE_RELATIVE: f64 = -1.0;
@@ -32,6 +33,7 @@ impl<'a> Kinetics<'a> {
             class: site.acid.class,
             crowding: site.crowding,
             branches: site.branches,
+            beside: site.beside,
             relative: 0.0,
             aggregated_at_m: Some(self.cell.conditions.concentration_m),
             is_dianion: false,
@@ -45,6 +47,7 @@ impl<'a> Kinetics<'a> {
             class: record.class,
             crowding: 0,
             branches: 0,
+            beside: None,
             relative: record.nucleophilicity.value,
             aggregated_at_m: None,
             is_dianion: false,
@@ -88,11 +91,29 @@ impl<'a> Kinetics<'a> {
             class,
             crowding: 0,
             branches: 0,
+            beside: None,
             relative: HYDROXIDE_RELATIVE,
             aggregated_at_m: None,
             is_dianion: false,
         }
     }
+}
+
+/// Mayr's N in DMSO of the carbanion of a site; its crowding as N: log10 units over sN.
+pub(crate) fn nucleophilicity_of(site: &CarbonSite, values: &Values) -> f64 {
+    let carbanion = Nucleophile {
+        pka_dmso: site.acid.pka_dmso,
+        class: site.acid.class,
+        crowding: site.crowding,
+        branches: site.branches,
+        beside: site.beside,
+        relative: 0.0,
+        aggregated_at_m: None,
+        is_dianion: false,
+    };
+    let room = f64::from(site.crowding) * values.get(P::STERIC_POLAR)
+        + f64::from(site.branches) * values.get(P::STERIC_BRANCH);
+    rates::nucleophilicity(site.acid.pka_dmso, &carbanion, values) + room / values.get(P::MAYR_S_N)
 }
 
 /// log10 reactivity of heteroatom anions at carbon relative to a carbanion of the same pKa.

@@ -88,6 +88,14 @@ impl Reactions<'_> {
                 });
             }
         }
+        if let Some((pka, class)) = k.electrophile_heteroatom() {
+            acids.push(Acid {
+                acid: Ok(Species::Electrophile),
+                anion: Species::ElectrophileAnion,
+                pka,
+                class,
+            });
+        }
         if let Some((pka, class)) = k.leaving_acid() {
             acids.push(Acid {
                 acid: Ok(Species::LeavingAcid),
@@ -191,20 +199,19 @@ impl Reactions<'_> {
                 let delta = base.pka - acid.pka;
                 let log_k = match k.cell.base.record.kind {
                     BaseKind::Amide if by_base => {
-                        rates::exchange_with_amide(delta, &k.medium, k.values)
+                        rates::exchange_with_amide(delta, weight, &k.medium, k.values)
                     }
                     BaseKind::Organolithium if by_base => {
                         let at_25 = P::ORGANOLITHIUM_EXCHANGE;
-                        rates::exchange_with_organometal(at_25, delta, &k.medium, k.values)
+                        rates::exchange_with_organometal(at_25, delta, weight, &k.medium, k.values)
                     }
                     BaseKind::Grignard if by_base => {
                         let at_25 = P::GRIGNARD_EXCHANGE;
-                        rates::exchange_with_organometal(at_25, delta, &k.medium, k.values)
+                        rates::exchange_with_organometal(at_25, delta, weight, &k.medium, k.values)
                     }
-                    _ => rates::exchange(delta, acid.class, &k.medium, k.values),
+                    _ => rates::exchange(delta, acid.class, weight, &k.medium, k.values),
                 };
-                let fastest = rates::EXCHANGE_CAP + delta.min(0.0);
-                self.transfer(acid, base, math::exp10((log_k + weight).min(fastest)));
+                self.transfer(acid, base, math::exp10(log_k));
             }
         }
         for (i, a) in slow.iter().enumerate() {

@@ -11,6 +11,14 @@ use crate::prepared::CarbonSite;
 /// acidities of the library: 28 to 31).
 const ADDUCT_PKA: f64 = 28.0;
 
+/// Rate at which a proton is handed over within a hydrogen-bonded pair, 1/s (Eigen, Angew. Chem. Int. Ed. Engl. 1964,
+/// 3, 1, from memory).
+const HANDED_OVER_PER_S: f64 = 1e11;
+
+/// Rate at which the alkoxide of an adduct takes the more acidic hydrogen of its own carbon, by way of others in the
+/// pot, 1/s (from memory).
+const TO_CARBON_PER_S: f64 = 1e6;
+
 impl Reactions<'_> {
     pub(super) fn attacks_of_carbanions(&mut self) {
         let k = self.kinetics;
@@ -22,8 +30,17 @@ impl Reactions<'_> {
                 Some(_) => k.attack(&nucleophile).map_or(0.0, math::exp10) * nudge,
                 None => 0.0,
             };
+            self.assisted_addition(i, site, rate);
             let (rate, back) = match k.addition_log10_k(site) {
                 Some(log10_k) if !k.acylates_reversibly() => {
+                    let falls_apart = k.addition_pka(i) - log10_k - k.site_pka(site);
+                    let carbanion_is_first = k.adduct_pka(i) < k.addition_pka(i);
+                    let rate = if k.bonding() == Bonding::Adduct && carbanion_is_first {
+                        let gone = rate * math::exp10(falls_apart);
+                        rate * TO_CARBON_PER_S / (TO_CARBON_PER_S + gone)
+                    } else {
+                        rate
+                    };
                     super::forth_and_back(rate, k.adduct_pka(i) - log10_k - k.site_pka(site))
                 }
                 _ => (rate, 0.0),
@@ -47,7 +64,7 @@ impl Reactions<'_> {
                 back,
             );
             let ratio = match product {
-                Some(p) if p.has_oxygen_attack => k.oxygen_over_carbon(site.acid.class),
+                Some(p) if p.has_oxygen_attack => k.oxygen_over_carbon(site),
                 _ => None,
             };
             let oxygen = ratio.map_or(0.0, |ratio| rate * math::exp10(ratio));
@@ -60,6 +77,61 @@ impl Reactions<'_> {
                 eliminate,
             );
         }
+    }
+
+    /// An addition in which the solvent or the acid of the base hands its proton over as the bond forms, so that no
+    /// alkoxide is ever free: how nitroalkanes and 1,3-dicarbonyl compounds add to aldehydes with weak bases.
+    ///
+    /// Of the adducts that form at `rate` those are kept that get a proton before they fall apart.
+    fn assisted_addition(&mut self, i: usize, site: &CarbonSite, rate: f64) {
+        let k = self.kinetics;
+        let adduct = match k.addition_log10_k(site) {
+            Some(log10_k) if k.bonding() == Bonding::Adduct => Some((k.addition_pka(i), log10_k)),
+            _ => None,
+        };
+        let (adduct_pka, log10_k) = adduct.unwrap_or((0.0, 0.0));
+        let rate = if adduct.is_some() { rate } else { 0.0 };
+        // an iminium ion leaves an amine, which holds
+        let falls_apart = if k.cell.base.makes_iminium {
+            0.0
+        } else {
+            rate * math::exp10(adduct_pka - log10_k - k.site_pka(site))
+        };
+        let kept = |donor_pka: f64| {
+            let taken = HANDED_OVER_PER_S * math::exp10((adduct_pka - donor_pka).min(0.0));
+            rate * taken / (taken + falls_apart)
+        };
+        let (anion, e) = (Species::Carbanion(i), Some(Species::Electrophile));
+        let product = Species::Product(i);
+
+        let (by_solvent, back) = match k.solvent_donor() {
+            Some((pka, acid_m)) => {
+                let forth = kept(pka);
+                let log10_equilibrium = log10_k + k.site_pka(site) - pka;
+                (forth, forth / (math::exp10(log10_equilibrium) * acid_m))
+            }
+            None => (0.0, 0.0),
+        };
+        self.add(anion, e, &[product, Species::Lyate], by_solvent);
+        self.add(
+            product,
+            Some(Species::Lyate),
+            &[anion, Species::Electrophile],
+            back,
+        );
+
+        let (by_acid, back) = match k.association_with_acid() {
+            Some(association) => {
+                let forth = kept(k.pka_base()) / (1.0 / association + k.acid_of_base_m());
+                let log10_equilibrium = log10_k + k.site_pka(site) - k.pka_base();
+                (forth, forth / math::exp10(log10_equilibrium))
+            }
+            None => (0.0, 0.0),
+        };
+        self.add(anion, e, &[product, Species::Base], by_acid);
+        self.list.last_mut().expect("just added").third = Some(Species::BaseAcid);
+        let apart = [anion, Species::Electrophile, Species::BaseAcid];
+        self.add(product, Some(Species::Base), &apart, back);
     }
 
     /// The alkoxide that left an ester brings the acyl group back from the product to the ester.

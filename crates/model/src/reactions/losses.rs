@@ -58,6 +58,50 @@ impl Reactions<'_> {
         );
     }
 
+    /// The electrophile's carbanion takes the next molecule of electrophile or falls apart; an aldehyde that has
+    /// none disproportionates.
+    pub(super) fn fates_of_electrophile_alone(&mut self) {
+        let k = self.kinetics;
+        let (e, spent) = (Species::Electrophile, Species::Spent);
+        // the adduct's alkoxide takes a proton from the acid of a weaker base, and the base is back
+        let gives_base_back =
+            k.association_with_acid().is_some() && k.pka_base() < k.aldol_hydroxyl();
+        let (products, with): (&[Species], _) = if gives_base_back {
+            (&[spent, spent, Species::Base], Some(Species::BaseAcid))
+        } else {
+            (&[spent, spent], None)
+        };
+        self.add(
+            Species::ElectrophileAnion,
+            Some(e),
+            products,
+            k.self_attack_of_electrophile(),
+        );
+        self.list.last_mut().expect("just added").with = with;
+        self.add(
+            Species::ElectrophileAnion,
+            None,
+            &[Species::Eliminated],
+            k.loss_to_ketene(),
+        );
+        let hydroxides = [
+            (Species::Hydroxide, true),
+            (
+                Species::Base,
+                k.cell.base.record.kind == BaseKind::Hydroxide,
+            ),
+        ];
+        for (hydroxide, is_there) in hydroxides {
+            let rate = if is_there {
+                k.disproportionation()
+            } else {
+                0.0
+            };
+            self.add(e, Some(e), &[spent, spent], rate);
+            self.list.last_mut().expect("just added").third = Some(hydroxide);
+        }
+    }
+
     pub(super) fn self_condensation(&mut self) {
         let k = self.kinetics;
         let Some(acceptor) = k.cell.substrate.acceptor else {
@@ -76,51 +120,32 @@ impl Reactions<'_> {
         } else {
             k.aldol_hydroxyl()
         };
-        for (i, site) in k.cell.substrate.carbon.iter().enumerate() {
-            let nucleophile = k.substrate_carbanion(site);
-            let breakdown = if claisen {
-                k.return_from_adduct(&nucleophile, dimer_anion)
-            } else {
-                0.0
-            };
-            let rate =
-                math::exp10(rates::addition(&nucleophile, e, &k.medium, k.values) + breakdown);
-            let log10_return = dimer_anion - log10_k - k.site_pka(site);
-            let (forth, back) = if claisen {
-                (rate, rate * math::exp10(log10_return))
-            } else {
-                super::forth_and_back(rate, log10_return)
-            };
-            let anion = Species::Carbanion(i);
-            self.add(
-                anion,
-                Some(Species::Substrate),
-                &[Species::DimerAnion],
-                forth,
-            );
-            if claisen {
-                let alkoxide = k.cell.base.record.kind == BaseKind::Alkoxide;
-                let by_base = if alkoxide { back } else { 0.0 };
-                self.add(
-                    Species::Dimer,
-                    Some(Species::Base),
-                    &[anion, Species::Substrate],
-                    by_base,
-                );
-                self.add(
-                    Species::Dimer,
-                    Some(Species::Lyate),
-                    &[anion, Species::Substrate],
-                    back,
-                );
-            } else {
-                self.add(
-                    Species::DimerAnion,
-                    None,
-                    &[anion, Species::Substrate],
-                    back,
-                );
-            }
+        // one site makes the dimer, or its return would carry one enolate over into another
+        let i = k.cell.substrate.condensing_site();
+        let site = &k.cell.substrate.carbon[i];
+        let nucleophile = k.substrate_carbanion(site);
+        let breakdown = if claisen {
+            k.return_from_adduct(&nucleophile, dimer_anion)
+        } else {
+            0.0
+        };
+        let rate = math::exp10(rates::addition(&nucleophile, e, &k.medium, k.values) + breakdown);
+        let log10_return = dimer_anion - log10_k - k.site_pka(site);
+        let (forth, back) = if claisen {
+            (rate, rate * math::exp10(log10_return))
+        } else {
+            super::forth_and_back(rate, log10_return)
+        };
+        let (anion, substrate) = (Species::Carbanion(i), Species::Substrate);
+        self.add(anion, Some(substrate), &[Species::DimerAnion], forth);
+        if claisen {
+            let alkoxide = k.cell.base.record.kind == BaseKind::Alkoxide;
+            let by_base = if alkoxide { back } else { 0.0 };
+            let apart = [anion, substrate];
+            self.add(Species::Dimer, Some(Species::Base), &apart, by_base);
+            self.add(Species::Dimer, Some(Species::Lyate), &apart, back);
+        } else {
+            self.add(Species::DimerAnion, None, &[anion, substrate], back);
         }
     }
 
@@ -176,6 +201,16 @@ impl Reactions<'_> {
                 &[Species::Taken],
                 if water { rate } else { 0.0 },
             );
+        }
+        let exchange = k
+            .cell
+            .substrate
+            .exchangeable_halogen
+            .filter(|_| record.kind == BaseKind::Organolithium);
+        if let Some(halogen) = exchange {
+            let rate = at(k.v(halogen), P::DS_ADDITION);
+            let s = Some(Species::Substrate);
+            self.add(Species::Base, s, &[Species::Taken], rate);
         }
         if let Some(addition) = organometal.filter(|_| acceptor.is_some()) {
             let rate = at(k.v(addition), P::DS_ADDITION);

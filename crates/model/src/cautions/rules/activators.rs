@@ -225,7 +225,7 @@ pub(super) const RULES: &[Rule] = &[
         .reason("{electrophile} oxidises {base}, violently when concentrated")
         .source(HANDBOOK),
     Rule::stop("halogenating agent with ammonia's amide", Explosive)
-        .base(&[AmmoniaOnQuench])
+        .base(&[AmmoniaOnQuench, Ammonia])
         .electrophile(&[Halogen, Iodine, NHalo, Hypohalite])
         .reason("{base} and {electrophile} make nitrogen trihalides, which detonate")
         .source(HANDBOOK),

@@ -20,7 +20,7 @@ pub(super) const RULES: &[Rule] = &[
         .anyone(&[AlkaliAmide])
         .reason("{reagent} may catch fire in moist air: handle as pyrophoric"),
     Rule::note("hydride out of oil", Pyrophoric)
-        .anyone(&[Hydride])
+        .anyone(&[AlkaliHydride])
         .reason("{reagent} washed free of oil may catch fire in moist air"),
     Rule::warning("potassium hydride out of oil", Pyrophoric)
         .anyone(&[PotassiumHydride])
@@ -35,7 +35,7 @@ pub(super) const RULES: &[Rule] = &[
         .reason("{reagent} gives off ammonia or a gaseous amine with every acid, {gas_ml} mL per mmol"),
     Rule::note("hydride gives hydrogen", Gas)
         .anyone(&[Hydride])
-        .reason("{reagent} gives off hydrogen with every acid, {gas_ml} mL per mmol: vent the well"),
+        .reason("{reagent} gives off hydrogen with every acid, {gas_ml} mL per mmol of H⁻: vent the well"),
     Rule::note("organometallic gives gas", Gas)
         .anyone(&[GasOnQuench])
         .reason("{reagent} gives off a flammable gas with every acid, {gas_ml} mL per mmol"),

@@ -8,6 +8,10 @@ use super::{ANY, DIAZO_PAPER, HANDBOOK, STRONG};
 /// Azo and diazo compounds and azides decompose slowly from about here; a margin of common practice.
 const WARM_C: f64 = 60.0;
 
+/// Diazonium salts decompose within hours from about here, and faster in bulk; a margin of common practice.
+const DIAZONIUM_C: f64 = 30.0;
+
+const DIAZONIUM_PAPER: &str = "Firth and Fairlamb, Org. Lett. 2020, 22, 7057; quoted from memory";
 const AZIDE_REVIEW: &str =
     "Bräse and others, Angew. Chem. Int. Ed. 2005, 44, 5188; quoted from memory";
 const AZIDE_IN_DCM: &str =
@@ -81,6 +85,16 @@ pub(super) const RULES: &[Rule] = &[
         .anyone(&[Diazonium])
         .reason("{reagent} is a diazonium salt: explosive when dry, decomposes when warm")
         .source(HANDBOOK),
+    Rule::stop("warm diazonium salt", Runaway)
+        .electrophile(&[Diazonium])
+        .above_c(DIAZONIUM_C)
+        .reason("{electrophile} at {t} °C decomposes with nitrogen and much heat: keep it below 5 °C in solution")
+        .source(DIAZONIUM_PAPER),
+    Rule::stop("warm diazonium substrate", Runaway)
+        .substrate(&[Diazonium])
+        .above_c(DIAZONIUM_C)
+        .reason("the diazonium salt at {t} °C decomposes with nitrogen and much heat")
+        .source(DIAZONIUM_PAPER),
     Rule::note("nitrogen from a diazonium salt", Gas)
         .anyone(&[Diazonium])
         .reason("{reagent} gives off nitrogen when it warms, {gas_ml} mL per mmol"),

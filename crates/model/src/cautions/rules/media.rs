@@ -23,12 +23,12 @@ const NITRONATE_WARM_C: f64 = 60.0;
 pub(super) const RULES: &[Rule] = &[
     // Hydrides.
     Rule::warning("hydride in amide or sulfoxide", Runaway)
-        .base(&[Hydride])
+        .base(&[AlkaliHydride])
         .solvent(&[Amide, Sulfoxide])
         .reason("{base} in {solvent} decomposes with heat and gas after a delay; runaways are published")
         .source(HYDRIDE_PAPER),
     Rule::stop("warm hydride in amide or sulfoxide", Runaway)
-        .base(&[Hydride])
+        .base(&[AlkaliHydride])
         .solvent(&[Amide, Sulfoxide])
         .above_c(HYDRIDE_STOP_C)
         .instead_of("hydride in amide or sulfoxide")
@@ -63,7 +63,7 @@ pub(super) const RULES: &[Rule] = &[
     Rule::warning("hydrogen from a protic solvent", Gas)
         .base(&[Hydride])
         .solvent(&[Alcohol, Water, Acid])
-        .reason("{base} gives off hydrogen in {solvent} at once, {gas_ml} mL per mmol"),
+        .reason("{base} gives off hydrogen in {solvent} at once, {gas_ml} mL per mmol of H⁻"),
     Rule::warning("organometallic gas from a protic solvent", Gas)
         .base(&[GasOnQuench])
         .solvent(&[Alcohol, Water, Acid])

@@ -61,6 +61,10 @@ fn is_organometallic(base: &Base) -> bool {
     matches!(base.kind, BaseKind::Organolithium | BaseKind::Grignard)
 }
 
+fn is_alkali(cation: Cation) -> bool {
+    matches!(cation, Cation::Lithium | Cation::Sodium | Cation::Potassium)
+}
+
 /// Carbon atoms of the base's conjugate acid; none where it is no molecule.
 fn carbons_of_acid(base: &Base) -> Option<usize> {
     let acid = Molecule::parse(&base.conjugate_acid).ok()?;
@@ -108,10 +112,8 @@ traits! {
         Test::Base(|b| b.kind == BaseKind::Organolithium && has_tertiary_carbanion(&b.smiles));
     Grignard, "a Grignard reagent", Test::Base(|b| b.kind == BaseKind::Grignard);
     MetalAmide, "a metal amide", Test::Base(|b| b.kind == BaseKind::Amide);
-    AlkaliAmide, "an amide of lithium, sodium or potassium", Test::Base(|b| {
-        let alkali = matches!(b.cation, Cation::Lithium | Cation::Sodium | Cation::Potassium);
-        b.kind == BaseKind::Amide && alkali
-    });
+    AlkaliAmide, "an amide of lithium, sodium or potassium",
+        Test::Base(|b| b.kind == BaseKind::Amide && is_alkali(b.cation));
     SodiumAmide, "sodium or potassium amide",
         Test::Base(|b| has_part(&b.smiles, "[NH2-]") && b.cation != Cation::Lithium);
     AmmoniaOnQuench, "an amide of ammonia, methylamine or dimethylamine",
@@ -119,6 +121,8 @@ traits! {
     Superbase, "a phosphazene or other neutral base with pKa of 20 or more in DMSO",
         Test::Base(|b| b.kind == BaseKind::Amine && b.pka_dmso.value >= SUPERBASE_PKA);
     Hydride, "a saline hydride", Test::Base(|b| b.kind == BaseKind::Hydride);
+    AlkaliHydride, "a hydride of lithium, sodium or potassium",
+        Test::Base(|b| b.kind == BaseKind::Hydride && is_alkali(b.cation));
     PotassiumHydride, "potassium hydride",
         Test::Base(|b| b.kind == BaseKind::Hydride && b.cation == Cation::Potassium);
     Alkoxide, "an alkoxide", Test::Base(is_alkoxide);
@@ -173,7 +177,7 @@ traits! {
         "[CX4]([Cl,Br])([Cl,Br])([Cl,Br])[CX4]([Cl,Br])([Cl,Br])[Cl,Br]",
     ]);
     ArylHalide, "an aryl halide", Test::Any(&["c[F,Cl,Br,I]"]);
-    Ammonia, "ammonia", Test::Any(&["[NX3;H3]"]);
+    Ammonia, "ammonia or an ammonium salt", Test::Any(&["[NX3;H3]", "[NX4+;H4]"]);
     AmideNh, "an amide with N–H", Test::Any(&["[CX3](=[OX1])[NX3;H1,H2]"]);
     Amide, "an amide without N–H", Test::Any(&["[CX3;!$(C([#7])[#7])](=[OX1])[NX3;H0]"]);
     Formamide, "a formamide", Test::Any(&["[CX3;H1](=[OX1])[NX3;H0]"]);

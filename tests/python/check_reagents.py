@@ -30,6 +30,7 @@ NOT_KNOWN_THERE = {
     "BTPP",
     "CH2=NMe2 I",
     "DBAD",
+    "KOPh",
     "LiICA",
     "LiNCy2",
     "LiTMP",
@@ -46,11 +47,12 @@ NOT_KNOWN_THERE = {
     "TMPMgCl.LiCl",
     "TMPZnCl.LiCl",
     "ethenesulfonyl fluoride",
+    "piperidinium acetate",
     "tBuMgCl",
 }
 
 # Salts that the package draws otherwise.
-DRAWN_OTHERWISE_THERE = {"LiH": "as atoms, not as ions"}
+DRAWN_OTHERWISE_THERE = {"CaH2": "as atoms, not as ions", "LiH": "as atoms, not as ions"}
 
 # Boiling points where the package is not followed, and why.
 BOILING_EXCEPTIONS = {

@@ -196,6 +196,42 @@ def test_a_campaign_may_come_in_chunks(jobs, stubs):
     assert streamed.job_id == ""
 
 
+def test_measured_yields_come_back_beside_the_computed_ones(jobs, chemistry, stubs, done):
+    campaign = small_campaign(stubs)
+    row = stubs.campaign.MeasuredYield(
+        substrate="cyclohexanone",
+        base="LDA",
+        electrophile="iodomethane",
+        solvent="THF",
+        temperature_c=-20.0,
+        yield_fraction=0.62,
+        sigma=0.03,
+        note="by GC",
+    )
+    campaign.measured.append(row)
+    submitted = jobs.SubmitJob(stubs.job.SubmitJobRequest(campaign=campaign))
+    assert submitted.campaign_fingerprint == done.campaign_fingerprint
+    for _ in jobs.WatchJob(stubs.job.WatchJobRequest(job_id=submitted.job_id)):
+        pass
+    cells = list(pages(jobs, stubs, job_id=submitted.job_id))
+    (measured,) = [cell for cell in cells if cell.HasField("measured_yield")]
+    assert (measured.substrate, measured.base, measured.electrophile) == ("cyclohexanone", "LDA", "MeI")
+    assert measured.measured_yield == 0.62
+    job_cell = {"job_id": submitted.job_id, "cell": measured.cell}
+    told = chemistry.ExplainCell(stubs.explanation.ExplainCellRequest(job_cell=job_cell))
+    assert (told.cell.measured.sigma, told.cell.measured.note) == (0.03, "by GC")
+
+    row.yield_fraction = 62.0
+    row.base = "LDDA"
+    campaign.measured.append(row)
+    code, _, bad = refusal(lambda: jobs.SubmitJob(stubs.job.SubmitJobRequest(campaign=campaign)))
+    assert code == grpc.StatusCode.INVALID_ARGUMENT
+    assert [(v.field, v.reason) for v in bad.field_violations] == [
+        ("campaign.measured[1].base", "REAGENT_UNKNOWN"),
+        ("campaign.measured[1].yield_fraction", "VALUE_OUT_OF_RANGE"),
+    ]
+
+
 def test_every_fault_of_a_campaign_is_told(jobs, stubs):
     campaign = small_campaign(stubs)
     campaign.substrates[1].smiles = "C1CC"

@@ -5,6 +5,7 @@
 mod campaigns;
 mod crash;
 mod directions;
+mod hostile;
 mod lifecycle;
 mod live;
 mod portable;

@@ -32,6 +32,7 @@ struct Reported {
     temperature_c: Option<f64>,
     product: String,
     site_classes: u32,
+    refluxed: String,
 }
 
 /// What the model makes of a reported reaction.
@@ -59,7 +60,7 @@ pub struct Judged {
 
 /// All reactions of the table.
 ///
-/// Where the source says nothing: −78 °C for metal amides, alkyllithiums and Grignard reagents, else 25 °C;
+/// Where the source says nothing: the boiling point of the solvent where its text speaks of reflux, −78 °C for metal amides, alkyllithiums and Grignard reagents, else 25 °C;
 /// THF for these, ethanol for alkoxides, DMF for hydrides and carbonates; 1.2 equivalents of base (2.4 where
 /// the substrate has a more acidic X–H), 1.5 of electrophile, 0.2 mol/L, 16 h; all together for acylations by
 /// esters. Alkylations that begin in the cold are warmed to 0 °C or 25 °C.
@@ -166,6 +167,7 @@ fn cell(model: &Model, row: &Reported) -> Result<Cell, String> {
         base.kind,
         BaseKind::Amide | BaseKind::Organolithium | BaseKind::Grignard
     );
+    let reflux = (row.refluxed == "yes" && !takes_cold).then_some(solvent.boiling_c);
     let formation_temperature_c = if takes_cold { -78.0 } else { 25.0 };
     let is_alkylation = row.class.starts_with("alkylation");
     let is_claisen = row.class.starts_with("Claisen");
@@ -186,7 +188,7 @@ fn cell(model: &Model, row: &Reported) -> Result<Cell, String> {
                 Some(t) if takes_cold && is_alkylation => t.max(0.0),
                 Some(t) => t,
                 None if takes_cold && !is_alkylation => -78.0,
-                None => 25.0,
+                None => reflux.unwrap_or(25.0),
             },
             formation_temperature_c: row.temperature_c.unwrap_or(formation_temperature_c),
             base_equiv: if has_stronger_acid { 2.4 } else { 1.2 },

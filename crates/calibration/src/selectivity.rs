@@ -91,7 +91,9 @@ pub fn kinetic_enolates(model: &Model) -> Result<Compared, String> {
             prior: (1.5, 1.0),
         },
     ];
-    enolates(model, "kinetic", &fitted)
+    enolates(model, "kinetic", &fitted, |draw, cell| {
+        model.enolates(cell, draw)
+    })
 }
 
 /// Share of the more substituted enolate at equilibrium.
@@ -99,10 +101,17 @@ pub fn kinetic_enolates(model: &Model) -> Result<Compared, String> {
 /// # Errors
 /// A sentence that names a row which cannot be used.
 pub fn equilibrated_enolates(model: &Model) -> Result<Compared, String> {
-    enolates(model, "thermodynamic", &[])
+    enolates(model, "thermodynamic", &[], |draw, cell| {
+        model.equilibrated_enolates(cell, draw)
+    })
 }
 
-fn enolates(model: &Model, control: &str, fitted: &[Fitted]) -> Result<Compared, String> {
+fn enolates(
+    model: &Model,
+    control: &str,
+    fitted: &[Fitted],
+    shares: impl Fn(&Draw, &Cell) -> Vec<(usize, f64)>,
+) -> Result<Compared, String> {
     let ketones: Vec<Ketone> = rows(REGIOCHEMISTRY)?;
     let ketones: Vec<Ketone> = ketones
         .into_iter()
@@ -121,7 +130,9 @@ fn enolates(model: &Model, control: &str, fitted: &[Fitted]) -> Result<Compared,
     let observed = ketones
         .iter()
         .map(|k| log_ratio(k.more_substituted_percent));
-    let predict = |draw: &Draw, row: usize| log_ratio(more_substituted(model, &cells[row], draw));
+    let predict = |draw: &Draw, row: usize| {
+        log_ratio(more_substituted(&cells[row], &shares(draw, &cells[row])))
+    };
     Ok(compare(
         model,
         names.collect(),
@@ -229,10 +240,9 @@ fn percent(log10_ratio: f64) -> f64 {
 }
 
 /// Share of the enolate with more neighbours at its carbon, of the two kinds, per cent.
-fn more_substituted(model: &Model, cell: &Cell, draw: &Draw) -> f64 {
+fn more_substituted(cell: &Cell, shares: &[(usize, f64)]) -> f64 {
     let molecule = &cell.substrate.molecule;
     let neighbours = |atom: usize| molecule.neighbours(atom).len();
-    let shares = model.enolates(cell, draw);
     let most = shares.iter().map(|(atom, _)| neighbours(*atom)).max();
     let of_most = shares
         .iter()

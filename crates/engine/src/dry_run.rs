@@ -2,7 +2,7 @@
 
 use std::time::{Duration, Instant};
 
-use enolattice_grid::{CampaignSpec, CautionCount, Grid};
+use enolattice_grid::{CampaignSpec, CautionCount, Grid, PairsNotCovered};
 use rayon::prelude::*;
 
 use crate::engine::blocking;
@@ -13,14 +13,16 @@ use crate::{Axis, Engine, EngineError, Job};
 const MOST_BLOCKS: usize = 64;
 const LONGEST_SAMPLE: Duration = Duration::from_secs(2);
 
-/// Bytes of a cell's columns, and how much more the database takes for them, as was measured.
-const BYTES_PER_CELL: f64 = 11.0;
-const DISK_OVERHEAD: f64 = 1.8;
+/// How much more the database takes on disk than the columns in it. Measured as the size of `db/` after
+/// `screen`: 2.6 for the 155,520 cells of the demonstration, 2.9 for 10^6 and 2.1 for 10^7 cells that
+/// are stored faster than a model would score them.
+const DISK_OVERHEAD: f64 = 2.6;
 
-/// Memory of the engine at rest, and of each cell of a job whose blocks are looked at (both as they
-/// were measured; `docs/storage.md` of the store says why).
-const RESTING_BYTES: u64 = 64 << 20;
-const MEMORY_PER_CELL: u64 = 24;
+/// Memory of an engine that screens, without its tables, and of each cell of its job. Measured as `VmHWM` of
+/// `/proc/PID/status` at the end of `screen`, on two threads: 40 MB for 48 cells, 66 to 78 MB for 10^6 and 235 MB
+/// for 10^7 cells of one pair; 65 MB for the demonstration, whose tables take a third of that.
+const RESTING_BYTES: u64 = 38 << 20;
+const MEMORY_PER_CELL: u64 = 19;
 
 /// What a campaign would take, and what of it cannot be screened or should not be run.
 #[derive(Clone, Debug, PartialEq)]
@@ -41,9 +43,13 @@ pub struct DryRun {
     pub cells_scored_not_covered: u64,
     /// Values of axes whose cells the model does not cover.
     pub not_covered: Vec<NotCovered>,
+    /// Pairs of substrate and electrophile that were looked at: all, or about a hundred thousand.
+    pub pairs_looked_at: u64,
+    /// Of these, pairs that the model does not cover although it knows both, by reason.
+    pub pairs_not_covered: Vec<PairsNotCovered>,
     /// Cells of which the cautions were looked up: all, or about a million.
     pub cells_looked_at: u64,
-    /// Of these, how many carry severe cautions, severest first.
+    /// Of these, how many carry cautions of the two severer kinds, severest first.
     pub cautions: Vec<CautionCount>,
 }
 
@@ -79,7 +85,9 @@ impl Engine {
         let (models, threads) = (self.models.clone(), self.threads);
         blocking(move || {
             let grid = models.grid(&campaign)?;
-            let sample = sample(&grid, threads)?;
+            let pool = pool(threads)?;
+            let sample = sample(&grid, &pool);
+            let (pairs_not_covered, pairs_looked_at) = pool.install(|| grid.pairs_not_covered());
             let (cautions, cells_looked_at) = grid.count_cautions();
             let cells = grid.cells();
             let axes = grid
@@ -92,12 +100,15 @@ impl Engine {
             Ok(DryRun {
                 job: would_be(&grid),
                 axes: axes.collect(),
-                seconds: sample.seconds * cells as f64 / sample.cells.max(1) as f64,
-                disk_bytes: (cells as f64 * BYTES_PER_CELL * DISK_OVERHEAD) as u64,
-                memory_bytes: RESTING_BYTES + grid.table_bytes() + cells * MEMORY_PER_CELL,
+                seconds: sample.per_cell(sample.seconds) * cells as f64,
+                disk_bytes: (sample.per_cell(sample.bytes as f64) * cells as f64 * DISK_OVERHEAD)
+                    as u64,
+                memory_bytes: memory_bytes(&grid),
                 cells_scored: sample.cells,
                 cells_scored_not_covered: sample.not_covered,
                 not_covered: not_covered(&grid),
+                pairs_looked_at,
+                pairs_not_covered,
                 cells_looked_at,
                 cautions,
             })
@@ -120,22 +131,39 @@ fn not_covered(grid: &Grid) -> Vec<NotCovered> {
     electrophiles.chain(substrates).collect()
 }
 
+fn memory_bytes(grid: &Grid) -> u64 {
+    (RESTING_BYTES + grid.cells() * MEMORY_PER_CELL).saturating_add(grid.table_bytes())
+}
+
 /// What scoring some blocks came to.
 struct Sample {
     cells: u64,
     not_covered: u64,
+    /// Bytes of their columns as they are stored.
+    bytes: u64,
     seconds: f64,
 }
 
-fn sample(grid: &Grid, threads: usize) -> Result<Sample, EngineError> {
+impl Sample {
+    fn per_cell(&self, measure: f64) -> f64 {
+        measure / self.cells.max(1) as f64
+    }
+}
+
+/// As many threads as the engine would screen with.
+fn pool(threads: usize) -> Result<rayon::ThreadPool, EngineError> {
     let pool = rayon::ThreadPoolBuilder::new().num_threads(threads).build();
-    let pool = pool.map_err(|error| EngineError::Store {
+    pool.map_err(|error| EngineError::Store {
         reason: format!("no compute threads can be started: {error}"),
-    })?;
+    })
+}
+
+fn sample(grid: &Grid, pool: &rayon::ThreadPool) -> Sample {
     let begun = Instant::now();
     let mut sample = Sample {
         cells: 0,
         not_covered: 0,
+        bytes: 0,
         seconds: 0.0,
     };
     let blocks = grid.spread_blocks(MOST_BLOCKS);
@@ -144,20 +172,22 @@ fn sample(grid: &Grid, threads: usize) -> Result<Sample, EngineError> {
         if begun.elapsed() > LONGEST_SAMPLE {
             break;
         }
-        let scored: Vec<(u64, u64)> = pool.install(|| {
+        let scored: Vec<(u64, u64, u64)> = pool.install(|| {
             let one = |block: &_| {
                 let columns = grid.score(*block);
                 let unknown =
                     (0..columns.len()).filter(|i| columns.score(*i).expected_yield.is_none());
-                (columns.len() as u64, unknown.count() as u64)
+                let bytes = columns.to_bytes().len();
+                (columns.len() as u64, unknown.count() as u64, bytes as u64)
             };
             run.par_iter().map(one).collect()
         });
-        for (cells, not_covered) in scored {
+        for (cells, not_covered, bytes) in scored {
             sample.cells += cells;
             sample.not_covered += not_covered;
+            sample.bytes += bytes;
         }
     }
     sample.seconds = begun.elapsed().as_secs_f64();
-    Ok(sample)
+    sample
 }

@@ -2,7 +2,7 @@
 
 use std::sync::Arc;
 
-use enolattice_grid::CellId;
+use enolattice_grid::{CellId, MeasuredYield};
 use enolattice_model::{Cell, Explanation, Model};
 
 use crate::engine::{blocking, job_id};
@@ -18,6 +18,7 @@ struct Target {
     scored_with: Option<String>,
     /// What was changed of a given cell on the way in.
     warnings: Vec<String>,
+    measured: Option<MeasuredYield>,
 }
 
 impl Engine {
@@ -49,7 +50,10 @@ impl Engine {
     /// As [`Engine::explain`].
     pub async fn describe(&self, target: ExplainTarget) -> Result<CellDescription, EngineError> {
         let target = self.target(target).await?;
-        Ok(CellDescription::of(target.number, &target.cell))
+        Ok(CellDescription {
+            measured: target.measured,
+            ..CellDescription::of(target.number, &target.cell)
+        })
     }
 
     async fn target(&self, target: ExplainTarget) -> Result<Target, EngineError> {
@@ -65,6 +69,7 @@ impl Engine {
                         yield_at_least: query.yield_at_least,
                         scored_with: None,
                         warnings,
+                        measured: None,
                     })
                 })
                 .await
@@ -89,6 +94,7 @@ impl Engine {
                         yield_at_least: grid.campaign().yield_at_least,
                         scored_with: Some(record.model_fingerprint.to_string()),
                         warnings: Vec::new(),
+                        measured: grid.measured(CellId(number)).cloned(),
                     })
                 })
                 .await
@@ -125,6 +131,7 @@ impl CellDescription {
                 .unwrap_or_else(|| cell.base.usual_addition())
                 .name()
                 .to_owned(),
+            measured: None,
         }
     }
 }

@@ -10,7 +10,7 @@ pub enum JobState {
     Queued,
     /// Being screened.
     Running,
-    /// Held by the user.
+    /// Held by the user. Kept and sent by its number; nothing pauses a job yet.
     Paused,
     /// All blocks committed.
     Done,

@@ -27,6 +27,6 @@ pub use job::{Job, JobState, Submission};
 pub use open::EngineConfig;
 pub use query::{
     Axis, CellDescription, CellQuery, ExplainTarget, Order, RankPage, RankQuery, RankedCell,
-    ReagentRow, SiteReport,
+    ReagentRow, ReasonedSite, SiteReport,
 };
 pub use sites::element_symbol;

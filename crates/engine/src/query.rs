@@ -1,6 +1,7 @@
 //! What can be asked of an engine and what it answers.
 
-use enolattice_model::{AcidSite, Channel};
+use enolattice_grid::MeasuredYield;
+use enolattice_model::{AcidSite, Channel, SiteReasons};
 
 /// Order of a ranking; ties always by cell, ascending; unknown last.
 #[derive(Clone, Copy, Debug, Default, PartialEq, Eq, Hash)]
@@ -101,6 +102,8 @@ pub struct RankedCell {
     pub cautions: Vec<String>,
     /// Severest caution: `note`, `warning`, `stop`; none without cautions.
     pub severity: Option<String>,
+    /// Yield that the laboratory has measured; none where it gave none.
+    pub measured_yield: Option<f64>,
 }
 
 /// A page of a ranking.
@@ -202,6 +205,8 @@ pub struct CellDescription {
     pub dosing_min: f64,
     /// Order of addition.
     pub addition: String,
+    /// What the laboratory has measured of it; none where it gave nothing.
+    pub measured: Option<MeasuredYield>,
 }
 
 /// Acidic sites of a molecule.
@@ -209,8 +214,17 @@ pub struct CellDescription {
 pub struct SiteReport {
     /// SMILES as given.
     pub smiles: String,
-    /// Sites, most acidic first, with the pKa in the medium asked for (DMSO scale where none).
-    pub sites: Vec<AcidSite>,
+    /// Sites, most acidic first, with their pKa in DMSO.
+    pub sites: Vec<ReasonedSite>,
+}
+
+/// An acidic site and why it has the pKa that it has.
+#[derive(Clone, Debug)]
+pub struct ReasonedSite {
+    /// The site.
+    pub site: AcidSite,
+    /// Terms of the estimate and measured neighbours; empty for a measured site.
+    pub reasons: SiteReasons,
 }
 
 /// A reagent of the library.

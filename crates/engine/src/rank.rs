@@ -165,5 +165,8 @@ fn ranked(grid: &Grid, rank: u64, number: u64, score: &Score) -> Option<RankedCe
             .map(|category| category.name().to_owned())
             .collect(),
         severity: Severity::from_bits(score.cautions).map(|severity| severity.name().to_owned()),
+        measured_yield: grid
+            .measured(CellId(number))
+            .map(|known| known.yield_fraction),
     })
 }

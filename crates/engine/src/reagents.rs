@@ -47,6 +47,8 @@ fn base_facts(base: &Base) -> String {
         Cation::Caesium => ", Cs",
         Cation::Ammonium => ", NR4",
         Cation::Magnesium => ", Mg",
+        Cation::Calcium => ", Ca",
+        Cation::Barium => ", Ba",
         Cation::Zinc => ", Zn",
         Cation::None => "",
     };

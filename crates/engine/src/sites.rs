@@ -1,14 +1,14 @@
 //! Acidic sites of molecules.
 
 use enolattice_grid::{FaultCode, InputError, Place};
-use enolattice_model::acid_sites;
+use enolattice_model::{acid_sites, reasons};
 use enolattice_molecule::Molecule;
 
 use crate::engine::blocking;
-use crate::{Engine, EngineError, SiteReport};
+use crate::{Engine, EngineError, ReasonedSite, SiteReport};
 
 impl Engine {
-    /// Acidic sites of molecules, in the order given.
+    /// Acidic sites of molecules with their reasons, in the order given.
     ///
     /// # Errors
     /// [`EngineError::Input`] with every SMILES that cannot be read, as `smiles[i]`.
@@ -19,10 +19,16 @@ impl Engine {
             for (i, text) in smiles.into_iter().enumerate() {
                 match Molecule::parse(&text) {
                     Ok(molecule) => {
-                        let sites = acid_sites(&molecule, model.library());
+                        let library = model.library();
+                        let sites = acid_sites(&molecule, library).into_iter();
                         reports.push(SiteReport {
                             smiles: text,
-                            sites,
+                            sites: sites
+                                .map(|site| ReasonedSite {
+                                    reasons: reasons(&site, library),
+                                    site,
+                                })
+                                .collect(),
                         });
                     }
                     Err(error) => faults.push(InputError {

@@ -6,7 +6,7 @@ use enolattice_engine::{
     Axis, Engine, EngineConfig, EngineError, ExplainTarget, Job, JobState, Order, RankQuery,
     RankedCell, Submission,
 };
-use enolattice_grid::{CampaignSpec, Entry, LibraryTable, Sources};
+use enolattice_grid::{CampaignSpec, Entry, LibraryTable, MeasuredEntry, Sources};
 use enolattice_model::Fingerprint;
 use enolattice_reagents::OwnTable;
 use enolattice_store::{NewJob, Store};
@@ -465,4 +465,100 @@ async fn a_dry_run_says_what_is_not_covered_and_queues_nothing() {
     assert_eq!(cells, [(Axis::Electrophile, 16)]);
     assert!(!run.not_covered[0].reason.is_empty());
     assert_eq!(run.cells_looked_at, 48);
+    assert_eq!((run.pairs_looked_at, run.pairs_not_covered.len()), (6, 0));
+}
+
+/// A phosphonate makes an alkene of benzaldehyde (Horner, Wadsworth and Emmons), which one new bond at
+/// carbon is not.
+#[tokio::test(flavor = "multi_thread")]
+async fn a_dry_run_counts_pairs_without_a_product_among_all() {
+    let engine = Engine::without_data(1, Vec::new()).await.expect("opens");
+    let mut spec = campaign();
+    spec.substrates[1].smiles = "CCOC(=O)CP(=O)(OCC)OCC".into();
+    spec.electrophiles.entries[0].name = "benzaldehyde".into();
+    let run = engine.dry_run(spec).await.expect("a sound campaign");
+    assert_eq!(run.pairs_looked_at, 6);
+    let [known] = run.pairs_not_covered.as_slice() else {
+        panic!("{:?}", run.pairs_not_covered);
+    };
+    assert_eq!(
+        (known.pairs, known.electrophile.as_str()),
+        (1, "benzaldehyde")
+    );
+    assert!(known.reason.contains("alkene"), "{}", known.reason);
+    // its eight cells, and the sixteen of the allene
+    assert_eq!(run.cells_scored_not_covered, 24);
+}
+
+/// tert-Butyllithium ignites in air at once, which is a stop; the solvents of its cells are flammable, which is none.
+#[tokio::test(flavor = "multi_thread")]
+async fn a_category_of_caution_counts_at_its_own_severity() {
+    use enolattice_model::{Category, Severity};
+    let engine = Engine::without_data(1, Vec::new()).await.expect("opens");
+    let mut spec = campaign();
+    spec.bases.entries[1].name = "tBuLi".into();
+    let run = engine.dry_run(spec).await.expect("a sound campaign");
+    let cells = |severity, category| {
+        let mut counts = run.cautions.iter();
+        let known = counts.find(|known| (known.severity, known.category) == (severity, category));
+        known.map_or(0, |known| known.cells)
+    };
+    assert_eq!(cells(Severity::Stop, Some(Category::Pyrophoric)), 24);
+    assert_eq!(cells(Severity::Stop, None), 24);
+    assert_eq!(cells(Severity::Stop, Some(Category::Flammable)), 0);
+    // LDA ignites in air as a solid
+    assert_eq!(cells(Severity::Warning, Some(Category::Pyrophoric)), 24);
+    assert_eq!(cells(Severity::Warning, None), 24);
+}
+
+#[tokio::test(flavor = "multi_thread")]
+async fn measured_yields_stand_beside_the_computed_ones_and_change_nothing() {
+    let folder = TempDir::new().expect("a folder");
+    let engine = Engine::open(config(&folder)).await.expect("opens");
+    let without = engine.submit(submission("")).await.expect("queued");
+    to_the_end(&engine, &without.job).await;
+    let mut measured = submission("");
+    measured.campaign.measured = vec![MeasuredEntry {
+        substrate: "CCC(=O)c1ccccc1".into(),
+        base: "LDA".into(),
+        electrophile: "iodomethane".into(),
+        solvent: "tetrahydrofuran".into(),
+        temperature_c: Some(-20.0),
+        yield_fraction: Some(0.62),
+        sigma: Some(0.03),
+        note: "by NMR".into(),
+        ..MeasuredEntry::default()
+    }];
+    let with = engine.submit(measured).await.expect("queued");
+    assert_eq!(with.campaign_fingerprint, without.campaign_fingerprint);
+    assert_eq!(with.warnings, without.warnings);
+    to_the_end(&engine, &with.job).await;
+    engine.close().await.expect("closes");
+
+    let engine = Engine::open_idle(config(&folder)).await.expect("opens");
+    let all = |job: &str| RankQuery {
+        job: job.to_owned(),
+        ..RankQuery::default()
+    };
+    let plain = all_rows(&engine, &all(&without.job)).await;
+    let mut beside = all_rows(&engine, &all(&with.job)).await;
+    let only = RankQuery {
+        filter: "measured_yield:*".into(),
+        ..all(&with.job)
+    };
+    let found = all_rows(&engine, &only).await;
+    assert_eq!(found.len(), 1);
+    let row = &found[0];
+    assert_eq!((row.base.as_str(), row.solvent.as_str()), ("LDA", "THF"));
+    assert_eq!((row.temperature_c, row.measured_yield), (-20.0, Some(0.62)));
+    let target = ExplainTarget::OfJob {
+        job: with.job.clone(),
+        cell: row.cell,
+    };
+    let told = engine.describe(target).await.expect("describes").measured;
+    let told = told.expect("was measured");
+    assert_eq!((told.sigma, told.note.as_str()), (Some(0.03), "by NMR"));
+    beside.iter_mut().for_each(|row| row.measured_yield = None);
+    assert_eq!(beside, plain);
+    engine.close().await.expect("closes");
 }

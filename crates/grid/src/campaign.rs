@@ -6,17 +6,18 @@ use std::sync::Arc;
 use enolattice_model::{
     Addition, Additive, Base, Electrophile, MeasuredPka, Model, Solvent, Substrate,
 };
-use enolattice_molecule::Salt;
 use enolattice_reagents::Library;
-use rayon::prelude::*;
 
-use crate::fault::Faults;
-use crate::resolve::{self, NamedStructure, Reagents, in_list};
+use crate::axes::{
+    Read, doses, merged, note_empty_axes, prepared, structure_of_electrophile,
+    structure_of_substrate, substrates,
+};
+use crate::faults::Faults;
+use crate::measured::{self, MeasuredYield, Measurement};
+use crate::resolve::{self, NamedStructure, Reagents};
 use crate::values::{additions, numbers, target};
 use crate::warnings::Warnings;
-use crate::{
-    CampaignSpec, FaultCode, GridError, InputError, Lattice, Place, SubstrateEntry, entries,
-};
+use crate::{CampaignSpec, CellDigits, FaultCode, GridError, InputError, Lattice, Place, entries};
 
 /// A checked campaign, prepared for the model. Axes in their order.
 #[derive(Clone, Debug)]
@@ -53,6 +54,8 @@ pub struct Campaign {
     pub addition: Vec<Option<Addition>>,
     /// Yield that makes a hit.
     pub yield_at_least: f64,
+    /// Yields that the laboratory has measured, by cell. No score depends on them.
+    pub measured: HashMap<CellDigits, MeasuredYield>,
     /// What was changed silently on the way in (duplicates merged, ...), for the user.
     pub warnings: Vec<String>,
 }
@@ -67,11 +70,12 @@ pub struct Dose {
 }
 
 /// A specification whose every value is sound.
-struct Checked<'l> {
-    substrates: Vec<Read>,
-    reagents: Reagents<'l>,
-    numbers: [Vec<f64>; 8],
-    addition: Vec<Option<Addition>>,
+pub(crate) struct Checked<'l> {
+    pub(crate) substrates: Vec<Read>,
+    pub(crate) reagents: Reagents<'l>,
+    /// Values of the condition axes, in the order of [`crate::conditions::CONDITIONS`].
+    pub(crate) numbers: [Vec<f64>; 8],
+    pub(crate) addition: Vec<Option<Addition>>,
     yield_at_least: f64,
 }
 
@@ -80,7 +84,7 @@ fn checked<'l>(
     spec: &CampaignSpec,
     library: &'l Library,
     warnings: &mut Warnings,
-) -> Result<Checked<'l>, Vec<InputError>> {
+) -> Result<(Checked<'l>, Vec<Measurement>), Vec<InputError>> {
     let mut faults = Faults::default();
     entries::check_text(&spec.title, Place::of_field("title"), &mut faults);
     let substrates = substrates(&spec.substrates, &mut faults);
@@ -93,7 +97,8 @@ fn checked<'l>(
         addition: additions(&spec.conditions.addition, &mut faults, warnings),
         yield_at_least: target(spec.target.yield_at_least, &mut faults),
     };
-    faults.unless_any(checked, "")
+    let measurements = measured::checked(spec, &checked, library, &mut faults);
+    faults.unless_any((checked, measurements), "")
 }
 
 impl Campaign {
@@ -113,13 +118,14 @@ impl Campaign {
     /// Every fault at once.
     pub fn new(spec: &CampaignSpec, model: &Model) -> Result<Campaign, Vec<InputError>> {
         let mut warnings = Warnings::default();
+        let (sound, measurements) = checked(spec, model.library(), &mut warnings)?;
         let Checked {
             substrates,
             reagents,
             numbers,
             addition,
             yield_at_least,
-        } = checked(spec, model.library(), &mut warnings)?;
+        } = sound;
         let [
             temperature_c,
             formation,
@@ -196,166 +202,17 @@ impl Campaign {
             dosing_min,
             addition,
             yield_at_least,
+            measured: HashMap::new(),
             warnings: Vec::new(),
         };
         warnings.of_prepared(&campaign);
         check_size(&campaign)?;
         Ok(Campaign {
+            measured: measured::by_cell(measurements, &campaign, &mut warnings),
             warnings: warnings.into_list(),
             ..campaign
         })
     }
-}
-
-/// A substrate whose row is sound.
-struct Read {
-    name: String,
-    salt: Salt,
-    own_pka: Option<MeasuredPka>,
-}
-
-/// Rows that are checked side by side before the faults found so far are counted.
-const ROWS_AT_ONCE: usize = 4_096;
-
-fn substrates(listed: &[SubstrateEntry], faults: &mut Faults) -> Vec<Read> {
-    let mut sound = Vec::with_capacity(listed.len());
-    for (run, rows) in listed.chunks(ROWS_AT_ONCE).enumerate() {
-        let first = run * ROWS_AT_ONCE;
-        let read: Vec<(Option<Read>, Faults)> = rows
-            .par_iter()
-            .enumerate()
-            .map(|(i, entry)| substrate(entry, first + i))
-            .collect();
-        for (substrate, found) in read {
-            faults.append(found);
-            sound.extend(substrate);
-        }
-        if faults.is_full() {
-            break;
-        }
-    }
-    sound
-}
-
-fn substrate(entry: &SubstrateEntry, index: usize) -> (Option<Read>, Faults) {
-    let mut faults = Faults::default();
-    let entry = SubstrateEntry {
-        place: in_list(&entry.place, "substrates", index),
-        ..entry.clone()
-    };
-    let read = entries::substrate(&entry, &mut faults).map(|(salt, own_pka)| Read {
-        name: if entry.name.is_empty() {
-            entry.smiles
-        } else {
-            entry.name
-        },
-        salt,
-        own_pka,
-    });
-    (read, faults)
-}
-
-/// The values of the axis of additives: each additive in each of its amounts.
-fn doses(
-    additives: &[(Option<&enolattice_reagents::Additive>, Option<f64>)],
-    amounts: &[f64],
-    model: &Model,
-    warnings: &mut Warnings,
-) -> Vec<Option<Dose>> {
-    let mut values: Vec<(&str, Option<Dose>)> = Vec::new();
-    for (record, equiv) in additives {
-        let Some(record) = record else {
-            values.push((resolve::NO_ADDITIVE, None));
-            continue;
-        };
-        let additive = Arc::new(model.additive(record));
-        let equivs = equiv.map_or_else(|| amounts.to_vec(), |equiv| vec![equiv]);
-        values.extend(equivs.into_iter().map(|equiv| {
-            let additive = additive.clone();
-            (record.name.as_str(), Some(Dose { additive, equiv }))
-        }));
-    }
-    let identity = |(name, dose): &(&str, Option<Dose>)| {
-        let shown = match dose {
-            Some(dose) => format!("{name}, {} equivalents", dose.equiv),
-            None => (*name).to_owned(),
-        };
-        (shown.clone(), shown)
-    };
-    let kept = merged("additives", values, identity, warnings);
-    if kept.is_empty() {
-        return vec![None];
-    }
-    kept.into_iter().map(|(_, dose)| dose).collect()
-}
-
-fn note_empty_axes(spec: &CampaignSpec, faults: &mut Faults) {
-    let axes = [
-        ("substrates", spec.substrates.is_empty()),
-        ("bases", spec.bases.is_empty()),
-        ("electrophiles", spec.electrophiles.is_empty()),
-        ("solvents", spec.solvents.is_empty()),
-    ];
-    for (axis, is_empty) in axes {
-        if is_empty {
-            let remedy = "give at least one";
-            faults.note(
-                FaultCode::AxisEmpty,
-                Place::of_field(axis),
-                "",
-                "the axis has no values",
-                remedy,
-            );
-        }
-    }
-}
-
-fn structure_of_substrate(substrate: &Read) -> (String, String) {
-    (
-        substrate.salt.molecule.canonical().to_owned(),
-        substrate.name.clone(),
-    )
-}
-
-fn structure_of_electrophile(electrophile: &NamedStructure) -> (String, String) {
-    (
-        electrophile.salt.molecule.canonical().to_owned(),
-        electrophile.name.clone(),
-    )
-}
-
-/// The values without those that are the same as an earlier one.
-///
-/// `identity` gives what makes two values the same, and the name of a value.
-fn merged<T>(
-    axis: &str,
-    values: Vec<T>,
-    identity: impl Fn(&T) -> (String, String),
-    warnings: &mut Warnings,
-) -> Vec<T> {
-    let mut names_by_identity: HashMap<String, String> = HashMap::new();
-    let mut kept = Vec::with_capacity(values.len());
-    for value in values {
-        let (same, name) = identity(&value);
-        match names_by_identity.get(&same) {
-            Some(first) => warnings.merged(axis, &name, first),
-            None => {
-                names_by_identity.insert(same, name);
-                kept.push(value);
-            }
-        }
-    }
-    kept
-}
-
-fn prepared<T: Send, P: Send + Sync>(
-    values: Vec<T>,
-    prepare: impl Fn(T) -> P + Sync,
-) -> Vec<Arc<P>> {
-    values
-        .into_par_iter()
-        .map(|value| Arc::new(prepare(value)))
-        .collect()
 }
 
 fn check_size(campaign: &Campaign) -> Result<(), Vec<InputError>> {

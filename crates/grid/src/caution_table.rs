@@ -56,6 +56,16 @@ impl CautionTable {
 
     /// Bits of the cell with these digits, in the order of [`crate::CellDigits`].
     pub(crate) fn bits(&self, digits: &[u32; 13]) -> u32 {
+        CautionShare::joined(self.shares(digits))
+    }
+
+    /// Bits of the categories of that cell at each severity, in the order of
+    /// [`enolattice_model::Severity::ALL`].
+    pub(crate) fn categories(&self, digits: &[u32; 13]) -> [u32; 3] {
+        CautionShare::categories(self.shares(digits))
+    }
+
+    fn shares(&self, digits: &[u32; 13]) -> [CautionShare; 5] {
         let [
             substrate,
             electrophile,
@@ -67,12 +77,12 @@ impl CautionTable {
             ..,
         ] = digits.map(|digit| digit as usize);
         let solvent = (solvent * self.temperatures + t) * self.formation_temperatures + forming;
-        CautionShare::joined([
+        [
             self.bases[base],
             self.solvents[solvent],
             self.electrophiles[electrophile * self.temperatures + t],
             self.substrates[substrate],
             self.additives[additive],
-        ])
+        ]
     }
 }

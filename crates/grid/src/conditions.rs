@@ -2,7 +2,7 @@
 
 use std::fmt;
 
-use crate::ConditionsSpec;
+use crate::{ConditionsSpec, MeasuredEntry};
 
 /// A number that a campaign may give, with its range and default.
 #[derive(Clone, Copy, Debug, PartialEq)]
@@ -162,6 +162,16 @@ pub(crate) const PKA_SIGMA: Quantity = Quantity {
     above_low: true,
     ..quantity("pka_sigma", "", (0.0, 10.0), Some(0.3))
 };
+/// A yield that was measured. What exceeds the substrate charged is a fault of the measurement.
+pub(crate) const YIELD_FRACTION: Quantity = Quantity {
+    hint: "yields are fractions, 0.85 for 85 %",
+    ..quantity("yield_fraction", "", (0.0, 1.0), None)
+};
+pub(crate) const YIELD_SIGMA: Quantity = Quantity {
+    above_low: true,
+    hint: "it is a fraction like the yield, 0.05 for 5 %",
+    ..quantity("sigma", "", (0.0, 1.0), None)
+};
 
 /// The quantities of the table `conditions`, in the order of the axes.
 pub(crate) const CONDITIONS: [Quantity; 8] = [
@@ -192,6 +202,36 @@ impl ConditionsSpec {
 
     /// The axes of numbers, to be filled, in the order of [`CONDITIONS`].
     pub(crate) fn axes_mut(&mut self) -> [&mut Vec<f64>; 8] {
+        [
+            &mut self.temperature_c,
+            &mut self.formation_temperature_c,
+            &mut self.base_equiv,
+            &mut self.electrophile_equiv,
+            &mut self.additive_equiv,
+            &mut self.concentration_m,
+            &mut self.time_h,
+            &mut self.dosing_min,
+        ]
+    }
+}
+
+impl MeasuredEntry {
+    /// The conditions, in the order of [`CONDITIONS`].
+    pub(crate) fn numbers(&self) -> [Option<f64>; 8] {
+        [
+            self.temperature_c,
+            self.formation_temperature_c,
+            self.base_equiv,
+            self.electrophile_equiv,
+            self.additive_equiv,
+            self.concentration_m,
+            self.time_h,
+            self.dosing_min,
+        ]
+    }
+
+    /// The conditions, to be filled, in the order of [`CONDITIONS`].
+    pub(crate) fn numbers_mut(&mut self) -> [&mut Option<f64>; 8] {
         [
             &mut self.temperature_c,
             &mut self.formation_temperature_c,

@@ -4,7 +4,8 @@ use enolattice_model::MeasuredPka;
 use enolattice_molecule::{Molecule, Salt};
 
 use crate::conditions::{PKA_DMSO, PKA_SIGMA};
-use crate::fault::{Faults, value_of_row};
+use crate::fault::value_of_row;
+use crate::faults::Faults;
 use crate::{FaultCode, Place, SubstrateEntry, stock};
 
 /// Longest name, title or other text, characters.
@@ -45,9 +46,7 @@ pub(crate) fn structure(smiles: &str, place: Place, faults: &mut Faults) -> Opti
     match Molecule::parse_salt(smiles) {
         Ok(salt) => Some(salt),
         Err(error) => {
-            // the fault shows the SMILES before the reason
-            let without_smiles = error.reason.strip_prefix(&format!("`{}` ", smiles.trim()));
-            let reason = match without_smiles {
+            let reason = match without_smiles(&error.reason, smiles) {
                 Some(rest) => format!("it {rest}"),
                 None => error.reason,
             };
@@ -60,6 +59,13 @@ pub(crate) fn structure(smiles: &str, place: Place, faults: &mut Faults) -> Opti
             None
         }
     }
+}
+
+/// A reason without the SMILES, whole or cut, at its beginning: the fault shows it before the reason.
+fn without_smiles<'r>(reason: &'r str, smiles: &str) -> Option<&'r str> {
+    let (shown, rest) = reason.strip_prefix('`')?.split_once("` ")?;
+    let beginning = shown.strip_suffix('…').unwrap_or(shown);
+    smiles.trim().starts_with(beginning).then_some(rest)
 }
 
 /// Whether a text has letters that no SMILES without brackets has.

@@ -3,9 +3,10 @@
 //! Only the form of a file is judged here. Names, structures and ranges are checked when the
 //! campaign is: then all places where a value can come from are treated alike.
 
-use crate::fault::Faults;
+use crate::faults::Faults;
 use crate::format::rows_of;
-use crate::rows::{Column, Heading, Row};
+use crate::heading::{Column, Heading};
+use crate::rows::Row;
 use crate::stock::{NUMBERS, STOCK};
 use crate::{Entry, FaultCode, Place, Stock, SubstrateEntry};
 
@@ -36,8 +37,8 @@ fn substrate(file: &str, row: Row, faults: &mut Faults) -> SubstrateEntry {
     let mut values = row.values.into_iter();
     let mut next = || values.next().unwrap_or_default();
     let (name, smiles) = (next(), next());
-    let pka_dmso = number(&next(), &place, "pka_dmso", faults);
-    let pka_sigma = number(&next(), &place, "pka_sigma", faults);
+    let pka_dmso = number(&next(), &place, "pka_dmso", OR_EMPTY, faults);
+    let pka_sigma = number(&next(), &place, "pka_sigma", OR_EMPTY, faults);
     let is_readable = pka_dmso.is_ok() && pka_sigma.is_ok();
     SubstrateEntry {
         name: if name.is_empty() {
@@ -101,7 +102,9 @@ fn place_of(file: &str, row: &Row) -> Place {
 fn stock(mut values: impl Iterator<Item = String>, row: &Place, faults: &mut Faults) -> Stock {
     let numbers: [Option<f64>; NUMBERS] = std::array::from_fn(|at| {
         let text = values.next().unwrap_or_default();
-        number(&text, row, STOCK[at].name, faults).ok().flatten()
+        number(&text, row, STOCK[at].name, OR_EMPTY, faults)
+            .ok()
+            .flatten()
     });
     Stock::from_columns(
         numbers,
@@ -109,11 +112,15 @@ fn stock(mut values: impl Iterator<Item = String>, row: &Place, faults: &mut Fau
     )
 }
 
+/// What to do about a number that cannot be read and may be left out.
+const OR_EMPTY: &str = "write it with a decimal point and without unit, or leave the field empty";
+
 /// A number of a field, none where the field is empty.
-fn number(
+pub(crate) fn number(
     text: &str,
     row: &Place,
     column: &'static str,
+    remedy: &str,
     faults: &mut Faults,
 ) -> Result<Option<f64>, ()> {
     if text.is_empty() {
@@ -124,7 +131,6 @@ fn number(
             field: column.to_owned(),
             ..row.clone()
         };
-        let remedy = "write it with a decimal point and without unit, or leave the field empty";
         faults.note(
             FaultCode::ValueType,
             place,

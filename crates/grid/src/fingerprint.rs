@@ -10,8 +10,8 @@ const DOMAIN: &str = "enolattice campaign 1";
 
 /// SHA-256 over the canonical content of a campaign: what is screened.
 ///
-/// The title, the names of substrates, what the laboratory has on its shelf and what was noticed
-/// while the files were read change no score and are not part of it.
+/// The title, the names of substrates, what the laboratory has on its shelf, the yields that it has
+/// measured and what was noticed while the files were read change no score and are not part of it.
 ///
 /// Texts are preceded by their length, lists by their number of values, numbers are the eight
 /// bytes of their `f64`, all little endian. Axes stand in the order of [`crate::AXES`].

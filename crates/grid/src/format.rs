@@ -1,7 +1,8 @@
 //! Forms of the files that a campaign names, told apart by the ending of their names.
 
-use crate::fault::Faults;
-use crate::rows::{Heading, Row};
+use crate::faults::Faults;
+use crate::heading::Heading;
+use crate::rows::Row;
 use crate::{FaultCode, Place, records, rows, smiles_lines};
 
 /// Largest file that is read, bytes.
@@ -25,14 +26,21 @@ pub(crate) fn rows_of(
         return Vec::new();
     }
     let bytes = bytes.strip_prefix(b"\xef\xbb\xbf").unwrap_or(bytes);
+    // files of structures say nothing of a yield
+    let holds_structures = heading.names().any(|column| column == "smiles");
     match ending(file).as_str() {
         "" | "csv" => rows::rows(file, bytes, b',', heading, faults),
         "tsv" | "tab" => rows::rows(file, bytes, b'\t', heading, faults),
-        "smi" | "smiles" => smiles_lines::rows(file, bytes, heading, faults),
-        "sdf" | "sd" | "mol" => records::rows(file, bytes, heading, faults, notes),
+        "smi" | "smiles" if holds_structures => smiles_lines::rows(file, bytes, heading, faults),
+        "sdf" | "sd" | "mol" if holds_structures => {
+            records::rows(file, bytes, heading, faults, notes)
+        }
         other => {
-            let reason = format!("files that end in `.{other}` are not read");
-            let remedy = "save it as `.csv`, `.tsv`, `.smi` or `.sdf`";
+            let reason = format!("files that end in `.{other}` are not read here");
+            let remedy = match holds_structures {
+                true => "save it as `.csv`, `.tsv`, `.smi` or `.sdf`",
+                false => "save it as `.csv` or `.tsv`",
+            };
             faults.note(FaultCode::FileSyntax, whole(file), file, reason, remedy);
             Vec::new()
         }

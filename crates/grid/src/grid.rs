@@ -8,7 +8,9 @@ use enolattice_model::{Additive, Cell, Conditions, Fingerprint, Model};
 use crate::caution_table::CautionTable;
 use crate::lattice::Lattice;
 use crate::pairs::{PairsOfSubstrate, RecentPairs};
-use crate::{BlockId, Campaign, CellDigits, CellId, Columns, GridError, Segment, fingerprint};
+use crate::{
+    BlockId, Campaign, CellDigits, CellId, Columns, GridError, MeasuredYield, Segment, fingerprint,
+};
 
 /// A campaign as a lattice of numbered cells.
 #[derive(Debug)]
@@ -102,6 +104,20 @@ impl Grid {
         digits.map_or(0, |digits| self.cautions.bits(&digits.to_array()))
     }
 
+    /// Bits of the categories of caution of a cell at each severity, in the order of
+    /// [`enolattice_model::Severity::ALL`]; none of a cell that is not there.
+    pub(crate) fn caution_categories(&self, cell: CellId) -> [u32; 3] {
+        let digits = self.digits(cell);
+        digits.map_or([0; 3], |digits| {
+            self.cautions.categories(&digits.to_array())
+        })
+    }
+
+    /// What the laboratory has measured of a cell.
+    pub fn measured(&self, cell: CellId) -> Option<&MeasuredYield> {
+        self.campaign.measured.get(&self.digits(cell)?)
+    }
+
     /// Scores all cells of a block, in the order of their numbers; none if there is no such block.
     ///
     /// Pairs (substrate × electrophile) are prepared once and kept for the next blocks. Threads
@@ -127,6 +143,9 @@ impl Grid {
         columns
     }
 }
+
+/// Indices of the axes, beside the substrates, on which a deprotonation depends.
+pub(crate) const AXES_OF_FORMATION: [usize; 8] = [2, 3, 4, 5, 6, 7, 9, 12];
 
 /// A walk through the cells of one segment that changes only what moves.
 ///
@@ -169,12 +188,10 @@ impl<'g> Walk<'g> {
         })
     }
 
-    /// Number of the cell's deprotonation among those of its substrate: the digits of all axes
-    /// that it depends on.
+    /// Number of the cell's deprotonation among those of its substrate.
     fn formation_key(&self) -> u64 {
-        const DEPENDS_ON: [usize; 8] = [2, 3, 4, 5, 6, 7, 9, 12];
         let sizes = self.grid.lattice.sizes();
-        DEPENDS_ON.iter().fold(0, |key, &axis| {
+        AXES_OF_FORMATION.iter().fold(0, |key, &axis| {
             key * u64::from(sizes[axis]) + u64::from(self.digits[axis])
         })
     }

@@ -1,7 +1,7 @@
 //! The keys of a campaign file and what was probably meant by a wrong word.
 
 /// Key paths of a campaign file, table by table. `docs/campaign.md` has a row for each.
-pub(crate) const KEYS: [&str; 47] = [
+pub(crate) const KEYS: [&str; 48] = [
     "title",
     "library.file",
     "substrates.file",
@@ -49,6 +49,7 @@ pub(crate) const KEYS: [&str; 47] = [
     "conditions.dosing_min",
     "conditions.addition",
     "target.yield_at_least",
+    "measured.file",
 ];
 
 /// Names of the keys directly in a table; `""` is the top of the file, where tables count too.

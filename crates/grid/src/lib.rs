@@ -3,6 +3,7 @@
 //! A campaign's way: bytes → [`read`] → [`CampaignSpec`] → [`Campaign::new`] → [`Grid::new`] →
 //! [`Grid::score`], block by block → [`Columns`]. Nothing here reads a file or a clock.
 
+mod axes;
 mod campaign;
 mod caution_table;
 mod columns;
@@ -10,12 +11,16 @@ mod conditions;
 mod digits;
 mod entries;
 mod fault;
+mod fault_code;
+mod faults;
 mod files;
 mod fingerprint;
 mod format;
 mod grid;
+mod heading;
 mod keys;
 mod lattice;
+mod measured;
 mod page;
 mod pairs;
 mod reader;
@@ -33,13 +38,16 @@ mod warnings;
 pub use campaign::{Campaign, Dose};
 pub use columns::Columns;
 pub use digits::{AXES, CellDigits};
-pub use fault::{FaultCode, InputError, Located, MAX_FAULTS, in_order, value_of_row};
+pub use fault::{InputError, Located, value_of_row};
+pub use fault_code::FaultCode;
+pub use faults::{MAX_FAULTS, in_order};
 pub use format::MAX_FILE_BYTES;
 pub use grid::Grid;
 pub use lattice::{BlockId, CELLS_PER_BLOCK, CellId, GridError, Lattice, MAX_CELLS, Segment};
+pub use measured::MeasuredYield;
 pub use reading::{Reading, files_named, read};
 pub use spec::{
-    AxisSpec, CampaignSpec, ConditionsSpec, Entry, LibraryTable, Place, Sources, Stock,
-    SubstrateEntry, TargetSpec,
+    AxisSpec, CampaignSpec, ConditionsSpec, Entry, LibraryTable, MeasuredEntry, Place, Sources,
+    Stock, SubstrateEntry, TargetSpec,
 };
-pub use survey::{CautionCount, NotCovered};
+pub use survey::{CautionCount, NotCovered, PairsNotCovered};

@@ -4,7 +4,7 @@ use toml::Spanned;
 use toml::de::{DeTable, DeValue};
 
 use crate::conditions::Quantity;
-use crate::fault::Faults;
+use crate::faults::Faults;
 use crate::files::Notebook;
 use crate::keys::{keys_of, remedy_for_key};
 use crate::page::{Page, items, kind, number};

@@ -1,16 +1,19 @@
 //! Reads a campaign from TOML and the files it names.
 
+use std::collections::HashSet;
+
 use toml::Spanned;
 use toml::de::{DeTable, DeValue};
 
 use crate::conditions::{CONDITIONS, PKA_DMSO, PKA_SIGMA, Quantity, YIELD_AT_LEAST};
-use crate::fault::Faults;
+use crate::faults::Faults;
 use crate::keys::{keys_of, quoted};
 use crate::page::items;
 use crate::reader::{Inline, Reader};
+use crate::values::check_count;
 use crate::{
-    AxisSpec, CampaignSpec, ConditionsSpec, Entry, FaultCode, InputError, Sources, SubstrateEntry,
-    TargetSpec, entries, files, resolve,
+    AxisSpec, CampaignSpec, ConditionsSpec, Entry, FaultCode, InputError, MeasuredEntry, Place,
+    Sources, SubstrateEntry, TargetSpec, entries, files, measured, resolve,
 };
 
 /// A campaign as far as it could be read, and what is wrong with its text and files.
@@ -52,9 +55,15 @@ impl Reading {
 
     /// All faults together with those that an engine found in [`Reading::spec`].
     ///
-    /// Axes that are empty there were noted here, or lost their values to faults.
+    /// Axes that are empty there were noted here, or lost their values to faults; so did a value that
+    /// is missing there and could not be read here.
     pub fn with(&self, found: Vec<InputError>) -> Vec<InputError> {
-        let is_new = |fault: &InputError| fault.code != FaultCode::AxisEmpty.name();
+        let known: HashSet<&Place> = self.faults.iter().map(|fault| &fault.place).collect();
+        let is_new = |fault: &InputError| match FaultCode::from_name(fault.code) {
+            Some(FaultCode::AxisEmpty) => false,
+            Some(FaultCode::ValueMissing) => !known.contains(&fault.place),
+            _ => true,
+        };
         let found = found.into_iter().filter(is_new);
         let all: Faults = self.faults.iter().cloned().chain(found).collect();
         all.in_order(&self.campaign_name)
@@ -67,6 +76,7 @@ impl Reading {
 /// in the files.
 pub fn files_named(campaign: &str) -> Vec<String> {
     let (top, _) = DeTable::parse_recoverable(campaign);
+    let mut known: HashSet<String> = HashSet::new();
     let mut names: Vec<String> = Vec::new();
     for table in [
         "library",
@@ -75,6 +85,7 @@ pub fn files_named(campaign: &str) -> Vec<String> {
         "electrophiles",
         "solvents",
         "additives",
+        "measured",
     ] {
         let Some(DeValue::Table(table)) = top.get_ref().get(table).map(Spanned::get_ref) else {
             continue;
@@ -85,7 +96,7 @@ pub fn files_named(campaign: &str) -> Vec<String> {
             .unwrap_or_default();
         for (_, item) in listed {
             if let DeValue::String(name) = item.get_ref()
-                && !names.iter().any(|known| known == name)
+                && known.insert(name.to_string())
             {
                 names.push(name.to_string());
             }
@@ -160,6 +171,9 @@ fn campaign(reader: &mut Reader<'_>, top: &DeTable<'_>) -> CampaignSpec {
         spec.target = TargetSpec {
             yield_at_least: optional(reader, table, "target", &YIELD_AT_LEAST),
         };
+    }
+    if let Some(table) = reader.table(top, "measured") {
+        spec.measured = measured_yields(reader, table);
     }
     spec.notes = std::mem::take(&mut reader.notes);
     spec
@@ -305,7 +319,13 @@ fn conditions(reader: &mut Reader<'_>, table: &DeTable<'_>) -> ConditionsSpec {
         let Some(value) = table.get(quantity.name()) else {
             continue;
         };
-        *values = items(quantity.key, value)
+        let listed = items(quantity.key, value);
+        let place = reader.place(value, quantity.key);
+        let written = reader.page.line_at(value.span().start);
+        if !check_count(listed.len(), place, written, &mut reader.faults) {
+            continue;
+        }
+        *values = listed
             .into_iter()
             .filter_map(|(path, item)| reader.number(quantity, &path, item))
             .collect();
@@ -316,6 +336,21 @@ fn conditions(reader: &mut Reader<'_>, table: &DeTable<'_>) -> ConditionsSpec {
         }
     }
     spec
+}
+
+fn measured_yields(reader: &mut Reader<'_>, table: &DeTable<'_>) -> Vec<MeasuredEntry> {
+    if !table.contains_key("file") {
+        let place = reader.page.nowhere("measured.file");
+        let reason = "the table [measured] names no file";
+        let remedy = "name a file of measured yields under `file`, or leave the table out";
+        let code = FaultCode::ValueMissing;
+        reader.faults.note(code, place, "", reason, remedy);
+    }
+    let mut yields = Vec::new();
+    for (file, bytes) in reader.files(table, "measured") {
+        yields.extend(measured::rows(&file, bytes, reader.notebook()));
+    }
+    yields
 }
 
 fn optional(

@@ -4,10 +4,11 @@ use std::collections::BTreeSet;
 
 use enolattice_molecule::Molecule;
 
-use crate::fault::Faults;
+use crate::faults::Faults;
 use crate::format::{MAX_ROWS, too_many_rows};
+use crate::heading::Heading;
 use crate::keys::quoted;
-use crate::rows::{Heading, Row, start_of};
+use crate::rows::{Row, start_of};
 use crate::{FaultCode, Place};
 
 /// Longest value of a data field that is kept, bytes.

@@ -7,7 +7,8 @@ use enolattice_model::Addition;
 use enolattice_molecule::{Molecule, Salt};
 use enolattice_reagents::{Additive, Base, Library, MixtureError, ReagentKind, Solvent};
 
-use crate::fault::{Faults, value_of_row};
+use crate::fault::value_of_row;
+use crate::faults::Faults;
 use crate::keys::{nearest, quoted};
 use crate::{AxisSpec, CampaignSpec, Entry, FaultCode, Place, entries, stock};
 
@@ -85,6 +86,12 @@ fn solvents(axis: &AxisSpec, library: &Library, faults: &mut Faults) -> Vec<Solv
 }
 
 fn no_mixture(entry: &Entry, place: &Place, error: &MixtureError, faults: &mut Faults) {
+    let (code, reason, remedy) = fault_of_mixture(error);
+    faults.note(code, named(place, entry), &entry.name, reason, remedy);
+}
+
+/// Code, reason and remedy of a mixture that cannot be mixed.
+pub(crate) fn fault_of_mixture(error: &MixtureError) -> (FaultCode, String, String) {
     let usual = "write solvents and their volumes, e.g. `THF/DMF 4:1`";
     let mut code = FaultCode::ValueOutOfRange;
     let (reason, remedy) = match error {
@@ -113,11 +120,11 @@ fn no_mixture(entry: &Entry, place: &Place, error: &MixtureError, faults: &mut F
             "write a number from 0.001 to 1000".to_owned(),
         ),
     };
-    faults.note(code, named(place, entry), &entry.name, reason, remedy);
+    (code, reason, remedy)
 }
 
 /// Whether a name is written as a mixture is: parts by volume at its end.
-fn is_mixture(name: &str) -> bool {
+pub(crate) fn is_mixture(name: &str) -> bool {
     name.contains('/') && name.chars().nth(LONGEST_NAME).is_none()
 }
 
@@ -136,10 +143,26 @@ fn additives<'l>(
         match known.or_else(|| structures.find(&entry.smiles)) {
             Some(additive) => found.push((Some(additive), entry.equiv)),
             None if is_none => found.push((None, None)),
+            None if are_additives(&entry.name, library) => several_additives(entry, &place, faults),
             None => unknown(entry, &place, ReagentKind::Additive, library, faults),
         }
     }
     found
+}
+
+/// Whether a name lists several additives of the library, as `HMPA + LiCl`.
+pub(crate) fn are_additives(name: &str, library: &Library) -> bool {
+    let mut parts = name.split(['+', '/', ',', '&']).map(str::trim);
+    name.len() <= LONGEST_NAME
+        && name.contains(['+', '/', ',', '&'])
+        && parts.all(|part| library.additive(part).is_some())
+}
+
+fn several_additives(entry: &Entry, place: &Place, faults: &mut Faults) {
+    let reason = "two additives in one cell are not computed yet";
+    let remedy = "list them one by one: each is then screened alone";
+    let place = named(place, entry);
+    faults.note(FaultCode::NotYetAllowed, place, &entry.name, reason, remedy);
 }
 
 fn electrophiles(axis: &AxisSpec, library: &Library, faults: &mut Faults) -> Vec<NamedStructure> {
@@ -207,14 +230,14 @@ pub(crate) fn in_list(place: &Place, axis: &str, index: usize) -> Place {
 }
 
 /// Reagents of the library by their structure, prepared when the first one is looked for.
-struct Structures<'l, T> {
+pub(crate) struct Structures<'l, T> {
     reagents: &'l [T],
     smiles: fn(&T) -> &String,
     by_structure: OnceCell<HashMap<String, &'l T>>,
 }
 
 impl<'l, T> Structures<'l, T> {
-    fn of(reagents: &'l [T], smiles: fn(&T) -> &String) -> Structures<'l, T> {
+    pub(crate) fn of(reagents: &'l [T], smiles: fn(&T) -> &String) -> Structures<'l, T> {
         Structures {
             reagents,
             smiles,
@@ -222,7 +245,7 @@ impl<'l, T> Structures<'l, T> {
         }
     }
 
-    fn find(&self, smiles: &str) -> Option<&'l T> {
+    pub(crate) fn find(&self, smiles: &str) -> Option<&'l T> {
         if smiles.is_empty() || smiles.len() > Molecule::MAX_BYTES {
             return None;
         }

@@ -1,73 +1,15 @@
 //! Rows of a CSV file (RFC 4180, UTF-8) that a campaign names.
 
-use crate::fault::Faults;
+use crate::faults::Faults;
 use crate::format::{MAX_ROWS, too_many_rows};
-use crate::keys::{nearest, quoted};
+use crate::heading::{Heading, positions};
+use crate::keys::quoted;
 use crate::{FaultCode, Place};
-
-/// A column that a file may have.
-#[derive(Clone, Copy, Debug)]
-pub(crate) struct Column {
-    pub(crate) name: &'static str,
-    pub(crate) required: bool,
-}
-
-impl Column {
-    pub(crate) const fn optional(name: &'static str) -> Column {
-        Column {
-            name,
-            required: false,
-        }
-    }
-
-    pub(crate) const fn required(name: &'static str) -> Column {
-        Column {
-            name,
-            required: true,
-        }
-    }
-}
 
 /// A row: values in the order of the columns asked for, empty where the file has no such column.
 pub(crate) struct Row {
     pub(crate) line: u32,
     pub(crate) values: Vec<String>,
-}
-
-/// Most columns of a file of which each is looked at.
-const MOST_COLUMNS: usize = 100;
-
-/// The columns that a file may have.
-pub(crate) struct Heading {
-    columns: Vec<Column>,
-    /// Whether `name` or `smiles` must be there.
-    either: bool,
-}
-
-impl Heading {
-    pub(crate) fn new(columns: Vec<Column>) -> Heading {
-        Heading {
-            columns,
-            either: false,
-        }
-    }
-
-    /// Columns of which `name` or `smiles` must be there, or both.
-    pub(crate) fn either(columns: Vec<Column>) -> Heading {
-        Heading {
-            columns,
-            either: true,
-        }
-    }
-
-    pub(crate) fn names(&self) -> impl Iterator<Item = &'static str> + '_ {
-        self.columns.iter().map(|column| column.name)
-    }
-
-    /// A value for each column, in order.
-    pub(crate) fn values(&self, value: impl Fn(&'static str) -> String) -> Vec<String> {
-        self.names().map(value).collect()
-    }
 }
 
 /// Reads all rows; rows with a fault are noted and left out.
@@ -78,7 +20,6 @@ pub(crate) fn rows(
     heading: &Heading,
     faults: &mut Faults,
 ) -> Vec<Row> {
-    let columns = &heading.columns;
     let mut records = Records::of(bytes, delimiter).peekable();
     let Some((line, titles)) = records.next() else {
         let place = Place {
@@ -130,8 +71,8 @@ pub(crate) fn rows(
             faults.note(FaultCode::FileSyntax, place("row"), &shown, reason, remedy);
             continue;
         }
-        let mut values = Vec::with_capacity(columns.len());
-        for (column, position) in columns.iter().zip(&positions) {
+        let mut values = Vec::with_capacity(positions.len());
+        for (column, position) in heading.names().zip(&positions) {
             match position
                 .and_then(|at| record.get(at))
                 .map(std::str::from_utf8)
@@ -142,17 +83,11 @@ pub(crate) fn rows(
                     let shown = start_of(&record[position.unwrap_or(0)]);
                     let reason = "the text is not UTF-8";
                     let remedy = "save the file as UTF-8";
-                    faults.note(
-                        FaultCode::FileSyntax,
-                        place(column.name),
-                        &shown,
-                        reason,
-                        remedy,
-                    );
+                    faults.note(FaultCode::FileSyntax, place(column), &shown, reason, remedy);
                 }
             }
         }
-        if values.len() == columns.len() {
+        if values.len() == positions.len() {
             rows.push(Row { line, values });
         }
     }
@@ -197,111 +132,8 @@ impl Iterator for Records<'_> {
     }
 }
 
-/// Where each column asked for stands; none if the heading is at fault.
-fn positions(
-    file: &str,
-    line: u32,
-    titles: &csv::ByteRecord,
-    delimiter: u8,
-    heading: &Heading,
-    faults: &mut Faults,
-) -> Option<Vec<Option<usize>>> {
-    let columns = &heading.columns;
-    let mut positions = vec![None; columns.len()];
-    let mut sound = true;
-    let names: Vec<&str> = heading.names().collect();
-    let written: Vec<String> = titles
-        .iter()
-        .map(|name| String::from_utf8_lossy(name).trim().to_owned())
-        .collect();
-    let shown = as_written(titles, delimiter);
-    let mut note = |code, value: &str, reason: String, remedy: String| {
-        let place = Place {
-            file: file.to_owned(),
-            line,
-            field: value.to_owned(),
-        };
-        faults.note(code, place, &shown, reason, remedy);
-        sound = false;
-    };
-    if written.len() > MOST_COLUMNS {
-        let reason = format!("the first line has {} columns", written.len());
-        let remedy = format!("name columns in it, of {}", quoted(&names));
-        note(FaultCode::FileSyntax, "heading", reason, remedy);
-        return None;
-    }
-    if let Some((mark, kind)) = other_delimiter(&written, delimiter) {
-        let reason = format!("the columns are separated by {mark}");
-        let remedy = format!("separate them by commas, or save the file as {kind}");
-        note(FaultCode::FileSyntax, "heading", reason, remedy);
-        return None;
-    }
-    for (at, name) in written.iter().enumerate() {
-        match names
-            .iter()
-            .position(|known| known.eq_ignore_ascii_case(name))
-        {
-            Some(column) if positions[column].is_none() => positions[column] = Some(at),
-            Some(_) => {
-                let reason = format!("the column `{name}` is there twice");
-                note(
-                    FaultCode::FileSyntax,
-                    name,
-                    reason,
-                    "keep one of the two".to_owned(),
-                );
-            }
-            None => {
-                let remedy = match nearest(name, names.iter().copied()) {
-                    Some(near) => format!("did you mean `{near}`?"),
-                    None => format!("the columns are {}, separated by commas", quoted(&names)),
-                };
-                note(
-                    FaultCode::ColumnUnknown,
-                    name,
-                    format!("there is no column `{name}`"),
-                    remedy,
-                );
-            }
-        }
-    }
-    for (column, position) in columns.iter().zip(&positions) {
-        if column.required && position.is_none() {
-            let reason = format!("the column `{}` is missing", column.name);
-            let remedy = "name it in the first line of the file".to_owned();
-            note(FaultCode::ColumnMissing, column.name, reason, remedy);
-        }
-    }
-    let is_there = |name| {
-        names
-            .iter()
-            .position(|known| *known == name)
-            .is_some_and(|at| positions[at].is_some())
-    };
-    if heading.either && !is_there("name") && !is_there("smiles") {
-        let reason = "there is neither a column `name` nor a column `smiles`".to_owned();
-        let remedy = "name one of them in the first line of the file, or both".to_owned();
-        note(FaultCode::ColumnMissing, "name", reason, remedy);
-    }
-    sound.then_some(positions)
-}
-
-/// What separates the columns of a heading that is one field to its reader.
-fn other_delimiter(written: &[String], delimiter: u8) -> Option<(&'static str, &'static str)> {
-    let [only] = written else { return None };
-    if only.contains(';') {
-        Some(("semicolons", "`.tsv` with tabs"))
-    } else if only.contains('\t') && delimiter != b'\t' {
-        Some(("tabs", "`.tsv`"))
-    } else if only.contains(',') {
-        Some(("commas", "`.csv`"))
-    } else {
-        None
-    }
-}
-
 /// A row as it was written, for a fault: its beginning, without quotation marks.
-fn as_written(record: &csv::ByteRecord, delimiter: u8) -> String {
+pub(crate) fn as_written(record: &csv::ByteRecord, delimiter: u8) -> String {
     let fields: Vec<&[u8]> = record.iter().take(20).collect();
     start_of(&fields.join(&delimiter))
 }
@@ -327,6 +159,7 @@ fn note_unclosed(file: &str, line: u32, record: &csv::ByteRecord, faults: &mut F
 #[cfg(test)]
 mod tests {
     use super::*;
+    use crate::heading::Column;
 
     /// Rows, and line and code of each fault.
     fn read(text: &[u8]) -> (Vec<Row>, Vec<(u32, &'static str)>) {

@@ -1,8 +1,9 @@
 //! Rows of a `.smi` file: a SMILES and, after blanks or a tab, a name where there is one.
 
-use crate::fault::Faults;
+use crate::faults::Faults;
 use crate::format::{MAX_ROWS, too_many_rows};
-use crate::rows::{Heading, Row, start_of};
+use crate::heading::Heading;
+use crate::rows::{Row, start_of};
 use crate::{FaultCode, Place};
 
 /// Reads all lines; empty ones and those that begin with `#` are none.
@@ -57,7 +58,7 @@ pub(crate) fn rows(file: &str, bytes: &[u8], heading: &Heading, faults: &mut Fau
 #[cfg(test)]
 mod tests {
     use super::*;
-    use crate::rows::Column;
+    use crate::heading::Column;
 
     #[test]
     fn names_may_have_blanks_or_be_left_out() {

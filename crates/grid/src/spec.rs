@@ -7,7 +7,7 @@ use enolattice_reagents::Library;
 use serde::{Deserialize, Serialize};
 
 /// Where a value was written, for error messages.
-#[derive(Clone, Debug, Default, PartialEq, Eq, Serialize, Deserialize)]
+#[derive(Clone, Debug, Default, PartialEq, Eq, Hash, Serialize, Deserialize)]
 #[serde(default)]
 pub struct Place {
     /// File name as the user gave it; empty over gRPC.
@@ -165,6 +165,62 @@ pub struct TargetSpec {
     pub yield_at_least: Option<f64>,
 }
 
+/// A yield that the laboratory has measured. Kept to be shown beside the computed one; no score
+/// depends on it.
+///
+/// A condition that is left out is that of the campaign, which must then have one value of it.
+#[derive(Clone, Debug, Default, PartialEq, Serialize, Deserialize)]
+#[serde(default)]
+pub struct MeasuredEntry {
+    /// Substrate: its name in the campaign, or a SMILES.
+    pub substrate: String,
+    /// Base, as an axis names it.
+    pub base: String,
+    /// Electrophile: its name in the campaign or the library, or a SMILES.
+    pub electrophile: String,
+    /// Solvent or mixture of solvents.
+    pub solvent: String,
+    /// Additive, or `none`; empty: that of the campaign.
+    #[serde(skip_serializing_if = "String::is_empty")]
+    pub additive: String,
+    /// Temperature of the reaction, °C.
+    pub temperature_c: Option<f64>,
+    /// Temperature of the deprotonation, °C.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub formation_temperature_c: Option<f64>,
+    /// Base, equivalents.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub base_equiv: Option<f64>,
+    /// Electrophile, equivalents.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub electrophile_equiv: Option<f64>,
+    /// Additive, equivalents.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub additive_equiv: Option<f64>,
+    /// Substrate, mol/L.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub concentration_m: Option<f64>,
+    /// Time, h.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub time_h: Option<f64>,
+    /// Dosing time of the electrophile, min.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub dosing_min: Option<f64>,
+    /// Order of addition, by name; empty: that of the campaign.
+    #[serde(skip_serializing_if = "String::is_empty")]
+    pub addition: String,
+    /// Yield on the substrate charged, 0–1.
+    pub yield_fraction: Option<f64>,
+    /// Its standard uncertainty, 0–1.
+    #[serde(skip_serializing_if = "Option::is_none")]
+    pub sigma: Option<f64>,
+    /// What the laboratory says of it.
+    #[serde(skip_serializing_if = "String::is_empty")]
+    pub note: String,
+    /// Where it was written.
+    pub place: Place,
+}
+
 /// A table of reagents of a laboratory's own, laid over the library.
 #[derive(Clone, Debug, Default, PartialEq, Eq, Serialize, Deserialize)]
 #[serde(default)]
@@ -198,6 +254,9 @@ pub struct CampaignSpec {
     /// The laboratory's own tables of reagents, the later over the earlier.
     #[serde(skip_serializing_if = "Vec::is_empty")]
     pub library: Vec<LibraryTable>,
+    /// Yields that the laboratory has measured.
+    #[serde(skip_serializing_if = "Vec::is_empty")]
+    pub measured: Vec<MeasuredEntry>,
     /// What was noticed while the files were read and is no fault, for the user.
     #[serde(skip_serializing_if = "Vec::is_empty")]
     pub notes: Vec<String>,

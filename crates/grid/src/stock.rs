@@ -2,8 +2,9 @@
 
 use crate::conditions::Quantity;
 use crate::entries::check_text;
-use crate::fault::{Faults, value_of_row};
-use crate::rows::Column;
+use crate::fault::value_of_row;
+use crate::faults::Faults;
+use crate::heading::Column;
 use crate::{FaultCode, Place, Stock};
 
 /// The columns, in the order of [`Quantities::ALL`] and [`TEXTS`].

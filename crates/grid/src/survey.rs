@@ -1,11 +1,15 @@
 //! What a campaign holds, without scoring it: sizes, cells that the model does not cover, cautions.
 
-use enolattice_model::{Category, Severity};
+use enolattice_model::{Category, FormationTable, Severity};
+use rayon::prelude::*;
 
+use crate::grid::AXES_OF_FORMATION;
 use crate::{AXES, CELLS_PER_BLOCK, CellId, Grid};
 
 /// Cells of which the cautions are looked up; of larger campaigns as many, evenly spread.
 const MOST_LOOKED_AT: u64 = 1 << 20;
+/// Pairs of substrate and electrophile that are looked at; of more as many, evenly spread.
+const MOST_PAIRS: u64 = 100_000;
 
 /// Bytes of the tables of one pair of substrate and electrophile, and of one prepared substance:
 /// estimates from the sizes of their parts, rounded up.
@@ -25,12 +29,25 @@ pub struct NotCovered {
     pub cells: u64,
 }
 
-/// Cells of one severity that carry a category of caution.
+/// Pairs of substrate and electrophile that the model does not cover, although it knows both.
+#[derive(Clone, Debug, PartialEq, Eq)]
+pub struct PairsNotCovered {
+    /// Why.
+    pub reason: String,
+    /// How many.
+    pub pairs: u64,
+    /// Substrate of the first of them.
+    pub substrate: String,
+    /// Its electrophile.
+    pub electrophile: String,
+}
+
+/// Cells in which a category of caution has one severity.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
 pub struct CautionCount {
-    /// Severest caution of these cells.
+    /// Severity: the severest at which the category is there.
     pub severity: Severity,
-    /// Category among their cautions; none: any.
+    /// Category; none: whichever is the severest.
     pub category: Option<Category>,
     /// How many.
     pub cells: u64,
@@ -58,7 +75,7 @@ impl Grid {
     }
 
     /// Substrates that put their cells outside the model. Some of these cells may be outside because
-    /// of their electrophile as well; pairs of which no product can be drawn are found by scoring only.
+    /// of their electrophile as well.
     pub fn substrates_not_covered(&self) -> Vec<NotCovered> {
         let substrates = &self.campaign().substrates;
         let cells = self.cells() / substrates.len().max(1) as u64;
@@ -71,24 +88,58 @@ impl Grid {
         not_covered.collect()
     }
 
+    /// Pairs of substrate and electrophile that put their cells outside the model, by reason, the
+    /// most frequent first; and how many pairs were looked at: all of a hundred thousand or fewer, else
+    /// as many that are evenly spread. Takes time.
+    pub fn pairs_not_covered(&self) -> (Vec<PairsNotCovered>, u64) {
+        let (substrates, electrophiles) =
+            (&self.campaign().substrates, &self.campaign().electrophiles);
+        let pairs = substrates.len() as u64 * electrophiles.len() as u64;
+        let step = step(pairs, MOST_PAIRS);
+        let looked_at: Vec<u64> = (0..pairs).step_by(step as usize).collect();
+        let pair = |&number: &u64| {
+            let of = number as usize;
+            let substrate = &substrates[of / electrophiles.len()];
+            let electrophile = &electrophiles[of % electrophiles.len()];
+            let reason = self.model().pair_not_covered(substrate, electrophile)?;
+            Some((reason, substrate.name.clone(), electrophile.name.clone()))
+        };
+        let found: Vec<_> = looked_at.par_iter().filter_map(pair).collect();
+        let mut by_reason: Vec<PairsNotCovered> = Vec::new();
+        for (reason, substrate, electrophile) in found {
+            match by_reason.iter_mut().find(|known| known.reason == reason) {
+                Some(known) => known.pairs += 1,
+                None => by_reason.push(PairsNotCovered {
+                    reason: reason.to_owned(),
+                    pairs: 1,
+                    substrate,
+                    electrophile,
+                }),
+            }
+        }
+        by_reason.sort_by_key(|known| std::cmp::Reverse(known.pairs));
+        (by_reason, looked_at.len() as u64)
+    }
+
     /// Counts cautions from `warning` upwards, severest first, and says in how many cells: all of a
     /// small campaign, else about a million that are evenly spread.
+    ///
+    /// A category counts at its own severity: a cell that must be stopped and is flammable too, which
+    /// is worth a note, does not count as a stop for its flammability.
     pub fn count_cautions(&self) -> (Vec<CautionCount>, u64) {
-        let step = self.cells().div_ceil(MOST_LOOKED_AT).max(1);
-        // an odd step meets all digits of axes whose sizes are powers of two
-        let step = if step > 1 { step | 1 } else { step };
+        let step = step(self.cells(), MOST_LOOKED_AT);
         let mut counts = [[0u64; Category::ALL.len() + 1]; Severity::ALL.len()];
         let mut looked_at = 0;
         for cell in (0..self.cells()).step_by(step as usize) {
             looked_at += 1;
-            let bits = self.caution_bits(CellId(cell));
-            let Some(severity) = Severity::from_bits(bits) else {
-                continue;
-            };
-            let row = &mut counts[severity as usize - 1];
-            row[0] += 1;
-            for (category, count) in Category::ALL.iter().zip(&mut row[1..]) {
-                *count += u64::from(bits & category.bit() != 0);
+            let categories = self.caution_categories(CellId(cell));
+            let mut severer = 0;
+            for (row, bits) in counts.iter_mut().zip(categories).rev() {
+                row[0] += u64::from(severer == 0 && bits != 0);
+                for (category, count) in Category::ALL.iter().zip(&mut row[1..]) {
+                    *count += u64::from(bits & !severer & category.bit() != 0);
+                }
+                severer |= bits;
             }
         }
         let severe = Severity::ALL
@@ -116,8 +167,14 @@ impl Grid {
             campaign.substrates.len() as u64,
             campaign.electrophiles.len() as u64,
         ];
-        let pairs = substrates.min(SUBSTRATES_KEPT) * electrophiles;
-        pairs * PAIR_BYTES + (substrates + electrophiles) * SUBSTANCE_BYTES
+        let kept = substrates.min(SUBSTRATES_KEPT);
+        let sizes = self.lattice().sizes();
+        let pots = AXES_OF_FORMATION.iter().fold(kept, |pots, &axis| {
+            pots.saturating_mul(u64::from(sizes[axis]))
+        });
+        let pots = pots.saturating_mul(FormationTable::POT_BYTES);
+        let substances = (substrates + electrophiles) * SUBSTANCE_BYTES;
+        (kept * electrophiles * PAIR_BYTES + substances).saturating_add(pots)
     }
 
     /// Blocks, at most `most` and evenly spread, in an order of which every beginning is spread too.
@@ -131,5 +188,14 @@ impl Grid {
         order.sort_by_key(|i| i.reverse_bits() >> (usize::BITS - bits.max(1)));
         chosen = order.into_iter().map(|i| chosen[i]).collect();
         chosen
+    }
+}
+
+/// Distance of the members that are looked at, so that they are at most about `most`.
+fn step(all: u64, most: u64) -> u64 {
+    match all.div_ceil(most).max(1) {
+        1 => 1,
+        // an odd step meets all digits of axes whose sizes are powers of two
+        step => step | 1,
     }
 }

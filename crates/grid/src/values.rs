@@ -3,10 +3,25 @@
 use enolattice_model::Addition;
 
 use crate::conditions::{CONDITIONS, YIELD_AT_LEAST};
-use crate::fault::Faults;
+use crate::faults::Faults;
 use crate::resolve;
 use crate::warnings::Warnings;
 use crate::{CampaignSpec, FaultCode, Place};
+
+/// Most values of a condition; a list of more is not looked at. No campaign needs so many, and each takes
+/// time and memory before the number of cells is known.
+const MOST_VALUES: usize = 10_000;
+
+/// Whether a condition has no more values than are looked at; notes it if it has.
+pub(crate) fn check_count(values: usize, place: Place, written: &str, faults: &mut Faults) -> bool {
+    let is_small = values <= MOST_VALUES;
+    if !is_small {
+        let reason = format!("the axis has {values} values");
+        let remedy = format!("give at most {MOST_VALUES}");
+        faults.note(FaultCode::ValueOutOfRange, place, written, reason, remedy);
+    }
+    is_small
+}
 
 /// The axes of numbers, in the order of [`CONDITIONS`], with defaults where nothing is given.
 pub(crate) fn numbers(
@@ -17,7 +32,11 @@ pub(crate) fn numbers(
     let axes = spec.conditions.axes();
     std::array::from_fn(|axis| {
         let quantity = &CONDITIONS[axis];
-        let mut values: Vec<f64> = Vec::with_capacity(axes[axis].len());
+        let given = axes[axis].len();
+        if !check_count(given, Place::of_field(quantity.key), "", faults) {
+            return Vec::new();
+        }
+        let mut values: Vec<f64> = Vec::with_capacity(given);
         for (i, value) in axes[axis].iter().enumerate() {
             match quantity.check(*value) {
                 Ok(value) if values.contains(&value) => {

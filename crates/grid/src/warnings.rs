@@ -50,6 +50,14 @@ impl Warnings {
         self.add(&format!("{axis} that are salts"), text);
     }
 
+    /// A measured yield that no cell of the campaign has.
+    pub(crate) fn of_no_cell(&mut self, row: &str, missing: &str) {
+        let text = format!(
+            "measured: {row} is of no cell of this campaign, which lacks {missing}; it is kept and shown nowhere"
+        );
+        self.add("measured yields of no cell", text);
+    }
+
     /// What the model says of the reagents once they are prepared.
     pub(crate) fn of_prepared(&mut self, campaign: &Campaign) {
         for electrophile in &campaign.electrophiles {

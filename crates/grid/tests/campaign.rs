@@ -292,6 +292,20 @@ fn a_grid_beyond_the_numbers_is_refused() {
 }
 
 #[test]
+fn an_axis_of_conditions_beyond_all_need_is_not_looked_at() {
+    let mut spec = small();
+    spec.conditions.temperature_c = (0..500_000).map(|i| f64::from(i) / 5_000.0).collect();
+    spec.conditions.additive_equiv = spec.conditions.temperature_c.clone();
+    assert_eq!(
+        faults(&spec),
+        [
+            ("conditions.temperature_c".to_owned(), "VALUE_OUT_OF_RANGE"),
+            ("conditions.additive_equiv".to_owned(), "VALUE_OUT_OF_RANGE"),
+        ]
+    );
+}
+
+#[test]
 fn a_fingerprint_is_of_the_content_and_of_nothing_else() {
     let model = model();
     let of = |spec: &CampaignSpec| {

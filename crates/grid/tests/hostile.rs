@@ -34,8 +34,8 @@ fn checked(campaign: &str, files: &[(&str, &[u8])]) -> Vec<InputError> {
     faults
 }
 
-const FILES: &str =
-    "[substrates]\nfile = ['s.csv', 's.smi', 's.sdf', 's.tsv']\n[bases]\nfile = 's.csv'\n";
+const FILES: &str = "[substrates]\nfile = ['s.csv', 's.smi', 's.sdf', 's.tsv']\n[bases]\nfile = 's.csv'\n\
+     [measured]\nfile = 's.csv'\n";
 
 /// All four forms made of the same bytes.
 fn all_forms(bytes: &[u8]) -> Vec<InputError> {
@@ -138,7 +138,154 @@ fn a_file_of_nothing_but_faults_is_not_looked_at_to_its_end() {
     assert_eq!(Campaign::faults(&spec, &LIBRARY).len(), MAX_FAULTS + 1);
 }
 
+#[test]
+fn measured_yields_of_nothing_but_faults_are_not_looked_at_to_their_end() {
+    let heading = "substrate,base,electrophile,solvent,temperature_c,yield_fraction\n";
+    let long = "C".repeat(1_000_000);
+    let rows = [
+        "x,y,z,w,25,0.5\n".repeat(200_000),
+        "CC(C)=O,LDA,MeI,THF,25,0.5\n".repeat(200_000),
+        format!("{long},{long},{long},{long},{long},{long}\n"),
+        format!("{}\n", ["a/".repeat(100_000).as_str(); 6].join(",")),
+    ];
+    for rows in rows {
+        let campaign = "[substrates]\nsmiles = 'CC(C)=O'\n[measured]\nfile = 'y.csv'";
+        let file = format!("{heading}{rows}");
+        let faults = checked(campaign, &[("y.csv", file.as_bytes())]);
+        assert!(faults.iter().any(|fault| fault.place.file == "y.csv"));
+    }
+}
+
+/// A sound campaign with a file of each form.
+const SOUND: [(&str, &str); 6] = [
+    (
+        "c.toml",
+        "title = \"sound\"\n[substrates]\nfile = [\"s.csv\", \"s.smi\", \"s.sdf\"]\nsmiles = \"CC#N\"\n\
+         [[substrates.inline]]\nname = \"k\"\nsmiles = \"CC(C)=O\"\npka_dmso = 26.5\npka_sigma = 0.1\n\
+         [bases]\nfile = \"b.tsv\"\nlibrary = [\"KOtBu\", \"all\"]\n[electrophiles]\nlibrary = \"MeI\"\n\
+         smiles = [\"BrCc1ccccc1\"]\n[solvents]\nlibrary = [\"THF\", \"THF/DMF 4:1\"]\n[additives]\n\
+         library = [\"none\", \"HMPA\"]\n[conditions]\ntemperature_c = [-78, 0x10, 25.5]\n\
+         addition = \"all together\"\n[target]\nyield_at_least = 0.5\n[measured]\nfile = \"y.csv\"\n",
+    ),
+    (
+        "s.csv",
+        "name,smiles,pka_dmso,stock_mg,price_per_g,currency\n\"a, b\",CCOC(=O)CC(=O)OCC,16.4,20,1.5,EUR\n",
+    ),
+    (
+        "s.smi",
+        "# shelf\nCC(=O)c1ccccc1 acetophenone\n[Na+].CC(=O)[CH-]C(C)=O\n",
+    ),
+    (
+        "s.sdf",
+        "t\n\n\n  2  1  0  0  0  0  0  0  0  0999 V2000\n\
+         \x20   0.0000    0.0000    0.0000 C   0  0\n    1.5000    0.0000    0.0000 O   0  0\n\
+         \x20 1  2  1  0\nM  END\n>  <pka_dmso>\n29.0\n\n$$$$\n",
+    ),
+    (
+        "b.tsv",
+        "name\tsmiles\tlot\nLDA\t\tL7\n\tCC(C)(C)[O-].[Na+]\t\n",
+    ),
+    (
+        "y.csv",
+        "substrate,base,electrophile,solvent,additive,temperature_c,yield_fraction,sigma,note\n\
+         k,LDA,MeI,THF,none,-78,0.85,0.03,\"isolated, twice\"\nCC#N,LDA,CI,THF/DMF 4:1,HMPA,25.5,0,,\n",
+    ),
+];
+
+/// What a change of a file does to it.
+#[derive(Clone, Debug)]
+enum Change {
+    Remove(usize, usize),
+    Repeat(usize, usize),
+    Insert(usize, Vec<u8>),
+}
+
+impl Change {
+    fn apply(&self, bytes: &mut Vec<u8>) {
+        let span = |at: usize, length: usize| {
+            let at = at % (bytes.len() + 1);
+            at..(at + length).min(bytes.len())
+        };
+        match self {
+            Change::Remove(at, length) => drop(bytes.drain(span(*at, *length))),
+            Change::Repeat(at, length) => {
+                let span = span(*at, *length);
+                let end = span.end;
+                let twice = bytes[span].to_vec();
+                bytes.splice(end..end, twice);
+            }
+            Change::Insert(at, new) => {
+                let at = at % (bytes.len() + 1);
+                bytes.splice(at..at, new.iter().copied());
+            }
+        }
+    }
+}
+
+fn change() -> impl Strategy<Value = Change> {
+    let at = || any::<usize>();
+    let words = prop::sample::select(vec![
+        "\"",
+        "'",
+        "[",
+        "]",
+        "[[",
+        "=",
+        ",",
+        "\n",
+        "\t",
+        "é",
+        "\0",
+        "nan",
+        "inf",
+        "-1e999",
+        "1_0",
+        "all",
+        "none",
+        "/",
+        "4:1:",
+        "C1",
+        "(",
+        ".",
+        "{}",
+        "#",
+        "$$$$",
+        "M  END",
+        "999",
+        "true",
+        "1979-05-27",
+    ]);
+    let word = words.prop_map(|word| word.as_bytes().to_vec());
+    prop_oneof![
+        (at(), 0usize..40).prop_map(|(at, length)| Change::Remove(at, length)),
+        (at(), 0usize..80).prop_map(|(at, length)| Change::Repeat(at, length)),
+        (at(), word).prop_map(|(at, word)| Change::Insert(at, word)),
+        (at(), prop::collection::vec(any::<u8>(), 1..4))
+            .prop_map(|(at, bytes)| Change::Insert(at, bytes)),
+    ]
+}
+
+#[test]
+fn the_campaign_that_is_changed_is_sound() {
+    let (_, campaign) = SOUND[0];
+    let files = SOUND.map(|(name, text)| (name, text.as_bytes()));
+    assert_eq!(checked(campaign, &files[1..]), []);
+}
+
 proptest! {
+    #[test]
+    fn no_change_of_a_sound_campaign_makes_its_check_panic(
+        changes in prop::collection::vec((0usize..6, change()), 1..6),
+    ) {
+        let mut files = SOUND.map(|(name, text)| (name, text.as_bytes().to_vec()));
+        for (file, change) in changes {
+            change.apply(&mut files[file].1);
+        }
+        let campaign = String::from_utf8_lossy(&files[0].1).into_owned();
+        let files: Vec<(&str, &[u8])> = files[1..].iter().map(|(name, bytes)| (*name, bytes.as_slice())).collect();
+        checked(&campaign, &files);
+    }
+
     #[test]
     fn no_bytes_make_the_readers_panic(bytes in proptest::collection::vec(any::<u8>(), 0..400)) {
         all_forms(&bytes);
@@ -147,7 +294,7 @@ proptest! {
 
     #[test]
     fn no_words_of_the_forms_make_the_readers_panic(
-        words in "(name|smiles|pka_dmso|stock_mg|,|\t|\"|\r\n|\n|\\$\\$\\$\\$|M  END|M  V30 |COUNTS|V2000|V3000|>  <name>|  1  0|C1CC|CC=O|\\.|\\[Na\\+\\]|\u{0}|é|0.5|nan|1e999){0,60}",
+        words in "(name|smiles|pka_dmso|stock_mg|,|\t|\"|\r\n|\n|\\$\\$\\$\\$|M  END|M  V30 |COUNTS|V2000|V3000|>  <name>|substrate|base|electrophile|solvent|temperature_c|yield_fraction|  1  0|C1CC|CC=O|\\.|\\[Na\\+\\]|\u{0}|é|0.5|nan|1e999){0,60}",
     ) {
         all_forms(words.as_bytes());
     }

@@ -255,12 +255,17 @@ fn all_forms_of_files_give_the_same_rows() {
 #[test]
 fn the_example_of_the_page_can_be_read() {
     let page = include_str!("../docs/campaign.md");
-    let (_, rest) = page
-        .split_once("```toml\n")
-        .expect("the page has an example");
-    let (example, _) = rest.split_once("```").expect("the example ends");
-    let spec = checked(&sources(example, &[("substrates.csv", SUBSTRATES)]));
-    assert_eq!(spec.map(|spec| spec.substrates.len()), Ok(2));
+    let example = |kind: &str| {
+        let (_, rest) = page.split_once(kind).expect("the page has an example");
+        rest.split_once("```").expect("the example ends").0
+    };
+    let substrates = "name,smiles\nethyl phenylacetate,CCOC(=O)Cc1ccccc1\n";
+    let files = [
+        ("substrates.csv", substrates),
+        ("yields.csv", example("```csv\n")),
+    ];
+    let spec = checked(&sources(example("```toml\n"), &files)).expect("is sound");
+    assert_eq!((spec.substrates.len(), spec.measured.len()), (1, 2));
 }
 
 #[test]

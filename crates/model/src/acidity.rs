@@ -139,7 +139,7 @@ fn from_estimate(site: Site, contribution: Contribution, pka: f64) -> AcidSite {
         pka_dmso: pka,
         sigma,
         origin: Origin::Estimated,
-        source: "group contributions fitted on measured acidities in DMSO".to_owned(),
+        source: "estimate by group contributions".to_owned(),
         outside,
         contribution,
     }

@@ -4,6 +4,7 @@ use std::sync::Arc;
 
 use enolattice_molecule::{AnionClass, Molecule};
 use enolattice_reagents::{Cation, Library};
+use enolattice_units::math;
 use sha2::{Digest, Sha256};
 
 use crate::acidity::acidity_texts;
@@ -127,6 +128,20 @@ impl Model {
         sites
             .map(|(i, site)| (site.acid.atom, pot.of(Species::Carbanion(i)) / all))
             .collect()
+    }
+
+    /// The carbanions of a cell's substrate once they have exchanged their protons: atom of the site, share of
+    /// all carbanions, by the pKa of the sites in the medium.
+    pub fn equilibrated_enolates(&self, cell: &Cell, draw: &Draw) -> Vec<(usize, f64)> {
+        let temperature_c = cell.conditions.formation_temperature_c;
+        let kinetics = Kinetics::new(cell, temperature_c, &draw.values, Nudge::default());
+        let sites = &cell.substrate.carbon;
+        let weights = sites
+            .iter()
+            .map(|site| math::exp10(-kinetics.site_pka(site)));
+        let all: f64 = weights.clone().sum();
+        let atoms = sites.iter().map(|site| site.acid.atom);
+        atoms.zip(weights.map(|weight| weight / all)).collect()
     }
 
     /// Mayr's N in DMSO of a substrate's favoured carbanion, the room it takes counted in.

@@ -142,6 +142,7 @@ parameters! {
     /// is attacked faster than in DMSO.
     CARBONYL_METAL = 2.0, 0.8, "log10", "lithium enolates add to esters and amides with chelating groups within minutes at −78 °C (common practice)";
     CARBONYL_PROTIC = 1.0, 1.0, "log10", "nitronates add to benzaldehyde in methanol within minutes at 10 °C (common practice)";
+    CARBONYL_ACID = 0.2, 0.07, "1", "general acid catalysis of additions to carbonyl groups, 0.2 to 0.5 (from memory)";
     /// log10 of K of four lithium enolate monomers to a tetramer in THF at 25 °C.
     TETRAMER = 8.7, 0.4, "log10 L³/mol³", "Abbotto, Streitwieser and others on lithium ketone enolates in THF: 5·10^8 M^-3 (from memory)";
     STERIC_SN2 = -0.9, 0.3, "log10", MEMORY;

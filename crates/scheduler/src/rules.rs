@@ -52,7 +52,8 @@ pub struct Refused {
     pub event: Event,
 }
 
-/// The state after an event. An ended job stays as it is; a paused one can only be given up.
+/// The state after an event. An ended job stays as it is. Nothing pauses a job yet; a paused
+/// one can only be given up.
 ///
 /// # Errors
 /// [`Refused`] where the state does not allow the event.

@@ -45,6 +45,7 @@ fn append(submission: &mut v1::SubmitJobRequest, chunk: v1::AxisChunk) {
     campaign.substrates.extend(chunk.substrates);
     let electrophiles = campaign.electrophiles.get_or_insert_default();
     electrophiles.reagents.extend(chunk.electrophiles);
+    campaign.measured.extend(chunk.measured);
 }
 
 fn out_of_place(part: &str, why: &str) -> Refusal {
@@ -79,9 +80,14 @@ mod tests {
             name: electrophile.into(),
             ..Default::default()
         };
+        let measured = v1::MeasuredYield {
+            substrate: substrate.into(),
+            ..Default::default()
+        };
         Part::Chunk(v1::AxisChunk {
             substrates: vec![named(substrate)],
             electrophiles: vec![reagent],
+            measured: vec![measured],
         })
     }
 
@@ -110,6 +116,12 @@ mod tests {
             .iter()
             .map(|s| s.name.as_str())
             .collect();
+        let measured: Vec<_> = campaign
+            .measured
+            .iter()
+            .map(|row| row.substrate.as_str())
+            .collect();
+        assert_eq!(measured, ["b", "c"]);
         let electrophiles = campaign.electrophiles.expect("an axis").reagents;
         assert_eq!(substrates, ["a", "b", "c"]);
         assert_eq!(

@@ -15,7 +15,7 @@ pub enum JobState {
     Queued,
     /// Being screened.
     Running,
-    /// Held by the user.
+    /// Held by the user. Nothing pauses a job yet.
     Paused,
     /// All blocks committed.
     Done,

@@ -10,6 +10,7 @@ mod enums;
 mod explanation;
 mod job;
 mod library;
+mod measured;
 mod media;
 mod numbers;
 mod ranking;

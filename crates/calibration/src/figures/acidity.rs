@@ -36,6 +36,9 @@ struct Prediction {
 /// A way of holding out, and how to read it.
 type Way = (&'static str, fn(&Held) -> Prediction);
 
+/// Compounds that belong together, and which they are.
+type Family = (&'static str, fn(&Held) -> bool);
+
 const WAYS: [Way; 2] = [
     ("one in five", |held| held.one_in_five),
     ("one scaffold group", |held| held.scaffold),
@@ -140,7 +143,7 @@ fn competing(text: &mut String, held: &[Held]) {
     for one in held.iter().filter(|one| one.kind != "carbon acid") {
         classes.entry(&one.kind).or_default().push(one);
     }
-    let families: [(&str, fn(&Held) -> bool); 3] = [
+    let families: [Family; 3] = [
         ("all O–H", |one| one.kind.ends_with("O–H")),
         ("all N–H", |one| one.kind.ends_with("N–H")),
         ("all S–H", |one| one.kind.ends_with("S–H")),
@@ -178,7 +181,7 @@ fn coverage(text: &mut String, held: &[Held]) {
          | held out | compounds | n | mean σ | within 1 σ | within 2 σ |\n\
          | --- | --- | --- | --- | --- | --- |\n",
     );
-    let kinds: [(&str, fn(&Held) -> bool); 4] = [
+    let kinds: [Family; 4] = [
         ("all", |_| true),
         ("C–H in scope", |one| one.in_scope),
         ("all C–H", |one| one.is_carbon),

@@ -21,7 +21,10 @@ pub(super) struct Sites {
     smiles: Vec<String>,
     #[command(flatten)]
     engine: EngineOptions,
-    /// Print JSON: a list.
+    /// Add the terms of each estimate and the measured acids most like it.
+    #[arg(long)]
+    reasons: bool,
+    /// Print JSON: a list; the reasons are in it.
     #[arg(long)]
     json: bool,
 }
@@ -39,7 +42,8 @@ impl Sites {
         if self.json {
             return print_json(&molecules);
         }
-        let pages: Vec<String> = molecules.iter().map(molecule_page).collect();
+        let page = |molecule: &MoleculeSites| molecule_page(molecule, self.reasons);
+        let pages: Vec<String> = molecules.iter().map(page).collect();
         print(&pages.join("\n\n"))
     }
 

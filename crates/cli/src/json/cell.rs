@@ -29,6 +29,7 @@ pub(crate) struct CellLine {
     largest_loss: Option<&'static str>,
     cautions: Vec<String>,
     severity: Option<String>,
+    measured_yield: Option<f64>,
 }
 
 impl From<RankedCell> for CellLine {
@@ -57,6 +58,7 @@ impl From<RankedCell> for CellLine {
             largest_loss: row.largest_loss.map(|channel| channel.name()),
             cautions: row.cautions,
             severity: row.severity,
+            measured_yield: row.measured_yield,
         }
     }
 }

@@ -3,7 +3,7 @@
 use enolattice_engine::{CellDescription, DryRun, Job, JobState, RankedCell, ReagentRow};
 use enolattice_model::{
     Advice, Category, Caution, Channel, CoursePoint, ExplainedRate, ExplainedSite, Explanation,
-    Origin, Severity,
+    Neighbour, Origin, Severity, SiteReasons, Term,
 };
 use serde::Serialize;
 use serde_json::Value;
@@ -66,6 +66,7 @@ fn cell() -> RankedCell {
         largest_loss: None,
         cautions: Vec::new(),
         severity: None,
+        measured_yield: None,
     }
 }
 
@@ -105,6 +106,7 @@ fn description() -> CellDescription {
         time_h: 16.0,
         dosing_min: 10.0,
         addition: String::new(),
+        measured: None,
     }
 }
 
@@ -124,6 +126,7 @@ fn explanation() -> Explanation {
         condensation_smiles: None,
         delta_g_deprotonation_kj_mol: None,
         log10_k: None,
+        log10_k_sigma: None,
         enolate_fraction: None,
         sites: vec![site()],
         rates: vec![ExplainedRate {
@@ -167,6 +170,22 @@ fn site() -> ExplainedSite {
         sigma: 0.2,
         origin: Origin::Measured,
         source: String::new(),
+        reasons: SiteReasons {
+            terms: vec![Term {
+                name: String::new(),
+                contribution: 1.0,
+                standard_error: 0.1,
+            }],
+            neighbours: vec![Neighbour {
+                smiles: String::new(),
+                atom: 0,
+                pka_dmso: 26.5,
+                residual: 0.1,
+                held_out_error: -0.1,
+                similarity: 1.0,
+                source: String::new(),
+            }],
+        },
     }
 }
 
@@ -207,6 +226,8 @@ fn every_field_is_documented_and_every_documented_field_is_there() {
         cells_scored: 1,
         cells_scored_not_covered: 0,
         not_covered: Vec::new(),
+        pairs_looked_at: 1,
+        pairs_not_covered: Vec::new(),
         cells_looked_at: 1,
         cautions: Vec::new(),
     });
@@ -228,11 +249,20 @@ fn every_field_is_documented_and_every_documented_field_is_there() {
         assert_eq!(documented(heading), found, "{heading}");
     }
     // Within a value the order of keys is lost: compare as sets.
-    for part in [
-        "sites", "rates", "losses", "course", "cautions", "advice", "cell",
+    let site = &explained["sites"][0];
+    for (part, value) in [
+        ("sites", &explained["sites"]),
+        ("terms", &site["terms"]),
+        ("neighbours", &site["neighbours"]),
+        ("rates", &explained["rates"]),
+        ("losses", &explained["losses"]),
+        ("course", &explained["course"]),
+        ("cautions", &explained["cautions"]),
+        ("advice", &explained["advice"]),
+        ("cell", &explained["cell"]),
     ] {
         let mut documented = documented(&format!("#### `{part}`"));
-        let mut found = fields(&explained[part]);
+        let mut found = fields(value);
         documented.sort();
         found.sort();
         assert_eq!(documented, found, "{part}");

@@ -1,7 +1,7 @@
 //! What a campaign would take.
 
 use enolattice_engine::{AxisSize, DryRun, NotCovered};
-use enolattice_grid::CautionCount;
+use enolattice_grid::{CautionCount, PairsNotCovered};
 use serde::Serialize;
 
 /// The document of `screen --dry-run --json`.
@@ -15,6 +15,8 @@ pub(crate) struct DryRunDocument {
     cells_scored: u64,
     cells_scored_not_covered: u64,
     not_covered: Vec<NotCoveredRecord>,
+    pairs_looked_at: u64,
+    pairs_not_covered: Vec<PairsRecord>,
     cells_looked_at: u64,
     severe_cautions: Vec<CautionRecord>,
     warnings: Vec<String>,
@@ -37,6 +39,14 @@ struct NotCoveredRecord {
 }
 
 #[derive(Clone, Debug, Serialize)]
+struct PairsRecord {
+    reason: String,
+    pairs: u64,
+    substrate: String,
+    electrophile: String,
+}
+
+#[derive(Clone, Debug, Serialize)]
 struct CautionRecord {
     severity: &'static str,
     category: Option<&'static str>,
@@ -54,6 +64,8 @@ impl From<DryRun> for DryRunDocument {
             cells_scored: run.cells_scored,
             cells_scored_not_covered: run.cells_scored_not_covered,
             not_covered: run.not_covered.into_iter().map(Into::into).collect(),
+            pairs_looked_at: run.pairs_looked_at,
+            pairs_not_covered: run.pairs_not_covered.into_iter().map(Into::into).collect(),
             cells_looked_at: run.cells_looked_at,
             severe_cautions: run.cautions.into_iter().map(Into::into).collect(),
             warnings: run.job.warnings,
@@ -79,6 +91,17 @@ impl From<NotCovered> for NotCoveredRecord {
             name: known.name,
             reason: known.reason,
             cells: known.cells,
+        }
+    }
+}
+
+impl From<PairsNotCovered> for PairsRecord {
+    fn from(known: PairsNotCovered) -> PairsRecord {
+        PairsRecord {
+            reason: known.reason,
+            pairs: known.pairs,
+            substrate: known.substrate,
+            electrophile: known.electrophile,
         }
     }
 }

@@ -23,6 +23,7 @@ pub(crate) struct ExplanationDocument {
     condensation_smiles: Option<String>,
     delta_g_deprotonation_kj_mol: Option<f64>,
     log10_k: Option<f64>,
+    log10_k_sigma: Option<f64>,
     enolate_fraction: Option<f64>,
     sites: Vec<SiteRecord>,
     rates: Vec<RateRecord>,
@@ -55,6 +56,9 @@ struct CellRecord {
     time_h: f64,
     dosing_min: f64,
     addition: String,
+    measured_yield: Option<f64>,
+    measured_sigma: Option<f64>,
+    measured_note: Option<String>,
 }
 
 #[derive(Clone, Debug, Serialize)]
@@ -112,6 +116,7 @@ impl ExplanationDocument {
             condensation_smiles: told.condensation_smiles,
             delta_g_deprotonation_kj_mol: told.delta_g_deprotonation_kj_mol,
             log10_k: told.log10_k,
+            log10_k_sigma: told.log10_k_sigma,
             enolate_fraction: told.enolate_fraction,
             sites: told.sites.into_iter().map(SiteRecord::from).collect(),
             rates: told.rates.into_iter().map(RateRecord::from).collect(),
@@ -146,6 +151,12 @@ impl From<CellDescription> for CellRecord {
             time_h: cell.time_h,
             dosing_min: cell.dosing_min,
             addition: cell.addition,
+            measured_yield: cell.measured.as_ref().map(|known| known.yield_fraction),
+            measured_sigma: cell.measured.as_ref().and_then(|known| known.sigma),
+            measured_note: cell
+                .measured
+                .map(|known| known.note)
+                .filter(|note| !note.is_empty()),
         }
     }
 }

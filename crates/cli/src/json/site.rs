@@ -1,7 +1,7 @@
 //! An acidic site.
 
-use enolattice_engine::SiteReport;
-use enolattice_model::{AcidSite, ExplainedSite, Origin};
+use enolattice_engine::{ReasonedSite, SiteReport};
+use enolattice_model::{ExplainedSite, Neighbour, Origin, SiteReasons, Term};
 use serde::Serialize;
 
 /// A site as `explain` and `sites` print it.
@@ -17,6 +17,29 @@ pub(crate) struct SiteRecord {
     pub(crate) sigma: f64,
     pub(crate) origin: &'static str,
     pub(crate) source: String,
+    /// Empty for a measured value, like `neighbours`.
+    pub(crate) terms: Vec<TermRecord>,
+    pub(crate) neighbours: Vec<NeighbourRecord>,
+}
+
+/// A term of an estimated pKa.
+#[derive(Clone, Debug, Serialize)]
+pub(crate) struct TermRecord {
+    pub(crate) name: String,
+    pub(crate) contribution: f64,
+    pub(crate) standard_error: f64,
+}
+
+/// A measured acid like the one in question.
+#[derive(Clone, Debug, Serialize)]
+pub(crate) struct NeighbourRecord {
+    pub(crate) smiles: String,
+    pub(crate) atom: usize,
+    pub(crate) pka_dmso: f64,
+    pub(crate) residual: f64,
+    pub(crate) held_out_error: f64,
+    pub(crate) similarity: f64,
+    pub(crate) source: String,
 }
 
 /// An element of the list of `sites --json`.
@@ -28,6 +51,7 @@ pub(crate) struct MoleculeSites {
 
 impl From<ExplainedSite> for SiteRecord {
     fn from(site: ExplainedSite) -> SiteRecord {
+        let (terms, neighbours) = records(site.reasons);
         SiteRecord {
             molecule: site.molecule,
             atom: site.atom,
@@ -38,12 +62,16 @@ impl From<ExplainedSite> for SiteRecord {
             sigma: site.sigma,
             origin: origin_name(site.origin),
             source: site.source,
+            terms,
+            neighbours,
         }
     }
 }
 
-impl From<AcidSite> for SiteRecord {
-    fn from(site: AcidSite) -> SiteRecord {
+impl From<ReasonedSite> for SiteRecord {
+    fn from(reasoned: ReasonedSite) -> SiteRecord {
+        let site = reasoned.site;
+        let (terms, neighbours) = records(reasoned.reasons);
         SiteRecord {
             molecule: "substrate",
             atom: site.atom,
@@ -54,6 +82,38 @@ impl From<AcidSite> for SiteRecord {
             sigma: site.sigma,
             origin: origin_name(site.origin),
             source: site.source,
+            terms,
+            neighbours,
+        }
+    }
+}
+
+fn records(reasons: SiteReasons) -> (Vec<TermRecord>, Vec<NeighbourRecord>) {
+    let terms = reasons.terms.into_iter().map(TermRecord::from);
+    let neighbours = reasons.neighbours.into_iter().map(NeighbourRecord::from);
+    (terms.collect(), neighbours.collect())
+}
+
+impl From<Term> for TermRecord {
+    fn from(term: Term) -> TermRecord {
+        TermRecord {
+            name: term.name,
+            contribution: term.contribution,
+            standard_error: term.standard_error,
+        }
+    }
+}
+
+impl From<Neighbour> for NeighbourRecord {
+    fn from(near: Neighbour) -> NeighbourRecord {
+        NeighbourRecord {
+            smiles: near.smiles,
+            atom: near.atom,
+            pka_dmso: near.pka_dmso,
+            residual: near.residual,
+            held_out_error: near.held_out_error,
+            similarity: near.similarity,
+            source: near.source,
         }
     }
 }

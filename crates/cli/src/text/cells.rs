@@ -15,6 +15,7 @@ type Column = (&'static str, Side, fn(&RankedCell) -> String);
 pub(crate) fn cell_table(cells: &[RankedCell]) -> String {
     use Side::{Left, Right};
     let narrow = width() < NARROW;
+    let has_measured = cells.iter().any(|cell| cell.measured_yield.is_some());
     let has_additives = cells.iter().any(|cell| cell.additive.is_some());
     let columns: Vec<Column> = vec![
         ("rank", Right, |cell| cell.rank.to_string()),
@@ -30,6 +31,10 @@ pub(crate) fn cell_table(cells: &[RankedCell]) -> String {
             temperatures(cell.formation_temperature_c, cell.temperature_c)
         }),
         ("yield", Right, |cell| percent(cell.expected_yield)),
+        ("measured", Right, |cell| match cell.measured_yield {
+            Some(_) => percent(cell.measured_yield),
+            None => String::new(),
+        }),
         ("p_hit", Right, |cell| percent(cell.p_hit)),
         ("selectivity", Right, |cell| percent(cell.selectivity)),
         ("largest loss", Left, |cell| {
@@ -43,6 +48,7 @@ pub(crate) fn cell_table(cells: &[RankedCell]) -> String {
         .into_iter()
         .filter(|(name, ..)| !narrow || *name != "selectivity")
         .filter(|(name, ..)| has_additives || *name != "additive")
+        .filter(|(name, ..)| has_measured || *name != "measured")
         .collect();
     let headings: Vec<(&str, Side)> = shown.iter().map(|(name, side, _)| (*name, *side)).collect();
     let row = |cell| shown.iter().map(|(.., text)| text(cell)).collect();

@@ -3,6 +3,7 @@
 use std::time::Duration;
 
 use enolattice_engine::DryRun;
+use enolattice_model::{Category, Severity};
 
 use super::numbers::{count, percent};
 use super::table::{Side, table};
@@ -12,7 +13,13 @@ const WRITTEN_OUT: usize = 20;
 
 /// The page of `screen --dry-run`.
 pub(crate) fn dry_run_page(run: &DryRun) -> String {
-    let mut page = vec![sizes(run), cost(run), coverage(run), cautions(run)];
+    let mut page = vec![
+        sizes(run),
+        cost(run),
+        coverage(run),
+        pairs(run),
+        cautions(run),
+    ];
     page.retain(|part| !part.is_empty());
     page.join("\n\n")
 }
@@ -43,7 +50,7 @@ fn cost(run: &DryRun) -> String {
         rows,
     );
     format!(
-        "{table}\n(from {} cells that were scored)",
+        "{table}\n(time and disk from {} of its cells that were scored, memory from what other campaigns took)",
         count(run.cells_scored)
     )
 }
@@ -81,30 +88,68 @@ fn coverage(run: &DryRun) -> String {
     format!("{heading}\n{}{more}", table(&columns, rows))
 }
 
+fn pairs(run: &DryRun) -> String {
+    if run.pairs_not_covered.is_empty() {
+        return String::new();
+    }
+    let heading = format!(
+        "Not covered together, of {} pairs of substrate and electrophile",
+        count(run.pairs_looked_at)
+    );
+    let rows = run.pairs_not_covered.iter().map(|known| {
+        vec![
+            count(known.pairs),
+            format!("{} with {}", known.substrate, known.electrophile),
+            known.reason.clone(),
+        ]
+    });
+    let columns = [
+        ("pairs", Side::Right),
+        ("one of them", Side::Left),
+        ("why", Side::Left),
+    ];
+    format!("{heading}\n{}", table(&columns, rows))
+}
+
+/// A row for each category, with the cells in which it stops and in which it warns.
 fn cautions(run: &DryRun) -> String {
     let heading = format!(
-        "Severe cautions in {} cells that were looked at",
+        "Severe cautions in {} cells that were looked at; a category counts at its own severity",
         count(run.cells_looked_at)
     );
     if run.cautions.is_empty() {
         return format!("{heading}: none; that never means that there is no hazard");
     }
-    let rows = run.cautions.iter().map(|known| {
-        let share = known.cells as f64 / run.cells_looked_at.max(1) as f64;
-        vec![
-            known.severity.name().to_owned(),
-            known
-                .category
-                .map_or("any", |category| category.name())
-                .to_owned(),
-            count(known.cells),
-            percent(Some(share)),
-        ]
+    let cells = |category: Option<Category>, severity: Severity| {
+        let mut counts = run.cautions.iter();
+        let known = counts.find(|known| (known.category, known.severity) == (category, severity));
+        known.map_or(0, |known| known.cells)
+    };
+    let severe = |category| {
+        let [stop, warning] = [Severity::Stop, Severity::Warning];
+        (cells(category, stop), cells(category, warning))
+    };
+    let mut categories: Vec<_> = Category::ALL
+        .into_iter()
+        .map(|category| (category.name(), severe(Some(category))))
+        .filter(|(_, counts)| *counts != (0, 0))
+        .collect();
+    categories.sort_by_key(|(_, counts)| std::cmp::Reverse(*counts));
+    let all = ("any, each cell once", severe(None));
+    let of = |cells: u64| {
+        let share = cells as f64 / run.cells_looked_at.max(1) as f64;
+        [count(cells), percent(Some(share))]
+    };
+    let rows = std::iter::once(all).chain(categories);
+    let rows = rows.map(|(name, (stop, warning))| {
+        let counts = [of(stop), of(warning)].concat();
+        std::iter::once(name.to_owned()).chain(counts).collect()
     });
     let columns = [
-        ("severest caution", Side::Left),
         ("category", Side::Left),
-        ("cells", Side::Right),
+        ("stop", Side::Right),
+        ("share", Side::Right),
+        ("warning", Side::Right),
         ("share", Side::Right),
     ];
     format!("{heading}\n{}", table(&columns, rows))

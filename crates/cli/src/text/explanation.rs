@@ -1,11 +1,12 @@
 //! Everything about one cell, as a page.
 
 use enolattice_engine::CellDescription;
+use enolattice_grid::MeasuredYield;
 use enolattice_model::{CoursePoint, Explanation};
 
 use super::numbers::{fixed, percent, short, temperatures};
 use super::safety_notice;
-use super::sites::site_table;
+use super::sites::{reasons, site_table};
 use super::table::{Side, table, wrapped};
 use crate::json::SiteRecord;
 
@@ -13,9 +14,10 @@ use crate::json::SiteRecord;
 pub(crate) fn explanation_page(cell: &CellDescription, told: &Explanation) -> String {
     let sections = [
         ("Cell", cell_section(cell)),
-        ("Numbers", numbers(told)),
+        ("Numbers", numbers(cell, told)),
         ("Product", product(told)),
         ("Acidic sites", sites(told)),
+        ("Why these pKa", why(told)),
         ("Rates", rates(told)),
         ("Losses (of the substrate charged)", losses(told)),
         (
@@ -100,28 +102,54 @@ fn with_smiles(name: &str, smiles: &str) -> String {
     }
 }
 
-fn numbers(told: &Explanation) -> String {
+fn numbers(cell: &CellDescription, told: &Explanation) -> String {
     let uncertain = told
         .yield_sigma
         .map_or_else(String::new, |sigma| format!(" ± {}", percent(Some(sigma))));
-    pairs(vec![
-        (
-            "expected yield",
-            format!("{}{uncertain}", percent(told.expected_yield)),
-        ),
+    let mut lines = vec![(
+        "expected yield",
+        format!("{}{uncertain}", percent(told.expected_yield)),
+    )];
+    lines.extend(
+        cell.measured
+            .as_ref()
+            .map(|known| ("measured yield", measured(known))),
+    );
+    lines.extend([
         ("yield on limiting", percent(told.yield_on_limiting)),
         ("p_hit", percent(told.p_hit)),
         ("feasibility", percent(told.feasibility)),
         ("selectivity", percent(told.selectivity)),
         ("reference yield", percent(told.reference_yield)),
         ("fast yield", percent(told.fast_yield)),
-        ("log10 K", fixed(told.log10_k, 2)),
+        ("log10 K", log10_k(told)),
         (
             "ΔG° deprotonation",
             with_unit(told.delta_g_deprotonation_kj_mol, 1, "kJ/mol"),
         ),
         ("enolate fraction", percent(told.enolate_fraction)),
-    ])
+    ]);
+    pairs(lines)
+}
+
+/// A yield as the laboratory has measured it, with what it says of it.
+fn measured(known: &MeasuredYield) -> String {
+    let mut text = percent(Some(known.yield_fraction));
+    if known.sigma.is_some() {
+        text += &format!(" ± {}", percent(known.sigma));
+    }
+    if !known.note.is_empty() {
+        text += &format!(" ({})", known.note);
+    }
+    text
+}
+
+/// log10 K of the deprotonation at the temperature of the reaction, with its uncertainty.
+fn log10_k(told: &Explanation) -> String {
+    let uncertain = told
+        .log10_k_sigma
+        .map_or_else(String::new, |sigma| format!(" ± {}", fixed(Some(sigma), 1)));
+    format!("{}{uncertain}", fixed(told.log10_k, 2))
 }
 
 fn with_unit(number: Option<f64>, decimals: usize, unit: &str) -> String {
@@ -156,6 +184,16 @@ fn sites(told: &Explanation) -> String {
         "  none known".to_owned()
     } else {
         indented(&site_table(&records, true))
+    }
+}
+
+/// Terms and neighbours of each estimated site, the source of each measured one.
+fn why(told: &Explanation) -> String {
+    let sites = told.sites.iter().cloned().map(SiteRecord::from);
+    let blocks: Vec<String> = sites.map(|site| reasons(&site, true)).collect();
+    match blocks.is_empty() {
+        true => "  no site is known".to_owned(),
+        false => blocks.join("\n\n"),
     }
 }
 

@@ -1,5 +1,7 @@
 //! A filter tied to a campaign: every test of an axis is a table of answers by value.
 
+use std::collections::HashMap;
+
 use enolattice_grid::{Campaign, CellDigits};
 use enolattice_model::{Addition, Category, Channel, Score, Severity};
 
@@ -35,6 +37,12 @@ enum Question {
     /// A comparison of a fraction; no value: it is known.
     Fraction {
         of: fn(&Score) -> Option<f64>,
+        operator: Operator,
+        with: Option<f64>,
+    },
+    /// The same of the yield that was measured.
+    Measured {
+        yields: HashMap<CellDigits, f64>,
         operator: Operator,
         with: Option<f64>,
     },
@@ -93,10 +101,12 @@ impl Question {
                 digits: (first, second),
                 passes,
             } => passes[first(digits) as usize][second(digits) as usize],
-            Question::Fraction { of, operator, with } => match (of(score), with) {
-                (Some(value), Some(with)) => operator.holds(value, *with),
-                (value, _) => value.is_some() && with.is_none(),
-            },
+            Question::Fraction { of, operator, with } => compares(of(score), *operator, *with),
+            Question::Measured {
+                yields,
+                operator,
+                with,
+            } => compares(yields.get(digits).copied(), *operator, *with),
             Question::LargestLoss { passes } => {
                 let number = score.largest_loss.map_or(0, |channel| channel as u32);
                 passes >> number & 1 == 1
@@ -108,6 +118,14 @@ impl Question {
                 level.is_some_and(|level| operator.holds(level, *with))
             }
         }
+    }
+}
+
+/// Whether a number that may be unknown compares so; without a value to compare with, whether it is known.
+fn compares(value: Option<f64>, operator: Operator, with: Option<f64>) -> bool {
+    match (value, with) {
+        (Some(value), Some(with)) => operator.holds(value, with),
+        (value, with) => value.is_some() && with.is_none(),
     }
 }
 
@@ -195,6 +213,16 @@ fn bind_test(test: &Test, campaign: &Campaign) -> Result<Question, Fault> {
         Field::PHit => fraction(test, |score| score.p_hit),
         Field::Selectivity => fraction(test, |score| score.selectivity),
         Field::Feasibility => fraction(test, |score| score.feasibility),
+        Field::MeasuredYield => {
+            let measured = campaign.measured.iter();
+            Question::Measured {
+                yields: measured
+                    .map(|(cell, known)| (*cell, known.yield_fraction))
+                    .collect(),
+                operator: test.operator,
+                with: number(test),
+            }
+        }
         Field::LargestLoss => {
             let none = u32::from(test.operator == Operator::NotEqual);
             let passes = Channel::ALL
@@ -296,14 +324,18 @@ fn addition(test: &Test, campaign: &Campaign) -> Question {
 }
 
 fn fraction(test: &Test, of: fn(&Score) -> Option<f64>) -> Question {
-    let with = match test.value {
-        Value::Number(number) => Some(number),
-        _ => None,
-    };
     Question::Fraction {
         of,
         operator: test.operator,
-        with,
+        with: number(test),
+    }
+}
+
+/// The number that is compared with; none where it is only asked whether there is one.
+fn number(test: &Test) -> Option<f64> {
+    match test.value {
+        Value::Number(number) => Some(number),
+        _ => None,
     }
 }
 

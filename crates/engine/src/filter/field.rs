@@ -19,6 +19,7 @@ pub(super) enum Field {
     TimeH,
     DosingMin,
     Addition,
+    MeasuredYield,
     ExpectedYield,
     PHit,
     Selectivity,
@@ -35,7 +36,7 @@ pub(super) enum Kind {
     Name,
     /// Any finite number.
     Number,
-    /// A number from 0 to 1, unknown where the model does not cover the cell.
+    /// A number from 0 to 1, which may be unknown.
     Fraction,
     /// A set of names.
     Set,
@@ -44,7 +45,7 @@ pub(super) enum Kind {
 }
 
 impl Field {
-    pub(super) const ALL: [(Field, &'static str, Kind); 21] = [
+    pub(super) const ALL: [(Field, &'static str, Kind); 22] = [
         (Field::Substrate, "substrate", Kind::Name),
         (Field::Base, "base", Kind::Name),
         (Field::Electrophile, "electrophile", Kind::Name),
@@ -63,6 +64,8 @@ impl Field {
         (Field::TimeH, "time_h", Kind::Number),
         (Field::DosingMin, "dosing_min", Kind::Number),
         (Field::Addition, "addition", Kind::Name),
+        // of names that are equally near to a misspelt one the last is offered: `yield` is expected
+        (Field::MeasuredYield, "measured_yield", Kind::Fraction),
         (Field::ExpectedYield, "expected_yield", Kind::Fraction),
         (Field::PHit, "p_hit", Kind::Fraction),
         (Field::Selectivity, "selectivity", Kind::Fraction),

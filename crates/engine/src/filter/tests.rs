@@ -24,7 +24,15 @@ library = ["THF", "DMF"]
 [conditions]
 temperature_c = [-78, 25]
 formation_temperature_c = -78
+[measured]
+file = "yields.csv"
 "#;
+
+/// Two of the 48 cells.
+const YIELDS: &str = "substrate,base,electrophile,solvent,temperature_c,yield_fraction
+CC(=O)c1ccccc1,LDA,MeI,THF,-78,0.85
+CC(=O)c1ccccc1,LDA,MeI,THF,25,0.4
+";
 
 fn grid() -> &'static Grid {
     static GRID: OnceLock<Grid> = OnceLock::new();
@@ -32,7 +40,7 @@ fn grid() -> &'static Grid {
         let sources = Sources {
             campaign_name: "c.toml".into(),
             campaign: CAMPAIGN.into(),
-            files: BTreeMap::new(),
+            files: BTreeMap::from([("yields.csv".to_owned(), YIELDS.into())]),
         };
         let spec = enolattice_grid::read(&sources).sound().expect("reads");
         let model = Arc::new(Model::new(Arc::new(Library::builtin().expect("library"))));
@@ -167,6 +175,19 @@ fn scores_are_compared() {
             if passes { 48 } else { 0 },
             "{filter}"
         );
+    }
+}
+
+#[test]
+fn measured_yields_are_those_of_their_cells() {
+    for (filter, cells) in [
+        ("measured_yield:*", 2),
+        ("NOT measured_yield:*", 46),
+        ("measured_yield >= 0.5", 1),
+        ("measured_yield >= 0.5 AND temperature_c = 25", 0),
+        ("measured_yield != 0.85", 1),
+    ] {
+        assert_eq!(passing(filter, &score()), cells, "{filter}");
     }
 }
 

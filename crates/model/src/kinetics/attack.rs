@@ -9,6 +9,9 @@ use crate::parameters::P;
 use crate::prepared::CarbonSite;
 use crate::rates::{self, Nucleophile};
 
+/// pKa (DMSO) of ethanol: Bordwell 1988 (from memory).
+const PKA_ETHANOL: f64 = 29.8;
+
 impl<'a> Kinetics<'a> {
     /// Whether the bond-forming step gives the base back: the adduct's anion is about as strong a base
     /// as the carbanion was.
@@ -94,12 +97,20 @@ impl<'a> Kinetics<'a> {
         if !is_carbonyl || nucleophile.class == AnionClass::Neutral {
             0.0
         } else if self.medium.is_protic() {
-            self.v(P::CARBONYL_PROTIC)
+            self.v(P::CARBONYL_PROTIC) + self.acid_catalysis()
         } else if self.medium.binds_oxygen() {
             self.v(P::CARBONYL_METAL)
         } else {
             0.0
         }
+    }
+
+    /// What a carbonyl group gains, log10, in a solvent that is a stronger acid than an alcohol: carboxylic acids
+    /// bring about condensations by general acid catalysis.
+    fn acid_catalysis(&self) -> f64 {
+        let acid = self.cell.solvent.record.acid.as_ref();
+        let stronger = acid.map_or(0.0, |(acid, _)| (PKA_ETHANOL - acid.value).max(0.0));
+        self.v(P::CARBONYL_ACID) * stronger
     }
 
     /// What acyl transfer from an ester loses, log10, because the tetrahedral adduct gives back a nucleophile that is a

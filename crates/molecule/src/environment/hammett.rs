@@ -1,6 +1,6 @@
 //! Substituent constants: Hammett σ through an aromatic ring, Charton σI through single bonds.
 
-use super::group::{Group, beyond, group};
+use super::group::{Group, beyond, double_bonded, group};
 use crate::{Bond, Molecule};
 
 /// How the reaction centre is joined to the ring, hence which para constants apply.
@@ -103,6 +103,7 @@ fn position_sigmas(molecule: &Molecule, ipso: usize, conjugation: Conjugation) -
         let atom = ring[(start + step) % 6];
         let distance = step.min(6 - step);
         ring_nitrogen(molecule, atom, distance)
+            + ring_carbonyl(molecule, atom, distance, conjugation)
             + substituents(molecule, ring, atom, distance, conjugation)
     })
 }
@@ -144,6 +145,23 @@ pub(crate) fn aza_beside(molecule: &Molecule, ipso: usize) -> bool {
             let bonds = molecule.neighbours(*other).len() + usize::from(atom.hydrogens);
             atom.element == 7 && atom.aromatic && bonds == 2
         })
+}
+
+/// σ of a ring carbonyl that the site reaches through the double bond between (chromones, coumarins, pyrones, pyridones):
+/// 4-methylcoumarin loses its γ proton to metal amides, 4-hydroxycoumarin is a vinylogous acid (pKa 4.1 in water, from memory).
+const RING_CARBONYL: f64 = 1.5;
+
+fn ring_carbonyl(
+    molecule: &Molecule,
+    atom: usize,
+    distance: usize,
+    conjugation: Conjugation,
+) -> f64 {
+    let reached = conjugation == Conjugation::Direct && distance == 2;
+    match reached && double_bonded(molecule, atom, 8).is_some() {
+        true => RING_CARBONYL,
+        false => 0.0,
+    }
 }
 
 fn ring_nitrogen(molecule: &Molecule, atom: usize, distance: usize) -> f64 {

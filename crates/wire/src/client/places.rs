@@ -41,6 +41,7 @@ fn written(field: &str, campaign: &CampaignSpec) -> Option<Place> {
         "electrophiles.reagents" => &campaign.electrophiles.entries.get(index)?.place,
         "solvents.media" => &campaign.solvents.entries.get(index)?.place,
         "additives.sets" => &campaign.additives.entries.get(index)?.place,
+        "measured" => &campaign.measured.get(index)?.place,
         _ => return None,
     };
     Some(match value.strip_prefix('.') {
@@ -72,7 +73,7 @@ mod tests {
     use super::*;
     use crate::bad_field;
     use crate::v1::ErrorReason;
-    use enolattice_grid::{AxisSpec, SubstrateEntry};
+    use enolattice_grid::{AxisSpec, MeasuredEntry, SubstrateEntry};
 
     fn place(file: &str, line: u32, field: &str) -> Place {
         Place {
@@ -97,6 +98,10 @@ mod tests {
                 all: false,
                 entries: vec![base],
             },
+            measured: vec![MeasuredEntry {
+                place: place("y.csv", 2, ""),
+                ..Default::default()
+            }],
             ..Default::default()
         }
     }
@@ -110,6 +115,7 @@ mod tests {
             fault("campaign.bases.reagents[0]"),
             fault("campaign.conditions.time_h[2]"),
             fault("campaign.bases.reagents[9]"),
+            fault("campaign.measured[0].yield_fraction"),
         ];
         let places: Vec<_> = relocate(faults, &campaign())
             .into_iter()
@@ -123,6 +129,7 @@ mod tests {
                 place("c.toml", 4, "bases.library[0]"),
                 place("s.csv", 2, "smiles"),
                 place("s.csv", 3, "pka_dmso"),
+                place("y.csv", 2, "yield_fraction"),
             ]
         );
     }

@@ -12,7 +12,7 @@ const PART_BYTES: usize = MAX_MESSAGE_BYTES / 4;
 pub(super) enum Upload {
     /// In one message.
     One(Box<v1::SubmitJobRequest>),
-    /// As a header and chunks of its large axes.
+    /// As a header and chunks of its large lists.
     Stream(Vec<v1::SubmitJobStreamRequest>),
 }
 
@@ -21,25 +21,33 @@ pub(super) fn parts(mut request: v1::SubmitJobRequest) -> Upload {
     if request.encoded_len() <= MAX_MESSAGE_BYTES {
         return Upload::One(Box::new(request));
     }
-    let (mut substrates, mut electrophiles) = (Vec::new(), Vec::new());
+    let (mut substrates, mut electrophiles, mut measured) = (Vec::new(), Vec::new(), Vec::new());
     if let Some(campaign) = &mut request.campaign {
         substrates = std::mem::take(&mut campaign.substrates);
+        measured = std::mem::take(&mut campaign.measured);
         if let Some(axis) = &mut campaign.electrophiles {
             electrophiles = std::mem::take(&mut axis.reagents);
         }
     }
     let mut parts = vec![part(Part::Header(request))];
+    let mut send = |chunk| parts.push(part(Part::Chunk(chunk)));
     for substrates in runs(substrates) {
-        parts.push(part(Part::Chunk(v1::AxisChunk {
+        send(v1::AxisChunk {
             substrates,
-            electrophiles: vec![],
-        })));
+            ..Default::default()
+        });
     }
     for electrophiles in runs(electrophiles) {
-        parts.push(part(Part::Chunk(v1::AxisChunk {
-            substrates: vec![],
+        send(v1::AxisChunk {
             electrophiles,
-        })));
+            ..Default::default()
+        });
+    }
+    for measured in runs(measured) {
+        send(v1::AxisChunk {
+            measured,
+            ..Default::default()
+        });
     }
     Upload::Stream(parts)
 }
@@ -69,15 +77,20 @@ fn runs<M: Message>(values: Vec<M>) -> Vec<Vec<M>> {
 mod tests {
     use super::*;
 
-    fn request(substrates: usize) -> v1::SubmitJobRequest {
+    fn request(rows: usize) -> v1::SubmitJobRequest {
         let substrate = |i| v1::Substrate {
             name: format!("substrate {i}"),
             smiles: "C".repeat(1000),
             ..Default::default()
         };
+        let measured = |i| v1::MeasuredYield {
+            substrate: format!("substrate {i}"),
+            ..Default::default()
+        };
         v1::SubmitJobRequest {
             campaign: Some(v1::Campaign {
-                substrates: (0..substrates).map(substrate).collect(),
+                substrates: (0..rows).map(substrate).collect(),
+                measured: (0..rows).map(measured).collect(),
                 ..Default::default()
             }),
             ..Default::default()
@@ -95,14 +108,16 @@ mod tests {
             panic!("20 MB do not fit into a message");
         };
         assert!(matches!(parts[0].part, Some(Part::Header(_))));
-        let mut names = Vec::new();
+        let (mut names, mut measured) = (Vec::new(), Vec::new());
         for part in parts {
             assert!(part.encoded_len() <= MAX_MESSAGE_BYTES / 2);
             if let Some(Part::Chunk(chunk)) = part.part {
                 names.extend(chunk.substrates.into_iter().map(|substrate| substrate.name));
+                measured.extend(chunk.measured.into_iter().map(|row| row.substrate));
             }
         }
         let expected: Vec<_> = (0..20_000).map(|i| format!("substrate {i}")).collect();
         assert_eq!(names, expected);
+        assert_eq!(measured, expected);
     }
 }

@@ -1,7 +1,7 @@
 //! Acidic sites.
 
-use enolattice_engine::SiteReport;
-use enolattice_model::{AcidSite, Contribution};
+use enolattice_engine::{ReasonedSite, SiteReport};
+use enolattice_model::{AcidSite, Contribution, Neighbour, SiteReasons, Term};
 use enolattice_molecule::AnionClass;
 
 use super::{ConversionError, enums, numbers};
@@ -28,8 +28,9 @@ impl TryFrom<v1::MoleculeSites> for SiteReport {
     }
 }
 
-impl From<&AcidSite> for v1::AcidSite {
-    fn from(site: &AcidSite) -> Self {
+impl From<&ReasonedSite> for v1::AcidSite {
+    fn from(reasoned: &ReasonedSite) -> Self {
+        let site = &reasoned.site;
         v1::AcidSite {
             atom: numbers::index_to_wire(site.atom),
             element: site.element.into(),
@@ -46,16 +47,18 @@ impl From<&AcidSite> for v1::AcidSite {
             origin: v1::AcidityOrigin::from(site.origin).into(),
             source: site.source.clone(),
             outside_fit: site.outside,
+            reasons: reasons_to_wire(&reasoned.reasons),
         }
     }
 }
 
-impl TryFrom<v1::AcidSite> for AcidSite {
+impl TryFrom<v1::AcidSite> for ReasonedSite {
     type Error = ConversionError;
 
     fn try_from(site: v1::AcidSite) -> Result<Self, ConversionError> {
         let equivalent = site.equivalent_atoms.into_iter();
-        Ok(AcidSite {
+        let reasons = reasons_from_wire(site.reasons)?;
+        let site = AcidSite {
             atom: numbers::from_wire("AcidSite.atom", site.atom)?,
             element: numbers::from_wire("AcidSite.element", site.element)?,
             hydrogens: numbers::from_wire("AcidSite.hydrogens", site.hydrogens)?,
@@ -78,6 +81,76 @@ impl TryFrom<v1::AcidSite> for AcidSite {
             outside: site.outside_fit,
             // How an estimate hangs on the coefficients stays with the engine that draws them.
             contribution: Contribution::default(),
+        };
+        Ok(ReasonedSite { site, reasons })
+    }
+}
+
+/// Nothing where there are no reasons: a measured value.
+pub(super) fn reasons_to_wire(reasons: &SiteReasons) -> Option<v1::AcidityReasons> {
+    (*reasons != SiteReasons::default()).then(|| v1::AcidityReasons {
+        terms: reasons.terms.iter().map(Into::into).collect(),
+        neighbours: reasons.neighbours.iter().map(Into::into).collect(),
+    })
+}
+
+pub(super) fn reasons_from_wire(
+    reasons: Option<v1::AcidityReasons>,
+) -> Result<SiteReasons, ConversionError> {
+    let reasons = reasons.unwrap_or_default();
+    let neighbours = reasons.neighbours.into_iter().map(TryInto::try_into);
+    Ok(SiteReasons {
+        terms: reasons.terms.into_iter().map(Into::into).collect(),
+        neighbours: neighbours.collect::<Result<_, _>>()?,
+    })
+}
+
+impl From<&Term> for v1::AcidityTerm {
+    fn from(term: &Term) -> Self {
+        v1::AcidityTerm {
+            name: term.name.clone(),
+            contribution: term.contribution,
+            standard_error: term.standard_error,
+        }
+    }
+}
+
+impl From<v1::AcidityTerm> for Term {
+    fn from(term: v1::AcidityTerm) -> Self {
+        Term {
+            name: term.name,
+            contribution: term.contribution,
+            standard_error: term.standard_error,
+        }
+    }
+}
+
+impl From<&Neighbour> for v1::AcidityNeighbour {
+    fn from(near: &Neighbour) -> Self {
+        v1::AcidityNeighbour {
+            smiles: near.smiles.clone(),
+            atom: numbers::index_to_wire(near.atom),
+            pka_dmso: near.pka_dmso,
+            residual: near.residual,
+            held_out_error: near.held_out_error,
+            similarity: near.similarity,
+            source: near.source.clone(),
+        }
+    }
+}
+
+impl TryFrom<v1::AcidityNeighbour> for Neighbour {
+    type Error = ConversionError;
+
+    fn try_from(near: v1::AcidityNeighbour) -> Result<Self, ConversionError> {
+        Ok(Neighbour {
+            smiles: near.smiles,
+            atom: numbers::from_wire("AcidityNeighbour.atom", near.atom)?,
+            pka_dmso: near.pka_dmso,
+            residual: near.residual,
+            held_out_error: near.held_out_error,
+            similarity: near.similarity,
+            source: near.source,
         })
     }
 }
@@ -167,8 +240,33 @@ mod tests {
                 outside: true,
                 contribution: Contribution::default(),
             };
-            let back = AcidSite::try_from(v1::AcidSite::from(&site)).expect("converts");
-            assert_eq!(format!("{back:?}"), format!("{site:?}"));
+            let reasoned = ReasonedSite {
+                site,
+                reasons: SiteReasons {
+                    terms: vec![Term {
+                        name: "nitrile".into(),
+                        contribution: -20.5,
+                        standard_error: 0.5,
+                    }],
+                    neighbours: vec![Neighbour {
+                        smiles: "CC#N".into(),
+                        atom: 0,
+                        pka_dmso: 31.3,
+                        residual: 0.25,
+                        held_out_error: -0.5,
+                        similarity: 1.0,
+                        source: "bordwell".into(),
+                    }],
+                },
+            };
+            let back = ReasonedSite::try_from(v1::AcidSite::from(&reasoned)).expect("converts");
+            assert_eq!(format!("{back:?}"), format!("{reasoned:?}"));
         }
+    }
+
+    #[test]
+    fn a_measured_site_sends_no_reasons() {
+        assert_eq!(reasons_to_wire(&SiteReasons::default()), None);
+        assert_eq!(reasons_from_wire(None).ok(), Some(SiteReasons::default()));
     }
 }

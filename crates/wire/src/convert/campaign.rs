@@ -5,12 +5,12 @@
 
 use enolattice_engine::Submission;
 use enolattice_grid::{
-    AxisSpec, CampaignSpec, ConditionsSpec, Entry, InputError, LibraryTable, Place, SubstrateEntry,
-    TargetSpec,
+    AxisSpec, CampaignSpec, ConditionsSpec, Entry, InputError, LibraryTable, MeasuredEntry, Place,
+    SubstrateEntry, TargetSpec,
 };
 
 use super::cell::{addition_from_name, addition_from_wire};
-use super::{media, stock};
+use super::{measured, media, stock};
 use crate::v1::{self, ErrorReason};
 use crate::{MAX_REQUEST_ID_BYTES, bad_field};
 
@@ -57,6 +57,13 @@ pub fn submission(request: v1::SubmitJobRequest) -> (Submission, Vec<InputError>
 fn campaign_message(spec: &CampaignSpec) -> Result<v1::Campaign, Vec<InputError>> {
     let mut faults = Vec::new();
     let conditions = conditions_message(&spec.conditions, &mut faults);
+    let mut yields = Vec::with_capacity(spec.measured.len());
+    for (i, entry) in spec.measured.iter().enumerate() {
+        match measured::to_wire(entry, &format!("measured[{i}]")) {
+            Ok(row) => yields.push(row),
+            Err(found) => faults.extend(found),
+        }
+    }
     if !faults.is_empty() {
         return Err(faults);
     }
@@ -84,6 +91,7 @@ fn campaign_message(spec: &CampaignSpec) -> Result<v1::Campaign, Vec<InputError>
         }),
         notes: spec.notes.clone(),
         library: spec.library.iter().map(table_message).collect(),
+        measured: yields,
     })
 }
 
@@ -106,7 +114,22 @@ fn campaign(campaign: v1::Campaign, faults: &mut Vec<InputError>) -> CampaignSpe
         },
         notes: campaign.notes,
         library: campaign.library.into_iter().map(table).collect(),
+        measured: measured_yields(campaign.measured, faults),
     }
+}
+
+fn measured_yields(
+    rows: Vec<v1::MeasuredYield>,
+    faults: &mut Vec<InputError>,
+) -> Vec<MeasuredEntry> {
+    let mut entries = Vec::with_capacity(rows.len());
+    for (i, row) in rows.into_iter().enumerate() {
+        match measured::from_wire(row, &format!("measured[{i}]")) {
+            Ok(entry) => entries.push(entry),
+            Err(found) => faults.extend(found),
+        }
+    }
+    entries
 }
 
 fn table_message(table: &LibraryTable) -> v1::LibraryTable {
@@ -353,6 +376,33 @@ mod tests {
                     name: "own_bases.tsv".into(),
                     text: "# table: bases\n".into(),
                 }],
+                measured: vec![
+                    MeasuredEntry {
+                        substrate: "propionitrile".into(),
+                        base: "LDA".into(),
+                        electrophile: "MeI".into(),
+                        solvent: "THF".into(),
+                        temperature_c: Some(-20.0),
+                        yield_fraction: Some(0.62),
+                        place: at("measured[0]".into()),
+                        ..MeasuredEntry::default()
+                    },
+                    MeasuredEntry {
+                        additive: "HMPA".into(),
+                        formation_temperature_c: Some(-78.0),
+                        base_equiv: Some(1.05),
+                        electrophile_equiv: Some(1.3),
+                        additive_equiv: Some(2.0),
+                        concentration_m: Some(0.25),
+                        time_h: Some(12.0),
+                        dosing_min: Some(5.0),
+                        addition: "all together".into(),
+                        sigma: Some(0.03),
+                        note: "by NMR".into(),
+                        place: at("measured[1]".into()),
+                        ..MeasuredEntry::default()
+                    },
+                ],
             },
             request_id: "a-request".into(),
             validate_only: true,

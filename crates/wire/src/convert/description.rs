@@ -1,6 +1,7 @@
 //! What a cell is made of.
 
 use enolattice_engine::CellDescription;
+use enolattice_grid::MeasuredYield;
 use enolattice_model::{Conditions, Explanation};
 
 use super::{ConversionError, conditions, media, numbers};
@@ -60,6 +61,11 @@ impl From<&CellDescription> for v1::CellDescription {
                 cell.additive_equiv,
                 &cell.addition,
             )),
+            measured: cell.measured.as_ref().map(|known| v1::CellMeasurement {
+                yield_fraction: known.yield_fraction,
+                sigma: known.sigma,
+                note: known.note.clone(),
+            }),
         }
     }
 }
@@ -91,6 +97,11 @@ impl TryFrom<v1::CellDescription> for CellDescription {
             time_h: conditions.time_h,
             dosing_min: conditions.dosing_min,
             addition,
+            measured: cell.measured.map(|known| MeasuredYield {
+                yield_fraction: known.yield_fraction,
+                sigma: known.sigma,
+                note: known.note,
+            }),
         })
     }
 }
@@ -119,12 +130,18 @@ mod tests {
             time_h: 12.0,
             dosing_min: 5.0,
             addition: "all together".into(),
+            measured: Some(MeasuredYield {
+                yield_fraction: 0.62,
+                sigma: Some(0.03),
+                note: "by NMR".into(),
+            }),
         };
         for cell in [
             CellDescription {
                 cell: None,
                 additive: None,
                 additive_equiv: None,
+                measured: None,
                 ..cell.clone()
             },
             cell,

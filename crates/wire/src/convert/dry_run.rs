@@ -1,7 +1,7 @@
 //! What a campaign would take.
 
 use enolattice_engine::{Axis, AxisSize, DryRun, Job, NotCovered};
-use enolattice_grid::CautionCount;
+use enolattice_grid::{CautionCount, PairsNotCovered};
 use enolattice_model::{Category, Severity};
 
 use super::{ConversionError, enums, numbers};
@@ -27,6 +27,12 @@ impl From<&DryRun> for v1::Job {
                 .into(),
             cells: numbers::to_wire(count.cells),
         };
+        let pairs = |known: &PairsNotCovered| v1::PairsNotCovered {
+            why: known.reason.clone(),
+            pairs: numbers::to_wire(known.pairs),
+            substrate: known.substrate.clone(),
+            electrophile: known.electrophile.clone(),
+        };
         v1::Job {
             dry_run: Some(v1::DryRun {
                 axes: run.axes.iter().map(axis).collect(),
@@ -38,6 +44,8 @@ impl From<&DryRun> for v1::Job {
                 not_covered: run.not_covered.iter().map(not_covered).collect(),
                 cells_looked_at: numbers::to_wire(run.cells_looked_at),
                 cautions: run.cautions.iter().map(caution).collect(),
+                pairs_looked_at: numbers::to_wire(run.pairs_looked_at),
+                pairs_not_covered: run.pairs_not_covered.iter().map(pairs).collect(),
             }),
             ..v1::Job::from(&run.job)
         }
@@ -77,6 +85,12 @@ impl TryFrom<v1::Job> for DryRun {
                 .into_iter()
                 .map(not_covered)
                 .collect::<Result<_, _>>()?,
+            pairs_looked_at: numbers::from_wire("DryRun.pairs_looked_at", run.pairs_looked_at)?,
+            pairs_not_covered: run
+                .pairs_not_covered
+                .into_iter()
+                .map(pairs)
+                .collect::<Result<_, _>>()?,
             cells_looked_at: numbers::from_wire("DryRun.cells_looked_at", run.cells_looked_at)?,
             cautions: run
                 .cautions
@@ -93,6 +107,15 @@ fn not_covered(known: v1::NotCovered) -> Result<NotCovered, ConversionError> {
         name: known.name,
         reason: known.why,
         cells: numbers::from_wire("NotCovered.cells", known.cells)?,
+    })
+}
+
+fn pairs(known: v1::PairsNotCovered) -> Result<PairsNotCovered, ConversionError> {
+    Ok(PairsNotCovered {
+        reason: known.why,
+        pairs: numbers::from_wire("PairsNotCovered.pairs", known.pairs)?,
+        substrate: known.substrate,
+        electrophile: known.electrophile,
     })
 }
 
@@ -149,6 +172,13 @@ mod tests {
                 name: "bromobenzene".into(),
                 reason: "aryl".into(),
                 cells: 99,
+            }],
+            pairs_looked_at: 100_001,
+            pairs_not_covered: vec![PairsNotCovered {
+                reason: "no product".into(),
+                pairs: 11,
+                substrate: "propionitrile".into(),
+                electrophile: "water".into(),
             }],
             cells_looked_at: 1 << 20,
             cautions: vec![

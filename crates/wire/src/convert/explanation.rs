@@ -5,6 +5,7 @@ use enolattice_model::{
     Severity,
 };
 
+use super::acidity::{reasons_from_wire, reasons_to_wire};
 use super::{ConversionError, enums, numbers};
 use crate::v1;
 
@@ -26,6 +27,7 @@ impl From<&Explanation> for v1::Explanation {
             condensation_smiles: e.condensation_smiles.clone(),
             delta_g_deprotonation_kj_mol: e.delta_g_deprotonation_kj_mol,
             log10_k: e.log10_k,
+            log10_k_sigma: e.log10_k_sigma,
             enolate_fraction: e.enolate_fraction,
             sites: e.sites.iter().map(Into::into).collect(),
             rates: e.rates.iter().map(Into::into).collect(),
@@ -59,6 +61,7 @@ impl TryFrom<v1::Explanation> for Explanation {
             condensation_smiles: e.condensation_smiles,
             delta_g_deprotonation_kj_mol: e.delta_g_deprotonation_kj_mol,
             log10_k: e.log10_k,
+            log10_k_sigma: e.log10_k_sigma,
             enolate_fraction: e.enolate_fraction,
             sites: e
                 .sites
@@ -93,8 +96,9 @@ fn loss_from(loss: &v1::Loss) -> Result<(Channel, f64), ConversionError> {
     Ok((channel, loss.fraction))
 }
 
-const MOLECULES: [(&str, v1::CellMolecule); 5] = [
+const MOLECULES: [(&str, v1::CellMolecule); 6] = [
     ("substrate", v1::CellMolecule::Substrate),
+    ("substrate anion", v1::CellMolecule::SubstrateAnion),
     ("product", v1::CellMolecule::Product),
     ("electrophile", v1::CellMolecule::Electrophile),
     ("solvent", v1::CellMolecule::Solvent),
@@ -116,6 +120,7 @@ impl From<&ExplainedSite> for v1::ExplainedSite {
             sigma: site.sigma,
             origin: v1::AcidityOrigin::from(site.origin).into(),
             source: site.source.clone(),
+            reasons: reasons_to_wire(&site.reasons),
         }
     }
 }
@@ -145,6 +150,7 @@ impl TryFrom<v1::ExplainedSite> for ExplainedSite {
                 site.origin,
             )?,
             source: site.source,
+            reasons: reasons_from_wire(site.reasons)?,
         })
     }
 }
@@ -262,7 +268,7 @@ impl From<v1::Advice> for Advice {
 #[cfg(test)]
 mod tests {
     use super::*;
-    use enolattice_model::Origin;
+    use enolattice_model::{Origin, SiteReasons, Term};
 
     /// Every field has a value of its own, so that a swapped pair is seen.
     fn explanation() -> Explanation {
@@ -281,6 +287,7 @@ mod tests {
             condensation_smiles: Some("CC=C".into()),
             delta_g_deprotonation_kj_mol: Some(-31.5),
             log10_k: Some(5.5),
+            log10_k_sigma: Some(1.4),
             enolate_fraction: Some(0.97),
             sites: MOLECULES
                 .iter()
@@ -294,6 +301,14 @@ mod tests {
                     sigma: 0.4,
                     origin: Origin::Measured,
                     source: "a table".into(),
+                    reasons: SiteReasons {
+                        terms: vec![Term {
+                            name: "thiol S–H".into(),
+                            contribution: 29.5,
+                            standard_error: 0.3,
+                        }],
+                        neighbours: Vec::new(),
+                    },
                 })
                 .collect(),
             rates: vec![ExplainedRate {

@@ -143,8 +143,8 @@ pub(crate) fn additive(set: v1::AdditiveSet, field: &str) -> Result<Entry, Vec<I
             ErrorReason::NotYetAllowed,
             field,
             format!("{} additives", additives.len()),
-            "a cell has one additive at most so far",
-            "give each additive a set of its own",
+            "two additives in one cell are not computed yet",
+            "give each additive a set of its own: each is then screened alone",
         )]);
     }
     let Some(additive) = additives.pop() else {

@@ -178,6 +178,7 @@ impl From<&RankedCell> for v1::RankedCell {
                 .map(|name| category(name).into())
                 .collect(),
             severity: severity(cell.severity.as_deref()).into(),
+            measured_yield: cell.measured_yield,
         }
     }
 }
@@ -259,6 +260,7 @@ impl TryFrom<v1::RankedCell> for RankedCell {
             p_hit: cell.p_hit,
             feasibility: cell.feasibility,
             selectivity: cell.selectivity,
+            measured_yield: cell.measured_yield,
         })
     }
 }
@@ -292,6 +294,7 @@ mod tests {
             largest_loss: Some(Channel::OverAlkylation),
             cautions: vec!["pyrophoric".into(), "flammable".into()],
             severity: Some("warning".into()),
+            measured_yield: Some(0.77),
         }
     }
 
@@ -305,6 +308,7 @@ mod tests {
             largest_loss: None,
             cautions: vec![],
             severity: None,
+            measured_yield: None,
             ..cell()
         };
         let page = RankPage {

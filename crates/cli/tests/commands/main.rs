@@ -1,0 +1,7 @@
+//! The program from outside: exit codes, streams, JSON, embedded and on a server.
+
+mod campaigns;
+mod chemistry;
+mod program;
+mod refusals;
+mod server;

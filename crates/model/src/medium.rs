@@ -53,6 +53,12 @@ impl Medium<'_> {
         self.donation() > PROTIC_SHARE
     }
 
+    /// Whether the solvent is an alcohol that solvates anions well: a primary or secondary one or its kin.
+    fn is_alcohol(&self) -> bool {
+        const GOOD_SHARE: f64 = 0.6;
+        self.donation() > GOOD_SHARE && self.class() == SolventClass::Alcohol
+    }
+
     /// Whether ions are contact pairs or aggregates.
     pub(crate) fn is_paired(&self) -> bool {
         !self.is_protic() && self.solvent.record.permittivity < 12.0
@@ -113,7 +119,15 @@ impl Medium<'_> {
         class: AnionClass,
         values: &Values,
     ) -> f64 {
-        hydrogen_bonding(pka_dmso, class, values) * self.donation()
+        // an alcohol solvates alkoxides, its own among them, about as well as water does
+        const OF_ALKOXIDES: f64 = 0.95;
+        let is_alkoxide = matches!(class, AnionClass::Alkoxide | AnionClass::Hydroxide);
+        let donation = if is_alkoxide && self.is_alcohol() {
+            self.donation().max(OF_ALKOXIDES)
+        } else {
+            self.donation()
+        };
+        hydrogen_bonding(pka_dmso, class, values) * donation
     }
 
     /// The pKa of an acid in the medium, on a scale that agrees with the medium's own up to one
@@ -168,7 +182,9 @@ impl Medium<'_> {
     }
 
     fn charge_separation(&self, values: &Values) -> f64 {
-        if self.is_protic() {
+        if self.is_alcohol() {
+            values.get(P::CHARGES_IN_ALCOHOL)
+        } else if self.is_protic() {
             0.0
         } else {
             values.get(P::CHARGE_SEPARATION) * self.reciprocal_permittivity().max(0.0)
@@ -182,14 +198,16 @@ impl Medium<'_> {
     }
 
     /// What to add to [`Medium::pka`] for the pKa on the solvent's own scale: the proton's better or worse
-    /// solvation there than in DMSO. Zero in DMSO and, by the choice of the other parameters, in water and
-    /// alcohols; `None` where no scale is published.
+    /// solvation there than in DMSO. Zero in DMSO and, by the choice of the other parameters, in water;
+    /// `None` where no scale is published.
     pub(crate) fn own_scale(&self, values: &Values) -> Option<f64> {
         let at_25 = match self.solvent.record.name.as_str() {
             "MeCN" => values.get(P::SCALE_MECN),
             "THF" => values.get(P::SCALE_THF),
             "DMF" => values.get(P::SCALE_DMF),
-            "DMSO" | "water" | "MeOH" | "EtOH" | "iPrOH" | "tBuOH" => 0.0,
+            "DMSO" | "water" => 0.0,
+            "tBuOH" => 0.0,
+            "MeOH" | "EtOH" | "iPrOH" => values.get(P::CHARGES_IN_ALCOHOL),
             _ => return None,
         };
         Some(log10_k_at(at_25, self.temperature_c))

@@ -104,6 +104,9 @@ parameters! {
     PAIR_ZINC = 1.5, 0.4, "1", MEMORY;
     /// Cost of separating charges in a medium of low permittivity, times (1/ε − 1/46.7).
     CHARGE_SEPARATION = 15.0, 4.0, "pK", "Born, Z. Phys. 1920, 1, 45, with the size of an ion pair (from memory)";
+    /// By how much neutral acids, which make two charges, lose more strength from water to alcohols than cationic
+    /// ones.
+    CHARGES_IN_ALCOHOL = 3.2, 0.5, "pK", "phenol, acetic and benzoic acid against triethylammonium in water, methanol and ethanol (standard compilations, from memory)";
     /// log10 k of C–H exchange at ΔpKa = 0 and 25 °C.
     EXCHANGE_PROTIC = 0.5, 0.5, "log10 L/(mol s)", "acetone with hydroxide in water, 0.2 L/(mol s) at ΔpKa −3.8 (Bell, The Proton in Chemistry, 1973, from memory)";
     EXCHANGE_DIPOLAR = 0.5, 1.0, "log10 L/(mol s)", MEMORY;
@@ -252,6 +255,7 @@ parameters! {
     DEHYDRATION_DIMER_KETONE = -4.0, 0.8, "log10 L/(mol s)", MEMORY;
     /// Hydroxide with an alkyl ester in water.
     SAPONIFICATION = -1.0, 0.4, "log10 L/(mol s)", "ethyl acetate with hydroxide in water at 25 °C, 0.11 L/(mol s) (standard textbooks, from memory)";
+    SAPONIFICATION_ALCOHOL = -1.2, 0.4, "log10", "ethyl acetate in 85 % ethanol, 0.006 L/(mol s) (standard compilations, from memory)";
     ORGANOLITHIUM_EXCHANGE = 2.0, 1.0, "log10 L/(mol s)", "alkyllithiums add to carbonyl groups faster than they ionise them (common practice)";
     ORGANOLITHIUM_ADDITION = 3.5, 1.0, "log10 L/(mol s)", MEMORY;
     GRIGNARD_EXCHANGE = 0.0, 1.0, "log10 L/(mol s)", "alkylmagnesium halides ionise far more slowly than alkyllithiums (common practice)";

@@ -10,14 +10,12 @@ use crate::network::{Amounts, Network, Reaction, Species, Stage};
 
 /// Relative tolerance of the amounts and absolute one, mol/L, in the order in which they are tried.
 /// The absolute one is far below any amount that matters, so that reagents that are nearly used up
-/// stay positive; the other pairs serve the few stages on which the integrator gives up.
-const TOLERANCES: [(f64, f64); 5] = [
-    (1e-5, 1e-13),
-    (1e-4, 1e-12),
-    (1e-4, 1e-10),
-    (1e-6, 1e-13),
-    (1e-6, 1e-10),
-];
+/// stay positive; the other pairs serve the few stretches on which the integrator gives up.
+const TOLERANCES: [(f64, f64); 4] = [(1e-7, 1e-13), (1e-6, 1e-12), (1e-8, 1e-11), (1e-5, 1e-10)];
+/// First step of a stretch, as a share of it.
+const FIRST_STEP: f64 = 1e-6;
+/// Steps of a stretch at most.
+const STEPS: usize = 20_000;
 /// An amount below this, mol/L, is no rounding error but a solution that has left the real one.
 const LEAST_M: f64 = -1e-6;
 /// Points of the time course in each stage.
@@ -53,11 +51,24 @@ impl System<'_> {
     }
 }
 
+/// Product of the amounts of reactants, of which rounding may have left some below zero.
+///
+/// One such amount keeps its sign, so that its reaction leads back to zero; with two of them nothing happens,
+/// where their plain product would run away.
+fn together(amounts: impl Iterator<Item = f64>) -> f64 {
+    let (mut product, mut negative) = (1.0, 0);
+    for amount in amounts {
+        product *= amount;
+        negative += usize::from(amount < 0.0);
+    }
+    if negative < 2 { product } else { 0.0 }
+}
+
 impl ODE<f64, State> for System<'_> {
     fn diff(&self, _t: f64, y: &State, dydt: &mut State) {
         dydt.fill(0.0);
         for reaction in self.reactions {
-            let rate = reaction.k * reaction.reactants().map(|s| y[s.index()]).product::<f64>();
+            let rate = reaction.k * together(reaction.reactants().map(|s| y[s.index()]));
             System::each_change(reaction, |i, change| dydt[i] += change * rate);
         }
         if let Some((species, amount)) = self.stage.added {
@@ -76,7 +87,7 @@ impl ODE<f64, State> for System<'_> {
                 let others = reaction.reactants().enumerate();
                 let slope: f64 = others
                     .filter(|(other, _)| *other != place)
-                    .map(|(_, s)| y[s.index()])
+                    .map(|(_, s)| y[s.index()].max(0.0))
                     .product();
                 System::each_change(reaction, |i, change| {
                     j[(i, by.index())] += change * reaction.k * slope;
@@ -146,26 +157,43 @@ fn follow(
 
 /// Integrates one stage; times and amounts at the points asked for.
 fn solve(system: &System<'_>, pot: &Amounts, at: &[f64]) -> Result<Vec<(f64, State)>, ModelError> {
+    let (mut from_s, mut y) = (0.0, pot.0);
+    let mut points = Vec::with_capacity(at.len());
+    for &until_s in at {
+        y = across(system, (from_s, until_s), y)?;
+        points.push((until_s, y));
+        from_s = until_s;
+    }
+    Ok(points)
+}
+
+/// Integrates from one point to the next; a failure costs this stretch alone another attempt.
+fn across(
+    system: &System<'_>,
+    (from_s, until_s): (f64, f64),
+    start: State,
+) -> Result<State, ModelError> {
     let mut reason = String::new();
     for (relative, absolute_m) in TOLERANCES {
+        // one tolerance for each species: the method would tighten a shared one again for each
         let method = ImplicitRungeKutta::radau5()
-            .rtol(relative)
-            .atol(absolute_m)
-            .h0(1e-7)
-            .max_steps(20_000);
-        match IVP::ode(system, 0.0, system.stage.duration_s, pot.0)
-            .t_eval(at)
+            .rtol([relative; Species::COUNT])
+            .atol([absolute_m; Species::COUNT])
+            .h0(FIRST_STEP * (until_s - from_s))
+            .max_steps(STEPS);
+        match IVP::ode(system, from_s, until_s, start)
+            .t_eval(&[until_s])
             .method(method)
             .solve()
         {
             Ok(solution) => {
-                let points: Vec<_> = solution.iter().map(|(t, y)| (*t, *y)).collect();
+                let end = solution.iter().last().map(|(_, y)| *y);
                 // a comparison with what is not a number is false
                 let is_amount = |amount: &f64| *amount > LEAST_M;
-                if points.iter().all(|(_, y)| y.iter().all(is_amount)) {
-                    return Ok(points);
+                match end {
+                    Some(end) if end.iter().all(is_amount) => return Ok(end),
+                    _ => reason = "an amount is negative or not a number".to_owned(),
                 }
-                reason = "an amount is negative or not a number".to_owned();
             }
             Err(error) => {
                 let said = format!("{error:?}");

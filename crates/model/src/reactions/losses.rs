@@ -184,7 +184,15 @@ impl Reactions<'_> {
         };
         if k.claisen() {
             let tert = acceptor == Some(Carbonyl::TertAlkylEster);
-            let at_25 = k.v(P::SAPONIFICATION) + if tert { TERT_ALKYL_SAPONIFICATION } else { 0.0 };
+            let in_alcohol =
+                k.cell.solvent.record.class == enolattice_reagents::SolventClass::Alcohol;
+            let at_25 = k.v(P::SAPONIFICATION)
+                + if tert { TERT_ALKYL_SAPONIFICATION } else { 0.0 }
+                + if in_alcohol {
+                    k.v(P::SAPONIFICATION_ALCOHOL)
+                } else {
+                    0.0
+                };
             let rate = at(at_25, P::DS_SN2);
             let water = k.cell.solvent.record.class == enolattice_reagents::SolventClass::Water;
             let s = Some(Species::Substrate);

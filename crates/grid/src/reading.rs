@@ -75,6 +75,9 @@ impl Reading {
 /// Never fails: what is wrong with the text is for [`read`] to say, together with what is wrong
 /// in the files.
 pub fn files_named(campaign: &str) -> Vec<String> {
+    if campaign.len() > MAX_CAMPAIGN_BYTES {
+        return Vec::new();
+    }
     let (top, _) = DeTable::parse_recoverable(campaign);
     let mut known: HashSet<String> = HashSet::new();
     let mut names: Vec<String> = Vec::new();
@@ -105,8 +108,25 @@ pub fn files_named(campaign: &str) -> Vec<String> {
     names
 }
 
+/// Largest text of a campaign that is read, bytes: more takes the parser longer than a second.
+const MAX_CAMPAIGN_BYTES: usize = 1 << 20;
+
 /// What could be read, without the values at fault, and the faults.
 fn read_all(sources: &Sources) -> (CampaignSpec, Faults) {
+    if sources.campaign.len() > MAX_CAMPAIGN_BYTES {
+        let mut faults = Faults::default();
+        let place = Place {
+            file: sources.campaign_name.clone(),
+            line: 1,
+            field: "size".to_owned(),
+        };
+        let reason = format!("the campaign has {} bytes", sources.campaign.len());
+        let remedy = format!(
+            "give at most {MAX_CAMPAIGN_BYTES} bytes; long lists belong in files that the campaign names"
+        );
+        faults.note(FaultCode::CampaignSyntax, place, "", reason, remedy);
+        return (CampaignSpec::default(), faults);
+    }
     let mut reader = Reader::new(sources);
     let (top, errors) = DeTable::parse_recoverable(&sources.campaign);
     let mut faults = Faults::default();

@@ -426,3 +426,20 @@ mod hostile {
         }
     }
 }
+
+#[test]
+fn a_campaign_too_large_to_read_is_refused_with_the_way_out() {
+    let reading = read(&Sources {
+        campaign_name: "night.toml".to_owned(),
+        campaign: "[substrates]\nsmiles = [".to_owned() + &"\"CCO\",".repeat(200_000),
+        files: BTreeMap::new(),
+    });
+    let faults = reading.sound().expect_err("too large");
+    let [fault] = faults.as_slice() else {
+        panic!("one fault, not {faults:?}");
+    };
+    assert!(
+        fault.remedy.contains("files that the campaign names"),
+        "{fault:?}"
+    );
+}

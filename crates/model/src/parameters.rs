@@ -258,6 +258,8 @@ parameters! {
     SAPONIFICATION_ALCOHOL = -1.2, 0.4, "log10", "ethyl acetate in 85 % ethanol, 0.006 L/(mol s) (standard compilations, from memory)";
     ORGANOLITHIUM_EXCHANGE = 2.0, 1.0, "log10 L/(mol s)", "alkyllithiums add to carbonyl groups faster than they ionise them (common practice)";
     ORGANOLITHIUM_ADDITION = 3.5, 1.0, "log10 L/(mol s)", MEMORY;
+    /// The same to an amide, against a ketone or ester.
+    AMIDE_ADDITION = -1.5, 0.7, "log10", "alkyllithiums add to tertiary amides as they ionise them (common practice)";
     GRIGNARD_EXCHANGE = 0.0, 1.0, "log10 L/(mol s)", "alkylmagnesium halides ionise far more slowly than alkyllithiums (common practice)";
     GRIGNARD_ADDITION = 1.5, 1.0, "log10 L/(mol s)", MEMORY;
     /// Second ionisation: the other charge conjugated or remote.

@@ -220,8 +220,14 @@ impl Reactions<'_> {
             let s = Some(Species::Substrate);
             self.add(Species::Base, s, &[Species::Taken], rate);
         }
-        if let Some(addition) = organometal.filter(|_| acceptor.is_some()) {
-            let rate = at(k.v(addition), P::DS_ADDITION);
+        let is_amide = k.cell.substrate.carbon[0].acid.class == AnionClass::Amide;
+        if let Some(addition) = organometal.filter(|_| acceptor.is_some() || is_amide) {
+            let of_amide = if acceptor.is_none() {
+                k.v(P::AMIDE_ADDITION)
+            } else {
+                0.0
+            };
+            let rate = at(k.v(addition) + of_amide, P::DS_ADDITION);
             self.add(
                 Species::Base,
                 Some(Species::Substrate),

@@ -68,6 +68,28 @@ def test_products_are_the_molecules_rdkit_sees(products):
         assert abs(Descriptors.ExactMolWt(molecule) - told["product_mass"]) < 1e-4, smiles
 
 
+def test_masses_to_look_for_are_those_of_rdkit(products):
+    """Every product of every channel, not the wanted one alone; the largest share comes first."""
+    channels = collections.Counter()
+    for told in products:
+        for line in told["products"]:
+            channels[line["channel"]] += 1
+            smiles = line["smiles"]
+            molecule = Chem.MolFromSmiles(smiles)
+            assert molecule is not None, smiles
+            assert Chem.MolToSmiles(molecule) == smiles
+            assert rdMolDescriptors.CalcMolFormula(molecule) == line["formula"], smiles
+            assert abs(Descriptors.ExactMolWt(molecule) - line["monoisotopic_mass"]) < 1e-4, smiles
+        shares = [line["fraction"] for line in told["products"]]
+        known = [share for share in shares if share is not None]
+        assert known == sorted(known, reverse=True)
+        assert shares[: len(known)] == known, "those without a share come last"
+        wanted = [line["smiles"] for line in told["products"] if line["channel"] == "wanted product"]
+        assert told["product_smiles"] in wanted
+    assert channels["wanted product"] >= 30
+    assert {"O-attack", "over-alkylation", "self-condensation", "base consumed by electrophile"} <= set(channels)
+
+
 def test_atoms_are_kept(products):
     """Substrate + electrophile = product + what leaves: nothing, HBr or HI."""
     for told in products:

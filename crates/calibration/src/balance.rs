@@ -8,7 +8,7 @@ use enolattice_molecule::Molecule;
 use enolattice_reagents::Cation;
 use serde_json::{Value, json};
 
-use crate::solvers::{Sampler, demo_substrates};
+use crate::random_cells::{Sampler, demo_substrates};
 
 /// A pot and what our balance makes of it.
 pub struct Balanced {

@@ -6,8 +6,7 @@ use std::sync::Arc;
 
 use clap::{Parser, Subcommand};
 use enolattice_calibration::{
-    acidity_fit, balance, cases, figures, medium, nucleophilicity, practice, reactions,
-    selectivity, solvers,
+    acidity_fit, balance, cases, figures, medium, networks, practice, rates, reactions, solvers,
 };
 use enolattice_model::Model;
 use enolattice_reagents::Library;
@@ -31,13 +30,15 @@ enum Command {
     Figures,
     /// Holds the medium against published pKa in several solvents and writes the page on it.
     Medium,
+    /// Prints networks of random cells with the solution of the stiff reference as JSON.
+    Networks,
     /// Holds common reactions against the model.
     Practice,
     /// Holds published reactions against the model.
     Reactions,
-    /// Holds published enolate distributions, C- against O-alkylation and nucleophilicities against the model.
+    /// Holds published selectivities, relative rates, nucleophilicities and reactions against the model and writes the page on it.
     Rates,
-    /// Compares the fast solver with the stiff reference on random cells.
+    /// Compares the fast solver with the stiff reference on random cells and writes the page on it.
     Solvers {
         /// Number of cells.
         #[arg(default_value_t = 500)]
@@ -63,28 +64,17 @@ fn run(arguments: &Arguments) -> Result<(), String> {
         Command::Acidity => {
             let page = acidity_fit::run(&acidity_fit::Places::in_the_source_tree())
                 .map_err(|error| error.to_string())?;
-            write!(std::io::stdout().lock(), "{page}").map_err(|error| error.to_string())
+            printed(&page)
         }
-        Command::Balance => {
-            let pots = balance::to_json(&model()?)?;
-            writeln!(std::io::stdout().lock(), "{pots}").map_err(|error| error.to_string())
-        }
+        Command::Balance => printed(&format!("{}\n", balance::to_json(&model()?)?)),
         Command::Cases => cases::print(&model()?, &mut std::io::stdout().lock()),
         Command::Figures => written("figures.md", figures::page(&model()?)?),
         Command::Medium => written("medium.md", medium::page(&model()?)?),
-        Command::Practice => practice::print(&model()?, &mut std::io::stdout().lock()),
-        Command::Reactions => write!(std::io::stdout().lock(), "{}", reactions::page(&model()?)?)
-            .map_err(|error| error.to_string()),
-        Command::Rates => {
-            let model = model()?;
-            let (selectivity, nucleophilicity) =
-                (selectivity::page(&model)?, nucleophilicity::page(&model)?);
-            write!(std::io::stdout().lock(), "{selectivity}{nucleophilicity}")
-                .map_err(|error| error.to_string())
-        }
-        Command::Solvers { cells } => {
-            solvers::print(&model()?, cells, &mut std::io::stdout().lock())
-        }
+        Command::Networks => printed(&format!("{}\n", networks::to_json(&model()?)?)),
+        Command::Practice => printed(&practice::section(&model()?)?),
+        Command::Reactions => printed(&reactions::page(&model()?)?),
+        Command::Rates => written("rates.md", rates::page(&model()?)?),
+        Command::Solvers { cells } => written("solvers.md", solvers::page(&model()?, cells)?),
     }
 }
 
@@ -92,7 +82,13 @@ fn run(arguments: &Arguments) -> Result<(), String> {
 fn written(name: &str, page: String) -> Result<(), String> {
     let place = format!("{}/docs/{name}", env!("CARGO_MANIFEST_DIR"));
     std::fs::write(&place, &page).map_err(|error| format!("{place}: {error}"))?;
-    write!(std::io::stdout().lock(), "{page}").map_err(|error| error.to_string())
+    printed(&page)
+}
+
+fn printed(text: &str) -> Result<(), String> {
+    let mut out = std::io::stdout().lock();
+    out.write_all(text.as_bytes())
+        .map_err(|error| error.to_string())
 }
 
 fn model() -> Result<Model, String> {

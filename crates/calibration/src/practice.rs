@@ -1,11 +1,12 @@
 //! Common reactions and what a practising chemist expects of them.
 
-use std::io::Write;
+use std::fmt::Write;
 
-use enolattice_model::{Cell, Conditions, Model};
+use enolattice_model::{Cell, Conditions, Explanation, Model};
 use serde::Deserialize;
 
-use crate::selectivity::cell;
+use crate::cell::cell;
+use crate::table::rows;
 
 const PRACTICE: &str = include_str!("../data/practice.tsv");
 
@@ -31,8 +32,7 @@ impl Row {
             &self.base,
             &self.electrophile,
             &self.solvent,
-        ]
-        .map(String::as_str);
+        ];
         let conditions = Conditions {
             temperature_c: self.temperature_c,
             formation_temperature_c: self.formation_temperature_c,
@@ -44,7 +44,7 @@ impl Row {
             dosing_min: 10.0,
             addition: None,
         };
-        cell(model, names, conditions)
+        cell(model, names.map(String::as_str), conditions)
     }
 
     fn is_met(&self, expected_yield: f64) -> Result<bool, String> {
@@ -60,56 +60,97 @@ impl Row {
             Err(format!("{}: neither at least nor at most", self.expected))
         }
     }
+
+    fn name(&self) -> String {
+        let temperature = self.temperature_c.to_string().replace('-', "−");
+        format!(
+            "{} + {}, {} in {}, {temperature} °C",
+            self.substrate, self.electrophile, self.base, self.solvent
+        )
+    }
 }
 
-/// Prints the reactions that the model sees otherwise, and how many it sees as a chemist does.
+/// A common reaction as the model sees it.
+#[derive(Clone, Debug)]
+pub struct Judged {
+    /// Reagents and temperature.
+    pub name: String,
+    /// The yield that a chemist expects, `at least` or `at most`.
+    pub expected: String,
+    /// The model's yield; `None` where it does not cover the reaction.
+    pub expected_yield: Option<f64>,
+    /// Whether the two agree. What the model does not cover is not met.
+    pub is_met: bool,
+    /// What the model gives as reason: the largest losses, or why it does not cover the reaction.
+    pub reason: String,
+}
+
+/// All reactions of the table.
 ///
 /// # Errors
 /// A sentence that names a row which cannot be used.
-pub fn print(model: &Model, out: &mut impl Write) -> Result<(), String> {
-    let mut reader = csv::ReaderBuilder::new()
-        .delimiter(b'\t')
-        .comment(Some(b'#'))
-        .from_reader(PRACTICE.as_bytes());
-    let (mut met, mut all) = (0, 0);
-    for row in reader.deserialize() {
-        let row: Row = row.map_err(|error| error.to_string())?;
-        let explanation = model
-            .explain(&row.cell(model)?, 0.5)
-            .map_err(|error| error.to_string())?;
-        let is_met = match explanation.expected_yield {
-            Some(expected) => row.is_met(expected)?,
+pub fn judge(model: &Model) -> Result<Vec<Judged>, String> {
+    let table: Vec<Row> = rows(PRACTICE)?;
+    table.iter().map(|row| judged(model, row)).collect()
+}
+
+fn judged(model: &Model, row: &Row) -> Result<Judged, String> {
+    let explanation = model
+        .explain(&row.cell(model)?, 0.5)
+        .map_err(|error| format!("{}: {error}", row.name()))?;
+    Ok(Judged {
+        name: row.name(),
+        expected: row.expected.clone(),
+        expected_yield: explanation.expected_yield,
+        is_met: match explanation.expected_yield {
+            Some(expected_yield) => row.is_met(expected_yield)?,
             None => false,
-        };
-        all += 1;
-        met += usize::from(is_met);
-        if !is_met {
-            let losses = explanation.losses.iter().take(3);
-            let losses: Vec<_> = losses
-                .map(|(channel, share)| format!("{} {share:.2}", channel.name()))
-                .collect();
-            let reached = explanation
-                .expected_yield
-                .map_or("unknown".to_owned(), |y| format!("{y:.2}"));
-            writeln!(
-                out,
-                "{} + {} / {} / {}, {} °C: {}, {reached}; {}{} -> {}",
-                row.substrate,
-                row.electrophile,
-                row.base,
-                row.solvent,
-                row.temperature_c,
-                row.expected,
-                losses.join(", "),
-                if explanation.expected_yield.is_none() {
-                    explanation.limits.join("; ")
-                } else {
-                    String::new()
-                },
-                explanation.product_smiles.as_deref().unwrap_or("none")
-            )
-            .map_err(|error| error.to_string())?;
-        }
+        },
+        reason: reason(&explanation),
+    })
+}
+
+fn reason(explanation: &Explanation) -> String {
+    if explanation.expected_yield.is_none() {
+        return explanation.limits.join("; ");
     }
-    writeln!(out, "{met} of {all} as expected").map_err(|error| error.to_string())
+    let losses = explanation.losses.iter().take(3);
+    let losses: Vec<_> = losses
+        .map(|(channel, share)| format!("{} {share:.2}", channel.name()))
+        .collect();
+    losses.join(", ")
+}
+
+/// The comparison as a section of a page: how many are met, and those that are not.
+///
+/// # Errors
+/// As [`judge`].
+pub fn section(model: &Model) -> Result<String, String> {
+    let all = judge(model)?;
+    let met = all.iter().filter(|one| one.is_met).count();
+    let mut text = format!(
+        "\n## Common reactions\n\n\
+         What texts and collections of checked procedures lead one to expect of {} common reactions, as generous bounds of the yield\n\
+         (`crates/calibration/data/practice.tsv`, from memory, by the authors of this project). The model was developed with this\n\
+         list at hand: it is no independent test. Met: {met} of {}.\n",
+        all.len(),
+        all.len()
+    );
+    if met < all.len() {
+        text.push_str(
+            "\nNot met:\n\n| reaction | expected | model | why, says the model |\n| --- | --- | --- | --- |\n",
+        );
+    }
+    for one in all.iter().filter(|one| !one.is_met) {
+        let found = match one.expected_yield {
+            Some(found) => format!("{found:.2}"),
+            None => "unknown".to_owned(),
+        };
+        let _ = writeln!(
+            text,
+            "| {} | {} | {found} | {} |",
+            one.name, one.expected, one.reason
+        );
+    }
+    Ok(text)
 }

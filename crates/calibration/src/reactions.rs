@@ -210,17 +210,13 @@ fn usual_solvent(base: &Base) -> &'static str {
     }
 }
 
-/// Counts by class, what is not covered, and the reactions that the model gives up.
-///
-/// # Errors
-/// As [`judge`].
-pub fn page(model: &Model) -> Result<String, String> {
-    let all = judge(model)?;
+/// Counts by class as a table.
+pub fn counts(all: &[Judged]) -> String {
     let mut page = String::from(
         "| class | n | not covered | right product | yield possible | given up |\n| --- | --- | --- | --- | --- | --- |\n",
     );
     let mut by_class: BTreeMap<&str, Vec<&Judged>> = BTreeMap::new();
-    for one in &all {
+    for one in all {
         by_class.entry(&one.class).or_default().push(one);
     }
     let line = |page: &mut String, name: &str, some: &[&Judged]| {
@@ -246,6 +242,16 @@ pub fn page(model: &Model) -> Result<String, String> {
     line(&mut page, "all", &all.iter().collect::<Vec<_>>());
     let compete: Vec<_> = all.iter().filter(|one| one.sites_compete).collect();
     line(&mut page, "where sites compete", &compete);
+    page
+}
+
+/// Counts by class, what is not covered, and the reactions that the model gives up.
+///
+/// # Errors
+/// As [`judge`].
+pub fn page(model: &Model) -> Result<String, String> {
+    let all = judge(model)?;
+    let mut page = counts(&all);
     let covered = || all.iter().filter(|one| one.not_covered.is_none());
     page.push_str("\nNot covered:\n\n");
     for one in all.iter() {

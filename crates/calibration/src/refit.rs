@@ -4,80 +4,114 @@
 #[derive(Clone, Copy, Debug)]
 pub(crate) struct Fitted {
     /// Name among the model's parameters.
-    pub(crate) name: &'static str,
-    /// Where the fit starts, and what pulls it there: the mean and σ it would have without the table.
-    pub(crate) prior: (f64, f64),
+    name: &'static str,
+    /// Where the fit starts and what pulls it there: the mean that it would have without the table.
+    prior: f64,
+    /// Standard uncertainty of that mean.
+    prior_sigma: f64,
 }
 
-/// Rounds of Gauss and Newton: the observations are almost linear in the parameters.
+impl Fitted {
+    /// The parameter of this name, with mean and standard uncertainty as they would be without the table.
+    pub(crate) const fn new(name: &'static str, prior: f64, prior_sigma: f64) -> Fitted {
+        Fitted {
+            name,
+            prior,
+            prior_sigma,
+        }
+    }
+}
+
+/// Rounds over all parameters: the observations are almost linear in them.
 const ROUNDS: usize = 8;
 /// Step of the numerical derivatives.
 const STEP: f64 = 1e-3;
 
-/// What the model says of each observation when its parameters are fitted to all the others.
-///
-/// Minimises `Σ (observed − predicted)²/σ² + Σ (value − prior)²/σ_prior²`; `predict` gives the prediction of one
-/// observation for the parameters named.
-pub(crate) fn leave_one_out(
-    fitted: &[Fitted],
-    observed: &[f64],
-    sigma: f64,
-    predict: impl Fn(usize, &[(&str, f64)]) -> f64,
-) -> Vec<f64> {
-    (0..observed.len())
-        .map(|left_out| {
-            let others: Vec<usize> = (0..observed.len()).filter(|i| *i != left_out).collect();
-            let values = fit(fitted, &others, observed, sigma, &predict);
-            predict(left_out, &named(fitted, &values))
-        })
-        .collect()
+/// Parameters by name, and what they are to be.
+pub(crate) type Changes<'a> = [(&'a str, f64)];
+
+/// Observations of one kind and how the model predicts them.
+pub(crate) struct Observations<'a, F> {
+    /// What was observed.
+    pub(crate) observed: &'a [f64],
+    /// Standard uncertainty of each, that of the form of the model included.
+    pub(crate) sigma: f64,
+    /// The prediction of the observation of this number with parameters changed.
+    pub(crate) predict: F,
 }
 
-/// The parameters fitted to all observations.
-pub(crate) fn fit_all(
-    fitted: &[Fitted],
-    observed: &[f64],
-    sigma: f64,
-    predict: impl Fn(usize, &[(&str, f64)]) -> f64,
-) -> Vec<(&'static str, f64)> {
-    let rows: Vec<usize> = (0..observed.len()).collect();
-    let values = fit(fitted, &rows, observed, sigma, &predict);
-    fitted.iter().map(|one| one.name).zip(values).collect()
-}
-
-fn named<'a>(fitted: &'a [Fitted], values: &[f64]) -> Vec<(&'a str, f64)> {
-    let names = fitted.iter().map(|one| one.name);
-    names.zip(values.iter().copied()).collect()
-}
-
-/// Parameters that fit the observations numbered.
-fn fit(
-    fitted: &[Fitted],
-    rows: &[usize],
-    observed: &[f64],
-    sigma: f64,
-    predict: &impl Fn(usize, &[(&str, f64)]) -> f64,
-) -> Vec<f64> {
-    let mut values: Vec<f64> = fitted.iter().map(|one| one.prior.0).collect();
-    for _ in 0..ROUNDS {
-        // one parameter after the other: exact for each, and the few of a table are hardly correlated
-        for (i, one) in fitted.iter().enumerate() {
-            let at = |shift: f64, row: usize, values: &[f64]| {
-                let mut moved = values.to_vec();
-                moved[i] += shift;
-                predict(row, &named(fitted, &moved))
-            };
-            let (mean, prior_sigma) = one.prior;
-            let mut curvature = prior_sigma.powi(-2);
-            let mut gradient = (mean - values[i]) * prior_sigma.powi(-2);
-            for &row in rows {
-                let predicted = at(0.0, row, &values);
-                let slope = (at(STEP, row, &values) - predicted) / STEP;
-                curvature += slope * slope / (sigma * sigma);
-                gradient += slope * (observed[row] - predicted) / (sigma * sigma);
-            }
-            values[i] += gradient / curvature;
-        }
+impl<F: Fn(usize, &Changes) -> f64> Observations<'_, F> {
+    /// What the model says of each observation when the parameters are fitted to all the others.
+    pub(crate) fn left_out(&self, fitted: &[Fitted]) -> Vec<f64> {
+        let all = 0..self.observed.len();
+        all.clone()
+            .map(|left_out| {
+                let others: Vec<usize> = all.clone().filter(|row| *row != left_out).collect();
+                (self.predict)(left_out, &self.fit(fitted, &others))
+            })
+            .collect()
     }
-    values
+
+    /// The parameters fitted to all observations.
+    pub(crate) fn fit_all(&self, fitted: &[Fitted]) -> Vec<(&'static str, f64)> {
+        self.fit(fitted, &(0..self.observed.len()).collect::<Vec<_>>())
+    }
+
+    /// Parameters that fit the observations of these numbers: the minimum of
+    /// `Σ (observed − predicted)²/σ² + Σ (value − prior)²/σ_prior²` by Gauss and Newton, one parameter after the other.
+    fn fit(&self, fitted: &[Fitted], rows: &[usize]) -> Vec<(&'static str, f64)> {
+        let mut values: Vec<_> = fitted.iter().map(|one| (one.name, one.prior)).collect();
+        let weight = self.sigma.powi(-2);
+        for _ in 0..ROUNDS {
+            for (i, one) in fitted.iter().enumerate() {
+                let prior_weight = one.prior_sigma.powi(-2);
+                let mut curvature = prior_weight;
+                let mut gradient = prior_weight * (one.prior - values[i].1);
+                let mut moved = values.clone();
+                moved[i].1 += STEP;
+                for &row in rows {
+                    let predicted = (self.predict)(row, &values);
+                    let slope = ((self.predict)(row, &moved) - predicted) / STEP;
+                    curvature += weight * slope * slope;
+                    gradient += weight * slope * (self.observed[row] - predicted);
+                }
+                values[i].1 += gradient / curvature;
+            }
+        }
+        values
+    }
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    /// A straight line through three points without error, almost free priors: the point left out lies on it.
+    #[test]
+    fn a_point_left_out_of_a_line_is_found_on_it() {
+        let fitted = [Fitted::new("a", 0.0, 1e3), Fitted::new("b", 0.0, 1e3)];
+        let x = [-1.0, 0.0, 1.0];
+        let observations = Observations {
+            observed: &[1.0, 3.0, 5.0],
+            sigma: 0.1,
+            predict: |row: usize, values: &Changes| values[0].1 + values[1].1 * x[row],
+        };
+        let [(_, a), (_, b)] = observations.fit_all(&fitted)[..] else {
+            panic!("two parameters");
+        };
+        assert!((a - 3.0).abs() < 1e-3 && (b - 2.0).abs() < 1e-3, "{a} {b}");
+        assert!((observations.left_out(&fitted)[1] - 3.0).abs() < 1e-2);
+    }
+
+    /// One observation and a prior of the same weight meet half way.
+    #[test]
+    fn a_prior_pulls_with_its_weight() {
+        let observations = Observations {
+            observed: &[2.0],
+            sigma: 1.0,
+            predict: |_: usize, values: &Changes| values[0].1,
+        };
+        let (_, value) = observations.fit_all(&[Fitted::new("a", 0.0, 1.0)])[0];
+        assert!((value - 1.0).abs() < 1e-6, "{value}");
+    }
 }

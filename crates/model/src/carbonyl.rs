@@ -46,6 +46,17 @@ pub(crate) fn self_acceptor(molecule: &Molecule) -> Option<Carbonyl> {
     .find(|kind| kinds.contains(kind))
 }
 
+/// The carbonyl carbon of this kind; `None` where there are several that are not equivalent.
+pub(crate) fn acceptor_atom(molecule: &Molecule, kind: Carbonyl) -> Option<usize> {
+    let classes = molecule.symmetry_classes();
+    let mut atoms =
+        (0..molecule.atoms().len()).filter(|atom| carbonyl_at(molecule, *atom) == Some(kind));
+    let first = atoms.next()?;
+    atoms
+        .all(|other| classes[other] == classes[first])
+        .then_some(first)
+}
+
 fn carbonyl_at(molecule: &Molecule, carbon: usize) -> Option<Carbonyl> {
     let atoms = molecule.atoms();
     if atoms[carbon].element != 6 || atoms[carbon].aromatic {

@@ -1,5 +1,6 @@
 //! Everything about one cell, in numbers and sentences.
 
+mod products;
 mod rates;
 
 use enolattice_molecule::AnionClass;
@@ -17,27 +18,13 @@ use crate::outcome::Outcome;
 use crate::parameters::Values;
 use crate::program::Charge;
 use crate::reference::{Course, integrate};
-use crate::screen::{
-    Coverage, Spread, cautions_of, coverage, feasibility, over_uncertainty, solve,
-};
+use crate::screen::{Coverage, Spread, cautions_of, coverage, feasibility, over_uncertainty};
 use crate::{
     AcidSite, Cell, Contents, Explanation, Model, ModelError, Origin, SiteReasons, Term, reasons,
 };
 
-/// Yield of the wanted product at the mean of all parameters: fast solver, then reference.
-pub(crate) fn both_solvers(cell: &Cell, values: &Values) -> Result<Option<(f64, f64)>, ModelError> {
-    if !matches!(coverage(cell), Coverage::Covered) {
-        return Ok(None);
-    }
-    let pots = Pots::form(cell, values);
-    let fast = solve(cell, values, &pots);
-    let (course, network) = reference(cell, values)?;
-    let reference = course.end.product(fast.outcome.site) / network.charged[0];
-    Ok(Some((fast.outcome.product, reference)))
-}
-
 /// The stiff reference of a cell at the mean of all parameters, and its network of the reaction.
-fn reference(cell: &Cell, values: &Values) -> Result<(Course, Network), ModelError> {
+pub(crate) fn reference(cell: &Cell, values: &Values) -> Result<(Course, Network), ModelError> {
     let charge = Charge::of(cell);
     let [forming] = charge.forming(cell, values, [Nudge::default()]);
     let [reacting] = charge.reacting(cell, values, [Nudge::default()]);
@@ -133,6 +120,14 @@ pub(crate) fn explain(
     explanation.rates = rates::rates(cell, &network);
     explanation.course = course_points(&course, &network, outcome.site);
     product(&mut explanation, cell, outcome.site);
+    explanation.products = products::products(
+        cell,
+        &kinetics,
+        &network,
+        &course,
+        model.library(),
+        outcome.site,
+    );
     explanation.limits.extend(limits(cell, &outcome));
     explanation.limits.push(at_equilibrium(cell, &kinetics));
     explanation.losses = outcome.losses;

@@ -43,6 +43,8 @@ pub struct Explanation {
     pub rates: Vec<ExplainedRate>,
     /// Losses of substrate, largest first; fractions of the substrate charged.
     pub losses: Vec<(Channel, f64)>,
+    /// What can be in the pot at the end, as far as it can be drawn: largest share first, those without one last.
+    pub products: Vec<ExplainedProduct>,
     /// Time course of the reference at the mean parameters.
     pub course: Vec<CoursePoint>,
     /// Cautions, severest first.
@@ -93,6 +95,29 @@ pub struct ExplainedRate {
     pub sigma: f64,
     /// Where it comes from.
     pub source: String,
+}
+
+/// A product that one channel leads to, neutral as after work-up.
+#[derive(Clone, Debug, PartialEq)]
+pub struct ExplainedProduct {
+    /// The loss; `None` for the wanted product, before and after loss of water.
+    pub channel: Option<Channel>,
+    /// Canonical SMILES.
+    pub smiles: String,
+    /// Formula.
+    pub formula: String,
+    /// Monoisotopic mass, Da; that of the ion for an ammonium ion.
+    pub monoisotopic_mass: f64,
+    /// Share of the substrate charged that ends in it; for what holds no substrate, electrophile that ends in it per
+    /// substrate charged. `None` where the channel leads to several and nothing tells how much to each.
+    pub fraction: Option<f64>,
+}
+
+impl ExplainedProduct {
+    /// Name of the channel, as it is printed: `wanted product` or that of the loss.
+    pub fn channel_name(&self) -> &'static str {
+        self.channel.map_or("wanted product", Channel::name)
+    }
 }
 
 /// A point of the time course; amounts are fractions of the substrate charged.

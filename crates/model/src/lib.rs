@@ -10,6 +10,7 @@ mod carbonyl;
 mod cautions;
 mod cell;
 mod channel;
+mod comparison;
 mod electrophilicity;
 mod explain;
 mod explanation;
@@ -31,6 +32,7 @@ mod reference;
 mod sample;
 mod score;
 mod screen;
+mod substitution;
 
 pub use acidity::{
     AcidSite, Coefficient, Contribution, Coverage, Form, Neighbour, Origin, Role, SiteReasons,
@@ -43,7 +45,10 @@ pub use cautions::{
 };
 pub use cell::{Addition, Cell, Conditions};
 pub use channel::Channel;
-pub use explanation::{Advice, CoursePoint, ExplainedRate, ExplainedSite, Explanation};
+pub use comparison::{PlainNetwork, Solution, Solutions, Step, Stretch};
+pub use explanation::{
+    Advice, CoursePoint, ExplainedProduct, ExplainedRate, ExplainedSite, Explanation,
+};
 pub use formation::FormationTable;
 pub use model::{Draw, Fingerprint, Model, ModelError};
 pub use parameters::Parameter;

@@ -77,6 +77,14 @@ impl Medium<'_> {
             )
     }
 
+    /// Whether the counter-ion has two charges, and holds 1,3-dicarbonyl anions as chelates.
+    fn is_divalent(&self) -> bool {
+        matches!(
+            self.cation,
+            Cation::Magnesium | Cation::Calcium | Cation::Barium | Cation::Zinc
+        )
+    }
+
     /// Class of the solvent.
     pub(crate) fn class(&self) -> SolventClass {
         self.solvent.record.class
@@ -152,7 +160,12 @@ impl Medium<'_> {
         let shift = if class == AnionClass::Neutral {
             self.cationic_shift(1, values) + self.onium_charge(values)
         } else {
-            let pairing = localisation(class).map_or(0.0, |p| values.get(p));
+            let chelate = if class.is_dicarbonyl() && self.is_divalent() {
+                values.get(P::LOC_CHELATE)
+            } else {
+                0.0
+            };
+            let pairing = localisation(class).map_or(0.0, |p| values.get(p)) + chelate;
             self.hydrogen_bond_shift(pka_dmso, class, values) + pairing * self.pair_strength(values)
         };
         log10_k_at(pka_dmso - shift, self.temperature_c)

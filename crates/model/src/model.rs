@@ -17,8 +17,8 @@ use crate::network::Species;
 use crate::parameters::{PARAMETERS, Parameter, Values};
 use crate::screen::{self, score, yield_at};
 use crate::{
-    Acid, Additive, Base, Cell, Electrophile, Explanation, MeasuredPka, Pair, Score, Solvent,
-    Substrate,
+    Acid, Additive, Base, Cell, Electrophile, Explanation, MeasuredPka, Pair, PlainNetwork, Score,
+    Solutions, Solvent, Substrate,
 };
 
 /// SHA-256 over code version, data, coefficients and arithmetic.
@@ -287,13 +287,22 @@ impl Model {
         score(cell, &self.means, yield_at_least, cautions, pots)
     }
 
-    /// Yield of the wanted product at the mean of all parameters by the fast solver and by the
-    /// stiff reference; `None` where the model does not cover the cell.
+    /// A cell at the mean of all parameters by the fast solver and by the stiff reference; `None` where the
+    /// model does not cover the cell or needs no network to know that nothing happens.
     ///
     /// # Errors
     /// [`ModelError::Integration`] if the reference integrator gives up.
-    pub fn both_solvers(&self, cell: &Cell) -> Result<Option<(f64, f64)>, ModelError> {
-        crate::explain::both_solvers(cell, &self.means)
+    pub fn both_solvers(&self, cell: &Cell) -> Result<Option<Solutions>, ModelError> {
+        crate::comparison::both_solvers(cell, &self.means)
+    }
+
+    /// The network of a cell in plain numbers, with the solution of the stiff reference; `None` as for
+    /// [`Model::both_solvers`].
+    ///
+    /// # Errors
+    /// [`ModelError::Integration`] if the reference integrator gives up.
+    pub fn plain_network(&self, cell: &Cell) -> Result<Option<PlainNetwork>, ModelError> {
+        crate::comparison::plain_network(cell, &self.means)
     }
 
     /// All acids and bases of a cell's pot with their pKa in its medium, `converted` of its substrate having become
@@ -340,7 +349,7 @@ mod tests {
             let fast = model
                 .both_solvers(&cell)
                 .expect("integrates")
-                .map(|(fast, _)| fast);
+                .map(|solutions| solutions.fast.product);
             let at_mean = model.yield_in(&cell, &model.draw(7, 0));
             // lanes beside it change how often Newton's method iterates, no more
             let apart = (fast.expect("covered") - at_mean.expect("covered")).abs();

@@ -76,6 +76,103 @@ impl Species {
     /// substrate taken by base, dehydrated dimer, eliminated, solvolysed and spent electrophile, dehydrated products.
     pub(crate) const ONLY_FORMED: usize = 8 + SITES;
 
+    /// Every species, by index.
+    pub(crate) fn all() -> impl Iterator<Item = Species> {
+        let plain = [
+            Species::Substrate,
+            Species::HeteroatomAnion,
+            Species::Dianion,
+            Species::Electrophile,
+            Species::Solid,
+            Species::Base,
+            Species::BaseAcid,
+            Species::Lyate,
+            Species::Water,
+            Species::Hydroxide,
+            Species::SolventAnion,
+            Species::Dimer,
+            Species::DimerAnion,
+            Species::OxygenProduct,
+            Species::HeteroatomProduct,
+            Species::OverReacted,
+            Species::Taken,
+            Species::Eliminated,
+            Species::Solvolysed,
+            Species::Spent,
+            Species::DryDimer,
+            Species::Leaving,
+            Species::LeavingAcid,
+            Species::ElectrophileAnion,
+        ];
+        let of_sites = [
+            Species::Carbanion,
+            Species::Product,
+            Species::ProductAnion,
+            Species::Dehydrated,
+        ];
+        plain
+            .into_iter()
+            .chain(of_sites.into_iter().flat_map(|of| (0..SITES).map(of)))
+    }
+
+    /// Molecules of the substrate in it.
+    pub(crate) fn substrates(self) -> f64 {
+        match self {
+            Species::Substrate
+            | Species::HeteroatomAnion
+            | Species::Dianion
+            | Species::OxygenProduct
+            | Species::HeteroatomProduct
+            | Species::OverReacted
+            | Species::Taken
+            | Species::Carbanion(_)
+            | Species::Product(_)
+            | Species::ProductAnion(_)
+            | Species::Dehydrated(_) => 1.0,
+            Species::Dimer | Species::DimerAnion | Species::DryDimer => 2.0,
+            _ => 0.0,
+        }
+    }
+
+    /// Molecules of the electrophile in it.
+    pub(crate) fn electrophiles(self) -> f64 {
+        match self {
+            Species::Electrophile
+            | Species::ElectrophileAnion
+            | Species::OxygenProduct
+            | Species::HeteroatomProduct
+            | Species::Eliminated
+            | Species::Solvolysed
+            | Species::Spent
+            | Species::Product(_)
+            | Species::ProductAnion(_)
+            | Species::Dehydrated(_) => 1.0,
+            Species::OverReacted => 2.0,
+            _ => 0.0,
+        }
+    }
+
+    /// Protons that it can take: what a base brings and what an anion holds. A halide or another group that
+    /// leaves for good takes its charge along and has none.
+    #[cfg(test)]
+    pub(crate) fn basicity(self) -> f64 {
+        match self {
+            Species::Solid
+            | Species::Base
+            | Species::Lyate
+            | Species::Hydroxide
+            | Species::SolventAnion
+            | Species::HeteroatomAnion
+            | Species::DimerAnion
+            | Species::Leaving
+            | Species::ElectrophileAnion
+            | Species::Carbanion(_)
+            | Species::ProductAnion(_) => 1.0,
+            Species::Dianion => 2.0,
+            _ => 0.0,
+        }
+    }
+
     /// Name in explanations.
     pub(crate) fn name(self) -> String {
         let plain = match self {
@@ -157,6 +254,16 @@ impl Reaction {
             .into_iter()
             .flatten()
     }
+
+    /// Species used up, one entry for each molecule.
+    pub(crate) fn used(&self) -> impl Iterator<Item = Species> + '_ {
+        self.reactants().chain(self.with)
+    }
+
+    /// Species formed, one entry for each molecule.
+    pub(crate) fn formed(&self) -> impl Iterator<Item = Species> + '_ {
+        self.products.into_iter().flatten()
+    }
 }
 
 impl Amounts {
@@ -199,16 +306,14 @@ impl Amounts {
         self.of(Species::Substrate) + self.of(Species::HeteroatomAnion) + self.carbanions()
     }
 
+    /// Sum of a property of the species over what is in the pot, mol/L.
+    pub(crate) fn total(&self, each: impl Fn(Species) -> f64) -> f64 {
+        Species::all().map(|s| each(s) * self.of(s)).sum()
+    }
+
     /// Substrate in all its fates: constant once all is charged.
-    #[cfg(test)]
     pub(crate) fn substrate_balance(&self) -> f64 {
-        self.unreacted()
-            + (0..SITES).map(|site| self.product(site)).sum::<f64>()
-            + self.of(Species::OxygenProduct)
-            + self.of(Species::HeteroatomProduct)
-            + self.of(Species::OverReacted)
-            + 2.0 * self.dimer()
-            + self.of(Species::Taken)
+        self.total(Species::substrates)
     }
 }
 

@@ -155,29 +155,46 @@ impl Substrate {
     }
 }
 
+const BROMINE: u8 = 35;
+const IODINE: u8 = 53;
+
 /// Iodine goes before bromine; both sit on an arene or a double bond.
 fn exchangeable_halogen(molecule: &Molecule) -> Option<P> {
-    const BROMINE: u8 = 35;
-    const IODINE: u8 = 53;
-    let on_sp2 = |element: u8| {
-        let atoms = molecule.atoms();
-        (0..atoms.len()).any(|halogen| {
-            let mut carbons = molecule
-                .neighbours(halogen)
-                .iter()
-                .map(|&(carbon, _)| carbon);
-            atoms[halogen].element == element
-                && carbons.any(|carbon| {
-                    let mut bonds = molecule.neighbours(carbon).iter();
-                    atoms[carbon].aromatic || bonds.any(|&(_, bond)| bond == Bond::Double)
-                })
-        })
-    };
-    if on_sp2(IODINE) {
+    if halogens_on_sp2(molecule, IODINE).next().is_some() {
         Some(P::HALOGEN_LITHIUM_IODIDE)
     } else {
-        on_sp2(BROMINE).then_some(P::HALOGEN_LITHIUM_BROMIDE)
+        let bromine = halogens_on_sp2(molecule, BROMINE).next();
+        bromine.map(|_| P::HALOGEN_LITHIUM_BROMIDE)
     }
+}
+
+/// The halogen that alkyllithiums take first; `None` where there are several that are not equivalent.
+pub(crate) fn exchangeable_halogen_atom(molecule: &Molecule) -> Option<usize> {
+    let classes = molecule.symmetry_classes();
+    let first = |element| {
+        let halogen = halogens_on_sp2(molecule, element).next()?;
+        Some((halogen, element))
+    };
+    let (halogen, element) = first(IODINE).or_else(|| first(BROMINE))?;
+    halogens_on_sp2(molecule, element)
+        .all(|other| classes[other] == classes[halogen])
+        .then_some(halogen)
+}
+
+/// Halogens of an element on an arene or a double bond.
+fn halogens_on_sp2(molecule: &Molecule, element: u8) -> impl Iterator<Item = usize> + '_ {
+    let atoms = molecule.atoms();
+    (0..atoms.len()).filter(move |&halogen| {
+        let mut carbons = molecule
+            .neighbours(halogen)
+            .iter()
+            .map(|&(carbon, _)| carbon);
+        atoms[halogen].element == element
+            && carbons.any(|carbon| {
+                let mut bonds = molecule.neighbours(carbon).iter();
+                atoms[carbon].aromatic || bonds.any(|&(_, bond)| bond == Bond::Double)
+            })
+    })
 }
 
 /// Whether an atom is the carbon of a ketone or an aldehyde.

@@ -173,6 +173,8 @@ impl Spread {
 /// A cell solved with the fast solver at the mean of all parameters.
 pub(crate) struct Solved {
     pub(crate) outcome: Outcome,
+    /// Amounts at the end.
+    pub(crate) end: Amounts,
 }
 
 /// Solves a cell's network at the mean of all parameters.
@@ -197,6 +199,7 @@ fn read(
     );
     Solved {
         outcome: Outcome::read(cell, &kinetics, network, end, formed),
+        end: *end,
     }
 }
 
@@ -438,7 +441,7 @@ const HOPELESS_LOG10: f64 = -3.0;
 /// With every carbanion comes one molecule of the base's acid, so that at equilibrium
 /// `[A] ≤ √(K·[S]·[B])`, and no more than all of the substrate; the conversion in time t is at most
 /// `k·[E]·t·[A]/[S]₀`. Both are taken at three standard uncertainties on the hopeful side.
-fn is_negligible(cell: &Cell, kinetics: &Kinetics<'_>) -> bool {
+pub(crate) fn is_negligible(cell: &Cell, kinetics: &Kinetics<'_>) -> bool {
     let spread = Spread::of(cell);
     let conditions = &cell.conditions;
     let base = math::log10(conditions.base_equiv);

@@ -22,6 +22,7 @@ mod uncovered;
 pub use donors::{AcylDonor, ChalcogenDonor, Donor, HalogenDonor};
 pub use groups::{Acceptor, AlkylGroup, Cumulene, ImineNitrogen, LeavingGroup, RingHeteroatom};
 pub use kind::ElectrophileKind;
+pub(crate) use skeleton::{is_activated_beta_carbon, is_bridgehead};
 
 use crate::Molecule;
 

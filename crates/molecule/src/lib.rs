@@ -25,8 +25,9 @@ pub use electrophile::{
 pub use environment::{Site, sites};
 pub use pattern::Pattern;
 pub use product::{
-    Product, c_product, dehydrated, double_product, heteroatom_product, o_product,
-    self_condensation_product,
+    Product, alcohol_of_ester, alkenes, c_product, carbonyl_product, dehalogenated, dehydrated,
+    disproportionated, double_product, heteroatom_product, o_product, self_condensation_product,
+    substitution_product,
 };
 pub use salt::{CompanionRole, CounterIon, Salt};
 pub use structure::{Atom, Bond, Molecule, StructureError};

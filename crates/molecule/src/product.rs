@@ -1,6 +1,13 @@
 //! Products by graph edit.
 
 mod attack;
+mod carbonyl;
+mod loss;
+mod nucleophile;
+
+pub use carbonyl::{alcohol_of_ester, carbonyl_product, disproportionated};
+pub use loss::{alkenes, dehalogenated};
+pub use nucleophile::substitution_product;
 
 use chematic::core::BondOrder;
 
@@ -146,8 +153,8 @@ pub fn dehydrated(adduct: &Product) -> Result<Option<Molecule>, StructureError> 
 }
 
 /// The product of a molecule with a second one of its kind: an aldol adduct where carbon
-/// `acceptor` is an aldehyde or ketone, the Claisen product where it is an ester (of a lactone: the
-/// hydroxy compound).
+/// `acceptor` is an aldehyde or ketone, the Claisen product where it is an ester or amide (of a lactone:
+/// the hydroxy compound).
 ///
 /// # Errors
 /// `site` is no carbon with a hydrogen, `acceptor` is none of these groups, or the product is
@@ -158,20 +165,7 @@ pub fn self_condensation_product(
     acceptor: usize,
 ) -> Result<Product, StructureError> {
     require_element(substrate, site, &[CARBON], "carbon")?;
-    let alkoxy = match substrate.acyl(acceptor) {
-        Some(Acyl::Aldehyde | Acyl::Ketone) => None,
-        Some(Acyl::Ester) => substrate.bound_to(acceptor, OXYGEN, Bond::Single).next(),
-        _ => {
-            return Err(StructureError::new(
-                format!("atom {acceptor} is no carbonyl carbon of an aldehyde, ketone or ester"),
-                "name the carbonyl carbon that is attacked",
-            ));
-        }
-    };
-    let mut draft = Draft::of(substrate);
-    draft.take_hydrogen(site)?;
-    draft.flatten(site);
-    attack::at_carbonyl(draft, site, substrate, acceptor, alkoxy)
+    carbonyl_product(substrate, site, substrate, acceptor)
 }
 
 fn require_element(

@@ -1,4 +1,4 @@
-"""Makes rdkit_reference.csv and rdkit_products.csv with RDKit.
+"""Makes rdkit_reference.csv, rdkit_products.csv and rdkit_side_products.csv with RDKit.
 
 Run it in this directory: python make_rdkit_reference.py
 It needs RDKit and nothing else; the values do not come from the crate that they test.
@@ -9,6 +9,8 @@ import csv
 from rdkit import Chem, rdBase
 from rdkit.Chem import AllChem, Descriptors
 from rdkit.Chem.rdMolDescriptors import CalcMolFormula
+
+PRODUCT_COLUMNS = ["canonical_flat", "canonical", "formula", "exact_mass", "molar_mass"]
 
 ACCEPTOR = "$(C=O),$(C#N),$([N+](=O)[O-]),$(S(=O)(=O)[#6])"
 FURTHER_ACCEPTOR = "$(S(=O)),$(P=O),$(c:n),$(c:c:c:n),$(C(=O))"
@@ -93,6 +95,25 @@ REACTIONS = {
     "heteroatom chalcogen": "[99*;!H0:1].[SX2,SeX2:2](-[#6:3])-[!#6]>>[*:1]-[*:2]-[#6:3]",
     "self aldol": "[99#6;!H0:1].[98C:2](=[O:3])>>[#6:1]-[C:2](-[O:3])",
     "self claisen of a ring": "[99#6;!H0:1].[98C:2](=[O:3])@[O:4]>>([#6:1]-[C:2]=[O:3].[O:4])",
+    # what becomes of electrophile, base and substrate beside the wanted bond; some have one reactant
+    "substitution by an alkoxide": "[99O-:1].[CX4:2]-[Cl,Br,I]>>[O+0:1]-[C:2]",
+    "substitution by an amide": "[99N-:1].[CX4:2]-[Cl,Br,I]>>[N+0:1]-[C:2]",
+    "substitution by a carbanion": "[99#6-:1].[CX4:2]-[Cl,Br,I]>>[#6+0:1]-[C:2]",
+    "substitution by a tertiary amine": "[99#7;H0:1].[CX4:2]-[Cl,Br,I]>>[#7+:1]-[C:2]",
+    "substitution by a secondary amine": "[99N;!H0:1].[CX4:2]-[Cl,Br,I]>>[N:1]-[C:2]",
+    "substitution at acyl by an alkoxide": "[99O-:1].[CX3:2](=[O:3])-[Cl]>>[O+0:1]-[C:2]=[O:3]",
+    "substitution at acyl by an amine": "[99N;!H0:1].[CX3:2](=[O:3])-[Cl]>>[N:1]-[C:2]=[O:3]",
+    "substitution at silicon by an amide": "[99N-:1].[Si:2]-[Cl]>>[N+0:1]-[Si:2]",
+    "carbonyl adduct": "[99#6-:1].[CX3;$([CX3;H1]),$(C([#6])[#6]):2]=[O:3]>>[#6+0:1]-[C:2]-[O:3]",
+    "carbonyl of an ester": "[99*:1].[CX3:2](=[O:3])-[OX2][#6]>>[*+0:1]-[C:2]=[O:3]",
+    "carbonyl of a lactone": "[99*:1].[C:2](=[O:3])@[O:4]>>([*+0:1]-[C:2]=[O:3].[O:4])",
+    "carbonyl of an amide": "[99*:1].[CX3:2](=[O:3])-N>>[*+0:1]-[C:2]=[O:3]",
+    "alcohol of an ester": "[99C](=O)-[OX2:1]-[#6:2]>>[O:1]-[#6:2]",
+    "acid by disproportionation": "[99C:1](=[O:2]).[O:3]>>[C:1](=[O:2])-[O:3]",
+    "alcohol by disproportionation": "[99C:1]=[O:2]>>[C:1]-[O:2]",
+    "alkene": "[99C:1](-[Cl,Br,I])-[CX4;!H0:2]>>[C:1]=[C:2]",
+    "alkene from a sulfonate": f"[99C:1](-{SULFONATE})-[CX4;!H0:2]>>[C:1]=[C:2]",
+    "dehalogenation": "[#6:1]-[99Br,99I]>>[#6:1]",
     "self claisen": "[99#6;!H0:1].[98C:2](=[O:3])-[O;!$(O=*)]-[#6]>>[#6:1]-[C:2](=[O:3])",
 }
 
@@ -318,6 +339,40 @@ ROWS = [
     ("self claisen of a ring", "O=C1CCCO1", 2, 1),
 ]
 
+# kind, first reactant, index of its marked atom, second reactant where there is one
+SIDE_ROWS = [
+    ("substitution by an alkoxide", "CC[O-]", 2, "CCCCBr"),
+    ("substitution by an alkoxide", "CC(C)(C)[O-]", 4, "BrCc1ccccc1"),
+    ("substitution by an alkoxide", "[OH-]", 0, "BrCC(=O)OCC"),
+    ("substitution by an amide", "CC(C)[N-]C(C)C", 3, "CI"),
+    ("substitution by a carbanion", "[CH2-]CCC", 0, "BrCc1ccccc1"),
+    ("substitution by a carbanion", "c1cccc[c-]1", 5, "CI"),
+    ("substitution by a tertiary amine", "CCN(CC)CC", 2, "BrCc1ccccc1"),
+    ("substitution by a tertiary amine", "c1ccncc1", 3, "CI"),
+    ("substitution by a secondary amine", "C1CCNCC1", 3, "C=CCBr"),
+    ("substitution at acyl by an alkoxide", "C[O-]", 1, "O=C(Cl)c1ccccc1"),
+    ("substitution at acyl by an amine", "C1CCNCC1", 3, "CC(=O)Cl"),
+    ("substitution at silicon by an amide", "CC(C)[N-]C(C)C", 3, "C[Si](C)(C)Cl"),
+    ("carbonyl adduct", "[CH2-]CCC", 0, "CC(=O)c1ccccc1"),
+    ("carbonyl adduct", "[CH3-]", 0, "O=C1CCCCC1"),
+    ("carbonyl adduct", "c1cccc[c-]1", 5, "CC(C)C=O"),
+    ("carbonyl of an ester", "[CH2-]CCC", 0, "COC(=O)Cc1ccccc1"),
+    ("carbonyl of an ester", "O", 0, "CCOC(=O)Cc1ccccc1"),
+    ("carbonyl of an ester", "CC(C)[O-]", 3, "CCOC(=O)CC(=O)C"),
+    ("carbonyl of a lactone", "O", 0, "O=C1CCCO1"),
+    ("carbonyl of an amide", "[CH2-]CCC", 0, "CN(C)C(=O)Cc1ccccc1"),
+    ("alcohol of an ester", "CC(C)OC(=O)Cc1ccccc1", 4, ""),
+    ("acid by disproportionation", "O=Cc1ccccc1", 1, "O"),
+    ("alcohol by disproportionation", "O=Cc1ccccc1", 1, ""),
+    ("alkene", "CC(C)Br", 1, ""),
+    ("alkene", "BrC1CCCCC1", 1, ""),
+    ("alkene", "BrCCc1ccccc1", 1, ""),
+    ("alkene", "C[C@H](Br)C(=O)OC", 1, ""),
+    ("alkene from a sulfonate", "CCCCOS(=O)(=O)c1ccc(C)cc1", 3, ""),
+    ("dehalogenation", "COC(=O)Cc1ccc(Br)cc1", 9, ""),
+    ("dehalogenation", "CC(=O)c1ccccc1I", 9, ""),
+]
+
 
 def numbers(molecule):
     """Formula, monoisotopic and average mass."""
@@ -350,7 +405,7 @@ def product(kind, substrate, site, electrophile):
     if isinstance(electrophile, int):
         second = marked(substrate, {electrophile: 98})
     else:
-        second = Chem.MolFromSmiles(electrophile)
+        second = Chem.MolFromSmiles(electrophile) if electrophile else None
     reaction = AllChem.ReactionFromSmarts(REACTIONS[kind.removeprefix("double ")])
     outcome = only_outcome(reaction, first, second)
     if kind.startswith("double "):
@@ -362,7 +417,7 @@ def product(kind, substrate, site, electrophile):
 def only_outcome(reaction, first, second):
     """The one outcome of a reaction, with its marks."""
     found = {}
-    for (outcome,) in reaction.RunReactants((first, second)):
+    for (outcome,) in reaction.RunReactants((first, second) if second else (first,)):
         for atom in outcome.GetAtoms():
             atom.SetNoImplicit(False)
             if atom.GetIsotope() == 99 or atom.GetAtomicNum() != 6:
@@ -370,7 +425,7 @@ def only_outcome(reaction, first, second):
         Chem.SanitizeMol(outcome)
         found[Chem.MolToSmiles(outcome, isomericSmiles=False)] = outcome
     if len(found) != 1:
-        raise SystemExit(f"{Chem.MolToSmiles(first)} {Chem.MolToSmiles(second)}: {sorted(found)}")
+        raise SystemExit(f"{Chem.MolToSmiles(first)}: {sorted(found)}")
     return next(iter(found.values()))
 
 
@@ -408,18 +463,26 @@ def main():
         ["smiles", "canonical", "canonical_flat", "formula", "exact_mass", "molar_mass", "ring_sizes", "symmetry_classes"],
         molecules,
     )
-    products = []
-    for kind, substrate, site, electrophile in ROWS:
-        flat, outcome = product(kind, substrate, site, electrophile)
-        products.append(
-            [kind, substrate, site, electrophile, flat, Chem.MolToSmiles(outcome), *numbers(outcome)]
-        )
     write(
         "rdkit_products.csv",
         "The electrophile of a self condensation is the index of the carbonyl carbon.",
-        ["kind", "substrate", "site", "electrophile", "canonical_flat", "canonical", "formula", "exact_mass", "molar_mass"],
-        products,
+        ["kind", "substrate", "site", "electrophile", *PRODUCT_COLUMNS],
+        products(ROWS),
     )
+    write(
+        "rdkit_side_products.csv",
+        "The second reactant is empty where there is none.",
+        ["kind", "first", "atom", "second", *PRODUCT_COLUMNS],
+        products(SIDE_ROWS),
+    )
+
+
+def products(rows):
+    made = []
+    for kind, first, atom, second in rows:
+        flat, outcome = product(kind, first, atom, second)
+        made.append([kind, first, atom, second, flat, Chem.MolToSmiles(outcome), *numbers(outcome)])
+    return made
 
 
 if __name__ == "__main__":

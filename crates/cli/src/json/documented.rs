@@ -2,8 +2,8 @@
 
 use enolattice_engine::{CellDescription, DryRun, Job, JobState, RankedCell, ReagentRow};
 use enolattice_model::{
-    Advice, Category, Caution, Channel, CoursePoint, ExplainedRate, ExplainedSite, Explanation,
-    Neighbour, Origin, Severity, SiteReasons, Term,
+    Advice, Category, Caution, Channel, CoursePoint, ExplainedProduct, ExplainedRate, ExplainedSite,
+    Explanation, Neighbour, Origin, Severity, SiteReasons, Term,
 };
 use serde::Serialize;
 use serde_json::Value;
@@ -136,6 +136,13 @@ fn explanation() -> Explanation {
             source: String::new(),
         }],
         losses: vec![(Channel::SlowAttack, 0.5)],
+        products: vec![ExplainedProduct {
+            channel: None,
+            smiles: String::new(),
+            formula: String::new(),
+            monoisotopic_mass: 0.0,
+            fraction: None,
+        }],
         course: vec![CoursePoint {
             time_s: 0.0,
             substrate: 1.0,
@@ -256,6 +263,7 @@ fn every_field_is_documented_and_every_documented_field_is_there() {
         ("neighbours", &site["neighbours"]),
         ("rates", &explained["rates"]),
         ("losses", &explained["losses"]),
+        ("products", &explained["products"]),
         ("course", &explained["course"]),
         ("cautions", &explained["cautions"]),
         ("advice", &explained["advice"]),

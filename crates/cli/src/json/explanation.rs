@@ -1,7 +1,9 @@
 //! Everything about one cell.
 
 use enolattice_engine::CellDescription;
-use enolattice_model::{Advice, Caution, Channel, CoursePoint, ExplainedRate, Explanation};
+use enolattice_model::{
+    Advice, Caution, Channel, CoursePoint, ExplainedProduct, ExplainedRate, Explanation,
+};
 use serde::Serialize;
 
 use super::SiteRecord;
@@ -28,6 +30,7 @@ pub(crate) struct ExplanationDocument {
     sites: Vec<SiteRecord>,
     rates: Vec<RateRecord>,
     losses: Vec<LossRecord>,
+    products: Vec<ProductRecord>,
     course: Vec<CourseRecord>,
     cautions: Vec<CautionRecord>,
     hazards: Vec<String>,
@@ -76,6 +79,15 @@ struct LossRecord {
 }
 
 #[derive(Clone, Debug, Serialize)]
+struct ProductRecord {
+    channel: &'static str,
+    smiles: String,
+    formula: String,
+    monoisotopic_mass: f64,
+    fraction: Option<f64>,
+}
+
+#[derive(Clone, Debug, Serialize)]
 struct CourseRecord {
     time_s: f64,
     substrate: f64,
@@ -121,6 +133,7 @@ impl ExplanationDocument {
             sites: told.sites.into_iter().map(SiteRecord::from).collect(),
             rates: told.rates.into_iter().map(RateRecord::from).collect(),
             losses: told.losses.into_iter().map(LossRecord::from).collect(),
+            products: told.products.into_iter().map(ProductRecord::from).collect(),
             course: told.course.into_iter().map(CourseRecord::from).collect(),
             cautions: told.cautions.into_iter().map(CautionRecord::from).collect(),
             hazards: told.hazards,
@@ -177,6 +190,18 @@ impl From<(Channel, f64)> for LossRecord {
         LossRecord {
             channel: channel.name(),
             fraction,
+        }
+    }
+}
+
+impl From<ExplainedProduct> for ProductRecord {
+    fn from(product: ExplainedProduct) -> ProductRecord {
+        ProductRecord {
+            channel: product.channel_name(),
+            smiles: product.smiles,
+            formula: product.formula,
+            monoisotopic_mass: product.monoisotopic_mass,
+            fraction: product.fraction,
         }
     }
 }

@@ -20,6 +20,7 @@ pub(crate) fn explanation_page(cell: &CellDescription, told: &Explanation) -> St
         ("Why these pKa", why(told)),
         ("Rates", rates(told)),
         ("Losses (of the substrate charged)", losses(told)),
+        ("Masses to look for", masses(told)),
         (
             "Time course (reference, parameters at their means)",
             course(told),
@@ -227,6 +228,32 @@ fn losses(told: &Explanation) -> String {
     let columns = [("channel", Side::Left), ("fraction", Side::Right)];
     if told.losses.is_empty() {
         "  none known".to_owned()
+    } else {
+        indented(&table(&columns, rows))
+    }
+}
+
+/// What can be in the pot at the end, with the share of the substrate that ends in it.
+fn masses(told: &Explanation) -> String {
+    let columns = [
+        ("channel", Side::Left),
+        ("SMILES", Side::Left),
+        ("formula", Side::Left),
+        ("mass, Da", Side::Right),
+        ("share", Side::Right),
+    ];
+    let rows = told.products.iter().map(|product| {
+        vec![
+            product.channel_name().to_owned(),
+            product.smiles.clone(),
+            product.formula.clone(),
+            fixed(Some(product.monoisotopic_mass), 4),
+            percent(product.fraction),
+        ]
+    });
+    if told.products.is_empty() {
+        let none = told.expected_yield.map_or("unknown", |_| "none");
+        format!("  {none}")
     } else {
         indented(&table(&columns, rows))
     }

@@ -1,5 +1,6 @@
 //! Attacks on the electrophile by what the substrate and its products become.
 
+use enolattice_molecule::AnionClass;
 use enolattice_units::math;
 
 use super::Reactions;
@@ -31,6 +32,7 @@ impl Reactions<'_> {
                 None => 0.0,
             };
             self.assisted_addition(i, site, rate);
+            let rate = rate * (1.0 - self.protonated_in_the_pair());
             let (rate, back) = match k.addition_log10_k(site) {
                 Some(log10_k) if !k.acylates_reversibly() => {
                     let falls_apart = k.addition_pka(i) - log10_k - k.site_pka(site);
@@ -82,11 +84,15 @@ impl Reactions<'_> {
     /// An addition in which the solvent or the acid of the base hands its proton over as the bond forms, so that no
     /// alkoxide is ever free: how nitroalkanes and 1,3-dicarbonyl compounds add to aldehydes with weak bases.
     ///
-    /// Of the adducts that form at `rate` those are kept that get a proton before they fall apart.
+    /// Of the adducts that form at `rate` those are kept that get a proton before they fall apart. The enolate that a
+    /// Michael addition leaves in a pair with an onium ion gets its proton before it meets another acceptor.
     fn assisted_addition(&mut self, i: usize, site: &CarbonSite, rate: f64) {
         let k = self.kinetics;
+        let in_pairs = self.protonated_in_the_pair() > 0.0;
         let adduct = match k.addition_log10_k(site) {
-            Some(log10_k) if k.bonding() == Bonding::Adduct => Some((k.addition_pka(i), log10_k)),
+            Some(log10_k) if in_pairs || k.bonding() == Bonding::Adduct => {
+                Some((k.addition_pka(i), log10_k))
+            }
             _ => None,
         };
         let (adduct_pka, log10_k) = adduct.unwrap_or((0.0, 0.0));
@@ -132,6 +138,22 @@ impl Reactions<'_> {
         self.list.last_mut().expect("just added").third = Some(Species::BaseAcid);
         let apart = [anion, Species::Electrophile, Species::BaseAcid];
         self.add(product, Some(Species::Base), &apart, back);
+    }
+
+    /// Share of the carbanions that are paired with an onium ion which hands its proton to the product of a Michael
+    /// addition; none with other counter-ions and in other additions.
+    fn protonated_in_the_pair(&self) -> f64 {
+        let k = self.kinetics;
+        match k.association_with_acid() {
+            Some(association)
+                if k.bonding() == Bonding::Michael
+                    && k.cell.base.record.class == AnionClass::Neutral =>
+            {
+                let acid_m = k.acid_of_base_m();
+                acid_m / (1.0 / association + acid_m)
+            }
+            _ => 0.0,
+        }
     }
 
     /// The alkoxide that left an ester brings the acyl group back from the product to the ester.

@@ -150,18 +150,22 @@ pub(super) fn beta_hydrogens(molecule: &Molecule, carbon: usize) -> (u8, bool) {
         }
         let hydrogens = molecule.atoms()[beta].hydrogens;
         count += hydrogens;
-        activated |= hydrogens > 0
-            && molecule.neighbours(beta).iter().any(|(other, _)| {
-                *other != carbon
-                    && (molecule.acceptor(*other).is_some()
-                        || matches!(beside(molecule, *other), Beside::Aryl | Beside::Vinyl))
-            });
+        activated |= hydrogens > 0 && is_activated_beta_carbon(molecule, carbon, beta);
     }
     (count, activated)
 }
 
+/// Whether aryl, vinyl or an acceptor on `beta` activates its hydrogens for elimination from `carbon`.
+pub(crate) fn is_activated_beta_carbon(molecule: &Molecule, carbon: usize, beta: usize) -> bool {
+    molecule.neighbours(beta).iter().any(|(other, _)| {
+        *other != carbon
+            && (molecule.acceptor(*other).is_some()
+                || matches!(beside(molecule, *other), Beside::Aryl | Beside::Vinyl))
+    })
+}
+
 /// Whether the carbon is where two rings meet that share more than a bond.
-pub(super) fn is_bridgehead(molecule: &Molecule, carbon: usize) -> bool {
+pub(crate) fn is_bridgehead(molecule: &Molecule, carbon: usize) -> bool {
     let mine: Vec<&Vec<usize>> = molecule
         .rings()
         .iter()

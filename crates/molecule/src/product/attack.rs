@@ -58,17 +58,17 @@ pub(super) fn by_electrophile(
     joining.finish()
 }
 
-/// Binds the draft to a carbonyl carbon: by addition, or in the place of `alkoxy`.
+/// Binds the draft to a carbonyl carbon: by addition, or in the place of `leaving`.
 pub(super) fn at_carbonyl(
     draft: Draft,
     nucleophile: usize,
     partner: &Molecule,
     carbon: usize,
-    alkoxy: Option<usize>,
+    leaving: Option<usize>,
 ) -> Result<Product, StructureError> {
     let mut joining = Joining::new(draft, nucleophile, partner, carbon);
-    match alkoxy {
-        Some(_) => joining.displace(alkoxy)?,
+    match leaving {
+        Some(_) => joining.displace(leaving)?,
         None => joining.add_to_carbonyl(),
     }
     joining.finish()

@@ -1,8 +1,8 @@
 //! Explanations.
 
 use enolattice_model::{
-    Advice, Category, Caution, Channel, CoursePoint, ExplainedRate, ExplainedSite, Explanation,
-    Severity,
+    Advice, Category, Caution, Channel, CoursePoint, ExplainedProduct, ExplainedRate,
+    ExplainedSite, Explanation, Severity,
 };
 
 use super::acidity::{reasons_from_wire, reasons_to_wire};
@@ -32,6 +32,7 @@ impl From<&Explanation> for v1::Explanation {
             sites: e.sites.iter().map(Into::into).collect(),
             rates: e.rates.iter().map(Into::into).collect(),
             losses: e.losses.iter().map(loss).collect(),
+            products: e.products.iter().map(Into::into).collect(),
             course: e.course.iter().map(Into::into).collect(),
             cautions: e.cautions.iter().map(Into::into).collect(),
             hazards: e.hazards.clone(),
@@ -70,6 +71,11 @@ impl TryFrom<v1::Explanation> for Explanation {
                 .collect::<Result<_, _>>()?,
             rates: e.rates.into_iter().map(Into::into).collect(),
             losses: e.losses.iter().map(loss_from).collect::<Result<_, _>>()?,
+            products: e
+                .products
+                .into_iter()
+                .map(TryInto::try_into)
+                .collect::<Result<_, _>>()?,
             course: e.course.into_iter().map(Into::into).collect(),
             cautions: e
                 .cautions
@@ -188,6 +194,39 @@ impl From<v1::ExplainedRate> for ExplainedRate {
             sigma: rate.sigma,
             source: rate.source,
         }
+    }
+}
+
+impl From<&ExplainedProduct> for v1::ExplainedProduct {
+    fn from(product: &ExplainedProduct) -> Self {
+        v1::ExplainedProduct {
+            channel: product
+                .channel
+                .map_or(v1::Channel::Unspecified, v1::Channel::from)
+                .into(),
+            smiles: product.smiles.clone(),
+            formula: product.formula.clone(),
+            monoisotopic_mass: product.monoisotopic_mass,
+            fraction: product.fraction,
+        }
+    }
+}
+
+impl TryFrom<v1::ExplainedProduct> for ExplainedProduct {
+    type Error = ConversionError;
+
+    fn try_from(product: v1::ExplainedProduct) -> Result<Self, ConversionError> {
+        Ok(ExplainedProduct {
+            channel: enums::optional_from_wire::<_, v1::Channel>(
+                "ExplainedProduct.channel",
+                &Channel::ALL,
+                product.channel,
+            )?,
+            smiles: product.smiles,
+            formula: product.formula,
+            monoisotopic_mass: product.monoisotopic_mass,
+            fraction: product.fraction,
+        })
     }
 }
 
@@ -318,6 +357,22 @@ mod tests {
                 source: "a line".into(),
             }],
             losses: vec![(Channel::OverAlkylation, 0.11), (Channel::SlowAttack, 0.08)],
+            products: vec![
+                ExplainedProduct {
+                    channel: None,
+                    smiles: "CCOC(=O)C(C)Cc1ccccc1".into(),
+                    formula: "C12H16O2".into(),
+                    monoisotopic_mass: 192.11503,
+                    fraction: Some(0.8),
+                },
+                ExplainedProduct {
+                    channel: Some(Channel::Solvolysis),
+                    smiles: "OCc1ccccc1".into(),
+                    formula: "C7H8O".into(),
+                    monoisotopic_mass: 108.05751,
+                    fraction: None,
+                },
+            ],
             course: vec![CoursePoint {
                 time_s: 60.0,
                 substrate: 0.1,

@@ -62,7 +62,7 @@ pub struct Judged {
 ///
 /// Where the source says nothing: the boiling point of the solvent where its text speaks of reflux, −78 °C for metal amides, alkyllithiums and Grignard reagents, else 25 °C;
 /// THF for these, ethanol for alkoxides, DMF for hydrides and carbonates; 1.2 equivalents of base (2.4 where
-/// the substrate has a more acidic X–H), 1.5 of electrophile, 0.2 mol/L, 16 h; all together for acylations by
+/// the substrate has a more acidic X–H or the source names two strong bases), 1.5 of electrophile, 0.2 mol/L, 16 h; all together for acylations by
 /// esters. Alkylations that begin in the cold are warmed to 0 °C or 25 °C.
 ///
 /// # Errors
@@ -140,10 +140,21 @@ fn is_product(explanation: &Explanation, reported: &str) -> bool {
 fn cell(model: &Model, row: &Reported) -> Result<Cell, String> {
     let library = model.library();
     let parse = |smiles: &str| Molecule::parse(smiles).map_err(|e| e.to_string());
-    let base = row
+    let bases: Vec<&Base> = row
         .base
         .split("; ")
         .filter_map(|name| library.base(name))
+        .collect();
+    let is_strong = |base: &&&Base| {
+        matches!(
+            base.kind,
+            BaseKind::Hydride | BaseKind::Amide | BaseKind::Organolithium
+        )
+    };
+    // sodium hydride, then butyllithium: a dianion is meant
+    let strong_bases = bases.iter().filter(is_strong).count();
+    let base = bases
+        .into_iter()
         .max_by(|a, b| a.pka_dmso.value.total_cmp(&b.pka_dmso.value))
         .ok_or_else(|| format!("the library has no base {}", row.base))?;
     let names: Vec<&str> = row
@@ -191,7 +202,11 @@ fn cell(model: &Model, row: &Reported) -> Result<Cell, String> {
                 None => reflux.unwrap_or(25.0),
             },
             formation_temperature_c: row.temperature_c.unwrap_or(formation_temperature_c),
-            base_equiv: if has_stronger_acid { 2.4 } else { 1.2 },
+            base_equiv: if has_stronger_acid || strong_bases > 1 {
+                2.4
+            } else {
+                1.2
+            },
             electrophile_equiv: 1.5,
             additive_equiv: 0.0,
             concentration_m: 0.2,

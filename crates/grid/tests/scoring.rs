@@ -1,5 +1,6 @@
 //! Blocks scored: the right cells in the right order, whatever the threads.
 
+use std::collections::BTreeMap;
 use std::sync::Arc;
 
 use enolattice_grid::{
@@ -22,10 +23,34 @@ fn electrophiles(smiles: &[&str]) -> AxisSpec {
     }
 }
 
+/// What is screened, and the order of the values on every axis.
+fn spec(is_reversed: bool) -> CampaignSpec {
+    let mut spec = usual_spec();
+    if is_reversed {
+        spec.substrates.reverse();
+        for axis in [&mut spec.bases, &mut spec.electrophiles, &mut spec.solvents] {
+            axis.entries.reverse();
+        }
+        spec.conditions.temperature_c.reverse();
+        spec.conditions.formation_temperature_c.reverse();
+        spec.conditions.time_h.reverse();
+    }
+    spec
+}
+
 fn grid() -> Grid {
+    grid_of(&spec(false))
+}
+
+fn grid_of(spec: &CampaignSpec) -> Grid {
     let model = Arc::new(Model::new(Arc::new(
         Library::builtin().expect("the tables are sound"),
     )));
+    let campaign = Campaign::new(spec, &model).expect("a sound campaign");
+    Grid::new(campaign, model).expect("a small grid")
+}
+
+fn usual_spec() -> CampaignSpec {
     let named = |names: &[&str]| AxisSpec {
         all: false,
         entries: names
@@ -43,7 +68,7 @@ fn grid() -> Grid {
         "CC#N",
         "O=C1CCCCC1",
     ];
-    let spec = CampaignSpec {
+    CampaignSpec {
         substrates: substrates
             .map(|smiles| SubstrateEntry {
                 smiles: smiles.into(),
@@ -60,9 +85,7 @@ fn grid() -> Grid {
             ..ConditionsSpec::default()
         },
         ..CampaignSpec::default()
-    };
-    let campaign = Campaign::new(&spec, &model).expect("a sound campaign");
-    Grid::new(campaign, model).expect("a small grid")
+    }
 }
 
 #[test]
@@ -160,4 +183,29 @@ fn one_thread_and_four_give_the_same_bytes() {
         })
     };
     assert_eq!(bytes(1), bytes(4));
+}
+
+/// Score of every cell by what the cell is made of.
+fn scores_by_content(grid: &Grid) -> BTreeMap<String, String> {
+    let mut scores = BTreeMap::new();
+    for block in grid.blocks() {
+        let columns = grid.score(block);
+        for (i, number) in grid.block_cells(block).enumerate() {
+            let cell = grid.cell(CellId(number)).expect("a cell of the block");
+            let (substrate, electrophile) = (&cell.substrate.name, &cell.electrophile.name);
+            let (base, solvent) = (&cell.base.record.name, &cell.solvent.record.name);
+            let conditions = &cell.conditions;
+            let content = format!("{substrate} {base} {electrophile} {solvent} {conditions:?}");
+            scores.insert(content, format!("{:?}", columns.score(i)));
+        }
+    }
+    scores
+}
+
+#[test]
+fn the_order_of_the_values_on_the_axes_changes_no_score() {
+    let usual = scores_by_content(&grid());
+    let reversed = scores_by_content(&grid_of(&spec(true)));
+    assert_eq!(usual.len() as u64, grid().cells());
+    assert_eq!(usual, reversed);
 }

@@ -25,6 +25,8 @@ mod outcome;
 mod parameters;
 mod prepared;
 mod program;
+#[cfg(test)]
+mod properties;
 mod rates;
 mod reactions;
 mod reference;

@@ -120,22 +120,32 @@ impl Medium<'_> {
         cation * self.pairing() * (1.0 - self.additive.freed)
     }
 
-    /// Part of the shift of the pKa that comes from hydrogen bonds to the anion, pK units.
+    /// Stabilisation of an anion by the hydrogen bonds of the solvent as rates feel it, pK units: in proportion
+    /// to the solvent's donation.
     pub(crate) fn hydrogen_bond_shift(
         &self,
         pka_dmso: f64,
         class: AnionClass,
         values: &Values,
     ) -> f64 {
-        // an alcohol solvates alkoxides, its own among them, about as well as water does
+        hydrogen_bonding(pka_dmso, class, values) * self.donation()
+    }
+
+    /// What an alcohol adds to it at equilibrium: it solvates alkoxides, its own among them, about as well as
+    /// water does.
+    pub(crate) fn shift_of_alkoxides(
+        &self,
+        pka_dmso: f64,
+        class: AnionClass,
+        values: &Values,
+    ) -> f64 {
         const OF_ALKOXIDES: f64 = 0.95;
         let is_alkoxide = matches!(class, AnionClass::Alkoxide | AnionClass::Hydroxide);
-        let donation = if is_alkoxide && self.is_alcohol() {
-            self.donation().max(OF_ALKOXIDES)
+        if is_alkoxide && self.is_alcohol() {
+            hydrogen_bonding(pka_dmso, class, values) * (OF_ALKOXIDES - self.donation()).max(0.0)
         } else {
-            self.donation()
-        };
-        hydrogen_bonding(pka_dmso, class, values) * donation
+            0.0
+        }
     }
 
     /// The pKa of an acid in the medium, on a scale that agrees with the medium's own up to one
@@ -166,7 +176,9 @@ impl Medium<'_> {
                 0.0
             };
             let pairing = localisation(class).map_or(0.0, |p| values.get(p)) + chelate;
-            self.hydrogen_bond_shift(pka_dmso, class, values) + pairing * self.pair_strength(values)
+            self.hydrogen_bond_shift(pka_dmso, class, values)
+                + self.shift_of_alkoxides(pka_dmso, class, values)
+                + pairing * self.pair_strength(values)
         };
         log10_k_at(pka_dmso - shift, self.temperature_c)
     }

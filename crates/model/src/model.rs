@@ -68,7 +68,7 @@ impl Draw {
 }
 
 /// Raised whenever the meaning of a score changes without a change of data.
-const ARITHMETIC_VERSION: u32 = 4;
+const ARITHMETIC_VERSION: u32 = 5;
 
 /// The model with its library and parameters.
 #[derive(Debug)]

@@ -180,7 +180,7 @@ parameters! {
     /// log10 (kO/kC) of the classes of ambident anions.
     O_BETA_DICARBONYL = 0.7, 0.3, "log10", "fitted to c_vs_o_alkylation (Kurts and others 1971, from memory)";
     O_DIESTER = -1.2, 0.6, "log10", "malonates and cyanoacetates are alkylated at carbon in every solvent (common practice)";
-    O_KETONE = 0.6, 0.5, "log10", "fitted to c_vs_o_alkylation (from memory)";
+    O_KETONE = 0.6, 0.5, "log10", MEMORY;
     O_ESTER = -0.8, 0.5, "log10", MEMORY;
     O_NITRONATE = 4.7, 0.6, "log10", "Hass and Bender, J. Am. Chem. Soc. 1949, 71, 1767 (from memory)";
     O_IODIDE = -2.2, 0.5, "log10", "fitted to c_vs_o_alkylation (Kurts and others 1971, from memory)";
@@ -188,7 +188,7 @@ parameters! {
     O_CHLORIDE = -0.5, 0.3, "log10", "fitted to c_vs_o_alkylation (Kurts and others 1971, from memory)";
     O_BARE = 0.0, 0.3, "log10", "fitted to c_vs_o_alkylation (Kurts and others 1971, from memory)";
     O_DIPOLAR = -0.4, 0.4, "log10", "less oxygen in DMF and DMSO than in HMPA (from memory)";
-    O_ETHER = -1.3, 0.4, "log10", "fitted to c_vs_o_alkylation (from memory)";
+    O_ETHER = -1.3, 0.4, "log10", MEMORY;
     O_PROTIC = -2.6, 0.4, "log10", "fitted to c_vs_o_alkylation (Kurts and others 1971, from memory)";
     /// What the group that leaves adds to it in acyl, silyl and sulfonyl transfer, on the scale of a sulfonate.
     O_ACYL_HALIDE = 1.0, 0.6, "log10", "acyl chlorides take sodium and lithium enolates of ketones at both ends (common practice)";
@@ -247,7 +247,7 @@ parameters! {
     /// term of the gap of their acids.
     DEHYDRATION_BRONSTED = 0.5, 0.1, "1", "general base catalysis of ionisation at carbon, 0.4 to 0.6 (from memory)";
     /// By how much an adduct loses water faster for each pK unit by which its C–H is more acidic than that of a ketone.
-    DEHYDRATION_ACIDITY = 0.45, 0.15, "1", "adducts of malononitrile and 1,3-dicarbonyl compounds lose water with catalytic amines at room temperature, those of ketones need alkali, those of esters stay (common practice)";
+    DEHYDRATION_ACIDITY = 0.38, 0.15, "1", "adducts of malononitrile and 1,3-dicarbonyl compounds lose water with catalytic amines at room temperature, those of ketones need alkali, those of esters stay (common practice)";
     DEHYDRATION_ARYL = -2.3, 0.7, "log10 L/(mol s)", MEMORY;
     DEHYDRATION_ALKYL = -4.0, 0.8, "log10 L/(mol s)", MEMORY;
     /// The same from the substrate's own aldol dimer: an aldehyde activates its α hydrogen more than a ketone.

@@ -180,10 +180,10 @@ fn side_products_are_those_of_the_textbook() {
             136.05243,
         ),
         (
-            ["CCOC(=O)CC(C)=O", "NaOMe", "CI", "MeOH"],
+            ["CCOC(=O)CC(=O)OCC", "NaOMe", "CI", "MeOH"],
             BaseAddsToSubstrate,
-            "COC(=O)CC(C)=O",
-            116.04734,
+            "CCOC(=O)CC(=O)OC",
+            146.05791,
         ),
         (
             ["CC(=O)CC(C)=O", "Et3N", "BrCc1ccccc1", "MeCN"],

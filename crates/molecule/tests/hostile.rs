@@ -1,7 +1,9 @@
 //! Hostile text neither panics nor exceeds the caps.
 
 use enolattice_molecule::{
-    Molecule, c_product, dehydrated, double_product, heteroatom_product, o_product, recognise,
+    Molecule, alcohol_of_ester, alkenes, c_product, carbonyl_product, dehalogenated, dehydrated,
+    disproportionated, double_product, heteroatom_product, o_product, recognise,
+    substitution_product,
 };
 use proptest::prelude::*;
 
@@ -20,11 +22,19 @@ fn exercise(text: &str) {
     assert!(molecule.exact_mass() > 0.0 && molecule.molar_mass() > 0.0);
     let again = Molecule::parse(molecule.canonical());
     assert_eq!(again.unwrap().formula(), molecule.formula(), "{text}");
+    for atom in 0..atoms.min(12) {
+        let _ = carbonyl_product(&molecule, atom / 2, &molecule, atom);
+        let _ = alcohol_of_ester(&molecule, atom);
+        let _ = disproportionated(&molecule, atom);
+        let _ = dehalogenated(&molecule, atom);
+    }
     if let Ok(group) = recognise(&molecule) {
+        let _ = alkenes(&molecule, &group);
         for atom in 0..atoms.min(12) {
             let product = c_product(&molecule, atom, &molecule, &group);
             let _ = o_product(&molecule, atom, &molecule, &group);
             let _ = heteroatom_product(&molecule, atom, &molecule, &group);
+            let _ = substitution_product(&molecule, atom, &molecule, &group);
             if let Ok(product) = product {
                 let _ = dehydrated(&product);
                 let _ = double_product(&product, &molecule, &group);

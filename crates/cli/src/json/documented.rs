@@ -2,8 +2,8 @@
 
 use enolattice_engine::{CellDescription, DryRun, Job, JobState, RankedCell, ReagentRow};
 use enolattice_model::{
-    Advice, Category, Caution, Channel, CoursePoint, ExplainedProduct, ExplainedRate, ExplainedSite,
-    Explanation, Neighbour, Origin, Severity, SiteReasons, Term,
+    Advice, Category, Caution, Channel, CoursePoint, ExplainedProduct, ExplainedRate,
+    ExplainedSite, Explanation, Neighbour, Origin, Severity, SiteReasons, Term,
 };
 use serde::Serialize;
 use serde_json::Value;

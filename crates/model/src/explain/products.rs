@@ -1,18 +1,17 @@
 //! The products of every channel of a cell, as far as they can be drawn.
 
 mod spent;
+mod taken;
 
 use enolattice_molecule::{
-    AnionClass, Molecule, Product, alcohol_of_ester, c_product, carbonyl_product, dehalogenated, dehydrated,
-    heteroatom_product, o_product, self_condensation_product,
+    Molecule, c_product, dehydrated, heteroatom_product, o_product, self_condensation_product,
 };
-use enolattice_reagents::{BaseKind, Library};
+use enolattice_reagents::Library;
 
 use crate::carbonyl::acceptor_atom;
 use crate::explanation::ExplainedProduct;
 use crate::kinetics::Kinetics;
 use crate::network::{Network, Reaction, Species};
-use crate::prepared::exchangeable_halogen_atom;
 use crate::reference::Course;
 use crate::{Cell, Channel};
 
@@ -257,111 +256,5 @@ impl Drawing<'_> {
         if enone.is_some() {
             self.add(channel, dry, vec![Way::to(1.0, enone)]);
         }
-    }
-
-    /// What the base makes of the substrate: carbinol or ketone of an organometal, acid and alcohol of a
-    /// saponification, the ester of another alcohol, hydrogen in the place of a halogen.
-    fn taken_by_base(&mut self) {
-        let channel = Some(Channel::BaseAddsToSubstrate);
-        let ways = self.ways_of_base();
-        if !ways.is_empty() {
-            let share = self.at_end(Species::Taken);
-            self.add(channel, share, ways);
-        }
-        if let Some(ester) = self.transesterified() {
-            self.add_molecule(channel, &ester, None);
-        }
-    }
-
-    /// The ester of the base's alcohol, where an alkoxide meets an ester of another: the model does not count how much. A
-    /// tertiary alkoxide hardly exchanges (common practice), and a lactone opens and closes again.
-    fn transesterified(&self) -> Option<Molecule> {
-        let record = &self.cell.base.record;
-        if record.class != AnionClass::Alkoxide || !self.kinetics.claisen() {
-            return None;
-        }
-        let (alkoxide, oxygen) = spent::anion(&record.smiles)?;
-        let mut carbons = alkoxide.neighbours(oxygen).iter();
-        if carbons.any(|&(carbon, _)| alkoxide.neighbours(carbon).len() == 4) {
-            return None;
-        }
-        let substrate = &self.cell.substrate;
-        let carbonyl = acceptor_atom(&substrate.molecule, substrate.acceptor?)?;
-        alcohol_of_ester(&substrate.molecule, carbonyl).ok()??;
-        let ester = carbonyl_product(&alkoxide, oxygen, &substrate.molecule, carbonyl).ok()?;
-        let is_new = ester.molecule.canonical() != substrate.molecule.canonical();
-        is_new.then_some(ester.molecule)
-    }
-
-    fn ways_of_base(&self) -> Vec<Way> {
-        let substrate = &self.cell.substrate;
-        let kind = self.cell.base.record.kind;
-        let carbonyl = substrate
-            .acceptor
-            .and_then(|acceptor| acceptor_atom(&substrate.molecule, acceptor));
-        let mut ways = Vec::new();
-        match kind {
-            BaseKind::Organolithium | BaseKind::Grignard => {
-                if substrate.acceptor.is_some() {
-                    let molecules = carbonyl.and_then(|carbonyl| self.adducts(carbonyl));
-                    ways.push(Way::to_one_of(0.0, molecules.unwrap_or_default()));
-                } else if let Some(amide) = self.amide_beside_site() {
-                    ways.push(Way::to(0.0, self.adduct(amide).map(|ketone| ketone.molecule)));
-                }
-                if kind == BaseKind::Organolithium && substrate.exchangeable_halogen.is_some() {
-                    let halogen = exchangeable_halogen_atom(&substrate.molecule);
-                    let bare = halogen.and_then(|x| dehalogenated(&substrate.molecule, x).ok());
-                    ways.push(Way::to(0.0, bare));
-                }
-            }
-            _ if self.kinetics.claisen() => {
-                let makes = carbonyl.and_then(|carbonyl| self.saponified(carbonyl));
-                ways.push(Way {
-                    weight: 1.0,
-                    makes: makes.unwrap_or_default(),
-                });
-            }
-            _ => {}
-        }
-        ways
-    }
-
-    /// The carbonyl carbon of an amide that activates the most acidic C–H.
-    fn amide_beside_site(&self) -> Option<usize> {
-        let substrate = &self.cell.substrate;
-        let site = substrate.carbon.first().map(|site| &site.acid)?;
-        let mut around = substrate.molecule.neighbours(site.atom).iter();
-        let found = around.find(|(atom, _)| spent::is_carbonyl(&substrate.molecule, *atom))?;
-        (site.class == AnionClass::Amide).then_some(found.0)
-    }
-
-    /// What the base's carbanion makes of a carbonyl group: carbinol, or the ketone of an ester or amide.
-    fn adduct(&self, carbonyl: usize) -> Option<Product> {
-        let (base, atom) = spent::nucleophile_of_base(&self.cell.base)?;
-        carbonyl_product(&base, atom, &self.cell.substrate.molecule, carbonyl).ok()
-    }
-
-    /// The same, and of an ester also what a second molecule of base makes of the ketone.
-    fn adducts(&self, carbonyl: usize) -> Option<Vec<Molecule>> {
-        let first = self.adduct(carbonyl)?;
-        if !self.kinetics.claisen() {
-            return Some(vec![first.molecule]);
-        }
-        let around = first.molecule.neighbours(first.site).iter();
-        let ketone = around
-            .map(|(other, _)| *other)
-            .find(|other| spent::is_carbonyl(&first.molecule, *other))?;
-        let (base, atom) = spent::nucleophile_of_base(&self.cell.base)?;
-        let second = carbonyl_product(&base, atom, &first.molecule, ketone).ok()?;
-        Some(vec![first.molecule, second.molecule])
-    }
-
-    /// Acid and alcohol of an ester, each with the substrate that ends in it; of a lactone the hydroxy acid.
-    fn saponified(&self, carbonyl: usize) -> Option<Vec<(Molecule, Option<f64>)>> {
-        let substrate = &self.cell.substrate.molecule;
-        let acid = carbonyl_product(&spent::water()?, 0, substrate, carbonyl).ok()?;
-        let alcohol = alcohol_of_ester(substrate, carbonyl).ok()?;
-        let both = std::iter::once(acid.molecule).chain(alcohol);
-        Some(both.map(|molecule| (molecule, Some(1.0))).collect())
     }
 }

@@ -37,6 +37,24 @@ impl<'a> Kinetics<'a> {
         .map_or(0.0, math::exp10)
     }
 
+    /// By how much the rate of an alkoxide in an alcohol is that of a stronger base than its equilibria say, pK
+    /// units.
+    pub(crate) fn lag_of_alkoxide(&self, anion: Species) -> f64 {
+        let (pka_dmso, class) = match anion {
+            Species::Base => (
+                self.cell.base.record.pka_dmso.value,
+                self.cell.base.record.class,
+            ),
+            Species::Hydroxide => (PKA_WATER, AnionClass::Hydroxide),
+            Species::Lyate => match &self.cell.solvent.record.acid {
+                Some((acid, class)) => (acid.value, *class),
+                None => return 0.0,
+            },
+            _ => return 0.0,
+        };
+        self.medium.shift_of_alkoxides(pka_dmso, class, self.values)
+    }
+
     /// The electrophile's own C–H, where it gives its proton to bases: pKa in the medium, class. Alkylating
     /// agents eliminate instead.
     pub(crate) fn electrophile_acid(&self) -> Option<(f64, AnionClass)> {

@@ -44,7 +44,12 @@ impl Reactions<'_> {
                 .and_then(|n| k.attack(&n));
             self.add(acid.anion, e, &[spent], attack.map_or(0.0, math::exp10));
             let eliminated: Vec<_> = [Species::Eliminated].into_iter().chain(returned).collect();
-            self.add(acid.anion, e, &eliminated, k.elimination(acid.pka));
+            self.add(
+                acid.anion,
+                e,
+                &eliminated,
+                k.elimination(acid.pka + k.lag_of_alkoxide(acid.anion)),
+            );
         }
         if let Some(carbanion) = k.solvent_carbanion() {
             let rate = k.attack(&carbanion).map_or(0.0, math::exp10);
@@ -153,7 +158,10 @@ impl Reactions<'_> {
     pub(super) fn loss_of_water_from_dimer(&mut self, acceptor: Carbonyl) {
         let k = self.kinetics;
         // the new bond takes one hydrogen of the site, the water another
-        let can_lose = k.cell.substrate.carbon[0].acid.hydrogens > 1;
+        let can_lose = k.cell.substrate.carbon[k.cell.substrate.condensing_site()]
+            .acid
+            .hydrogens
+            > 1;
         for (base, pka) in k.oxygen_bases() {
             let rate = if can_lose {
                 k.dimer_dehydration(acceptor, pka)

@@ -251,14 +251,14 @@ fn conversion_never_falls_where_nothing_takes_the_product() {
 fn without_a_reagent_or_without_meeting_nothing_forms() {
     let model = model();
     for mut cell in cells(&model) {
-        let usual = cell.conditions.clone();
+        let usual = cell.conditions;
         let product = |cell: &Cell| {
             let [_, end] = marched(cell);
             (0..SITES).map(|site| end.product(site)).sum::<f64>() / cell.conditions.concentration_m
         };
         cell.conditions.electrophile_equiv = 1e-9;
         assert!(product(&cell) < 1e-6, "electrophile: {}", words(&cell));
-        cell.conditions = usual.clone();
+        cell.conditions = usual;
         cell.conditions.base_equiv = 1e-12;
         assert!(product(&cell) < 1e-3, "base: {}", words(&cell));
         cell.conditions = usual;

@@ -12,7 +12,7 @@ use crate::json::SiteRecord;
 
 /// The page that `explain` prints.
 pub(crate) fn explanation_page(cell: &CellDescription, told: &Explanation) -> String {
-    let sections = [
+    let mut sections = vec![
         ("Cell", cell_section(cell)),
         ("Numbers", numbers(cell, told)),
         ("Product", product(told)),
@@ -30,6 +30,12 @@ pub(crate) fn explanation_page(cell: &CellDescription, told: &Explanation) -> St
         ("Limits", sentences(&told.limits, "the model names none")),
         ("What a change would bring", advice(told)),
     ];
+    if told.expected_yield.is_none() {
+        // why there is no number is the first thing that one wants to know
+        let limits = sections.len() - 2;
+        let why_not = sections.remove(limits);
+        sections.insert(1, why_not);
+    }
     let mut page: Vec<String> = sections
         .iter()
         .map(|(heading, text)| format!("{heading}\n{text}"))
@@ -234,7 +240,9 @@ fn losses(told: &Explanation) -> String {
 }
 
 /// What can be in the pot at the end, with the share of the substrate that ends in it.
+/// Products whose share shows; `--json` has all that can be drawn.
 fn masses(told: &Explanation) -> String {
+    const SHOWS: f64 = 0.0005;
     let columns = [
         ("channel", Side::Left),
         ("SMILES", Side::Left),
@@ -242,7 +250,11 @@ fn masses(told: &Explanation) -> String {
         ("mass, Da", Side::Right),
         ("share", Side::Right),
     ];
-    let rows = told.products.iter().map(|product| {
+    let shown = told
+        .products
+        .iter()
+        .filter(|product| product.fraction.is_none_or(|share| share >= SHOWS));
+    let rows = shown.map(|product| {
         vec![
             product.channel_name().to_owned(),
             product.smiles.clone(),

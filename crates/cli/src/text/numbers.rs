@@ -4,7 +4,8 @@
 pub(crate) fn percent(fraction: Option<f64>) -> String {
     fraction.map_or_else(
         || "unknown".to_owned(),
-        |fraction| format!("{:.1} %", 100.0 * fraction),
+        // + 0.0 takes the sign off a zero
+        |fraction| format!("{:.1} %", (1000.0 * fraction).round() / 10.0 + 0.0),
     )
 }
 
@@ -57,6 +58,7 @@ mod tests {
             assert_eq!(short(number), text);
         }
         assert_eq!(percent(Some(0.8314)), "83.1 %");
+        assert_eq!(percent(Some(-1e-9)), "0.0 %");
         assert_eq!(percent(None), "unknown");
         assert_eq!(temperatures(-78.0, 25.0), "−78 → 25");
         assert_eq!(count(1_234_567), "1,234,567");

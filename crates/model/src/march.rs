@@ -21,7 +21,7 @@ const STEP_GROWTH: f64 = 1.7;
 /// Newton iterations of a step at most.
 const NEWTON: usize = 12;
 /// Halvings at most of a step that Newton's method does not solve.
-const HALVINGS: usize = 4;
+const HALVINGS: usize = 1;
 /// A step counts as not solved when the last iteration still changes more than this many times the tolerance.
 const FAR_OFF: f64 = 100.0;
 /// Change of an amount, as a share of the substrate charged, at which a step is taken as solved:

@@ -81,6 +81,35 @@ fn every_table_states_title_units_and_licence_and_is_rectangular() {
     }
 }
 
+/// Columns of numbers that count or name and are no measured values.
+const NO_VALUES: [&str; 1] = ["atom"];
+
+#[test]
+fn every_value_has_its_uncertainty() {
+    for sheet in sheets() {
+        let stated = |column: &str| {
+            let lines = sheet.heading.iter();
+            lines
+                .filter(|line| line.starts_with("# sigma:"))
+                .any(|line| line.split([' ', ',', ';', ':']).any(|word| word == column))
+        };
+        for (index, column) in sheet.columns.iter().enumerate() {
+            let mut cells = sheet.rows.iter().map(|row| row[index].as_str());
+            let is_number = cells.all(|cell| cell.is_empty() || cell.parse::<f64>().is_ok());
+            let is_filled = sheet.rows.iter().any(|row| !row[index].is_empty());
+            let is_value = is_number && is_filled && !column.ends_with("sigma");
+            let of_its_own = format!("{column}_sigma");
+            let has_column = sheet.columns.contains(&of_its_own)
+                || sheet.columns.iter().any(|other| other == "sigma");
+            assert!(
+                !is_value || has_column || stated(column) || NO_VALUES.contains(&column.as_str()),
+                "{}: {column} has no uncertainty",
+                sheet.file
+            );
+        }
+    }
+}
+
 #[test]
 fn every_source_is_given_and_every_declared_source_is_used() {
     for sheet in sheets() {

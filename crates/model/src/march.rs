@@ -224,7 +224,8 @@ impl<const L: usize> Solver<L> {
         change < tolerance && least > -negative && self.left_out(dt) < tolerance
     }
 
-    /// Largest extent that the linearisation of a rate leaves out, `Δt·k·δa·δb`.
+    /// Largest extent that the linearisation of a rate leaves out: `Δt·k·δa·δb`, and of three reactants each two
+    /// with the amount of the third.
     fn left_out(&self, dt: f64) -> f64 {
         let mut most = 0.0_f64;
         for term in self.terms.iter().filter(|term| term.second != ABSENT) {
@@ -232,12 +233,19 @@ impl<const L: usize> Solver<L> {
                 self.delta[term.first % ROOM],
                 self.delta[term.second % ROOM],
             );
-            let mut extent = term.k * a * b;
-            if term.third != ABSENT {
-                extent = extent * self.y[term.third % ROOM];
-            }
-            for l in 0..L {
-                most = most.max((dt * extent.0[l]).abs());
+            let of_pairs = if term.third == ABSENT {
+                [a * b, Lanes::all(0.0), Lanes::all(0.0)]
+            } else {
+                let [first, second, third] =
+                    [term.first, term.second, term.third].map(|i| self.y[i % ROOM]);
+                let c = self.delta[term.third % ROOM];
+                [a * b * third, a * c * second, b * c * first]
+            };
+            for pair in of_pairs {
+                let extent = term.k * pair;
+                for l in 0..L {
+                    most = most.max((dt * extent.0[l]).abs());
+                }
             }
         }
         most

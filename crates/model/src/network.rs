@@ -247,25 +247,6 @@ impl Species {
 #[derive(Clone, Copy, Debug, PartialEq)]
 pub(crate) struct Amounts(pub(crate) [f64; Species::COUNT]);
 
-impl Reaction {
-    /// Reactants of the rate.
-    pub(crate) fn reactants(&self) -> impl Iterator<Item = Species> + '_ {
-        [Some(self.first), self.second, self.third]
-            .into_iter()
-            .flatten()
-    }
-
-    /// Species used up, one entry for each molecule.
-    pub(crate) fn used(&self) -> impl Iterator<Item = Species> + '_ {
-        self.reactants().chain(self.with)
-    }
-
-    /// Species formed, one entry for each molecule.
-    pub(crate) fn formed(&self) -> impl Iterator<Item = Species> + '_ {
-        self.products.into_iter().flatten()
-    }
-}
-
 impl Amounts {
     pub(crate) const NONE: Amounts = Amounts([0.0; Species::COUNT]);
 
@@ -332,6 +313,25 @@ pub(crate) struct Reaction {
     pub(crate) with: Option<Species>,
     /// Rate constant; L, mol, s.
     pub(crate) k: f64,
+}
+
+impl Reaction {
+    /// Reactants of the rate.
+    pub(crate) fn reactants(&self) -> impl Iterator<Item = Species> + '_ {
+        [Some(self.first), self.second, self.third]
+            .into_iter()
+            .flatten()
+    }
+
+    /// Species used up, one entry for each molecule.
+    pub(crate) fn used(&self) -> impl Iterator<Item = Species> + '_ {
+        self.reactants().chain(self.with)
+    }
+
+    /// Species formed, one entry for each molecule.
+    pub(crate) fn formed(&self) -> impl Iterator<Item = Species> + '_ {
+        self.products.into_iter().flatten()
+    }
 }
 
 /// A stretch of time with constant additions.

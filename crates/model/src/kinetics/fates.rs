@@ -109,8 +109,9 @@ impl<'a> Kinetics<'a> {
         else {
             return 0.0;
         };
-        // benzaldehyde, E −12.9, is the reference
-        let at_25 = self.v(P::CANNIZZARO) + self.v(P::MAYR_S_N) * (e + 12.9);
+        // benzaldehyde is the reference; its E is that of the electrophilicities table
+        const E_BENZALDEHYDE: f64 = -19.5;
+        let at_25 = self.v(P::CANNIZZARO) + self.v(P::MAYR_S_N) * (e - E_BENZALDEHYDE);
         let (to_c, entropy) = (self.medium.temperature_c, self.v(P::DS_ADDITION));
         math::exp10(rates::at_temperature(at_25, 25.0, to_c, entropy))
     }

@@ -495,4 +495,29 @@ mod tests {
             assert!(off.abs() < 1e-6, "{base}: {off:e}");
         }
     }
+
+    #[test]
+    fn a_reagent_used_up_at_once_goes_where_the_reference_says() {
+        // a fluorinating agent dosed into an enolate beside a little excess of base
+        let model = model();
+        let mut cell = cell(
+            &model,
+            "CCOC(=O)Cc1ccccc1",
+            "LiHMDS",
+            "O=S(=O)(c1ccccc1)N(F)S(=O)(=O)c1ccccc1",
+            "THF",
+        );
+        cell.conditions.temperature_c = -78.0;
+        cell.conditions.formation_temperature_c = -78.0;
+        let charge = Charge::of(&cell);
+        let values = Values::means();
+        let forming = charge.forming(&cell, &values, [Nudge::default()]);
+        let reacting = charge.reacting(&cell, &values, [Nudge::default()]);
+        let [end] = march(&reacting, march(&forming, [charge.start()]));
+        let course =
+            integrate(Some(&forming[0]), &reacting[0], charge.start()).expect("integrates");
+        let concentration_m = cell.conditions.concentration_m;
+        let [fast, reference] = [&end, &course.end].map(|pot| pot.product(0) / concentration_m);
+        assert!((fast - reference).abs() < 0.05, "{fast} for {reference}");
+    }
 }

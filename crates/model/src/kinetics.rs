@@ -21,6 +21,8 @@ use crate::{AcidSite, Cell};
 
 /// pKa (DMSO) of water, ethanol and the like: Bordwell 1988 (from memory).
 pub(crate) const PKA_WATER: f64 = 31.4;
+/// pKa (DMSO) of ethanol, the alcohol of an ester: Bordwell 1988 (from memory).
+pub(crate) const PKA_ALCOHOL: f64 = 29.8;
 /// Bulk of alkoxides and hydroxide of the solvent (the scale of the bases' table, from memory).
 const LYATE_BULK: f64 = 0.2;
 

@@ -55,6 +55,7 @@ impl Medium<'_> {
 
     /// Whether the solvent is an alcohol that solvates anions well: a primary or secondary one or its kin.
     fn is_alcohol(&self) -> bool {
+        // of the α of water: 2-propanol 0.65, tert-butanol 0.36 (Kamlet and Taft, from memory)
         const GOOD_SHARE: f64 = 0.6;
         self.donation() > GOOD_SHARE && self.class() == SolventClass::Alcohol
     }
@@ -139,6 +140,7 @@ impl Medium<'_> {
         class: AnionClass,
         values: &Values,
     ) -> f64 {
+        // autoprotolysis of methanol, ethanol and 2-propanol (the page on the medium)
         const OF_ALKOXIDES: f64 = 0.95;
         let is_alkoxide = matches!(class, AnionClass::Alkoxide | AnionClass::Hydroxide);
         if is_alkoxide && self.is_alcohol() {

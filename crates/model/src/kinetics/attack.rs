@@ -3,14 +3,11 @@
 use enolattice_molecule::{AcylDonor, AnionClass, ElectrophileKind, RingHeteroatom};
 use enolattice_reagents::{Cation, SolventClass};
 
-use super::Kinetics;
+use super::{Kinetics, PKA_ALCOHOL};
 use crate::bonding::{self, Bonding, TakenByBase};
 use crate::parameters::P;
 use crate::prepared::CarbonSite;
 use crate::rates::{self, Nucleophile};
-
-/// pKa (DMSO) of ethanol: Bordwell 1988 (from memory).
-const PKA_ETHANOL: f64 = 29.8;
 
 impl<'a> Kinetics<'a> {
     /// Whether the bond-forming step gives the base back: the adduct's anion is about as strong a base
@@ -109,7 +106,7 @@ impl<'a> Kinetics<'a> {
     /// bring about condensations by general acid catalysis.
     fn acid_catalysis(&self) -> f64 {
         let acid = self.cell.solvent.record.acid.as_ref();
-        let stronger = acid.map_or(0.0, |(acid, _)| (PKA_ETHANOL - acid.value).max(0.0));
+        let stronger = acid.map_or(0.0, |(acid, _)| (PKA_ALCOHOL - acid.value).max(0.0));
         self.v(P::CARBONYL_ACID) * stronger
     }
 
@@ -204,7 +201,7 @@ impl<'a> Kinetics<'a> {
             AnionClass::Nitronate => P::O_NITRONATE,
             _ => return None,
         };
-        // HMPA and its kin bind the cation so well that the anion is bare
+        // HMPA and its kin, by Kamlet–Taft β, bind the cation so well that the anion is bare (from memory)
         const BARE: f64 = 1.0;
         let by_solvent = if self.medium.is_protic() {
             self.v(P::O_PROTIC)

@@ -230,6 +230,7 @@ impl<'a> Kinetics<'a> {
     /// How many times faster the adduct at a site loses water than one with the C–H of a ketone. Nitronates
     /// keep their hydroxyl (common practice: nitroalkenes are made from the neutral nitroalcohol).
     fn by_acidity_of_adduct(&self, site: usize) -> f64 {
+        // the adduct of acetophenone and its like, 24 to 27 (Bordwell 1988, from memory)
         const KETONE_PKA: f64 = 25.5;
         match self.product_carbon(site).map(|site| &site.acid) {
             Some(acid) if acid.class != AnionClass::Nitronate => {
@@ -242,7 +243,7 @@ impl<'a> Kinetics<'a> {
     pub(super) fn loss_of_water(&self, at_25: P, base_pka: f64) -> f64 {
         // lithium aldolates in ethers are chelated and keep their oxygen (common practice)
         const CHELATED: f64 = -4.0;
-        // the acid of a weak base helps the hydroxide to leave
+        // the acid of a weak base helps the hydroxide to leave: a gap beyond this counts no more (from memory)
         const HELPED: f64 = 10.0;
         let weaker = self.pka(PKA_WATER, AnionClass::Hydroxide) - base_pka;
         let weaker = weaker.clamp(0.0, HELPED);

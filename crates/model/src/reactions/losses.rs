@@ -7,12 +7,11 @@ use enolattice_units::math;
 use super::Reactions;
 use super::acids::Acid;
 use crate::carbonyl::Carbonyl;
+use crate::kinetics::PKA_ALCOHOL;
 use crate::network::Species;
 use crate::parameters::P;
 use crate::rates;
 
-/// pKa (DMSO) of ethanol, the alcohol of an ester: Bordwell 1988 (from memory).
-const PKA_ALCOHOL: f64 = 29.8;
 /// A tert-alkyl ester is saponified about a hundred times more slowly (common practice).
 const TERT_ALKYL_SAPONIFICATION: f64 = -2.0;
 

@@ -1,10 +1,10 @@
 //! What chemists know to happen, held against the model.
 
-use std::sync::Arc;
-
 use enolattice_model::{Addition, Cell, Conditions, Explanation, Model, Score};
 use enolattice_molecule::Molecule;
 use serde::Deserialize;
+
+use crate::cell::cell;
 
 /// Least yield of the better cell of a comparison.
 const LEAST_YIELD: f64 = 0.15;
@@ -172,48 +172,36 @@ fn flat(smiles: &str) -> Result<String, String> {
 }
 
 fn score(model: &Model, recipe: &Recipe) -> Result<Score, String> {
-    Ok(model.score(&cell(model, recipe)?, 0.5, 0))
+    Ok(model.score(&cell_of(model, recipe)?, 0.5, 0))
 }
 
 fn explain(model: &Model, recipe: &Recipe) -> Result<Explanation, String> {
     model
-        .explain(&cell(model, recipe)?, 0.5)
+        .explain(&cell_of(model, recipe)?, 0.5)
         .map_err(|error| error.to_string())
 }
 
-fn cell(model: &Model, recipe: &Recipe) -> Result<Cell, String> {
-    let library = model.library();
-    let parse = |smiles: &str| Molecule::parse(smiles).map_err(|e| format!("{smiles}: {e}"));
-    let base = library
-        .base(&recipe.base)
-        .ok_or_else(|| format!("no base {}", recipe.base))?;
-    let solvent = library
-        .solvent(&recipe.solvent)
-        .ok_or_else(|| format!("no solvent {}", recipe.solvent))?;
-    let substrate = model.substrate(&recipe.substrate, parse(&recipe.substrate)?, None);
-    let electrophile = model.electrophile(&recipe.electrophile, parse(&recipe.electrophile)?);
-    let pair = model.pair(&substrate, &electrophile);
-    Ok(Cell {
-        pair: Arc::new(pair),
-        substrate: Arc::new(substrate),
-        base: Arc::new(model.base(base)),
-        electrophile: Arc::new(electrophile),
-        solvent: Arc::new(model.solvent(solvent)),
-        additive: None,
-        conditions: Conditions {
-            additive_equiv: 0.0,
-            temperature_c: recipe.temperature_c,
-            formation_temperature_c: recipe
-                .formation_temperature_c
-                .unwrap_or(recipe.temperature_c),
-            base_equiv: recipe.base_equiv,
-            electrophile_equiv: recipe.electrophile_equiv,
-            concentration_m: recipe.concentration_m,
-            time_h: recipe.time_h,
-            dosing_min: recipe.dosing_min.unwrap_or(10.0),
-            addition: recipe.addition.as_deref().and_then(Addition::from_name),
-        },
-    })
+fn cell_of(model: &Model, recipe: &Recipe) -> Result<Cell, String> {
+    let names = [
+        &recipe.substrate,
+        &recipe.base,
+        &recipe.electrophile,
+        &recipe.solvent,
+    ];
+    let conditions = Conditions {
+        additive_equiv: 0.0,
+        temperature_c: recipe.temperature_c,
+        formation_temperature_c: recipe
+            .formation_temperature_c
+            .unwrap_or(recipe.temperature_c),
+        base_equiv: recipe.base_equiv,
+        electrophile_equiv: recipe.electrophile_equiv,
+        concentration_m: recipe.concentration_m,
+        time_h: recipe.time_h,
+        dosing_min: recipe.dosing_min.unwrap_or(10.0),
+        addition: recipe.addition.as_deref().and_then(Addition::from_name),
+    };
+    cell(model, names.map(String::as_str), conditions)
 }
 
 /// Prints every case and the counts.

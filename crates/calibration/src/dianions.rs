@@ -1,10 +1,9 @@
 //! Second pKa of substrates against what is published of them.
 
-use std::sync::Arc;
-
-use enolattice_model::{Cell, Conditions, Model};
-use enolattice_molecule::Molecule;
+use enolattice_model::{Conditions, Model};
 use serde::Deserialize;
+
+use crate::cell::cell;
 
 const TABLE: &str = include_str!("../data/dianions.tsv");
 
@@ -82,33 +81,18 @@ fn compared(model: &Model, row: Row) -> Result<SecondAcidity, String> {
 
 /// pKa of each proton of a substrate in a solvent at 25 °C, free ions: that of a pot without metal ions.
 fn acidities(model: &Model, smiles: &str, solvent: &str) -> Result<Vec<f64>, String> {
-    let library = model.library();
-    let molecule = Molecule::parse(smiles).map_err(|error| format!("{smiles}: {error}"))?;
-    let missing = |what: &str| format!("the library has no {what}");
-    let base = library.base("Et3N").ok_or(missing("Et3N"))?;
-    let solvent = library.solvent(solvent).ok_or(missing(solvent))?;
-    let iodide = Molecule::parse("CI").map_err(|error| error.to_string())?;
-    let electrophile = Arc::new(model.electrophile("MeI", iodide));
-    let substrate = Arc::new(model.substrate(smiles, molecule, None));
-    let cell = Cell {
-        pair: Arc::new(model.pair(&substrate, &electrophile)),
-        substrate,
-        electrophile,
-        base: Arc::new(model.base(base)),
-        solvent: Arc::new(model.solvent(solvent)),
-        additive: None,
-        conditions: Conditions {
-            temperature_c: 25.0,
-            formation_temperature_c: 25.0,
-            base_equiv: 1.0,
-            electrophile_equiv: 1.0,
-            additive_equiv: 0.0,
-            concentration_m: 0.1,
-            time_h: 1.0,
-            dosing_min: 10.0,
-            addition: None,
-        },
+    let conditions = Conditions {
+        temperature_c: 25.0,
+        formation_temperature_c: 25.0,
+        base_equiv: 1.0,
+        electrophile_equiv: 1.0,
+        additive_equiv: 0.0,
+        concentration_m: 0.1,
+        time_h: 1.0,
+        dosing_min: 10.0,
+        addition: None,
     };
+    let cell = cell(model, [smiles, "Et3N", "CI", solvent], conditions)?;
     let substrate = model.pot(&cell, 0.0).into_iter().next();
     Ok(substrate.map(|acid| acid.pkas).unwrap_or_default())
 }

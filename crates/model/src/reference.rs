@@ -3,11 +3,11 @@
 //! Radau IIA of order 5 (Hairer and Wanner, Solving Ordinary Differential Equations II, 1996) of
 //! the `differential-equations` crate, from point to point of the time course.
 //!
-//! It gave up on some networks; since the following it does so on none of 2,000 random cells. Amounts that rounding leaves below zero made
-//! products of two or three of them run away ([`together`]). The crate seems to keep its matrices over some steps that
-//! it has rejected: a new start at every point, and another tolerance where one
-//! fails, cost little. A tolerance given once for all species is squeezed once for each of them by the crate, down
-//! to 1e-3 whatever was asked: it is given for each species.
+//! It gave up on some networks; since the following it does so on none of 2,000 random cells. Amounts that rounding
+//! leaves below zero made products of two or three of them run away ([`together`]). The crate seems to keep its
+//! matrices over some steps that it has rejected: a new start at every point, and another tolerance where one fails,
+//! cost little. A tolerance given once for all species is squeezed once for each of them by the crate, down to 1e-3
+//! whatever was asked: it is given for each species.
 
 use differential_equations::prelude::*;
 

@@ -20,20 +20,25 @@ pub(crate) struct Read {
 }
 
 /// Rows that are checked side by side before the faults found so far are counted.
-const ROWS_AT_ONCE: usize = 4_096;
+const ROWS_AT_ONCE: usize = 1_024;
 
-pub(crate) fn substrates(listed: &[SubstrateEntry], faults: &mut Faults) -> Vec<Read> {
+/// Reads the rows of a list with all threads, in their order; those at fault are left out.
+pub(crate) fn side_by_side<E: Sync, T: Send>(
+    listed: &[E],
+    faults: &mut Faults,
+    read: impl Fn(&E, usize, &mut Faults) -> Option<T> + Sync,
+) -> Vec<T> {
     let mut sound = Vec::with_capacity(listed.len());
     for (run, rows) in listed.chunks(ROWS_AT_ONCE).enumerate() {
         let first = run * ROWS_AT_ONCE;
-        let read: Vec<(Option<Read>, Faults)> = rows
-            .par_iter()
-            .enumerate()
-            .map(|(i, entry)| substrate(entry, first + i))
-            .collect();
-        for (substrate, found) in read {
+        let one = |(i, row)| {
+            let mut found = Faults::default();
+            (read(row, first + i, &mut found), found)
+        };
+        let rows: Vec<(Option<T>, Faults)> = rows.par_iter().enumerate().map(one).collect();
+        for (row, found) in rows {
             faults.append(found);
-            sound.extend(substrate);
+            sound.extend(row);
         }
         if faults.is_full() {
             break;
@@ -42,13 +47,17 @@ pub(crate) fn substrates(listed: &[SubstrateEntry], faults: &mut Faults) -> Vec<
     sound
 }
 
-fn substrate(entry: &SubstrateEntry, index: usize) -> (Option<Read>, Faults) {
-    let mut faults = Faults::default();
+pub(crate) fn substrates(listed: &[SubstrateEntry], faults: &mut Faults) -> Vec<Read> {
+    side_by_side(listed, faults, substrate)
+}
+
+fn substrate(entry: &SubstrateEntry, index: usize, faults: &mut Faults) -> Option<Read> {
     let entry = SubstrateEntry {
         place: in_list(&entry.place, "substrates", index),
         ..entry.clone()
     };
-    let read = entries::substrate(&entry, &mut faults).map(|(salt, own_pka)| Read {
+    let (salt, own_pka) = entries::substrate(&entry, faults)?;
+    Some(Read {
         name: if entry.name.is_empty() {
             entry.smiles
         } else {
@@ -56,8 +65,7 @@ fn substrate(entry: &SubstrateEntry, index: usize) -> (Option<Read>, Faults) {
         },
         salt,
         own_pka,
-    });
-    (read, faults)
+    })
 }
 
 /// The values of the axis of additives: each additive in each of its amounts.
@@ -113,6 +121,13 @@ pub(crate) fn note_empty_axes(spec: &CampaignSpec, faults: &mut Faults) {
             );
         }
     }
+}
+
+/// Has the canonical SMILES made by all threads, before one asks for them in turn.
+pub(crate) fn ranked<T: Sync>(values: &[T], salt: impl Fn(&T) -> &Salt + Sync) {
+    values.par_iter().for_each(|value| {
+        salt(value).molecule.canonical();
+    });
 }
 
 pub(crate) fn structure_of_substrate(substrate: &Read) -> (String, String) {

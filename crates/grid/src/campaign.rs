@@ -9,7 +9,7 @@ use enolattice_model::{
 use enolattice_reagents::Library;
 
 use crate::axes::{
-    Read, doses, merged, note_empty_axes, prepared, structure_of_electrophile,
+    Read, doses, merged, note_empty_axes, prepared, ranked, structure_of_electrophile,
     structure_of_substrate, substrates,
 };
 use crate::faults::Faults;
@@ -17,7 +17,9 @@ use crate::measured::{self, MeasuredYield, Measurement};
 use crate::resolve::{self, NamedStructure, Reagents};
 use crate::values::{additions, numbers, target};
 use crate::warnings::Warnings;
-use crate::{CampaignSpec, CellDigits, FaultCode, GridError, InputError, Lattice, Place, entries};
+use crate::{
+    CampaignSpec, CellDigits, FaultCode, GridError, InputError, Lattice, Place, entries, load,
+};
 
 /// A checked campaign, prepared for the model. Axes in their order.
 #[derive(Clone, Debug)]
@@ -76,20 +78,26 @@ pub(crate) struct Checked<'l> {
     /// Values of the condition axes, in the order of [`crate::conditions::CONDITIONS`].
     pub(crate) numbers: [Vec<f64>; 8],
     pub(crate) addition: Vec<Option<Addition>>,
-    yield_at_least: f64,
+    pub(crate) yield_at_least: f64,
 }
 
-/// Checks every value of a specification.
-fn checked<'l>(
+/// Checks every value of a specification; one that is not to be screened may have empty axes.
+pub(crate) fn checked<'l>(
     spec: &CampaignSpec,
     library: &'l Library,
+    is_screened: bool,
     warnings: &mut Warnings,
 ) -> Result<(Checked<'l>, Vec<Measurement>), Vec<InputError>> {
     let mut faults = Faults::default();
     entries::check_text(&spec.title, Place::of_field("title"), &mut faults);
+    if !load::is_bearable(spec, &mut faults) {
+        return Err(faults.in_order(""));
+    }
     let substrates = substrates(&spec.substrates, &mut faults);
     let reagents = resolve::reagents(spec, library, &mut faults);
-    note_empty_axes(spec, &mut faults);
+    if is_screened {
+        note_empty_axes(spec, &mut faults);
+    }
     let checked = Checked {
         substrates,
         reagents,
@@ -104,7 +112,7 @@ fn checked<'l>(
 impl Campaign {
     /// Every fault in the values of a specification: names, structures, ranges.
     pub fn faults(spec: &CampaignSpec, library: &Library) -> Vec<InputError> {
-        checked(spec, library, &mut Warnings::default())
+        checked(spec, library, true, &mut Warnings::default())
             .err()
             .unwrap_or_default()
     }
@@ -118,7 +126,7 @@ impl Campaign {
     /// Every fault at once.
     pub fn new(spec: &CampaignSpec, model: &Model) -> Result<Campaign, Vec<InputError>> {
         let mut warnings = Warnings::default();
-        let (sound, measurements) = checked(spec, model.library(), &mut warnings)?;
+        let (sound, measurements) = checked(spec, model.library(), true, &mut warnings)?;
         let Checked {
             substrates,
             reagents,
@@ -137,6 +145,8 @@ impl Campaign {
             dosing_min,
         ] = numbers;
         spec.notes.iter().for_each(|note| warnings.noted(note));
+        ranked(&substrates, |read| &read.salt);
+        ranked(&reagents.electrophiles, |named| &named.salt);
         let substrates = merged(
             "substrates",
             substrates,

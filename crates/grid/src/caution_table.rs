@@ -1,6 +1,7 @@
 //! Caution bits of a campaign's cells, joined from what each reagent brings.
 
 use enolattice_model::CautionShare;
+use rayon::prelude::*;
 
 use crate::Campaign;
 
@@ -28,8 +29,8 @@ impl CautionTable {
         let pairs: Vec<(f64, f64)> = pairs.collect();
         let bases = campaign.bases.iter();
         let solvents = campaign.solvents.iter();
-        let electrophiles = campaign.electrophiles.iter();
-        let substrates = campaign.substrates.iter();
+        let electrophiles = campaign.electrophiles.par_iter();
+        let substrates = campaign.substrates.par_iter();
         let additives = campaign.additives.iter();
         CautionTable {
             bases: bases
@@ -39,7 +40,9 @@ impl CautionTable {
                 .flat_map(|solvent| CautionShare::of_solvent(&solvent.record, &pairs))
                 .collect(),
             electrophiles: electrophiles
-                .flat_map(|e| CautionShare::of_electrophile(&e.molecule, e.named(), temperatures))
+                .flat_map_iter(|e| {
+                    CautionShare::of_electrophile(&e.molecule, e.named(), temperatures)
+                })
                 .collect(),
             substrates: substrates
                 .map(|substrate| CautionShare::of_substrate(&substrate.molecule))

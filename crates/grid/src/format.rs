@@ -6,10 +6,10 @@ use crate::rows::Row;
 use crate::{FaultCode, Place, records, rows, smiles_lines};
 
 /// Largest file that is read, bytes.
-pub const MAX_FILE_BYTES: usize = 256 << 20;
+pub const MAX_FILE_BYTES: usize = 64 << 20;
 
 /// Most rows of a file.
-pub(crate) const MAX_ROWS: usize = 1_000_000;
+pub(crate) const MAX_ROWS: usize = 100_000;
 
 /// Rows of a file, whatever its form; what is wrong with the file is noted.
 pub(crate) fn rows_of(

@@ -7,7 +7,7 @@ use enolattice_model::{Additive, Cell, Conditions, Fingerprint, Model};
 
 use crate::caution_table::CautionTable;
 use crate::lattice::Lattice;
-use crate::pairs::{PairsOfSubstrate, RecentPairs};
+use crate::pairs::{Kept, PairsOfSubstrate, RecentPairs};
 use crate::{
     BlockId, Campaign, CellDigits, CellId, Columns, GridError, MeasuredYield, Segment, fingerprint,
 };
@@ -29,7 +29,7 @@ impl Grid {
     /// [`GridError::EmptyAxis`], [`GridError::TooLarge`].
     pub fn new(campaign: Campaign, model: Arc<Model>) -> Result<Grid, GridError> {
         let lattice = Lattice::new(campaign.sizes()?)?;
-        let pairs = RecentPairs::new(campaign.electrophiles.len());
+        let pairs = RecentPairs::new(campaign.electrophiles.len(), kept(&lattice));
         let cautions = CautionTable::new(&campaign);
         Ok(Grid {
             campaign,
@@ -144,8 +144,16 @@ impl Grid {
     }
 }
 
+/// What is kept of the substrates of a campaign at once.
+pub(crate) fn kept(lattice: &Lattice) -> Kept {
+    let sizes = lattice.sizes();
+    Kept::of(AXES_OF_FORMATION.iter().fold(1, |pots, &axis| {
+        u64::saturating_mul(pots, sizes[axis].into())
+    }))
+}
+
 /// Indices of the axes, beside the substrates, on which a deprotonation depends.
-pub(crate) const AXES_OF_FORMATION: [usize; 8] = [2, 3, 4, 5, 6, 7, 9, 12];
+const AXES_OF_FORMATION: [usize; 8] = [2, 3, 4, 5, 6, 7, 9, 12];
 
 /// A walk through the cells of one segment that changes only what moves.
 ///

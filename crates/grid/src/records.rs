@@ -3,11 +3,12 @@
 use std::collections::BTreeSet;
 
 use enolattice_molecule::Molecule;
+use rayon::prelude::*;
 
 use crate::faults::Faults;
-use crate::format::{MAX_ROWS, too_many_rows};
 use crate::heading::Heading;
 use crate::keys::quoted;
+use crate::load::{MAX_ATOMS, counted};
 use crate::rows::{Row, start_of};
 use crate::{FaultCode, Place};
 
@@ -18,7 +19,10 @@ const MOST_LEFT_OUT: usize = 100;
 /// Names of data fields that are written out as left out.
 const WRITTEN_OUT: usize = 10;
 
-/// A record that is being read.
+/// Records that are read side by side.
+const RECORDS_AT_ONCE: usize = 1_024;
+
+/// A record as it stands in the file.
 #[derive(Default)]
 struct Record {
     line: u32,
@@ -27,6 +31,16 @@ struct Record {
     /// Data fields, name and value.
     fields: Vec<(String, Vec<u8>)>,
     in_field: bool,
+}
+
+/// What a record has to say.
+#[derive(Default)]
+struct ReadRecord {
+    row: Option<Row>,
+    faults: Faults,
+    left_out: BTreeSet<String>,
+    /// Atoms as they count against the limit of a campaign.
+    atoms: u64,
 }
 
 /// Reads all records. Data fields that are no columns are left out, and a note says which.
@@ -39,25 +53,27 @@ pub(crate) fn rows(
 ) -> Vec<Row> {
     let mut rows = Vec::new();
     let mut left_out = BTreeSet::new();
-    let mut record = Record::starting(1);
-    for (line, text) in (1u32..).zip(bytes.split(|byte| *byte == b'\n')) {
-        let text = text.strip_suffix(b"\r").unwrap_or(text);
-        if !text.starts_with(b"$$$$") {
-            record.take(text);
-            continue;
+    let mut atoms = 0;
+    let mut records = records(bytes);
+    loop {
+        let run: Vec<Record> = records.by_ref().take(RECORDS_AT_ONCE).collect();
+        if run.is_empty() {
+            break;
         }
-        if rows.len() >= MAX_ROWS {
-            too_many_rows(file, record.line, faults);
+        let read: Vec<ReadRecord> = run.par_iter().map(|r| r.read(file, heading)).collect();
+        for record in read {
+            faults.append(record.faults);
+            left_out.extend(record.left_out);
+            atoms += record.atoms;
+            rows.extend(record.row);
+        }
+        // a campaign that has more is refused when it is checked
+        if faults.is_full() || atoms > MAX_ATOMS {
             return rows;
         }
-        rows.extend(record.row(file, heading, faults, &mut left_out));
-        if faults.is_full() {
-            return rows;
+        while left_out.len() > MOST_LEFT_OUT {
+            left_out.pop_last();
         }
-        record = Record::starting(line + 1);
-    }
-    if !record.is_blank() {
-        rows.extend(record.row(file, heading, faults, &mut left_out));
     }
     if !left_out.is_empty() {
         let names: Vec<&str> = left_out
@@ -76,6 +92,24 @@ pub(crate) fn rows(
         ));
     }
     rows
+}
+
+/// The records of a file.
+fn records(bytes: &[u8]) -> impl Iterator<Item = Record> + '_ {
+    let mut lines = (1u32..).zip(bytes.split(|byte| *byte == b'\n'));
+    let mut first_line = 1;
+    std::iter::from_fn(move || {
+        let mut record = Record::starting(first_line);
+        for (line, text) in lines.by_ref() {
+            let text = text.strip_suffix(b"\r").unwrap_or(text);
+            if text.starts_with(b"$$$$") {
+                first_line = line + 1;
+                return Some(record);
+            }
+            record.take(text);
+        }
+        (!record.is_blank()).then_some(record)
+    })
 }
 
 impl Record {
@@ -121,14 +155,14 @@ impl Record {
         }
     }
 
-    /// The record as a row; notes why it is none.
-    fn row(
-        &self,
-        file: &str,
-        heading: &Heading,
-        faults: &mut Faults,
-        left_out: &mut BTreeSet<String>,
-    ) -> Option<Row> {
+    /// The record as a row, and why it is none.
+    fn read(&self, file: &str, heading: &Heading) -> ReadRecord {
+        let mut read = ReadRecord::default();
+        read.row = self.row(file, heading, &mut read);
+        read
+    }
+
+    fn row(&self, file: &str, heading: &Heading, read: &mut ReadRecord) -> Option<Row> {
         let place = |field: &str| Place {
             file: file.to_owned(),
             line: self.line,
@@ -143,23 +177,27 @@ impl Record {
             Ok(smiles) => smiles,
             Err(error) => {
                 let code = FaultCode::StructureInvalid;
-                faults.note(code, place("molfile"), &title, error.reason, error.remedy);
+                let (reason, remedy) = (error.reason, error.remedy);
+                read.faults
+                    .note(code, place("molfile"), &title, reason, remedy);
                 return None;
             }
         };
+        read.atoms = counted(&smiles);
         let mut sound = true;
         for (name, value) in &self.fields {
             let is_known = heading
                 .names()
                 .any(|known| known.eq_ignore_ascii_case(name));
-            if !is_known && left_out.len() < MOST_LEFT_OUT {
-                left_out.insert(name.clone());
+            if !is_known && read.left_out.len() < MOST_LEFT_OUT {
+                read.left_out.insert(name.clone());
             }
             if is_known && (value.len() > MAX_VALUE_BYTES || std::str::from_utf8(value).is_err()) {
                 let shown = start_of(value);
                 let reason = "the value is no text in UTF-8 of at most 4000 bytes";
                 let remedy = "save the file as UTF-8 and shorten the value";
-                faults.note(FaultCode::FileSyntax, place(name), &shown, reason, remedy);
+                let code = FaultCode::FileSyntax;
+                read.faults.note(code, place(name), &shown, reason, remedy);
                 sound = false;
             }
         }

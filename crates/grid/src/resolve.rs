@@ -5,8 +5,11 @@ use std::collections::HashMap;
 
 use enolattice_model::Addition;
 use enolattice_molecule::{Molecule, Salt};
-use enolattice_reagents::{Additive, Base, Library, MixtureError, ReagentKind, Solvent};
+use enolattice_reagents::{
+    Additive, Base, Library, MixtureError, NamedElectrophile, ReagentKind, Solvent,
+};
 
+use crate::axes::side_by_side;
 use crate::fault::value_of_row;
 use crate::faults::Faults;
 use crate::keys::{nearest, quoted};
@@ -171,45 +174,50 @@ fn electrophiles(axis: &AxisSpec, library: &Library, faults: &mut Faults) -> Vec
     } else {
         &[]
     };
-    let mut found: Vec<NamedStructure> = Vec::new();
-    for known in all {
+    let of_library = |known: &NamedElectrophile, place: Place, faults: &mut Faults| {
+        let salt = entries::structure(&known.smiles, place, faults)?;
+        let name = known.name.clone();
+        Some(NamedStructure { name, salt })
+    };
+    let mut found = side_by_side(all, faults, |known, _, faults| {
         let place = Place::of_field(&format!("electrophiles `{}`", known.name));
-        let salt = entries::structure(&known.smiles, place, faults);
-        found.extend(salt.map(|salt| NamedStructure {
-            name: known.name.clone(),
-            salt,
-        }));
-    }
-    for (entry, place) in placed(axis, "electrophiles") {
-        if faults.is_full() {
-            break;
-        }
+        of_library(known, place, faults)
+    });
+    found.extend(side_by_side(&axis.entries, faults, |entry, i, faults| {
+        let place = in_list(&entry.place, "electrophiles", i);
         stock::check(&entry.stock, &place, faults);
-        if entry.smiles.is_empty() {
-            let Some(known) = library.electrophile(&entry.name) else {
-                unknown(entry, &place, ReagentKind::Electrophile, library, faults);
-                continue;
-            };
-            let salt = entries::structure(&known.smiles, place, faults);
-            found.extend(salt.map(|salt| NamedStructure {
-                name: known.name.clone(),
-                salt,
-            }));
-            continue;
+        if !entry.smiles.is_empty() {
+            return electrophile(entry, &place, library, faults);
         }
-        let is_named = entries::check_text(&entry.name, value_of_row(&place, "name"), faults);
-        let salt = entries::structure(&entry.smiles, value_of_row(&place, "smiles"), faults);
-        let Some(salt) = salt.filter(|_| is_named) else {
-            continue;
-        };
-        let name = match library.electrophile_by_structure(salt.molecule.canonical()) {
-            _ if !entry.name.is_empty() => entry.name.clone(),
+        match library.electrophile(&entry.name) {
+            Some(known) => of_library(known, place, faults),
+            None => {
+                unknown(entry, &place, ReagentKind::Electrophile, library, faults);
+                None
+            }
+        }
+    }));
+    found
+}
+
+/// An electrophile that is given by its structure.
+fn electrophile(
+    entry: &Entry,
+    place: &Place,
+    library: &Library,
+    faults: &mut Faults,
+) -> Option<NamedStructure> {
+    let is_named = entries::check_text(&entry.name, value_of_row(place, "name"), faults);
+    let salt = entries::structure(&entry.smiles, value_of_row(place, "smiles"), faults);
+    let salt = salt.filter(|_| is_named)?;
+    let name = match entry.name.as_str() {
+        "" => match library.electrophile_by_structure(salt.molecule.canonical()) {
             Some(known) => known.name.clone(),
             None => entry.smiles.clone(),
-        };
-        found.push(NamedStructure { name, salt });
-    }
-    found
+        },
+        given => given.to_owned(),
+    };
+    Some(NamedStructure { name, salt })
 }
 
 /// Entries with their places; where the caller gave none, the place in the list.

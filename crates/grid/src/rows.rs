@@ -1,5 +1,7 @@
 //! Rows of a CSV file (RFC 4180, UTF-8) that a campaign names.
 
+use std::io::{self, Read};
+
 use crate::faults::Faults;
 use crate::format::{MAX_ROWS, too_many_rows};
 use crate::heading::{Heading, positions};
@@ -38,6 +40,10 @@ pub(crate) fn rows(
         );
         return Vec::new();
     };
+    let Some(titles) = titles else {
+        note_too_long(file, line, bytes, faults);
+        return Vec::new();
+    };
     let Some(positions) = positions(file, line, &titles, delimiter, heading, faults) else {
         return Vec::new();
     };
@@ -45,9 +51,13 @@ pub(crate) fn rows(
     let mut rows = Vec::new();
     while let Some((line, record)) = records.next() {
         if is_unclosed && records.peek().is_none() {
-            note_unclosed(file, line, &record, faults);
+            note_unclosed(file, line, record.as_ref(), faults);
             break;
         }
+        let Some(record) = record else {
+            note_too_long(file, line, &[], faults);
+            break;
+        };
         if rows.len() >= MAX_ROWS {
             too_many_rows(file, line, faults);
             break;
@@ -94,10 +104,34 @@ pub(crate) fn rows(
     rows
 }
 
-/// The records with the lines on which they begin; empty lines are none.
+/// Longest row that is read, bytes. It bounds what the reader keeps of a file without line ends.
+const MOST_ROW_BYTES: usize = 64 << 10;
+
+/// The records with the lines on which they begin; empty lines are none. The last may be too long.
 struct Records<'b> {
     bytes: &'b [u8],
-    reader: csv::Reader<&'b [u8]>,
+    reader: csv::Reader<Metered<'b>>,
+    ended: bool,
+}
+
+/// Bytes in memory of which so many may still be read.
+struct Metered<'b> {
+    rest: &'b [u8],
+    left: usize,
+}
+
+impl Read for Metered<'_> {
+    fn read(&mut self, buffer: &mut [u8]) -> io::Result<usize> {
+        if self.left == 0 && !self.rest.is_empty() {
+            return Err(io::ErrorKind::FileTooLarge.into());
+        }
+        let length = buffer.len().min(self.left).min(self.rest.len());
+        let (read, rest) = self.rest.split_at(length);
+        buffer[..length].copy_from_slice(read);
+        self.rest = rest;
+        self.left -= length;
+        Ok(length)
+    }
 }
 
 impl<'b> Records<'b> {
@@ -106,30 +140,60 @@ impl<'b> Records<'b> {
             .has_headers(false)
             .flexible(true)
             .delimiter(delimiter)
-            .from_reader(bytes);
-        Records { bytes, reader }
+            .from_reader(Metered {
+                rest: bytes,
+                left: 0,
+            });
+        Records {
+            bytes,
+            reader,
+            ended: false,
+        }
     }
 }
 
 impl Iterator for Records<'_> {
-    type Item = (u32, csv::ByteRecord);
+    type Item = (u32, Option<csv::ByteRecord>);
 
-    fn next(&mut self) -> Option<(u32, csv::ByteRecord)> {
-        let mut record = csv::ByteRecord::new();
-        // a flexible reader over bytes in memory has no way to fail
-        if !self.reader.read_byte_record(&mut record).unwrap_or(false) {
+    fn next(&mut self) -> Option<(u32, Option<csv::ByteRecord>)> {
+        if self.ended {
             return None;
         }
-        let (byte, line) = record
-            .position()
-            .map_or((0, 1), |at| (at.byte(), at.line()));
-        // the reader's position is that before the empty lines it skipped
-        let skipped = self.bytes[byte as usize..]
-            .iter()
-            .take_while(|byte| matches!(byte, b'\r' | b'\n'));
-        let line = line as u32 + skipped.filter(|byte| **byte == b'\n').count() as u32;
-        Some((line, record))
+        // the reader's position is that before the empty lines it skips
+        let (byte, line) = (
+            self.reader.position().byte() as usize,
+            self.reader.position().line(),
+        );
+        let rest = &self.bytes[byte.min(self.bytes.len())..];
+        let is_end = |byte: &u8| matches!(byte, b'\r' | b'\n');
+        let skipped = rest.iter().take_while(|byte| is_end(byte)).count();
+        let line_ends = rest[..skipped].iter().filter(|byte| **byte == b'\n');
+        let line = line as u32 + line_ends.count() as u32;
+        self.reader.get_mut().left = skipped + MOST_ROW_BYTES;
+        let mut record = csv::ByteRecord::new();
+        // a flexible reader over bytes in memory fails where the meter ends only
+        match self.reader.read_byte_record(&mut record) {
+            Ok(true) => Some((line, Some(record))),
+            Ok(false) => None,
+            Err(_) => {
+                self.ended = true;
+                Some((line, None))
+            }
+        }
     }
+}
+
+/// Notes a row that is too long to be read; what follows it is not looked at.
+fn note_too_long(file: &str, line: u32, bytes: &[u8], faults: &mut Faults) {
+    let place = Place {
+        file: file.to_owned(),
+        line,
+        field: "row".to_owned(),
+    };
+    let shown = start_of(bytes);
+    let reason = format!("the row has more than {MOST_ROW_BYTES} bytes");
+    let remedy = "write a row a line, and close every quotation mark";
+    faults.note(FaultCode::FileSyntax, place, &shown, reason, remedy);
 }
 
 /// A row as it was written, for a fault: its beginning, without quotation marks.
@@ -144,13 +208,13 @@ pub(crate) fn start_of(bytes: &[u8]) -> String {
 }
 
 /// Notes a quotation mark without its fellow; the reader takes all that follows as one field.
-fn note_unclosed(file: &str, line: u32, record: &csv::ByteRecord, faults: &mut Faults) {
+fn note_unclosed(file: &str, line: u32, record: Option<&csv::ByteRecord>, faults: &mut Faults) {
     let place = Place {
         file: file.to_owned(),
         line,
         field: "row".to_owned(),
     };
-    let shown = start_of(record.as_slice());
+    let shown = record.map_or_else(String::new, |record| start_of(record.as_slice()));
     let reason = "a quotation mark is not closed from here to the end of the file";
     let remedy = "close it, and write a quotation mark inside a quoted field twice";
     faults.note(FaultCode::FileSyntax, place, &shown, reason, remedy);

@@ -3,7 +3,7 @@
 use enolattice_model::{Category, FormationTable, Severity};
 use rayon::prelude::*;
 
-use crate::grid::AXES_OF_FORMATION;
+use crate::grid::kept;
 use crate::{AXES, CELLS_PER_BLOCK, CellId, Grid};
 
 /// Cells of which the cautions are looked up; of larger campaigns as many, evenly spread.
@@ -15,8 +15,6 @@ const MOST_PAIRS: u64 = 100_000;
 /// estimates from the sizes of their parts, rounded up.
 const PAIR_BYTES: u64 = 8 << 10;
 const SUBSTANCE_BYTES: u64 = 16 << 10;
-/// Substrates whose tables are kept at once.
-const SUBSTRATES_KEPT: u64 = 32;
 
 /// A value of an axis whose cells the model does not cover.
 #[derive(Clone, Debug, PartialEq)]
@@ -167,14 +165,10 @@ impl Grid {
             campaign.substrates.len() as u64,
             campaign.electrophiles.len() as u64,
         ];
-        let kept = substrates.min(SUBSTRATES_KEPT);
-        let sizes = self.lattice().sizes();
-        let pots = AXES_OF_FORMATION.iter().fold(kept, |pots, &axis| {
-            pots.saturating_mul(u64::from(sizes[axis]))
-        });
-        let pots = pots.saturating_mul(FormationTable::POT_BYTES);
-        let substances = (substrates + electrophiles) * SUBSTANCE_BYTES;
-        (kept * electrophiles * PAIR_BYTES + substances).saturating_add(pots)
+        let kept = kept(self.lattice());
+        let at_once = kept.substrates.min(substrates);
+        let of_one = electrophiles * PAIR_BYTES + kept.pots * FormationTable::POT_BYTES;
+        at_once * of_one + (substrates + electrophiles) * SUBSTANCE_BYTES
     }
 
     /// Blocks, at most `most` and evenly spread, in an order of which every beginning is spread too.

@@ -4,8 +4,8 @@ use std::collections::BTreeMap;
 use std::sync::LazyLock;
 
 use enolattice_grid::{
-    AxisSpec, Campaign, CampaignSpec, Entry, InputError, MAX_FAULTS, Sources, SubstrateEntry,
-    files_named, read,
+    AxisSpec, Campaign, CampaignSpec, Entry, InputError, MAX_ATOMS, MAX_FAULTS, Sources,
+    SubstrateEntry, files_named, read,
 };
 use enolattice_reagents::Library;
 use proptest::prelude::*;
@@ -108,8 +108,54 @@ fn counts_that_promise_too_much_are_refused_at_their_line() {
 }
 
 #[test]
+fn more_structure_than_can_be_read_in_time_is_refused_before_it_is_read() {
+    let chain = "C".repeat(300);
+    let smiles = format!("{chain}\n").repeat(20_000);
+    let sdf = {
+        let counts = "  2  1  0  0  0  0  0  0  0  0999 V2000\n";
+        let atoms = "    0.0000    0.0000    0.0000 C   0  0\n".repeat(2);
+        let record = format!("t\n\n\n{counts}{atoms}  1  2  1  0\nM  END\n$$$$\n");
+        record.repeat(30_000)
+    };
+    let csv = format!("name,smiles\n{}", "n,C\n".repeat(99_999));
+    for (file, text) in [("s.smi", smiles), ("s.sdf", sdf), ("s.csv", csv)] {
+        let campaign = format!(
+            "[substrates]\nfile = '{file}'\n[bases]\nlibrary = 'LDA'\n[electrophiles]\n\
+             library = 'MeI'\n[solvents]\nlibrary = 'THF'\n"
+        );
+        let faults = checked(&campaign, &[(file, text.as_bytes())]);
+        let codes: Vec<&str> = faults.iter().map(|fault| fault.code).collect();
+        assert_eq!(codes, ["CAMPAIGN_TOO_LARGE"], "{file}: {faults:?}");
+        assert_eq!(faults[0].place.file, file);
+        let told = faults[0].to_string();
+        assert!(told.contains(&MAX_ATOMS.to_string()), "{told}");
+    }
+}
+
+#[test]
+fn a_row_without_an_end_is_not_read_to_its_end() {
+    let commas = format!("name,smiles\na,CC{}\n", ",".repeat(1_000_000));
+    let fields = format!("name,smiles\n{}", "\"\n\",".repeat(300_000));
+    let blank = format!("name,smiles\na,CC{}b,CO\n", "\n".repeat(300_000));
+    let lines = |text: &str| -> Vec<(u32, &'static str)> {
+        let faults = checked(
+            "[substrates]\nfile = 's.csv'",
+            &[("s.csv", text.as_bytes())],
+        );
+        faults
+            .iter()
+            .filter(|fault| fault.place.file == "s.csv")
+            .map(|fault| (fault.place.line, fault.code))
+            .collect()
+    };
+    assert_eq!(lines(&commas), [(2, "FILE_SYNTAX")]);
+    assert_eq!(lines(&fields), [(2, "FILE_SYNTAX")]);
+    assert_eq!(lines(&blank), []);
+}
+
+#[test]
 fn a_file_of_nothing_but_faults_is_not_looked_at_to_its_end() {
-    let rows = "x,C1CC\n".repeat(200_000);
+    let rows = "x,C1CC\n".repeat(14_000);
     let faults = checked(
         "[substrates]\nfile = 's.csv'",
         &[("s.csv", format!("name,smiles\n{rows}").as_bytes())],

@@ -13,6 +13,7 @@ mod skeleton;
 
 use crate::{AnionClass, Bond, Molecule};
 pub(crate) use hammett::{Conjugation, ring_sigma};
+pub(crate) use skeleton::{Bicycle, bicycles};
 
 /// A candidate acidic X–H with what a group-contribution estimate needs to know of it.
 #[derive(Clone, Debug)]

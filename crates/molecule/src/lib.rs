@@ -26,8 +26,8 @@ pub use environment::{Site, sites};
 pub use pattern::Pattern;
 pub use product::{
     Product, alcohol_of_ester, alkenes, c_product, carbonyl_product, dehalogenated, dehydrated,
-    disproportionated, double_product, heteroatom_product, o_product, self_condensation_product,
-    substitution_product,
+    disproportionated, double_product, glycol_esters, heteroatom_product, o_product, ring_closed,
+    self_condensation_product, substitution_product,
 };
 pub use salt::{CompanionRole, CounterIon, Salt};
 pub use structure::{Atom, Bond, Molecule, StructureError};

@@ -2,10 +2,12 @@
 
 mod attack;
 mod carbonyl;
+mod closure;
 mod loss;
 mod nucleophile;
 
-pub use carbonyl::{alcohol_of_ester, carbonyl_product, disproportionated};
+pub use carbonyl::{alcohol_of_ester, carbonyl_product, disproportionated, glycol_esters};
+pub use closure::ring_closed;
 pub use loss::{alkenes, dehalogenated};
 pub use nucleophile::substitution_product;
 

@@ -2,7 +2,9 @@
 
 mod refusals;
 
-use chematic::core::{self as graph, AtomIdx, BondIdx, BondOrder};
+use std::sync::OnceLock;
+
+use chematic::core::{self as graph, AtomIdx, BondIdx, BondOrder, ez_markers};
 use chematic::{chem, perception, smiles};
 
 use crate::{Atom, Bond, Molecule, StructureError, symmetry, valence};
@@ -17,6 +19,11 @@ pub(crate) fn read(text: &str) -> Result<Molecule, StructureError> {
     let parsed = parse(given, &unmapped)?;
     check_graph(&parsed)?;
     perceive(given, tidy(given, parsed)?)
+}
+
+/// Canonical SMILES with stereo.
+pub(crate) fn canonical(molecule: &graph::Molecule) -> Option<String> {
+    smiles::rdkit_canonical_smiles(molecule).ok()
 }
 
 /// Canonical SMILES without stereo.
@@ -65,6 +72,25 @@ pub(crate) fn check_text(given: &str) -> Result<(), StructureError> {
         ));
     }
     Ok(())
+}
+
+/// Atoms that a text writes, whether or not it is a SMILES; counted without reading it.
+pub(crate) fn atoms_written(text: &str) -> usize {
+    let mut in_brackets = false;
+    let is_atom = |byte: &u8| match byte {
+        b'[' => {
+            in_brackets = true;
+            true
+        }
+        b']' => {
+            in_brackets = false;
+            false
+        }
+        // of Cl and Br the first letter counts
+        b'A'..=b'Z' | b'b' | b'c' | b'n' | b'o' | b'p' | b's' | b'*' => !in_brackets,
+        _ => false,
+    };
+    text.bytes().filter(is_atom).count()
 }
 
 fn check_single(given: &str) -> Result<(), StructureError> {
@@ -164,9 +190,18 @@ fn check_graph(parsed: &graph::Molecule) -> Result<(), StructureError> {
 
 /// Charges and bonds of hypervalent nitrogen and its kin set right, hydrogens folded, Kekulé form.
 fn tidy(given: &str, mut molecule: graph::Molecule) -> Result<graph::Molecule, StructureError> {
-    // The written form is checked first: the Kekulé form hides aromatic atoms outside rings.
-    smiles::rdkit_sanitized_model(&molecule).map_err(|_| impossible(given, &molecule))?;
-    let edits = smiles::rdkit_cleanup_edits(&molecule).map_err(|_| impossible(given, &molecule))?;
+    let is_aromatic = molecule.atoms().any(|(_, atom)| atom.aromatic)
+        || molecule
+            .bonds()
+            .any(|(_, bond)| bond.order == BondOrder::Aromatic);
+    if is_aromatic {
+        // The written form is checked first: the Kekulé form hides aromatic atoms outside rings.
+        smiles::rdkit_sanitized_model(&molecule).map_err(|_| impossible(given, &molecule))?;
+    }
+    let edits = match may_be_hypervalent(&molecule) {
+        true => smiles::rdkit_cleanup_edits(&molecule).map_err(|_| impossible(given, &molecule))?,
+        false => None,
+    };
     for edit in edits.into_iter() {
         for (atom, charge) in edit.charges {
             molecule.set_charge(AtomIdx(atom as u32), charge as i8);
@@ -189,14 +224,48 @@ fn tidy(given: &str, mut molecule: graph::Molecule) -> Result<graph::Molecule, S
     Ok(molecule)
 }
 
+/// Whether there is an atom whose charge and bonds may have to be set right: nitrogen of valence five,
+/// phosphorus, halogens with more than one bond. Looking is cheaper than the copy that a cleaning takes.
+fn may_be_hypervalent(molecule: &graph::Molecule) -> bool {
+    molecule.atoms().any(|(index, atom)| {
+        let bonds = || {
+            molecule
+                .neighbors(index)
+                .map(|(_, bond)| molecule.bond(bond).order)
+        };
+        match atom.element.atomic_number() {
+            7 => {
+                let hydrogens = f64::from(atom.hydrogen_count.unwrap_or(0));
+                let orders = bonds().map(|order| match order {
+                    BondOrder::Double => 2.0,
+                    BondOrder::Triple => 3.0,
+                    BondOrder::Aromatic => 1.5,
+                    _ => 1.0,
+                });
+                hydrogens + orders.sum::<f64>() > 4.0
+            }
+            15 => true,
+            17 | 35 | 53 => bonds().count() > 1,
+            _ => false,
+        }
+    })
+}
+
 /// Perceives a Kekulé graph.
 fn perceive(given: &str, kekule: graph::Molecule) -> Result<Molecule, StructureError> {
     let model = smiles::rdkit_sanitized_model(&kekule).map_err(|_| impossible(given, &kekule))?;
-    let canonical =
-        smiles::rdkit_canonical_smiles(&kekule).map_err(|_| impossible(given, &kekule))?;
     let atoms = perceived_atoms(given, &kekule, &model)?;
     let neighbours = perceived_bonds(given, &kekule, &model)?;
     valence::check(&kekule, &atoms)?;
+    let canonical = OnceLock::new();
+    if kekule
+        .bonds()
+        .any(|(bond, _)| ez_markers::raw_direction(&kekule, bond).is_some())
+    {
+        // marks of double bonds that contradict each other show only when they are written
+        let written = self::canonical(&kekule).ok_or_else(|| impossible(given, &kekule))?;
+        canonical.get_or_init(|| written);
+    }
     let isotopes: Vec<u16> = kekule
         .atoms()
         .map(|(_, atom)| atom.isotope.unwrap_or(0))
@@ -211,6 +280,7 @@ fn perceive(given: &str, kekule: graph::Molecule) -> Result<Molecule, StructureE
         atoms,
         neighbours,
         rings: rings(&kekule),
+        bicycles: OnceLock::new(),
         kekule,
     })
 }

@@ -1,9 +1,11 @@
 //! A perceived, capped molecule.
 
 use std::fmt;
+use std::sync::OnceLock;
 
 use chematic::core as graph;
 
+use crate::environment::{Bicycle, bicycles};
 use crate::{Salt, reading, salt};
 
 /// Why a SMILES was refused.
@@ -62,13 +64,16 @@ pub struct Molecule {
     pub(crate) smiles: String,
     /// Kekulé form with stereo as written: what products are edited from.
     pub(crate) kekule: graph::Molecule,
-    pub(crate) canonical: String,
+    /// Made when first asked for: ranking the atoms takes longer than all the rest.
+    pub(crate) canonical: OnceLock<String>,
     pub(crate) formula: String,
     pub(crate) exact_mass: f64,
     pub(crate) molar_mass: f64,
     pub(crate) atoms: Vec<Atom>,
     pub(crate) neighbours: Vec<Vec<(usize, Bond)>>,
     pub(crate) rings: Vec<Vec<usize>>,
+    /// Made when first asked for, once for all sites.
+    pub(crate) bicycles: OnceLock<Vec<Bicycle>>,
     pub(crate) symmetry_classes: Vec<u32>,
 }
 
@@ -115,19 +120,34 @@ impl Molecule {
         salt::read(smiles)
     }
 
+    /// Atoms that a SMILES writes, its counter-ions among them: a look at the text that takes no time,
+    /// for those who must know how much they are about to read. Of any other text it means nothing.
+    ///
+    /// ```
+    /// use enolattice_molecule::Molecule;
+    ///
+    /// assert_eq!(Molecule::atoms_written("[Cl-].C[NH2+]Cc1ccccc1Br"), 11);
+    /// ```
+    pub fn atoms_written(smiles: &str) -> usize {
+        reading::atoms_written(smiles)
+    }
+
     /// The SMILES as it was given.
     pub fn smiles(&self) -> &str {
         &self.smiles
     }
 
-    /// Canonical SMILES with stereo.
+    /// Canonical SMILES with stereo, made at the first call.
     pub fn canonical(&self) -> &str {
-        &self.canonical
+        self.canonical.get_or_init(|| {
+            // what the writer refuses was refused by the reader
+            reading::canonical(&self.kekule).unwrap_or_else(|| self.smiles.clone())
+        })
     }
 
     /// Canonical SMILES without stereo (and without isotope labels).
     pub fn canonical_flat(&self) -> String {
-        reading::flat_smiles(&self.kekule).unwrap_or_else(|| self.canonical.clone())
+        reading::flat_smiles(&self.kekule).unwrap_or_else(|| self.canonical().to_owned())
     }
 
     /// Molecular formula, Hill order.
@@ -169,6 +189,11 @@ impl Molecule {
         &self.rings
     }
 
+    /// The pairs of rings that share a bridge.
+    pub(crate) fn bicycles(&self) -> &[Bicycle] {
+        self.bicycles.get_or_init(|| bicycles(&self.rings))
+    }
+
     /// Whether the atom is in a ring.
     pub fn in_ring(&self, atom: usize) -> bool {
         self.rings.iter().any(|ring| ring.contains(&atom))
@@ -181,6 +206,14 @@ impl Molecule {
             position.is_some_and(|i| {
                 ring[(i + 1) % ring.len()] == b || ring[(i + ring.len() - 1) % ring.len()] == b
             })
+        })
+    }
+
+    /// Whether the SMILES gives the atom a configuration.
+    pub fn has_configuration(&self, atom: usize) -> bool {
+        let found = u32::try_from(atom).ok().filter(|_| atom < self.atoms.len());
+        found.is_some_and(|i| {
+            self.kekule.atom(graph::AtomIdx(i)).chirality != graph::Chirality::None
         })
     }
 

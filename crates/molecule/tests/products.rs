@@ -4,8 +4,8 @@ use std::collections::BTreeMap;
 
 use enolattice_molecule::{
     ElectrophilicGroup, Molecule, alcohol_of_ester, alkenes, c_product, carbonyl_product,
-    dehalogenated, dehydrated, disproportionated, double_product, o_product, recognise,
-    self_condensation_product, sites, substitution_product,
+    dehalogenated, dehydrated, disproportionated, double_product, glycol_esters, o_product,
+    recognise, self_condensation_product, sites, substitution_product,
 };
 
 /// Mass of ¹H, Da (AME2020).
@@ -228,6 +228,19 @@ fn products_at_carbonyl_groups_keep_their_atoms() {
     let (acid, alcohol) = disproportionated(&aldehyde, 1).unwrap();
     let reactants = [&aldehyde, &aldehyde, &water];
     assert_balanced(&reactants, &[&acid, &alcohol], "furfural");
+
+    let butanal = molecule("CC(C)C=O");
+    let aldol = self_condensation_product(&butanal, 1, 3).unwrap();
+    let [primary, secondary] = glycol_esters(&butanal, 3, &aldol).unwrap().unwrap();
+    assert_eq!(
+        primary.canonical(),
+        molecule("CC(C)C(=O)OCC(C)(C)C(O)C(C)C").canonical()
+    );
+    assert_eq!(
+        secondary.canonical(),
+        molecule("CC(C)C(=O)OC(C(C)C)C(C)(C)CO").canonical()
+    );
+    assert_balanced(&[&butanal; 3], &[&primary], "2-methylpropanal");
 
     let bromide = molecule("COC(=O)Cc1ccc(Br)cc1");
     let bare = dehalogenated(&bromide, 9).unwrap();

@@ -102,6 +102,7 @@ pub struct Library {
     electrophile_structures: HashMap<String, usize>,
     acidities: Vec<Acidity>,
     acidities_by_structure: HashMap<String, Vec<Acidity>>,
+    formulas_of_acids: HashSet<String>,
     electrophilicities: Vec<Electrophilicity>,
     electrophilicity_structures: HashMap<String, usize>,
     /// Tables that were laid over those of the program, in that order.
@@ -241,6 +242,11 @@ impl Library {
             .get(canonical)
             .map_or(&[], Vec::as_slice)
     }
+    /// Whether a compound of this molecular formula was measured; only then is it worth the time to ask
+    /// [`Library::acidities_of`] with a canonical SMILES.
+    pub fn measures_formula(&self, formula: &str) -> bool {
+        self.formulas_of_acids.contains(formula)
+    }
     /// All measured acidities (C–H, N–H, O–H, S–H), in the order of the tables.
     pub fn acidities(&self) -> &[Acidity] {
         &self.acidities
@@ -307,6 +313,7 @@ impl Library {
 
     fn take_acidities(&mut self, rows: Vec<Lined<Measured<Acidity>>>) {
         for Measured { molecule, record } in rows.into_iter().map(|row| row.record) {
+            self.formulas_of_acids.insert(molecule.formula().to_owned());
             if let Some(flat) = without_stereo(&molecule) {
                 let isomers = self.acidities_by_structure.entry(flat);
                 isomers.or_default().push(record.clone());

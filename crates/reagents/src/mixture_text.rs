@@ -49,14 +49,8 @@ fn did_you_mean(suggestion: &Option<String>) -> String {
 /// Names and volumes of a text `A/B 4:1`; equal volumes where there are none.
 pub(crate) fn parse(text: &str) -> Result<Vec<(&str, f64)>, MixtureError> {
     let text = text.trim();
-    let is_ratio = |word: &str| {
-        word.contains(':')
-            && word
-                .bytes()
-                .all(|b| b.is_ascii_digit() || b == b'.' || b == b':')
-    };
     let (names, ratio) = match text.rsplit_once(char::is_whitespace) {
-        Some((names, last)) if is_ratio(last) => (names, Some(last)),
+        Some((names, last)) if last.contains(':') => (names, Some(last)),
         _ => (text, None),
     };
     let names: Vec<&str> = names.split('/').map(str::trim).collect();

@@ -58,6 +58,10 @@ fn what_is_no_mixture_is_refused_with_the_reason() {
             "`1.2.3` is no volume of a part: write a number from 0.001 to 1000",
         ),
         (
+            "THF/DMF 4:x",
+            "`x` is no volume of a part: write a number from 0.001 to 1000",
+        ),
+        (
             "THF/DMF/DMSO/water",
             "4 parts: a mixture has two or three, written `THF/DMF 4:1`",
         ),

@@ -122,6 +122,18 @@ pub(crate) fn has_quinoid_acceptor(molecule: &Molecule, ipso: usize) -> bool {
     })
 }
 
+/// Whether a neutral ring nitrogen stands ortho or para to `ipso` in a six-membered ring.
+pub(crate) fn takes_charge_by_nitrogen(molecule: &Molecule, ipso: usize) -> bool {
+    let Some(ring) = six_ring(molecule, ipso) else {
+        return false;
+    };
+    let start = ring.iter().position(|atom| *atom == ipso).unwrap_or(0);
+    [1, 3, 5].iter().any(|step| {
+        let atom = molecule.atoms()[ring[(start + step) % 6]];
+        atom.element == 7 && atom.charge == 0
+    })
+}
+
 /// The six-membered aromatic ring that holds `atom`.
 pub(crate) fn six_ring(molecule: &Molecule, atom: usize) -> Option<&[usize]> {
     molecule

@@ -5,14 +5,17 @@ use super::descriptors::Descriptors;
 use super::group::{Group, beyond, double_bonded, group, is_saturated_carbon, is_trigonal};
 use super::hammett::{
     Conjugation, aza_beside, has_quinoid_acceptor, inductive, ring_sigma, ring_sigma_alone,
-    six_ring,
+    six_ring, takes_charge_by_nitrogen,
 };
 use super::skeleton::smallest_ring;
 use crate::Bond;
 
+/// A nitrogen at the site whose lone pair is a ring's or that of two acyl groups.
+const TIED_UP: &str = "azolyl or imide in place of amino";
+
 impl Surroundings<'_> {
     pub(super) fn aryl_terms(&self, descriptors: &mut Descriptors) {
-        let sharing = self.acceptors() + self.count(|kind| matches!(kind, Group::Aryl));
+        let sharing = self.sharing();
         let sigma_name = match sharing {
             0 | 1 => "σ of aryl, alone",
             2 => "σ of aryl, charge shared by two",
@@ -35,6 +38,9 @@ impl Surroundings<'_> {
                     descriptors.add(sigma_name, sigma);
                     let quinoid = f64::from(has_quinoid_acceptor(self.molecule, aryl));
                     descriptors.add(quinoid_name, quinoid);
+                    if sharing <= 1 && takes_charge_by_nitrogen(self.molecule, aryl) {
+                        descriptors.add("aza in ring that takes the charge alone", 1.0);
+                    }
                     if !in_site_ring {
                         let fused = self.fused_rings(ring);
                         let name = if self.acceptors() == 0 {
@@ -65,10 +71,28 @@ impl Surroundings<'_> {
         let crowded = match (self.count(|kind| kind == Group::Aryl), self.acceptors()) {
             (3, _) => "third aryl",
             (2, 1..) => "second aryl beside acceptor",
+            (1, 1) if self.has_lone_pairs() => "heteroatom beside aryl and acceptor",
             (1, 2..) if self.aryl_is_turned_between_carbonyls() => "aryl between carbonyls",
             _ => return,
         };
         descriptors.add(crowded, 1.0);
+    }
+
+    /// Whether O, N or S stands at the site.
+    fn has_lone_pairs(&self) -> bool {
+        self.count(|kind| matches!(kind, Group::Alkoxy | Group::Amino | Group::Sulfanyl)) > 0
+    }
+
+    /// How many groups share the charge: acceptors and aryls, and where there is no acceptor what else takes some.
+    fn sharing(&self) -> usize {
+        use Group::*;
+        let acceptors = self.acceptors();
+        let others = self.count(|kind| matches!(kind, Sulfanyl | Phosphanyl | Imino | Vinyl));
+        let aryls = self.count(|kind| kind == Aryl);
+        match acceptors {
+            0 => aryls + others,
+            _ => aryls + acceptors,
+        }
     }
 
     /// An aryl between two carbonyls is turned out of their plane, unless these are tied back in a ring of five.
@@ -158,7 +182,7 @@ impl Surroundings<'_> {
             match kind {
                 Group::Aldehyde => descriptors.add("aldehyde in place of ketone", 1.0),
                 Group::Thioester => descriptors.add("sulfur in place of ester oxygen", 1.0),
-                Group::Imidoyl => descriptors.add("imine or hydrazone in place of amide", 1.0),
+                Group::Imidoyl => self.imidoyl_terms(descriptors, *carbonyl),
                 _ => {}
             }
             let in_ring = smallest_ring(self.molecule, &[self.site, *carbonyl]).is_some();
@@ -202,10 +226,54 @@ impl Surroundings<'_> {
             }
         } else if is_trigonal(self.molecule, far) {
             match group(self.molecule, far, carbonyl) {
-                Group::Vinyl => descriptors.add("vinyl beyond carbonyl", 1.0),
+                Group::Vinyl => {
+                    descriptors.add("vinyl beyond carbonyl", 1.0);
+                    self.vinylogous_donor(descriptors, carbonyl, far);
+                }
                 kind if kind.is_carbonyl() => descriptors.add("σI beyond carbonyl", 1.0),
                 _ => {}
             }
+        }
+    }
+
+    /// Oxygen, sulfur or nitrogen at the far end of an enone gives to its carbonyl as in an ester or amide.
+    fn vinylogous_donor(&self, descriptors: &mut Descriptors, carbonyl: usize, vinyl: usize) {
+        let Some(end) = double_bonded(self.molecule, vinyl, 6) else {
+            return;
+        };
+        for (far, _) in beyond(self.molecule, end, vinyl).filter(|(far, _)| *far != carbonyl) {
+            let drawn_away = beyond(self.molecule, far, end)
+                .any(|(other, _)| group(self.molecule, other, far).is_acceptor());
+            match group(self.molecule, far, end) {
+                _ if drawn_away => {}
+                Group::Alkoxy | Group::Sulfanyl => {
+                    descriptors.add("vinylogous ester beyond carbonyl", 1.0);
+                }
+                Group::Amino => descriptors.add("vinylogous amide beyond carbonyl", 1.0),
+                _ => {}
+            }
+        }
+    }
+
+    /// Imines, hydrazones, oximes, imidates and amidines.
+    fn imidoyl_terms(&self, descriptors: &mut Descriptors, carbon: usize) {
+        descriptors.add("imine or hydrazone in place of amide", 1.0);
+        for (far, bond) in beyond(self.molecule, carbon, self.site) {
+            match group(self.molecule, far, carbon) {
+                Group::Aryl => descriptors.add("aryl on imidoyl carbon", 1.0),
+                Group::Alkoxy | Group::Sulfanyl => {
+                    descriptors.add("oxygen or sulfur on imidoyl carbon", 1.0);
+                }
+                Group::Amino => descriptors.add("amino on imidoyl carbon", 1.0),
+                _ => {}
+            }
+            if bond != Bond::Double {
+                continue;
+            }
+            let aryls = beyond(self.molecule, far, carbon)
+                .filter(|(end, _)| group(self.molecule, *end, far) == Group::Aryl)
+                .count();
+            descriptors.add("aryl on imidoyl nitrogen", aryls as f64);
         }
     }
 
@@ -304,14 +372,24 @@ impl Surroundings<'_> {
                 self.lone_pairs_beside_sulfonyl(descriptors);
             }
             if self.molecule.atoms()[*atom].aromatic {
+                if *kind == Group::Amino {
+                    self.azolyl_terms(descriptors, *atom);
+                }
                 continue;
             }
             let beyond_it: Vec<(usize, Group)> = beyond(self.molecule, *atom, self.site)
                 .map(|(far, _)| (far, group(self.molecule, far, *atom)))
                 .collect();
-            let is_acylated = beyond_it.iter().any(|(_, far)| far.is_acceptor());
+            let acyls = beyond_it
+                .iter()
+                .filter(|(_, far)| far.is_acceptor())
+                .count();
+            let is_acylated = acyls > 0;
             if *kind == Group::Amino && is_acylated {
                 descriptors.add("acyl on amino", 1.0);
+                if acyls > 1 {
+                    descriptors.add(TIED_UP, 1.0);
+                }
             } else if is_acylated
                 || beyond_it
                     .iter()
@@ -320,6 +398,20 @@ impl Surroundings<'_> {
                 descriptors.add(name, 1.0);
             }
         }
+    }
+
+    /// The lone pair of a pyrrole-like nitrogen is the ring's: its field is left.
+    fn azolyl_terms(&self, descriptors: &mut Descriptors, nitrogen: usize) {
+        let mut rings = self.molecule.rings().iter();
+        let Some(ring) = rings.find(|ring| ring.len() == 5 && ring.contains(&nitrogen)) else {
+            return;
+        };
+        descriptors.add(TIED_UP, 1.0);
+        let aza = ring
+            .iter()
+            .filter(|atom| **atom != nitrogen && self.molecule.atoms()[**atom].element == 7)
+            .count();
+        descriptors.add("aza in azolyl", aza as f64);
     }
 
     /// The carbanion beside a sulfonyl is pyramidal and keeps its charge: lone pairs repel it.
@@ -346,7 +438,11 @@ impl Surroundings<'_> {
                     .filter(|(other, _)| self.molecule.atoms()[*other].element != 1)
                     .count()
             };
-            if substituents(far, nitrogen) >= 2 && substituents(self.site, nitrogen) >= 2 {
+            let in_ring = smallest_ring(self.molecule, &[self.site, nitrogen, far]).is_some();
+            if !in_ring
+                && substituents(far, nitrogen) >= 2
+                && substituents(self.site, nitrogen) >= 2
+            {
                 descriptors.add("two groups at each end of azaallyl", 1.0);
             }
             let donors = beyond(self.molecule, far, nitrogen)

@@ -268,6 +268,16 @@ fn saturated(molecule: &Molecule, site: usize, d: &mut Descriptors) -> AnionClas
         d.add("thio in imide", thio.count() as f64);
         if smallest_ring(molecule, &s.all_acyls(site)).is_none() {
             d.add("open-chain imide", 1.0);
+        } else {
+            let drawn = s.acyls.iter().filter(|acyl| {
+                beyond(molecule, **acyl, site).any(|(far, bond)| {
+                    bond == Bond::Single && matches!(molecule.atoms()[far].element, 8 | 16)
+                })
+            });
+            d.add(
+                "oxygen or sulfur on carbonyl of ring imide",
+                drawn.count() as f64,
+            );
         }
         AnionClass::ImideNitrogen
     } else if let Some(sulfonyl) = s.sulfonyls.first() {

@@ -2,7 +2,7 @@
 
 use super::carbon::Surroundings;
 use super::descriptors::Descriptors;
-use super::group::{Group, beyond, group, is_saturated_carbon};
+use super::group::{Group, beyond, double_bonded, group, is_saturated_carbon, is_trigonal};
 use super::hammett::inductive;
 use super::skeleton::{Bridge, cyclopentadiene_ring, smallest_ring};
 
@@ -90,10 +90,15 @@ impl Surroundings<'_> {
                 .filter(|(atom, _)| is_saturated_carbon(self.molecule, *atom))
                 .count();
             let in_ring = smallest_ring(self.molecule, &[self.site, alkyl]).is_some();
-            if branches >= 2 && !in_ring {
+            if branches >= 2 && !in_ring && !self.lies_between_linear_groups() {
                 descriptors.add("branched alkyl between acceptors", (branches - 1) as f64);
             }
         }
+    }
+
+    /// Nitriles leave room beside them.
+    fn lies_between_linear_groups(&self) -> bool {
+        self.count(|kind| matches!(kind, Group::Nitrile | Group::Isocyano)) >= 2
     }
 
     fn carbonyl_in_ring_of_site(&self) -> bool {
@@ -130,6 +135,9 @@ impl Surroundings<'_> {
             return;
         }
         match self.between_ring_carbonyls() {
+            _ if self.becomes_azole() => {
+                descriptors.add("enolate becomes furan, pyrrole or azole", 1.0)
+            }
             Some(true) => descriptors.add("between two esters of a ring", 1.0),
             Some(false) => descriptors.add("between two carbonyls of a ring", 1.0),
             None => self.one_carbonyl_in_ring(descriptors),
@@ -156,6 +164,39 @@ impl Surroundings<'_> {
         }
     }
 
+    /// Whether the enolate of a carbonyl group in a ring of five makes that ring aromatic: each further member is a
+    /// heteroatom or trigonal, none has a second C=O (azlactones, butenolides, pyrazolones, isoxazolones).
+    pub(super) fn becomes_azole(&self) -> bool {
+        let atoms = self.molecule.atoms();
+        let oxo = |atom: usize| {
+            double_bonded(self.molecule, atom, 8)
+                .or(double_bonded(self.molecule, atom, 16))
+                .is_some()
+        };
+        self.with(Group::is_carbonyl)
+            .filter(|carbonyl| oxo(*carbonyl))
+            .any(|carbonyl| {
+                self.molecule.rings().iter().any(|ring| {
+                    let held =
+                        ring.len() == 5 && ring.contains(&self.site) && ring.contains(&carbonyl);
+                    let mut others = ring
+                        .iter()
+                        .filter(|atom| ![self.site, carbonyl].contains(atom));
+                    let heteroatoms = ring
+                        .iter()
+                        .filter(|atom| atoms[**atom].element != 6)
+                        .count();
+                    held && heteroatoms > 0
+                        && others.all(|atom| {
+                            atoms[*atom].element != 6
+                                || (is_trigonal(self.molecule, *atom)
+                                    && !atoms[*atom].aromatic
+                                    && !oxo(*atom))
+                        })
+                })
+            })
+    }
+
     /// The site of 9,10-dihydroanthracene or xanthene: its aryls cannot turn out of the plane.
     fn lies_between_aryls_of_a_ring(&self) -> bool {
         let aryls: Vec<usize> = self.with(|kind| kind == Group::Aryl).collect();
@@ -179,6 +220,7 @@ impl Surroundings<'_> {
             let name = match (fused, kind) {
                 (Some(name), _) => name,
                 (None, Group::Ester) => "lactone",
+                (None, Group::Imide) => "imide in ring",
                 (None, Group::AlkylKetone | Group::ArylKetone) => match size {
                     5 if *kind == Group::ArylKetone => "aryl ketone in ring of five",
                     ..=5 => "ketone in ring of four or five",

@@ -22,29 +22,49 @@ const SMALLEST_BICYCLE: usize = 7;
 /// From S = 9 on a bridgehead double bond is isolable at room temperature (same review).
 const RELAXED_BICYCLE: usize = 9;
 
-/// Where `atom` sits in the bridged bicycles of the molecule.
-pub(crate) fn bridge(molecule: &Molecule, atom: usize) -> Bridge {
-    let rings = molecule.rings();
-    let mut smallest_head = None;
-    let mut heads = 0;
-    let mut spanning = false;
+/// Two rings that share a bridge: three atoms or more.
+#[derive(Clone, Copy, Debug)]
+pub(crate) struct Bicycle {
+    /// The rings, by their numbers.
+    rings: [usize; 2],
+    /// Bridge atoms S: all but the two bridgeheads.
+    bridge_atoms: usize,
+}
+
+/// The bridged bicycles of a molecule with these rings.
+pub(crate) fn bicycles(rings: &[Vec<usize>]) -> Vec<Bicycle> {
+    let mut found = Vec::new();
     for (i, first) in rings.iter().enumerate() {
-        for second in &rings[i + 1..] {
+        for (j, second) in rings.iter().enumerate().skip(i + 1) {
             let shared = first
                 .iter()
                 .filter(|member| second.contains(member))
                 .count();
-            if shared < 3 || shared == first.len() {
-                continue;
+            if shared >= 3 && shared < first.len() {
+                found.push(Bicycle {
+                    rings: [i, j],
+                    bridge_atoms: first.len() + second.len() - shared - 2,
+                });
             }
-            let bicycle = first.len() + second.len() - shared - 2;
-            let (in_first, in_second) = (first.contains(&atom), second.contains(&atom));
-            if in_first && in_second && is_junction(molecule, atom, first, second) {
-                heads += 1;
-                smallest_head = Some(smallest_head.map_or(bicycle, |s: usize| s.min(bicycle)));
-            } else if (in_first || in_second) && bicycle < SMALLEST_BICYCLE {
-                spanning = true;
-            }
+        }
+    }
+    found
+}
+
+/// Where `atom` sits in the bridged bicycles of the molecule.
+pub(crate) fn bridge(molecule: &Molecule, atom: usize) -> Bridge {
+    let mut smallest_head = None;
+    let mut heads = 0;
+    let mut spanning = false;
+    for bicycle in molecule.bicycles() {
+        let [first, second] = bicycle.rings.map(|ring| molecule.rings()[ring].as_slice());
+        let size = bicycle.bridge_atoms;
+        let (in_first, in_second) = (first.contains(&atom), second.contains(&atom));
+        if in_first && in_second && is_junction(molecule, atom, first, second) {
+            heads += 1;
+            smallest_head = Some(smallest_head.map_or(size, |s: usize| s.min(size)));
+        } else if (in_first || in_second) && size < SMALLEST_BICYCLE {
+            spanning = true;
         }
     }
     match smallest_head {

@@ -85,6 +85,41 @@ pub fn disproportionated(
     Ok((acid.finish()?.0, alcohol.finish()?.0))
 }
 
+/// The two esters of a glycol that three molecules of an aldehyde become by aldol addition and hydride transfer
+/// (Tishchenko), which exchange their acyl group: that of the primary alcohol and that of the other. None where
+/// `aldol`, the adduct of two of them, has lost its aldehyde group.
+///
+/// # Errors
+/// `carbonyl` is no aldehyde's, or a product is beyond the caps of [`Molecule::parse`].
+pub fn glycol_esters(
+    aldehyde: &Molecule,
+    carbonyl: usize,
+    aldol: &Product,
+) -> Result<Option<[Molecule; 2]>, StructureError> {
+    if !matches!(aldehyde.acyl_at(carbonyl), Some(Acyl::Aldehyde)) {
+        return Err(no_carbonyl(carbonyl, "an aldehyde"));
+    }
+    let molecule = &aldol.molecule;
+    let mut around = molecule.neighbours(aldol.site).iter();
+    let kept = around.find(|(atom, _)| matches!(molecule.acyl_at(*atom), Some(Acyl::Aldehyde)));
+    let oxo = kept.and_then(|(carbon, _)| Some((*carbon, molecule.carbonyl_oxygen(*carbon)?)));
+    let (Some((carbon, primary)), Some(secondary)) = (oxo, aldol.hydroxyl) else {
+        return Ok(None);
+    };
+    let ester_of = |oxygen: usize| {
+        let mut draft = Draft::of(molecule);
+        let offset = draft.append(aldehyde);
+        draft.reorder(carbon, primary, BondOrder::Single);
+        draft.add_hydrogen(carbon);
+        draft.add_hydrogen(primary);
+        draft.take_hydrogen(oxygen)?;
+        draft.take_hydrogen(offset + carbonyl)?;
+        draft.bind(oxygen, offset + carbonyl, BondOrder::Single);
+        Ok::<_, StructureError>(draft.finish()?.0)
+    };
+    Ok(Some([ester_of(primary)?, ester_of(secondary)?]))
+}
+
 fn no_carbonyl(atom: usize, wanted: &str) -> StructureError {
     StructureError::new(
         format!("atom {atom} is no carbonyl carbon of {wanted}"),

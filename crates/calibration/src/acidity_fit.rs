@@ -14,7 +14,7 @@ use std::path::{Path, PathBuf};
 use enolattice_reagents::Library;
 
 pub(crate) use observations::{Observation, Observations};
-pub(crate) use solver::{Fit, Term};
+pub(crate) use solver::{Fit, Term, cholesky, solve};
 pub(crate) use validation::Validation;
 
 /// Why the fit could not be made or written.

@@ -98,6 +98,17 @@ fn known() -> Vec<Balanced> {
             ],
         ),
         (
+            "toluenesulfonic acid and acetate in water, levelled",
+            vec![
+                acid("toluenesulfonic acid", &[-2.8], &[0.1, 0.0]),
+                acid("acetic acid", &[4.76], &[0.0, 0.04]),
+                Acid {
+                    charge: 1,
+                    ..acid("water", &[-1.74, 15.7], &[0.0, 55.3, 0.0])
+                },
+            ],
+        ),
+        (
             "benzoic acid, benzoate and 4-nitrophenol in MeCN",
             vec![benzoic, nitrophenol],
         ),
@@ -117,8 +128,18 @@ const PAIRING: [(&str, &str); 6] = [
     ("Et3N", "MeCN"),
 ];
 
+/// Pots in which an additive gives or takes a proton, and strong acids in solvents that level them.
+const ADDED: [(&str, &str, &str); 6] = [
+    ("K2CO3", "MeCN", "TBAHSO4"),
+    ("NaOH", "water", "TBAHSO4"),
+    ("Et3N", "DCM", "TBAHSO4"),
+    ("LDA", "THF", "TMEDA"),
+    ("nBuLi", "Et2O", "TMEDA"),
+    ("NaHCO3", "DMF", "TBAHSO4"),
+];
+
 /// One whole pot for each base of the library, with substrate, electrophile, solvent, temperature, amounts and conversion
-/// drawn with a fixed seed, then [`PAIRING`].
+/// drawn with a fixed seed, then [`PAIRING`] and [`ADDED`].
 ///
 /// # Errors
 /// A sentence if the demo's substrates or a reagent cannot be read.
@@ -136,19 +157,27 @@ pub fn pots(model: &Model) -> Result<Vec<Balanced>, String> {
         })
         .collect();
     let mut sampler = Sampler::default();
-    let drawn: Vec<(&str, &str)> = bases
+    let drawn: Vec<(&str, &str, Option<&str>)> = bases
         .iter()
         .map(|base| {
             let solvent = &solvents[sampler.pick(solvents.len())];
-            (base.name.as_str(), solvent.name.as_str())
+            (base.name.as_str(), solvent.name.as_str(), None)
         })
         .collect();
+    let pairing = PAIRING.map(|(base, solvent)| (base, solvent, None));
+    let added = ADDED.map(|(base, solvent, additive)| (base, solvent, Some(additive)));
     let mut all = known();
-    for (base, solvent) in drawn.into_iter().chain(PAIRING) {
+    for (base, solvent, additive) in drawn.into_iter().chain(pairing).chain(added) {
         let base = library.base(base).ok_or(format!("{base}: no such base"))?;
         let solvent = library
             .solvent(solvent)
             .ok_or(format!("{solvent}: no such solvent"))?;
+        let additive = additive
+            .map(|name| {
+                let record = library.additive(name);
+                record.ok_or(format!("{name}: no such additive"))
+            })
+            .transpose()?;
         let electrophile = electrophiles[sampler.pick(electrophiles.len())].clone();
         let substrate = substrates[sampler.pick(substrates.len())].clone();
         let temperature_c = [-78.0, 0.0, 25.0, 60.0][sampler.pick(4)];
@@ -158,9 +187,9 @@ pub fn pots(model: &Model) -> Result<Vec<Balanced>, String> {
             electrophile,
             base: Arc::new(model.base(base)),
             solvent: Arc::new(model.solvent(solvent)),
-            additive: None,
+            additive: additive.map(|record| Arc::new(model.additive(record))),
             conditions: Conditions {
-                additive_equiv: 0.0,
+                additive_equiv: if additive.is_some() { 0.5 } else { 0.0 },
                 temperature_c,
                 formation_temperature_c: temperature_c,
                 base_equiv: [0.1, 1.1, 2.2][sampler.pick(3)],

@@ -15,6 +15,7 @@ struct Row {
     published: Option<f64>,
     taken_by: Option<String>,
     left_by: Option<String>,
+    site: Option<usize>,
     source: String,
 }
 
@@ -23,6 +24,8 @@ struct Row {
 pub struct SecondAcidity {
     /// The acid.
     pub name: String,
+    /// Its SMILES.
+    pub smiles: String,
     /// Medium of all numbers.
     pub medium: String,
     /// pKa of the first proton.
@@ -35,6 +38,10 @@ pub struct SecondAcidity {
     pub taken_by: Option<(String, f64)>,
     /// A base that leaves it, likewise.
     pub left_by: Option<(String, f64)>,
+    /// The atom that loses the second proton, by the model.
+    pub site: usize,
+    /// The atom that is known to lose it, or one equivalent to it by symmetry.
+    pub known_site: Option<usize>,
     /// Who says so.
     pub source: String,
 }
@@ -63,24 +70,32 @@ fn compared(model: &Model, row: Row) -> Result<SecondAcidity, String> {
         })
         .transpose()
     };
-    let pkas = acidities(model, &row.smiles, &row.medium)?;
-    let &[first, second] = pkas.as_slice() else {
+    let (pkas, site) = acidities(model, &row.smiles, &row.medium)?;
+    let (&[first, second], Some(site)) = (pkas.as_slice(), site) else {
         return Err(format!("{}: no second proton that bases reach", row.name));
     };
     Ok(SecondAcidity {
+        site,
+        known_site: row.site,
         first,
         second,
         published: row.published,
         taken_by: pka_of(row.taken_by)?,
         left_by: pka_of(row.left_by)?,
         name: row.name,
+        smiles: row.smiles,
         medium: row.medium,
         source: row.source,
     })
 }
 
-/// pKa of each proton of a substrate in a solvent at 25 °C, free ions: that of a pot without metal ions.
-fn acidities(model: &Model, smiles: &str, solvent: &str) -> Result<Vec<f64>, String> {
+/// pKa of each proton of a substrate in a solvent at 25 °C, free ions: that of a pot without metal ions; and the atom
+/// that loses the second.
+fn acidities(
+    model: &Model,
+    smiles: &str,
+    solvent: &str,
+) -> Result<(Vec<f64>, Option<usize>), String> {
     let conditions = Conditions {
         temperature_c: 25.0,
         formation_temperature_c: 25.0,
@@ -94,5 +109,6 @@ fn acidities(model: &Model, smiles: &str, solvent: &str) -> Result<Vec<f64>, Str
     };
     let cell = cell(model, [smiles, "Et3N", "CI", solvent], conditions)?;
     let substrate = model.pot(&cell, 0.0).into_iter().next();
-    Ok(substrate.map(|acid| acid.pkas).unwrap_or_default())
+    let pkas = substrate.map(|acid| acid.pkas).unwrap_or_default();
+    Ok((pkas, model.second_site(&cell)))
 }

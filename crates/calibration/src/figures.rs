@@ -33,9 +33,11 @@ fn second_acidities(text: &mut String, model: &Model) -> Result<(), String> {
     text.push_str(
         "\n## Dianions\n\n\
          Second pKa, free ions at 25 °C. Few were measured; most rows hold it between the acids of a base that leaves the\n\
-         second proton and of one that takes it.\n\n\
-         | acid | medium | first pKa | second pKa | measured | left by | taken by | source |\n\
-         | --- | --- | --- | --- | --- | --- | --- | --- |\n",
+         second proton and of one that takes it. Site: the atom that loses it and reacts then, by the model and, where one is known, as found.\n\n\
+         Not reached: the O,C-dianions of 3-hydroxy esters and the N,C-dianion of 2-indolinone. Which proton goes first is settled by the pKa in DMSO,\n\
+         and there C–H is the stronger acid of both; that lithium prefers alkoxides in ethers does not turn it round.\n\n\
+         | acid | medium | first pKa | second pKa | measured | left by | taken by | site | found | source |\n\
+         | --- | --- | --- | --- | --- | --- | --- | --- | --- | --- |\n",
     );
     let base = |base: &Option<(String, f64)>| match base {
         Some((name, pka)) => format!("{name} ({pka:.1})"),
@@ -45,14 +47,19 @@ fn second_acidities(text: &mut String, model: &Model) -> Result<(), String> {
         let measured = one.published.map(|pka| format!("{pka:.1}"));
         let _ = writeln!(
             text,
-            "| {} | {} | {:.1} | {:.1} | {} | {} | {} | {} |",
+            "| {} `{}` | {} | {:.1} | {:.1} | {} | {} | {} | {} | {} | {} |",
             one.name,
+            one.smiles,
             one.medium,
             one.first,
             one.second,
             measured.unwrap_or_default(),
             base(&one.left_by),
             base(&one.taken_by),
+            one.site,
+            one.known_site
+                .map(|site| site.to_string())
+                .unwrap_or_default(),
             one.source
         );
     }
@@ -75,8 +82,8 @@ fn proton_balance(text: &mut String, model: &Model) -> Result<(), String> {
     let _ = writeln!(
         text,
         "\n## Proton balance\n\n\
-         One whole pot for each base of the library and a few with published pKa: substrate, base with all its steps, solvent,\n\
-         water and hydrates, electrophile, product, leaving group. `tests/python/check_balance.py` compares every amount with\n\
+         One whole pot for each base of the library and a few with published pKa: substrate, base with all its steps, solvent as\n\
+         acid and base, water and hydrates likewise, additive, electrophile, product, leaving group. `tests/python/check_balance.py` compares every amount with\n\
          Cantera's minimisation of the Gibbs energy, to 1e-8 of the acid's amount.\n\n\
          | pots | acids in more than one step | with homoconjugation | change of mass, mol/L | change of charge, mol/L |\n\
          | --- | --- | --- | --- | --- |\n\

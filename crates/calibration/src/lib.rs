@@ -18,3 +18,4 @@ pub mod selectivity;
 pub mod solvers;
 pub mod substitution;
 mod table;
+pub mod uncertainty;

@@ -7,6 +7,7 @@ use std::sync::Arc;
 use clap::{Parser, Subcommand};
 use enolattice_calibration::{
     acidity_fit, balance, cases, figures, medium, networks, practice, rates, reactions, solvers,
+    uncertainty,
 };
 use enolattice_model::Model;
 use enolattice_reagents::Library;
@@ -38,6 +39,15 @@ enum Command {
     Reactions,
     /// Holds published selectivities, relative rates, nucleophilicities and reactions against the model and writes the page on it.
     Rates,
+    /// Holds the screen's p_hit and expected yield against joint draws and writes the page on it.
+    Uncertainty {
+        /// Number of cells.
+        #[arg(default_value_t = 150)]
+        cells: usize,
+        /// Number of draws.
+        #[arg(default_value_t = 4096)]
+        draws: u32,
+    },
     /// Compares the fast solver with the stiff reference on random cells and writes the page on it.
     Solvers {
         /// Number of cells.
@@ -74,6 +84,10 @@ fn run(arguments: &Arguments) -> Result<(), String> {
         Command::Practice => printed(&practice::section(&model()?)?),
         Command::Reactions => printed(&reactions::page(&model()?)?),
         Command::Rates => written("rates.md", rates::page(&model()?)?),
+        Command::Uncertainty { cells, draws } => written(
+            "uncertainty.md",
+            uncertainty::page(&model()?, cells, draws)?,
+        ),
         Command::Solvers { cells } => written("solvers.md", solvers::page(&model()?, cells)?),
     }
 }

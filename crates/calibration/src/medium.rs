@@ -1,28 +1,15 @@
 //! The medium against published pKa of the same acid in several solvents.
 
+mod fit;
+mod pairs;
+
 use std::collections::BTreeMap;
 use std::fmt::Write;
 
-use enolattice_model::{AcidSite, Model, acid_sites};
-use enolattice_molecule::{AnionClass, Bond, Molecule};
-use enolattice_reagents::Cation;
-use serde::Deserialize;
+use enolattice_model::Model;
 
-const PAIRS: &str = include_str!("../data/medium_pairs.tsv");
-
-/// How a medium of lithium ion pairs is marked.
-const PAIRED: &str = ", Li⁺";
-
-/// One acid in one solvent.
-#[derive(Deserialize)]
-struct Row {
-    name: String,
-    smiles: String,
-    pka_dmso: f64,
-    solvent: String,
-    cation: String,
-    pka: f64,
-}
+use fit::Fit;
+use pairs::{Pair, pairs};
 
 /// One acid, as published and as the model has it.
 #[derive(Clone, Debug)]
@@ -39,11 +26,82 @@ pub struct Comparison {
     pub published: f64,
     /// The model's, on the solvent's own scale.
     pub model: f64,
+    /// Model less published with the parameters fitted to all other acids; `None` where these say nothing of it.
+    pub left_out: Option<f64>,
 }
 
 impl Comparison {
-    fn error(&self) -> f64 {
+    /// Model less published.
+    pub fn error(&self) -> f64 {
         self.model - self.published
+    }
+}
+
+/// A parameter of the medium: its mean in the model, and what the pairs say.
+#[derive(Clone, Debug)]
+pub struct FittedParameter {
+    /// Name.
+    pub name: String,
+    /// Mean in the model.
+    pub mean: f64,
+    /// Standard uncertainty in the model.
+    pub sigma: f64,
+    /// Fitted to the pairs.
+    pub fitted: f64,
+    /// Standard error of the fit.
+    pub standard_error: f64,
+}
+
+/// Errors of one kind of acid in one medium.
+pub(crate) struct Errors {
+    pub(crate) n: usize,
+    pub(crate) rms: f64,
+    pub(crate) mean: f64,
+    pub(crate) worst: f64,
+    /// RMS of acids left out, and of how many.
+    pub(crate) left_out: Option<(usize, f64)>,
+}
+
+impl Errors {
+    pub(crate) fn of(compared: &[&Comparison]) -> Errors {
+        let errors: Vec<f64> = compared.iter().map(|one| one.error()).collect();
+        let left: Vec<f64> = compared.iter().filter_map(|one| one.left_out).collect();
+        let n = errors.len().max(1) as f64;
+        Errors {
+            n: errors.len(),
+            rms: rms(&errors),
+            mean: errors.iter().sum::<f64>() / n,
+            worst: errors
+                .iter()
+                .fold(0.0, |a: f64, &b| if b.abs() > a.abs() { b } else { a }),
+            left_out: (!left.is_empty()).then(|| (left.len(), rms(&left))),
+        }
+    }
+
+    /// The RMS of acids left out, for a table; of how many, where not of all.
+    pub(crate) fn left_out_text(&self) -> String {
+        match self.left_out {
+            Some((n, rms)) if n == self.n => format!("{rms:.2}"),
+            Some((n, rms)) => format!("{rms:.2} (n = {n})"),
+            None => "none".to_owned(),
+        }
+    }
+}
+
+fn rms(errors: &[f64]) -> f64 {
+    (errors.iter().map(|error| error * error).sum::<f64>() / errors.len().max(1) as f64).sqrt()
+}
+
+/// Ion-pair acidities are relative to each other: their zero is put where the errors have no mean.
+fn centre(pairs: &[Pair], errors: &mut [f64]) {
+    let relative = || pairs.iter().map(Pair::is_relative);
+    let n = relative().filter(|is| *is).count().max(1) as f64;
+    let sum: f64 = relative()
+        .zip(errors.iter())
+        .filter_map(|(is, error)| is.then_some(error))
+        .sum();
+    for (error, is) in errors.iter_mut().zip(relative()) {
+        *error -= if is { sum / n } else { 0.0 };
     }
 }
 
@@ -52,174 +110,129 @@ impl Comparison {
 /// # Errors
 /// A sentence that names a row which cannot be used.
 pub fn compare(model: &Model) -> Result<Vec<Comparison>, String> {
-    let mut reader = csv::ReaderBuilder::new()
-        .delimiter(b'\t')
-        .comment(Some(b'#'))
-        .from_reader(PAIRS.as_bytes());
-    reader
-        .deserialize()
-        .map(|row| compared(model, &row.map_err(|e| e.to_string())?))
-        .collect::<Result<Vec<_>, _>>()
-        .map(relative_to_each_other)
-}
-
-/// Ion-pair acidities are relative to each other: their zero is put where the errors have no mean.
-fn relative_to_each_other(mut compared: Vec<Comparison>) -> Vec<Comparison> {
-    let paired = |one: &Comparison| one.medium.contains(PAIRED);
-    let errors: Vec<f64> = compared
+    let pairs = pairs(model)?;
+    let fit = Fit::new(model, &pairs)?;
+    let mut errors = pairs
         .iter()
-        .filter(|one| paired(one))
-        .map(Comparison::error)
-        .collect();
-    let mean = errors.iter().sum::<f64>() / errors.len().max(1) as f64;
-    compared
-        .iter_mut()
-        .filter(|one| one.medium.contains(PAIRED))
-        .for_each(|one| one.model -= mean);
-    compared
+        .map(|pair| {
+            let pka = pair.predicted(model, &[]);
+            pka.map(|pka| pka - pair.published)
+                .ok_or_else(|| format!("{}: {} has no scale", pair.name, pair.medium))
+        })
+        .collect::<Result<Vec<_>, _>>()?;
+    centre(&pairs, &mut errors);
+    let all = pairs.into_iter().zip(errors).zip(fit.left_out);
+    Ok(all
+        .map(|((pair, error), left_out)| Comparison {
+            name: pair.name,
+            medium: pair.medium,
+            kind: pair.kind,
+            pka_dmso: pair.pka_dmso,
+            published: pair.published,
+            model: pair.published + error,
+            left_out,
+        })
+        .collect())
 }
 
-fn compared(model: &Model, row: &Row) -> Result<Comparison, String> {
-    let fault = |what: &str| format!("{}: {what}", row.name);
-    let library = model.library();
-    let molecule = Molecule::parse(&row.smiles).map_err(|e| fault(&e.to_string()))?;
-    let solvent = library
-        .solvent(&row.solvent)
-        .ok_or_else(|| fault("the library lacks its solvent"))?;
-    let cation = match row.cation.as_str() {
-        "none" => Cation::None,
-        "Li" => Cation::Lithium,
-        _ => return Err(fault("its counter-ion is unknown")),
-    };
-    let (class, donors) = match cationic_donors(&molecule) {
-        0 => {
-            let sites = acid_sites(&molecule, library);
-            let off = |site: &AcidSite| (site.pka_dmso - row.pka_dmso).abs();
-            let meant = sites
-                .iter()
-                .min_by(|a, b| off(a).total_cmp(&off(b)))
-                .ok_or_else(|| fault("it has no acidic site"))?;
-            (meant.class, 1)
-        }
-        donors => (AnionClass::Neutral, donors),
-    };
-    let pka = model
-        .pka_in_medium(
-            row.pka_dmso,
-            class,
-            donors,
-            &model.solvent(solvent),
-            cation,
-            25.0,
-        )
-        .ok_or_else(|| fault("its solvent has no scale of its own"))?;
-    Ok(Comparison {
-        name: row.name.clone(),
-        medium: match cation {
-            Cation::Lithium => format!("{}{PAIRED}", row.solvent),
-            _ => row.solvent.clone(),
-        },
-        kind: match class {
-            AnionClass::Neutral => kind_of_base(&molecule),
-            class => kind(class),
-        },
-        pka_dmso: row.pka_dmso,
-        published: row.pka,
-        model: pka,
-    })
+/// The parameters that the pairs settle.
+///
+/// # Errors
+/// As [`compare`], and a sentence that names a term which is no parameter of the model.
+pub fn parameters(model: &Model) -> Result<Vec<FittedParameter>, String> {
+    let fit = Fit::new(model, &pairs(model)?)?;
+    let of_model = |name: &str| model.parameters().iter().find(|one| one.name == name);
+    fit.values
+        .into_iter()
+        .map(|(name, fitted, standard_error)| {
+            let one = of_model(&name).ok_or_else(|| format!("{name}: no such parameter"))?;
+            Ok(FittedParameter {
+                mean: one.mean,
+                sigma: one.sigma,
+                name,
+                fitted,
+                standard_error,
+            })
+        })
+        .collect()
 }
 
-/// N–H of a cationic acid; 0 for a neutral one.
-fn cationic_donors(molecule: &Molecule) -> u8 {
-    let is_cation = molecule
-        .atoms()
-        .iter()
-        .map(|atom| i32::from(atom.charge))
-        .sum::<i32>()
-        > 0;
-    let charged = molecule.atoms().iter().filter(|atom| atom.charge > 0);
-    let donors: u8 = charged.map(|atom| atom.hydrogens).sum();
-    if is_cation { donors } else { 0 }
-}
-
-/// Kind of the base whose cationic acid this is, by what its charged nitrogen is bound to.
-fn kind_of_base(molecule: &Molecule) -> &'static str {
-    let atoms = molecule.atoms();
-    let Some(nitrogen) = (0..atoms.len()).find(|i| atoms[*i].charge > 0) else {
-        return "bases";
-    };
-    let beside = molecule.neighbours(nitrogen);
-    if atoms[nitrogen].aromatic {
-        "pyridines and imidazole"
-    } else if beside.iter().any(|(other, _)| atoms[*other].element == 15) {
-        "phosphazenes"
-    } else if beside.iter().any(|(_, bond)| *bond == Bond::Double) {
-        "amidines and guanidines"
-    } else if beside.iter().any(|(other, _)| atoms[*other].aromatic) {
-        "anilines"
-    } else {
-        "alkylamines"
+/// The comparisons of each kind of acid in each medium.
+pub(crate) fn by_kind(compared: &[Comparison]) -> BTreeMap<(&str, &str), Vec<&Comparison>> {
+    let mut sets: BTreeMap<(&str, &str), Vec<&Comparison>> = BTreeMap::new();
+    for one in compared {
+        let key = (one.kind, one.medium.as_str());
+        sets.entry(key).or_default().push(one);
     }
-}
-
-fn kind(class: AnionClass) -> &'static str {
-    use AnionClass::*;
-    match class {
-        class if class.is_carbanion() => "carbon acids",
-        Alkoxide | Hydroxide => "alcohols and water",
-        Phenoxide | Carboxylate => "phenols and carboxylic acids",
-        Thiolate => "thiols",
-        _ => "N–H acids",
-    }
+    sets
 }
 
 /// The page: RMS by solvent and kind, then every acid.
 ///
 /// # Errors
-/// As [`compare`].
+/// As [`parameters`].
 pub fn page(model: &Model) -> Result<String, String> {
     let compared = compare(model)?;
-    let mut by_kind: BTreeMap<(&str, &str), Vec<f64>> = BTreeMap::new();
-    for one in &compared {
-        let key = (one.kind, one.medium.as_str());
-        by_kind.entry(key).or_default().push(one.error());
-    }
     let mut page = String::from(
         "# The medium and how good it is\n\n\
          Written by `cargo run -p enolattice-calibration -- medium`; do not edit.\n\n\
          pKa of the same acid in other solvents from its pKa in DMSO, on the scale of each solvent, against\n\
-         published values (`crates/calibration/data/medium_pairs.tsv`, from memory). Several parameters of the medium rest on\n\
-         these very pairs: the table says how well one form serves them all, not how well it foretells others.\n\
+         published values (`crates/calibration/data/medium_pairs.tsv`, from memory). The parameters of the medium rest on\n\
+         these very pairs; `left out` has the RMS of acids foretold with the parameters fitted to all others. It is missing where an acid's\n\
+         parameters rest on it alone.\n\
          Acidities of lithium ion pairs are relative to each other: their zero is put where the errors have no mean.\n\
          Other solvents have no published scale here; the model interpolates them by permittivity and by the Kamlet–Taft\n\
          constants α and β.\n\n\
-         | acids | solvent | n | RMS | mean error | worst |\n\
-         | --- | --- | --- | --- | --- | --- |\n",
+         Out of reach: fluorenes. Carbanions spread over arenes are held by the polarisable DMSO: in water and MeCN they are weaker\n\
+         acids than the class of their acceptor says. A class of anion of their own would mend it; no base or electrophile\n\
+         of the library is one, and other acids of the kind were not measured outside DMSO.\n\n\
+         | acids | solvent | n | RMS | left out | mean error | worst |\n\
+         | --- | --- | --- | --- | --- | --- | --- |\n",
     );
-    for ((kind, medium), errors) in &by_kind {
-        let n = errors.len() as f64;
-        let rms = (errors.iter().map(|e| e * e).sum::<f64>() / n).sqrt();
-        let mean = errors.iter().sum::<f64>() / n;
-        let worst = errors
-            .iter()
-            .fold(0.0_f64, |a, &b| if b.abs() > a.abs() { b } else { a });
+    for ((kind, medium), set) in &by_kind(&compared) {
+        let errors = Errors::of(set);
         let _ = writeln!(
             page,
-            "| {kind} | {medium} | {n} | {rms:.2} | {mean:+.2} | {worst:+.2} |"
+            "| {kind} | {medium} | {} | {:.2} | {} | {:+.2} | {:+.2} |",
+            errors.n,
+            errors.rms,
+            errors.left_out_text(),
+            errors.mean,
+            errors.worst
         );
     }
-    page.push_str("\n| acid | DMSO | solvent | published | model | error |\n| --- | --- | --- | --- | --- | --- |\n");
+    page.push_str("\n| acid | DMSO | solvent | published | model | error | left out |\n| --- | --- | --- | --- | --- | --- | --- |\n");
     for one in &compared {
+        let left_out = one.left_out.map(|error| format!("{error:+.1}"));
         let _ = writeln!(
             page,
-            "| {} | {:.1} | {} | {:.1} | {:.1} | {:+.1} |",
+            "| {} | {:.1} | {} | {:.1} | {:.1} | {:+.1} | {} |",
             one.name,
             one.pka_dmso,
             one.medium,
             one.published,
             one.model,
-            one.error()
+            one.error(),
+            left_out.unwrap_or_default()
         );
     }
+    fitted_parameters(&mut page, model)?;
     Ok(page)
+}
+
+fn fitted_parameters(page: &mut String, model: &Model) -> Result<(), String> {
+    page.push_str(
+        "\n## Parameters\n\n\
+         Fitted to all pairs, each drawn to a start from elsewhere (`crates/calibration/data/medium_terms.tsv`); a test holds the model's\n\
+         means within one standard uncertainty of the fit.\n\n\
+         | parameter | model | σ | fitted | standard error |\n| --- | --- | --- | --- | --- |\n",
+    );
+    for one in parameters(model)? {
+        let _ = writeln!(
+            page,
+            "| {} | {} | {} | {:.2} | {:.2} |",
+            one.name, one.mean, one.sigma, one.fitted, one.standard_error
+        );
+    }
+    Ok(())
 }

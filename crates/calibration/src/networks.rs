@@ -22,7 +22,6 @@ const TELLING: std::ops::RangeInclusive<f64> = 0.02..=0.98;
 /// A sentence if the demo's substrates cannot be read or the reference gives up.
 pub fn to_json(model: &Model) -> Result<Value, String> {
     let mut cells = RandomCells::new(model)?;
-    let mean = model.draw(0, 0);
     let mut of_kind: BTreeMap<String, usize> = BTreeMap::new();
     let mut cases = Vec::new();
     for _ in 0..TRIED {
@@ -30,7 +29,7 @@ pub fn to_json(model: &Model) -> Result<Value, String> {
         let Some(kind) = kind(&cell) else { continue };
         let so_far = of_kind.entry(kind.clone()).or_default();
         let tells = |cell: &Cell| {
-            let product = model.yield_in(cell, &mean);
+            let product = model.yield_at_mean(cell);
             product.is_some_and(|product| TELLING.contains(&product))
         };
         if *so_far == OF_EACH_KIND || !tells(&cell) {

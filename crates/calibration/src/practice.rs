@@ -9,6 +9,7 @@ use crate::cell::cell;
 use crate::table::rows;
 
 const PRACTICE: &str = include_str!("../data/practice.tsv");
+const SECOND: &str = include_str!("../data/practice_second.tsv");
 
 #[derive(Deserialize)]
 struct Row {
@@ -23,6 +24,9 @@ struct Row {
     concentration_m: f64,
     time_h: f64,
     expected: String,
+    /// The yield when the model first saw the reaction; none where that was not written down or not covered.
+    #[serde(default)]
+    first_look: Option<f64>,
 }
 
 impl Row {
@@ -81,16 +85,30 @@ pub struct Judged {
     pub expected_yield: Option<f64>,
     /// Whether the two agree. What the model does not cover is not met.
     pub is_met: bool,
+    /// Whether the yield that the model gave when it first saw the reaction agreed; none where that was not written down.
+    pub was_met: Option<bool>,
     /// What the model gives as reason: the largest losses, or why it does not cover the reaction.
     pub reason: String,
 }
 
-/// All reactions of the table.
+/// All reactions of the first list.
 ///
 /// # Errors
 /// A sentence that names a row which cannot be used.
 pub fn judge(model: &Model) -> Result<Vec<Judged>, String> {
-    let table: Vec<Row> = rows(PRACTICE)?;
+    judged_all(model, PRACTICE)
+}
+
+/// All reactions of the second list, which was written down before the model saw any of them.
+///
+/// # Errors
+/// As [`judge`].
+pub fn judge_second(model: &Model) -> Result<Vec<Judged>, String> {
+    judged_all(model, SECOND)
+}
+
+fn judged_all(model: &Model, table: &str) -> Result<Vec<Judged>, String> {
+    let table: Vec<Row> = rows(table)?;
     table.iter().map(|row| judged(model, row)).collect()
 }
 
@@ -106,6 +124,7 @@ fn judged(model: &Model, row: &Row) -> Result<Judged, String> {
             Some(expected_yield) => row.is_met(expected_yield)?,
             None => false,
         },
+        was_met: row.first_look.map(|found| row.is_met(found)).transpose()?,
         reason: reason(&explanation),
     })
 }
@@ -121,26 +140,49 @@ fn reason(explanation: &Explanation) -> String {
     losses.join(", ")
 }
 
-/// The comparison as a section of a page: how many are met, and those that are not.
+/// The comparison as sections of a page: how many are met, and those that are not.
 ///
 /// # Errors
 /// As [`judge`].
 pub fn section(model: &Model) -> Result<String, String> {
-    let all = judge(model)?;
-    let met = all.iter().filter(|one| one.is_met).count();
+    let (first, second) = (judge(model)?, judge_second(model)?);
+    let count = |all: &[Judged]| all.iter().filter(|one| one.is_met).count();
     let mut text = format!(
         "\n## Common reactions\n\n\
          What texts and collections of checked procedures lead one to expect of {} common reactions, as generous bounds of the yield\n\
          (`crates/calibration/data/practice.tsv`, from memory, by the authors of this project). The model was developed with this\n\
-         list at hand: it is no independent test. Met: {met} of {}.\n",
-        all.len(),
-        all.len()
+         list at hand: it is no independent test. Met: {} of {}.\n",
+        first.len(),
+        count(&first),
+        first.len()
     );
-    if met < all.len() {
-        text.push_str(
-            "\nNot met:\n\n| reaction | expected | model | why, says the model |\n| --- | --- | --- | --- |\n",
-        );
+    text.push_str(&not_met(&first));
+    let at_first = second
+        .iter()
+        .filter(|one| one.was_met == Some(true))
+        .count();
+    let _ = write!(
+        text,
+        "\n## Common reactions, second list\n\n\
+         {} more, with failures and problems of selectivity on purpose (`crates/calibration/data/practice_second.tsv`, from memory, by the\n\
+         authors of this project). They were written down before the model saw any of them: at first look it met {at_first}. After\n\
+         what they showed was mended, mechanism by mechanism, it meets {} of {}, which is no independent test any more.\n",
+        second.len(),
+        count(&second),
+        second.len()
+    );
+    text.push_str(&not_met(&second));
+    Ok(text)
+}
+
+fn not_met(all: &[Judged]) -> String {
+    let mut text = String::new();
+    if all.iter().all(|one| one.is_met) {
+        return text;
     }
+    text.push_str(
+        "\nNot met:\n\n| reaction | expected | model | why, says the model |\n| --- | --- | --- | --- |\n",
+    );
     for one in all.iter().filter(|one| !one.is_met) {
         let found = match one.expected_yield {
             Some(found) => format!("{found:.2}"),
@@ -152,5 +194,5 @@ pub fn section(model: &Model) -> Result<String, String> {
             one.name, one.expected, one.reason
         );
     }
-    Ok(text)
+    text
 }

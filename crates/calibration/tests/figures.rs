@@ -35,5 +35,9 @@ fn second_protons_lie_between_the_bases_that_take_and_leave_them() {
             assert!(one.second > pka - 1.0, "{one:?}");
         }
         assert!(one.second > one.first, "{one:?}");
+        assert!(
+            one.known_site.is_none_or(|site| site == one.site),
+            "{one:?}"
+        );
     }
 }

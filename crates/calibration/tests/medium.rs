@@ -36,3 +36,43 @@ fn carbon_acids_in_water_are_within_one_unit() {
         errors.len()
     );
 }
+
+/// The means of the model are those of the fit to the published pairs.
+#[test]
+fn the_parameters_are_those_of_the_fit() {
+    for one in medium::parameters(&model()).expect("every row can be used") {
+        assert!((one.mean - one.fitted).abs() <= one.sigma, "{one:?}");
+    }
+}
+
+/// Published pairs (from memory); acids foretold from all others too, where a kind has five members and more.
+#[test]
+fn bases_of_every_kind_are_within_one_unit_in_every_solvent() {
+    let compared = medium::compare(&model()).expect("every row can be used");
+    for kind in [
+        "alkylamines",
+        "anilines",
+        "pyridines and imidazole",
+        "amidines and guanidines",
+        "phosphazenes",
+    ] {
+        for solvent in ["water", "MeCN", "THF", "MeOH"] {
+            let of = |error: fn(&medium::Comparison) -> Option<f64>| -> Vec<f64> {
+                let mut set = compared.iter().collect::<Vec<_>>();
+                set.retain(|one| one.kind == kind && one.medium == solvent);
+                set.into_iter().filter_map(error).collect()
+            };
+            let rms = |errors: &[f64]| {
+                let sum: f64 = errors.iter().map(|error| error * error).sum();
+                (sum / errors.len().max(1) as f64).sqrt()
+            };
+            let fitted = of(|one| Some(one.error()));
+            let left_out = of(|one| one.left_out);
+            assert!(rms(&fitted) <= 1.0, "{kind} in {solvent}: {fitted:?}");
+            assert!(
+                left_out.len() < 5 || rms(&left_out) <= 1.0,
+                "{kind} in {solvent}"
+            );
+        }
+    }
+}

@@ -57,3 +57,13 @@ fn alkyl_groups_have_the_relative_rates_of_the_averages() {
         assert!(error.abs() <= 0.3, "{one:?}");
     }
 }
+
+/// Shares of elimination by ethoxide (Hughes, Ingold and others 1948, from memory), to fifteen points.
+#[test]
+fn published_shares_of_elimination_are_met() {
+    let shares = substitution::elimination_shares(&model()).expect("every row can be used");
+    for one in &shares {
+        let error = one.error().expect("an alkylating agent with β hydrogens");
+        assert!(error.abs() <= 15.0, "{one:?}");
+    }
+}

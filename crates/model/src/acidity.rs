@@ -122,9 +122,10 @@ fn from_measurement(site: Site, contribution: Contribution, acidity: &Acidity) -
 }
 
 fn from_estimate(site: Site, contribution: Contribution, pka: f64) -> AcidSite {
-    let outside = !coverage().covers(&contribution);
-    let nearby: Vec<(f64, f64)> = coverage()
-        .nearest(&contribution, NEIGHBOURS)
+    let nearest = coverage().nearest(&contribution, NEIGHBOURS);
+    let nearest_distance = nearest.first().map(|(_, distance)| *distance);
+    let outside = !coverage().covers_at(&contribution, nearest_distance);
+    let nearby: Vec<(f64, f64)> = nearest
         .into_iter()
         .filter_map(|(i, distance)| Some((distance, seen_sites()[i].held_out_error?)))
         .collect();
@@ -152,6 +153,9 @@ fn measured_sites<'a>(
     candidates: &[Site],
     estimates: &[(Contribution, f64)],
 ) -> Vec<(usize, &'a Acidity)> {
+    if !library.measures_formula(molecule.formula()) {
+        return Vec::new();
+    }
     let exact = library.acidities_of(molecule.canonical());
     let found = if exact.is_empty() && molecule.canonical().contains(['@', '/', '\\']) {
         library.acidities_of(&molecule.canonical_flat())

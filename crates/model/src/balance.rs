@@ -1,5 +1,6 @@
 //! The proton balance: all acids and bases at equilibrium, one monotone unknown.
 
+mod lyonium;
 mod pot;
 
 use enolattice_units::math;

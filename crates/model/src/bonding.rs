@@ -164,7 +164,7 @@ pub(crate) fn taken_by_base(kind: &ElectrophileKind) -> TakenByBase {
     }
 }
 
-/// Whether a tertiary amine that takes the electrophile hands it on again: acyl, silyl and sulfonyl
+/// Whether a tertiary amine that takes the electrophile hands it on again: acyl, silyl, sulfonyl and halogen
 /// transfer by way of its onium salt (common practice).
 pub(crate) fn is_carried_by_amines(kind: &ElectrophileKind) -> bool {
     matches!(
@@ -172,5 +172,8 @@ pub(crate) fn is_carried_by_amines(kind: &ElectrophileKind) -> bool {
         ElectrophileKind::Acyl { .. }
             | ElectrophileKind::Silyl { .. }
             | ElectrophileKind::Cumulene { .. }
+            | ElectrophileKind::Transfer {
+                donor: Donor::Halogen(..)
+            }
     )
 }

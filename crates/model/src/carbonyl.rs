@@ -46,6 +46,26 @@ pub(crate) fn self_acceptor(molecule: &Molecule) -> Option<Carbonyl> {
     .find(|kind| kinds.contains(kind))
 }
 
+/// The ester group of a molecule that hydroxide and alkoxides attack first; none without one.
+pub(crate) fn ester_group(molecule: &Molecule) -> Option<Carbonyl> {
+    let kinds = || (0..molecule.atoms().len()).filter_map(|atom| carbonyl_at(molecule, atom));
+    [Carbonyl::Ester, Carbonyl::TertAlkylEster]
+        .into_iter()
+        .find(|wanted| kinds().any(|kind| kind == *wanted))
+}
+
+/// The weakest of the two acceptors between which a carbon of a 1,3-diketone or a β-keto ester stands, where a base can
+/// cleave the bond (retro-Claisen); none for other carbons.
+pub(crate) fn cleavable_at(molecule: &Molecule, carbon: usize) -> Option<Carbonyl> {
+    let around = molecule.neighbours(carbon).iter();
+    let mut kinds: Vec<Carbonyl> = around
+        .filter_map(|&(atom, _)| carbonyl_at(molecule, atom))
+        .collect();
+    let ketone = kinds.iter().position(|kind| *kind == Carbonyl::Ketone)?;
+    kinds.swap_remove(ketone);
+    kinds.into_iter().find(|kind| *kind != Carbonyl::Aldehyde)
+}
+
 /// The carbonyl carbon of this kind; `None` where there are several that are not equivalent.
 pub(crate) fn acceptor_atom(molecule: &Molecule, kind: Carbonyl) -> Option<usize> {
     let classes = molecule.symmetry_classes();

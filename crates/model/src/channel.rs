@@ -20,7 +20,7 @@ pub enum Channel {
     SelfCondensation = 6,
     /// The product reacts again.
     OverAlkylation = 7,
-    /// The bond forms at another carbon.
+    /// The bond forms at another carbon, of the substrate or of the electrophile (1,2-addition to an enone).
     OtherSite = 8,
     /// The product is the stronger acid and takes the enolate's place.
     ProductQuenchesEnolate = 9,
@@ -28,9 +28,9 @@ pub enum Channel {
     OAttack = 10,
     /// The electrophile takes the base.
     BaseConsumedByElectrophile = 11,
-    /// Addition of the base to the substrate, saponification, transesterification.
+    /// Addition of the base to substrate or product, saponification, transesterification, cleavage.
     BaseAddsToSubstrate = 12,
-    /// The electrophile is lost by elimination.
+    /// The electrophile is lost by elimination, or the substrate loses a group in β.
     Elimination = 13,
     /// The solvent takes the electrophile.
     Solvolysis = 14,

@@ -1,5 +1,6 @@
 //! Everything about one cell, in numbers and sentences.
 
+mod configuration;
 mod products;
 mod rates;
 
@@ -20,7 +21,8 @@ use crate::program::Charge;
 use crate::reference::{Course, integrate};
 use crate::screen::{Coverage, Spread, cautions_of, coverage, feasibility, over_uncertainty};
 use crate::{
-    AcidSite, Cell, Contents, Explanation, Model, ModelError, Origin, SiteReasons, Term, reasons,
+    AcidSite, Cell, Contents, Doubt, Draw, Explanation, Model, ModelError, Origin, SiteReasons,
+    Term, reasons,
 };
 
 /// The stiff reference of a cell at the mean of all parameters, and its network of the reaction.
@@ -44,6 +46,17 @@ fn by_fast_solver(cell: &Cell, values: &Values, pots: &Pots) -> (Course, Network
         end,
     };
     (course, network)
+}
+
+/// What the uncertainty of the yield rests on; nothing where it is certain.
+fn in_doubt(model: &Model, cell: &Cell) -> Vec<Doubt> {
+    const DRAWS: u32 = 512;
+    const SEED: u64 = 1;
+    let draws: Vec<Draw> = (1..=DRAWS).map(|number| model.draw(SEED, number)).collect();
+    match model.yields(cell, &draws) {
+        Some(yields) => model.doubts(cell, &draws, &yields),
+        None => Vec::new(),
+    }
 }
 
 /// Explains one cell.
@@ -107,6 +120,7 @@ pub(crate) fn explain(
     explanation.expected_yield = Some(uncertain.mean);
     explanation.yield_sigma = Some(uncertain.sigma);
     explanation.p_hit = Some(uncertain.p_hit);
+    explanation.doubts = in_doubt(model, cell);
     explanation.yield_on_limiting = Some(on_limiting(cell, uncertain.mean));
     explanation.feasibility = Some(feasibility(cell, &kinetics));
     explanation.selectivity = Some(outcome.selectivity);
@@ -129,6 +143,12 @@ pub(crate) fn explain(
         outcome.site,
     );
     explanation.limits.extend(limits(cell, &outcome));
+    explanation.limits.extend(configuration::at_risk(
+        cell,
+        &kinetics,
+        model.library(),
+        outcome.site,
+    ));
     explanation.limits.push(at_equilibrium(cell, &kinetics));
     explanation.losses = outcome.losses;
     explanation.advice = advice(model, cell, yield_at_least, uncertain.mean);

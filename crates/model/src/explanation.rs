@@ -1,6 +1,6 @@
 //! Everything about one cell, with sources.
 
-use crate::{Caution, Channel, Origin, SiteReasons};
+use crate::{Caution, Channel, Doubt, Origin, SiteReasons};
 
 /// Everything the model has to say about one cell.
 #[derive(Clone, Debug, Default)]
@@ -41,6 +41,8 @@ pub struct Explanation {
     pub sites: Vec<ExplainedSite>,
     /// Rate constants that matter.
     pub rates: Vec<ExplainedRate>,
+    /// What the uncertainty of the yield rests on, greatest share first.
+    pub doubts: Vec<Doubt>,
     /// Losses of substrate, largest first; fractions of the substrate charged.
     pub losses: Vec<(Channel, f64)>,
     /// What can be in the pot at the end, as far as it can be drawn: largest share first, those without one last.

@@ -15,10 +15,12 @@ use crate::screen::Spread;
 ///
 /// What forms before the electrophile comes depends on substrate, base, solvent and conditions, not
 /// on the electrophile: the table computes it once for all electrophiles. It holds a pure function's
-/// values, so that a score is the same with a fresh table, a shared one, or none.
-#[derive(Debug, Default)]
+/// values, so that a score is the same with a fresh table, a shared one, or none; a full one keeps
+/// what it has.
+#[derive(Debug)]
 pub struct FormationTable {
     pots: Mutex<HashMap<u64, Pots>>,
+    most: usize,
 }
 
 /// Pots at the mean and with the site's pKa lowered and raised by √3 σ.
@@ -60,13 +62,24 @@ impl FormationTable {
     /// About how many bytes a pot takes: a hash table is between half and nearly full.
     pub const POT_BYTES: u64 = 2 * size_of::<(u64, Pots)>() as u64;
 
+    /// An empty table that will keep so many pots at most.
+    pub fn of_at_most(pots: usize) -> FormationTable {
+        FormationTable {
+            pots: Mutex::default(),
+            most: pots,
+        }
+    }
+
     /// The pots under this key, formed now if they are not there.
     pub(crate) fn of(&self, key: u64, cell: &Cell, values: &Values) -> Pots {
         if let Some(pots) = self.lock().get(&key) {
             return *pots;
         }
         let pots = Pots::form(cell, values);
-        self.lock().insert(key, pots);
+        let mut known = self.lock();
+        if known.len() < self.most {
+            known.insert(key, pots);
+        }
         pots
     }
 

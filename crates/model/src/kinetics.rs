@@ -1,8 +1,11 @@
 //! The constants of a cell at one temperature, from its reagents and the parameters.
 
+mod acceptors;
 mod attack;
+mod enamines;
 mod equilibria;
 mod fates;
+mod follow_ups;
 mod nucleophiles;
 
 pub(crate) use nucleophiles::nucleophilicity_of;
@@ -90,7 +93,7 @@ impl<'a> Kinetics<'a> {
         let base = &self.cell.base;
         let (pka, class) = (base.record.pka_dmso.value, base.record.class);
         if class == AnionClass::Neutral {
-            return self.medium.pka_cationic(pka, base.acid_donors, self.values);
+            return self.medium.pka_cationic(pka, base.onium, self.values);
         }
         self.pka(pka, class)
     }

@@ -25,10 +25,16 @@ impl<const L: usize> Lanes<L> {
         Lanes(self.0.map(|x| 1.0 / x))
     }
 
-    /// Whether the number is zero in every lane.
+    /// The larger of the number and `least` in each lane.
     #[inline(always)]
-    pub(crate) fn is_zero(self) -> bool {
-        self.0.iter().all(|&x| x == 0.0)
+    pub(crate) fn max(self, least: f64) -> Self {
+        Lanes(self.0.map(|x| if x > least { x } else { least }))
+    }
+
+    /// The largest magnitude of all lanes.
+    #[inline(always)]
+    pub(crate) fn largest(self) -> f64 {
+        self.0.iter().fold(0.0, |most, x| x.abs().max(most))
     }
 }
 

@@ -11,9 +11,11 @@ mod cautions;
 mod cell;
 mod channel;
 mod comparison;
+mod draws;
 mod electrophilicity;
 mod explain;
 mod explanation;
+mod features;
 mod formation;
 mod kinetics;
 mod lanes;
@@ -48,11 +50,13 @@ pub use cautions::{
 pub use cell::{Addition, Cell, Conditions};
 pub use channel::Channel;
 pub use comparison::{PlainNetwork, Solution, Solutions, Step, Stretch};
+pub use draws::{Doubt, Draw};
 pub use explanation::{
     Advice, CoursePoint, ExplainedProduct, ExplainedRate, ExplainedSite, Explanation,
 };
 pub use formation::FormationTable;
-pub use model::{Draw, Fingerprint, Model, ModelError};
+pub use medium::{Onium, OniumKind};
+pub use model::{Fingerprint, Model, ModelError};
 pub use parameters::Parameter;
 pub use prepared::{Additive, Base, Electrophile, MeasuredPka, Pair, Solvent, Substrate};
 pub use score::Score;

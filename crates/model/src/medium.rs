@@ -1,11 +1,14 @@
 //! Acidities in the medium of a cell.
 
+mod onium;
+
 use enolattice_molecule::AnionClass;
 use enolattice_reagents::{Cation, SolventClass};
 use enolattice_units::log10_k_at;
 
 use crate::parameters::{P, Values, hydrogen_bonding, localisation};
 use crate::prepared::Solvent;
+pub use onium::{Onium, OniumKind};
 
 /// Kamlet–Taft α of water, the scale on which the class parameters are given.
 const ALPHA_WATER: f64 = 1.17;
@@ -132,8 +135,7 @@ impl Medium<'_> {
         hydrogen_bonding(pka_dmso, class, values) * self.donation()
     }
 
-    /// What an alcohol adds to it at equilibrium: it solvates alkoxides, its own among them, about as well as
-    /// water does.
+    /// What an alcohol adds to it at equilibrium: it solvates alkoxides, its own among them, better than its α says.
     pub(crate) fn shift_of_alkoxides(
         &self,
         pka_dmso: f64,
@@ -141,10 +143,12 @@ impl Medium<'_> {
         values: &Values,
     ) -> f64 {
         // autoprotolysis of methanol, ethanol and 2-propanol (the page on the medium)
-        const OF_ALKOXIDES: f64 = 0.95;
+        // more than water gives is not known of any alcohol but methanol
+        const LARGEST: f64 = 1.1;
         let is_alkoxide = matches!(class, AnionClass::Alkoxide | AnionClass::Hydroxide);
         if is_alkoxide && self.is_alcohol() {
-            hydrogen_bonding(pka_dmso, class, values) * (OF_ALKOXIDES - self.donation()).max(0.0)
+            let share = (values.get(P::H_ALKOXIDE_IN_ALCOHOL) * self.donation()).min(LARGEST);
+            hydrogen_bonding(pka_dmso, class, values) * (share - self.donation()).max(0.0)
         } else {
             0.0
         }
@@ -154,9 +158,7 @@ impl Medium<'_> {
     /// number for all acids ([`Medium::own_scale`]).
     ///
     /// `pKa(V, T) = [pKa(DMSO) − h·α/1.17 − loc·cat·g(ε)] · 298.15/T` for neutral acids;
-    /// for cationic acids `− c·(1/ε − 1/46.7) − d·(0.76 − β) + p`, the cost of separating charges, the
-    /// hydrogen bond of the N–H to the solvent and, where ε < 12, contact pairs with the anions of the pot,
-    /// in place of the ion-pair term.
+    /// those of cationic acids in [`Medium::pka_cationic`].
     ///
     /// | symbol | meaning                                               |
     /// |--------|-------------------------------------------------------|
@@ -170,7 +172,8 @@ impl Medium<'_> {
     /// Form and parameters: see each entry of the parameter vector.
     pub(crate) fn pka(&self, pka_dmso: f64, class: AnionClass, values: &Values) -> f64 {
         let shift = if class == AnionClass::Neutral {
-            self.cationic_shift(1, values) + self.onium_charge(values)
+            self.cationic_shift(Onium::TERTIARY, values)
+                + self.onium_charge(Onium::TERTIARY, values)
         } else {
             let chelate = if class.is_dicarbonyl() && self.is_divalent() {
                 values.get(P::LOC_CHELATE)
@@ -185,27 +188,47 @@ impl Medium<'_> {
         log10_k_at(pka_dmso - shift, self.temperature_c)
     }
 
-    /// The pKa of a cationic acid with this many N–H as it acts in a pot: contact pairs with the anions of the
-    /// pot make its base stronger in media of low permittivity.
-    pub(crate) fn pka_cationic(&self, pka_dmso: f64, donors: u8, values: &Values) -> f64 {
-        let shift = self.cationic_shift(donors, values) + self.onium_charge(values);
+    /// The pKa of a cationic acid as it acts in a pot.
+    ///
+    /// `pKa(V, T) = [pKa(DMSO) − a·α/1.17 − d·n·(0.76 − β·s(ε)) − z − c] · 298.15/T`
+    ///
+    /// | symbol | meaning                                                                        |
+    /// |--------|--------------------------------------------------------------------------------|
+    /// | a      | of the kind of acid: its base takes hydrogen bonds, its cation repels water    |
+    /// | d, n   | hydrogen bond of an N–H with localised charge to the solvent, number of these   |
+    /// | s(ε)   | an ion's hydrogen bond grows as the permittivity screens it less               |
+    /// | z      | electron pairs of the solvent for the rest of a small cation, open flat ones    |
+    /// | c      | cost of separating charges; in its place, where ε < 12, what contact pairs with the anions of the pot gain |
+    pub(crate) fn pka_cationic(&self, pka_dmso: f64, onium: Onium, values: &Values) -> f64 {
+        let shift = self.cationic_shift(onium, values) + self.onium_charge(onium, values);
         log10_k_at(pka_dmso - shift, self.temperature_c)
     }
 
     /// The pKa of the same acid as free ions.
-    pub(crate) fn pka_cationic_free(&self, pka_dmso: f64, donors: u8, values: &Values) -> f64 {
-        let shift = self.cationic_shift(donors, values) + self.charge_separation(values);
+    pub(crate) fn pka_cationic_free(&self, pka_dmso: f64, onium: Onium, values: &Values) -> f64 {
+        let shift = self.cationic_shift(onium, values)
+            + self.cation_solvation(onium, values)
+            + self.charge_separation(values);
         log10_k_at(pka_dmso - shift, self.temperature_c)
     }
 
     /// What the charges of an onium ion and its anion cost: a contact pair never parts them and gains by its own
-    /// hydrogen bond, free ions pay for the separation.
-    fn onium_charge(&self, values: &Values) -> f64 {
+    /// hydrogen bond, the anion standing for the solvent's electron pairs; free ions pay for the separation.
+    fn onium_charge(&self, onium: Onium, values: &Values) -> f64 {
         if self.is_paired() {
             -values.get(P::ONIUM_PAIR)
         } else {
-            self.charge_separation(values)
+            self.cation_solvation(onium, values) + self.charge_separation(values)
         }
+    }
+
+    /// The pKa of a protonated solvent molecule as it acts in a pot.
+    pub(crate) fn pka_lyonium(&self, pka_dmso: f64, values: &Values) -> f64 {
+        let charge = match self.is_paired() {
+            true => -values.get(P::ONIUM_PAIR),
+            false => self.charge_separation(values),
+        };
+        log10_k_at(pka_dmso - charge, self.temperature_c)
     }
 
     fn charge_separation(&self, values: &Values) -> f64 {
@@ -218,10 +241,38 @@ impl Medium<'_> {
         }
     }
 
-    fn cationic_shift(&self, donors: u8, values: &Values) -> f64 {
-        let acceptance = ACCEPTANCE_DMSO - self.solvent.record.hydrogen_bond_acceptance;
-        values.get(P::H_CATIONIC_ACID) * self.donation()
-            + values.get(P::H_CATIONIC_DONOR) * f64::from(donors) * acceptance
+    /// By how much less the solvent binds an N–H with its electron pairs than DMSO does, in units of β.
+    fn missing_acceptance(&self, values: &Values) -> f64 {
+        let screening = 1.0 + values.get(P::H_CATIONIC_SCREENING) * self.pairing();
+        ACCEPTANCE_DMSO - self.solvent.record.hydrogen_bond_acceptance * screening
+    }
+
+    /// Hydrogen bonds of a cationic acid and its base with the solvent.
+    fn cationic_shift(&self, onium: Onium, values: &Values) -> f64 {
+        let (by_donation, donors) = match onium.kind {
+            OniumKind::Alkylammonium => (P::H_CATIONIC_ACID, onium.donors),
+            OniumKind::Arylammonium => (P::H_CATIONIC_ARYL, onium.donors),
+            OniumKind::Azinium => (P::H_CATIONIC_AZINE, onium.donors),
+            // where the charge is spread over several nitrogens, an N–H hardly asks for a hydrogen bond
+            OniumKind::Amidinium => (P::H_CATIONIC_AMIDINE, 0),
+            OniumKind::Phosphazenium => (P::H_CATIONIC_PHOSPHAZENE, 0),
+        };
+        let bound = values.get(P::H_CATIONIC_DONOR) * f64::from(donors);
+        values.get(by_donation) * self.donation() + bound * self.missing_acceptance(values)
+    }
+
+    /// What the rest of a cation misses of the solvent's electron pairs: phosphazenium ions are too large to miss
+    /// any; flat ions are open to those of a solvent that screens little.
+    fn cation_solvation(&self, onium: Onium, values: &Values) -> f64 {
+        let missing = self.missing_acceptance(values);
+        match onium.kind {
+            OniumKind::Phosphazenium => 0.0,
+            OniumKind::Azinium => {
+                values.get(P::CATION_SOLVATION) * missing
+                    - values.get(P::AZINE_OPEN) * self.pairing().min(1.0)
+            }
+            _ => values.get(P::CATION_SOLVATION) * missing,
+        }
     }
 
     /// What to add to [`Medium::pka`] for the pKa on the solvent's own scale: the proton's better or worse

@@ -20,7 +20,7 @@ pub(crate) enum Species {
     Product(usize),
     /// Its anion: carbanion, alkoxide of an adduct, or heteroatom anion.
     ProductAnion(usize),
-    /// Product at a site after loss of water.
+    /// Product at a site after loss of water, or after a halide has left it to close a ring.
     Dehydrated(usize),
     /// Electrophile.
     Electrophile,
@@ -64,21 +64,31 @@ pub(crate) enum Species {
     Spent,
     /// Carbanion of the electrophile's own C–H.
     ElectrophileAnion,
+    /// Alkoxide of an addition to the carbonyl group of an acceptor.
+    CarbonylAdduct,
+    /// Trimer of an aldehyde by aldol addition and hydride transfer.
+    Trimer,
+    /// Substrate that lost a group in β.
+    Split,
+    /// Product taken by the base.
+    ProductTaken,
 }
 
 /// Index of the first species that exists once a site.
-const FIRST_OF_SITES: usize = 24;
+const FIRST_OF_SITES: usize = 28;
 
 impl Species {
     /// Number of species.
     pub(crate) const COUNT: usize = FIRST_OF_SITES + 4 * SITES;
-    /// Number of species that are formed and never react: O-product, product at the heteroatom, over-reacted product,
-    /// substrate taken by base, dehydrated dimer, eliminated, solvolysed and spent electrophile, dehydrated products.
-    pub(crate) const ONLY_FORMED: usize = 8 + SITES;
 
     /// Every species, by index.
     pub(crate) fn all() -> impl Iterator<Item = Species> {
-        let plain = [
+        (0..Species::COUNT).map(Species::at)
+    }
+
+    /// The species with an index.
+    pub(crate) const fn at(index: usize) -> Species {
+        const PLAIN: [Species; FIRST_OF_SITES] = [
             Species::Substrate,
             Species::HeteroatomAnion,
             Species::Dianion,
@@ -103,16 +113,21 @@ impl Species {
             Species::Leaving,
             Species::LeavingAcid,
             Species::ElectrophileAnion,
+            Species::CarbonylAdduct,
+            Species::Trimer,
+            Species::Split,
+            Species::ProductTaken,
         ];
-        let of_sites = [
-            Species::Carbanion,
-            Species::Product,
-            Species::ProductAnion,
-            Species::Dehydrated,
-        ];
-        plain
-            .into_iter()
-            .chain(of_sites.into_iter().flat_map(|of| (0..SITES).map(of)))
+        if index < FIRST_OF_SITES {
+            return PLAIN[index];
+        }
+        let site = (index - FIRST_OF_SITES) % SITES;
+        match (index - FIRST_OF_SITES) / SITES {
+            0 => Species::Carbanion(site),
+            1 => Species::Product(site),
+            2 => Species::ProductAnion(site),
+            _ => Species::Dehydrated(site),
+        }
     }
 
     /// Molecules of the substrate in it.
@@ -125,11 +140,15 @@ impl Species {
             | Species::HeteroatomProduct
             | Species::OverReacted
             | Species::Taken
+            | Species::CarbonylAdduct
+            | Species::Split
+            | Species::ProductTaken
             | Species::Carbanion(_)
             | Species::Product(_)
             | Species::ProductAnion(_)
             | Species::Dehydrated(_) => 1.0,
             Species::Dimer | Species::DimerAnion | Species::DryDimer => 2.0,
+            Species::Trimer => 3.0,
             _ => 0.0,
         }
     }
@@ -144,6 +163,8 @@ impl Species {
             | Species::Eliminated
             | Species::Solvolysed
             | Species::Spent
+            | Species::CarbonylAdduct
+            | Species::ProductTaken
             | Species::Product(_)
             | Species::ProductAnion(_)
             | Species::Dehydrated(_) => 1.0,
@@ -166,6 +187,7 @@ impl Species {
             | Species::DimerAnion
             | Species::Leaving
             | Species::ElectrophileAnion
+            | Species::CarbonylAdduct
             | Species::Carbanion(_)
             | Species::ProductAnion(_) => 1.0,
             Species::Dianion => 2.0,
@@ -204,6 +226,10 @@ impl Species {
             Species::Solvolysed => "solvolysed electrophile",
             Species::Spent => "electrophile spent on base",
             Species::ElectrophileAnion => "carbanion of the electrophile",
+            Species::CarbonylAdduct => "adduct at the carbonyl group of the electrophile",
+            Species::Trimer => "trimer by hydride transfer",
+            Species::Split => "substrate that lost a group in β",
+            Species::ProductTaken => "product taken by base",
         };
         plain.to_owned()
     }
@@ -235,6 +261,10 @@ impl Species {
             Species::Leaving => 21,
             Species::LeavingAcid => 22,
             Species::ElectrophileAnion => 23,
+            Species::CarbonylAdduct => 24,
+            Species::Trimer => 25,
+            Species::Split => 26,
+            Species::ProductTaken => 27,
             Species::Carbanion(site) => FIRST_OF_SITES + site,
             Species::Product(site) => FIRST_OF_SITES + SITES + site,
             Species::ProductAnion(site) => FIRST_OF_SITES + 2 * SITES + site,
@@ -277,9 +307,11 @@ impl Amounts {
         self.over_sites(Species::Carbanion) + self.of(Species::Dianion)
     }
 
-    /// Dimer of the substrate in all its forms.
-    pub(crate) fn dimer(&self) -> f64 {
-        self.of(Species::Dimer) + self.of(Species::DimerAnion) + self.of(Species::DryDimer)
+    /// Substrate in dimers and trimers of its own.
+    pub(crate) fn self_condensed(&self) -> f64 {
+        let dimer =
+            self.of(Species::Dimer) + self.of(Species::DimerAnion) + self.of(Species::DryDimer);
+        2.0 * dimer + 3.0 * self.of(Species::Trimer)
     }
 
     /// Substrate that has not reacted.

@@ -68,7 +68,8 @@ impl Outcome {
         let mut losses = vec![
             (
                 Channel::OtherSite,
-                by_site.iter().sum::<f64>() - by_site[site],
+                by_site.iter().sum::<f64>() - by_site[site]
+                    + end.of(Species::CarbonylAdduct) / charged,
             ),
             (Channel::OAttack, end.of(Species::OxygenProduct) / charged),
             (
@@ -79,11 +80,12 @@ impl Outcome {
                 Channel::OverAlkylation,
                 end.of(Species::OverReacted) / charged,
             ),
-            (Channel::SelfCondensation, 2.0 * end.dimer() / charged),
+            (Channel::SelfCondensation, end.self_condensed() / charged),
             (
                 Channel::BaseAddsToSubstrate,
-                end.of(Species::Taken) / charged,
+                (end.of(Species::Taken) + end.of(Species::ProductTaken)) / charged,
             ),
+            (Channel::Elimination, end.of(Species::Split) / charged),
         ];
         let converted = product + losses.iter().map(|loss| loss.1.max(0.0)).sum::<f64>();
         let unreacted = Unreacted {
@@ -93,7 +95,12 @@ impl Outcome {
             end,
             formed,
         };
-        losses.extend(unreacted.losses(by_site[site]));
+        for (channel, share) in unreacted.losses(by_site[site]) {
+            match losses.iter_mut().find(|loss| loss.0 == channel) {
+                Some(loss) => loss.1 += share,
+                None => losses.push((channel, share)),
+            }
+        }
         losses.retain(|loss| loss.1 > LEAST_LOSS);
         losses.sort_by(|a, b| b.1.total_cmp(&a.1).then(a.0.cmp(&b.0)));
         let selectivity = if converted > 1e-9 {

@@ -33,6 +33,7 @@ macro_rules! parameters {
 }
 
 const WATER_PAIRS: &str = "mean pKa(DMSO) − pKa(water) of the class in reference_pairs (Bordwell 1988 and standard compilations, from memory)";
+const ONIUM_PAIRS: &str = "fitted to onium acids in water, MeCN, THF, methanol and DMSO (the page on the medium; published values from memory)";
 const NUCLEOPHILES: &str =
     "fitted to the carbanions of mayr_nucleophiles in DMSO with measured pKa";
 const MEMORY: &str = "from memory";
@@ -70,18 +71,28 @@ parameters! {
     H_BASICITY_HETEROATOM = 0.5, 0.1, "1", "alcohols from hexafluoroisopropanol to ethanol, phenols, thiols, carboxylic acids of reference_pairs (from memory)";
     H_BASICITY_KETONE = 0.4, 0.15, "1", "phenylacetone against acetone in reference_pairs (from memory)";
     H_BASICITY_NITRILE = 0.12, 0.05, "1", "malononitrile against acetonitrile in reference_pairs (from memory)";
-    /// Cationic acids with one N–H are stronger in DMSO than in water by this much for want of the
-    /// proton's better solvation in DMSO, beside what their own hydrogen bond gives.
-    H_CATIONIC_ACID = -2.1, 0.5, "pK", WATER_PAIRS;
-    /// Hydrogen bond of an N–H of a cationic acid to the solvent, times β(DMSO) − β.
-    H_CATIONIC_DONOR = 3.6, 0.7, "pK", "ammonium ions with one to four N–H in water, MeCN and DMSO (reference_pairs, from memory)";
+    /// By how much cationic acids of a kind are stronger in DMSO than in water, beside what hydrogen bonds of their
+    /// N–H and electron pairs of the solvent give: of alkylamines, anilines, pyridines, amidines, phosphazenes.
+    H_CATIONIC_ACID = -3.0, 0.5, "pK", ONIUM_PAIRS;
+    H_CATIONIC_ARYL = -4.8, 0.7, "pK", ONIUM_PAIRS;
+    H_CATIONIC_AZINE = -3.2, 0.6, "pK", ONIUM_PAIRS;
+    H_CATIONIC_AMIDINE = -0.9, 0.5, "pK", ONIUM_PAIRS;
+    H_CATIONIC_PHOSPHAZENE = -1.5, 1.5, "pK", ONIUM_PAIRS;
+    /// Hydrogen bond of an N–H of a cationic acid with localised charge to the solvent, times β(DMSO) − β.
+    H_CATIONIC_DONOR = 3.5, 0.5, "pK", ONIUM_PAIRS;
+    /// By what share such a hydrogen bond is stronger in THF than β says, for THF screens it less.
+    H_CATIONIC_SCREENING = 0.5, 0.2, "1", ONIUM_PAIRS;
+    /// Electron pairs of the solvent for the rest of a small cation, times β(DMSO) − β.
+    CATION_SOLVATION = 3.0, 1.0, "pK", ONIUM_PAIRS;
+    /// Pyridinium ions are open to the electron pairs of a solvent of low permittivity, THF = 1.
+    AZINE_OPEN = 1.6, 0.8, "pK", ONIUM_PAIRS;
     /// Contact pairs of a cationic acid with the anions of the pot, for which it needs no solvent: effective pK
     /// units in media of low permittivity at the concentrations of the trade.
     ONIUM_PAIR = 1.3, 1.0, "pK", "phosphazenes and amidines ionise carbon acids of their own strength in dichloromethane and THF, amines make ion pairs of phenols in benzene (common practice)";
     /// pKa on the medium's own scale less that on the scale anchored in DMSO: one number for all acids,
     /// which cancels in every equilibrium.
-    SCALE_MECN = 11.0, 0.3, "pK", "neutral and cationic acids of reference_pairs in MeCN against DMSO (Kütt, Leito and others, from memory)";
-    SCALE_THF = 6.0, 0.5, "pK", "onium acids in THF against DMSO (Tshepelevitsh and others 2019, from memory)";
+    SCALE_MECN = 11.4, 0.3, "pK", "neutral and cationic acids of reference_pairs in MeCN against DMSO (Kütt, Leito and others, from memory)";
+    SCALE_THF = 5.1, 0.5, "pK", "onium acids in THF against DMSO (Tshepelevitsh and others 2019, from memory)";
     SCALE_DMF = 1.2, 0.5, "pK", "carboxylic acids and phenols in DMF against DMSO (standard compilations, from memory)";
     /// Contact-ion-pair stabilisation of localised anions over a ketone enolate, Na⁺, ε = 7.4.
     LOC_ALKOXIDE = 4.0, 1.0, "pK", MEMORY;
@@ -106,7 +117,9 @@ parameters! {
     CHARGE_SEPARATION = 15.0, 4.0, "pK", "Born, Z. Phys. 1920, 1, 45, with the size of an ion pair (from memory)";
     /// By how much neutral acids, which make two charges, lose more strength from water to alcohols than cationic
     /// ones.
-    CHARGES_IN_ALCOHOL = 3.2, 0.5, "pK", "phenol, acetic and benzoic acid against triethylammonium in water, methanol and ethanol (standard compilations, from memory)";
+    CHARGES_IN_ALCOHOL = 3.2, 0.5, "pK", "phenols and carboxylic acids against onium acids in water, methanol and ethanol (standard compilations, from memory)";
+    /// By what factor an alcohol solvates alkoxides better than its α says.
+    H_ALKOXIDE_IN_ALCOHOL = 1.29, 0.05, "1", "autoprotolysis of methanol, ethanol and 2-propanol (from memory)";
     /// log10 k of C–H exchange at ΔpKa = 0 and 25 °C.
     EXCHANGE_PROTIC = 0.5, 0.5, "log10 L/(mol s)", "acetone with hydroxide in water, 0.2 L/(mol s) at ΔpKa −3.8 (Bell, The Proton in Chemistry, 1973, from memory)";
     EXCHANGE_DIPOLAR = 0.5, 1.0, "log10 L/(mol s)", MEMORY;
@@ -140,6 +153,8 @@ parameters! {
     PAIRED_AMMONIUM = -0.3, 0.3, "log10", MEMORY;
     PAIRED_MAGNESIUM = -3.0, 0.8, "log10", "magnesium and zinc enolates are not alkylated in ethers (common practice)";
     PAIRED_ZINC = -3.5, 0.8, "log10", "magnesium and zinc enolates are not alkylated in ethers (common practice)";
+    /// What the last two lose further in substitution at saturated carbon.
+    SN2_DIVALENT = -1.5, 0.7, "log10", "magnesium and zinc enolates add to carbonyl groups and are not alkylated in ethers (common practice)";
     PAIRED_ONIUM = -0.6, 0.4, "log10", MEMORY;
     /// A carbonyl group that binds the metal of a contact pair, or takes the hydrogen bond of a hydroxylic solvent,
     /// is attacked faster than in DMSO.
@@ -171,10 +186,12 @@ parameters! {
     MAYR_N_SOLVATION = 1.05, 0.15, "1", "mayr_nucleophiles in water and alcohols against DMSO";
     MAYR_S_N = 0.62, 0.05, "1", "mean of carbanions in mayr_nucleophiles";
     /// E2 of a primary bromide with a base whose acid has pKa 19.9 in the medium.
-    E2_ANCHOR = -5.2, 0.5, "log10 L/(mol s)", "Ingold and Hughes, elimination fractions with ethoxide (from memory)";
-    E2_SECONDARY = 1.3, 0.3, "log10", "Ingold and Hughes, elimination fractions with ethoxide (from memory)";
-    E2_TERTIARY = 1.8, 0.3, "log10", "Ingold and Hughes, elimination fractions with ethoxide (from memory)";
-    E2_ACTIVATED = 2.0, 0.4, "log10", "2-phenylethyl bromide with ethoxide, 95 % elimination (Ingold and Hughes, from memory)";
+    E2_ANCHOR = -4.7, 0.5, "log10 L/(mol s)", "Ingold and Hughes, elimination fractions with ethoxide (from memory)";
+    E2_SECONDARY = 0.7, 0.3, "log10", "Ingold and Hughes, elimination fractions with ethoxide (from memory)";
+    E2_TERTIARY = 1.3, 0.3, "log10", "Ingold and Hughes, elimination fractions with ethoxide (from memory)";
+    E2_ACTIVATED = 2.3, 0.4, "log10", "2-phenylethyl bromide with ethoxide, 95 % elimination (Ingold and Hughes, from memory)";
+    /// What a carbanion loses against an oxygen base of its strength.
+    E2_CARBANION = -1.0, 0.4, "log10", "sodium malonate and secondary butyl bromide in ethanol give 80 % of the substituted malonate (common practice)";
     E2_LEAVING = 0.9, 0.1, "1", MEMORY;
     E2_BRONSTED = 0.25, 0.08, "1", MEMORY;
     /// log10 (kO/kC) of the classes of ambident anions.
@@ -212,7 +229,9 @@ parameters! {
     DG_ALDOL_NITRO = -2.7, 0.8, "kcal/mol", MEMORY;
     DG_ALDOL_STABILISED = 3.0, 1.0, "kcal/mol", "adducts of malonates and acetoacetates to aldehydes are not found, they go back or lose water (common practice)";
     DG_ALDOL_CYANO = -1.5, 1.0, "kcal/mol", "adducts of malononitrile are seen (from memory)";
-    DG_ALDOL_KETONE_ACCEPTOR = 4.5, 1.0, "kcal/mol", MEMORY;
+    DG_ALDOL_KETONE_ACCEPTOR = 2.5, 0.8, "kcal/mol", "acetone to diacetone alcohol, K = 0.04 L/mol at 25 °C (standard textbooks, from memory)";
+    /// What an aryl ketone has more, whose conjugation is lost.
+    DG_ALDOL_ARYL_KETONE = 2.0, 1.0, "kcal/mol", MEMORY;
     DG_MICHAEL = -9.0, 1.5, "kcal/mol", MEMORY;
     DG_MICHAEL_BETA = 1.6, 0.5, "kcal/mol", MEMORY;
     DG_MICHAEL_STABILISED = 1.5, 0.7, "kcal/mol", MEMORY;
@@ -239,10 +258,11 @@ parameters! {
     DS_SN2_PAIRED = -40.0, 7.0, "cal/(mol K)", "effective value: lithium ester enolates are methylated by iodomethane within hours at −78 °C (common practice)";
     DS_ADDITION = -25.0, 5.0, "cal/(mol K)", MEMORY;
     DS_EXCHANGE = -20.0, 5.0, "cal/(mol K)", MEMORY;
-    /// What a primary or secondary amine gains by way of the iminium ion of an aldehyde, in the addition and
-    /// in the loss of water (of the amine).
+    /// What a primary or secondary amine gains by way of the iminium ion of an aldehyde where its acid is at hand, in
+    /// the addition and in the loss of water (of the amine); and what a ketone has less.
     IMINIUM_ADDITION = 2.0, 1.0, "log10", "piperidine condenses aldehydes with malonates where tertiary amines of its strength hardly do (common practice)";
     IMINIUM_ELIMINATION = 4.0, 1.0, "log10", "the amine leaves where hydroxide would have to (common practice)";
+    IMINIUM_KETONE = -1.5, 0.7, "log10", "malonates do not condense with ketones and amines, malononitrile and cyanoacetates do (common practice)";
     /// Loss of water from an aldol adduct by hydroxide or alkoxide; weaker bases are slower by the Brønsted
     /// term of the gap of their acids.
     DEHYDRATION_BRONSTED = 0.5, 0.1, "1", "general base catalysis of ionisation at carbon, 0.4 to 0.6 (from memory)";
@@ -256,6 +276,36 @@ parameters! {
     /// Hydroxide with an alkyl ester in water.
     SAPONIFICATION = -1.0, 0.4, "log10 L/(mol s)", "ethyl acetate with hydroxide in water at 25 °C, 0.11 L/(mol s) (standard textbooks, from memory)";
     SAPONIFICATION_ALCOHOL = -1.2, 0.4, "log10", "ethyl acetate in 85 % ethanol, 0.006 L/(mol s) (standard compilations, from memory)";
+    /// Cleavage of the carbon–carbon bond of a neutral 1,3-diketone (retro-Claisen); β-keto esters are slower.
+    RETRO_CLAISEN = -3.0, 1.0, "log10 L/(mol s)", "acetylacetone is cleaved by warm alkali within hours, its dialkyl derivatives more easily (common practice)";
+    RETRO_CLAISEN_KETO_ESTER = -2.0, 0.7, "log10", "dialkylated acetoacetates are cleaved by boiling ethoxide overnight (common practice)";
+    /// An alkoxide exchanges the alcohol of a neutral alkyl ester.
+    TRANSESTERIFICATION = -1.5, 0.7, "log10 L/(mol s)", "esters change their alcohol with a tenth of an equivalent of alkoxide within hours at room temperature (common practice)";
+    /// A carbanion of a ketone or ester loses a group in β.
+    BETA_HALIDE = 4.0, 1.0, "log10 1/s", "β-halo ketones and esters give acrylic compounds with any base at room temperature (common practice)";
+    BETA_ACYLOXY = 2.0, 1.0, "log10 1/s", "β-acyloxy ketones give enones with amines at room temperature (common practice)";
+    BETA_ALKOXY = -3.5, 1.0, "log10 1/s", "enolates of β-alkoxy esters are alkylated in the cold and lose alkoxide when warmed (common practice)";
+    /// By how much less a stabler carbanion does so for each pK unit.
+    BETA_BRONSTED = 0.5, 0.15, "1", MEMORY;
+    /// Rings that the anion of a product closes by displacing its own halide.
+    CLOSURE_EPOXIDE = 0.5, 1.0, "log10 1/s", "ethylene chlorohydrin with hydroxide in water, 0.01 L/(mol s) at 25 °C, and α-carbonyl halides react a thousand times faster (from memory)";
+    CLOSURE_CYCLOPROPANE = 2.0, 1.0, "log10 1/s", "chloroacetates and acrylates give cyclopropanes with sodium hydride at room temperature (common practice)";
+    /// An aldolate with one more aldehyde gives the ester of a glycol by hydride transfer.
+    ALDOL_TISHCHENKO = -2.0, 1.0, "log10 L/(mol s)", "2-methylpropanal trimerises with a little alkali within an hour or so at 60 °C (from memory)";
+    /// The aldolate of an aldehyde in a medium without protons expels hydroxide.
+    ALDOLATE_EXPULSION = -3.5, 1.0, "log10 1/s", "aldehydes give 2-alkenals and resins on standing with strong bases at room temperature (common practice)";
+    /// Enamines of pyrrolidine with aldehydes and ketones: K of formation with water, N and sN, and what a substituent costs.
+    ENAMINE_ALDEHYDE = 0.5, 0.7, "log10", MEMORY;
+    ENAMINE_KETONE = -2.0, 0.7, "log10", "ketones need an excess of pyrrolidine or removal of water (common practice)";
+    ENAMINE_N = 14.9, 0.7, "1", "pyrrolidinocyclohexene (Kempf, Hampel, Ofial and Mayr, Chem. Eur. J. 2003, 9, 2209, from memory)";
+    ENAMINE_S_N = 0.83, 0.05, "1", "enamines (Kempf and others 2003, from memory)";
+    ENAMINE_ARYL = -3.0, 1.0, "log10", "aryl ketones hardly form enamines with secondary amines (common practice)";
+    ENAMINE_CROWDED = -2.0, 0.7, "log10", MEMORY;
+    /// Carbonyl group of an enone or enal, as an acceptor beside its β carbon.
+    E_CONJUGATED = -1.5, 1.0, "1", "conjugation makes a carbonyl group a weaker electrophile (from memory)";
+    DG_CONJUGATED = 1.5, 1.0, "kcal/mol", "conjugation is lost where the carbonyl group of an enone is attacked (from memory)";
+    /// ΔG° of adding an alcohol or amine to an acceptor, beside the chain that it begins.
+    DG_HETERO_MICHAEL = -4.0, 1.5, "kcal/mol", "alcohols add to acrylonitrile and acrylates reversibly with alkoxides (common practice)";
     ORGANOLITHIUM_EXCHANGE = 2.0, 1.0, "log10 L/(mol s)", "alkyllithiums add to carbonyl groups faster than they ionise them (common practice)";
     ORGANOLITHIUM_ADDITION = 3.5, 1.0, "log10 L/(mol s)", MEMORY;
     /// The same to an amide, against a ketone or ester.

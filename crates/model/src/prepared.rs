@@ -8,9 +8,12 @@ use enolattice_reagents::{BaseKind, Cation, Library, NamedElectrophile};
 
 use crate::Addition;
 use crate::acidity::{AcidSite, Origin, acid_sites};
-use crate::carbonyl::{Carbonyl, self_acceptor};
+use crate::carbonyl::{Carbonyl, cleavable_at, ester_group, self_acceptor};
 use crate::electrophilicity::electrophilicity;
-use crate::medium::Loosening;
+use crate::features::{
+    Closure, alcohol_of, closure, e_of_alkene, enamine_of, exchanging_alcohol, leaves_in_beta,
+};
+use crate::medium::{Loosening, Onium};
 use crate::parameters::P;
 
 /// Carbon sites that compete in a cell; further ones are less acidic and left out.
@@ -36,6 +39,8 @@ pub(crate) enum Beside {
     Imino,
     /// A phosphoryl group.
     Phosphoryl,
+    /// A cyano group beside a carbonyl group or a second one.
+    Cyano,
 }
 
 /// A carbon site of a substrate and what it is as a nucleophile.
@@ -58,6 +63,8 @@ pub(crate) struct CarbonSite {
     pub(crate) beside_ketone: bool,
     /// Whether a cyano group activates it.
     pub(crate) beside_cyano: bool,
+    /// Rate at which its carbanion loses a group in β, where it has one.
+    pub(crate) leaves_in_beta: Option<P>,
 }
 
 /// A substrate with its acidic sites.
@@ -75,6 +82,12 @@ pub struct Substrate {
     pub(crate) heteroatom: Option<AcidSite>,
     /// The substrate's own carbonyl group as an acceptor.
     pub(crate) acceptor: Option<Carbonyl>,
+    /// Its ester group, where it has one.
+    pub(crate) ester: Option<Carbonyl>,
+    /// The alcohol of its ester group, where that can be exchanged for another.
+    pub(crate) alcohol: Option<String>,
+    /// The weaker acceptor of a 1,3-diketone or β-keto ester.
+    pub(crate) cleavable: Option<Carbonyl>,
     /// Rate of exchange of the halogen on an arene or alkene that alkyllithiums take first.
     pub(crate) exchangeable_halogen: Option<P>,
 }
@@ -108,6 +121,10 @@ impl Substrate {
             .cloned();
         let acceptor = self_acceptor(&molecule);
         let exchangeable_halogen = exchangeable_halogen(&molecule);
+        let ester = ester_group(&molecule);
+        let alcohol = ester.and_then(|kind| alcohol_of(&molecule, kind));
+        let first = carbon.first().map(|site| site.acid.atom);
+        let cleavable = first.and_then(|atom| cleavable_at(&molecule, atom));
         Substrate {
             name: name.to_owned(),
             molecule,
@@ -115,6 +132,9 @@ impl Substrate {
             carbon,
             heteroatom,
             acceptor,
+            ester,
+            alcohol,
+            cleavable,
             exchangeable_halogen,
         }
     }
@@ -260,6 +280,7 @@ fn carbon_site(molecule: &Molecule, site: &AcidSite) -> CarbonSite {
         branches: branches as u8,
         beside: beside(molecule, site.atom),
         beside_cyano: neighbours.iter().any(|&(atom, _)| is_linear(atom)),
+        leaves_in_beta: leaves_in_beta(molecule, site.atom),
         beside_ketone: neighbours
             .iter()
             .any(|&(atom, _)| is_ketone(molecule, atom)),
@@ -271,12 +292,16 @@ fn carbon_site(molecule: &Molecule, site: &AcidSite) -> CarbonSite {
 pub struct Base {
     /// The library's record.
     pub record: enolattice_reagents::Base,
-    /// N–H of its conjugate acid that donate hydrogen bonds: 1 for triethylammonium, 2 for piperidinium.
-    pub(crate) acid_donors: u8,
+    /// What its conjugate acid is, where that is a cation.
+    pub(crate) onium: Onium,
     /// Whether it is a primary or secondary amine, which makes iminium ions of aldehydes.
     pub(crate) makes_iminium: bool,
     /// Whether it is a neutral amine without an N–H, which cannot keep an acyl or silyl group.
     pub(crate) is_tertiary_amine: bool,
+    /// log10 reactivity of its enamines against those of pyrrolidine; none for what makes no enamines.
+    pub(crate) enamine: Option<f64>,
+    /// The alcohol of an alkoxide that exchanges ester groups.
+    pub(crate) alcohol: Option<String>,
 }
 
 impl Base {
@@ -285,9 +310,16 @@ impl Base {
         let bears_hydrogen = nitrogen_hydrogens(&record.smiles, |_| true) > 0;
         Base {
             record: record.clone(),
-            acid_donors: nitrogen_hydrogens(&record.conjugate_acid, |charge| charge > 0),
+            onium: parts(&record.conjugate_acid)
+                .find_map(|acid| Onium::of(&acid))
+                .unwrap_or(Onium::TERTIARY),
             makes_iminium: is_amine && parts(&record.smiles).any(|part| has_amine_hydrogen(&part)),
             is_tertiary_amine: is_amine && !bears_hydrogen,
+            enamine: parts(&record.smiles)
+                .find_map(|part| enamine_of(&part))
+                .filter(|_| is_amine),
+            alcohol: exchanging_alcohol(&record.conjugate_acid)
+                .filter(|_| record.class == AnionClass::Alkoxide),
         }
     }
 
@@ -347,9 +379,20 @@ fn nitrogen_hydrogens(smiles: &str, counts: impl Fn(i8) -> bool) -> u8 {
 pub struct Solvent {
     /// The library's record.
     pub record: enolattice_reagents::Solvent,
+    /// The alcohol that it is, where its alkoxide exchanges ester groups.
+    pub(crate) alcohol: Option<String>,
 }
 
 impl Solvent {
+    pub(crate) fn new(record: &enolattice_reagents::Solvent) -> Solvent {
+        let is_alcohol = matches!(record.acid, Some((_, AnionClass::Alkoxide)));
+        let alcohol = exchanging_alcohol(&record.smiles);
+        Solvent {
+            record: record.clone(),
+            alcohol: alcohol.filter(|_| is_alcohol && record.parts.is_empty()),
+        }
+    }
+
     /// Water of the usual grade, mol/L; 0 where water is the acid of the solvent itself.
     pub(crate) fn water_m(&self) -> f64 {
         const WATER_G_MOL: f64 = 18.015;
@@ -365,9 +408,86 @@ impl Solvent {
 pub struct Additive {
     /// The library's record.
     pub record: enolattice_reagents::Additive,
+    /// The proton that it gives or takes.
+    pub(crate) proton: Option<AdditiveProton>,
+}
+
+/// The proton that an additive gives or takes.
+#[derive(Clone, Copy, Debug, PartialEq)]
+pub(crate) struct AdditiveProton {
+    /// pKa of its acid on the DMSO scale.
+    pub(crate) pka_dmso: f64,
+    /// Class of the base that the acid leaves.
+    pub(crate) class: AnionClass,
+    /// What its acid is, where that is a cation.
+    pub(crate) onium: Option<Onium>,
+    /// Charge of its acid.
+    pub(crate) charge: i8,
+    /// Whether it is charged as the base.
+    pub(crate) as_base: bool,
+}
+
+/// The most acidic X–H of an additive, else the amine that it is.
+fn additive_proton(smiles: &str, library: &Library) -> Option<AdditiveProton> {
+    let acids = parts(smiles).flat_map(|part| {
+        let sites = acid_sites(&part, library).into_iter();
+        let charge = part.atoms().iter().map(|atom| atom.charge).sum();
+        let onium = Onium::of(&part);
+        sites
+            .filter(|site| site.element != 6)
+            .map(move |site| AdditiveProton {
+                pka_dmso: site.pka_dmso + if charge < 0 { SECOND_OF_OXOACID } else { 0.0 },
+                class: site.class,
+                onium: onium.filter(|_| site.class == AnionClass::Neutral),
+                charge,
+                as_base: false,
+            })
+    });
+    let strongest = acids.min_by(|a, b| a.pka_dmso.total_cmp(&b.pka_dmso));
+    strongest.or_else(|| {
+        let is_amine = parts(smiles).any(|part| is_tertiary_amine(&part));
+        is_amine.then_some(AdditiveProton {
+            pka_dmso: PKA_TERTIARY_AMINE,
+            class: AnionClass::Neutral,
+            onium: Some(Onium::TERTIARY),
+            charge: 1,
+            as_base: true,
+        })
+    })
+}
+
+/// By how much the anion of an oxoacid is a weaker acid than the acid itself: sulfuric acid in DMSO, 1.4 and 14.5 (Kolthoff and
+/// Chantooni, from memory).
+const SECOND_OF_OXOACID: f64 = 13.0;
+
+/// pKa of the acids of tertiary amines in DMSO, near triethylammonium's (Bordwell 1988, from memory).
+const PKA_TERTIARY_AMINE: f64 = 9.0;
+
+fn is_tertiary_amine(molecule: &Molecule) -> bool {
+    const NITROGEN: u8 = 7;
+    let atoms = molecule.atoms();
+    let saturated = |atom: usize| {
+        let mut bonds = molecule.neighbours(atom).iter();
+        !atoms[atom].aromatic && bonds.all(|&(_, bond)| bond == Bond::Single)
+    };
+    (0..atoms.len()).any(|i| {
+        let mut around = molecule.neighbours(i).iter();
+        atoms[i].element == NITROGEN
+            && atoms[i].charge == 0
+            && molecule.neighbours(i).len() == 3
+            && saturated(i)
+            && around.all(|&(other, _)| atoms[other].element == 6 && saturated(other))
+    })
 }
 
 impl Additive {
+    pub(crate) fn new(record: &enolattice_reagents::Additive, library: &Library) -> Additive {
+        Additive {
+            record: record.clone(),
+            proton: additive_proton(&record.smiles, library),
+        }
+    }
+
     /// What this many equivalents on the base do to contact pairs of a counter-ion and to aggregates.
     pub(crate) fn loosening(&self, cation: Cation, equiv_on_base: f64) -> Loosening {
         let dose = equiv_on_base.clamp(0.0, 1.0);
@@ -396,6 +516,8 @@ pub struct Electrophile {
     pub(crate) e: Option<(f64, f64, String)>,
     /// The electrophile's own most acidic C–H.
     pub(crate) acid: Option<AcidSite>,
+    /// Mayr's E of the acceptor that an alkylating agent becomes by elimination, where a carbanion then makes the same bond.
+    pub(crate) e_of_alkene: Option<f64>,
 }
 
 impl Electrophile {
@@ -418,6 +540,9 @@ impl Electrophile {
         let named = library
             .electrophile_by_structure(molecule.canonical())
             .cloned();
+        let e_of_alkene = group
+            .as_ref()
+            .and_then(|group| e_of_alkene(&molecule, group, library));
         Electrophile {
             name: name.to_owned(),
             molecule,
@@ -426,6 +551,7 @@ impl Electrophile {
             group,
             e,
             acid,
+            e_of_alkene,
         }
     }
 }
@@ -439,8 +565,12 @@ pub(crate) struct SiteProduct {
     pub(crate) carbon: Option<CarbonSite>,
     /// Its most acidic heteroatom site.
     pub(crate) heteroatom: Option<AcidSite>,
-    /// The α,β-unsaturated product after loss of water.
+    /// The α,β-unsaturated product after loss of water; where a halide leaves instead, the three-membered ring.
     pub(crate) dehydrated: Option<Molecule>,
+    /// How the product's anion closes a ring by loss of a halide.
+    pub(crate) closes: Option<Closure>,
+    /// The weaker acceptor of a 1,3-diketone or β-keto ester.
+    pub(crate) cleavable: Option<Carbonyl>,
     /// Whether the anion of this site can attack with oxygen.
     pub(crate) has_oxygen_attack: bool,
 }
@@ -489,7 +619,11 @@ fn site_product(
         .iter()
         .find(|site| site.element != 6 && site.hydrogens > 0)
         .cloned();
-    let dehydrated = dehydrated(&product).ok().flatten();
+    let (dehydrated, closes) = match closure(&substrate.molecule, &product, group) {
+        Some((ring, how)) => (Some(ring), Some(how)),
+        None => (dehydrated(&product).ok().flatten(), None),
+    };
+    let cleavable = cleavable_at(&product.molecule, product.site);
     let has_oxygen_attack = o_product(&substrate.molecule, atom, &electrophile.molecule, group)
         .is_ok_and(|p| p.is_some());
     Some(SiteProduct {
@@ -497,6 +631,8 @@ fn site_product(
         carbon,
         heteroatom,
         dehydrated,
+        closes,
+        cleavable,
         has_oxygen_attack,
     })
 }

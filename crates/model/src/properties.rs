@@ -7,6 +7,7 @@ use crate::network::{Amounts, Network, Reaction, Species, Stage};
 use crate::parameters::Values;
 use crate::prepared::SITES;
 use crate::program::Charge;
+use crate::reactions::Reactions;
 use crate::reference::integrate;
 use crate::sample::{cell, model};
 use crate::screen::{Coverage, coverage};
@@ -217,6 +218,107 @@ fn forward_and_back_stand_in_the_ratio_of_their_equilibrium() {
         }
     }
     assert!(transfers > 10 && additions > 3, "{transfers}, {additions}");
+}
+
+/// Cells whose networks have the reversible steps that those of [`cells`] lack: an enone with a lithium enolate, enamine
+/// catalysis.
+fn with_rarer_steps(model: &Model) -> Vec<Cell> {
+    [
+        ["CC(=O)OC(C)(C)C", "LDA", "O=C1C=CCCC1", "THF"],
+        ["CC(=O)c1ccccc1", "LiHMDS", "C=CC=O", "Et2O"],
+        [
+            "CC(C)CC=O",
+            "pyrrolidine",
+            "O=[N+]([O-])/C=C/c1ccccc1",
+            "DCM",
+        ],
+        [
+            "CC(C)=O",
+            "pyrrolidine",
+            "O=Cc1ccc([N+](=O)[O-])cc1",
+            "EtOH",
+        ],
+        ["CC(=O)CC(C)=O", "piperidine", "CCC=O", "EtOH"],
+    ]
+    .map(|[substrate, base, electrophile, solvent]| {
+        cell(model, substrate, base, electrophile, solvent)
+    })
+    .to_vec()
+}
+
+/// Wegscheider's condition: the constants of all reversible steps of a network follow from one free energy a species,
+/// so that no circle of steps runs for ever.
+#[test]
+fn all_reversible_steps_agree_on_one_free_energy_a_species() {
+    let model = model();
+    let (mut pairs, mut circles) = (0, 0);
+    for cell in cells(&model).into_iter().chain(with_rarer_steps(&model)) {
+        let reactions = reacting(&cell).reactions;
+        let mut solved: Vec<(usize, [f64; Species::COUNT], f64)> = Vec::new();
+        for (i, forth) in reactions.iter().enumerate() {
+            let back = reactions[i + 1..].iter().find(|back| {
+                are_opposite(forth, back) && forth.with.is_none() && back.with.is_none()
+            });
+            let Some(back) = back else { continue };
+            pairs += 1;
+            let mut row = [0.0; Species::COUNT];
+            forth.reactants().for_each(|s| row[s.index()] -= 1.0);
+            forth.formed().for_each(|s| row[s.index()] += 1.0);
+            let mut right = (forth.k / back.k).log10();
+            for (pivot, known, of_known) in &solved {
+                let factor = row[*pivot];
+                for (entry, other) in row.iter_mut().zip(known) {
+                    *entry -= factor * other;
+                }
+                right -= factor * of_known;
+            }
+            let pivot = (0..row.len()).max_by(|a, b| row[*a].abs().total_cmp(&row[*b].abs()));
+            let pivot = pivot.expect("species");
+            if row[pivot].abs() < 1e-9 {
+                circles += 1;
+                assert!(
+                    right.abs() < 1e-6,
+                    "{}: {forth:?} is off by {right}",
+                    words(&cell)
+                );
+                continue;
+            }
+            let scale = row[pivot].recip();
+            solved.push((pivot, row.map(|entry| entry * scale), right * scale));
+        }
+    }
+    assert!(pairs > 500 && circles > 200, "{pairs}, {circles}");
+}
+
+/// The solvers march networks of one cell side by side: their steps must be the same whatever the parameters and the temperature.
+#[test]
+fn parameters_and_temperature_change_no_step() {
+    let model = model();
+    let steps = |cell: &Cell, values: &Values, temperature_c: f64| {
+        let kinetics = Kinetics::new(cell, temperature_c, values, Nudge::default());
+        Reactions::of(&kinetics)
+            .iter()
+            .map(|r| (r.first, r.second, r.third, r.products, r.with))
+            .collect::<Vec<_>>()
+    };
+    let alpha_halo = ["CCOC(=O)CCl", "KOtBu", "O=Cc1ccccc1", "tBuOH"];
+    let [substrate, base, electrophile, solvent] = alpha_halo;
+    let closing = cell(&model, substrate, base, electrophile, solvent);
+    let all = cells(&model).into_iter().chain(with_rarer_steps(&model));
+    for cell in all.chain([closing]) {
+        let usual = steps(&cell, &Values::means(), 25.0);
+        for sign in [-1.0, 1.0] {
+            let moved = Values::moved(|i| if i % 2 == 0 { sign } else { -sign });
+            for temperature_c in [-78.0, 25.0, 110.0] {
+                assert_eq!(
+                    steps(&cell, &moved, temperature_c),
+                    usual,
+                    "{}",
+                    words(&cell)
+                );
+            }
+        }
+    }
 }
 
 /// Whether a species is the product at a site or made of it.

@@ -16,6 +16,8 @@ const DIFFUSION_LIMIT: f64 = 9.5;
 const EXCHANGE_CAP: f64 = 6.0;
 /// The same for X–H acids, which meet a carbanion at the speed of diffusion or give their proton to its oxygen.
 const HETEROATOM_CAP: f64 = 9.0;
+/// log10 of the largest rate constant of a catalysed step of three: beyond it another step limits (a working rule).
+pub(crate) const FASTEST_CATALYSIS: f64 = 4.0;
 /// The pKa (DMSO) at which the SN2 anchor is given.
 const SN2_ANCHOR_PKA: f64 = 22.0;
 
@@ -97,7 +99,7 @@ fn intrinsic(class: AnionClass, medium: &Medium, values: &Values) -> f64 {
             values.get(P::EXCHANGE_LITHIUM) * (1.0 - medium.additive.freed)
         }
         Cation::Potassium | Cation::Caesium | Cation::Ammonium => values.get(P::EXCHANGE_POTASSIUM),
-        Cation::None => values.get(P::EXCHANGE_AMINE),
+        Cation::None if !medium.is_protic() => values.get(P::EXCHANGE_AMINE),
         _ => 0.0,
     };
     let by_class = match (class, medium.is_protic()) {
@@ -279,13 +281,10 @@ pub(crate) fn pairing(
     }
 }
 
-/// Whether the nucleophile is a lithium salt in a medium of contact pairs, whose reactivity depends
+/// Whether the nucleophile is a salt of lithium, magnesium or zinc in a medium of contact pairs, whose reactivity depends
 /// little on basicity; dianions are the exception.
-fn is_paired_lithium(nucleophile: &Nucleophile, medium: &Medium) -> bool {
-    medium.is_paired()
-        && medium.cation == Cation::Lithium
-        && nucleophile.class != AnionClass::Neutral
-        && !nucleophile.is_dianion
+fn is_held_by_metal(nucleophile: &Nucleophile, medium: &Medium) -> bool {
+    medium.binds_oxygen() && nucleophile.class != AnionClass::Neutral && !nucleophile.is_dianion
 }
 
 /// log10 k of substitution at saturated carbon at the medium's temperature.
@@ -301,7 +300,7 @@ pub(crate) fn substitution(
     values: &Values,
 ) -> f64 {
     let above = nucleophile.pka_dmso - SN2_ANCHOR_PKA;
-    let bronsted = if is_paired_lithium(nucleophile, medium) && above > 0.0 {
+    let bronsted = if is_held_by_metal(nucleophile, medium) && above > 0.0 {
         values.get(P::SN2_LITHIUM_BRONSTED)
     } else {
         values.get(P::SN2_BRONSTED)
@@ -310,6 +309,11 @@ pub(crate) fn substitution(
         .hydrogen_bond_shift(nucleophile.pka_dmso, nucleophile.class, values)
         .max(0.0);
     let is_metal_pair = medium.is_paired() && nucleophile.class != AnionClass::Neutral;
+    let divalent = if medium.binds_oxygen() && medium.cation != Cation::Lithium {
+        values.get(P::SN2_DIVALENT)
+    } else {
+        0.0
+    };
     let entropy = if is_metal_pair && medium.cation != Cation::None {
         P::DS_SN2_PAIRED
     } else {
@@ -318,6 +322,7 @@ pub(crate) fn substitution(
     let at_25 = values.get(P::SN2_ANCHOR) + to_ethyl_bromide + bronsted * above
         - values.get(P::SN2_SOLVATION) * shift
         + pairing(nucleophile, medium, values, true)
+        + divalent
         + f64::from(nucleophile.crowding) * values.get(P::STERIC_SN2)
         + f64::from(nucleophile.branches) * values.get(P::STERIC_BRANCH)
         + nucleophile.relative;
@@ -340,7 +345,7 @@ pub(crate) fn addition(nucleophile: &Nucleophile, e: f64, medium: &Medium, value
     let shift = medium
         .hydrogen_bond_shift(nucleophile.pka_dmso, nucleophile.class, values)
         .max(0.0);
-    let lithium = is_paired_lithium(nucleophile, medium);
+    let lithium = is_held_by_metal(nucleophile, medium);
     let above = nucleophile.pka_dmso - SN2_ANCHOR_PKA;
     let (pka, extra) = if lithium && above > 0.0 {
         (SN2_ANCHOR_PKA, values.get(P::SN2_LITHIUM_BRONSTED) * above)
@@ -369,6 +374,9 @@ pub(crate) fn nucleophilicity(pka_dmso: f64, nucleophile: &Nucleophile, values: 
     let by_class = match (nucleophile.beside, nucleophile.class) {
         (Some(Beside::Imino), _) => values.get(P::MAYR_N_IMINO),
         (Some(Beside::Phosphoryl), _) => values.get(P::MAYR_N_PHOSPHORYL),
+        (Some(Beside::Cyano), _) => {
+            values.get(P::MAYR_N_NITRILE) + values.get(P::MAYR_N_DICARBONYL)
+        }
         (None, AnionClass::Nitrile) => values.get(P::MAYR_N_NITRILE),
         (None, AnionClass::Nitronate) => values.get(P::MAYR_N_NITRONATE),
         (None, AnionClass::Sulfone) => values.get(P::MAYR_N_SULFONE),

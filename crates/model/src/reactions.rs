@@ -1,7 +1,11 @@
 //! The reactions of a cell at one temperature, channel by channel.
 
+mod acceptors;
 mod acids;
 mod attacks;
+mod departures;
+mod enamines;
+mod esters;
 mod losses;
 
 use enolattice_units::math;
@@ -48,12 +52,29 @@ impl<'a> Reactions<'a> {
         all.fates_of_electrophile_alone();
         all.self_condensation();
         all.base_and_substrate();
+        all.esters_with_oxygen_bases();
+        all.loss_in_beta();
         all.loss_of_water();
+        all.closing_rings();
+        all.polymerisation(&fast);
+        all.addition_to_carbonyl_of_acceptor();
+        all.addition_to_eliminated();
+        all.enamine_catalysis();
         all.list
     }
 
     fn add(&mut self, first: Species, second: Option<Species>, products: &[Species], k: f64) {
         let products = std::array::from_fn(|i| products.get(i).copied());
+        self.enter(first, second, products, k);
+    }
+
+    fn enter(
+        &mut self,
+        first: Species,
+        second: Option<Species>,
+        products: [Option<Species>; 3],
+        k: f64,
+    ) {
         self.list.push(Reaction {
             first,
             second,
@@ -111,7 +132,7 @@ impl<'a> Reactions<'a> {
         let k = self.kinetics;
         for site in 0..k.cell.substrate.carbon.len() {
             let dry = k.cell.pair.by_site.get(site).and_then(Option::as_ref);
-            let can_lose = dry.is_some_and(|p| p.dehydrated.is_some());
+            let can_lose = dry.is_some_and(|p| p.dehydrated.is_some() && p.closes.is_none());
             for (base, pka) in k.oxygen_bases() {
                 let rate = if can_lose {
                     k.dehydration(site, pka)

@@ -203,17 +203,8 @@ fn read(
     }
 }
 
-/// Yield of the wanted product with all parameters at `values` and the substrate's pKa shifted.
-pub(crate) fn yield_at(cell: &Cell, values: &Values, acidity: f64) -> Option<f64> {
-    match coverage(cell) {
-        Coverage::Unknown(_) => return None,
-        Coverage::Nothing(..) => return Some(0.0),
-        Coverage::Covered => {}
-    }
-    let nudge = Nudge {
-        acidity,
-        attack: 0.0,
-    };
+/// Solves a cell's network, its deprotonation included, at `values` and nudged.
+pub(crate) fn solve_at(cell: &Cell, values: &Values, nudge: Nudge) -> Solved {
     let charge = Charge::of(cell);
     let mut pots = [charge.start()];
     if charge.forms_first() {
@@ -221,11 +212,7 @@ pub(crate) fn yield_at(cell: &Cell, values: &Values, acidity: f64) -> Option<f64
     }
     let networks = charge.reacting(cell, values, [nudge]);
     let [end] = march(&networks, pots);
-    Some(
-        read(cell, values, &networks[0], &end, &pots[0])
-            .outcome
-            .product,
-    )
+    read(cell, values, &networks[0], &end, &pots[0])
 }
 
 /// Yields over the uncertainty of a cell.

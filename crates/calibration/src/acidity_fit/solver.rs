@@ -213,7 +213,7 @@ fn normal_equations(
 }
 
 /// Lower factor L of a symmetric positive definite matrix, A = L·Lᵀ; `None` if it is not.
-fn cholesky(mut a: Vec<f64>, n: usize) -> Option<Vec<f64>> {
+pub(crate) fn cholesky(mut a: Vec<f64>, n: usize) -> Option<Vec<f64>> {
     for j in 0..n {
         for i in j..n {
             let (head, tail) = (&a[j * n..j * n + j], &a[i * n..i * n + j]);
@@ -232,7 +232,8 @@ fn cholesky(mut a: Vec<f64>, n: usize) -> Option<Vec<f64>> {
     Some(a)
 }
 
-fn solve(factor: &[f64], n: usize, right: &[f64]) -> Vec<f64> {
+/// Solves `L·Lᵀ·x = right`.
+pub(crate) fn solve(factor: &[f64], n: usize, right: &[f64]) -> Vec<f64> {
     let mut x = right.to_vec();
     for i in 0..n {
         let dot: f64 = (0..i).map(|k| factor[i * n + k] * x[k]).sum();

@@ -3,9 +3,9 @@
 use enolattice_model::{Addition, Cell, Draw, Model};
 use serde::Deserialize;
 
-use super::{Compared, compare, conditions, log_ratio};
+use super::{Compared, Comparison, OBSERVED_SIGMA, compare, conditions, log_ratio, percent};
 use crate::cell::cell;
-use crate::refit::Fitted;
+use crate::refit::{Changes, Fitted, Observations};
 use crate::table::rows;
 
 const REGIOCHEMISTRY: &str = include_str!("../../data/enolate_regiochemistry.tsv");
@@ -71,6 +71,49 @@ pub fn kinetic_enolates(model: &Model) -> Result<Compared, String> {
 pub fn equilibrated_enolates(model: &Model) -> Result<Compared, String> {
     enolates(model, false, &[], |draw, cell| {
         model.equilibrated_enolates(cell, draw)
+    })
+}
+
+/// An effect of lithium on the equilibrium that the model does not have: one number added to log10 of the ratio in the rows
+/// with lithium, pulled to none.
+const LITHIUM: [Fitted; 1] = [Fitted::new("lithium", 0.0, 0.4)];
+
+/// The attempt to add an effect of lithium to [`equilibrated_enolates`], of the rows with lithium: each share with the
+/// number fitted to the others, and as the model is without it.
+///
+/// # Errors
+/// A sentence that names a row which cannot be used.
+pub fn lithium_at_equilibrium(model: &Model) -> Result<Compared, String> {
+    let mut ketones: Vec<Ketone> = rows(REGIOCHEMISTRY)?;
+    ketones.retain(|ketone| !ketone.is_kinetic());
+    let all = equilibrated_enolates(model)?
+        .shares
+        .into_iter()
+        .zip(ketones);
+    let shares: Vec<Comparison> = all
+        .filter(|(_, ketone)| ketone.base.starts_with("Li"))
+        .map(|(share, _)| share)
+        .collect();
+    let ratio = |of: fn(&Comparison) -> f64| shares.iter().map(|s| log_ratio(of(s))).collect();
+    let (observed, without): (Vec<f64>, Vec<f64>) = (ratio(|s| s.published), ratio(|s| s.model));
+    let observations = Observations {
+        observed: &observed,
+        sigma: OBSERVED_SIGMA,
+        predict: |row: usize, changes: &Changes| {
+            without[row] + changes.iter().map(|(_, value)| value).sum::<f64>()
+        },
+    };
+    let left_out = observations.left_out(&LITHIUM);
+    let fitted = observations.fit_all(&LITHIUM);
+    let shares = shares.into_iter().zip(left_out);
+    Ok(Compared {
+        shares: shares
+            .map(|(share, left_out)| Comparison {
+                left_out: percent(left_out),
+                ..share
+            })
+            .collect(),
+        fitted,
     })
 }
 

@@ -56,6 +56,11 @@ impl Coverage {
                 .any(|seen| self.distance(site, seen) <= Self::EDGE)
     }
 
+    /// The same, where the nearest site of the fit is known to be at this distance.
+    pub(super) fn covers_at(&self, site: &Contribution, nearest: Option<f64>) -> bool {
+        site.unknown() == 0 && nearest.is_some_and(|distance| distance <= Self::EDGE)
+    }
+
     /// The `count` sites of the fit nearest to this one, by their number in the fit, with their
     /// distances, nearest first. Sites of another class of acid are none.
     pub fn nearest(&self, site: &Contribution, count: usize) -> Vec<(usize, f64)> {

@@ -3,9 +3,13 @@
 use enolattice_molecule::{AnionClass, Molecule};
 
 use super::Acid;
+use super::lyonium::lyonium;
 use crate::Cell;
 use crate::bonding::Bonding;
 use crate::kinetics::{Kinetics, PKA_WATER};
+
+/// pKa of the hydronium ion, with its own water at 55 mol/L (definition).
+const PKA_HYDRONIUM: f64 = -1.7;
 
 /// Where the reaction of a pot stands.
 #[derive(Clone, Copy, Debug, PartialEq)]
@@ -21,7 +25,8 @@ pub(crate) enum Reached {
 const STEP: f64 = 6.5;
 
 /// All acids of a cell's pot with their pKa in its medium and what is charged of each: substrate, base with all
-/// its steps, solvent, water with that of hydrates, electrophile, product and leaving group, all base dissolved.
+/// its steps, solvent as acid and as base, water with that of hydrates likewise, additive, electrophile, product and
+/// leaving group, all base dissolved.
 ///
 /// A product made from an anion takes a charge from the base: that much of the base is charged as its acid. Halides and
 /// metal ions take no part.
@@ -39,6 +44,7 @@ pub(crate) fn whole_pot(kinetics: &Kinetics<'_>, reached: Reached) -> Vec<Acid> 
     ];
     acids.extend(solvent(kinetics));
     acids.extend(water(kinetics));
+    acids.extend(additive(kinetics));
     if reached != Reached::BeforeElectrophile {
         let left = substrate_m * cell.conditions.electrophile_equiv - product_m;
         acids.extend(electrophile(kinetics, left));
@@ -160,13 +166,52 @@ fn steps_of(molecule: &Molecule) -> Option<(u8, u8)> {
     Some((protons.saturating_sub(held), held.saturating_sub(1)))
 }
 
-fn solvent(kinetics: &Kinetics<'_>) -> Option<Acid> {
+/// As acid, as base, or as both where the same molecules are.
+fn solvent(kinetics: &Kinetics<'_>) -> Vec<Acid> {
     let record = &kinetics.cell.solvent.record;
-    let (acid, class) = record.acid.as_ref()?;
-    let pka = kinetics.pka(acid.value, *class);
-    let mut acid = monobasic(kinetics, "solvent", (pka, *class));
-    acid.charged_m[0] = record.acid_m;
-    Some(acid)
+    let acid = record.acid.as_ref().map(|(acid, class)| {
+        let pka = kinetics.pka(acid.value, *class);
+        let mut acid = monobasic(kinetics, "solvent", (pka, *class));
+        acid.charged_m[0] = record.acid_m;
+        acid
+    });
+    let base = lyonium(record).map(|base| {
+        let pka = kinetics.medium.pka_lyonium(base.pka, kinetics.values);
+        let mut acid = monobasic(kinetics, "solvent as base", (pka, AnionClass::Neutral));
+        acid.charged_m[1] = base.amount_m;
+        acid
+    });
+    match (acid, base) {
+        (Some(acid), Some(base)) if record.parts.is_empty() => vec![amphoteric(acid, &base)],
+        (acid, base) => acid.into_iter().chain(base).collect(),
+    }
+}
+
+/// An acid whose molecules take a proton too.
+fn amphoteric(mut acid: Acid, base: &Acid) -> Acid {
+    acid.charge = base.charge;
+    acid.pkas.splice(0..0, base.pkas.iter().copied());
+    acid.charged_m.insert(0, 0.0);
+    // the complex of homoconjugation is one of the two most protonated forms
+    acid.log10_homoconjugation = None;
+    acid
+}
+
+/// Its most acidic X–H, or the amine that it is.
+fn additive(kinetics: &Kinetics<'_>) -> Option<Acid> {
+    let conditions = &kinetics.cell.conditions;
+    let amount_m = conditions.concentration_m * conditions.additive_equiv;
+    let proton = kinetics.cell.additive.as_ref()?.proton?;
+    let pka = match proton.onium {
+        Some(onium) => kinetics
+            .medium
+            .pka_cationic(proton.pka_dmso, onium, kinetics.values),
+        None => kinetics.pka(proton.pka_dmso, proton.class),
+    };
+    let mut acid = monobasic(kinetics, "additive", (pka, proton.class));
+    acid.charge = proton.charge;
+    acid.charged_m[usize::from(proton.as_base)] = amount_m;
+    (amount_m > 0.0).then_some(acid)
 }
 
 /// The solvent's own and that of a hydrate.
@@ -178,7 +223,9 @@ fn water(kinetics: &Kinetics<'_>) -> Option<Acid> {
     let class = AnionClass::Hydroxide;
     let mut acid = monobasic(kinetics, "water", (kinetics.pka(PKA_WATER, class), class));
     acid.charged_m[0] = amount_m;
-    (amount_m > 0.0).then_some(acid)
+    let hydronium = kinetics.medium.pka_lyonium(PKA_HYDRONIUM, kinetics.values);
+    let base = monobasic(kinetics, "water", (hydronium, AnionClass::Neutral));
+    (amount_m > 0.0).then(|| amphoteric(acid, &base))
 }
 
 fn electrophile(kinetics: &Kinetics<'_>, amount_m: f64) -> Option<Acid> {

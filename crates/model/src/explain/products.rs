@@ -4,12 +4,14 @@ mod spent;
 mod taken;
 
 use enolattice_molecule::{
-    Molecule, c_product, dehydrated, heteroatom_product, o_product, self_condensation_product,
+    ElectrophileKind, Molecule, c_product, carbonyl_product, dehydrated, glycol_esters,
+    heteroatom_product, o_product, self_condensation_product,
 };
 use enolattice_reagents::Library;
 
 use crate::carbonyl::acceptor_atom;
 use crate::explanation::ExplainedProduct;
+use crate::features::split_in_beta;
 use crate::kinetics::Kinetics;
 use crate::network::{Network, Reaction, Species};
 use crate::reference::Course;
@@ -74,6 +76,8 @@ pub(super) fn products(
     drawing.over_reacted();
     drawing.self_condensed();
     drawing.taken_by_base();
+    drawing.at_carbonyl_of_acceptor();
+    drawing.split();
     drawing.of_electrophile();
     let mut drawn = drawing.drawn;
     let share = |product: &ExplainedProduct| product.fraction.unwrap_or(-1.0);
@@ -235,6 +239,45 @@ impl Drawing<'_> {
         product.ok().map(|product| product.molecule)
     }
 
+    /// The alcohol of an enolate and the carbonyl group of an enone or enal.
+    fn at_carbonyl_of_acceptor(&mut self) {
+        let cell = self.cell;
+        let share = self.at_end(Species::CarbonylAdduct);
+        let Some(ElectrophileKind::Michael { alpha, .. }) =
+            cell.electrophile.group.as_ref().map(|group| group.kind)
+        else {
+            return;
+        };
+        let (substrate, acceptor) = (&cell.substrate, &cell.electrophile.molecule);
+        let site = substrate.carbon.get(substrate.condensing_site());
+        let mut around = acceptor.neighbours(alpha).iter().map(|&(atom, _)| atom);
+        let carbonyl = around.find(|atom| spent::is_carbonyl(acceptor, *atom));
+        let (true, Some(site), Some(carbonyl)) = (share > 0.0, site, carbonyl) else {
+            return;
+        };
+        let made = carbonyl_product(&substrate.molecule, site.acid.atom, acceptor, carbonyl);
+        let way = Way::to(1.0, made.ok().map(|product| product.molecule));
+        self.add(Some(Channel::OtherSite), share, vec![way]);
+    }
+
+    /// What a carbanion that loses a group in β becomes.
+    fn split(&mut self) {
+        let substrate = &self.cell.substrate;
+        let ways = self.making(Species::Split).filter_map(|r| {
+            let Species::Carbanion(i) = r.first else {
+                return None;
+            };
+            let site = substrate.carbon.get(i)?.acid.atom;
+            Some(Way::to(
+                self.extent(r),
+                split_in_beta(&substrate.molecule, site),
+            ))
+        });
+        let ways = ways.collect();
+        let share = self.at_end(Species::Split);
+        self.add(Some(Channel::Elimination), share, ways);
+    }
+
     /// Aldol adduct and enone of the substrate with itself, or its Claisen product.
     fn self_condensed(&mut self) {
         let substrate = &self.cell.substrate;
@@ -252,6 +295,14 @@ impl Drawing<'_> {
         let wet = self.at_end(Species::Dimer) + self.at_end(Species::DimerAnion);
         let dry = 2.0 * self.at_end(Species::DryDimer);
         let enone = dehydrated(&dimer).ok().flatten();
+        let share = 3.0 * self.at_end(Species::Trimer);
+        if share > 0.0 {
+            let esters = glycol_esters(&substrate.molecule, carbonyl, &dimer)
+                .ok()
+                .flatten();
+            let way = Way::to_one_of(1.0, esters.map(Vec::from).unwrap_or_default());
+            self.add(channel, share, vec![way]);
+        }
         self.add(channel, 2.0 * wet, vec![Way::to(1.0, Some(dimer.molecule))]);
         if enone.is_some() {
             self.add(channel, dry, vec![Way::to(1.0, enone)]);

@@ -50,6 +50,10 @@ fn origin_of_rate(cell: &Cell, r: &Reaction) -> Option<(f64, String)> {
         let source = "log k = sN (N + E) with the carbonyl group of the substrate";
         return Some((sigma, source.to_owned()));
     }
+    if let Some(p) = follow_up(r) {
+        let (sigma, source) = of(p);
+        return Some((sigma, source.to_owned()));
+    }
     if r.first == electrophile {
         let (sigma, source) = of(P::SOLVOLYSIS_PRIMARY);
         return Some((sigma, source.to_owned()));
@@ -74,6 +78,27 @@ fn origin_of_rate(cell: &Cell, r: &Reaction) -> Option<(f64, String)> {
         None => format!("SN2 relative rates on: {}", of(P::SN2_ANCHOR).1),
     };
     Some((sigma, source))
+}
+
+/// The parameter on which a step rests that is no attack of the carbanion on the electrophile.
+fn follow_up(r: &Reaction) -> Option<P> {
+    let makes = |species: Species| r.products.contains(&Some(species));
+    let comes_back = |species: Option<Species>| species.is_some() && r.products.contains(&species);
+    match r.first {
+        _ if makes(Species::Split) => Some(P::BETA_HALIDE),
+        _ if makes(Species::Trimer) => Some(P::ALDOL_TISHCHENKO),
+        _ if makes(Species::CarbonylAdduct) => Some(P::E_CONJUGATED),
+        _ if r.third == Some(Species::Electrophile) => Some(P::ENAMINE_N),
+        Species::ProductAnion(i) if r.second.is_none() && makes(Species::Dehydrated(i)) => {
+            Some(P::CLOSURE_EPOXIDE)
+        }
+        _ if makes(Species::Spent) && comes_back(Some(r.first)) => Some(P::DG_HETERO_MICHAEL),
+        Species::Hydroxide if makes(Species::Taken) => Some(P::SAPONIFICATION),
+        Species::Base | Species::Lyate if makes(Species::Taken) && comes_back(Some(r.first)) => {
+            Some(P::TRANSESTERIFICATION)
+        }
+        _ => None,
+    }
 }
 
 fn step(reaction: &Reaction) -> String {

@@ -2,6 +2,7 @@
 
 use enolattice_molecule::{AcylDonor, AnionClass, ElectrophileKind, RingHeteroatom};
 use enolattice_reagents::{Cation, SolventClass};
+use enolattice_units::math;
 
 use super::{Kinetics, PKA_ALCOHOL};
 use crate::bonding::{self, Bonding, TakenByBase};
@@ -61,8 +62,8 @@ impl<'a> Kinetics<'a> {
                 beta_aryl,
                 ..
             } if crowded && beta_alkyl + beta_aryl > 0 => self.v(P::STERIC_PAIR),
-            ElectrophileKind::Aldehyde { .. } if self.cell.base.makes_iminium => {
-                self.v(P::IMINIUM_ADDITION)
+            ElectrophileKind::Aldehyde { .. } | ElectrophileKind::Ketone { .. } => {
+                self.by_way_of_iminium(P::IMINIUM_ADDITION)
             }
             ElectrophileKind::Acyl { .. } | ElectrophileKind::Aryl { .. } => {
                 let breakdown = match self.leaving_acid() {
@@ -77,6 +78,58 @@ impl<'a> Kinetics<'a> {
         };
         let carbonyl = self.carbonyl_activation(kind, nucleophile);
         Some(rates::addition(nucleophile, *e, &self.medium, self.values) + pair + carbonyl)
+    }
+
+    /// Share of the carbonyl compounds that react by way of an iminium ion, which forms of the amine's ammonium ion and
+    /// not of the amine alone: 1 from a working concentration of that ion on.
+    pub(crate) fn iminium_share(&self) -> f64 {
+        // what piperidine and acetylacetone make of each other in dichloromethane, where they condense with aldehydes
+        // (from memory)
+        const WORKING_M: f64 = 1e-4;
+        match self.kind() {
+            Some(ElectrophileKind::Aldehyde { .. } | ElectrophileKind::Ketone { .. })
+                if self.cell.base.makes_iminium =>
+            {
+                let in_acid = self
+                    .solvent_donor()
+                    .is_some_and(|(pka, _)| pka < self.pka_base());
+                if in_acid {
+                    1.0
+                } else {
+                    (self.acid_of_base_m() / WORKING_M).min(1.0)
+                }
+            }
+            _ => 0.0,
+        }
+    }
+
+    /// What a step gains, log10, by way of an iminium ion: `log10(1 − f + f·10^gain)`, f of
+    /// [`Self::iminium_share`].
+    pub(crate) fn by_way_of_iminium(&self, gain: P) -> f64 {
+        let share = self.iminium_share();
+        if share == 0.0 {
+            return 0.0;
+        }
+        let ketone = match self.kind() {
+            Some(ElectrophileKind::Ketone { .. }) => self.v(P::IMINIUM_KETONE),
+            _ => 0.0,
+        };
+        let gain = math::exp10((self.v(gain) + ketone).max(0.0));
+        math::log10(1.0 - share + share * gain)
+    }
+
+    /// Factor on acyl and aryl transfer to a carbanion that bears a cyano group and two others: the cyano group takes half
+    /// the room of another there (from memory: cyanoacetates are arylated once).
+    pub(crate) fn room_of_cyano(&self, site: &CarbonSite) -> f64 {
+        const HALF: f64 = 0.5;
+        match self.kind() {
+            Some(ElectrophileKind::Acyl { .. } | ElectrophileKind::Aryl { .. })
+                if site.beside_cyano && site.degree > 2 =>
+            {
+                math::exp10(HALF * self.v(P::STERIC_ACYL))
+            }
+            _ => 1.0,
+        }
     }
 
     /// What a carbonyl group gains, log10, by binding the metal of the nucleophile or the solvent's O–H.

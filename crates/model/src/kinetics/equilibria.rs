@@ -50,19 +50,36 @@ impl<'a> Kinetics<'a> {
             ElectrophileKind::Ketone {
                 activated: true, ..
             } => self.v(P::DG_ACTIVATED_KETONE),
-            ElectrophileKind::Ketone { .. } => self.v(P::DG_ALDOL_KETONE_ACCEPTOR),
-            ElectrophileKind::Aldehyde { .. } if site.beside_cyano => self.v(P::DG_ALDOL_CYANO),
-            ElectrophileKind::Aldehyde { .. } if stabilised => self.v(P::DG_ALDOL_STABILISED),
-            ElectrophileKind::Aldehyde { .. } if site.acid.class == AnionClass::Nitronate => {
-                self.v(P::DG_ALDOL_NITRO)
+            // a stabilised carbanion costs a ketone as much more as it costs an aldehyde
+            ElectrophileKind::Ketone { aromatic, .. } => {
+                self.ketone_acceptor(aromatic) + self.aldol_free_energy(site, false)
+                    - self.v(P::DG_ALDOL_ALKYL)
             }
-            ElectrophileKind::Aldehyde { aromatic: true, .. } => self.v(P::DG_ALDOL_ARYL),
-            ElectrophileKind::Aldehyde {
-                aromatic: false, ..
-            } => self.v(P::DG_ALDOL_ALKYL),
+            ElectrophileKind::Aldehyde { aromatic, .. } => self.aldol_free_energy(site, aromatic),
             _ => return None,
         };
         Some(at_25 + self.v(P::DG_ENTROPY) * (self.medium.temperature_c - 25.0))
+    }
+
+    /// ΔG° of adding a ketone or ester to a ketone, kcal/mol at 25 °C.
+    fn ketone_acceptor(&self, aromatic: bool) -> f64 {
+        let aryl = if aromatic {
+            self.v(P::DG_ALDOL_ARYL_KETONE)
+        } else {
+            0.0
+        };
+        self.v(P::DG_ALDOL_KETONE_ACCEPTOR) + aryl
+    }
+
+    /// ΔG° of adding a site to an aldehyde, kcal/mol at 25 °C.
+    fn aldol_free_energy(&self, site: &CarbonSite, aromatic: bool) -> f64 {
+        self.v(match site.acid.class {
+            _ if site.beside_cyano => P::DG_ALDOL_CYANO,
+            class if class.is_dicarbonyl() => P::DG_ALDOL_STABILISED,
+            AnionClass::Nitronate => P::DG_ALDOL_NITRO,
+            _ if aromatic => P::DG_ALDOL_ARYL,
+            _ => P::DG_ALDOL_ALKYL,
+        })
     }
 
     /// ΔG° of acylating a site with an ester or its kin, neutral to neutral, kcal/mol.
@@ -205,12 +222,14 @@ impl<'a> Kinetics<'a> {
 
     /// log10 K of the substrate's condensation with itself, neutral to neutral.
     pub(crate) fn self_condensation_log10_k(&self, acceptor: Carbonyl) -> f64 {
+        let site = &self.cell.substrate.carbon[self.cell.substrate.condensing_site()];
+        let is_aryl = site.acid.class == AnionClass::ArylKetone;
         let (at_25, entropy) = match acceptor {
-            Carbonyl::Aldehyde => (P::DG_ALDOL_ALKYL, self.v(P::DG_ENTROPY)),
-            Carbonyl::Ketone => (P::DG_ALDOL_KETONE_ACCEPTOR, self.v(P::DG_ENTROPY)),
+            Carbonyl::Aldehyde => (self.v(P::DG_ALDOL_ALKYL), self.v(P::DG_ENTROPY)),
+            Carbonyl::Ketone => (self.ketone_acceptor(is_aryl), self.v(P::DG_ENTROPY)),
             // two molecules give two
-            Carbonyl::Ester | Carbonyl::TertAlkylEster => (P::DG_CLAISEN, 0.0),
+            Carbonyl::Ester | Carbonyl::TertAlkylEster => (self.v(P::DG_CLAISEN), 0.0),
         };
-        self.log10_k(self.v(at_25) + entropy * (self.medium.temperature_c - 25.0))
+        self.log10_k(at_25 + entropy * (self.medium.temperature_c - 25.0))
     }
 }

@@ -16,7 +16,8 @@ impl<'a> Kinetics<'a> {
     pub(crate) fn elimination_by_carbanion(&self, site: &CarbonSite) -> f64 {
         let nucleophile = self.substrate_carbanion(site);
         let pairing = rates::pairing(&nucleophile, &self.medium, self.values, true);
-        self.elimination(self.site_pka(site)) * math::exp10(pairing)
+        let carbon = self.v(P::E2_CARBANION);
+        self.elimination(self.site_pka(site)) * math::exp10(pairing + carbon)
     }
 
     /// Rate constant of elimination by a base whose acid has this pKa in the medium.
@@ -212,16 +213,13 @@ impl<'a> Kinetics<'a> {
                 } else {
                     P::DEHYDRATION_ALKYL
                 };
-                let amine = if self.cell.base.makes_iminium {
-                    math::exp10(self.v(P::IMINIUM_ELIMINATION))
-                } else {
-                    1.0
-                };
+                let amine = math::exp10(self.by_way_of_iminium(P::IMINIUM_ELIMINATION));
                 amine * self.by_acidity_of_adduct(site) * self.loss_of_water(p, base_pka)
             }
             Some(ElectrophileKind::Ketone { .. }) => {
+                let amine = math::exp10(self.by_way_of_iminium(P::IMINIUM_ELIMINATION));
                 let rate = self.loss_of_water(P::DEHYDRATION_ALKYL, base_pka);
-                self.by_acidity_of_adduct(site) * rate
+                amine * self.by_acidity_of_adduct(site) * rate
             }
             _ => 0.0,
         }

@@ -4,7 +4,7 @@ use enolattice_molecule::AnionClass;
 
 use super::{Kinetics, PKA_WATER};
 use crate::parameters::{P, Values};
-use crate::prepared::CarbonSite;
+use crate::prepared::{Beside, CarbonSite};
 use crate::rates::{self, Nucleophile};
 
 /// log10 reactivity of hydroxide at carbon relative to a carbanion of the same pKa (from memory).
@@ -33,7 +33,7 @@ impl<'a> Kinetics<'a> {
             class: site.acid.class,
             crowding: site.crowding,
             branches: site.branches,
-            beside: site.beside,
+            beside: beside(site),
             relative: 0.0,
             aggregated_at_m: Some(self.cell.conditions.concentration_m),
             is_dianion: false,
@@ -99,6 +99,12 @@ impl<'a> Kinetics<'a> {
     }
 }
 
+/// What stands beside the carbanion of a site and counts for its rate.
+fn beside(site: &CarbonSite) -> Option<Beside> {
+    let has_cyano = site.beside_cyano && site.acid.class.is_dicarbonyl();
+    site.beside.or(has_cyano.then_some(Beside::Cyano))
+}
+
 /// Mayr's N in DMSO of the carbanion of a site; its crowding as N: log10 units over sN.
 pub(crate) fn nucleophilicity_of(site: &CarbonSite, values: &Values) -> f64 {
     let carbanion = Nucleophile {
@@ -106,7 +112,7 @@ pub(crate) fn nucleophilicity_of(site: &CarbonSite, values: &Values) -> f64 {
         class: site.acid.class,
         crowding: site.crowding,
         branches: site.branches,
-        beside: site.beside,
+        beside: beside(site),
         relative: 0.0,
         aggregated_at_m: None,
         is_dianion: false,

@@ -35,10 +35,22 @@ impl Reactions<'_> {
         let (acid_from, factor_from) = species_or_factor(from.acid);
         let (acid_to, factor_to) = species_or_factor(to.acid);
         // to.anion + from.acid → to.acid + from.anion, and back
-        let forward: Vec<Species> = acid_to.into_iter().chain([from.anion]).collect();
-        self.add(to.anion, acid_from, &forward, k * factor_from);
-        let backward: Vec<Species> = acid_from.into_iter().chain([to.anion]).collect();
-        self.add(from.anion, acid_to, &backward, back * factor_to);
+        let with = |acid: Option<Species>, anion| match acid {
+            Some(acid) => [Some(acid), Some(anion), None],
+            None => [Some(anion), None, None],
+        };
+        self.enter(
+            to.anion,
+            acid_from,
+            with(acid_to, from.anion),
+            k * factor_from,
+        );
+        self.enter(
+            from.anion,
+            acid_to,
+            with(acid_from, to.anion),
+            back * factor_to,
+        );
     }
 
     pub(super) fn fast_acids(&self) -> Vec<Acid> {

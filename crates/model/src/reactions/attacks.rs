@@ -28,7 +28,10 @@ impl Reactions<'_> {
             let nucleophile = k.substrate_carbanion(site);
             let product = k.cell.pair.by_site.get(i).and_then(Option::as_ref);
             let rate = match product {
-                Some(_) => k.attack(&nucleophile).map_or(0.0, math::exp10) * nudge,
+                Some(_) => {
+                    let room = k.room_of_cyano(site);
+                    k.attack(&nucleophile).map_or(0.0, math::exp10) * nudge * room
+                }
                 None => 0.0,
             };
             self.assisted_addition(i, site, rate);
@@ -98,11 +101,8 @@ impl Reactions<'_> {
         let (adduct_pka, log10_k) = adduct.unwrap_or((0.0, 0.0));
         let rate = if adduct.is_some() { rate } else { 0.0 };
         // an iminium ion leaves an amine, which holds
-        let falls_apart = if k.cell.base.makes_iminium {
-            0.0
-        } else {
-            rate * math::exp10(adduct_pka - log10_k - k.site_pka(site))
-        };
+        let by_hydroxyl = 1.0 - k.iminium_share();
+        let falls_apart = by_hydroxyl * rate * math::exp10(adduct_pka - log10_k - k.site_pka(site));
         let kept = |donor_pka: f64| {
             let taken = HANDED_OVER_PER_S * math::exp10((adduct_pka - donor_pka).min(0.0));
             rate * taken / (taken + falls_apart)
@@ -198,6 +198,9 @@ impl Reactions<'_> {
             return;
         }
         for site in 0..k.cell.substrate.carbon.len() {
+            let room = k
+                .product_carbon(site)
+                .map_or(1.0, |next| k.room_of_cyano(next));
             let nucleophile = match (k.product_heteroatom(site), k.product_carbon(site)) {
                 (Some(_), _) => k.heteroatom_nucleophile(),
                 (None, Some(next)) => Some(k.carbanion(next, next.acid.pka_dmso)),
@@ -208,8 +211,9 @@ impl Reactions<'_> {
             let Some(nucleophile) = nucleophile.filter(|_| attacks) else {
                 continue;
             };
-            let rate =
-                k.attack(&nucleophile).map_or(0.0, math::exp10) * math::exp10(k.nudge.attack);
+            let rate = k.attack(&nucleophile).map_or(0.0, math::exp10)
+                * math::exp10(k.nudge.attack)
+                * room;
             let anion = Species::ProductAnion(site);
             let e = Some(Species::Electrophile);
             // the carbanion of a double adduct takes a proton from the acid of a base that is weak

@@ -12,9 +12,6 @@ use crate::network::Species;
 use crate::parameters::P;
 use crate::rates;
 
-/// A tert-alkyl ester is saponified about a hundred times more slowly (common practice).
-const TERT_ALKYL_SAPONIFICATION: f64 = -2.0;
-
 impl Reactions<'_> {
     pub(super) fn fates_of_electrophile_with_base(&mut self, fast: &[Acid]) {
         let k = self.kinetics;
@@ -151,6 +148,13 @@ impl Reactions<'_> {
         } else {
             self.add(Species::DimerAnion, None, &[anion, substrate], back);
         }
+        if acceptor == Carbonyl::Aldehyde {
+            let (trimer, lyate) = (Species::Trimer, Species::Lyate);
+            let rate = k.aldol_tishchenko();
+            self.add(Species::DimerAnion, Some(substrate), &[trimer, lyate], rate);
+            let dry = [Species::DryDimer, Species::Hydroxide];
+            self.add(Species::DimerAnion, None, &dry, k.expulsion_from_aldolate());
+        }
     }
 
     /// The aldol dimer of an aldehyde or ketone loses water for good.
@@ -189,34 +193,6 @@ impl Reactions<'_> {
                 k.v(entropy),
             ))
         };
-        if k.claisen() {
-            let tert = acceptor == Some(Carbonyl::TertAlkylEster);
-            let in_alcohol =
-                k.cell.solvent.record.class == enolattice_reagents::SolventClass::Alcohol;
-            let at_25 = k.v(P::SAPONIFICATION)
-                + if tert { TERT_ALKYL_SAPONIFICATION } else { 0.0 }
-                + if in_alcohol {
-                    k.v(P::SAPONIFICATION_ALCOHOL)
-                } else {
-                    0.0
-                };
-            let rate = at(at_25, P::DS_SN2);
-            let water = k.cell.solvent.record.class == enolattice_reagents::SolventClass::Water;
-            let s = Some(Species::Substrate);
-            let by_base = if record.kind == BaseKind::Hydroxide {
-                rate
-            } else {
-                0.0
-            };
-            self.add(Species::Base, s, &[Species::Taken], by_base);
-            self.add(Species::Hydroxide, s, &[Species::Taken], rate);
-            self.add(
-                Species::Lyate,
-                s,
-                &[Species::Taken],
-                if water { rate } else { 0.0 },
-            );
-        }
         let exchange = k
             .cell
             .substrate

@@ -179,6 +179,10 @@ impl Drawing<'_> {
             let possible = alkenes(electrophile, group).unwrap_or_default();
             return Way::to_one_of(weight, possible);
         }
+        if r.products.contains(&Some(r.first)) {
+            // a chain of the electrophile, which is no one molecule
+            return Way::to(weight, None);
+        }
         // what the electrophile does with itself uses up two molecules each time
         let twice = 2.0 * weight;
         match r.first {

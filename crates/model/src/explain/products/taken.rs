@@ -8,12 +8,15 @@ use enolattice_reagents::BaseKind;
 use super::{Drawing, Way, spent};
 use crate::Channel;
 use crate::carbonyl::acceptor_atom;
-use crate::network::Species;
+use crate::network::{Reaction, Species};
 use crate::prepared::exchangeable_halogen_atom;
+
+const OXYGEN: u8 = 8;
 
 impl Drawing<'_> {
     /// What the base makes of the substrate: carbinol or ketone of an organometal, acid and alcohol of a
-    /// saponification, the ester of another alcohol, hydrogen in the place of a halogen.
+    /// saponification, the ester of another alcohol, hydrogen in the place of a halogen. What is left of a cleaved
+    /// 1,3-dicarbonyl compound is not drawn.
     pub(super) fn taken_by_base(&mut self) {
         let channel = Some(Channel::BaseAddsToSubstrate);
         let ways = self.ways_of_base();
@@ -21,29 +24,48 @@ impl Drawing<'_> {
             let share = self.at_end(Species::Taken);
             self.add(channel, share, ways);
         }
-        if let Some(ester) = self.transesterified() {
-            self.add_molecule(channel, &ester, None);
-        }
     }
 
-    /// The ester of the base's alcohol, where an alkoxide meets an ester of another: the model does not count how much. A
-    /// tertiary alkoxide hardly exchanges (common practice), and a lactone opens and closes again.
-    fn transesterified(&self) -> Option<Molecule> {
-        let record = &self.cell.base.record;
-        if record.class != AnionClass::Alkoxide || !self.kinetics.claisen() {
-            return None;
-        }
-        let (alkoxide, oxygen) = spent::anion(&record.smiles)?;
-        let mut carbons = alkoxide.neighbours(oxygen).iter();
-        if carbons.any(|&(carbon, _)| alkoxide.neighbours(carbon).len() == 4) {
-            return None;
-        }
+    /// The ester of another alcohol, whose alkoxide the step brings.
+    fn transesterified(&self, alkoxide: Species) -> Option<Molecule> {
+        let alcohol = match alkoxide {
+            Species::Lyate => self.cell.solvent.alcohol.as_ref()?,
+            _ => self.cell.base.alcohol.as_ref()?,
+        };
+        let alcohol = Molecule::parse(alcohol).ok()?;
+        let oxygen = (0..alcohol.atoms().len()).find(|atom| {
+            let found = alcohol.atoms()[*atom];
+            found.element == OXYGEN && found.hydrogens > 0
+        })?;
         let substrate = &self.cell.substrate;
-        let carbonyl = acceptor_atom(&substrate.molecule, substrate.acceptor?)?;
-        alcohol_of_ester(&substrate.molecule, carbonyl).ok()??;
-        let ester = carbonyl_product(&alkoxide, oxygen, &substrate.molecule, carbonyl).ok()?;
-        let is_new = ester.molecule.canonical() != substrate.molecule.canonical();
-        is_new.then_some(ester.molecule)
+        let carbonyl = acceptor_atom(&substrate.molecule, substrate.ester?)?;
+        let ester = carbonyl_product(&alcohol, oxygen, &substrate.molecule, carbonyl).ok()?;
+        Some(ester.molecule)
+    }
+
+    /// Saponification, and exchange where the oxygen base comes back; each by its rate along the time course. A
+    /// cleavage has the same reactants: then nothing is drawn.
+    fn ways_at_ester(&self) -> Vec<Way> {
+        let substrate = &self.cell.substrate;
+        let carbonyl = substrate
+            .ester
+            .and_then(|ester| acceptor_atom(&substrate.molecule, ester));
+        let steps = self.making(Species::Taken);
+        let way = |r: &Reaction| {
+            let weight = self.extent(r);
+            if substrate.cleavable.is_some() {
+                return Way::to(weight, None);
+            }
+            if r.products.contains(&Some(r.first)) {
+                return Way::to(weight, self.transesterified(r.first));
+            }
+            let makes = carbonyl.and_then(|carbonyl| self.saponified(carbonyl));
+            Way {
+                weight,
+                makes: makes.unwrap_or_default(),
+            }
+        };
+        steps.map(way).collect()
     }
 
     fn ways_of_base(&self) -> Vec<Way> {
@@ -70,14 +92,7 @@ impl Drawing<'_> {
                     ways.push(Way::to(0.0, bare));
                 }
             }
-            _ if self.kinetics.claisen() => {
-                let makes = carbonyl.and_then(|carbonyl| self.saponified(carbonyl));
-                ways.push(Way {
-                    weight: 1.0,
-                    makes: makes.unwrap_or_default(),
-                });
-            }
-            _ => {}
+            _ => ways = self.ways_at_ester(),
         }
         ways
     }

@@ -1,0 +1,299 @@
+//! Joint samples of everything uncertain, and what they make of a cell.
+//!
+//! A draw addresses quantities, not cells: a parameter, the acidity of a substrate or of a base's acid, the
+//! electrophilicity of a reagent have one error each, and every cell they take part in feels the same one. So cells
+//! succeed and fail together, as they do in the laboratory.
+
+use enolattice_units::math;
+use sha2::{Digest, Sha256};
+
+use crate::Cell;
+use crate::kinetics::Nudge;
+use crate::march::march;
+use crate::parameters::{P, PARAMETERS, Values};
+use crate::program::Charge;
+use crate::screen::{Coverage, coverage, solve_at};
+
+/// Draws that are marched side by side.
+const SIDE_BY_SIDE: usize = 4;
+/// Dimensions of the Sobol sequence at hand; further parameters use it again, scrambled otherwise.
+const SOBOL_DIMENSIONS: u32 = sobol_burley::NUM_DIMENSIONS;
+
+/// One joint sample of all uncertain quantities; draw 0 has each at its mean.
+#[derive(Clone, Debug, PartialEq)]
+pub struct Draw {
+    pub(crate) values: Values,
+    seed: u64,
+    number: u32,
+}
+
+impl Draw {
+    /// The draw with a number: points of a scrambled Sobol sequence, one pair of dimensions for each parameter.
+    pub(crate) fn new(seed: u64, number: u32) -> Draw {
+        let values = match number {
+            0 => Values::means(),
+            _ => Values::moved(|index| of_parameter(seed, number, index)),
+        };
+        Draw {
+            values,
+            seed,
+            number,
+        }
+    }
+
+    /// Means, but for a few parameters.
+    pub(crate) fn changed(changes: &[(&str, f64)]) -> Draw {
+        Draw {
+            values: Values::changed(changes),
+            seed: 0,
+            number: 0,
+        }
+    }
+
+    /// Standard normal deviate of a parameter.
+    fn of_parameter(&self, index: usize) -> f64 {
+        match self.number {
+            0 => 0.0,
+            number => of_parameter(self.seed, number, index),
+        }
+    }
+
+    /// Standard normal deviate of a reagent's own value.
+    fn of_reagent(&self, address: u64) -> f64 {
+        if self.number == 0 {
+            return 0.0;
+        }
+        let mut hash = Sha256::new();
+        hash.update(self.seed.to_le_bytes());
+        hash.update(self.number.to_le_bytes());
+        hash.update(address.to_le_bytes());
+        let bytes: [u8; 32] = hash.finalize().into();
+        let uniform = |from: usize| {
+            let word = u64::from_le_bytes(bytes[from..from + 8].try_into().expect("eight bytes"));
+            ((word >> 11) as f64 + 0.5) / (1u64 << 53) as f64
+        };
+        normal(uniform(0), uniform(8))
+    }
+}
+
+/// Sobol points with Owen's scrambling after Burley, J. Comput. Graph. Tech. 2020, 9(4), 1.
+fn of_parameter(seed: u64, number: u32, index: usize) -> f64 {
+    let uniform = |dimension: u32| {
+        let scrambling = seed as u32 ^ (seed >> 32) as u32 ^ (dimension / SOBOL_DIMENSIONS);
+        let point = sobol_burley::sample(number - 1, dimension % SOBOL_DIMENSIONS, scrambling);
+        // 24 bits of the unit interval, never 0
+        f64::from(point) + 0.5 / f64::from(1 << 24)
+    };
+    let dimension = 2 * index as u32;
+    normal(uniform(dimension), uniform(dimension + 1))
+}
+
+/// A standard normal deviate of two uniform ones: Box and Muller, Ann. Math. Stat. 1958, 29, 610.
+fn normal(first: f64, second: f64) -> f64 {
+    (-2.0 * math::ln(first)).sqrt() * math::cos_turn(second)
+}
+
+/// A value of a reagent, with its uncertainty and the address of its error.
+struct OwnError {
+    name: String,
+    value: f64,
+    sigma: f64,
+    unit: &'static str,
+    source: String,
+    address: u64,
+}
+
+/// What the reagents of a cell add to the uncertainty.
+struct OwnErrors {
+    substrate: OwnError,
+    base: OwnError,
+    electrophile: Option<OwnError>,
+}
+
+impl OwnErrors {
+    fn of(cell: &Cell) -> OwnErrors {
+        const PKA: &str = "pK in DMSO";
+        let site = &cell.substrate.carbon[0].acid;
+        let base = &cell.base.record;
+        let electrophile = cell.electrophile.e.as_ref();
+        OwnErrors {
+            substrate: OwnError {
+                name: format!("pKa of {}", cell.substrate.name),
+                value: site.pka_dmso,
+                sigma: site.sigma,
+                unit: PKA,
+                source: site.source.clone(),
+                address: address("substrate", cell.substrate.molecule.canonical()),
+            },
+            base: OwnError {
+                name: format!("pKa of the acid of {}", base.name),
+                value: base.pka_dmso.value,
+                sigma: base.pka_dmso.sigma,
+                unit: PKA,
+                source: base.pka_dmso.source.clone(),
+                address: address("base", &base.name),
+            },
+            electrophile: electrophile.map(|(e, sigma, source)| OwnError {
+                name: format!("E of {}", cell.electrophile.name),
+                value: *e,
+                sigma: *sigma,
+                unit: "log10",
+                source: source.clone(),
+                address: address("electrophile", cell.electrophile.molecule.canonical()),
+            }),
+        }
+    }
+
+    fn all(self) -> impl IntoIterator<Item = OwnError> {
+        [Some(self.substrate), Some(self.base), self.electrophile]
+            .into_iter()
+            .flatten()
+    }
+
+    /// What a draw does to a cell beyond the parameters. Of the pKa of base and substrate only the gap counts.
+    fn nudge(&self, draw: &Draw) -> Nudge {
+        let error = |of: &OwnError| of.sigma * draw.of_reagent(of.address);
+        Nudge {
+            acidity: error(&self.substrate) - error(&self.base),
+            attack: draw.values.get(P::MAYR_S_N) * self.electrophile.as_ref().map_or(0.0, error),
+        }
+    }
+}
+
+fn address(of: &str, name: &str) -> u64 {
+    let mut hash = Sha256::new();
+    hash.update(of.as_bytes());
+    hash.update([0]);
+    hash.update(name.as_bytes());
+    let bytes: [u8; 32] = hash.finalize().into();
+    u64::from_le_bytes(bytes[..8].try_into().expect("eight bytes"))
+}
+
+/// Yield of a cell in each draw of the product that is wanted at the mean; `None` where the model does not cover it.
+pub(crate) fn yields(cell: &Cell, draws: &[Draw]) -> Option<Vec<f64>> {
+    match coverage(cell) {
+        Coverage::Unknown(_) => return None,
+        Coverage::Nothing(..) => return Some(vec![0.0; draws.len()]),
+        Coverage::Covered => {}
+    }
+    let own = OwnErrors::of(cell);
+    let site = solve_at(cell, &Values::means(), Nudge::default())
+        .outcome
+        .site;
+    let charge = Charge::of(cell);
+    let mut yields = Vec::with_capacity(draws.len());
+    let (groups, rest) = draws.as_chunks::<SIDE_BY_SIDE>();
+    for group in groups {
+        let lanes = group.each_ref().map(|draw| (&draw.values, own.nudge(draw)));
+        yields.extend(products(cell, &charge, lanes, site));
+    }
+    for draw in rest {
+        yields.extend(products(
+            cell,
+            &charge,
+            [(&draw.values, own.nudge(draw))],
+            site,
+        ));
+    }
+    Some(yields)
+}
+
+/// Product at a site per substrate charged for each set of values.
+fn products<const L: usize>(
+    cell: &Cell,
+    charge: &Charge,
+    lanes: [(&Values, Nudge); L],
+    site: usize,
+) -> [f64; L] {
+    let mut pots = [charge.start(); L];
+    if charge.forms_first() {
+        pots = march(&charge.forming_in(cell, lanes), pots);
+    }
+    let networks = charge.reacting_in(cell, lanes);
+    let charged = networks[0].charged[0];
+    march(&networks, pots).map(|end| (end.product(site) / charged).clamp(0.0, 1.0))
+}
+
+/// How much of the variance of a cell's yield one uncertain quantity explains.
+#[derive(Clone, Debug, PartialEq)]
+pub struct Doubt {
+    /// The quantity: a parameter by its name, or a value of a reagent.
+    pub quantity: String,
+    /// Its mean.
+    pub value: f64,
+    /// Its standard uncertainty.
+    pub sigma: f64,
+    /// Unit of both.
+    pub unit: String,
+    /// Where it comes from.
+    pub source: String,
+    /// Squared correlation of its error with the yield over joint draws, 0–1.
+    pub share: f64,
+    /// Whether more of the quantity brings more of the product.
+    pub raises_yield: bool,
+}
+
+/// What the variance of the yields in draws rests on, greatest share first; what the draws do not tell from nothing is
+/// left out.
+///
+/// The squared correlation `r²` is the share that is linear in the quantity. Of quantities without any influence it is
+/// below `9/n` in 99.7 % of samples of n draws.
+pub(crate) fn doubts(cell: &Cell, draws: &[Draw], yields: &[f64]) -> Vec<Doubt> {
+    let noise = 9.0 / draws.len() as f64;
+    let doubt = |r: f64| Doubt {
+        quantity: String::new(),
+        value: 0.0,
+        sigma: 0.0,
+        unit: String::new(),
+        source: String::new(),
+        share: r * r,
+        raises_yield: r > 0.0,
+    };
+    let correlated = |deviate: &dyn Fn(&Draw) -> f64| {
+        let deviates: Vec<f64> = draws.iter().map(deviate).collect();
+        Some(correlation(&deviates, yields)).filter(|r| r * r > noise)
+    };
+    let parameters = PARAMETERS.iter().enumerate().filter_map(|(index, known)| {
+        let r = correlated(&|draw| draw.of_parameter(index))?;
+        Some(Doubt {
+            quantity: known.name.to_owned(),
+            value: known.mean,
+            sigma: known.sigma,
+            unit: known.unit.to_owned(),
+            source: known.source.to_owned(),
+            ..doubt(r)
+        })
+    });
+    let own = OwnErrors::of(cell);
+    let of_reagents = own.all().into_iter().filter_map(|known| {
+        let r = correlated(&|draw| draw.of_reagent(known.address))?;
+        Some(Doubt {
+            quantity: known.name,
+            value: known.value,
+            sigma: known.sigma,
+            unit: known.unit.to_owned(),
+            source: known.source,
+            ..doubt(r)
+        })
+    });
+    let mut doubts: Vec<Doubt> = parameters.chain(of_reagents).collect();
+    doubts.sort_by(|a, b| b.share.total_cmp(&a.share));
+    doubts
+}
+
+/// Pearson's correlation; 0 where one side does not vary.
+fn correlation(x: &[f64], y: &[f64]) -> f64 {
+    let mean = |of: &[f64]| of.iter().sum::<f64>() / of.len().max(1) as f64;
+    let (mean_x, mean_y) = (mean(x), mean(y));
+    let (mut xx, mut yy, mut xy) = (0.0, 0.0, 0.0);
+    for (x, y) in x.iter().zip(y) {
+        let (dx, dy) = (x - mean_x, y - mean_y);
+        xx += dx * dx;
+        yy += dy * dy;
+        xy += dx * dy;
+    }
+    if xx <= 0.0 || yy <= 0.0 {
+        return 0.0;
+    }
+    xy / (xx * yy).sqrt()
+}

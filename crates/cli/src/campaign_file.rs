@@ -4,7 +4,9 @@ use std::collections::BTreeMap;
 use std::fs;
 use std::path::{Path, PathBuf};
 
-use enolattice_grid::{CampaignSpec, MAX_FILE_BYTES, Reading, Sources, files_named, read};
+use enolattice_grid::{
+    CampaignSpec, FaultCode, InputError, MAX_FILE_BYTES, Place, Reading, Sources, files_named, read,
+};
 use enolattice_reagents::OwnTable;
 
 use crate::client::Client;
@@ -46,6 +48,32 @@ pub(crate) async fn sound(reading: Reading, client: &Client) -> Result<CampaignS
             Err(Fault::Input(reading.faults))
         }
     }
+}
+
+/// Files that the command line names, each with its name as it is shown, and the faults of those that
+/// cannot be read.
+pub(crate) fn named_files(
+    option: &str,
+    files: &[PathBuf],
+) -> (Vec<(String, Vec<u8>)>, Vec<InputError>) {
+    let (mut named, mut faults) = (Vec::with_capacity(files.len()), Vec::new());
+    for file in files {
+        let name = file.display().to_string();
+        match read_file(file) {
+            Ok(bytes) => named.push((name, bytes)),
+            Err(reason) => faults.push(InputError {
+                place: Place {
+                    field: option.to_owned(),
+                    ..Place::default()
+                },
+                value: name,
+                code: FaultCode::FileMissing.name(),
+                reason,
+                remedy: "give the path of a CSV file".to_owned(),
+            }),
+        }
+    }
+    (named, faults)
 }
 
 /// The laboratory's own tables that the command line names.

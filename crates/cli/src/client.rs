@@ -1,8 +1,8 @@
 //! An engine in this process or behind a server: the commands cannot tell them apart.
 
 use enolattice_engine::{
-    CellDescription, DryRun, Engine, EngineConfig, ExplainTarget, Job, RankPage, RankQuery,
-    ReagentRow, SiteReport, Submission,
+    Agreement, CellDescription, Comparison, DryRun, Engine, EngineConfig, ExplainTarget, Job,
+    RankPage, RankQuery, ReagentRow, SiteReport, Submission,
 };
 use enolattice_grid::{CampaignSpec, InputError};
 use enolattice_model::Explanation;
@@ -134,6 +134,31 @@ impl Client {
                 engine.explain(target).await?,
             )),
             Client::Remote(server) => Ok(server.explain(target).await?),
+        }
+    }
+
+    /// Two jobs compared.
+    pub(crate) async fn compare(
+        &self,
+        before: &str,
+        after: &str,
+        movers: u32,
+    ) -> Result<Comparison, Fault> {
+        match self {
+            Client::Embedded(engine) => Ok(engine.compare(before, after, movers).await?),
+            Client::Remote(server) => Ok(server.compare(before, after, movers).await?),
+        }
+    }
+
+    /// What was measured, held against the model.
+    pub(crate) async fn check_measured(
+        &self,
+        spec: CampaignSpec,
+        misses: u32,
+    ) -> Result<Agreement, Fault> {
+        match self {
+            Client::Embedded(engine) => Ok(engine.check_measured(spec, misses).await?),
+            Client::Remote(server) => Ok(server.check_measured(spec, misses).await?),
         }
     }
 

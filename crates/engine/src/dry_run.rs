@@ -151,7 +151,7 @@ impl Sample {
 }
 
 /// As many threads as the engine would screen with.
-fn pool(threads: usize) -> Result<rayon::ThreadPool, EngineError> {
+pub(crate) fn pool(threads: usize) -> Result<rayon::ThreadPool, EngineError> {
     let pool = rayon::ThreadPoolBuilder::new().num_threads(threads).build();
     pool.map_err(|error| EngineError::Store {
         reason: format!("no compute threads can be started: {error}"),

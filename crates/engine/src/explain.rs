@@ -104,7 +104,7 @@ impl Engine {
 }
 
 impl CellDescription {
-    fn of(number: Option<u64>, cell: &Cell) -> CellDescription {
+    pub(crate) fn of(number: Option<u64>, cell: &Cell) -> CellDescription {
         let conditions = &cell.conditions;
         CellDescription {
             cell: number,

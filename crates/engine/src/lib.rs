@@ -2,6 +2,9 @@
 //!
 //! Used embedded by the command line and behind the server, so that both give the same answer.
 
+mod agreement;
+mod comparison;
+mod differences;
 mod dry_run;
 mod engine;
 mod error;
@@ -16,10 +19,15 @@ mod open;
 mod query;
 mod rank;
 mod reagents;
+mod shared_cells;
 mod sites;
 mod submit;
 mod watch;
 
+pub use agreement::{
+    AcidityAgreement, Agreement, CheckedAcidity, CheckedRun, Miss, YieldAgreement,
+};
+pub use comparison::{AxisOverlap, ComparedCell, Comparison, Difference, Mover};
 pub use dry_run::{AxisSize, DryRun, NotCovered};
 pub use engine::Engine;
 pub use error::EngineError;

@@ -3,7 +3,9 @@
 use std::collections::VecDeque;
 use std::sync::{Arc, Mutex, PoisonError};
 
-use enolattice_grid::{Campaign, CampaignSpec, FaultCode, Grid, InputError, LibraryTable, Place};
+use enolattice_grid::{
+    Campaign, CampaignSpec, FaultCode, Grid, InputError, LibraryTable, Measured, Place,
+};
 use enolattice_model::Model;
 use enolattice_reagents::{Library, LibraryError, OwnTable};
 
@@ -65,6 +67,16 @@ impl Models {
         }
     }
 
+    /// What a specification says that was measured, with the model of its library. Takes time.
+    pub(crate) fn measured(
+        &self,
+        spec: &CampaignSpec,
+    ) -> Result<(Arc<Model>, Measured), EngineError> {
+        let own = self.of(spec).map_err(EngineError::Input)?;
+        let measured = Measured::of(spec, &own.model).map_err(EngineError::Input)?;
+        Ok((own.model.clone(), measured))
+    }
+
     /// Faults of a campaign whose library cannot be read: names may be unknown for that reason only.
     fn faults_beside_library(&self, spec: &CampaignSpec) -> Vec<InputError> {
         let mut faults = Campaign::faults(spec, self.engine.library());
@@ -72,7 +84,7 @@ impl Models {
         faults
     }
 
-    fn of(&self, spec: &CampaignSpec) -> Result<Arc<OwnModel>, Vec<InputError>> {
+    pub(crate) fn of(&self, spec: &CampaignSpec) -> Result<Arc<OwnModel>, Vec<InputError>> {
         if spec.library.is_empty() {
             return Ok(Arc::new(OwnModel {
                 model: self.engine.clone(),

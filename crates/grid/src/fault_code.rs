@@ -31,7 +31,7 @@ pub enum FaultCode {
     ReagentUnknown,
     /// An axis without values.
     AxisEmpty,
-    /// More cells than a campaign can have.
+    /// More cells than a campaign can have, or more structure than is read.
     CampaignTooLarge,
     /// A value that has its place but is not allowed yet.
     NotYetAllowed,

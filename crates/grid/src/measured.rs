@@ -7,10 +7,12 @@ mod cells;
 mod check;
 mod conditions;
 mod names;
+mod prepared;
 mod rows;
 
 pub(crate) use cells::by_cell;
 pub(crate) use check::checked;
+pub use prepared::{Measured, MeasuredAcidity, MeasuredCell};
 pub(crate) use rows::rows;
 
 use enolattice_model::Addition;

@@ -17,7 +17,7 @@ use crate::{
 };
 
 /// A campaign as far as it could be read, and what is wrong with its text and files.
-#[derive(Clone, Debug)]
+#[derive(Clone, Debug, Default)]
 pub struct Reading {
     /// The campaign, without the values at fault.
     pub spec: CampaignSpec,
@@ -41,6 +41,29 @@ pub fn read(sources: &Sources) -> Reading {
 }
 
 impl Reading {
+    /// Adds the rows of files of measured yields and of substrates with a measured pKa, each with its name.
+    pub fn add_measured(&mut self, yields: &[(String, Vec<u8>)], acidities: &[(String, Vec<u8>)]) {
+        let mut faults: Faults = std::mem::take(&mut self.faults).into_iter().collect();
+        let notes = &mut self.spec.notes;
+        for (file, bytes) in yields {
+            let notebook = files::Notebook {
+                faults: &mut faults,
+                notes,
+            };
+            let rows = measured::rows(file, bytes, notebook);
+            self.spec.measured.extend(rows);
+        }
+        for (file, bytes) in acidities {
+            let notebook = files::Notebook {
+                faults: &mut faults,
+                notes,
+            };
+            let rows = files::substrates(file, bytes, notebook);
+            self.spec.substrates.extend(rows);
+        }
+        self.faults = faults.in_order(&self.campaign_name);
+    }
+
     /// The campaign, if its text and files are sound.
     ///
     /// # Errors

@@ -7,7 +7,7 @@ use enolattice_grid::{
     AxisSpec, BlockId, Campaign, CampaignSpec, CellId, Columns, ConditionsSpec, Entry, Grid,
     SubstrateEntry,
 };
-use enolattice_model::Model;
+use enolattice_model::{FormationTable, Model};
 use enolattice_reagents::Library;
 use rayon::prelude::*;
 
@@ -164,6 +164,22 @@ fn a_block_is_its_cells_scored_one_by_one() {
         })
         .is_empty()
     );
+}
+
+#[test]
+fn a_full_table_of_pots_changes_no_score() {
+    let grid = grid();
+    let tables = [0, 3].map(FormationTable::of_at_most);
+    for number in (0..grid.cells()).step_by(97) {
+        let cell = grid.cell(CellId(number)).expect("a cell of the grid");
+        let alone = grid.model().score(&cell, 0.5, 0);
+        for table in &tables {
+            for _ in 0..2 {
+                let tabled = grid.model().score_with(&cell, 0.5, 0, table, number);
+                assert_eq!(format!("{tabled:?}"), format!("{alone:?}"), "{number}");
+            }
+        }
+    }
 }
 
 #[test]

@@ -5,7 +5,7 @@ use std::sync::Arc;
 use enolattice_engine::{Engine, ExplainTarget};
 use enolattice_wire::v1::chemistry_service_server::ChemistryService;
 use enolattice_wire::v1::{self, ErrorReason};
-use enolattice_wire::{MAX_SITES_MOLECULES, bad_field, explained};
+use enolattice_wire::{MAX_SITES_MOLECULES, bad_field, explained, measured};
 use tonic::{Request, Response, Status};
 
 use crate::paging;
@@ -47,6 +47,20 @@ impl Chemistry {
         Ok(v1::ListSitesResponse {
             molecules: reports.iter().map(Into::into).collect(),
         })
+    }
+
+    async fn check_measured(
+        &self,
+        request: v1::CheckMeasuredRequest,
+    ) -> Result<v1::CheckMeasuredResponse, Refusal> {
+        let within = |error| Refusal::within("campaign", error);
+        let (campaign, misses, faults) = measured(request);
+        if !faults.is_empty() {
+            let found = self.engine.faults_measured(campaign).await;
+            return Err(Refusal::together(faults, found.map_err(within)?));
+        }
+        let agreement = self.engine.check_measured(campaign, misses).await;
+        Ok((&agreement.map_err(within)?).into())
     }
 
     async fn reagents(
@@ -98,6 +112,17 @@ impl ChemistryService for Chemistry {
     ) -> Result<Response<v1::ListReagentsResponse>, Status> {
         let (metadata, _, request) = request.into_parts();
         let answer = self.reagents(request).await;
+        answer
+            .map(Response::new)
+            .map_err(|refusal| refusal.status(&metadata))
+    }
+
+    async fn check_measured(
+        &self,
+        request: Request<v1::CheckMeasuredRequest>,
+    ) -> Result<Response<v1::CheckMeasuredResponse>, Status> {
+        let (metadata, _, request) = request.into_parts();
+        let answer = self.check_measured(request).await;
         answer
             .map(Response::new)
             .map_err(|refusal| refusal.status(&metadata))

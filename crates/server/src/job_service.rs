@@ -4,7 +4,7 @@ use std::sync::Arc;
 
 use enolattice_engine::{Engine, RankQuery};
 use enolattice_wire::v1::job_service_server::JobService;
-use enolattice_wire::{submission, v1};
+use enolattice_wire::{movers, submission, v1};
 use tokio::sync::watch;
 use tokio_stream::wrappers::ReceiverStream;
 use tonic::{Request, Response, Status, Streaming};
@@ -136,6 +136,23 @@ impl JobService for Jobs {
         let answer = async {
             let page = self.engine.rank(RankQuery::try_from(request)?).await?;
             Ok(v1::RankCellsResponse::from(&page))
+        };
+        answer
+            .await
+            .map(Response::new)
+            .map_err(|refusal: Refusal| refusal.status(&metadata))
+    }
+
+    async fn compare_jobs(
+        &self,
+        request: Request<v1::CompareJobsRequest>,
+    ) -> Result<Response<v1::CompareJobsResponse>, Status> {
+        let (metadata, _, request) = request.into_parts();
+        let answer = async {
+            let movers = movers(&request)?;
+            let (before, after) = (&request.before_job_id, &request.after_job_id);
+            let compared = self.engine.compare(before, after, movers).await?;
+            Ok(v1::CompareJobsResponse::from(&compared))
         };
         answer
             .await

@@ -14,20 +14,23 @@
 //! ```
 
 use enolattice_engine::{
-    CellDescription, DryRun, ExplainTarget, Job, RankPage, RankQuery, ReagentRow, SiteReport,
-    Submission,
+    Agreement, CellDescription, Comparison, DryRun, ExplainTarget, Job, RankPage, RankQuery,
+    ReagentRow, SiteReport, Submission,
 };
 use enolattice_grid::{CampaignSpec, InputError};
 use enolattice_model::Explanation;
+use prost::Message;
 use tonic::metadata::MetadataValue;
 use tonic::transport::{Channel, Endpoint};
 use tonic::{Request, Status, Streaming};
 
+use crate::convert::measured_request;
+use crate::v1::ErrorReason;
 use crate::v1::chemistry_service_client::ChemistryServiceClient;
 use crate::v1::job_service_client::JobServiceClient;
 use crate::{
-    DETAIL_BYTES_KEY, MAX_ANSWER_BYTES, MAX_DETAIL_BYTES, MAX_PAGE_SIZE, MAX_SITES_MOLECULES,
-    RemoteError, v1,
+    DETAIL_BYTES_KEY, MAX_ANSWER_BYTES, MAX_DETAIL_BYTES, MAX_MESSAGE_BYTES, MAX_PAGE_SIZE,
+    MAX_SITES_MOLECULES, RemoteError, bad_field, v1,
 };
 
 mod places;
@@ -226,6 +229,61 @@ impl Client {
             .await;
         let answer = answer.map_err(|status| match self.error(&status) {
             RemoteError::Input(faults) => RemoteError::Input(places::within("given_cell", faults)),
+            other => other,
+        })?;
+        Ok(answer.into_inner().try_into()?)
+    }
+
+    /// Two jobs compared; see `Engine::compare`.
+    ///
+    /// # Errors
+    /// As the embedded engine.
+    pub async fn compare(
+        &self,
+        before: &str,
+        after: &str,
+        movers: u32,
+    ) -> Result<Comparison, RemoteError> {
+        let request = v1::CompareJobsRequest {
+            before_job_id: before.to_owned(),
+            after_job_id: after.to_owned(),
+            movers: Some(movers.min(i32::MAX as u32) as i32),
+        };
+        let answer = self.jobs.clone().compare_jobs(request).await;
+        Ok(answer
+            .map_err(|status| self.error(&status))?
+            .into_inner()
+            .try_into()?)
+    }
+
+    /// What was measured, held against the model; see `Engine::check_measured`.
+    ///
+    /// # Errors
+    /// As the embedded engine, and where the specification is more than one message holds.
+    pub async fn check_measured(
+        &self,
+        spec: CampaignSpec,
+        misses: u32,
+    ) -> Result<Agreement, RemoteError> {
+        let request = measured_request(&spec, misses).map_err(RemoteError::Input)?;
+        if request.encoded_len() > MAX_MESSAGE_BYTES {
+            return Err(RemoteError::Input(vec![bad_field(
+                ErrorReason::CampaignTooLarge,
+                "campaign",
+                "",
+                format!(
+                    "what was measured and its campaign take more than {MAX_MESSAGE_BYTES} bytes"
+                ),
+                "ask in several parts, or with a campaign of the substrates that were run",
+            )]));
+        }
+        let answer = self
+            .chemistry
+            .clone()
+            .check_measured(with_details(request))
+            .await;
+        let answer = answer.map_err(|status| match self.error(&status) {
+            RemoteError::Input(faults) => RemoteError::Input(places::relocate(faults, &spec)),
             other => other,
         })?;
         Ok(answer.into_inner().try_into()?)

@@ -1,8 +1,10 @@
 //! Conversions between the messages and the types of the engine, by subject.
 
 mod acidity;
+mod agreement;
 mod campaign;
 mod cell;
+mod comparison;
 mod conditions;
 mod description;
 mod dry_run;
@@ -16,7 +18,10 @@ mod numbers;
 mod ranking;
 mod stock;
 
+pub use agreement::measured;
+pub(crate) use agreement::request as measured_request;
 pub use campaign::submission;
+pub use comparison::movers;
 pub use description::explained;
 pub use ranking::page_size;
 

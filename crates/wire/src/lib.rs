@@ -24,7 +24,7 @@ pub const FILE_DESCRIPTOR_SET: &[u8] =
 pub const ERROR_DOMAIN: &str = "enolattice.v1";
 
 pub use client::{Client, JobWatch};
-pub use convert::{ConversionError, explained, page_size, submission};
+pub use convert::{ConversionError, explained, measured, movers, page_size, submission};
 pub use faults::{INPUT_FAULTS_TYPE_URL, bad_field};
 pub use limits::{
     DEFAULT_DETAIL_BYTES, DEFAULT_PAGE_SIZE, DETAIL_BYTES_KEY, MAX_ANSWER_BYTES, MAX_DETAIL_BYTES,

@@ -1,6 +1,8 @@
 //! The commands, one a file; their doc comments are their help.
 
 mod cancel;
+mod check_measured;
+mod compare;
 mod explain;
 mod following;
 mod jobs;
@@ -42,6 +44,8 @@ enum Command {
     Cancel(cancel::Cancel),
     Rank(rank::Rank),
     Explain(Box<explain::Explain>),
+    Compare(compare::Compare),
+    CheckMeasured(check_measured::CheckMeasured),
     Sites(sites::Sites),
     Reagents(reagents::Reagents),
 }
@@ -75,6 +79,8 @@ pub(crate) async fn run(program: Program) -> Result<(), Fault> {
         Command::Cancel(command) => command.run().await,
         Command::Rank(command) => command.run().await,
         Command::Explain(command) => command.run().await,
+        Command::Compare(command) => command.run().await,
+        Command::CheckMeasured(command) => command.run().await,
         Command::Sites(command) => command.run().await,
         Command::Reagents(command) => command.run().await,
     }

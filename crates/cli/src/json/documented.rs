@@ -2,7 +2,7 @@
 
 use enolattice_engine::{CellDescription, DryRun, Job, JobState, RankedCell, ReagentRow};
 use enolattice_model::{
-    Advice, Category, Caution, Channel, CoursePoint, ExplainedProduct, ExplainedRate,
+    Advice, Category, Caution, Channel, CoursePoint, Doubt, ExplainedProduct, ExplainedRate,
     ExplainedSite, Explanation, Neighbour, Origin, Severity, SiteReasons, Term,
 };
 use serde::Serialize;
@@ -134,6 +134,15 @@ fn explanation() -> Explanation {
             log10_k: 0.0,
             sigma: 0.7,
             source: String::new(),
+        }],
+        doubts: vec![Doubt {
+            quantity: String::new(),
+            value: 0.0,
+            sigma: 0.0,
+            unit: String::new(),
+            source: String::new(),
+            share: 0.0,
+            raises_yield: false,
         }],
         losses: vec![(Channel::SlowAttack, 0.5)],
         products: vec![ExplainedProduct {

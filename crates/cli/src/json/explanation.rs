@@ -2,7 +2,7 @@
 
 use enolattice_engine::CellDescription;
 use enolattice_model::{
-    Advice, Caution, Channel, CoursePoint, ExplainedProduct, ExplainedRate, Explanation,
+    Advice, Caution, Channel, CoursePoint, Doubt, ExplainedProduct, ExplainedRate, Explanation,
 };
 use serde::Serialize;
 
@@ -29,6 +29,7 @@ pub(crate) struct ExplanationDocument {
     enolate_fraction: Option<f64>,
     sites: Vec<SiteRecord>,
     rates: Vec<RateRecord>,
+    doubts: Vec<DoubtRecord>,
     losses: Vec<LossRecord>,
     products: Vec<ProductRecord>,
     course: Vec<CourseRecord>,
@@ -41,7 +42,7 @@ pub(crate) struct ExplanationDocument {
 }
 
 #[derive(Clone, Debug, Serialize)]
-struct CellRecord {
+pub(super) struct CellRecord {
     cell: Option<u64>,
     substrate: String,
     substrate_smiles: String,
@@ -70,6 +71,17 @@ struct RateRecord {
     log10_k: f64,
     sigma: f64,
     source: String,
+}
+
+#[derive(Clone, Debug, Serialize)]
+struct DoubtRecord {
+    quantity: String,
+    value: f64,
+    sigma: f64,
+    unit: String,
+    source: String,
+    share: f64,
+    raises_yield: bool,
 }
 
 #[derive(Clone, Debug, Serialize)]
@@ -132,6 +144,7 @@ impl ExplanationDocument {
             enolate_fraction: told.enolate_fraction,
             sites: told.sites.into_iter().map(SiteRecord::from).collect(),
             rates: told.rates.into_iter().map(RateRecord::from).collect(),
+            doubts: told.doubts.into_iter().map(DoubtRecord::from).collect(),
             losses: told.losses.into_iter().map(LossRecord::from).collect(),
             products: told.products.into_iter().map(ProductRecord::from).collect(),
             course: told.course.into_iter().map(CourseRecord::from).collect(),
@@ -170,6 +183,20 @@ impl From<CellDescription> for CellRecord {
                 .measured
                 .map(|known| known.note)
                 .filter(|note| !note.is_empty()),
+        }
+    }
+}
+
+impl From<Doubt> for DoubtRecord {
+    fn from(doubt: Doubt) -> DoubtRecord {
+        DoubtRecord {
+            quantity: doubt.quantity,
+            value: doubt.value,
+            sigma: doubt.sigma,
+            unit: doubt.unit,
+            source: doubt.source,
+            share: doubt.share,
+            raises_yield: doubt.raises_yield,
         }
     }
 }

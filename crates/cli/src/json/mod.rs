@@ -1,7 +1,9 @@
 //! What `--json` prints. The fields are documented in `docs/commands.md` and stable:
 //! fields may be added, none changes its meaning.
 
+mod agreement;
 mod cell;
+mod comparison;
 mod dry_run;
 mod explanation;
 mod job;
@@ -9,7 +11,9 @@ mod reagent;
 mod screened;
 mod site;
 
+pub(crate) use agreement::AgreementDocument;
 pub(crate) use cell::CellLine;
+pub(crate) use comparison::ComparisonDocument;
 pub(crate) use dry_run::DryRunDocument;
 pub(crate) use explanation::ExplanationDocument;
 pub(crate) use job::{JobRecord, state_name};

@@ -20,6 +20,7 @@ pub(crate) fn explanation_page(cell: &CellDescription, told: &Explanation) -> St
         ("Why these pKa", why(told)),
         ("Rates", rates(told)),
         ("Losses (of the substrate charged)", losses(told)),
+        ("What the uncertainty rests on", doubts(told)),
         ("Masses to look for", masses(told)),
         (
             "Time course (reference, parameters at their means)",
@@ -234,6 +235,37 @@ fn losses(told: &Explanation) -> String {
     let columns = [("channel", Side::Left), ("fraction", Side::Right)];
     if told.losses.is_empty() {
         "  none known".to_owned()
+    } else {
+        indented(&table(&columns, rows))
+    }
+}
+
+/// The quantities whose errors matter most; `--json` has all.
+fn doubts(told: &Explanation) -> String {
+    const SHOWN: usize = 8;
+    let columns = [
+        ("quantity", Side::Left),
+        ("value", Side::Right),
+        ("σ", Side::Right),
+        ("share of variance", Side::Right),
+        ("more of it", Side::Left),
+        ("source", Side::Left),
+    ];
+    let rows = told.doubts.iter().take(SHOWN).map(|doubt| {
+        vec![
+            doubt.quantity.clone(),
+            fixed(Some(doubt.value), 2),
+            fixed(Some(doubt.sigma), 2),
+            percent(Some(doubt.share)),
+            match doubt.raises_yield {
+                true => "raises the yield".to_owned(),
+                false => "lowers the yield".to_owned(),
+            },
+            doubt.source.clone(),
+        ]
+    });
+    if told.doubts.is_empty() {
+        "  no single quantity decides".to_owned()
     } else {
         indented(&table(&columns, rows))
     }

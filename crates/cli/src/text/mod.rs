@@ -1,6 +1,8 @@
 //! What a person reads: tables and pages of text.
 
+mod agreement;
 mod cells;
+mod comparison;
 mod dry_run;
 mod explanation;
 mod jobs;
@@ -9,7 +11,9 @@ mod reagents;
 mod sites;
 mod table;
 
+pub(crate) use agreement::agreement_page;
 pub(crate) use cells::cell_table;
+pub(crate) use comparison::comparison_page;
 pub(crate) use dry_run::dry_run_page;
 pub(crate) use explanation::explanation_page;
 pub(crate) use jobs::job_table;

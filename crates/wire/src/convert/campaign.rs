@@ -40,12 +40,8 @@ pub fn submission(request: v1::SubmitJobRequest) -> (Submission, Vec<InputError>
             "use a UUID",
         ));
     }
-    let mut campaign_faults = Vec::new();
-    let campaign = campaign(request.campaign.unwrap_or_default(), &mut campaign_faults);
-    for mut fault in campaign_faults {
-        fault.place.field = format!("campaign.{}", fault.place.field);
-        faults.push(fault);
-    }
+    let (campaign, of_campaign) = named_campaign(request.campaign);
+    faults.extend(of_campaign);
     let submission = Submission {
         campaign,
         request_id: request.request_id,
@@ -54,7 +50,17 @@ pub fn submission(request: v1::SubmitJobRequest) -> (Submission, Vec<InputError>
     (submission, faults)
 }
 
-fn campaign_message(spec: &CampaignSpec) -> Result<v1::Campaign, Vec<InputError>> {
+/// The campaign of a request's field `campaign`, and the faults of that message.
+pub(crate) fn named_campaign(message: Option<v1::Campaign>) -> (CampaignSpec, Vec<InputError>) {
+    let mut faults = Vec::new();
+    let campaign = campaign(message.unwrap_or_default(), &mut faults);
+    for fault in &mut faults {
+        fault.place.field = format!("campaign.{}", fault.place.field);
+    }
+    (campaign, faults)
+}
+
+pub(crate) fn campaign_message(spec: &CampaignSpec) -> Result<v1::Campaign, Vec<InputError>> {
     let mut faults = Vec::new();
     let conditions = conditions_message(&spec.conditions, &mut faults);
     let mut yields = Vec::with_capacity(spec.measured.len());

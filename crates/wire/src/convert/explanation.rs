@@ -1,7 +1,7 @@
 //! Explanations.
 
 use enolattice_model::{
-    Advice, Category, Caution, Channel, CoursePoint, ExplainedProduct, ExplainedRate,
+    Advice, Category, Caution, Channel, CoursePoint, Doubt, ExplainedProduct, ExplainedRate,
     ExplainedSite, Explanation, Severity,
 };
 
@@ -31,6 +31,7 @@ impl From<&Explanation> for v1::Explanation {
             enolate_fraction: e.enolate_fraction,
             sites: e.sites.iter().map(Into::into).collect(),
             rates: e.rates.iter().map(Into::into).collect(),
+            doubts: e.doubts.iter().map(Into::into).collect(),
             losses: e.losses.iter().map(loss).collect(),
             products: e.products.iter().map(Into::into).collect(),
             course: e.course.iter().map(Into::into).collect(),
@@ -70,6 +71,7 @@ impl TryFrom<v1::Explanation> for Explanation {
                 .map(TryInto::try_into)
                 .collect::<Result<_, _>>()?,
             rates: e.rates.into_iter().map(Into::into).collect(),
+            doubts: e.doubts.into_iter().map(Into::into).collect(),
             losses: e.losses.iter().map(loss_from).collect::<Result<_, _>>()?,
             products: e
                 .products
@@ -87,6 +89,34 @@ impl TryFrom<v1::Explanation> for Explanation {
             advice: e.advice.into_iter().map(Into::into).collect(),
             model: e.model,
         })
+    }
+}
+
+impl From<&Doubt> for v1::Doubt {
+    fn from(doubt: &Doubt) -> Self {
+        v1::Doubt {
+            quantity: doubt.quantity.clone(),
+            value: doubt.value,
+            sigma: doubt.sigma,
+            unit: doubt.unit.clone(),
+            source: doubt.source.clone(),
+            share: doubt.share,
+            raises_yield: doubt.raises_yield,
+        }
+    }
+}
+
+impl From<v1::Doubt> for Doubt {
+    fn from(doubt: v1::Doubt) -> Self {
+        Doubt {
+            quantity: doubt.quantity,
+            value: doubt.value,
+            sigma: doubt.sigma,
+            unit: doubt.unit,
+            source: doubt.source,
+            share: doubt.share,
+            raises_yield: doubt.raises_yield,
+        }
     }
 }
 
@@ -355,6 +385,15 @@ mod tests {
                 log10_k: -1.5,
                 sigma: 0.6,
                 source: "a line".into(),
+            }],
+            doubts: vec![Doubt {
+                quantity: "pKa of an ester".into(),
+                value: 29.5,
+                sigma: 0.41,
+                unit: "pK".into(),
+                source: "another table".into(),
+                share: 0.37,
+                raises_yield: true,
             }],
             losses: vec![(Channel::OverAlkylation, 0.11), (Channel::SlowAttack, 0.08)],
             products: vec![

@@ -2,6 +2,7 @@
 //!
 //! What needs Python is in `python/`.
 
+mod agreement;
 mod campaigns;
 mod crash;
 mod directions;

@@ -1,9 +1,10 @@
 //! What two jobs say of the cells that they share.
 
+use std::collections::HashMap;
 use std::sync::Arc;
 
 use enolattice_grid::{CellId, Grid, Overlap};
-use enolattice_model::{Channel, Explanation};
+use enolattice_model::{Channel, Explanation, MeasuredPka};
 use enolattice_store::{JobRecord, Store};
 use rayon::prelude::*;
 
@@ -281,9 +282,26 @@ fn remarks(before: &Side, after: &Side) -> Vec<String> {
             targets[0], targets[1]
         ));
     }
-    let own = [before, after].map(|side| &side.grid.campaign().own_pka);
-    if own[0] != own[1] {
-        remarks.push("The laboratory's own pKa of the substrates differ.".to_owned());
+    let own = [before, after].map(own_pka);
+    let differing = own[0].iter().filter(|(canonical, pka)| {
+        let other = own[1].get(*canonical);
+        other.is_some_and(|other| other != *pka)
+    });
+    match differing.count() {
+        0 => {}
+        count => remarks.push(format!(
+            "The laboratory's own pKa differ for {count} of the substrates that both jobs have."
+        )),
     }
     remarks
+}
+
+/// The laboratory's own pKa of each substrate, by canonical SMILES.
+fn own_pka(side: &Side) -> HashMap<&str, Option<MeasuredPka>> {
+    let campaign = side.grid.campaign();
+    let structures = campaign
+        .substrates
+        .iter()
+        .map(|known| known.molecule.canonical());
+    structures.zip(campaign.own_pka.iter().copied()).collect()
 }

@@ -6,7 +6,7 @@
 //! `cargo bench -p enolattice-grid --bench reading`, with an argument only the cases whose names hold
 //! it. Each case is read with all threads as a campaign is when it is submitted: the files, every
 //! structure, the tables of the model, the grid and its fingerprint. Absolute figures depend on the
-//! machine and on what else it does.
+//! machine and on what else it does: where it is busy, compare the processor time of the program.
 #![allow(clippy::print_stdout, reason = "a benchmark prints its answer")]
 
 use std::collections::BTreeMap;

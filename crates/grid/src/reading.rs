@@ -10,7 +10,7 @@ use crate::faults::Faults;
 use crate::keys::{keys_of, quoted};
 use crate::page::items;
 use crate::reader::{Inline, Reader};
-use crate::values::check_count;
+use crate::values::{MOST_VALUES, check_count};
 use crate::{
     AxisSpec, CampaignSpec, ConditionsSpec, Entry, FaultCode, InputError, MeasuredEntry, Place,
     Sources, SubstrateEntry, TargetSpec, entries, files, measured, resolve,
@@ -365,7 +365,13 @@ fn conditions(reader: &mut Reader<'_>, table: &DeTable<'_>) -> ConditionsSpec {
         let listed = items(quantity.key, value);
         let place = reader.place(value, quantity.key);
         let written = reader.page.line_at(value.span().start);
-        if !check_count(listed.len(), place, written, &mut reader.faults) {
+        if !check_count(
+            listed.len(),
+            MOST_VALUES,
+            place,
+            written,
+            &mut reader.faults,
+        ) {
             continue;
         }
         *values = listed

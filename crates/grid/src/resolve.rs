@@ -13,10 +13,14 @@ use crate::axes::side_by_side;
 use crate::fault::value_of_row;
 use crate::faults::Faults;
 use crate::keys::{nearest, quoted};
+use crate::values::check_count;
 use crate::{AxisSpec, CampaignSpec, Entry, FaultCode, Place, entries, stock};
 
 /// The word for a cell without an additive.
 pub(crate) const NO_ADDITIVE: &str = "none";
+
+/// Most entries of an axis of bases, solvents or additives; each is looked up, mixtures are mixed.
+const MOST_REAGENTS: usize = 2_000;
 
 /// Longest name for which a similar one is looked for, characters.
 const LONGEST_NAME: usize = 100;
@@ -54,7 +58,7 @@ fn bases<'l>(axis: &AxisSpec, library: &'l Library, faults: &mut Faults) -> Vec<
     let all = if axis.all { library.bases() } else { &[] };
     let mut found: Vec<&Base> = all.iter().collect();
     let structures = Structures::of(library.bases(), |base| &base.smiles);
-    for (entry, place) in placed(axis, "bases") {
+    for (entry, place) in placed(axis, "bases", faults) {
         stock::check(&entry.stock, &place, faults);
         let known = library.base(&entry.name);
         match known.or_else(|| structures.find(&entry.smiles)) {
@@ -69,7 +73,7 @@ fn solvents(axis: &AxisSpec, library: &Library, faults: &mut Faults) -> Vec<Solv
     let all = if axis.all { library.solvents() } else { &[] };
     let mut found: Vec<Solvent> = all.to_vec();
     let structures = Structures::of(library.solvents(), |solvent| &solvent.smiles);
-    for (entry, place) in placed(axis, "solvents") {
+    for (entry, place) in placed(axis, "solvents", faults) {
         stock::check(&entry.stock, &place, faults);
         let pure = library.solvent(&entry.name);
         if let Some(solvent) = pure.or_else(|| structures.find(&entry.smiles)) {
@@ -139,7 +143,7 @@ fn additives<'l>(
     let all = if axis.all { library.additives() } else { &[] };
     let mut found: Vec<_> = all.iter().map(|known| (Some(known), None)).collect();
     let structures = Structures::of(library.additives(), |additive| &additive.smiles);
-    for (entry, place) in placed(axis, "additives") {
+    for (entry, place) in placed(axis, "additives", faults) {
         stock::check(&entry.stock, &place, faults);
         let is_none = entry.name.eq_ignore_ascii_case(NO_ADDITIVE) && entry.smiles.is_empty();
         let known = library.additive(&entry.name);
@@ -220,9 +224,19 @@ fn electrophile(
     Some(NamedStructure { name, salt })
 }
 
-/// Entries with their places; where the caller gave none, the place in the list.
-fn placed<'s>(axis: &'s AxisSpec, name: &str) -> impl Iterator<Item = (&'s Entry, Place)> {
-    axis.entries
+/// Entries with their places; where the caller gave none, the place in the list. None of them where
+/// they are more than any library has, which is noted.
+fn placed<'s>(
+    axis: &'s AxisSpec,
+    name: &'static str,
+    faults: &mut Faults,
+) -> impl Iterator<Item = (&'s Entry, Place)> + use<'s> {
+    let count = axis.entries.len();
+    let entries = match check_count(count, MOST_REAGENTS, Place::of_field(name), "", faults) {
+        true => axis.entries.as_slice(),
+        false => &[],
+    };
+    entries
         .iter()
         .enumerate()
         .map(move |(i, entry)| (entry, in_list(&entry.place, name, i)))

@@ -10,14 +10,20 @@ use crate::{CampaignSpec, FaultCode, Place};
 
 /// Most values of a condition; a list of more is not looked at. No campaign needs so many, and each takes
 /// time and memory before the number of cells is known.
-const MOST_VALUES: usize = 10_000;
+pub(crate) const MOST_VALUES: usize = 10_000;
 
-/// Whether a condition has no more values than are looked at; notes it if it has.
-pub(crate) fn check_count(values: usize, place: Place, written: &str, faults: &mut Faults) -> bool {
-    let is_small = values <= MOST_VALUES;
+/// Whether an axis has no more values than are looked at; notes it if it has.
+pub(crate) fn check_count(
+    values: usize,
+    most: usize,
+    place: Place,
+    written: &str,
+    faults: &mut Faults,
+) -> bool {
+    let is_small = values <= most;
     if !is_small {
         let reason = format!("the axis has {values} values");
-        let remedy = format!("give at most {MOST_VALUES}");
+        let remedy = format!("give at most {most}");
         faults.note(FaultCode::ValueOutOfRange, place, written, reason, remedy);
     }
     is_small
@@ -33,7 +39,13 @@ pub(crate) fn numbers(
     std::array::from_fn(|axis| {
         let quantity = &CONDITIONS[axis];
         let given = axes[axis].len();
-        if !check_count(given, Place::of_field(quantity.key), "", faults) {
+        if !check_count(
+            given,
+            MOST_VALUES,
+            Place::of_field(quantity.key),
+            "",
+            faults,
+        ) {
             return Vec::new();
         }
         let mut values: Vec<f64> = Vec::with_capacity(given);

@@ -21,7 +21,7 @@ const ABSOLUTE: f64 = 5e-3;
 /// … and this share of the amount.
 const RELATIVE: f64 = 5e-2;
 /// Step below zero that is accepted, as a share of the substrate charged.
-const BELOW_ZERO: f64 = 1e-5;
+const BELOW_ZERO: f64 = 1e-4;
 /// First step of a program, as a share of its first stage.
 const FIRST_SHARE: f64 = 1e-2;
 /// Bounds of the change of the step from one to the next.
@@ -41,7 +41,7 @@ const REFUSALS: usize = 3;
 /// Newton iterations of a backward Euler step at most.
 const NEWTON: usize = 12;
 /// Halvings at most of a step that Newton's method does not solve.
-const HALVINGS: usize = 3;
+const HALVINGS: usize = 1;
 /// Change of an amount, as a share of the substrate charged, at which Newton's method ends:
 /// the change is still made, and what is left is of the order of its square.
 const TOLERANCE: f64 = 1e-4;

@@ -186,12 +186,12 @@ parameters! {
     MAYR_N_SOLVATION = 1.05, 0.15, "1", "mayr_nucleophiles in water and alcohols against DMSO";
     MAYR_S_N = 0.62, 0.05, "1", "mean of carbanions in mayr_nucleophiles";
     /// E2 of a primary bromide with a base whose acid has pKa 19.9 in the medium.
-    E2_ANCHOR = -4.7, 0.5, "log10 L/(mol s)", "Ingold and Hughes, elimination fractions with ethoxide (from memory)";
+    E2_ANCHOR = -5.45, 0.5, "log10 L/(mol s)", "Ingold and Hughes, elimination fractions with ethoxide (from memory)";
     E2_SECONDARY = 0.7, 0.3, "log10", "Ingold and Hughes, elimination fractions with ethoxide (from memory)";
     E2_TERTIARY = 1.3, 0.3, "log10", "Ingold and Hughes, elimination fractions with ethoxide (from memory)";
     E2_ACTIVATED = 2.3, 0.4, "log10", "2-phenylethyl bromide with ethoxide, 95 % elimination (Ingold and Hughes, from memory)";
     /// What a carbanion loses against an oxygen base of its strength.
-    E2_CARBANION = -1.0, 0.4, "log10", "sodium malonate and secondary butyl bromide in ethanol give 80 % of the substituted malonate (common practice)";
+    E2_CARBANION = -0.5, 0.4, "log10", "sodium malonate and secondary butyl bromide in ethanol give 80 % of the substituted malonate (common practice)";
     E2_LEAVING = 0.9, 0.1, "1", MEMORY;
     E2_BRONSTED = 0.25, 0.08, "1", MEMORY;
     /// log10 (kO/kC) of the classes of ambident anions.

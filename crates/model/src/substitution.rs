@@ -1,6 +1,7 @@
 //! Alkylating agents by themselves: what published series of relative rates and of elimination are held against.
 
 use crate::kinetics::{Kinetics, Nudge};
+use crate::network::Species;
 use crate::parameters::Values;
 use crate::{Cell, Electrophile, Model};
 use enolattice_molecule::ElectrophileKind;
@@ -25,7 +26,8 @@ impl Model {
         let temperature_c = cell.conditions.temperature_c;
         let kinetics = Kinetics::new(cell, temperature_c, &means, Nudge::default());
         let substitution = kinetics.attack(&kinetics.base_nucleophile())?;
-        let elimination = kinetics.elimination(kinetics.pka_base());
+        let lag = kinetics.lag_of_alkoxide(Species::Base);
+        let elimination = kinetics.elimination(kinetics.pka_base() + lag);
         (elimination > 0.0).then(|| (substitution, enolattice_units::math::log10(elimination)))
     }
 }

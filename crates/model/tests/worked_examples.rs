@@ -98,6 +98,8 @@ struct Malonate {
     bromide: f64,
     /// Ethoxide and all carbanions.
     base: f64,
+    /// Share of the water that has not been used up by saponification.
+    water_left: f64,
 }
 
 /// Constants of the first example at 60 °C.
@@ -108,8 +110,10 @@ struct Constants {
     second_butylation: f64,
     /// E2 and ether by ethoxide.
     by_ethoxide: f64,
-    /// Saponification by the hydroxide that goes with 1 mol/L of ethoxide, L/(mol s).
+    /// Saponification by the hydroxide that goes with 1 mol/L of ethoxide while all the water is there, L/(mol s).
     saponification: f64,
+    /// Water in the beginning, mol/L.
+    water_m: f64,
 }
 
 impl Malonate {
@@ -142,11 +146,16 @@ impl Malonate {
         let first = constants.butylation * malonate * self.bromide * dt_s;
         let second = constants.second_butylation * butyl * self.bromide * dt_s;
         let lost = constants.by_ethoxide * ethoxide * self.bromide * dt_s;
-        let saponified = constants.saponification * ethoxide * (self.malonate - malonate) * dt_s;
-        self.malonate -= first + saponified;
-        self.butyl += first - second;
+        // hydroxide takes the neutral esters
+        let by_hydroxide = constants.saponification * self.water_left * ethoxide * dt_s;
+        let of_malonate = by_hydroxide * (self.malonate - malonate);
+        let of_butyl = by_hydroxide * (self.butyl - butyl);
+        let saponified = of_malonate + of_butyl;
+        self.malonate -= first + of_malonate;
+        self.butyl += first - second - of_butyl;
         self.dibutyl += second;
         self.saponified += saponified;
+        self.water_left -= saponified / constants.water_m;
         self.bromide += dosed - first - second - lost;
         self.base -= first + second + lost + saponified;
     }
@@ -238,6 +247,7 @@ fn malonate_with_ethoxide_and_bromobutane() {
         second_butylation: 10_f64.powf(second),
         by_ethoxide: 10_f64.powf(elimination) + 10_f64.powf(ether),
         saponification: 10_f64.powf(saponification) * hydroxide_over_ethoxide,
+        water_m,
     };
     let mut pot = Malonate {
         malonate: 0.20,
@@ -246,6 +256,7 @@ fn malonate_with_ethoxide_and_bromobutane() {
         saponified: 0.0,
         bromide: 0.0,
         base: 0.22,
+        water_left: 1.0,
     };
     // 25 min between half of the base and the bromide, which comes over 10 min; 16 h in all
     const DT_S: f64 = 5.0;

@@ -190,12 +190,12 @@ fn check_graph(parsed: &graph::Molecule) -> Result<(), StructureError> {
 
 /// Charges and bonds of hypervalent nitrogen and its kin set right, hydrogens folded, Kekulé form.
 fn tidy(given: &str, mut molecule: graph::Molecule) -> Result<graph::Molecule, StructureError> {
-    let is_aromatic = molecule.atoms().any(|(_, atom)| atom.aromatic)
-        || molecule
-            .bonds()
-            .any(|(_, bond)| bond.order == BondOrder::Aromatic);
-    if is_aromatic {
-        // The written form is checked first: the Kekulé form hides aromatic atoms outside rings.
+    let has_hydrogens = molecule
+        .atoms()
+        .any(|(_, atom)| atom.element == graph::Element::H && atom.isotope.is_none());
+    if has_hydrogens || is_aromatic(&molecule) {
+        // The written form is checked first: the Kekulé form hides aromatic atoms outside rings, and
+        // atoms count differently without their hydrogens.
         smiles::rdkit_sanitized_model(&molecule).map_err(|_| impossible(given, &molecule))?;
     }
     let edits = match may_be_hypervalent(&molecule) {
@@ -210,10 +210,7 @@ fn tidy(given: &str, mut molecule: graph::Molecule) -> Result<graph::Molecule, S
             molecule.set_bond_order(BondIdx(bond as u32), order);
         }
     }
-    if molecule
-        .atoms()
-        .any(|(_, atom)| atom.element == graph::Element::H && atom.isotope.is_none())
-    {
+    if has_hydrogens {
         molecule = chem::remove_hydrogens(&molecule);
     }
     let orders = graph::kekulize(&molecule).map_err(|_| impossible(given, &molecule))?;
@@ -222,6 +219,13 @@ fn tidy(given: &str, mut molecule: graph::Molecule) -> Result<graph::Molecule, S
         molecule.set_atom_aromatic(AtomIdx(atom as u32), false);
     }
     Ok(molecule)
+}
+
+fn is_aromatic(molecule: &graph::Molecule) -> bool {
+    molecule.atoms().any(|(_, atom)| atom.aromatic)
+        || molecule
+            .bonds()
+            .any(|(_, bond)| bond.order == BondOrder::Aromatic)
 }
 
 /// Whether there is an atom whose charge and bonds may have to be set right: nitrogen of valence five,

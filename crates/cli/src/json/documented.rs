@@ -1,6 +1,11 @@
 //! The fields of `--json` are those that `docs/commands.md` lists, in its order.
 
-use enolattice_engine::{CellDescription, DryRun, Job, JobState, RankedCell, ReagentRow};
+use enolattice_engine::{
+    AcidityAgreement, Agreement, AxisOverlap, CellDescription, CheckedAcidity, CheckedRun,
+    ComparedCell, Comparison, Difference, DryRun, Job, JobState, Miss, Mover, RankedCell,
+    ReagentRow, YieldAgreement,
+};
+use enolattice_grid::{CampaignSpec, Decile, MeasuredEntry};
 use enolattice_model::{
     Advice, Category, Caution, Channel, CoursePoint, Doubt, ExplainedProduct, ExplainedRate,
     ExplainedSite, Explanation, Neighbour, Origin, Severity, SiteReasons, Term,
@@ -9,8 +14,8 @@ use serde::Serialize;
 use serde_json::Value;
 
 use super::{
-    CellLine, DryRunDocument, ExplanationDocument, JobRecord, MoleculeSites, ReagentRecord,
-    ScreenedDocument,
+    AgreementDocument, CellLine, ComparisonDocument, DryRunDocument, ExplanationDocument,
+    JobRecord, MoleculeSites, ReagentRecord, ScreenedDocument,
 };
 
 const DOCUMENT: &str = include_str!("../../docs/commands.md");
@@ -266,7 +271,7 @@ fn every_field_is_documented_and_every_documented_field_is_there() {
     }
     // Within a value the order of keys is lost: compare as sets.
     let site = &explained["sites"][0];
-    for (part, value) in [
+    compare_as_sets(&[
         ("sites", &explained["sites"]),
         ("terms", &site["terms"]),
         ("neighbours", &site["neighbours"]),
@@ -277,13 +282,145 @@ fn every_field_is_documented_and_every_documented_field_is_there() {
         ("cautions", &explained["cautions"]),
         ("advice", &explained["advice"]),
         ("cell", &explained["cell"]),
-    ] {
+    ]);
+}
+
+/// Holds objects within a document, whose keys have lost their order, against the tables of their names.
+fn compare_as_sets(parts: &[(&str, &Value)]) {
+    for (part, value) in parts {
         let mut documented = documented(&format!("#### `{part}`"));
         let mut found = fields(value);
         documented.sort();
         found.sort();
         assert_eq!(documented, found, "{part}");
     }
+}
+
+#[test]
+fn every_field_of_a_comparison_is_documented() {
+    let compared = |limits| ComparedCell {
+        cell: description(),
+        expected_yield: None,
+        p_hit: None,
+        feasibility: None,
+        selectivity: None,
+        largest_loss: None,
+        limits,
+    };
+    let document = ComparisonDocument::from(Comparison {
+        before: job(),
+        after: job(),
+        axes: vec![AxisOverlap {
+            axis: "substrates",
+            shared: 1,
+            left_only: 0,
+            right_only: 0,
+            changed: None,
+        }],
+        cells: 1,
+        cells_missing: 0,
+        cells_compared: 1,
+        covered_before_only: 0,
+        covered_after_only: 0,
+        spearman: None,
+        mean_change: None,
+        mean_absolute_change: None,
+        cells_moved: 0,
+        hits_before: 0,
+        hits_after: 0,
+        hits_entered: 0,
+        hits_left: 0,
+        movers: vec![Mover {
+            before: compared(Vec::new()),
+            after: compared(Vec::new()),
+            differences: vec![Difference {
+                what: String::new(),
+                before: String::new(),
+                after: String::new(),
+            }],
+        }],
+        remarks: Vec::new(),
+    });
+    // the jobs within have fields of the same names: their order cannot be told
+    let of_top = [documented("### `compare --json`"), fields(&document)];
+    let [listed, found] = of_top.map(|mut names| {
+        names.sort();
+        names
+    });
+    assert_eq!(listed, found);
+    let value = serde_json::to_value(&document).expect("serialises");
+    let mover = &value["movers"][0];
+    compare_as_sets(&[
+        ("axes", &value["axes"]),
+        ("before", &mover["before"]),
+        ("before", &mover["after"]),
+        ("differences", &mover["differences"]),
+    ]);
+}
+
+#[test]
+fn every_field_of_an_agreement_is_documented() {
+    let decile = Decile {
+        from: 0.0,
+        to: 0.1,
+        runs: 0,
+        p_hit: None,
+        hits: 0,
+    };
+    let run = CheckedRun {
+        cell: description(),
+        expected_yield: None,
+        p_hit: None,
+        not_covered: String::new(),
+    };
+    let agreement = Agreement {
+        model: String::new(),
+        yields: YieldAgreement {
+            yield_at_least: 0.5,
+            runs: vec![run],
+            covered: 0,
+            spearman: None,
+            mean_absolute_error: None,
+            mean_error: None,
+            hits_expected: 0.0,
+            hits_measured: 0,
+            deciles: vec![decile],
+            misses: vec![Miss {
+                run: 0,
+                explanation: explanation(),
+            }],
+        },
+        acidities: AcidityAgreement {
+            compounds: vec![CheckedAcidity {
+                name: String::new(),
+                smiles: String::new(),
+                measured: 20.0,
+                measured_sigma: 0.3,
+                site: None,
+            }],
+            spearman: None,
+            mean_absolute_error: None,
+            mean_absolute_error_of_estimates: None,
+            within_two_sigma: 0,
+        },
+    };
+    let spec = CampaignSpec {
+        measured: vec![MeasuredEntry::default()],
+        ..CampaignSpec::default()
+    };
+    let document = AgreementDocument::new(agreement, &spec);
+    assert_eq!(documented("### `check-measured --json`"), fields(&document));
+    let value = serde_json::to_value(&document).expect("serialises");
+    let (yields, acidities) = (&value["yields"], &value["acidities"]);
+    compare_as_sets(&[
+        ("yields", yields),
+        ("deciles", &yields["deciles"]),
+        ("runs", &yields["runs"]),
+        ("acidities", acidities),
+        ("compounds", &acidities["compounds"]),
+    ]);
+    let miss = yields["misses"][0].as_object().expect("an object");
+    assert!(miss.contains_key("run") && miss.contains_key("explanation"));
 }
 
 #[test]
@@ -300,6 +437,8 @@ fn the_document_has_the_closed_vocabularies() {
         "cancel JOB",
         "rank JOB",
         "explain JOB CELL",
+        "compare BEFORE AFTER",
+        "check-measured FILE…",
     ] {
         assert!(
             DOCUMENT.contains(&format!("\n## `{command}`\n")),

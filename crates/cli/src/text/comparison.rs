@@ -151,8 +151,8 @@ fn one(number: usize, mover: &Mover) -> String {
     let title = format!("{}{change}", words(&before.cell));
     let mut told = vec![
         wrapped(&format!("  {number}. "), &title),
-        side("before", before),
-        side("after ", after),
+        side("before", before, after),
+        side("after ", after, before),
     ];
     for difference in differences {
         let text = format!(
@@ -164,7 +164,8 @@ fn one(number: usize, mover: &Mover) -> String {
     told.join("\n")
 }
 
-fn side(when: &str, cell: &ComparedCell) -> String {
+/// A cell as one job has it, with the first limit that the other job does not name.
+fn side(when: &str, cell: &ComparedCell, other: &ComparedCell) -> String {
     let number = cell
         .cell
         .cell
@@ -172,10 +173,8 @@ fn side(when: &str, cell: &ComparedCell) -> String {
     let loss = cell
         .largest_loss
         .map_or("none known", |channel| channel.name());
-    let limit = cell
-        .limits
-        .iter()
-        .find(|text| !text.starts_with("largest loss"));
+    let mut limits = cell.limits.iter();
+    let limit = limits.find(|text| !other.limits.contains(text));
     let numbers = format!(
         "cell {number}: yield {}, p_hit {}, feasibility {}, selectivity {}; largest loss: {loss}",
         percent(cell.expected_yield),

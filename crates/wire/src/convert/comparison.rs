@@ -191,3 +191,117 @@ impl TryFrom<v1::ComparedCell> for ComparedCell {
         })
     }
 }
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+    use enolattice_engine::{CellDescription, Job, JobState};
+
+    fn job(id: &str) -> Job {
+        Job {
+            job: id.into(),
+            title: "Nitriles".into(),
+            state: JobState::DoneWithGaps,
+            cells: 1 << 33,
+            cells_done: 1 << 32,
+            best_yield: Some(0.9),
+            campaign_fingerprint: "ab".into(),
+            model_fingerprint: "cd".into(),
+            submitted_unix_ms: 1_700_000_000_123,
+            ended_unix_ms: Some(1_700_000_001_000),
+            failure: "a block failed".into(),
+            warnings: vec!["counts once".into()],
+        }
+    }
+
+    fn cell(number: u64) -> ComparedCell {
+        ComparedCell {
+            cell: CellDescription {
+                cell: Some(number),
+                substrate: "propionitrile".into(),
+                substrate_smiles: "CCC#N".into(),
+                base: "LDA".into(),
+                electrophile: "MeI".into(),
+                electrophile_smiles: "CI".into(),
+                solvent: "THF".into(),
+                additive: None,
+                temperature_c: -20.0,
+                formation_temperature_c: -78.0,
+                base_equiv: 1.1,
+                electrophile_equiv: 1.2,
+                additive_equiv: None,
+                concentration_m: 0.2,
+                time_h: 16.0,
+                dosing_min: 10.0,
+                addition: "substrate into base".into(),
+                measured: None,
+            },
+            expected_yield: Some(0.7),
+            p_hit: None,
+            feasibility: Some(1.0),
+            selectivity: Some(0.8),
+            largest_loss: Some(Channel::OverAlkylation),
+            limits: vec!["largest loss: over-alkylation".into()],
+        }
+    }
+
+    #[test]
+    fn comparisons_come_back() {
+        let axis = |axis, changed| AxisOverlap {
+            axis,
+            shared: 3,
+            left_only: 2,
+            right_only: 1,
+            changed,
+        };
+        let compared = Comparison {
+            before: job("a"),
+            after: job("b"),
+            axes: vec![
+                axis("substrates", None),
+                axis("time_h", Some(("2".into(), "16".into()))),
+            ],
+            cells: 1,
+            cells_missing: 2,
+            cells_compared: 3,
+            covered_before_only: 4,
+            covered_after_only: 5,
+            spearman: Some(0.9),
+            mean_change: Some(-0.1),
+            mean_absolute_change: Some(0.2),
+            cells_moved: 6,
+            hits_before: 7,
+            hits_after: 8,
+            hits_entered: 9,
+            hits_left: 10,
+            movers: vec![Mover {
+                before: cell(7),
+                after: ComparedCell {
+                    largest_loss: None,
+                    limits: Vec::new(),
+                    ..cell(8)
+                },
+                differences: vec![Difference {
+                    what: "time_h".into(),
+                    before: "2".into(),
+                    after: "16".into(),
+                }],
+            }],
+            remarks: vec!["two models".into()],
+        };
+        let message = v1::CompareJobsResponse::from(&compared);
+        assert_eq!(Comparison::try_from(message), Ok(compared));
+    }
+
+    #[test]
+    fn the_number_of_movers_has_a_default_and_is_not_negative() {
+        let asked = |movers| v1::CompareJobsRequest {
+            movers,
+            ..Default::default()
+        };
+        assert_eq!(movers(&asked(None)), Ok(10));
+        assert_eq!(movers(&asked(Some(0))), Ok(0));
+        let refused = movers(&asked(Some(-1))).expect_err("is refused");
+        assert_eq!(refused[0].code, "VALUE_OUT_OF_RANGE");
+    }
+}

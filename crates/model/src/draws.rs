@@ -9,13 +9,9 @@ use sha2::{Digest, Sha256};
 
 use crate::Cell;
 use crate::kinetics::Nudge;
-use crate::march::march;
 use crate::parameters::{P, PARAMETERS, Values};
-use crate::program::Charge;
 use crate::screen::{Coverage, coverage, solve_at};
 
-/// Draws that are marched side by side.
-const SIDE_BY_SIDE: usize = 4;
 /// Dimensions of the Sobol sequence at hand; further parameters use it again, scrambled otherwise.
 const SOBOL_DIMENSIONS: u32 = sobol_burley::NUM_DIMENSIONS;
 
@@ -180,38 +176,13 @@ pub(crate) fn yields(cell: &Cell, draws: &[Draw]) -> Option<Vec<f64>> {
     let site = solve_at(cell, &Values::means(), Nudge::default())
         .outcome
         .site;
-    let charge = Charge::of(cell);
-    let mut yields = Vec::with_capacity(draws.len());
-    let (groups, rest) = draws.as_chunks::<SIDE_BY_SIDE>();
-    for group in groups {
-        let lanes = group.each_ref().map(|draw| (&draw.values, own.nudge(draw)));
-        yields.extend(products(cell, &charge, lanes, site));
-    }
-    for draw in rest {
-        yields.extend(products(
-            cell,
-            &charge,
-            [(&draw.values, own.nudge(draw))],
-            site,
-        ));
-    }
-    Some(yields)
-}
-
-/// Product at a site per substrate charged for each set of values.
-fn products<const L: usize>(
-    cell: &Cell,
-    charge: &Charge,
-    lanes: [(&Values, Nudge); L],
-    site: usize,
-) -> [f64; L] {
-    let mut pots = [charge.start(); L];
-    if charge.forms_first() {
-        pots = march(&charge.forming_in(cell, lanes), pots);
-    }
-    let networks = charge.reacting_in(cell, lanes);
-    let charged = networks[0].charged[0];
-    march(&networks, pots).map(|end| (end.product(site) / charged).clamp(0.0, 1.0))
+    // one after the other: what moves the parameters can change the order of the steps
+    let product = |draw: &Draw| {
+        let solved = solve_at(cell, &draw.values, own.nudge(draw));
+        let charged = cell.conditions.concentration_m;
+        (solved.end.product(site) / charged).clamp(0.0, 1.0)
+    };
+    Some(draws.iter().map(product).collect())
 }
 
 /// How much of the variance of a cell's yield one uncertain quantity explains.

@@ -125,17 +125,8 @@ impl Charge {
         values: &Values,
         nudges: [Nudge; L],
     ) -> [Network; L] {
-        self.forming_in(cell, nudges.map(|nudge| (values, nudge)))
-    }
-
-    /// Networks of the deprotonation, one for each set of values and nudge.
-    pub(crate) fn forming_in<const L: usize>(
-        &self,
-        cell: &Cell,
-        lanes: [(&Values, Nudge); L],
-    ) -> [Network; L] {
         let at = cell.conditions.formation_temperature_c;
-        let mut networks = lanes.map(|(values, nudge)| Network {
+        let mut networks = nudges.map(|nudge| Network {
             reactions: Reactions::of(&Kinetics::new(cell, at, values, nudge)),
             stages: self.forming_stages(),
             // nothing of the electrophile may show here: the result serves all electrophiles
@@ -155,17 +146,8 @@ impl Charge {
         values: &Values,
         nudges: [Nudge; L],
     ) -> [Network; L] {
-        self.reacting_in(cell, nudges.map(|nudge| (values, nudge)))
-    }
-
-    /// Networks of the reaction, one for each set of values and nudge.
-    pub(crate) fn reacting_in<const L: usize>(
-        &self,
-        cell: &Cell,
-        lanes: [(&Values, Nudge); L],
-    ) -> [Network; L] {
         let at = cell.conditions.temperature_c;
-        let mut networks = lanes.map(|(values, nudge)| Network {
+        let mut networks = nudges.map(|nudge| Network {
             reactions: Reactions::of(&Kinetics::new(cell, at, values, nudge)),
             stages: self.reacting_stages(),
             charged: self.charged(),

@@ -33,7 +33,7 @@ pub(crate) struct Reactions<'a> {
 }
 
 impl<'a> Reactions<'a> {
-    /// All reactions. The list has the same steps whatever the parameters and the temperature.
+    /// All reactions. The list has the same steps whatever the nudge; parameters can change their order.
     pub(crate) fn of(kinetics: &'a Kinetics<'a>) -> Vec<Reaction> {
         let mut all = Reactions {
             kinetics,

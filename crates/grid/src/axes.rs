@@ -19,21 +19,30 @@ pub(crate) struct Read {
     pub(crate) own_pka: Option<MeasuredPka>,
 }
 
+/// Rows that are checked side by side before the faults found so far are counted.
+const ROWS_AT_ONCE: usize = 4_096;
+
 /// Reads the rows of a list with all threads, in their order; those at fault are left out.
 pub(crate) fn side_by_side<E: Sync, T: Send>(
     listed: &[E],
     faults: &mut Faults,
     read: impl Fn(&E, usize, &mut Faults) -> Option<T> + Sync,
 ) -> Vec<T> {
-    let one = |(i, row)| {
-        let mut found = Faults::default();
-        (read(row, i, &mut found), found)
-    };
-    let rows: Vec<(Option<T>, Faults)> = listed.par_iter().enumerate().map(one).collect();
-    let mut sound = Vec::with_capacity(rows.len());
-    for (row, found) in rows {
-        faults.append(found);
-        sound.extend(row);
+    let mut sound = Vec::with_capacity(listed.len());
+    for (run, rows) in listed.chunks(ROWS_AT_ONCE).enumerate() {
+        let first = run * ROWS_AT_ONCE;
+        let one = |(i, row)| {
+            let mut found = Faults::default();
+            (read(row, first + i, &mut found), found)
+        };
+        let rows: Vec<(Option<T>, Faults)> = rows.par_iter().enumerate().map(one).collect();
+        for (row, found) in rows {
+            faults.append(found);
+            sound.extend(row);
+        }
+        if faults.is_full() {
+            break;
+        }
     }
     sound
 }

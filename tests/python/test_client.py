@@ -251,7 +251,7 @@ def test_every_fault_of_a_campaign_is_told(jobs, stubs):
 def test_many_faults_do_not_burst_the_trailers(jobs, stubs):
     campaign = small_campaign(stubs)
     campaign.substrates.extend(
-        stubs.reagent.Substrate(name=f"broken {i}", smiles="C1CC" + "C" * i) for i in range(300)
+        stubs.reagent.Substrate(name=f"broken {i}", smiles="C1CC" + "=" * i) for i in range(300)
     )
     request = stubs.job.SubmitJobRequest(campaign=campaign, validate_only=True)
     _, info, bad = refusal(lambda: jobs.SubmitJob(request))
@@ -266,7 +266,7 @@ def test_many_faults_do_not_burst_the_trailers(jobs, stubs):
 def test_a_client_that_takes_large_trailers_gets_every_fault(server, stubs):
     campaign = small_campaign(stubs)
     campaign.substrates.extend(
-        stubs.reagent.Substrate(name=f"broken {i}", smiles="C1CC" + "C" * i) for i in range(300)
+        stubs.reagent.Substrate(name=f"broken {i}", smiles="C1CC" + "=" * i) for i in range(300)
     )
     request = stubs.job.SubmitJobRequest(campaign=campaign, validate_only=True)
     limits = ("grpc.max_metadata_size", "grpc.absolute_max_metadata_size")

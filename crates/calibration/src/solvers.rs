@@ -3,6 +3,7 @@
 use std::fmt::Write;
 use std::time::Instant;
 
+use enolattice_grid::spearman;
 use enolattice_model::{Cell, Model, Solutions};
 
 use crate::random_cells::RandomCells;
@@ -110,36 +111,6 @@ pub(crate) fn words(cell: &Cell) -> String {
     )
 }
 
-/// Spearman's rank correlation; ties share their mean rank.
-fn spearman(x: &[f64], y: &[f64]) -> f64 {
-    let (x, y) = (ranks(x), ranks(y));
-    let mean = (x.len() as f64 + 1.0) / 2.0;
-    let dot = |a: &[f64], b: &[f64]| {
-        a.iter()
-            .zip(b)
-            .map(|(a, b)| (a - mean) * (b - mean))
-            .sum::<f64>()
-    };
-    dot(&x, &y) / (dot(&x, &x) * dot(&y, &y)).sqrt()
-}
-
-fn ranks(values: &[f64]) -> Vec<f64> {
-    let mut order: Vec<usize> = (0..values.len()).collect();
-    order.sort_by(|&a, &b| values[a].total_cmp(&values[b]));
-    let mut ranks = vec![0.0; values.len()];
-    let mut start = 0;
-    while start < order.len() {
-        let mut end = start + 1;
-        while end < order.len() && values[order[end]] == values[order[start]] {
-            end += 1;
-        }
-        let shared = (start + 1 + end) as f64 / 2.0;
-        order[start..end].iter().for_each(|&i| ranks[i] = shared);
-        start = end;
-    }
-    ranks
-}
-
 /// Share of the cells for which something holds, in per cent.
 fn share<'a>(
     cells: impl Iterator<Item = &'a Comparison>,
@@ -165,9 +136,10 @@ pub fn page(model: &Model, count: usize) -> Result<String, String> {
     };
     let (fast, reference) = (each(|s| s.fast.product), each(|s| s.reference.product));
     let [rho_of_all, rho] = [1e-12, ALIKE].map(|unit| {
-        let rounded =
-            |yields: &[f64]| -> Vec<f64> { yields.iter().map(|y| (y / unit).round()).collect() };
-        spearman(&rounded(&fast), &rounded(&reference))
+        let rounded = |yields: f64| (yields / unit).round();
+        let pairs = fast.iter().zip(&reference);
+        let pairs: Vec<_> = pairs.map(|(x, y)| (rounded(*x), rounded(*y))).collect();
+        spearman(&pairs).unwrap_or(f64::NAN)
     });
     found.sort_by(|a, b| b.difference().total_cmp(&a.difference()));
     let is_close = |c: &Comparison| c.difference() <= CLOSE;
@@ -220,15 +192,4 @@ pub fn page(model: &Model, count: usize) -> Result<String, String> {
         writeln!(page, "\nThe reference gave up: {cell}").expect("a string grows");
     }
     Ok(page)
-}
-
-#[cfg(test)]
-mod tests {
-    use super::*;
-
-    #[test]
-    fn spearman_of_a_worked_example() {
-        // Spearman 1904's formula 1 − 6 Σd²/(n(n² − 1)) by hand: d = 0, 1, −1, 0 → 0.8
-        assert!((spearman(&[1.0, 2.0, 3.0, 4.0], &[1.0, 3.0, 2.0, 4.0]) - 0.8).abs() < 1e-12);
-    }
 }

@@ -268,3 +268,75 @@ fn correlation(x: &[f64], y: &[f64]) -> f64 {
     }
     xy / (xx * yy).sqrt()
 }
+
+#[cfg(test)]
+mod tests {
+    use crate::sample::{cell, model};
+    use crate::{Cell, Doubt};
+
+    #[test]
+    fn deviates_of_parameters_and_reagents_are_standard_normal_and_apart() {
+        let model = model();
+        let draws: Vec<_> = (1..=2048).map(|number| model.draw(5, number)).collect();
+        let last = model.parameters().len() - 1;
+        let of = |deviate: &dyn Fn(&super::Draw) -> f64| -> Vec<f64> {
+            draws.iter().map(deviate).collect()
+        };
+        let all = [
+            of(&|draw| draw.of_parameter(0)),
+            of(&|draw| draw.of_parameter(1)),
+            of(&|draw| draw.of_parameter(last)),
+            of(&|draw| draw.of_reagent(17)),
+            of(&|draw| draw.of_reagent(18)),
+        ];
+        let n = draws.len() as f64;
+        for (i, x) in all.iter().enumerate() {
+            let mean = x.iter().sum::<f64>() / n;
+            let variance = x.iter().map(|x| x * x).sum::<f64>() / n - mean * mean;
+            // four standard errors of independent samples: 4/√n of the mean, 4·√(2/n) of the variance
+            assert!(mean.abs() < 4.0 / n.sqrt(), "{i}: {mean}");
+            assert!(
+                (variance - 1.0).abs() < 4.0 * (2.0 / n).sqrt(),
+                "{i}: {variance}"
+            );
+            for y in &all[i + 1..] {
+                let r = super::correlation(x, y);
+                assert!(r.abs() < 4.0 / n.sqrt(), "{i}: {r}");
+            }
+        }
+    }
+
+    fn doubts(cell: &Cell) -> Vec<Doubt> {
+        let model = model();
+        let draws: Vec<_> = (1..=512).map(|number| model.draw(1, number)).collect();
+        let yields = model.yields(cell, &draws).expect("covered");
+        model.doubts(cell, &draws, &yields)
+    }
+
+    #[test]
+    fn a_slow_addition_hangs_on_the_reactivity_of_the_acceptor_and_more_of_it_helps() {
+        // a quantitative enolate and an acceptor that it reaches in hours: E decides, not acidity
+        let mut slow = cell(
+            &model(),
+            "CCOC(=O)CC(=O)OCC",
+            "NaH",
+            "COC(=O)C=Cc1ccccc1",
+            "DMF",
+        );
+        slow.conditions.time_h = 4.0;
+        let doubts = doubts(&slow);
+        let of_e = doubts
+            .iter()
+            .find(|doubt| doubt.quantity.starts_with("E of "));
+        let of_e = of_e.unwrap_or_else(|| panic!("E is not among {doubts:?}"));
+        assert!(of_e.raises_yield, "{of_e:?}");
+    }
+
+    #[test]
+    fn shares_of_variance_are_of_one_whole() {
+        // the squared correlations of independent quantities add up to 1 at most, but for what 512 draws let seem
+        let weak = cell(&model(), "CCOC(=O)CC(=O)OCC", "DBU", "CCBr", "MeCN");
+        let shares: f64 = doubts(&weak).iter().map(|doubt| doubt.share).sum();
+        assert!(shares > 0.1 && shares < 1.2, "{shares}");
+    }
+}

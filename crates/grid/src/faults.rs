@@ -97,7 +97,11 @@ impl Faults {
                 code: FaultCode::MoreFaults.name(),
                 reason: match further {
                     1 => "1 more fault is not listed".to_owned(),
-                    further => format!("{further} more faults are not listed"),
+                    // from there on not everything was looked at
+                    _ if further + MAX_FAULTS >= MOST_KEPT => {
+                        format!("at least {further} more faults are not listed")
+                    }
+                    _ => format!("{further} more faults are not listed"),
                 },
                 remedy: "mend those that are listed and ask again".to_owned(),
             });
@@ -178,7 +182,7 @@ mod tests {
         assert_eq!((last.code, last.value.as_str()), ("MORE_FAULTS", "1300"));
         assert_eq!(
             last.to_string(),
-            "1300 more faults are not listed; mend those that are listed and ask again"
+            "at least 1300 more faults are not listed; mend those that are listed and ask again"
         );
         let again = in_order(listed.clone().into_iter().chain(listed[..1].to_vec()));
         assert_eq!(again.last().map(|last| last.value.as_str()), Some("1301"));

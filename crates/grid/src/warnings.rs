@@ -76,6 +76,15 @@ impl Warnings {
                 self.add("substrates without acidic C–H", text);
             }
         }
+        for solvent in &campaign.solvents {
+            if solvent.record.biphasic {
+                let name = &solvent.record.name;
+                let text = format!(
+                    "solvents: `{name}` is taken to separate into two liquids; its cells are computed as if it were one"
+                );
+                self.add("solvents of two liquids", text);
+            }
+        }
         self.shared_names(
             "substrates",
             campaign.substrates.iter().map(|s| s.name.as_str()),

@@ -51,6 +51,17 @@ fn small() -> CampaignSpec {
     }
 }
 
+/// Dichloromethane and water separate, ethanol and water do not (common practice).
+#[test]
+fn mixtures_that_separate_are_said() {
+    let mut spec = small();
+    spec.solvents = named(&["DCM/water 1:1", "EtOH/water 1:1"]);
+    let campaign = Campaign::new(&spec, &model()).expect("a sound spec");
+    let said = |name: &str| campaign.warnings.iter().any(|text| text.contains(name));
+    assert!(said("`DCM/water 1:1`"), "{:?}", campaign.warnings);
+    assert!(!said("`EtOH/water 1:1`"), "{:?}", campaign.warnings);
+}
+
 fn faults(spec: &CampaignSpec) -> Vec<(String, &'static str)> {
     let refused: Vec<InputError> = Campaign::new(spec, &model()).expect_err("a spec at fault");
     refused

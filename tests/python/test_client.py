@@ -338,18 +338,73 @@ def test_unknown_things_have_their_reasons(jobs, chemistry, stubs, done):
     assert [violation.field for violation in bad.field_violations] == ["skip"]
 
 
+def test_a_plan_is_made_and_its_transfers_add_up(server, stubs, jobs):
+    """The example of docs/api.md, on a plate of 24 wells; every well gets what its doses say."""
+    plans = stubs.plan_service_grpc.PlanServiceStub(server.channel)
+    campaign = small_campaign(stubs)
+    campaign.conditions.Clear()
+    campaign.conditions.temperature_c.append(25.0)
+    submitted = jobs.SubmitJob(stubs.job.SubmitJobRequest(campaign=campaign))
+    request = stubs.job.WatchJobRequest(job_id=submitted.job_id)
+    assert [message.job for message in jobs.WatchJob(request)][-1].cells_done == 24
+    plan = plans.PlanPlates(
+        stubs.plan_service.PlanPlatesRequest(
+            job_id=submitted.job_id,
+            request={"plates": {"wells": 24}, "choice": {"draws": 16}, "deck": {"inert": True}},
+        )
+    )
+    assert plan.plates[0].well_count <= 24
+    get = stubs.plan_service.GetPlanRequest(plan_id=plan.plan_id)
+    assert plans.GetPlan(get) == plan
+    listed = plans.ListPlans(stubs.plan_service.ListPlansRequest(job_id=submitted.job_id))
+    assert [summary.plan_id for summary in listed.plans] == [plan.plan_id]
+
+    delivered = {}
+    request = stubs.plan_service.StreamTransfersRequest(plan_id=plan.plan_id)
+    for part in plans.StreamTransfers(request):
+        columns = (part.plate_indices, part.rows, part.columns, part.stock_indices, part.volumes_nl)
+        for plate, row, column, stock, volume_nl in zip(*columns, strict=True):
+            if part.plates[plate] == plan.plates[0].name:
+                well = f"{chr(64 + row)}{column}"
+                delivered[well, stock] = delivered.get((well, stock), 0.0) + volume_nl
+    stocks = []
+    for part in plans.StreamStocks(stubs.plan_service.StreamStocksRequest(plan_id=plan.plan_id)):
+        stocks.extend(part.stocks)
+    assert len(stocks) == plan.stock_count
+    on_plate = {i for i, stock in enumerate(stocks) if stock.role != stubs.plan.LIQUID_ROLE_DILUENT}
+    dosed = {}
+    for part in plans.StreamWells(stubs.plan_service.StreamWellsRequest(plan_id=plan.plan_id)):
+        for well in part.wells:
+            for dose in well.doses:
+                if dose.stock_index in on_plate and dose.volume_nl > 0:
+                    dosed[well.well, dose.stock_index] = dose.volume_nl
+    assert dosed == pytest.approx(delivered)
+
+    wrong = stubs.plan_service.PlanPlatesRequest(
+        job_id=submitted.job_id, request={"plates": {"wells": 95, "count": 0}}
+    )
+    code, info, bad = refusal(lambda: plans.PlanPlates(wrong))
+    assert (code, info.reason) == (grpc.StatusCode.INVALID_ARGUMENT, "INPUT_INVALID")
+    fields = {violation.field for violation in bad.field_violations}
+    assert fields == {"request.plates.wells", "request.plates.count"}
+    get = stubs.plan_service.GetPlanRequest(plan_id="nothing")
+    code, info, _ = refusal(lambda: plans.GetPlan(get))
+    assert (code, info.reason) == (grpc.StatusCode.NOT_FOUND, "PLAN_UNKNOWN")
+
+
+SERVICES = {"enolattice.v1.JobService", "enolattice.v1.ChemistryService", "enolattice.v1.PlanService"}
+
+
 def test_health(server):
     health = health_pb2_grpc.HealthStub(server.channel)
-    for service in ("", "enolattice.v1.JobService", "enolattice.v1.ChemistryService"):
+    for service in {""} | SERVICES:
         answer = health.Check(health_pb2.HealthCheckRequest(service=service))
         assert answer.status == health_pb2.HealthCheckResponse.SERVING
 
 
 def test_a_client_without_stubs_finds_its_way_by_reflection(server, done):
     database = ProtoReflectionDescriptorDatabase(server.channel)
-    assert {"enolattice.v1.JobService", "enolattice.v1.ChemistryService"} <= set(
-        database.get_services()
-    )
+    assert SERVICES <= set(database.get_services())
     pool = descriptor_pool.DescriptorPool(database)
     method = pool.FindServiceByName("enolattice.v1.JobService").FindMethodByName("GetJob")
     question = message_factory.GetMessageClass(method.input_type)

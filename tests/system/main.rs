@@ -9,6 +9,7 @@ mod directions;
 mod hostile;
 mod lifecycle;
 mod live;
+mod plans;
 mod portable;
 mod ranking;
 mod refusals;

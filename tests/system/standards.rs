@@ -9,7 +9,11 @@ use tonic_reflection::pb::{v1, v1alpha};
 
 use crate::live::Live;
 
-const SERVICES: [&str; 2] = ["enolattice.v1.ChemistryService", "enolattice.v1.JobService"];
+const SERVICES: [&str; 3] = [
+    "enolattice.v1.ChemistryService",
+    "enolattice.v1.JobService",
+    "enolattice.v1.PlanService",
+];
 
 async fn channel(live: &Live) -> Channel {
     let endpoint = Endpoint::from_shared(live.url.clone()).expect("an address");
@@ -20,7 +24,7 @@ async fn channel(live: &Live) -> Channel {
 async fn health_is_told_for_the_server_and_each_service() {
     let live = Live::start().await;
     let mut health = HealthClient::new(channel(&live).await);
-    for service in ["", SERVICES[0], SERVICES[1]] {
+    for service in std::iter::once("").chain(SERVICES) {
         let request = HealthCheckRequest {
             service: service.into(),
         };

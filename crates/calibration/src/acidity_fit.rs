@@ -7,6 +7,7 @@
 mod observations;
 mod page;
 mod solver;
+mod together;
 mod validation;
 
 use std::path::{Path, PathBuf};
@@ -48,6 +49,8 @@ pub enum FitError {
 pub struct Tables {
     /// `acidity_coefficients.tsv`.
     pub coefficients: String,
+    /// `acidity_curvature.tsv`.
+    pub curvature: String,
     /// `acidity_seen.tsv`.
     pub seen: String,
 }
@@ -90,12 +93,16 @@ pub fn run(places: &Places) -> Result<String, FitError> {
     let fit = Fit::new(&terms, &observations.rows)?;
     let validation = Validation::run(&terms, &observations.rows)?;
     let tables = tables(&terms, &observations, &fit);
-    let report = page::page(&terms, &fit, &observations, &validation);
+    let report = page::page(&terms, &fit, &observations, &validation)?;
     let errors = page::errors(&observations.rows, &validation);
     let held_out = page::held_out(&fit, &observations.rows, &validation);
     write(
         &places.model_data.join("acidity_coefficients.tsv"),
         &tables.coefficients,
+    )?;
+    write(
+        &places.model_data.join("acidity_curvature.tsv"),
+        &tables.curvature,
     )?;
     write(&places.model_data.join("acidity_seen.tsv"), &tables.seen)?;
     write(&places.model_data.join("acidity_errors.tsv"), &errors)?;
@@ -107,6 +114,7 @@ pub fn run(places: &Places) -> Result<String, FitError> {
 fn tables(terms: &[Term], observations: &Observations, fit: &Fit) -> Tables {
     Tables {
         coefficients: page::coefficients(terms, fit),
+        curvature: page::curvature(fit),
         seen: page::seen(fit, &observations.rows),
     }
 }
@@ -158,6 +166,7 @@ mod tests {
         };
         for (name, text) in [
             ("acidity_coefficients.tsv", &made.coefficients),
+            ("acidity_curvature.tsv", &made.curvature),
             ("acidity_seen.tsv", &made.seen),
         ] {
             let (kept, fresh) = (numbers(&stored(name)), numbers(text));

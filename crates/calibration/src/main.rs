@@ -37,12 +37,13 @@ enum Command {
     Practice,
     /// Holds published reactions against the model.
     Reactions,
-    /// Holds published selectivities, relative rates, nucleophilicities and reactions against the model and writes the page on it.
+    /// Holds published selectivities, relative rates, nucleophilicities and reactions against the model and writes the pages
+    /// on them and on what the model is good for.
     Rates,
     /// Holds the screen's p_hit and expected yield against joint draws and writes the page on it.
     Uncertainty {
         /// Number of cells.
-        #[arg(default_value_t = 150)]
+        #[arg(default_value_t = 300)]
         cells: usize,
         /// Number of draws.
         #[arg(default_value_t = 4096)]
@@ -81,9 +82,17 @@ fn run(arguments: &Arguments) -> Result<(), String> {
         Command::Figures => written("figures.md", figures::page(&model()?)?),
         Command::Medium => written("medium.md", medium::page(&model()?)?),
         Command::Networks => printed(&format!("{}\n", networks::to_json(&model()?)?)),
-        Command::Practice => printed(&practice::section(&model()?)?),
+        Command::Practice => {
+            let model = model()?;
+            let (first, second) = (practice::judge(&model)?, practice::judge_second(&model)?);
+            printed(&practice::section(&first, &second))
+        }
         Command::Reactions => printed(&reactions::page(&model()?)?),
-        Command::Rates => written("rates.md", rates::page(&model()?)?),
+        Command::Rates => {
+            let pages = rates::pages(&model()?)?;
+            written("quality.md", pages.quality)?;
+            written("rates.md", pages.rates)
+        }
         Command::Uncertainty { cells, draws } => written(
             "uncertainty.md",
             uncertainty::page(&model()?, cells, draws)?,

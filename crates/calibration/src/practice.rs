@@ -6,6 +6,7 @@ use enolattice_model::{Cell, Conditions, Explanation, Model};
 use serde::Deserialize;
 
 use crate::cell::cell;
+use crate::quality::Groups;
 use crate::table::rows;
 
 const PRACTICE: &str = include_str!("../data/practice.tsv");
@@ -89,6 +90,8 @@ pub struct Judged {
     pub was_met: Option<bool>,
     /// What the model gives as reason: the largest losses, or why it does not cover the reaction.
     pub reason: String,
+    /// Where it is counted.
+    pub groups: Groups,
 }
 
 /// All reactions of the first list.
@@ -113,8 +116,9 @@ fn judged_all(model: &Model, table: &str) -> Result<Vec<Judged>, String> {
 }
 
 fn judged(model: &Model, row: &Row) -> Result<Judged, String> {
+    let cell = row.cell(model)?;
     let explanation = model
-        .explain(&row.cell(model)?, 0.5)
+        .explain(&cell, 0.5)
         .map_err(|error| format!("{}: {error}", row.name()))?;
     Ok(Judged {
         name: row.name(),
@@ -126,6 +130,7 @@ fn judged(model: &Model, row: &Row) -> Result<Judged, String> {
         },
         was_met: row.first_look.map(|found| row.is_met(found)).transpose()?,
         reason: reason(&explanation),
+        groups: Groups::of(&cell),
     })
 }
 
@@ -140,12 +145,8 @@ fn reason(explanation: &Explanation) -> String {
     losses.join(", ")
 }
 
-/// The comparison as sections of a page: how many are met, and those that are not.
-///
-/// # Errors
-/// As [`judge`].
-pub fn section(model: &Model) -> Result<String, String> {
-    let (first, second) = (judge(model)?, judge_second(model)?);
+/// The comparison as sections of a page: how many of the first and of the second list are met, and those that are not.
+pub fn section(first: &[Judged], second: &[Judged]) -> String {
     let count = |all: &[Judged]| all.iter().filter(|one| one.is_met).count();
     let mut text = format!(
         "\n## Common reactions\n\n\
@@ -153,10 +154,10 @@ pub fn section(model: &Model) -> Result<String, String> {
          (`crates/calibration/data/practice.tsv`, from memory, by the authors of this project). The model was developed with this\n\
          list at hand: it is no independent test. Met: {} of {}.\n",
         first.len(),
-        count(&first),
+        count(first),
         first.len()
     );
-    text.push_str(&not_met(&first));
+    text.push_str(&not_met(first));
     let at_first = second
         .iter()
         .filter(|one| one.was_met == Some(true))
@@ -168,11 +169,11 @@ pub fn section(model: &Model) -> Result<String, String> {
          authors of this project). They were written down before the model saw any of them: at first look it met {at_first}. After\n\
          what they showed was mended, mechanism by mechanism, it meets {} of {}, which is no independent test any more.\n",
         second.len(),
-        count(&second),
+        count(second),
         second.len()
     );
-    text.push_str(&not_met(&second));
-    Ok(text)
+    text.push_str(&not_met(second));
+    text
 }
 
 fn not_met(all: &[Judged]) -> String {

@@ -17,6 +17,11 @@ impl Default for Sampler {
 }
 
 impl Sampler {
+    /// A sampler with a seed of its own.
+    pub(crate) fn seeded(state: u64) -> Sampler {
+        Sampler { state }
+    }
+
     /// Knuth's MMIX generator: good enough to pick cells.
     pub(crate) fn pick(&mut self, n: usize) -> usize {
         self.state = self

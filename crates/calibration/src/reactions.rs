@@ -9,30 +9,47 @@ use enolattice_molecule::Molecule;
 use enolattice_reagents::{Base, BaseKind};
 use serde::Deserialize;
 
+use crate::quality::Groups;
+use crate::table::rows;
+
 const REACTIONS: &str = include_str!("../data/reactions.tsv");
+const REASONS: &str = include_str!("../data/given_up.tsv");
 
 /// A yield that the model should think possible for a reported reaction.
-const POSSIBLE: f64 = 0.3;
+pub(crate) const POSSIBLE: f64 = 0.3;
 /// p_hit below this gives a reported reaction up; a hit is a tenth of the substrate.
-const GIVEN_UP: f64 = 0.02;
-const HIT: f64 = 0.1;
+pub(crate) const GIVEN_UP: f64 = 0.02;
+pub(crate) const HIT: f64 = 0.1;
 
 /// Liquids of the work-up, which the source lists among the solvents: taken only where there is no other.
 const WORK_UP: [&str; 7] = ["water", "hexane", "EtOAc", "DCM", "Et2O", "AcOH", "MTBE"];
 
 /// One reported reaction.
 #[derive(Clone, Debug, Deserialize)]
-struct Reported {
-    id: String,
-    class: String,
+pub(crate) struct Reported {
+    pub(crate) id: String,
+    pub(crate) class: String,
     substrate: String,
     electrophile: String,
     base: String,
     solvent: String,
     temperature_c: Option<f64>,
+    yield_percent: Option<f64>,
     product: String,
     site_classes: u32,
     refluxed: String,
+}
+
+impl Reported {
+    /// The same substrate and electrophile under other conditions.
+    pub(crate) fn under(&self, base: &str, solvent: &str, temperature_c: f64) -> Reported {
+        Reported {
+            base: base.to_owned(),
+            solvent: solvent.to_owned(),
+            temperature_c: Some(temperature_c),
+            ..self.clone()
+        }
+    }
 }
 
 /// What the model makes of a reported reaction.
@@ -56,6 +73,22 @@ pub struct Judged {
     pub p_hit: f64,
     /// Largest loss.
     pub largest_loss: String,
+    /// Yield as reported, isolated, where it was.
+    pub reported_yield: Option<f64>,
+    /// Where it is counted; none where its cell could not be made.
+    pub groups: Option<Groups>,
+}
+
+impl Judged {
+    /// Whether the model thinks a yield possible.
+    pub fn is_possible(&self) -> bool {
+        self.not_covered.is_none() && self.expected_yield >= POSSIBLE
+    }
+
+    /// Whether the model gives a covered reaction up.
+    pub fn is_given_up(&self) -> bool {
+        self.not_covered.is_none() && self.p_hit < GIVEN_UP
+    }
 }
 
 /// All reactions of the table.
@@ -68,15 +101,18 @@ pub struct Judged {
 /// # Errors
 /// A sentence that names a row which cannot be read.
 pub fn judge(model: &Model) -> Result<Vec<Judged>, String> {
+    reported()?.iter().map(|row| judged(model, row)).collect()
+}
+
+/// The rows of the table.
+pub(crate) fn reported() -> Result<Vec<Reported>, String> {
     let mut reader = csv::ReaderBuilder::new()
         .delimiter(b'\t')
         .comment(Some(b'#'))
         .quoting(false)
         .from_reader(REACTIONS.as_bytes());
-    reader
-        .deserialize()
-        .map(|row| judged(model, &row.map_err(|e| e.to_string())?))
-        .collect()
+    let rows = reader.deserialize();
+    rows.map(|row| row.map_err(|e| e.to_string())).collect()
 }
 
 fn judged(model: &Model, row: &Reported) -> Result<Judged, String> {
@@ -93,6 +129,8 @@ fn judged(model: &Model, row: &Reported) -> Result<Judged, String> {
         expected_yield: 0.0,
         p_hit: 0.0,
         largest_loss: String::new(),
+        reported_yield: row.yield_percent.map(|percent| percent / 100.0),
+        groups: None,
     };
     let cell = match cell(model, row) {
         Ok(cell) => cell,
@@ -101,6 +139,7 @@ fn judged(model: &Model, row: &Reported) -> Result<Judged, String> {
             return Ok(judged);
         }
     };
+    judged.groups = Some(Groups::of(&cell));
     let explanation = model
         .explain(&cell, HIT)
         .map_err(|error| format!("{}: {error}", row.id))?;
@@ -137,7 +176,8 @@ fn is_product(explanation: &Explanation, reported: &str) -> bool {
         .any(|smiles| reported.is_some() && flat(smiles) == reported)
 }
 
-fn cell(model: &Model, row: &Reported) -> Result<Cell, String> {
+/// The cell of a reported reaction, as [`judge`] takes it.
+pub(crate) fn cell(model: &Model, row: &Reported) -> Result<Cell, String> {
     let library = model.library();
     let parse = |smiles: &str| Molecule::parse(smiles).map_err(|e| e.to_string());
     let bases: Vec<&Base> = row
@@ -247,8 +287,8 @@ pub fn counts(all: &[Judged]) -> String {
             some.len(),
             some.len() - covered,
             count(&|one| one.right_product),
-            count(&|one| one.expected_yield >= POSSIBLE),
-            count(&|one| one.p_hit < GIVEN_UP),
+            count(&|one| one.is_possible()),
+            count(&|one| one.is_given_up()),
         );
     };
     for (class, some) in &by_class {
@@ -258,6 +298,75 @@ pub fn counts(all: &[Judged]) -> String {
     let compete: Vec<_> = all.iter().filter(|one| one.sites_compete).collect();
     line(&mut page, "where sites compete", &compete);
     page
+}
+
+/// Why a reaction is given up, by a chemist's judgement.
+#[derive(Clone, Debug, Deserialize)]
+pub struct Reason {
+    /// Identifier of the reaction.
+    pub id: String,
+    /// What is at fault: `record`, `not modelled` or `model`.
+    pub fault: String,
+    /// In words.
+    pub reason: String,
+}
+
+/// Why reactions are given up.
+///
+/// # Errors
+/// A sentence that names a row which cannot be read.
+pub fn reasons() -> Result<Vec<Reason>, String> {
+    rows(REASONS)
+}
+
+/// Identifiers of the covered reactions that the screen gives up.
+///
+/// # Errors
+/// As [`judge`].
+pub fn given_up(model: &Model) -> Result<Vec<String>, String> {
+    let given_up = |row: &Reported| {
+        let p_hit = model.score(&cell(model, row).ok()?, HIT, 0).p_hit?;
+        (p_hit < GIVEN_UP).then(|| row.id.clone())
+    };
+    Ok(reported()?.iter().filter_map(given_up).collect())
+}
+
+/// The reactions that the model gives up, each with the reason.
+///
+/// # Errors
+/// As [`reasons`].
+pub fn given_up_section(all: &[Judged]) -> Result<String, String> {
+    let reasons = reasons()?;
+    let given_up: Vec<&Judged> = all.iter().filter(|one| one.is_given_up()).collect();
+    let reason = |one: &Judged| reasons.iter().find(|reason| reason.id == one.id);
+    let at_fault = |fault: &str| {
+        let those = given_up
+            .iter()
+            .filter(|one| reason(one).is_some_and(|r| r.fault == fault));
+        those.count()
+    };
+    let mut page = format!(
+        "\n## Published reactions that the model gives up\n\n\
+         Every covered reaction to which it gives a p_hit below {GIVEN_UP} (a hit is a tenth of the substrate), with a chemist's judgement \
+         (`crates/calibration/data/given_up.tsv`). *Record*: what the table has cannot be what was done, {}. *Not modelled*: it goes another way than by \
+         the carbanion, {}. *Model*: the model is wrong, {}.\n\n\
+         | reaction | p_hit | largest loss | at fault | why |\n| --- | --- | --- | --- | --- |\n",
+        at_fault("record"),
+        at_fault("not modelled"),
+        at_fault("model")
+    );
+    for one in &given_up {
+        let (fault, why) = match reason(one) {
+            Some(reason) => (&*reason.fault, &*reason.reason),
+            None => ("", "not judged yet"),
+        };
+        let _ = writeln!(
+            page,
+            "| {} | {:.3} | {} | {fault} | {why} |",
+            one.cell, one.p_hit, one.largest_loss
+        );
+    }
+    Ok(page)
 }
 
 /// Counts by class, what is not covered, and the reactions that the model gives up.

@@ -16,6 +16,8 @@ const TRIVIAL: f64 = 0.02;
 const ALIKE: f64 = 1e-3;
 /// Cells with the greatest differences that are listed.
 const WORST: usize = 20;
+/// Error of mass, as a share of what was charged, from which a cell is listed.
+const MASS: f64 = 1e-7;
 
 /// One cell by both solvers.
 #[derive(Clone, Debug)]
@@ -187,6 +189,21 @@ pub fn page(model: &Model, count: usize) -> Result<String, String> {
     for Comparison { cell, solutions } in found.iter().take(WORST) {
         let (fast, reference) = (solutions.fast.product, solutions.reference.product);
         writeln!(page, "| {fast:.3} | {reference:.3} | {cell} |").expect("a string grows");
+    }
+    found.retain(|c| c.mass_errors()[0] > MASS);
+    found.sort_by(|a, b| b.mass_errors()[0].total_cmp(&a.mass_errors()[0]));
+    if !found.is_empty() {
+        writeln!(
+            page,
+            "\nCells in which the fast solver loses or gains more than {MASS:.0e} of what was charged: {}.\n\n\
+             | error of mass | cell |\n| --- | --- |",
+            found.len()
+        )
+        .expect("a string grows");
+    }
+    for cell in found.iter().take(WORST) {
+        writeln!(page, "| {:.1e} | {} |", cell.mass_errors()[0], cell.cell)
+            .expect("a string grows");
     }
     for cell in &compared.given_up {
         writeln!(page, "\nThe reference gave up: {cell}").expect("a string grows");

@@ -2,7 +2,7 @@
 
 use std::sync::Arc;
 
-use enolattice_calibration::{nucleophilicity, rates, selectivity, substitution};
+use enolattice_calibration::{nucleophilicity, rates, reactions, selectivity, substitution};
 use enolattice_model::Model;
 use enolattice_reagents::Library;
 
@@ -66,4 +66,20 @@ fn published_shares_of_elimination_are_met() {
         let error = one.error().expect("an alkylating agent with β hydrogens");
         assert!(error.abs() <= 15.0, "{one:?}");
     }
+}
+
+/// What the screen gives up among published reactions has been judged by a chemist.
+#[test]
+fn no_published_reaction_is_given_up_without_a_reason() {
+    let given_up = reactions::given_up(&model()).expect("every row can be used");
+    let reasons = reactions::reasons().expect("every row can be read");
+    for id in &given_up {
+        let known = reasons.iter().find(|reason| reason.id == *id);
+        let is_judged = known.is_some_and(|reason| {
+            ["record", "not modelled", "model"].contains(&&*reason.fault)
+                && !reason.reason.is_empty()
+        });
+        assert!(is_judged, "{id} has no reason in given_up.tsv");
+    }
+    assert!(given_up.len() <= 30, "{}", given_up.len());
 }

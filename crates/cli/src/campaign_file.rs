@@ -50,6 +50,23 @@ pub(crate) async fn sound(reading: Reading, client: &Client) -> Result<CampaignS
     }
 }
 
+/// A text file that an option names, with its name as it is shown.
+pub(crate) fn read_text(option: &str, path: &Path) -> Result<(String, String), Fault> {
+    let name = path.display().to_string();
+    let text = read_file(path)
+        .and_then(|bytes| String::from_utf8(bytes).map_err(|_| "it is no UTF-8 text".into()));
+    match text {
+        Ok(text) => Ok((name, text)),
+        Err(reason) => {
+            let (code, remedy) = (
+                FaultCode::FileMissing.name(),
+                "give the path of a file in TOML",
+            );
+            Err(Fault::option(option, &name, code, &reason, remedy))
+        }
+    }
+}
+
 /// Files that the command line names, each with its name as it is shown, and the faults of those that
 /// cannot be read.
 pub(crate) fn named_files(

@@ -2,10 +2,11 @@
 
 use enolattice_engine::{
     Agreement, CellDescription, Comparison, DryRun, Engine, EngineConfig, ExplainTarget, Job,
-    RankPage, RankQuery, ReagentRow, SiteReport, Submission,
+    PlanSummary, RankPage, RankQuery, ReagentRow, SiteReport, Submission,
 };
 use enolattice_grid::{CampaignSpec, InputError};
 use enolattice_model::Explanation;
+use enolattice_plate::{Plan, PlanRequest};
 
 use crate::campaign_file::own_tables;
 use crate::commands::EngineOptions;
@@ -134,6 +135,30 @@ impl Client {
                 engine.explain(target).await?,
             )),
             Client::Remote(server) => Ok(server.explain(target).await?),
+        }
+    }
+
+    /// Plates made from a job; the plan is kept.
+    pub(crate) async fn plan(&self, job: &str, request: PlanRequest) -> Result<Plan, Fault> {
+        match self {
+            Client::Embedded(engine) => Ok(engine.plan(job.to_owned(), request).await?),
+            Client::Remote(server) => Ok(server.plan(job.to_owned(), request).await?),
+        }
+    }
+
+    /// A kept plan.
+    pub(crate) async fn kept_plan(&self, plan: &str) -> Result<Plan, Fault> {
+        match self {
+            Client::Embedded(engine) => Ok(engine.kept_plan(plan).await?),
+            Client::Remote(server) => Ok(server.kept_plan(plan).await?),
+        }
+    }
+
+    /// Kept plans, newest first: those of a job, or all.
+    pub(crate) async fn plans(&self, job: Option<&str>) -> Result<Vec<PlanSummary>, Fault> {
+        match self {
+            Client::Embedded(engine) => Ok(engine.plans(job).await?),
+            Client::Remote(server) => Ok(server.plans(job).await?),
         }
     }
 

@@ -9,6 +9,7 @@ mod commands;
 mod fault;
 mod json;
 mod output;
+mod plan_folder;
 mod progress;
 mod text;
 

@@ -16,6 +16,12 @@ pub enum EngineError {
         /// The id given.
         job: String,
     },
+    /// No such plan.
+    #[error("there is no plan `{plan}`; `plans` lists them")]
+    PlanUnknown {
+        /// The id given.
+        plan: String,
+    },
     /// No such cell.
     #[error("job `{job}` has no cell {cell}; its cells are 0 to {last}")]
     CellUnknown {
@@ -99,6 +105,7 @@ impl From<StoreError> for EngineError {
     fn from(error: StoreError) -> EngineError {
         match error {
             StoreError::JobUnknown { job } => EngineError::JobUnknown { job },
+            StoreError::PlanUnknown { plan } => EngineError::PlanUnknown { plan },
             StoreError::RequestIdReused { request_id, job } => EngineError::RequestIdReused {
                 request_id,
                 job: job.to_string(),

@@ -13,9 +13,11 @@ mod filter;
 mod given;
 mod grids;
 mod job;
+mod kept_plans;
 mod models;
 mod nearest;
 mod open;
+mod plan;
 mod query;
 mod rank;
 mod reagents;
@@ -32,6 +34,7 @@ pub use dry_run::{AxisSize, DryRun, NotCovered};
 pub use engine::Engine;
 pub use error::EngineError;
 pub use job::{Job, JobState, Submission};
+pub use kept_plans::PlanSummary;
 pub use open::EngineConfig;
 pub use query::{
     Axis, CellDescription, CellQuery, ExplainTarget, Order, RankPage, RankQuery, RankedCell,

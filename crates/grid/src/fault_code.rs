@@ -37,13 +37,15 @@ pub enum FaultCode {
     NotYetAllowed,
     /// A table of the laboratory's own library that cannot be laid over ours.
     LibraryInvalid,
+    /// A plan that the deck, the shelf or the limits do not allow.
+    PlanImpossible,
     /// Faults that are not listed; the value is their number.
     MoreFaults,
 }
 
 impl FaultCode {
     /// All codes.
-    pub const ALL: [FaultCode; 18] = [
+    pub const ALL: [FaultCode; 19] = [
         FaultCode::CampaignSyntax,
         FaultCode::KeyUnknown,
         FaultCode::ValueType,
@@ -61,6 +63,7 @@ impl FaultCode {
         FaultCode::CampaignTooLarge,
         FaultCode::NotYetAllowed,
         FaultCode::LibraryInvalid,
+        FaultCode::PlanImpossible,
         FaultCode::MoreFaults,
     ];
 
@@ -89,6 +92,7 @@ impl FaultCode {
             FaultCode::CampaignTooLarge => "CAMPAIGN_TOO_LARGE",
             FaultCode::NotYetAllowed => "NOT_YET_ALLOWED",
             FaultCode::LibraryInvalid => "LIBRARY_INVALID",
+            FaultCode::PlanImpossible => "PLAN_IMPOSSIBLE",
             FaultCode::MoreFaults => "MORE_FAULTS",
         }
     }

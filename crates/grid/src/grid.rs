@@ -106,7 +106,7 @@ impl Grid {
 
     /// Bits of the categories of caution of a cell at each severity, in the order of
     /// [`enolattice_model::Severity::ALL`]; none of a cell that is not there.
-    pub(crate) fn caution_categories(&self, cell: CellId) -> [u32; 3] {
+    pub fn caution_categories(&self, cell: CellId) -> [u32; 3] {
         let digits = self.digits(cell);
         digits.map_or([0; 3], |digits| {
             self.cautions.categories(&digits.to_array())

@@ -3,6 +3,7 @@
 mod bounds;
 mod contribution;
 mod coverage;
+mod joint;
 mod locality;
 mod reasons;
 mod table;
@@ -12,6 +13,7 @@ use enolattice_reagents::{Acidity, Library};
 
 pub use contribution::{Contribution, Form, Role, Uptake};
 pub use coverage::Coverage;
+pub(crate) use joint::{SiteError, address, coefficient_errors};
 use locality::NEIGHBOURS;
 pub use locality::{local_sigma, similarity};
 pub use reasons::{Neighbour, SiteReasons, Term, reasons};

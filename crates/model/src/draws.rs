@@ -1,16 +1,19 @@
 //! Joint samples of everything uncertain, and what they make of a cell.
 //!
-//! A draw addresses quantities, not cells: a parameter, the acidity of a substrate or of a base's acid, the
-//! electrophilicity of a reagent have one error each, and every cell they take part in feels the same one. So cells
-//! succeed and fail together, as they do in the laboratory.
+//! A draw addresses quantities, not cells: a parameter, a coefficient of the acidity estimate, what is a molecule's own in
+//! its acidity, the acidity of a base's acid, the electrophilicity of a reagent have one error each, and every cell they
+//! take part in feels the same one. So cells succeed and fail together, as they do in the laboratory.
+
+use std::sync::Arc;
 
 use enolattice_units::math;
 use sha2::{Digest, Sha256};
 
-use crate::Cell;
+use crate::acidity::{SiteError, address, coefficient_errors};
 use crate::kinetics::Nudge;
 use crate::parameters::{P, PARAMETERS, Values};
 use crate::screen::{Coverage, coverage, solve_at};
+use crate::{AcidSite, Cell};
 
 /// Dimensions of the Sobol sequence at hand; further parameters use it again, scrambled otherwise.
 const SOBOL_DIMENSIONS: u32 = sobol_burley::NUM_DIMENSIONS;
@@ -19,19 +22,27 @@ const SOBOL_DIMENSIONS: u32 = sobol_burley::NUM_DIMENSIONS;
 #[derive(Clone, Debug, PartialEq)]
 pub struct Draw {
     pub(crate) values: Values,
+    /// Errors of the coefficients of the acidity estimate; none at the mean.
+    coefficients: Vec<f64>,
     seed: u64,
     number: u32,
 }
 
 impl Draw {
-    /// The draw with a number: points of a scrambled Sobol sequence, one pair of dimensions for each parameter.
+    /// The draw with a number: points of a scrambled Sobol sequence, one pair of dimensions for each parameter and each
+    /// coefficient of the acidity estimate.
     pub(crate) fn new(seed: u64, number: u32) -> Draw {
         let values = match number {
             0 => Values::means(),
             _ => Values::moved(|index| of_parameter(seed, number, index)),
         };
+        let coefficients = match number {
+            0 => Vec::new(),
+            _ => coefficient_errors(|index| of_parameter(seed, number, PARAMETERS.len() + index)),
+        };
         Draw {
             values,
+            coefficients,
             seed,
             number,
         }
@@ -41,6 +52,7 @@ impl Draw {
     pub(crate) fn changed(changes: &[(&str, f64)]) -> Draw {
         Draw {
             values: Values::changed(changes),
+            coefficients: Vec::new(),
             seed: 0,
             number: 0,
         }
@@ -70,6 +82,14 @@ impl Draw {
         };
         normal(uniform(0), uniform(8))
     }
+
+    /// Error of an acidity, pK units.
+    pub(crate) fn acidity_error(&self, of: &SiteError) -> f64 {
+        if self.number == 0 {
+            return 0.0;
+        }
+        of.error(&self.coefficients, |address| self.of_reagent(address))
+    }
 }
 
 /// Sobol points with Owen's scrambling after Burley, J. Comput. Graph. Tech. 2020, 9(4), 1.
@@ -89,80 +109,150 @@ fn normal(first: f64, second: f64) -> f64 {
     (-2.0 * math::ln(first)).sqrt() * math::cos_turn(second)
 }
 
-/// A value of a reagent, with its uncertainty and the address of its error.
-struct OwnError {
+/// A value of a reagent, with its uncertainty and its error.
+struct OwnValue {
     name: String,
     value: f64,
     sigma: f64,
     unit: &'static str,
     source: String,
-    address: u64,
+    error: OwnError,
 }
 
-/// What the reagents of a cell add to the uncertainty.
-struct OwnErrors {
-    substrate: OwnError,
-    base: OwnError,
-    electrophile: Option<OwnError>,
+/// Where the error of a reagent's value comes from.
+enum OwnError {
+    /// An acidity of a structure.
+    Site(SiteError),
+    /// A value of its own, by the address of its deviate.
+    Address(u64),
 }
 
-impl OwnErrors {
-    fn of(cell: &Cell) -> OwnErrors {
+impl OwnValue {
+    fn error(&self, draw: &Draw) -> f64 {
+        match &self.error {
+            OwnError::Site(site) => draw.acidity_error(site),
+            OwnError::Address(address) => self.sigma * draw.of_reagent(*address),
+        }
+    }
+}
+
+/// The reagents' own values on which a cell rests most.
+struct OwnValues {
+    substrate: OwnValue,
+    base: OwnValue,
+    electrophile: Option<OwnValue>,
+}
+
+impl OwnValues {
+    fn of(cell: &Cell) -> OwnValues {
         const PKA: &str = "pK in DMSO";
-        let site = &cell.substrate.carbon[0].acid;
+        let substrate = &cell.substrate;
+        let site = &substrate.carbon[0].acid;
         let base = &cell.base.record;
         let electrophile = cell.electrophile.e.as_ref();
-        OwnErrors {
-            substrate: OwnError {
-                name: format!("pKa of {}", cell.substrate.name),
+        OwnValues {
+            substrate: OwnValue {
+                name: format!("pKa of {}", substrate.name),
                 value: site.pka_dmso,
                 sigma: site.sigma,
                 unit: PKA,
                 source: site.source.clone(),
-                address: address("substrate", cell.substrate.molecule.canonical()),
+                error: OwnError::Site(SiteError::of(&substrate.molecule, site)),
             },
-            base: OwnError {
+            base: OwnValue {
                 name: format!("pKa of the acid of {}", base.name),
                 value: base.pka_dmso.value,
                 sigma: base.pka_dmso.sigma,
                 unit: PKA,
                 source: base.pka_dmso.source.clone(),
-                address: address("base", &base.name),
+                error: OwnError::Address(address(&["base", &base.name])),
             },
-            electrophile: electrophile.map(|(e, sigma, source)| OwnError {
-                name: format!("E of {}", cell.electrophile.name),
+            electrophile: electrophile.map(|(e, sigma, source)| OwnValue {
+                name: format!("electrophilicity E of {}", cell.electrophile.name),
                 value: *e,
                 sigma: *sigma,
                 unit: "log10",
                 source: source.clone(),
-                address: address("electrophile", cell.electrophile.molecule.canonical()),
+                error: OwnError::Address(address(&[
+                    "electrophile",
+                    cell.electrophile.molecule.canonical(),
+                ])),
             }),
         }
     }
 
-    fn all(self) -> impl IntoIterator<Item = OwnError> {
+    fn all(self) -> impl IntoIterator<Item = OwnValue> {
         [Some(self.substrate), Some(self.base), self.electrophile]
             .into_iter()
             .flatten()
     }
+}
 
-    /// What a draw does to a cell beyond the parameters. Of the pKa of base and substrate only the gap counts.
+/// A cell whose acidities are those of one draw after the other.
+struct Moved {
+    cell: Cell,
+    own: OwnValues,
+    /// Mean and error of each acid, in the order of [`acids`].
+    acids: Vec<(f64, SiteError)>,
+}
+
+impl Moved {
+    fn new(cell: &Cell) -> Moved {
+        let mut cell = cell.clone();
+        let (substrate, pair) = (&cell.substrate, &cell.pair);
+        let of_substrate = substrate.carbon.iter().map(|site| &site.acid);
+        let of_substrate = of_substrate.chain(&substrate.heteroatom);
+        let mut errors: Vec<SiteError> = of_substrate
+            .map(|acid| SiteError::of(&substrate.molecule, acid))
+            .collect();
+        for product in pair.by_site.iter().flatten() {
+            let carbon = product.carbon.iter().map(|site| &site.acid);
+            let acids = carbon.chain(&product.heteroatom);
+            errors.extend(acids.map(|acid| SiteError::of(&product.product.molecule, acid)));
+        }
+        let electrophile = &cell.electrophile;
+        let acid = electrophile.acid.iter();
+        errors.extend(acid.map(|acid| SiteError::of(&electrophile.molecule, acid)));
+        let own = OwnValues::of(&cell);
+        let means: Vec<f64> = acids(&mut cell).map(|acid| acid.pka_dmso).collect();
+        Moved {
+            cell,
+            own,
+            acids: means.into_iter().zip(errors).collect(),
+        }
+    }
+
+    /// Moves the acidities to those of a draw. Of the pKa of the base only the gap to the other acids counts.
+    fn to(&mut self, draw: &Draw) {
+        let base = self.own.base.error(draw);
+        for (acid, (mean, error)) in acids(&mut self.cell).zip(&self.acids) {
+            acid.pka_dmso = mean + draw.acidity_error(error) - base;
+        }
+    }
+
+    /// What a draw does to a cell beyond parameters and acidities.
     fn nudge(&self, draw: &Draw) -> Nudge {
-        let error = |of: &OwnError| of.sigma * draw.of_reagent(of.address);
+        let e = self.own.electrophile.as_ref();
         Nudge {
-            acidity: error(&self.substrate) - error(&self.base),
-            attack: draw.values.get(P::MAYR_S_N) * self.electrophile.as_ref().map_or(0.0, error),
+            acidity: 0.0,
+            attack: draw.values.get(P::MAYR_S_N) * e.map_or(0.0, |e| e.error(draw)),
         }
     }
 }
 
-fn address(of: &str, name: &str) -> u64 {
-    let mut hash = Sha256::new();
-    hash.update(of.as_bytes());
-    hash.update([0]);
-    hash.update(name.as_bytes());
-    let bytes: [u8; 32] = hash.finalize().into();
-    u64::from_le_bytes(bytes[..8].try_into().expect("eight bytes"))
+/// The acids of a cell that take part in its network: of the substrate, of its products, of the electrophile.
+fn acids(cell: &mut Cell) -> impl Iterator<Item = &mut AcidSite> {
+    let substrate = Arc::make_mut(&mut cell.substrate);
+    let of_substrate = substrate.carbon.iter_mut().map(|site| &mut site.acid);
+    let products = Arc::make_mut(&mut cell.pair).by_site.iter_mut().flatten();
+    let of_products = products.flat_map(|product| {
+        let carbon = product.carbon.iter_mut().map(|site| &mut site.acid);
+        carbon.chain(&mut product.heteroatom)
+    });
+    of_substrate
+        .chain(&mut substrate.heteroatom)
+        .chain(of_products)
+        .chain(&mut Arc::make_mut(&mut cell.electrophile).acid)
 }
 
 /// Yield of a cell in each draw of the product that is wanted at the mean; `None` where the model does not cover it.
@@ -172,13 +262,14 @@ pub(crate) fn yields(cell: &Cell, draws: &[Draw]) -> Option<Vec<f64>> {
         Coverage::Nothing(..) => return Some(vec![0.0; draws.len()]),
         Coverage::Covered => {}
     }
-    let own = OwnErrors::of(cell);
+    let mut moved = Moved::new(cell);
     let site = solve_at(cell, &Values::means(), Nudge::default())
         .outcome
         .site;
     // one after the other: what moves the parameters can change the order of the steps
     let product = |draw: &Draw| {
-        let solved = solve_at(cell, &draw.values, own.nudge(draw));
+        moved.to(draw);
+        let solved = solve_at(&moved.cell, &draw.values, moved.nudge(draw));
         let charged = cell.conditions.concentration_m;
         (solved.end.product(site) / charged).clamp(0.0, 1.0)
     };
@@ -188,8 +279,10 @@ pub(crate) fn yields(cell: &Cell, draws: &[Draw]) -> Option<Vec<f64>> {
 /// How much of the variance of a cell's yield one uncertain quantity explains.
 #[derive(Clone, Debug, PartialEq)]
 pub struct Doubt {
-    /// The quantity: a parameter by its name, or a value of a reagent.
+    /// The quantity in words: a parameter's title, or a value of a reagent.
     pub quantity: String,
+    /// Name of the parameter; none for a value of a reagent.
+    pub parameter: Option<String>,
     /// Its mean.
     pub value: f64,
     /// Its standard uncertainty.
@@ -213,6 +306,7 @@ pub(crate) fn doubts(cell: &Cell, draws: &[Draw], yields: &[f64]) -> Vec<Doubt> 
     let noise = 9.0 / draws.len() as f64;
     let doubt = |r: f64| Doubt {
         quantity: String::new(),
+        parameter: None,
         value: 0.0,
         sigma: 0.0,
         unit: String::new(),
@@ -227,7 +321,8 @@ pub(crate) fn doubts(cell: &Cell, draws: &[Draw], yields: &[f64]) -> Vec<Doubt> 
     let parameters = PARAMETERS.iter().enumerate().filter_map(|(index, known)| {
         let r = correlated(&|draw| draw.of_parameter(index))?;
         Some(Doubt {
-            quantity: known.name.to_owned(),
+            quantity: known.title.to_owned(),
+            parameter: Some(known.name.to_owned()),
             value: known.mean,
             sigma: known.sigma,
             unit: known.unit.to_owned(),
@@ -235,9 +330,9 @@ pub(crate) fn doubts(cell: &Cell, draws: &[Draw], yields: &[f64]) -> Vec<Doubt> 
             ..doubt(r)
         })
     });
-    let own = OwnErrors::of(cell);
+    let own = OwnValues::of(cell);
     let of_reagents = own.all().into_iter().filter_map(|known| {
-        let r = correlated(&|draw| draw.of_reagent(known.address))?;
+        let r = correlated(&|draw| known.error(draw))?;
         Some(Doubt {
             quantity: known.name,
             value: known.value,
@@ -327,7 +422,7 @@ mod tests {
         let doubts = doubts(&slow);
         let of_e = doubts
             .iter()
-            .find(|doubt| doubt.quantity.starts_with("E of "));
+            .find(|doubt| doubt.quantity.starts_with("electrophilicity E of "));
         let of_e = of_e.unwrap_or_else(|| panic!("E is not among {doubts:?}"));
         assert!(of_e.raises_yield, "{of_e:?}");
     }

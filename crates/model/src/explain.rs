@@ -1,8 +1,12 @@
 //! Everything about one cell, in numbers and sentences.
 
 mod configuration;
+mod fate;
 mod products;
 mod rates;
+mod summary;
+
+pub(crate) use fate::fate;
 
 use enolattice_molecule::AnionClass;
 use enolattice_reagents::{Cation, Library};
@@ -14,8 +18,8 @@ use crate::explanation::{CoursePoint, ExplainedSite};
 use crate::formation::Pots;
 use crate::kinetics::{Kinetics, Nudge};
 use crate::march::march;
-use crate::network::{Network, Species};
-use crate::outcome::Outcome;
+use crate::network::{Amounts, Network, Species};
+use crate::outcome::{Outcome, made_of_losses};
 use crate::parameters::Values;
 use crate::program::Charge;
 use crate::reference::{Course, integrate};
@@ -82,9 +86,9 @@ pub(crate) fn explain(
     deprotonation(&mut explanation, cell, &kinetics);
     match coverage(cell) {
         Coverage::Unknown(reason) => {
-            explanation
-                .limits
-                .push(format!("not covered by the model: {reason}"));
+            let sentence = format!("not covered by the model: {reason}");
+            explanation.summary.push(sentence.clone());
+            explanation.limits.push(sentence);
             return Ok(explanation);
         }
         Coverage::Nothing(channel, reason) => {
@@ -99,6 +103,9 @@ pub(crate) fn explain(
                 *number = Some(0.0);
             }
             explanation.losses.push((channel, 1.0));
+            explanation
+                .summary
+                .push(format!("nothing is to be had: {reason}"));
             explanation.limits.push(reason);
             return Ok(explanation);
         }
@@ -121,7 +128,9 @@ pub(crate) fn explain(
     explanation.yield_sigma = Some(uncertain.sigma);
     explanation.p_hit = Some(uncertain.p_hit);
     explanation.doubts = in_doubt(model, cell);
-    explanation.yield_on_limiting = Some(on_limiting(cell, uncertain.mean));
+    let limiting = Limiting::of(&kinetics);
+    explanation.yield_on_limiting = Some((uncertain.mean / limiting.equiv).min(1.0));
+    explanation.limiting_reagent = Some(limiting.reagent.to_owned());
     explanation.feasibility = Some(feasibility(cell, &kinetics));
     explanation.selectivity = Some(outcome.selectivity);
     explanation.reference_yield = is_reference.then_some(outcome.product);
@@ -131,8 +140,8 @@ pub(crate) fn explain(
         &network,
         Charge::of(cell).forms_first(),
     ));
-    explanation.rates = rates::rates(cell, &network);
-    explanation.course = course_points(&course, &network, outcome.site);
+    explanation.rates = rates::rates(cell, &network, &course);
+    explanation.course = course_points(&course, &network, &outcome);
     product(&mut explanation, cell, outcome.site);
     explanation.products = products::products(
         cell,
@@ -150,7 +159,8 @@ pub(crate) fn explain(
         outcome.site,
     ));
     explanation.limits.push(at_equilibrium(cell, &kinetics));
-    explanation.losses = outcome.losses;
+    explanation.losses = outcome.losses.clone();
+    explanation.summary = summary::summary(cell, &kinetics, &network, &outcome, &explanation);
     explanation.advice = advice(model, cell, yield_at_least, uncertain.mean);
     Ok(explanation)
 }
@@ -171,9 +181,34 @@ fn enolate_fraction(course: &Course, network: &Network, forms_first: bool) -> f6
     (largest / charged).clamp(0.0, 1.0)
 }
 
-fn on_limiting(cell: &Cell, on_substrate: f64) -> f64 {
-    let least = cell.conditions.electrophile_equiv.min(1.0);
-    (on_substrate / least).min(1.0)
+/// The reagent of which there is least.
+struct Limiting {
+    reagent: &'static str,
+    /// Equivalents on substrate.
+    equiv: f64,
+}
+
+impl Limiting {
+    /// A base that comes back, as in additions, limits nothing.
+    fn of(kinetics: &Kinetics<'_>) -> Limiting {
+        let conditions = &kinetics.cell.conditions;
+        let mut least = Limiting {
+            reagent: "substrate",
+            equiv: 1.0,
+        };
+        let base = ("base", conditions.base_equiv);
+        let electrophile = ("electrophile", conditions.electrophile_equiv);
+        let counted = [
+            Some(electrophile),
+            (!kinetics.regenerates_base()).then_some(base),
+        ];
+        for (reagent, equiv) in counted.into_iter().flatten() {
+            if equiv < least.equiv {
+                least = Limiting { reagent, equiv };
+            }
+        }
+        least
+    }
 }
 
 fn product(explanation: &mut Explanation, cell: &Cell, site: usize) {
@@ -349,8 +384,15 @@ fn symbol(element: u8) -> &'static str {
     }
 }
 
-fn course_points(course: &Course, network: &Network, site: usize) -> Vec<CoursePoint> {
+fn course_points(course: &Course, network: &Network, outcome: &Outcome) -> Vec<CoursePoint> {
     let charged = network.charged[0];
+    let made = |pot: &Amounts| {
+        let made = made_of_losses(pot, charged, outcome.site);
+        let listed = outcome.losses.iter();
+        listed
+            .filter_map(|(channel, _)| made.into_iter().find(|(other, _)| other == channel))
+            .collect()
+    };
     course
         .points
         .iter()
@@ -359,7 +401,8 @@ fn course_points(course: &Course, network: &Network, site: usize) -> Vec<CourseP
             substrate: (pot.of(Species::Substrate) + pot.of(Species::HeteroatomAnion)) / charged,
             anions: pot.carbanions() / charged,
             electrophile: pot.of(Species::Electrophile) / charged,
-            product: pot.product(site) / charged,
+            product: pot.product(outcome.site) / charged,
+            losses: made(pot),
         })
         .collect()
 }

@@ -5,12 +5,17 @@ use crate::{Caution, Channel, Doubt, Origin, SiteReasons};
 /// Everything the model has to say about one cell.
 #[derive(Clone, Debug, Default)]
 pub struct Explanation {
+    /// What a colleague would say of the cell, a sentence each: which acid, which base, how far, what then happens, what
+    /// competes, what limits.
+    pub summary: Vec<String>,
     /// Mean yield of the wanted product on substrate, 0–1; unknown where not covered.
     pub expected_yield: Option<f64>,
     /// Standard deviation of the yield over the uncertain parameters.
     pub yield_sigma: Option<f64>,
     /// Mean yield on the limiting reagent.
     pub yield_on_limiting: Option<f64>,
+    /// The limiting reagent: `substrate`, `base` or `electrophile`; a base that comes back limits nothing.
+    pub limiting_reagent: Option<String>,
     /// Probability that the yield reaches the target.
     pub p_hit: Option<f64>,
     /// Thermodynamic ceiling.
@@ -39,7 +44,7 @@ pub struct Explanation {
     pub enolate_fraction: Option<f64>,
     /// Acidic sites of all molecules of the cell.
     pub sites: Vec<ExplainedSite>,
-    /// Rate constants that matter.
+    /// Rate constants that matter, those of the steps through which most goes first.
     pub rates: Vec<ExplainedRate>,
     /// What the uncertainty of the yield rests on, greatest share first.
     pub doubts: Vec<Doubt>,
@@ -55,7 +60,7 @@ pub struct Explanation {
     pub hazards: Vec<String>,
     /// What limits the cell or what the model does not cover, in sentences.
     pub limits: Vec<String>,
-    /// What a change would bring; each was computed.
+    /// What one change would bring, best first, those that harm among them; each was computed.
     pub advice: Vec<Advice>,
     /// Fingerprint of the model, hexadecimal.
     pub model: String,
@@ -97,6 +102,9 @@ pub struct ExplainedRate {
     pub sigma: f64,
     /// Where it comes from.
     pub source: String,
+    /// How far the step has run in all, less what came back, in units of the substrate charged; unknown without a time
+    /// course.
+    pub extent: Option<f64>,
 }
 
 /// A product that one channel leads to, neutral as after work-up.
@@ -123,7 +131,7 @@ impl ExplainedProduct {
 }
 
 /// A point of the time course; amounts are fractions of the substrate charged.
-#[derive(Clone, Copy, Debug)]
+#[derive(Clone, Debug)]
 pub struct CoursePoint {
     /// Time after the electrophile begins to be added, s.
     pub time_s: f64,
@@ -135,6 +143,9 @@ pub struct CoursePoint {
     pub electrophile: f64,
     /// Wanted product, neutral and anion.
     pub product: f64,
+    /// Substrate in what the losses have made of it, the channels in the order of [`Explanation::losses`]; what has not
+    /// reacted is in the first two.
+    pub losses: Vec<(Channel, f64)>,
 }
 
 /// What one change of the cell would bring.
@@ -144,4 +155,23 @@ pub struct Advice {
     pub change: String,
     /// Expected yield after the change.
     pub expected_yield: f64,
+    /// Probability that the yield reaches the target then.
+    pub p_hit: Option<f64>,
+    /// Selectivity then.
+    pub selectivity: Option<f64>,
+    /// Main loss then, if there is any.
+    pub largest_loss: Option<Channel>,
+}
+
+/// Where the material of a cell goes: the short form of an explanation.
+#[derive(Clone, Debug, PartialEq)]
+pub struct Fate {
+    /// Yield of the wanted product on substrate by the stiff reference at the mean of all parameters, 0–1.
+    pub product: f64,
+    /// Time after which half of that product is there, s from the first electrophile; `None` where there is none.
+    pub half_time_s: Option<f64>,
+    /// Losses of substrate, largest first; fractions of the substrate charged.
+    pub losses: Vec<(Channel, f64)>,
+    /// What can be in the pot at the end, as in [`Explanation::products`].
+    pub products: Vec<ExplainedProduct>,
 }

@@ -52,7 +52,7 @@ pub use channel::Channel;
 pub use comparison::{PlainNetwork, Solution, Solutions, Step, Stretch};
 pub use draws::{Doubt, Draw};
 pub use explanation::{
-    Advice, CoursePoint, ExplainedProduct, ExplainedRate, ExplainedSite, Explanation,
+    Advice, CoursePoint, ExplainedProduct, ExplainedRate, ExplainedSite, Explanation, Fate,
 };
 pub use formation::FormationTable;
 pub use medium::{Onium, OniumKind};

@@ -190,13 +190,24 @@ impl<const L: usize> Marcher<L> {
     /// A step of backward Euler, in two halves where Newton's method finds no solution.
     fn euler(&mut self, dt: f64, halvings: usize) {
         let start = self.y;
-        if self.newton(dt) || halvings == 0 {
+        let is_solved = self.newton(dt);
+        let is_finite = self.is_finite();
+        if halvings == 0 && !is_finite {
+            // no numbers: the pot stays as it was, and its mass with it
+            self.y = start;
+        }
+        if is_solved && is_finite || halvings == 0 {
             return;
         }
         self.y = start;
         for _ in 0..2 {
             self.euler(0.5 * dt, halvings - 1);
         }
+    }
+
+    fn is_finite(&self) -> bool {
+        let amounts = self.y[..self.system.len()].iter();
+        amounts.flat_map(|y| y.0).all(f64::is_finite)
     }
 
     /// Newton's method for a step of backward Euler; whether it found the solution.

@@ -65,28 +65,7 @@ impl Outcome {
             |best, i| if by_site[i] > by_site[best] { i } else { best },
         );
         let product = by_site[site].clamp(0.0, 1.0);
-        let mut losses = vec![
-            (
-                Channel::OtherSite,
-                by_site.iter().sum::<f64>() - by_site[site]
-                    + end.of(Species::CarbonylAdduct) / charged,
-            ),
-            (Channel::OAttack, end.of(Species::OxygenProduct) / charged),
-            (
-                Channel::HeteroatomAttack,
-                end.of(Species::HeteroatomProduct) / charged,
-            ),
-            (
-                Channel::OverAlkylation,
-                end.of(Species::OverReacted) / charged,
-            ),
-            (Channel::SelfCondensation, end.self_condensed() / charged),
-            (
-                Channel::BaseAddsToSubstrate,
-                (end.of(Species::Taken) + end.of(Species::ProductTaken)) / charged,
-            ),
-            (Channel::Elimination, end.of(Species::Split) / charged),
-        ];
+        let mut losses = made_of_losses(end, charged, site).to_vec();
         let converted = product + losses.iter().map(|loss| loss.1.max(0.0)).sum::<f64>();
         let unreacted = Unreacted {
             cell,
@@ -115,6 +94,31 @@ impl Outcome {
             losses,
         }
     }
+}
+
+/// Substrate in what each loss has made of it, as shares of what was charged; `site` is that of the wanted product.
+pub(crate) fn made_of_losses(amounts: &Amounts, charged: f64, site: usize) -> [(Channel, f64); 7] {
+    let elsewhere = (0..SITES)
+        .filter(|i| *i != site)
+        .map(|i| amounts.product(i).max(0.0))
+        .sum::<f64>();
+    let taken = amounts.of(Species::Taken) + amounts.of(Species::ProductTaken);
+    [
+        (
+            Channel::OtherSite,
+            elsewhere + amounts.of(Species::CarbonylAdduct),
+        ),
+        (Channel::OAttack, amounts.of(Species::OxygenProduct)),
+        (
+            Channel::HeteroatomAttack,
+            amounts.of(Species::HeteroatomProduct),
+        ),
+        (Channel::OverAlkylation, amounts.of(Species::OverReacted)),
+        (Channel::SelfCondensation, amounts.self_condensed()),
+        (Channel::BaseAddsToSubstrate, taken),
+        (Channel::Elimination, amounts.of(Species::Split)),
+    ]
+    .map(|(channel, amount)| (channel, amount / charged))
 }
 
 /// Substrate that has not reacted, and why.

@@ -249,17 +249,20 @@ pub(crate) fn oxygen_by_leaving_group(leaving: LeavingGroup, values: &Values) ->
     }
 }
 
-/// Effect of contact ion pairs and aggregates on a nucleophile, log10.
+/// Effect of ion pairs and aggregates on a nucleophile, log10.
 pub(crate) fn pairing(
     nucleophile: &Nucleophile,
     medium: &Medium,
     values: &Values,
     aggregates: bool,
 ) -> f64 {
-    if !medium.is_paired() || nucleophile.class == AnionClass::Neutral {
+    if nucleophile.class == AnionClass::Neutral || medium.is_protic() {
         return 0.0;
     }
     let bound = 1.0 - medium.additive.freed;
+    if !medium.is_paired() {
+        return bound * in_dipolar_solvents(nucleophile.class, medium.cation, values);
+    }
     match medium.cation {
         Cation::Lithium => {
             let share = match nucleophile.aggregated_at_m {
@@ -278,6 +281,34 @@ pub(crate) fn pairing(
         }
         Cation::Zinc => values.get(P::PAIRED_ZINC) * bound,
         Cation::None => values.get(P::PAIRED_ONIUM),
+    }
+}
+
+/// What an anion loses to a metal that stays near it where most ions are free, log10. Lithium stays with the oxygen of enolates and
+/// alkoxides; carbanions whose charge is spread are free of it (fluorenides in DMSO, from memory), and 1,3-dicarbonyl
+/// compounds are alkylated with lithium hydride in DMF (common practice).
+fn in_dipolar_solvents(class: AnionClass, cation: Cation, values: &Values) -> f64 {
+    use AnionClass::{
+        Aldehyde, Alkoxide, Amide, ArylKetone, Carboxylate, Ester, Hydroxide, Ketone, Phenoxide,
+    };
+    let on_oxygen = matches!(
+        class,
+        Ketone
+            | ArylKetone
+            | Aldehyde
+            | Ester
+            | Amide
+            | Alkoxide
+            | Hydroxide
+            | Phenoxide
+            | Carboxylate
+    );
+    match cation {
+        Cation::Lithium if on_oxygen => values.get(P::DIPOLAR_LITHIUM),
+        Cation::Magnesium | Cation::Calcium | Cation::Barium | Cation::Zinc => {
+            values.get(P::DIPOLAR_DIVALENT)
+        }
+        _ => 0.0,
     }
 }
 

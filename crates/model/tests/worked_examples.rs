@@ -215,7 +215,7 @@ fn malonate_with_ethoxide_and_bromobutane() {
     close(
         "butylation",
         butylation,
-        rate(&told, "carbanion 1 + electrophile → product 1"),
+        rate(&told, "carbanion + electrophile → product"),
         0.05,
     );
     close(
@@ -223,16 +223,16 @@ fn malonate_with_ethoxide_and_bromobutane() {
         second,
         rate(
             &told,
-            "anion of product 1 + electrophile → over-reacted product",
+            "anion of the product + electrophile → product that reacted again",
         ),
         0.05,
     );
     // as the model has them: what ethoxide does to the bromide is a small matter here
     let elimination = rate(
         &told,
-        "base + electrophile → eliminated electrophile + acid of the base",
+        "NaOEt + electrophile → eliminated electrophile + acid of NaOEt",
     );
-    let ether = rate(&told, "base + electrophile → electrophile spent on base");
+    let ether = rate(&told, "NaOEt + electrophile → electrophile spent on base");
     let saponification = at(-1.0 - 1.2, 25.0, 60.0, -10.0);
     // 500 ppm of water in the ethanol, and 0.01 equivalents with the base
     let water_m = 500e-6 * 785.2 / 18.015 + 0.01 * 0.22;
@@ -330,7 +330,7 @@ fn acetophenone_with_lda_and_benzyl_bromide() {
         let delta = (amine - 24.7) * 298.15 / kelvin(celsius);
         at(1.2 + 0.2 * delta, 25.0, celsius, -20.0)
     };
-    let step = "base + substrate → acid of the base + carbanion 1";
+    let step = "LDA + substrate → acid of LDA + carbanion";
     close(
         "deprotonation",
         deprotonation(-20.0),
@@ -364,14 +364,14 @@ fn acetophenone_with_lda_and_benzyl_bromide() {
     close(
         "benzylation",
         benzylation,
-        rate(&told, "carbanion 1 + electrophile → product 1"),
+        rate(&told, "carbanion + electrophile → product"),
         0.05,
     );
     let oxygen = benzylation + 0.6 - 0.75 - 1.3;
     close(
         "O-benzylation",
         oxygen,
-        rate(&told, "carbanion 1 + electrophile → O-product"),
+        rate(&told, "carbanion + electrophile → O-product"),
         0.05,
     );
 

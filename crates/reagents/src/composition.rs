@@ -56,6 +56,48 @@ pub(crate) fn of_formula(formula: &str) -> Option<Elements> {
     (is_formula && add(formula, &mut elements)).then_some(elements)
 }
 
+/// Standard atomic weights, abridged, g/mol (Prohaska and others, Pure Appl. Chem. 2022, 94, 573).
+const ATOMIC_WEIGHTS: [(&str, f64); 24] = [
+    ("H", 1.008),
+    ("Li", 6.94),
+    ("B", 10.81),
+    ("C", 12.011),
+    ("N", 14.007),
+    ("O", 15.999),
+    ("F", 18.998),
+    ("Na", 22.990),
+    ("Mg", 24.305),
+    ("Al", 26.982),
+    ("Si", 28.085),
+    ("P", 30.974),
+    ("S", 32.06),
+    ("Cl", 35.45),
+    ("K", 39.098),
+    ("Ca", 40.078),
+    ("Zn", 65.38),
+    ("Se", 78.971),
+    ("Br", 79.904),
+    ("Rb", 85.468),
+    ("Sn", 118.71),
+    ("I", 126.90),
+    ("Cs", 132.91),
+    ("Ba", 137.33),
+];
+
+/// Molar mass of a formula such as `C4H9KO`, g/mol; none where it is no formula or holds an element that no reagent has.
+pub fn molar_mass_g_mol(formula: &str) -> Option<f64> {
+    let weight = |element: &str| {
+        let mut known = ATOMIC_WEIGHTS.iter();
+        known
+            .find(|(symbol, _)| *symbol == element)
+            .map(|(_, weight)| *weight)
+    };
+    of_formula(formula)?
+        .iter()
+        .map(|(element, n)| Some(weight(element)? * f64::from(*n)))
+        .sum()
+}
+
 /// The formula of these elements, Hill order.
 pub(crate) fn hill(elements: &Elements) -> String {
     let organic = elements.contains_key("C");

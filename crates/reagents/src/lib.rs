@@ -23,6 +23,7 @@ mod solvents;
 mod structures;
 mod table;
 
+pub use composition::molar_mass_g_mol;
 pub use conflicts::{Conflict, ReplacedValue};
 pub use library::{Library, LibraryError};
 pub use mixture_text::MixtureError;

@@ -7,6 +7,7 @@
 mod chemistry_service;
 mod job_service;
 mod paging;
+mod plan_service;
 mod serve;
 mod status;
 mod upload;

@@ -6,6 +6,7 @@ use std::time::Duration;
 use enolattice_engine::Engine;
 use enolattice_wire::v1::chemistry_service_server::ChemistryServiceServer;
 use enolattice_wire::v1::job_service_server::JobServiceServer;
+use enolattice_wire::v1::plan_service_server::PlanServiceServer;
 use enolattice_wire::{FILE_DESCRIPTOR_SET, MAX_MESSAGE_BYTES};
 use tokio::net::TcpListener;
 use tokio::sync::watch;
@@ -16,6 +17,7 @@ use tonic_health::server::HealthReporter;
 
 use crate::chemistry_service::Chemistry;
 use crate::job_service::Jobs;
+use crate::plan_service::Plans;
 
 /// Time that requests in flight get after the shutdown began.
 const DRAIN_DEADLINE: Duration = Duration::from_secs(10);
@@ -53,8 +55,10 @@ pub async fn serve(
     let (stop, mut stopping) = watch::channel(false);
     let jobs = JobServiceServer::new(Jobs::new(engine.clone(), stopping.clone()))
         .max_decoding_message_size(MAX_MESSAGE_BYTES);
-    let chemistry = ChemistryServiceServer::new(Chemistry::new(engine))
+    let chemistry = ChemistryServiceServer::new(Chemistry::new(engine.clone()))
         .max_decoding_message_size(MAX_MESSAGE_BYTES);
+    let plans =
+        PlanServiceServer::new(Plans::new(engine)).max_decoding_message_size(MAX_MESSAGE_BYTES);
     let (health, health_service) = tonic_health::server::health_reporter();
     report(&health, ServingStatus::Serving).await;
     let router = Server::builder()
@@ -64,7 +68,8 @@ pub async fn serve(
         .add_service(reflection().build_v1()?)
         .add_service(reflection().build_v1alpha()?)
         .add_service(jobs)
-        .add_service(chemistry);
+        .add_service(chemistry)
+        .add_service(plans);
     let stopped = async {
         shutdown.await;
         tracing::info!("shutting down");
@@ -91,11 +96,12 @@ fn reflection() -> tonic_reflection::server::Builder<'static> {
 }
 
 async fn report(health: &HealthReporter, status: ServingStatus) {
-    health.set_service_status("", status).await;
-    health
-        .set_service_status("enolattice.v1.JobService", status)
-        .await;
-    health
-        .set_service_status("enolattice.v1.ChemistryService", status)
-        .await;
+    for service in [
+        "",
+        "enolattice.v1.JobService",
+        "enolattice.v1.ChemistryService",
+        "enolattice.v1.PlanService",
+    ] {
+        health.set_service_status(service, status).await;
+    }
 }

@@ -137,6 +137,7 @@ impl Refusal {
             Refusal::Engine(error) => match error {
                 EngineError::Input(_) => ErrorReason::InputInvalid,
                 EngineError::JobUnknown { .. } => ErrorReason::JobUnknown,
+                EngineError::PlanUnknown { .. } => ErrorReason::PlanUnknown,
                 EngineError::CellUnknown { .. } => ErrorReason::CellUnknown,
                 EngineError::WrongState { .. } => ErrorReason::JobWrongState,
                 EngineError::RequestIdReused { .. } => ErrorReason::RequestIdReused,
@@ -170,6 +171,7 @@ impl Refusal {
     fn facts(&self) -> HashMap<String, String> {
         let facts = match self {
             Refusal::Engine(EngineError::JobUnknown { job }) => vec![("job_id", job.clone())],
+            Refusal::Engine(EngineError::PlanUnknown { plan }) => vec![("plan_id", plan.clone())],
             Refusal::Engine(EngineError::CellUnknown { job, cell, last }) => vec![
                 ("job_id", job.clone()),
                 ("cell", cell.to_string()),
@@ -194,7 +196,9 @@ impl Refusal {
 /// The status code of a reason, as `error.proto` states it.
 fn code(reason: ErrorReason) -> Code {
     match reason {
-        ErrorReason::JobUnknown | ErrorReason::CellUnknown => Code::NotFound,
+        ErrorReason::JobUnknown | ErrorReason::PlanUnknown | ErrorReason::CellUnknown => {
+            Code::NotFound
+        }
         ErrorReason::JobWrongState => Code::FailedPrecondition,
         ErrorReason::RequestIdReused => Code::AlreadyExists,
         ErrorReason::StoreUnavailable | ErrorReason::ShuttingDown => Code::Unavailable,
@@ -361,6 +365,11 @@ mod tests {
         let job = || "j".to_owned();
         let cases = [
             (EngineError::JobUnknown { job: job() }, Code::NotFound, true),
+            (
+                EngineError::PlanUnknown { plan: "p".into() },
+                Code::NotFound,
+                true,
+            ),
             (
                 EngineError::CellUnknown {
                     job: job(),

@@ -4,7 +4,7 @@ use std::path::PathBuf;
 
 use enolattice_grid::BlockId;
 
-use crate::{JobId, JobState};
+use crate::{JobId, JobState, PlanId};
 
 /// Why the store did not do what it was asked.
 #[derive(Debug, thiserror::Error)]
@@ -58,6 +58,22 @@ pub enum StoreError {
         /// The id given.
         job: String,
     },
+    /// No such plan.
+    #[error("there is no plan `{plan}`; list the plans to see which there are")]
+    PlanUnknown {
+        /// The id given.
+        plan: String,
+    },
+    /// A kept plan cannot be read any more.
+    #[error("plan `{plan}` cannot be read: {reason}; put back a copy of `{}`, or plan again", path.display())]
+    PlanDamaged {
+        /// Plan.
+        plan: PlanId,
+        /// Its file.
+        path: PathBuf,
+        /// What is wrong with it.
+        reason: String,
+    },
     /// The request id was used for another request.
     #[error(
         "the request id `{request_id}` belongs to job `{job}`, which was another request; choose a new request id"
@@ -76,8 +92,8 @@ pub enum StoreError {
         /// Bytes allowed.
         limit: usize,
     },
-    /// A new job cannot be put into words.
-    #[error("the job cannot be recorded: {reason}")]
+    /// A new job or plan cannot be put into words.
+    #[error("it cannot be recorded: {reason}")]
     Unwritable {
         /// Why.
         reason: String,
@@ -122,7 +138,7 @@ pub enum StoreError {
 }
 
 impl StoreError {
-    /// Wraps why a new job cannot be recorded.
+    /// Wraps why a new job or plan cannot be recorded.
     pub(crate) fn unwritable(error: impl std::fmt::Display) -> StoreError {
         StoreError::Unwritable {
             reason: error.to_string(),

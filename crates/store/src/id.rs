@@ -1,4 +1,4 @@
-//! Job ids: short, unique, in the order of submission.
+//! Ids of jobs and plans: short, unique, in the order in which they were made.
 
 use std::fmt;
 use std::str::FromStr;
@@ -16,17 +16,17 @@ const RANDOM_BITS: u32 = 20;
 #[derive(Clone, Copy, Debug, PartialEq, Eq, Hash, PartialOrd, Ord)]
 pub struct JobId(u64);
 
+/// Id of a plan: 13 letters and digits that sort by the time at which it was made.
+#[derive(Clone, Copy, Debug, PartialEq, Eq, Hash, PartialOrd, Ord)]
+pub struct PlanId(u64);
+
 impl JobId {
     /// An id after `last`, from the time and random bits.
     ///
     /// Where the clock went back or two jobs share a millisecond, the id
     /// still comes after `last`, so that ids always sort by submission.
     pub(crate) fn after(last: Option<JobId>, now_unix_ms: u64, random: u64) -> JobId {
-        let fresh = now_unix_ms << RANDOM_BITS | random & ((1 << RANDOM_BITS) - 1);
-        JobId(match last {
-            Some(JobId(last)) if fresh <= last => last + 1,
-            _ => fresh,
-        })
+        JobId(after(last.map(|JobId(last)| last), now_unix_ms, random))
     }
 
     /// The id as a number, for keys.
@@ -40,34 +40,76 @@ impl JobId {
     }
 }
 
+impl PlanId {
+    /// An id after `last`, as [`JobId::after`].
+    pub(crate) fn after(last: Option<PlanId>, now_unix_ms: u64, random: u64) -> PlanId {
+        PlanId(after(last.map(|PlanId(last)| last), now_unix_ms, random))
+    }
+}
+
+fn after(last: Option<u64>, now_unix_ms: u64, random: u64) -> u64 {
+    let fresh = now_unix_ms << RANDOM_BITS | random & ((1 << RANDOM_BITS) - 1);
+    match last {
+        Some(last) if fresh <= last => last + 1,
+        _ => fresh,
+    }
+}
+
 impl fmt::Display for JobId {
     fn fmt(&self, f: &mut fmt::Formatter<'_>) -> fmt::Result {
-        let digit = |i: usize| char::from(DIGITS[(self.0 >> (5 * (LENGTH - 1 - i)) & 31) as usize]);
-        let text: String = (0..LENGTH).map(digit).collect();
-        f.pad(&text)
+        f.pad(&text(self.0))
     }
+}
+
+impl fmt::Display for PlanId {
+    fn fmt(&self, f: &mut fmt::Formatter<'_>) -> fmt::Result {
+        f.pad(&text(self.0))
+    }
+}
+
+fn text(number: u64) -> String {
+    let digit = |i: usize| char::from(DIGITS[(number >> (5 * (LENGTH - 1 - i)) & 31) as usize]);
+    (0..LENGTH).map(digit).collect()
 }
 
 impl FromStr for JobId {
     type Err = StoreError;
 
     fn from_str(text: &str) -> Result<JobId, StoreError> {
-        let unknown = || StoreError::JobUnknown {
-            job: text.chars().take(64).collect(),
-        };
-        if text.len() != LENGTH {
-            return Err(unknown());
-        }
-        text.bytes()
-            .try_fold(0u64, |number, byte| {
-                let digit = DIGITS
-                    .iter()
-                    .position(|d| *d == byte.to_ascii_lowercase())?;
-                number.checked_mul(32)?.checked_add(digit as u64)
-            })
+        number(text)
             .map(JobId)
-            .ok_or_else(unknown)
+            .ok_or_else(|| StoreError::JobUnknown {
+                job: shortened(text),
+            })
     }
+}
+
+impl FromStr for PlanId {
+    type Err = StoreError;
+
+    fn from_str(text: &str) -> Result<PlanId, StoreError> {
+        number(text)
+            .map(PlanId)
+            .ok_or_else(|| StoreError::PlanUnknown {
+                plan: shortened(text),
+            })
+    }
+}
+
+fn number(text: &str) -> Option<u64> {
+    if text.len() != LENGTH {
+        return None;
+    }
+    text.bytes().try_fold(0u64, |number, byte| {
+        let digit = DIGITS
+            .iter()
+            .position(|d| *d == byte.to_ascii_lowercase())?;
+        number.checked_mul(32)?.checked_add(digit as u64)
+    })
+}
+
+fn shortened(text: &str) -> String {
+    text.chars().take(64).collect()
 }
 
 #[cfg(test)]

@@ -7,9 +7,9 @@ use std::path::{Path, PathBuf};
 use crate::{JobId, JobRecord, StoreError, record};
 
 /// Ending of a record's file name.
-const ENDING: &str = "json";
+pub(crate) const ENDING: &str = "json";
 /// Ending of a file that is not yet a record.
-const UNFINISHED: &str = "unfinished";
+pub(crate) const UNFINISHED: &str = "unfinished";
 
 /// The directory of job records.
 #[derive(Debug)]

@@ -1,4 +1,4 @@
-//! Jobs, blocks, ranking and pages on sled and a journal.
+//! Jobs, blocks, ranking and pages on sled and a journal; plans as files.
 //!
 //! Layout, durability and what survives what: `docs/storage.md`. The store
 //! reads no clock: where time matters it is an argument, in milliseconds since
@@ -14,6 +14,7 @@ mod job;
 mod journal;
 mod open;
 mod order;
+mod plans;
 mod rank;
 mod record;
 mod scan;
@@ -22,10 +23,11 @@ mod token;
 
 pub use commit::{Commit, Progress};
 pub use error::StoreError;
-pub use id::JobId;
+pub use id::{JobId, PlanId};
 pub use job::{Created, JobRecord, JobState, NewJob, StateChange};
 pub use open::OpenReport;
 pub use order::Order;
+pub use plans::PlanRecord;
 pub use rank::{BestPer, Filter, Position, RankRequest, Ranking};
 pub use store::Store;
 pub use token::{PageToken, TokenError};

@@ -1,4 +1,4 @@
-//! Opening a store: lock, version, journal, database, verification.
+//! Opening a store: lock, version, journal, plans, database, verification.
 
 use std::collections::BTreeMap;
 use std::fs::{self, File, TryLockError};
@@ -10,6 +10,7 @@ use crate::block;
 use crate::database::{Database, Fault, set_aside};
 use crate::index::JobIndex;
 use crate::journal::{self, Journal};
+use crate::plans::Plans;
 use crate::{JobId, JobRecord, JobState, StoreError};
 
 /// Format of the store's directory.
@@ -26,6 +27,8 @@ pub struct OpenReport {
     pub damaged: Vec<(JobId, BlockId, String)>,
     /// Journal files that could not be read, each with the reason; left where they are.
     pub unreadable: Vec<(PathBuf, String)>,
+    /// Files of plans that could not be read, each with the reason; left where they are.
+    pub unreadable_plans: Vec<(PathBuf, String)>,
 }
 
 impl OpenReport {
@@ -54,10 +57,17 @@ impl OpenReport {
                 path.display()
             )
         });
+        let plans = self.unreadable_plans.iter().map(|(path, reason)| {
+            format!(
+                "the plan `{}` cannot be read: {reason}; put back a copy of it, or remove it and plan again",
+                path.display()
+            )
+        });
         aside
             .chain(damaged)
             .chain(again)
             .chain(unreadable)
+            .chain(plans)
             .collect()
     }
 }
@@ -66,6 +76,7 @@ impl OpenReport {
 pub(crate) struct Opened {
     pub(crate) lock: File,
     pub(crate) journal: Journal,
+    pub(crate) plans: Plans,
     pub(crate) database: Database,
     pub(crate) jobs: BTreeMap<JobId, (JobRecord, JobIndex)>,
     pub(crate) report: OpenReport,
@@ -77,9 +88,11 @@ pub(crate) fn open(dir: &Path, now_unix_ms: u64) -> Result<Opened, StoreError> {
     let lock = lock(dir)?;
     check_format(dir)?;
     let (journal, contents) = Journal::open(&dir.join("journal"))?;
+    let (plans, unreadable_plans) = Plans::open(&dir.join("plans"))?;
     journal::sync_dir(dir)?;
     let mut report = OpenReport {
         unreadable: contents.unreadable,
+        unreadable_plans,
         ..OpenReport::default()
     };
     let mut jobs: BTreeMap<JobId, (JobRecord, JobIndex)> = contents
@@ -95,6 +108,7 @@ pub(crate) fn open(dir: &Path, now_unix_ms: u64) -> Result<Opened, StoreError> {
     Ok(Opened {
         lock,
         journal,
+        plans,
         database,
         jobs,
         report,

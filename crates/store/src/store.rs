@@ -1,4 +1,4 @@
-//! The store: jobs and their blocks in one directory.
+//! The store: jobs, their blocks and plans in one directory.
 
 use std::collections::BTreeMap;
 use std::fmt;
@@ -9,11 +9,12 @@ use std::sync::{Arc, Mutex, MutexGuard, PoisonError, RwLock};
 use crate::database::Database;
 use crate::index::JobIndex;
 use crate::journal::Journal;
+use crate::plans::Plans;
 use crate::rank::{self, View};
 use crate::scan::Scan;
 use crate::{
-    Created, JobId, JobRecord, JobState, NewJob, OpenReport, RankRequest, Ranking, StateChange,
-    StoreError, open, record,
+    Created, JobId, JobRecord, JobState, NewJob, OpenReport, PlanId, PlanRecord, RankRequest,
+    Ranking, StateChange, StoreError, open, record,
 };
 
 /// Longest id of a request, in bytes.
@@ -29,6 +30,7 @@ pub(crate) struct Entry {
 /// Jobs, blocks and rankings in one directory. Shared between threads behind an `Arc`.
 pub struct Store {
     pub(crate) journal: Journal,
+    plans: Plans,
     pub(crate) database: Database,
     jobs: RwLock<BTreeMap<JobId, Arc<Entry>>>,
     /// Held while a job is made, so that a request id makes one job only.
@@ -58,6 +60,7 @@ impl Store {
         };
         let store = Store {
             journal: opened.journal,
+            plans: opened.plans,
             database: opened.database,
             jobs: RwLock::new(opened.jobs.into_iter().map(entry).collect()),
             creating: Mutex::new(()),
@@ -177,6 +180,36 @@ impl Store {
         self.journal.write(&changed)?;
         *record = changed.clone();
         Ok(changed)
+    }
+
+    /// A new id for a plan; it is not given again while the store is open.
+    ///
+    /// # Errors
+    /// [`StoreError::Unwritable`] where the system has no random numbers.
+    pub fn new_plan_id(&self, now_unix_ms: u64) -> Result<PlanId, StoreError> {
+        self.plans.new_id(now_unix_ms)
+    }
+
+    /// Keeps a plan, whose document is JSON. When this returns, the plan survives a power cut.
+    ///
+    /// # Errors
+    /// [`StoreError::JobUnknown`], [`StoreError::Unwritable`] where the document is no JSON, [`StoreError::Io`].
+    pub fn keep_plan(&self, record: PlanRecord, document: String) -> Result<(), StoreError> {
+        self.entry(record.job)?;
+        self.plans.keep(record, document)
+    }
+
+    /// A kept plan and its document, as it was kept.
+    ///
+    /// # Errors
+    /// [`StoreError::PlanUnknown`], [`StoreError::PlanDamaged`].
+    pub fn plan(&self, plan: PlanId) -> Result<(PlanRecord, String), StoreError> {
+        self.plans.plan(plan)
+    }
+
+    /// All kept plans in the order in which they were made.
+    pub fn plans(&self) -> Vec<PlanRecord> {
+        self.plans.records()
     }
 
     /// A page of a job's ranking.

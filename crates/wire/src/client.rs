@@ -28,12 +28,14 @@ use crate::convert::measured_request;
 use crate::v1::ErrorReason;
 use crate::v1::chemistry_service_client::ChemistryServiceClient;
 use crate::v1::job_service_client::JobServiceClient;
+use crate::v1::plan_service_client::PlanServiceClient;
 use crate::{
     DETAIL_BYTES_KEY, MAX_ANSWER_BYTES, MAX_DETAIL_BYTES, MAX_MESSAGE_BYTES, MAX_PAGE_SIZE,
     MAX_SITES_MOLECULES, RemoteError, bad_field, v1,
 };
 
 mod places;
+mod plans;
 mod upload;
 
 /// A connection to a remote engine; clones share it.
@@ -42,6 +44,7 @@ pub struct Client {
     url: String,
     jobs: JobServiceClient<Channel>,
     chemistry: ChemistryServiceClient<Channel>,
+    plans: PlanServiceClient<Channel>,
 }
 
 impl Client {
@@ -69,8 +72,9 @@ impl Client {
             url: url.to_owned(),
             jobs: JobServiceClient::new(channel.clone())
                 .max_decoding_message_size(MAX_ANSWER_BYTES),
-            chemistry: ChemistryServiceClient::new(channel)
+            chemistry: ChemistryServiceClient::new(channel.clone())
                 .max_decoding_message_size(MAX_ANSWER_BYTES),
+            plans: PlanServiceClient::new(channel).max_decoding_message_size(MAX_ANSWER_BYTES),
         })
     }
 

@@ -15,6 +15,7 @@ mod library;
 mod measured;
 mod media;
 mod numbers;
+mod plan;
 mod ranking;
 mod stock;
 
@@ -23,6 +24,8 @@ pub(crate) use agreement::request as measured_request;
 pub use campaign::submission;
 pub use comparison::movers;
 pub use description::explained;
+pub(crate) use plan::Assembly;
+pub use plan::{plan_request, stock_parts, transfer_parts, well_parts};
 pub use ranking::page_size;
 
 /// What of a server's answer a client does not understand.

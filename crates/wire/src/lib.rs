@@ -24,11 +24,14 @@ pub const FILE_DESCRIPTOR_SET: &[u8] =
 pub const ERROR_DOMAIN: &str = "enolattice.v1";
 
 pub use client::{Client, JobWatch};
-pub use convert::{ConversionError, explained, measured, movers, page_size, submission};
+pub use convert::{
+    ConversionError, explained, measured, movers, page_size, plan_request, stock_parts, submission,
+    transfer_parts, well_parts,
+};
 pub use faults::{INPUT_FAULTS_TYPE_URL, bad_field};
 pub use limits::{
     DEFAULT_DETAIL_BYTES, DEFAULT_PAGE_SIZE, DETAIL_BYTES_KEY, MAX_ANSWER_BYTES, MAX_DETAIL_BYTES,
     MAX_MESSAGE_BYTES, MAX_PAGE_SIZE, MAX_REQUEST_ID_BYTES, MAX_SITES_MOLECULES,
-    MAX_STREAMED_CAMPAIGN_BYTES,
+    MAX_STREAMED_CAMPAIGN_BYTES, MAX_TRANSFERS_OF_A_PART, PART_BYTES,
 };
 pub use remote_error::RemoteError;

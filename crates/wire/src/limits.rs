@@ -9,6 +9,12 @@ pub const MAX_ANSWER_BYTES: usize = 32 << 20;
 /// Largest campaign that `SubmitJobStream` puts together.
 pub const MAX_STREAMED_CAMPAIGN_BYTES: usize = 64 << 20;
 
+/// Size about which a message of a plan's stream is ended.
+pub const PART_BYTES: usize = 256 << 10;
+
+/// Most transfers of a message of `StreamTransfers`.
+pub const MAX_TRANSFERS_OF_A_PART: usize = 10_000;
+
 /// Rows of a page where the client does not say.
 pub const DEFAULT_PAGE_SIZE: u32 = 100;
 

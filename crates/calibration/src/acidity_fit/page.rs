@@ -6,7 +6,7 @@ use enolattice_molecule::AnionClass;
 
 use super::observations::Observed;
 use super::validation::{CLASS_PRIOR_SITES, Held, LOOSER, class_errors, class_of};
-use super::{Fit, Observation, Observations, Term, Validation};
+use super::{Fit, FitError, Observation, Observations, Term, Validation, together};
 
 /// `acidity_coefficients.tsv`.
 pub(super) fn coefficients(terms: &[Term], fit: &Fit) -> String {
@@ -27,6 +27,25 @@ pub(super) fn coefficients(terms: &[Term], fit: &Fit) -> String {
             term.unit,
             term.source
         );
+    }
+    text
+}
+
+/// `acidity_curvature.tsv`.
+pub(super) fn curvature(fit: &Fit) -> String {
+    let mut text = String::from(
+        "# Inverse of the covariance of the coefficients of the acidity estimate: its lower triangle without zeros, in 1/unit^2.\n\
+         # row, column: the coefficient's place in acidity_coefficients.tsv, from 0.\n\
+         row\tcolumn\tvalue\n",
+    );
+    let n = fit.values.len();
+    for row in 0..n {
+        for column in 0..=row {
+            let value = fit.curvature[row * n + column];
+            if value != 0.0 {
+                let _ = writeln!(text, "{row}\t{column}\t{value:.4}");
+            }
+        }
     }
     text
 }
@@ -157,7 +176,7 @@ pub(super) fn page(
     fit: &Fit,
     observations: &Observations,
     validation: &Validation,
-) -> String {
+) -> Result<String, FitError> {
     let rows = &observations.rows;
     let count = |wanted: fn(&Observation) -> bool| rows.iter().filter(|row| wanted(row)).count();
     let mut text = String::from("# The acidity estimate and how good it is\n\n");
@@ -174,12 +193,13 @@ pub(super) fn page(
     );
     quality(&mut text, rows, validation);
     uncertainty(&mut text, validation);
+    together::section(&mut text, terms, fit, rows, validation)?;
     local_correction(&mut text, rows, validation);
     classes(&mut text, rows, validation);
     worst(&mut text, rows, validation);
     left_out(&mut text, observations);
     coefficient_list(&mut text, terms, fit);
-    text
+    Ok(text)
 }
 
 fn left_out(text: &mut String, observations: &Observations) {

@@ -58,6 +58,9 @@ pub(crate) struct Fit {
     pub(crate) training_sites: Vec<usize>,
     /// Candidate that each row was assigned to.
     pub(crate) assigned: Vec<usize>,
+    /// Half the second derivative of the cost, whose inverse is the covariance of the coefficients: row by row, of which
+    /// the lower triangle counts.
+    pub(crate) curvature: Vec<f64>,
 }
 
 impl Fit {
@@ -82,6 +85,7 @@ impl Fit {
             standard_errors,
             training_sites,
             assigned,
+            curvature,
         })
     }
 }

@@ -76,7 +76,7 @@ impl Validation {
 
 /// Fold of a row: a fixed scramble of its number, so that homologues that stand together
 /// in the tables are spread.
-fn fold(row: usize) -> usize {
+pub(super) fn fold(row: usize) -> usize {
     let scrambled = (row as u64 + 1).wrapping_mul(0x9E37_79B9_7F4A_7C15);
     ((scrambled >> 40) % 5) as usize
 }

@@ -7,6 +7,8 @@ mod explain;
 mod following;
 mod jobs;
 mod options;
+mod plan;
+mod plans;
 mod rank;
 mod reagents;
 mod screen;
@@ -44,6 +46,8 @@ enum Command {
     Cancel(cancel::Cancel),
     Rank(rank::Rank),
     Explain(Box<explain::Explain>),
+    Plan(plan::Plan),
+    Plans(plans::Plans),
     Compare(compare::Compare),
     CheckMeasured(check_measured::CheckMeasured),
     Sites(sites::Sites),
@@ -79,6 +83,8 @@ pub(crate) async fn run(program: Program) -> Result<(), Fault> {
         Command::Cancel(command) => command.run().await,
         Command::Rank(command) => command.run().await,
         Command::Explain(command) => command.run().await,
+        Command::Plan(command) => command.run().await,
+        Command::Plans(command) => command.run().await,
         Command::Compare(command) => command.run().await,
         Command::CheckMeasured(command) => command.run().await,
         Command::Sites(command) => command.run().await,

@@ -2,8 +2,8 @@
 
 use enolattice_engine::{
     AcidityAgreement, Agreement, AxisOverlap, CellDescription, CheckedAcidity, CheckedRun,
-    ComparedCell, Comparison, Difference, DryRun, Job, JobState, Miss, Mover, RankedCell,
-    ReagentRow, YieldAgreement,
+    ComparedCell, Comparison, Difference, DryRun, Job, JobState, Miss, Mover, PlanSummary,
+    RankedCell, ReagentRow, YieldAgreement,
 };
 use enolattice_grid::{CampaignSpec, Decile, MeasuredEntry};
 use enolattice_model::{
@@ -15,7 +15,7 @@ use serde_json::Value;
 
 use super::{
     AgreementDocument, CellLine, ComparisonDocument, DryRunDocument, ExplanationDocument,
-    JobRecord, MoleculeSites, ReagentRecord, ScreenedDocument,
+    JobRecord, MoleculeSites, PlanRecord, ReagentRecord, ScreenedDocument,
 };
 
 const DOCUMENT: &str = include_str!("../../docs/commands.md");
@@ -117,6 +117,8 @@ fn description() -> CellDescription {
 
 fn explanation() -> Explanation {
     Explanation {
+        summary: Vec::new(),
+        limiting_reagent: None,
         expected_yield: None,
         yield_sigma: None,
         yield_on_limiting: None,
@@ -139,9 +141,11 @@ fn explanation() -> Explanation {
             log10_k: 0.0,
             sigma: 0.7,
             source: String::new(),
+            extent: None,
         }],
         doubts: vec![Doubt {
             quantity: String::new(),
+            parameter: None,
             value: 0.0,
             sigma: 0.0,
             unit: String::new(),
@@ -163,6 +167,7 @@ fn explanation() -> Explanation {
             anions: 0.0,
             electrophile: 0.0,
             product: 0.0,
+            losses: Vec::new(),
         }],
         cautions: vec![Caution {
             category: Category::Gas,
@@ -175,6 +180,9 @@ fn explanation() -> Explanation {
         advice: vec![Advice {
             change: String::new(),
             expected_yield: 0.5,
+            p_hit: None,
+            selectivity: None,
+            largest_loss: None,
         }],
         model: String::new(),
     }
@@ -207,6 +215,17 @@ fn site() -> ExplainedSite {
                 source: String::new(),
             }],
         },
+    }
+}
+
+fn plan() -> PlanSummary {
+    PlanSummary {
+        plan: String::new(),
+        job: String::new(),
+        title: String::new(),
+        made_unix_ms: 0,
+        plates: 1,
+        wells: 96,
     }
 }
 
@@ -256,6 +275,7 @@ fn every_field_is_documented_and_every_documented_field_is_there() {
         ("### `screen --json`", fields(&screened)),
         ("### `screen --dry-run --json`", fields(&dry)),
         ("### `jobs --json`", fields(&JobRecord::from(job()))),
+        ("### `plans --json`", fields(&PlanRecord::from(plan()))),
         ("### `rank --json`", fields(&CellLine::from(cell()))),
         (
             "### `explain --json`",
@@ -276,6 +296,7 @@ fn every_field_is_documented_and_every_documented_field_is_there() {
         ("terms", &site["terms"]),
         ("neighbours", &site["neighbours"]),
         ("rates", &explained["rates"]),
+        ("doubts", &explained["doubts"]),
         ("losses", &explained["losses"]),
         ("products", &explained["products"]),
         ("course", &explained["course"]),
@@ -437,6 +458,8 @@ fn the_document_has_the_closed_vocabularies() {
         "cancel JOB",
         "rank JOB",
         "explain JOB CELL",
+        "plan JOB",
+        "plans [JOB]",
         "compare BEFORE AFTER",
         "check-measured FILE…",
     ] {

@@ -11,9 +11,11 @@ use super::SiteRecord;
 /// The document of `explain --json`.
 #[derive(Clone, Debug, Serialize)]
 pub(crate) struct ExplanationDocument {
+    summary: Vec<String>,
     expected_yield: Option<f64>,
     yield_sigma: Option<f64>,
     yield_on_limiting: Option<f64>,
+    limiting_reagent: Option<String>,
     p_hit: Option<f64>,
     feasibility: Option<f64>,
     selectivity: Option<f64>,
@@ -71,11 +73,13 @@ struct RateRecord {
     log10_k: f64,
     sigma: f64,
     source: String,
+    extent: Option<f64>,
 }
 
 #[derive(Clone, Debug, Serialize)]
 struct DoubtRecord {
     quantity: String,
+    parameter: Option<String>,
     value: f64,
     sigma: f64,
     unit: String,
@@ -106,6 +110,7 @@ struct CourseRecord {
     anions: f64,
     electrophile: f64,
     product: f64,
+    losses: Vec<LossRecord>,
 }
 
 #[derive(Clone, Debug, Serialize)]
@@ -120,15 +125,20 @@ struct CautionRecord {
 struct AdviceRecord {
     change: String,
     expected_yield: f64,
+    p_hit: Option<f64>,
+    selectivity: Option<f64>,
+    largest_loss: Option<&'static str>,
 }
 
 impl ExplanationDocument {
     pub(crate) fn new(cell: CellDescription, told: Explanation) -> ExplanationDocument {
         ExplanationDocument {
             cell: cell.into(),
+            summary: told.summary,
             expected_yield: told.expected_yield,
             yield_sigma: told.yield_sigma,
             yield_on_limiting: told.yield_on_limiting,
+            limiting_reagent: told.limiting_reagent,
             p_hit: told.p_hit,
             feasibility: told.feasibility,
             selectivity: told.selectivity,
@@ -191,6 +201,7 @@ impl From<Doubt> for DoubtRecord {
     fn from(doubt: Doubt) -> DoubtRecord {
         DoubtRecord {
             quantity: doubt.quantity,
+            parameter: doubt.parameter,
             value: doubt.value,
             sigma: doubt.sigma,
             unit: doubt.unit,
@@ -208,6 +219,7 @@ impl From<ExplainedRate> for RateRecord {
             log10_k: rate.log10_k,
             sigma: rate.sigma,
             source: rate.source,
+            extent: rate.extent,
         }
     }
 }
@@ -241,6 +253,7 @@ impl From<CoursePoint> for CourseRecord {
             anions: point.anions,
             electrophile: point.electrophile,
             product: point.product,
+            losses: point.losses.into_iter().map(LossRecord::from).collect(),
         }
     }
 }
@@ -261,6 +274,9 @@ impl From<Advice> for AdviceRecord {
         AdviceRecord {
             change: advice.change,
             expected_yield: advice.expected_yield,
+            p_hit: advice.p_hit,
+            selectivity: advice.selectivity,
+            largest_loss: advice.largest_loss.map(Channel::name),
         }
     }
 }

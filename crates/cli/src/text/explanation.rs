@@ -2,8 +2,9 @@
 
 use enolattice_engine::CellDescription;
 use enolattice_grid::MeasuredYield;
-use enolattice_model::{CoursePoint, Explanation};
+use enolattice_model::{Advice, Channel, CoursePoint, Explanation};
 
+use super::chart::{Curve, chart, time};
 use super::numbers::{fixed, percent, short, temperatures};
 use super::safety_notice;
 use super::sites::{reasons, site_table};
@@ -14,11 +15,12 @@ use crate::json::SiteRecord;
 pub(crate) fn explanation_page(cell: &CellDescription, told: &Explanation) -> String {
     let mut sections = vec![
         ("Cell", cell_section(cell)),
+        ("In short", in_short(told)),
         ("Numbers", numbers(cell, told)),
         ("Product", product(told)),
         ("Acidic sites", sites(told)),
         ("Why these pKa", why(told)),
-        ("Rates", rates(told)),
+        ("Rates, in the order of what goes through them", rates(told)),
         ("Losses (of the substrate charged)", losses(told)),
         ("What the uncertainty rests on", doubts(told)),
         ("Masses to look for", masses(told)),
@@ -31,12 +33,8 @@ pub(crate) fn explanation_page(cell: &CellDescription, told: &Explanation) -> St
         ("Limits", sentences(&told.limits, "the model names none")),
         ("What a change would bring", advice(told)),
     ];
-    if told.expected_yield.is_none() {
-        // why there is no number is the first thing that one wants to know
-        let limits = sections.len() - 2;
-        let why_not = sections.remove(limits);
-        sections.insert(1, why_not);
-    }
+    // why there is no number is the first thing that one wants to know
+    sections.retain(|(heading, _)| *heading != "In short" || !told.summary.is_empty());
     let mut page: Vec<String> = sections
         .iter()
         .map(|(heading, text)| format!("{heading}\n{text}"))
@@ -44,6 +42,25 @@ pub(crate) fn explanation_page(cell: &CellDescription, told: &Explanation) -> St
     page.push(safety_notice());
     page.push(format!("model {}", told.model));
     page.join("\n\n")
+}
+
+/// The opening paragraph: the sentences of the summary with capitals and full stops.
+fn in_short(told: &Explanation) -> String {
+    let sentence = |text: &String| {
+        let mut letters = text.chars();
+        // a name keeps its first letter: only words of the language begin a sentence with a capital
+        let starts_with_word = ["the ", "its ", "what ", "nothing ", "not ", "expected "]
+            .iter()
+            .any(|word| text.starts_with(word));
+        match letters.next() {
+            Some(first) if starts_with_word => {
+                format!("{}{}.", first.to_uppercase(), letters.as_str())
+            }
+            _ => format!("{text}."),
+        }
+    };
+    let paragraph: Vec<String> = told.summary.iter().map(sentence).collect();
+    wrapped("  ", &paragraph.join(" "))
 }
 
 fn cell_section(cell: &CellDescription) -> String {
@@ -116,7 +133,13 @@ fn numbers(cell: &CellDescription, told: &Explanation) -> String {
         .map_or_else(String::new, |sigma| format!(" ± {}", percent(Some(sigma))));
     let mut lines = vec![(
         "expected yield",
-        format!("{}{uncertain}", percent(told.expected_yield)),
+        match told.expected_yield {
+            Some(_) => format!(
+                "{}{uncertain} on the substrate",
+                percent(told.expected_yield)
+            ),
+            None => percent(None),
+        },
     )];
     lines.extend(
         cell.measured
@@ -124,20 +147,39 @@ fn numbers(cell: &CellDescription, told: &Explanation) -> String {
             .map(|known| ("measured yield", measured(known))),
     );
     lines.extend([
-        ("yield on limiting", percent(told.yield_on_limiting)),
+        ("yield on limiting", on_limiting(told)),
         ("p_hit", percent(told.p_hit)),
         ("feasibility", percent(told.feasibility)),
         ("selectivity", percent(told.selectivity)),
         ("reference yield", percent(told.reference_yield)),
         ("fast yield", percent(told.fast_yield)),
         ("log10 K", log10_k(told)),
-        (
-            "ΔG° deprotonation",
-            with_unit(told.delta_g_deprotonation_kj_mol, 1, "kJ/mol"),
-        ),
+        ("ΔG° deprotonation", delta_g(cell, told)),
         ("enolate fraction", percent(told.enolate_fraction)),
     ]);
     pairs(lines)
+}
+
+/// The mean yield on the reagent of which there is least.
+fn on_limiting(told: &Explanation) -> String {
+    let reagent = told.limiting_reagent.as_deref();
+    let named = reagent.map_or_else(String::new, |reagent| format!(" on the {reagent}"));
+    format!("{}{named}", percent(told.yield_on_limiting))
+}
+
+/// ΔG° of the deprotonation with the uncertainty of log10 K, at the temperature of the reaction.
+fn delta_g(cell: &CellDescription, told: &Explanation) -> String {
+    // R·ln 10, kJ/(mol K) (CODATA 2018)
+    const PER_LOG10_K: f64 = 8.314_462_618e-3 * std::f64::consts::LN_10;
+    let sigma = told
+        .log10_k_sigma
+        .map(|sigma| sigma * PER_LOG10_K * (cell.temperature_c + 273.15));
+    match (told.delta_g_deprotonation_kj_mol, sigma) {
+        (known @ Some(_), Some(_)) => {
+            format!("{} ± {} kJ/mol", fixed(known, 1), fixed(sigma, 1))
+        }
+        (known, _) => with_unit(known, 1, "kJ/mol"),
+    }
 }
 
 /// A yield as the laboratory has measured it, with what it says of it.
@@ -205,18 +247,30 @@ fn why(told: &Explanation) -> String {
     }
 }
 
+/// The steps through which something goes, and some of those that could matter; `--json` has all.
 fn rates(told: &Explanation) -> String {
+    const LEAST: usize = 4;
+    const MOST: usize = 14;
+    const COUNTS: f64 = 5e-4;
     let columns = [
         ("step", Side::Left),
         ("log10 k", Side::Right),
         ("σ", Side::Right),
+        ("goes through", Side::Right),
         ("source", Side::Left),
     ];
-    let rows = told.rates.iter().map(|rate| {
+    let counts = told
+        .rates
+        .iter()
+        .filter(|rate| rate.extent.is_none_or(|e| e >= COUNTS));
+    let shown = counts.count().clamp(LEAST, MOST);
+    let rows = told.rates.iter().take(shown).map(|rate| {
         vec![
             rate.step.clone(),
             fixed(Some(rate.log10_k), 2),
             fixed(Some(rate.sigma), 1),
+            rate.extent
+                .map_or_else(String::new, |extent| percent(Some(extent))),
             rate.source.clone(),
         ]
     });
@@ -304,6 +358,45 @@ fn masses(told: &Explanation) -> String {
 }
 
 fn course(told: &Explanation) -> String {
+    /// Losses that have a curve of their own.
+    const DRAWN: usize = 2;
+    /// A loss below this share would lie on the axis.
+    const SEEN: f64 = 0.03;
+    if told.course.is_empty() {
+        return "  unknown".to_owned();
+    }
+    let curve = |symbol: char, name: &str, of: &dyn Fn(&CoursePoint) -> f64| Curve {
+        symbol,
+        name: name.to_owned(),
+        points: told
+            .course
+            .iter()
+            .map(|point| (point.time_s, of(point)))
+            .collect(),
+    };
+    let mut curves = vec![
+        curve('P', "wanted product", &|point| point.product),
+        curve('S', "substrate, anions included", &|point| {
+            point.substrate + point.anions
+        }),
+    ];
+    let share = |point: &CoursePoint, channel: Channel| {
+        let mut made = point.losses.iter();
+        made.find(|(other, _)| *other == channel)
+            .map_or(0.0, |(_, share)| *share)
+    };
+    let made = told.course.last().map_or(&[][..], |last| &last.losses);
+    let largest = made.iter().filter(|(_, share)| *share > SEEN).take(DRAWN);
+    for ((channel, _), symbol) in largest.zip('1'..) {
+        curves.push(curve(symbol, channel.name(), &|point| {
+            share(point, *channel)
+        }));
+    }
+    let table = course_table(told);
+    format!("{}\n\n{}", chart(&curves), indented(&table))
+}
+
+fn course_table(told: &Explanation) -> String {
     let columns = [
         ("time", Side::Right),
         ("substrate", Side::Right),
@@ -322,16 +415,12 @@ fn course(told: &Explanation) -> String {
             .chain(amounts.map(|amount| percent(Some(amount))))
             .collect()
     });
-    if told.course.is_empty() {
-        "  unknown".to_owned()
-    } else {
-        indented(&table(&columns, rows))
-    }
+    table(&columns, rows)
 }
 
-/// At most about twenty points, the last among them; JSON has them all.
+/// At most about twelve points, the last among them; JSON has them all.
 fn thinned(course: &[CoursePoint]) -> impl Iterator<Item = &CoursePoint> {
-    let step = course.len().div_ceil(20).max(1);
+    let step = course.len().div_ceil(12).max(1);
     let last = course.len().saturating_sub(1);
     let kept = move |(i, _): &(usize, &CoursePoint)| i % step == 0 || *i == last;
     course
@@ -339,16 +428,6 @@ fn thinned(course: &[CoursePoint]) -> impl Iterator<Item = &CoursePoint> {
         .enumerate()
         .filter(kept)
         .map(|(_, point)| point)
-}
-
-/// A time after the electrophile begins to be added; before it is negative.
-fn time(seconds: f64) -> String {
-    match seconds.abs() {
-        _ if seconds < 0.0 => format!("−{}", time(-seconds)),
-        s if s < 60.0 => format!("{} s", short((s * 10.0).round() / 10.0)),
-        s if s < 3600.0 => format!("{} min", short((s / 6.0).round() / 10.0)),
-        s => format!("{} h", short((s / 360.0).round() / 10.0)),
-    }
 }
 
 fn cautions(told: &Explanation) -> String {
@@ -383,13 +462,42 @@ fn sentences(texts: &[String], none: &str) -> String {
 }
 
 fn advice(told: &Explanation) -> String {
-    let columns = [("change", Side::Left), ("expected yield", Side::Right)];
-    let rows = told
+    let columns = [
+        ("change", Side::Left),
+        ("expected yield", Side::Right),
+        ("p_hit", Side::Right),
+        ("selectivity", Side::Right),
+        ("main loss then", Side::Left),
+    ];
+    let row = |change: &str, advice: &Advice| {
+        vec![
+            change.to_owned(),
+            percent(Some(advice.expected_yield)),
+            percent(advice.p_hit),
+            percent(advice.selectivity),
+            advice.largest_loss.map_or("none", Channel::name).to_owned(),
+        ]
+    };
+    let Some(now) = told.expected_yield else {
+        return "  unknown".to_owned();
+    };
+    let as_it_is = Advice {
+        change: String::new(),
+        expected_yield: now,
+        p_hit: told.p_hit,
+        selectivity: told.selectivity,
+        largest_loss: told.losses.first().map(|(channel, _)| *channel),
+    };
+    let better = told
         .advice
-        .iter()
-        .map(|advice| vec![advice.change.clone(), percent(Some(advice.expected_yield))]);
+        .partition_point(|advice| advice.expected_yield > now);
+    let (better, worse) = told.advice.split_at(better);
+    let each = |advice: &Advice| row(&advice.change, advice);
+    let rows = better.iter().map(each);
+    let rows = rows.chain([row("(as it is)", &as_it_is)]);
+    let rows = rows.chain(worse.iter().map(each));
     if told.advice.is_empty() {
-        "  none that helps".to_owned()
+        "  nothing was tried".to_owned()
     } else {
         indented(&table(&columns, rows))
     }

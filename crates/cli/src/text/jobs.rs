@@ -26,10 +26,6 @@ pub(crate) fn job_table(jobs: &[Job]) -> String {
 }
 
 fn row(job: &Job) -> Vec<String> {
-    let submitted = UNIX_EPOCH + Duration::from_millis(job.submitted_unix_ms);
-    let age = SystemTime::now()
-        .duration_since(submitted)
-        .unwrap_or_default();
     vec![
         job.job.clone(),
         job.title.clone(),
@@ -38,7 +34,15 @@ fn row(job: &Job) -> Vec<String> {
         percent(Some(job.cells_done as f64 / job.cells.max(1) as f64)),
         job.best_yield
             .map_or_else(|| "none yet".to_owned(), |best| percent(Some(best))),
-        format!("{} ago", HumanDuration(age)),
+        ago(job.submitted_unix_ms),
         job.failure.clone(),
     ]
+}
+
+/// How long ago a time was.
+pub(super) fn ago(unix_ms: u64) -> String {
+    let age = SystemTime::now()
+        .duration_since(UNIX_EPOCH + Duration::from_millis(unix_ms))
+        .unwrap_or_default();
+    format!("{} ago", HumanDuration(age))
 }

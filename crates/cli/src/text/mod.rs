@@ -2,11 +2,14 @@
 
 mod agreement;
 mod cells;
+mod chart;
 mod comparison;
 mod dry_run;
 mod explanation;
 mod jobs;
 mod numbers;
+mod plan;
+mod plans;
 mod reagents;
 mod sites;
 mod table;
@@ -18,6 +21,8 @@ pub(crate) use dry_run::dry_run_page;
 pub(crate) use explanation::explanation_page;
 pub(crate) use jobs::job_table;
 pub(crate) use numbers::{count, percent};
+pub(crate) use plan::plan_page;
+pub(crate) use plans::plan_table;
 pub(crate) use reagents::reagent_table;
 pub(crate) use sites::molecule_page;
 

@@ -97,6 +97,14 @@ fn what_the_user_gets_wrong_exits_with_2() {
         (vec!["explain", "nojob", "0"], "there is no job `nojob`"),
         (vec!["cancel", "nojob"], "there is no job `nojob`"),
         (vec!["watch", "nojob"], "there is no job `nojob`"),
+        (vec!["plan", "nojob"], "there is no job `nojob`"),
+        (
+            vec!["plan", "--kept", "noplan"],
+            "there is no plan `noplan`",
+        ),
+        (vec!["plan", job, "--kept", "noplan"], "cannot be used with"),
+        (vec!["plan"], "JOB"),
+        (vec!["plans", "nojob"], "there is no job `nojob`"),
         (vec!["cancel", job], "is done"),
         (vec!["explain", job, "16"], "its cells are 0 to 15"),
         (

@@ -192,3 +192,43 @@ fn the_log_of_a_service_can_be_read_by_programs() {
         "{log:?}"
     );
 }
+
+#[test]
+fn a_plan_is_kept_and_shown_again_here_and_there() {
+    let folder = folder();
+    let folder = folder.path();
+    std::fs::write(
+        folder.join("plan.toml"),
+        "[plates]\nwells = 24\n[choice]\ndraws = 16\n[deck]\ninert = true\n",
+    )
+    .expect("written");
+    let server = Server::start(folder);
+    let here = json(folder, &["screen", "campaign.toml", "--json"]);
+    let there = json(
+        folder,
+        &on_server(&server.url, &["screen", "campaign.toml", "--json"]),
+    );
+    let mut plans = Vec::new();
+    for (screened, server) in [(here, None), (there, Some(server.url.as_str()))] {
+        let asked = |arguments: &[&'static str]| match server {
+            Some(url) => [arguments, &["--server", url]].concat(),
+            None => arguments.to_vec(),
+        };
+        let job = screened["job"]["job"].as_str().expect("an id");
+        let plan = ["plan", job, "--request", "plan.toml", "--json"];
+        let mut made = json(folder, &[&plan[..], &asked(&[])[..]].concat());
+        let listed = json(folder, &asked(&["plans", "--json"]));
+        assert_eq!(listed.as_array().map(Vec::len), Some(1));
+        assert_eq!(listed[0]["plan"], made["id"]);
+        assert_eq!(listed[0]["job"], job);
+        let id = made["id"].as_str().expect("an id").to_owned();
+        let again = [&["plan", "--kept", &id, "--json"][..], &asked(&[])[..]].concat();
+        assert_eq!(json(folder, &again), made);
+        assert!(stdout(folder, &asked(&["plans"])).contains(&id));
+        for stamp in ["id", "made_unix_ms", "job"] {
+            made[stamp].take();
+        }
+        plans.push(made);
+    }
+    assert_eq!(plans[0], plans[1]);
+}

@@ -11,6 +11,7 @@ mod read;
 mod token;
 mod value;
 
+pub(crate) use bind::BoundFilter;
 pub(crate) use read::Filter;
 
 #[cfg(test)]

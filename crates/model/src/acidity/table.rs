@@ -9,6 +9,7 @@ use super::contribution::{Contribution, Form, Role};
 use super::coverage::Coverage;
 
 const COEFFICIENTS: &str = include_str!("../../data/acidity_coefficients.tsv");
+const CURVATURE: &str = include_str!("../../data/acidity_curvature.tsv");
 const SEEN: &str = include_str!("../../data/acidity_seen.tsv");
 const HELD_OUT: &str = include_str!("../../data/acidity_held_out.tsv");
 const ERRORS: &str = include_str!("../../data/acidity_errors.tsv");
@@ -85,8 +86,8 @@ static TYPICAL_ERRORS: LazyLock<HashMap<&'static str, f64>> = LazyLock::new(|| {
 });
 
 /// The text of the tables that the estimate rests on, for a fingerprint of the model.
-pub(crate) fn texts() -> [&'static str; 4] {
-    [COEFFICIENTS, SEEN, HELD_OUT, ERRORS]
+pub(crate) fn texts() -> [&'static str; 5] {
+    [COEFFICIENTS, CURVATURE, SEEN, HELD_OUT, ERRORS]
 }
 
 /// The coefficients of the estimate, in a fixed order.
@@ -97,6 +98,17 @@ pub fn coefficients() -> &'static [Coefficient] {
 /// The values of the coefficients, in the order of [`coefficients`].
 pub(super) fn values() -> &'static [f64] {
     &VALUES
+}
+
+/// The inverse of the coefficients' covariance, by row and column of its lower triangle; zeros are left out.
+pub(super) fn curvature() -> impl Iterator<Item = (usize, usize, f64)> {
+    rows(CURVATURE).filter_map(|row| {
+        let [row, column, value] = row[..] else {
+            return None;
+        };
+        let (row, column) = (row.parse().ok()?, column.parse().ok()?);
+        Some((row, column, value.parse().ok()?))
+    })
 }
 
 /// The estimate's form over [`coefficients`].

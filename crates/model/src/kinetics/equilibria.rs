@@ -108,9 +108,17 @@ impl<'a> Kinetics<'a> {
         self.addition_free_energy(site).map(|dg| self.log10_k(dg))
     }
 
-    /// log10 K of the loss of water from an aldol adduct to the conjugated product and 1 mol/L of water.
-    pub(crate) fn dehydration_log10_k(&self) -> f64 {
-        self.log10_k(self.v(P::DG_DEHYDRATION))
+    /// log10 K of the condensation with an aldehyde or ketone to the conjugated product and water, two molecules to two;
+    /// `None` for other electrophiles. The adducts of stabilised carbanions are crowded, their alkenes are not: all sites count
+    /// as that of a ketone.
+    pub(crate) fn condensation_log10_k(&self) -> Option<f64> {
+        let addition = match *self.kind()? {
+            ElectrophileKind::Aldehyde { aromatic: true, .. } => self.v(P::DG_ALDOL_ARYL),
+            ElectrophileKind::Aldehyde { .. } => self.v(P::DG_ALDOL_ALKYL),
+            ElectrophileKind::Ketone { aromatic, .. } => self.ketone_acceptor(aromatic),
+            _ => return None,
+        };
+        Some(self.log10_k(addition + self.v(P::DG_DEHYDRATION)))
     }
 
     /// pKa in the medium of the anion first formed by addition at site `i`.

@@ -203,6 +203,11 @@ impl Reactions<'_> {
             let s = Some(Species::Substrate);
             self.add(Species::Base, s, &[Species::Taken], rate);
         }
+        if record.kind == BaseKind::Amide && acceptor == Some(Carbonyl::Aldehyde) {
+            let rate = at(k.v(P::AMIDE_TO_ALDEHYDE), P::DS_EXCHANGE);
+            let s = Some(Species::Substrate);
+            self.add(Species::Base, s, &[Species::Taken], rate);
+        }
         let is_amide = k.cell.substrate.carbon[0].acid.class == AnionClass::Amide;
         if let Some(addition) = organometal.filter(|_| acceptor.is_some() || is_amide) {
             let of_amide = if acceptor.is_none() {

@@ -3,4 +3,5 @@
 mod common;
 mod damage;
 mod jobs;
+mod plans;
 mod ranking;

@@ -157,11 +157,11 @@ impl From<Channel> for v1::Channel {
 }
 
 #[cfg(test)]
-mod tests {
+pub(crate) mod tests {
     use super::*;
 
     /// Every value comes back, no two share a number, and none is 0.
-    fn one_to_one<T, W>(all: &[T])
+    pub(crate) fn one_to_one<T, W>(all: &[T])
     where
         T: Copy + Into<W> + PartialEq + std::fmt::Debug,
         W: Into<i32>,

@@ -32,6 +32,8 @@ impl From<&Explanation> for v1::Explanation {
             sites: e.sites.iter().map(Into::into).collect(),
             rates: e.rates.iter().map(Into::into).collect(),
             doubts: e.doubts.iter().map(Into::into).collect(),
+            summary: e.summary.clone(),
+            limiting_reagent: e.limiting_reagent.clone(),
             losses: e.losses.iter().map(loss).collect(),
             products: e.products.iter().map(Into::into).collect(),
             course: e.course.iter().map(Into::into).collect(),
@@ -72,13 +74,19 @@ impl TryFrom<v1::Explanation> for Explanation {
                 .collect::<Result<_, _>>()?,
             rates: e.rates.into_iter().map(Into::into).collect(),
             doubts: e.doubts.into_iter().map(Into::into).collect(),
+            summary: e.summary,
+            limiting_reagent: e.limiting_reagent,
             losses: e.losses.iter().map(loss_from).collect::<Result<_, _>>()?,
             products: e
                 .products
                 .into_iter()
                 .map(TryInto::try_into)
                 .collect::<Result<_, _>>()?,
-            course: e.course.into_iter().map(Into::into).collect(),
+            course: e
+                .course
+                .into_iter()
+                .map(TryInto::try_into)
+                .collect::<Result<_, _>>()?,
             cautions: e
                 .cautions
                 .into_iter()
@@ -86,7 +94,11 @@ impl TryFrom<v1::Explanation> for Explanation {
                 .collect::<Result<_, _>>()?,
             hazards: e.hazards,
             limits: e.limits,
-            advice: e.advice.into_iter().map(Into::into).collect(),
+            advice: e
+                .advice
+                .into_iter()
+                .map(TryInto::try_into)
+                .collect::<Result<_, _>>()?,
             model: e.model,
         })
     }
@@ -96,6 +108,7 @@ impl From<&Doubt> for v1::Doubt {
     fn from(doubt: &Doubt) -> Self {
         v1::Doubt {
             quantity: doubt.quantity.clone(),
+            parameter: doubt.parameter.clone(),
             value: doubt.value,
             sigma: doubt.sigma,
             unit: doubt.unit.clone(),
@@ -110,6 +123,7 @@ impl From<v1::Doubt> for Doubt {
     fn from(doubt: v1::Doubt) -> Self {
         Doubt {
             quantity: doubt.quantity,
+            parameter: doubt.parameter,
             value: doubt.value,
             sigma: doubt.sigma,
             unit: doubt.unit,
@@ -212,6 +226,7 @@ impl From<&ExplainedRate> for v1::ExplainedRate {
             log10_k: rate.log10_k,
             sigma: rate.sigma,
             source: rate.source.clone(),
+            extent: rate.extent,
         }
     }
 }
@@ -223,6 +238,7 @@ impl From<v1::ExplainedRate> for ExplainedRate {
             log10_k: rate.log10_k,
             sigma: rate.sigma,
             source: rate.source,
+            extent: rate.extent,
         }
     }
 }
@@ -268,19 +284,27 @@ impl From<&CoursePoint> for v1::CoursePoint {
             anions: point.anions,
             electrophile: point.electrophile,
             product: point.product,
+            losses: point.losses.iter().map(loss).collect(),
         }
     }
 }
 
-impl From<v1::CoursePoint> for CoursePoint {
-    fn from(point: v1::CoursePoint) -> Self {
-        CoursePoint {
+impl TryFrom<v1::CoursePoint> for CoursePoint {
+    type Error = ConversionError;
+
+    fn try_from(point: v1::CoursePoint) -> Result<Self, ConversionError> {
+        Ok(CoursePoint {
             time_s: point.time_s,
             substrate: point.substrate,
             anions: point.anions,
             electrophile: point.electrophile,
             product: point.product,
-        }
+            losses: point
+                .losses
+                .iter()
+                .map(loss_from)
+                .collect::<Result<_, _>>()?,
+        })
     }
 }
 
@@ -321,16 +345,31 @@ impl From<&Advice> for v1::Advice {
         v1::Advice {
             change: advice.change.clone(),
             expected_yield: advice.expected_yield,
+            p_hit: advice.p_hit,
+            selectivity: advice.selectivity,
+            largest_loss: advice
+                .largest_loss
+                .map_or(v1::Channel::Unspecified, v1::Channel::from)
+                .into(),
         }
     }
 }
 
-impl From<v1::Advice> for Advice {
-    fn from(advice: v1::Advice) -> Self {
-        Advice {
+impl TryFrom<v1::Advice> for Advice {
+    type Error = ConversionError;
+
+    fn try_from(advice: v1::Advice) -> Result<Self, ConversionError> {
+        Ok(Advice {
             change: advice.change,
             expected_yield: advice.expected_yield,
-        }
+            p_hit: advice.p_hit,
+            selectivity: advice.selectivity,
+            largest_loss: enums::optional_from_wire::<_, v1::Channel>(
+                "Advice.largest_loss",
+                &Channel::ALL,
+                advice.largest_loss,
+            )?,
+        })
     }
 }
 
@@ -342,6 +381,8 @@ mod tests {
     /// Every field has a value of its own, so that a swapped pair is seen.
     fn explanation() -> Explanation {
         Explanation {
+            summary: vec!["the base is strong".into(), "the attack is fast".into()],
+            limiting_reagent: Some("electrophile".into()),
             expected_yield: Some(0.81),
             yield_sigma: Some(0.12),
             yield_on_limiting: Some(0.84),
@@ -385,9 +426,11 @@ mod tests {
                 log10_k: -1.5,
                 sigma: 0.6,
                 source: "a line".into(),
+                extent: Some(0.77),
             }],
             doubts: vec![Doubt {
                 quantity: "pKa of an ester".into(),
+                parameter: Some("H_ESTER".into()),
                 value: 29.5,
                 sigma: 0.41,
                 unit: "pK".into(),
@@ -418,6 +461,7 @@ mod tests {
                 anions: 0.5,
                 electrophile: 0.3,
                 product: 0.4,
+                losses: vec![(Channel::OAttack, 0.02), (Channel::OtherSite, 0.01)],
             }],
             cautions: vec![Caution {
                 category: Category::Pyrophoric,
@@ -430,6 +474,9 @@ mod tests {
             advice: vec![Advice {
                 change: "solvent THF → DMF".into(),
                 expected_yield: 0.86,
+                p_hit: Some(0.92),
+                selectivity: Some(0.87),
+                largest_loss: Some(Channel::Solvolysis),
             }],
             model: "ef".into(),
         }

@@ -53,14 +53,14 @@ impl TryFrom<v1::Job> for Job {
     }
 }
 
-fn timestamp(unix_ms: u64) -> Timestamp {
+pub(crate) fn timestamp(unix_ms: u64) -> Timestamp {
     Timestamp {
         seconds: numbers::to_wire(unix_ms / 1000),
         nanos: (unix_ms % 1000) as i32 * 1_000_000,
     }
 }
 
-fn unix_ms(field: &'static str, time: &Timestamp) -> Result<u64, ConversionError> {
+pub(crate) fn unix_ms(field: &'static str, time: &Timestamp) -> Result<u64, ConversionError> {
     let seconds: u64 = numbers::from_wire(field, time.seconds)?;
     let nanos: u64 = numbers::from_wire(field, time.nanos)?;
     seconds

@@ -1,6 +1,6 @@
 //! Why an engine did not do what it was asked.
 
-use enolattice_grid::{GridError, InputError, Place};
+use enolattice_grid::{GridError, InputError};
 use enolattice_scheduler::SchedulerError;
 use enolattice_store::{StoreError, TokenError};
 
@@ -81,16 +81,10 @@ impl EngineError {
         reason: &str,
         remedy: &str,
     ) -> EngineError {
-        EngineError::Input(vec![InputError {
-            place: Place {
-                field: field.to_owned(),
-                ..Place::default()
-            },
-            value: value.chars().take(80).collect(),
-            code,
-            reason: reason.to_owned(),
-            remedy: remedy.to_owned(),
-        }])
+        let shown: String = value.chars().take(80).collect();
+        EngineError::Input(vec![InputError::of_field(
+            code, field, shown, reason, remedy,
+        )])
     }
 
     /// The store was asked for although the engine was opened without one.

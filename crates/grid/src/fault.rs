@@ -20,6 +20,25 @@ pub struct InputError {
     pub remedy: String,
 }
 
+impl InputError {
+    /// A fault of a field that stands in no file.
+    pub fn of_field(
+        code: &'static str,
+        field: impl Into<String>,
+        value: impl Into<String>,
+        reason: impl Into<String>,
+        remedy: impl Into<String>,
+    ) -> InputError {
+        InputError {
+            place: Place::of_field(&field.into()),
+            value: value.into(),
+            code,
+            reason: reason.into(),
+            remedy: remedy.into(),
+        }
+    }
+}
+
 /// `file:line: field: value: reason; remedy`; a value that is empty is left out.
 impl fmt::Display for InputError {
     fn fmt(&self, f: &mut fmt::Formatter<'_>) -> fmt::Result {

@@ -168,6 +168,8 @@ pub struct Advice {
 pub struct Fate {
     /// Yield of the wanted product on substrate by the stiff reference at the mean of all parameters, 0–1.
     pub product: f64,
+    /// Substrate that is left, neutral and as anion, on the substrate charged, 0–1.
+    pub left: f64,
     /// Time after which half of that product is there, s from the first electrophile; `None` where there is none.
     pub half_time_s: Option<f64>,
     /// Losses of substrate, largest first; fractions of the substrate charged.

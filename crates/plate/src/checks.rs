@@ -40,6 +40,7 @@ pub(crate) fn findings(
     recipes: &[Recipe],
     supply: &Supply,
     transfers: &[Transfer],
+    half_times_s: &[Option<f64>],
     deck: &Deck,
     plates: PlateFormat,
 ) -> Vec<Finding> {
@@ -49,7 +50,7 @@ pub(crate) fn findings(
     vapours(recipes, supply, deck, &mut findings);
     water(recipes, supply, &mut findings);
     lifetimes(supply, transfers, deck, &mut findings);
-    skew(recipes, transfers, deck, &mut findings);
+    skew(recipes, transfers, half_times_s, deck, &mut findings);
     hazards(recipes, supply, &mut findings);
     findings.sort_by_key(|finding| finding.severity != "warning");
     findings
@@ -277,8 +278,15 @@ fn lifetimes(supply: &Supply, transfers: &[Transfer], deck: &Deck, findings: &mu
     }
 }
 
-/// First and last well of a plate begin and end at different times.
-fn skew(recipes: &[Recipe], transfers: &[Transfer], deck: &Deck, findings: &mut Vec<Finding>) {
+/// First and last well of a plate begin and end at different times. That counts where a reaction is still going on at the end:
+/// where half of its product takes longer than a fifth of the time.
+fn skew(
+    recipes: &[Recipe],
+    transfers: &[Transfer],
+    half_times_s: &[Option<f64>],
+    deck: &Deck,
+    findings: &mut Vec<Finding>,
+) {
     let plates: BTreeSet<usize> = recipes.iter().map(|recipe| recipe.plate).collect();
     for plate in plates {
         let Some(recipe) = recipes.iter().find(|recipe| recipe.plate == plate) else {
@@ -287,15 +295,27 @@ fn skew(recipes: &[Recipe], transfers: &[Transfer], deck: &Deck, findings: &mut 
         let start_s = duration_s(transfers, last_reagent(plate), deck);
         let end_s = duration_s(transfers, quench(plate), deck);
         let time_s = recipe.cell.conditions.time_h * 3600.0;
-        let share = (start_s - end_s).abs() / time_s;
+        let differ_s = (start_s - end_s).abs();
+        let going_on: Vec<f64> = recipes
+            .iter()
+            .zip(half_times_s)
+            .filter(|(recipe, _)| recipe.plate == plate && recipe.content.runs())
+            .filter_map(|(_, half)| half.filter(|half| *half > time_s / 5.0))
+            .collect();
+        let quickest_s = going_on.iter().copied().fold(f64::INFINITY, f64::min);
         let text = format!(
-            "{}: the last reagent takes {:.0} s from the first to the last well and the quench {:.0} s, in nearly the same order: their times of reaction differ by {:.1} %",
+            "{}: the last reagent takes {start_s:.0} s from the first to the last well and the quench {end_s:.0} s, in nearly the same order: times of reaction differ by {differ_s:.0} s; {} wells are still reacting at the end{}",
             plate_name(plate),
-            start_s,
-            end_s,
-            100.0 * share
+            going_on.len(),
+            match going_on.is_empty() {
+                true => String::new(),
+                false => format!(
+                    ", the quickest of them with half of its product after {:.1} h",
+                    quickest_s / 3600.0
+                ),
+            }
         );
-        findings.push(match share > 0.1 {
+        findings.push(match differ_s > 0.1 * quickest_s.min(time_s) {
             true => warning("time skew", text),
             false => note("time skew", text),
         });

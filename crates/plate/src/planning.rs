@@ -97,7 +97,16 @@ pub fn plan(ground: &Ground<'_>) -> Result<Plan, Vec<InputError>> {
     );
     let sample_nl = (1000.0 * well.sample_ul / deck.step_nl).round() * deck.step_nl;
     let transfers = transfers(&recipes, &mut supply, sample_nl, deck);
-    let wells = wells::planned(ground, &placed, &recipes, &supply);
+    let fates = wells::fates(ground, &placed);
+    let wells = wells::planned(ground, &placed, &recipes, &supply, &fates);
+    let half_times_s: Vec<Option<f64>> = placed
+        .iter()
+        .map(|placed| {
+            fates
+                .get(&placed.candidate)
+                .and_then(|fate| fate.half_time_s)
+        })
+        .collect();
     let mut plates: Vec<Plate> = Vec::new();
     for (plate, balance) in (0..choice.plates.len()).zip(&layout.plates) {
         let on_plate = || {
@@ -139,7 +148,14 @@ pub fn plan(ground: &Ground<'_>) -> Result<Plan, Vec<InputError>> {
         left_out: ground.left_out.clone(),
         program: program(&recipes, &supply, sample_nl),
         movements: movements(&transfers, deck),
-        findings: findings(&recipes, &supply, &transfers, deck, request.plates.wells),
+        findings: findings(
+            &recipes,
+            &supply,
+            &transfers,
+            &half_times_s,
+            deck,
+            request.plates.wells,
+        ),
         transfers,
         stocks: supply.stocks,
     })

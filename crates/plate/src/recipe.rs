@@ -36,6 +36,11 @@ impl Content {
         }
     }
 
+    /// Whether the reaction of its cell runs in it.
+    pub fn runs(self) -> bool {
+        matches!(self, Content::Cell | Content::Positive)
+    }
+
     /// Whether it is a control.
     pub fn is_control(self) -> bool {
         self != Content::Cell
@@ -45,9 +50,7 @@ impl Content {
     pub fn holds(self, role: Role) -> bool {
         match role {
             Role::Base => !matches!(self, Content::NoBase | Content::SolventOnly),
-            Role::Electrophile => {
-                matches!(self, Content::Cell | Content::Positive | Content::NoBase)
-            }
+            Role::Electrophile => self.runs() || self == Content::NoBase,
             Role::Substrate | Role::Additive => self != Content::SolventOnly,
             Role::Solvent | Role::Quench | Role::Diluent => true,
         }

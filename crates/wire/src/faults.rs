@@ -1,6 +1,6 @@
 //! Faults of the input, as the details of an error carry them.
 
-use enolattice_grid::{InputError, Place};
+use enolattice_grid::InputError;
 
 use crate::v1::{self, ErrorReason};
 
@@ -15,16 +15,7 @@ pub fn bad_field(
     why: impl Into<String>,
     remedy: impl Into<String>,
 ) -> InputError {
-    InputError {
-        place: Place {
-            field: field.into(),
-            ..Place::default()
-        },
-        value: value.into(),
-        code: reason.as_str_name(),
-        reason: why.into(),
-        remedy: remedy.into(),
-    }
+    InputError::of_field(reason.as_str_name(), field, value, why, remedy)
 }
 
 impl From<&InputError> for v1::InputFault {

@@ -2,7 +2,7 @@
 
 use std::collections::{BTreeSet, HashMap};
 
-use enolattice_grid::{CampaignSpec, CellId, FaultCode, Grid, InputError, Place, Stock};
+use enolattice_grid::{CampaignSpec, CellId, FaultCode, Grid, InputError, Stock};
 use enolattice_plate::{LimitAxis, PlanRequest, Quota};
 
 use crate::EngineError;
@@ -11,16 +11,13 @@ use crate::EngineError;
 pub(super) type Vetoed = BTreeSet<u64>;
 
 pub(super) fn fault(field: String, value: &str, reason: String, remedy: &str) -> InputError {
-    InputError {
-        place: Place {
-            field,
-            ..Place::default()
-        },
-        value: value.to_owned(),
-        code: FaultCode::PlanImpossible.name(),
+    InputError::of_field(
+        FaultCode::PlanImpossible.name(),
+        field,
+        value,
         reason,
-        remedy: remedy.to_owned(),
-    }
+        remedy,
+    )
 }
 
 /// Cells that must be chosen.

@@ -1,6 +1,8 @@
 //! What each well of a plan says.
 
-use enolattice_model::{Cell, Contents, Draw, Model, cautions};
+use std::collections::BTreeMap;
+
+use enolattice_model::{Cell, Contents, Draw, Fate, Model, cautions};
 use rayon::prelude::*;
 
 use crate::checks::water_umol;
@@ -8,8 +10,8 @@ use crate::planning::Ground;
 use crate::planning::controls::Placed;
 use crate::stocks::Supply;
 use crate::{
-    Content, PlannedWell, Reagent, Recipe, Role, USUAL_TOLERANCE_PPM, WellCaution, WellMasses,
-    WellSpecies, well_masses,
+    PlannedWell, Reagent, Recipe, Role, USUAL_TOLERANCE_PPM, WellCaution, WellMasses, WellSpecies,
+    well_masses,
 };
 
 /// Products of which less than this share of the substrate is expected are not looked for.
@@ -19,16 +21,33 @@ const COUNTS: f64 = 0.01;
 /// Draws in which a well is scored again in the medium as it is dosed.
 const DRAWS_AGAIN: usize = 32;
 
+/// Where the material of each candidate goes that is run; those that the reference gives up on are not among them.
+pub(super) type Fates = BTreeMap<usize, Fate>;
+
+/// Solves each candidate that is run once, however many wells it has.
+pub(super) fn fates(ground: &Ground<'_>, placed: &[Placed]) -> Fates {
+    let model = ground.grid.model();
+    let runs: BTreeMap<usize, &Cell> = placed
+        .iter()
+        .filter(|placed| placed.content.runs())
+        .map(|placed| (placed.candidate, &placed.cell))
+        .collect();
+    runs.into_par_iter()
+        .filter_map(|(candidate, cell)| Some((candidate, model.fate(cell).ok().flatten()?)))
+        .collect()
+}
+
 /// All wells, in the order of the recipes.
 pub(super) fn planned(
     ground: &Ground<'_>,
     placed: &[Placed],
     recipes: &[Recipe],
     supply: &Supply,
+    fates: &Fates,
 ) -> Vec<PlannedWell> {
     let at: Vec<usize> = (0..recipes.len()).collect();
     at.into_par_iter()
-        .map(|at| one(ground, &placed[at], &recipes[at], supply, at))
+        .map(|at| one(ground, &placed[at], &recipes[at], supply, at, fates))
         .collect()
 }
 
@@ -38,16 +57,14 @@ fn one(
     recipe: &Recipe,
     supply: &Supply,
     at: usize,
+    fates: &Fates,
 ) -> PlannedWell {
     let model = ground.grid.model();
     let candidate = &ground.candidates[placed.candidate];
     let cell = &recipe.cell;
     let medium = supply.medium(at, model.library());
-    let runs = matches!(recipe.content, Content::Cell | Content::Positive);
-    let fate = match runs {
-        true => model.fate(cell).ok().flatten(),
-        false => None,
-    };
+    let runs = recipe.content.runs();
+    let fate = fates.get(&placed.candidate).filter(|_| runs);
     let base_umol = recipe.amount_umol(Role::Base, supply.volume_ul);
     let note = ground
         .request
@@ -72,7 +89,7 @@ fn one(
         yield_as_dosed: runs
             .then(|| as_dosed(model, cell, &medium, ground.draws))
             .flatten(),
-        reference_yield: fate.as_ref().map(|fate| fate.product),
+        reference_yield: fate.map(|fate| fate.product),
         water_per_base: (base_umol > 0.0).then(|| water_umol(recipe, supply, at) / base_umol),
         medium,
         cautions: cautions(&Contents::from(cell))
@@ -84,7 +101,7 @@ fn one(
                 source: caution.source,
             })
             .collect(),
-        masses: masses(recipe, fate.as_ref()),
+        masses: masses(recipe, fate),
         note: note.map_or(String::new(), |pin| pin.note.clone()),
     }
 }
@@ -144,16 +161,13 @@ fn as_dosed(model: &Model, cell: &Cell, medium: &[(String, f64)], draws: &[Draw]
     Some(yields.iter().sum::<f64>() / yields.len() as f64)
 }
 
-fn masses(recipe: &Recipe, fate: Option<&enolattice_model::Fate>) -> WellMasses {
+fn masses(recipe: &Recipe, fate: Option<&Fate>) -> WellMasses {
     let cell = &recipe.cell;
     let mut species: Vec<WellSpecies> = Vec::new();
     if recipe.content.holds(Role::Substrate) {
-        let found = fate.map_or(0.0, |fate| {
-            let lost: f64 = fate.losses.iter().map(|(_, share)| share).sum();
-            (1.0 - fate.product - lost).clamp(0.0, 1.0)
-        });
+        let left = fate.map_or(0.0, |fate| fate.left);
         let molecule = cell.substrate.molecule.clone();
-        species.extend(WellSpecies::new("substrate", molecule, found));
+        species.extend(WellSpecies::new("substrate", molecule, left));
     }
     if recipe.content.holds(Role::Electrophile) {
         let molecule = cell.electrophile.molecule.clone();
@@ -171,8 +185,5 @@ fn masses(recipe: &Recipe, fate: Option<&enolattice_model::Fate>) -> WellMasses 
             ));
         }
     }
-    well_masses(&species, USUAL_TOLERANCE_PPM).unwrap_or(WellMasses {
-        species: Vec::new(),
-        clashes: Vec::new(),
-    })
+    well_masses(&species, USUAL_TOLERANCE_PPM).expect("5 ppm is a tolerance")
 }

@@ -13,16 +13,7 @@ pub(crate) fn fault(
     reason: impl Into<String>,
     remedy: impl Into<String>,
 ) -> InputError {
-    InputError {
-        place: Place {
-            field: field.into(),
-            ..Place::default()
-        },
-        value: value.to_string(),
-        code: code.name(),
-        reason: reason.into(),
-        remedy: remedy.into(),
-    }
+    InputError::of_field(code.name(), field, value.to_string(), reason, remedy)
 }
 
 /// Longest text of a request, and of a line in it, bytes.

@@ -14,8 +14,8 @@ use crate::request::fault;
 use crate::stocks::supply;
 use crate::transfers::{movements, plate_name, program, transfers};
 use crate::{
-    Candidate, Choice, ColumnsBy, Content, Gains, Layout, LayoutItem, LayoutOptions, LeftOut, Plan,
-    PlanRequest, Plate, Quota, Recipe, Role, Task, WellOrder, lay_out,
+    Candidate, Choice, ColumnsBy, Content, Finding, Gains, Layout, LayoutItem, LayoutOptions,
+    LeftOut, Plan, PlanRequest, Plate, Quota, Recipe, Role, Task, WellOrder, lay_out,
 };
 use controls::Placed;
 
@@ -131,6 +131,15 @@ pub fn plan(ground: &Ground<'_>) -> Result<Plan, Vec<InputError>> {
             balance: balance.clone(),
         });
     }
+    let mut findings = findings(
+        &recipes,
+        &supply,
+        &transfers,
+        &half_times_s,
+        deck,
+        request.plates.wells,
+    );
+    findings.splice(0..0, empty_places(ground, &choice));
     let campaign = ground.grid.campaign();
     Ok(Plan {
         precedence: PRECEDENCE.to_owned(),
@@ -148,14 +157,7 @@ pub fn plan(ground: &Ground<'_>) -> Result<Plan, Vec<InputError>> {
         left_out: ground.left_out.clone(),
         program: program(&recipes, &supply, sample_nl),
         movements: movements(&transfers, deck),
-        findings: findings(
-            &recipes,
-            &supply,
-            &transfers,
-            &half_times_s,
-            deck,
-            request.plates.wells,
-        ),
+        findings,
         transfers,
         stocks: supply.stocks,
     })
@@ -185,7 +187,6 @@ fn carrier<'a>(ground: &Ground<'a>) -> Result<Option<&'a Solvent>, Vec<InputErro
 
 fn chosen(ground: &Ground<'_>) -> Result<Choice, Vec<InputError>> {
     let request = ground.request;
-    let room = request.plates.wells.wells() - request.controls.wells() as usize;
     let pinned: Vec<usize> = request
         .choice
         .pin
@@ -204,7 +205,7 @@ fn chosen(ground: &Ground<'_>) -> Result<Choice, Vec<InputError>> {
         weights: request.choice.aim.weights(),
         design: request.choice.design,
         plates: request.plates.count as usize,
-        places: usable(ground, room) / request.choice.replicates as usize,
+        places: places(ground),
         pinned: &pinned,
         quotas: &ground.quotas,
         top_list: &ground.top_list,
@@ -221,6 +222,28 @@ fn chosen(ground: &Ground<'_>) -> Result<Choice, Vec<InputError>> {
             "change the request",
         )]
     })
+}
+
+/// Said where fewer cells were found than there is room for.
+fn empty_places(ground: &Ground<'_>, choice: &Choice) -> Option<Finding> {
+    let request = ground.request;
+    let places = places(ground) * request.plates.count as usize;
+    let chosen: usize = choice.plates.iter().map(|plate| plate.members.len()).sum();
+    (chosen < places).then(|| Finding {
+        severity: "warning".to_owned(),
+        check: "empty places".to_owned(),
+        text: format!(
+            "{chosen} cells were chosen for {places} places: limits, the shelf or the number of cells allow no more; raise \
+             `most` of `choice.limits`, or ask for fewer wells"
+        ),
+    })
+}
+
+/// Different cells that a plate has room for.
+fn places(ground: &Ground<'_>) -> usize {
+    let request = ground.request;
+    let room = request.plates.wells.wells() - request.controls.wells() as usize;
+    usable(ground, room) / request.choice.replicates as usize
 }
 
 /// Wells of a plate that cells may have: all but those of controls, and without the edge where it stays empty.

@@ -400,6 +400,34 @@ fn what_cannot_be_dosed_is_refused_with_the_way_out() {
     }
 }
 
+/// One cell of each of three substrates on a plate of 96 wells: that the rest stays empty is said.
+#[test]
+fn places_that_stay_empty_are_said() {
+    let once = [0, 1, 2].map(|substrate| Quota {
+        axis: 0,
+        value: substrate,
+        least: 0,
+        most: 1,
+        name: String::new(),
+        reason: String::new(),
+    });
+    let request = PlanRequest {
+        deck: deck(),
+        ..PlanRequest::default()
+    };
+    let plan = planned(&request, once.to_vec()).expect("a plan");
+    let found = plan
+        .findings
+        .iter()
+        .find(|finding| finding.check == "empty places");
+    // 96 less eight controls
+    assert!(found.is_some_and(|finding| {
+        finding
+            .text
+            .starts_with("3 cells were chosen for 88 places")
+    }));
+}
+
 /// Sodium hydride gives hydrogen with ethanol: nobody makes a stock of it there. And with a carrier there is one stock of each
 /// substrate, whatever the solvents.
 #[test]

@@ -7,8 +7,13 @@
 //! Atmos. Environ. 1997, 31, 3459): one linearisation a step, and every linear invariant is kept, so that substrate is
 //! conserved to the rounding of the elimination. Where a reagent runs out or reactions of 1e9 per second begin, such a
 //! step would have to be very short; it is then one of backward Euler, `y = y₀ + Δt·f(y)` by Newton's method.
+//!
+//! Steps are compiled twice, for any processor and for those with wide registers. Both give the same bits: nothing is
+//! fused, and each lane is on its own.
 
 mod system;
+
+use pulp::{Arch, Simd, WithSimd};
 
 use crate::lanes::Lanes;
 use crate::network::{Amounts, Network, Stage};
@@ -23,15 +28,17 @@ const RELATIVE: f64 = 5e-2;
 /// Step below zero that is accepted, as a share of the substrate charged.
 const BELOW_ZERO: f64 = 1e-4;
 /// First step of a program, as a share of its first stage.
-const FIRST_SHARE: f64 = 1e-2;
+const FIRST_SHARE: f64 = 1e-3;
 /// Bounds of the change of the step from one to the next.
 const SHORTEN: f64 = 0.1;
 const LENGTHEN: f64 = 8.0;
 /// Step as a share of that which would just be accepted.
 const CAREFUL: f64 = 0.9;
+/// Step as a share of the time after which one that was refused took an amount below zero.
+const BEFORE_ZERO: f64 = 0.5;
 /// A step is not made shorter than this share of the stage: backward Euler takes it instead.
 const SHORTEST: f64 = 1e-3;
-/// Step after one of backward Euler, as a multiple of it.
+/// Step after one of backward Euler, as a multiple of it, and the next of its kind.
 const AFTER_EULER: f64 = 2.0;
 /// A step longer than this share of the time that is left takes all of it.
 const LAST_SHARE: f64 = 0.7;
@@ -39,7 +46,7 @@ const LAST_SHARE: f64 = 0.7;
 const REFUSALS: usize = 3;
 
 /// Newton iterations of a backward Euler step at most.
-const NEWTON: usize = 12;
+const NEWTON: usize = 8;
 /// Halvings at most of a step that Newton's method does not solve.
 const HALVINGS: usize = 1;
 /// Change of an amount, as a share of the substrate charged, at which Newton's method ends:
@@ -50,12 +57,21 @@ const NEGATIVE: f64 = 1e-8;
 /// An iteration may overshoot all that is charged by this factor, mol/L of water included, no more.
 const MOST: f64 = 2.0;
 /// Least share of an amount that one iteration leaves.
-const CUT: f64 = 0.1;
+const CUT: f64 = 0.01;
 
 /// Marches networks of the same reactions and stages from the amounts given to the end.
 pub(crate) fn march<const L: usize>(networks: &[Network; L], start: [Amounts; L]) -> [Amounts; L] {
+    march_on(Arch::new(), networks, start)
+}
+
+/// The same with the steps compiled for a kind of processor.
+fn march_on<const L: usize>(
+    arch: Arch,
+    networks: &[Network; L],
+    start: [Amounts; L],
+) -> [Amounts; L] {
     let mut pots = start;
-    let mut marcher = Marcher::new(networks, &pots);
+    let mut marcher = Marcher::new(arch, networks, &pots);
     for stage in &networks[0].stages {
         marcher.stage(stage, &mut pots);
     }
@@ -65,6 +81,7 @@ pub(crate) fn march<const L: usize>(networks: &[Network; L], start: [Amounts; L]
 
 /// Networks on their way.
 struct Marcher<const L: usize> {
+    arch: Arch,
     system: System<L>,
     y: Vector<L>,
     /// Rate at which each species is added.
@@ -79,9 +96,10 @@ struct Marcher<const L: usize> {
 }
 
 impl<const L: usize> Marcher<L> {
-    fn new(networks: &[Network; L], pots: &[Amounts; L]) -> Marcher<L> {
+    fn new(arch: Arch, networks: &[Network; L], pots: &[Amounts; L]) -> Marcher<L> {
         let system = System::new(networks);
         Marcher {
+            arch,
             y: system.gather(pots),
             added: [Lanes::all(0.0); ROOM],
             scale: networks[0].charged[0],
@@ -107,28 +125,38 @@ impl<const L: usize> Marcher<L> {
         let shortest = SHORTEST * stage.duration_s;
         let mut left = stage.duration_s;
         let mut refused = 0;
+        // the last step if it was one of backward Euler
+        let mut last_euler = 0.0;
         while left > 0.0 {
             let is_stuck = refused == REFUSALS || self.dt < shortest;
             self.dt = self.dt.max(shortest);
             let is_last = self.dt > LAST_SHARE * left;
-            let dt = if is_last { left } else { self.dt };
-            if is_stuck {
-                self.euler(dt, HALVINGS);
-                self.dt = AFTER_EULER * dt;
-            } else {
-                let error = self.rodas(dt);
-                let change = (CAREFUL / cube_root(error)).clamp(SHORTEN, LENGTHEN);
-                if error > 1.0 {
+            let mut dt = if is_last { left } else { self.dt };
+            let tried = (!is_stuck).then(|| self.arch.dispatch(RodasStep(self, dt)));
+            match tried {
+                Some(Step::Taken { change }) => {
+                    last_euler = 0.0;
+                    // a step cut short by the end of the stage says little about the next one
+                    self.dt = if is_last {
+                        self.dt.max(dt * change)
+                    } else {
+                        dt * change
+                    };
+                }
+                Some(Step::Refused { change }) if last_euler == 0.0 => {
                     refused += 1;
                     self.dt = dt * change;
                     continue;
                 }
-                // a step cut short by the end of the stage says little about the next one
-                self.dt = if is_last {
-                    self.dt.max(dt * change)
-                } else {
-                    dt * change
-                };
+                refused_again => {
+                    // the same trouble as a step ago: a longer step of the kind that got over it
+                    if refused_again.is_some() {
+                        dt = dt.min(AFTER_EULER * last_euler);
+                    }
+                    self.euler(dt, HALVINGS);
+                    self.dt = AFTER_EULER * dt;
+                    last_euler = dt;
+                }
             }
             left -= dt;
             refused = 0;
@@ -136,7 +164,8 @@ impl<const L: usize> Marcher<L> {
     }
 
     /// A step of RODAS3, taken if its error, as a share of what is accepted, is not above 1.
-    fn rodas(&mut self, dt: f64) -> f64 {
+    #[inline(always)]
+    fn rodas(&mut self, dt: f64) -> Step {
         let n = self.system.len();
         let per_s = Lanes::all(1.0 / dt);
         let [k1, k2, k3, k4, y] = &mut self.scratch;
@@ -168,29 +197,42 @@ impl<const L: usize> Marcher<L> {
         let below_zero = BELOW_ZERO * self.scale;
         let mut worst = 0.0_f64;
         let mut is_finite = true;
+        let mut until_zero = 0.0_f64;
         for i in 0..n {
             y[i] += k4[i];
             for l in 0..L {
                 let (before, after) = (self.y[i].0[l], y[i].0[l]);
                 worst = worst.max(k4[i].0[l].abs() / (absolute + relative * after.abs()));
                 // an amount that was negative before is no fault of this step
-                worst = worst.max((before.min(0.0) - after) / below_zero);
+                let below = (before.min(0.0) - after) / below_zero;
+                if below > 1.0 && before > 0.0 {
+                    let share = before / (before - after);
+                    until_zero = if until_zero == 0.0 {
+                        share
+                    } else {
+                        until_zero.min(share)
+                    };
+                }
+                worst = worst.max(below);
                 is_finite &= after.is_finite();
             }
         }
         if !is_finite {
-            return f64::INFINITY;
+            return Step::Refused { change: SHORTEN };
         }
-        if worst <= 1.0 {
-            std::mem::swap(&mut self.y, y);
+        let change = (CAREFUL / cube_root(worst)).clamp(SHORTEN, LENGTHEN);
+        if worst > 1.0 {
+            let change = change.max(BEFORE_ZERO * until_zero);
+            return Step::Refused { change };
         }
-        worst
+        std::mem::swap(&mut self.y, y);
+        Step::Taken { change }
     }
 
     /// A step of backward Euler, in two halves where Newton's method finds no solution.
     fn euler(&mut self, dt: f64, halvings: usize) {
         let start = self.y;
-        let is_solved = self.newton(dt);
+        let is_solved = self.arch.dispatch(EulerStep(self, dt));
         let is_finite = self.is_finite();
         if halvings == 0 && !is_finite {
             // no numbers: the pot stays as it was, and its mass with it
@@ -211,6 +253,7 @@ impl<const L: usize> Marcher<L> {
     }
 
     /// Newton's method for a step of backward Euler; whether it found the solution.
+    #[inline(always)]
     fn newton(&mut self, dt: f64) -> bool {
         let (n, coupled) = (self.system.len(), self.system.coupled());
         let per_s = Lanes::all(1.0 / dt);
@@ -222,15 +265,15 @@ impl<const L: usize> Marcher<L> {
             }
             self.system.factor(&self.y, dt, &mut x);
             self.system.solve(&mut x);
-            let is_solved = self.is_solved(&x, dt);
+            let is_solved = self.is_solved(&start, &x, dt);
             let is_last = is_solved || iteration == NEWTON;
             for (i, x) in x.iter().enumerate().take(n) {
                 let y = self.y[i] + *x;
                 // an iteration that would leave the positive root is cut; the next full one mends the mass
                 let is_cut = !is_last && i < coupled;
-                let least = Lanes::all(CUT) * self.y[i];
+                let (before, start) = (self.y[i], start[i]);
                 self.y[i] = if is_cut {
-                    Lanes::each(|l| y.0[l].max(least.0[l]).min(self.most))
+                    Lanes::each(|l| y.0[l].max(least(before.0[l], start.0[l])).min(self.most))
                 } else {
                     y
                 };
@@ -243,18 +286,60 @@ impl<const L: usize> Marcher<L> {
     }
 
     /// Whether what Newton's method would change after the step `x` is below the tolerance.
-    fn is_solved(&self, x: &Vector<L>, dt: f64) -> bool {
+    #[inline(always)]
+    fn is_solved(&self, start: &Vector<L>, x: &Vector<L>, dt: f64) -> bool {
         let (mut change, mut least) = (0.0_f64, 0.0_f64);
-        for (y, x) in self.y.iter().zip(x).take(self.system.coupled()) {
+        for i in 0..self.system.coupled() {
             for l in 0..L {
-                change = change.max(x.0[l].abs());
-                least = least.min(y.0[l] + x.0[l]);
+                let step = x[i].0[l];
+                change = change.max(step.abs());
+                // an amount that was negative before the step is no fault of it
+                least = least.min(self.y[i].0[l] + step - start[i].0[l].min(0.0));
             }
         }
         let tolerance = TOLERANCE * self.scale;
         change < tolerance
             && least > -NEGATIVE * self.scale
             && dt * self.system.left_out(&self.y, x) < tolerance
+    }
+}
+
+/// What became of a step of RODAS3; the step to try next, as a multiple of it.
+enum Step {
+    Taken { change: f64 },
+    Refused { change: f64 },
+}
+
+/// A step of RODAS3, to be compiled for several kinds of processors.
+struct RodasStep<'a, const L: usize>(&'a mut Marcher<L>, f64);
+
+impl<const L: usize> WithSimd for RodasStep<'_, L> {
+    type Output = Step;
+
+    #[inline(always)]
+    fn with_simd<S: Simd>(self, _: S) -> Step {
+        self.0.rodas(self.1)
+    }
+}
+
+/// Newton's method, to be compiled for several kinds of processors.
+struct EulerStep<'a, const L: usize>(&'a mut Marcher<L>, f64);
+
+impl<const L: usize> WithSimd for EulerStep<'_, L> {
+    type Output = bool;
+
+    #[inline(always)]
+    fn with_simd<S: Simd>(self, _: S) -> bool {
+        self.0.newton(self.1)
+    }
+}
+
+/// The least that an iteration of Newton's method leaves of an amount; one that was negative before the step may stay so.
+fn least(amount: f64, start: f64) -> f64 {
+    if amount > 0.0 {
+        CUT * amount
+    } else {
+        start.min(0.0)
     }
 }
 
@@ -273,6 +358,25 @@ mod tests {
     use crate::program::Charge;
     use crate::reference::integrate;
     use crate::sample::{cell, cells, model};
+
+    #[test]
+    fn wide_registers_change_no_bit() {
+        let model = model();
+        let values = Values::means();
+        let nudges = [-2.0, -1.0, 0.0, 1.0, 2.0].map(|attack| Nudge {
+            acidity: 0.5 * attack,
+            attack,
+        });
+        for cell in cells(&model) {
+            let charge = Charge::of(&cell);
+            let networks = charge.reacting(&cell, &values, nudges);
+            let [any, wide] = [Arch::Scalar, Arch::new()]
+                .map(|arch| march_on(arch, &networks, [charge.start(); 5]));
+            for (any, wide) in any.iter().zip(&wide) {
+                assert_eq!(any.0.map(f64::to_bits), wide.0.map(f64::to_bits));
+            }
+        }
+    }
 
     #[test]
     fn substrate_is_conserved_to_rounding() {

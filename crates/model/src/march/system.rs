@@ -127,6 +127,7 @@ impl<const L: usize> System<L> {
     }
 
     /// Adds `f(y)` to `f`; a negative amount reacts no more.
+    #[inline(always)]
     pub(super) fn rates(&self, y: &Vector<L>, f: &mut Vector<L>) {
         let mut start = 0;
         let amount = |of: u8| y[usize::from(of) % ROOM].max(0.0);
@@ -150,6 +151,7 @@ impl<const L: usize> System<L> {
     /// Linearises at `y` for `γ·Δt` and eliminates; adds `f(y)` to `f`.
     ///
     /// What a species loses stands on its diagonal, so the elimination needs no pivoting.
+    #[inline(always)]
     pub(super) fn factor(&mut self, y: &Vector<L>, step_s: f64, f: &mut Vector<L>) {
         self.linearise(y, step_s, f);
         let mut updates = self.pattern.updates.iter();
@@ -172,6 +174,7 @@ impl<const L: usize> System<L> {
         }
     }
 
+    #[inline(always)]
     fn linearise(&mut self, y: &Vector<L>, step_s: f64, f: &mut Vector<L>) {
         self.step_s = step_s;
         self.matrix.fill(Lanes::all(0.0));
@@ -221,6 +224,7 @@ impl<const L: usize> System<L> {
     }
 
     /// Solves `(1/(γ·Δt) − ∂f/∂y)·x = right` with the factors, in place.
+    #[inline(always)]
     pub(super) fn solve(&self, x: &mut Vector<L>) {
         let (matrix, pattern) = (&self.matrix[..], &self.pattern);
         let mut start = 0;
@@ -259,6 +263,7 @@ impl<const L: usize> System<L> {
 
     /// Largest rate that the linearisation leaves out for a step `x` from `y`: `k·δa·δb`, and of three reactants each
     /// two with the amount of the third.
+    #[inline(always)]
     pub(super) fn left_out(&self, y: &Vector<L>, x: &Vector<L>) -> f64 {
         let mut most = 0.0_f64;
         for term in self.terms.iter().filter(|term| term.order > 1) {

@@ -9,6 +9,7 @@ mod directions;
 mod hostile;
 mod lifecycle;
 mod live;
+mod maps;
 mod plans;
 mod portable;
 mod ranking;

@@ -1,8 +1,9 @@
 //! An engine in this process or behind a server: the commands cannot tell them apart.
 
 use enolattice_engine::{
-    Agreement, CellDescription, Comparison, DryRun, Engine, EngineConfig, ExplainTarget, Job,
-    PlanSummary, RankPage, RankQuery, ReagentRow, SiteReport, Submission,
+    Agreement, CellDescription, CellMap, Comparison, Distribution, DryRun, Engine, EngineConfig,
+    ExplainTarget, Job, MapQuery, PlanSummary, RankPage, RankQuery, ReagentRow, ReportQuery,
+    SiteReport, Submission,
 };
 use enolattice_grid::{CampaignSpec, InputError};
 use enolattice_model::Explanation;
@@ -124,6 +125,28 @@ impl Client {
         }
     }
 
+    /// The cells of a job over two axes.
+    pub(crate) async fn map_cells(&self, query: MapQuery) -> Result<CellMap, Fault> {
+        match self {
+            Client::Embedded(engine) => Ok(engine.map_cells(query).await?),
+            Client::Remote(server) => Ok(server.map_cells(query).await?),
+        }
+    }
+
+    /// How the scores of a job are distributed.
+    pub(crate) async fn distribution(
+        &self,
+        job: &str,
+        filter: &str,
+    ) -> Result<Distribution, Fault> {
+        match self {
+            Client::Embedded(engine) => Ok(engine
+                .distribution(job.to_owned(), filter.to_owned())
+                .await?),
+            Client::Remote(server) => Ok(server.distribution(job, filter).await?),
+        }
+    }
+
     /// What a cell is made of and everything about it.
     pub(crate) async fn explain(
         &self,
@@ -159,6 +182,14 @@ impl Client {
         match self {
             Client::Embedded(engine) => Ok(engine.plans(job).await?),
             Client::Remote(server) => Ok(server.plans(job).await?),
+        }
+    }
+
+    /// A report of a job or of a plan, as HTML.
+    pub(crate) async fn report(&self, query: ReportQuery) -> Result<String, Fault> {
+        match self {
+            Client::Embedded(engine) => Ok(engine.report(query).await?),
+            Client::Remote(server) => Ok(server.report(&query).await?),
         }
     }
 

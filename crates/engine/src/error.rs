@@ -22,6 +22,12 @@ pub enum EngineError {
         /// The id given.
         plan: String,
     },
+    /// Neither a job nor a plan.
+    #[error("there is no job and no plan `{id}`; `jobs` and `plans` list them")]
+    NothingKept {
+        /// The id given.
+        id: String,
+    },
     /// No such cell.
     #[error("job `{job}` has no cell {cell}; its cells are 0 to {last}")]
     CellUnknown {

@@ -3,8 +3,10 @@
 //! Used embedded by the command line and behind the server, so that both give the same answer.
 
 mod agreement;
+mod axis;
 mod comparison;
 mod differences;
+mod distribution;
 mod dry_run;
 mod engine;
 mod error;
@@ -14,6 +16,7 @@ mod given;
 mod grids;
 mod job;
 mod kept_plans;
+mod map;
 mod models;
 mod nearest;
 mod open;
@@ -21,6 +24,8 @@ mod plan;
 mod query;
 mod rank;
 mod reagents;
+mod report;
+mod screened;
 mod shared_cells;
 mod sites;
 mod submit;
@@ -29,15 +34,19 @@ mod watch;
 pub use agreement::{
     AcidityAgreement, Agreement, CheckedAcidity, CheckedRun, Miss, YieldAgreement,
 };
+pub use axis::Axis;
 pub use comparison::{AxisOverlap, ComparedCell, Comparison, Difference, Mover};
+pub use distribution::{Distribution, Histogram};
 pub use dry_run::{AxisSize, DryRun, NotCovered};
 pub use engine::Engine;
 pub use error::EngineError;
 pub use job::{Job, JobState, Submission};
 pub use kept_plans::PlanSummary;
+pub use map::{CellMap, MapAxis, MapField, MapQuery};
 pub use open::EngineConfig;
 pub use query::{
-    Axis, CellDescription, CellQuery, ExplainTarget, Order, RankPage, RankQuery, RankedCell,
-    ReagentRow, ReasonedSite, SiteReport,
+    CellDescription, CellQuery, ExplainTarget, Order, RankPage, RankQuery, RankedCell, ReagentRow,
+    ReasonedSite, SiteReport,
 };
+pub use report::ReportQuery;
 pub use sites::element_symbol;

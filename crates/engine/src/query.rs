@@ -3,6 +3,8 @@
 use enolattice_grid::MeasuredYield;
 use enolattice_model::{AcidSite, Channel, SiteReasons};
 
+use crate::Axis;
+
 /// Order of a ranking; ties always by cell, ascending; unknown last.
 #[derive(Clone, Copy, Debug, Default, PartialEq, Eq, Hash)]
 pub enum Order {
@@ -15,23 +17,6 @@ pub enum Order {
     Selectivity,
     /// Feasibility, descending.
     Feasibility,
-}
-
-/// An axis of a campaign.
-#[derive(Clone, Copy, Debug, PartialEq, Eq, Hash)]
-pub enum Axis {
-    /// Substrates.
-    Substrate,
-    /// Bases.
-    Base,
-    /// Electrophiles.
-    Electrophile,
-    /// Solvents.
-    Solvent,
-    /// Temperatures.
-    Temperature,
-    /// Additives.
-    Additive,
 }
 
 /// A question for a page of a ranking.

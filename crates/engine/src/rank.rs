@@ -1,11 +1,10 @@
 //! Pages of a ranking.
 
-use enolattice_grid::{CellDigits, CellId, Grid};
+use enolattice_grid::{CellId, Grid};
 use enolattice_model::{Category, Cell, Score, Severity};
 use enolattice_store::{PageToken, RankRequest};
 
-use crate::engine::{blocking, job_id};
-use crate::filter::Filter;
+use crate::engine::blocking;
 use crate::{Axis, Engine, EngineError, Order, RankPage, RankQuery, RankedCell};
 
 /// Rows of a page where the question does not say.
@@ -20,19 +19,12 @@ impl Engine {
     /// [`EngineError::JobUnknown`], [`EngineError::Input`] where the filter cannot be read,
     /// [`EngineError::PageToken`], [`EngineError::Store`].
     pub async fn rank(&self, query: RankQuery) -> Result<RankPage, EngineError> {
-        let queue = self.queue()?;
-        let (store, grids) = (queue.store.clone(), queue.grids.clone());
+        let shelf = self.queue()?.shelf();
         blocking(move || {
-            let job = job_id(&query.job)?;
-            let filter =
-                Filter::read(&query.filter).map_err(|fault| EngineError::Input(vec![*fault]))?;
-            let record = store.job(job)?;
-            let grid = grids.of_record(&record)?;
-            let filter = filter
-                .bind(grid.campaign())
-                .map_err(|fault| EngineError::Input(vec![*fault]))?;
+            let screened = shelf.screened(&query.job, &query.filter)?;
+            let grid = &screened.grid;
             let token = PageToken {
-                job,
+                job: screened.job,
                 order: query.order.into(),
                 filter: query.filter,
                 best_per: query.best_per.map_or("", Axis::name).to_owned(),
@@ -41,13 +33,10 @@ impl Engine {
                 "" => None,
                 text => Some(token.decode(text)?),
             };
-            let keeps = |cell: u64, score: &Score| {
-                grid.digits(CellId(cell))
-                    .is_some_and(|digits| filter.passes(&digits, score))
-            };
-            let digit = query.best_per.map(Axis::digit);
-            let group = |cell: u64| match (digit, grid.digits(CellId(cell))) {
-                (Some(digit), Some(digits)) => digit(&digits),
+            let keeps = |cell: u64, score: &Score| screened.keeps(cell, score);
+            let best_per = query.best_per;
+            let group = |cell: u64| match (best_per, grid.digits(CellId(cell))) {
+                (Some(axis), Some(digits)) => axis.digit(&digits),
                 _ => 0,
             };
             let page_size = if query.page_size == 0 {
@@ -60,18 +49,22 @@ impl Engine {
                 after,
                 skip: query.skip,
                 limit: page_size as usize,
-                filter: if filter.passes_all() {
+                filter: if screened.filter.passes_all() {
                     None
                 } else {
                     Some(&keeps)
                 },
-                best_per: if digit.is_some() { Some(&group) } else { None },
+                best_per: if best_per.is_some() {
+                    Some(&group)
+                } else {
+                    None
+                },
             };
-            let ranking = store.rank(job, &request)?;
+            let ranking = screened.store.rank(screened.job, &request)?;
             let rows = (ranking.first_rank..).zip(&ranking.rows);
             Ok(RankPage {
                 rows: rows
-                    .filter_map(|(rank, (cell, score))| ranked(&grid, rank, *cell, score))
+                    .filter_map(|(rank, (cell, score))| ranked(grid, rank, *cell, score))
                     .collect(),
                 next_page_token: ranking
                     .next
@@ -81,31 +74,6 @@ impl Engine {
             })
         })
         .await
-    }
-}
-
-impl Axis {
-    /// The axis's name.
-    pub fn name(self) -> &'static str {
-        match self {
-            Axis::Substrate => "substrate",
-            Axis::Base => "base",
-            Axis::Electrophile => "electrophile",
-            Axis::Solvent => "solvent",
-            Axis::Temperature => "temperature",
-            Axis::Additive => "additive",
-        }
-    }
-
-    fn digit(self) -> fn(&CellDigits) -> u32 {
-        match self {
-            Axis::Substrate => |digits| digits.substrate,
-            Axis::Base => |digits| digits.base,
-            Axis::Electrophile => |digits| digits.electrophile,
-            Axis::Solvent => |digits| digits.solvent,
-            Axis::Temperature => |digits| digits.temperature,
-            Axis::Additive => |digits| digits.additive,
-        }
     }
 }
 

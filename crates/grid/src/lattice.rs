@@ -233,6 +233,21 @@ impl Lattice {
         ))
     }
 
+    /// Digits of a run of cells of one segment, in the order of [`AXES`]; none beyond the segment.
+    pub fn walk(&self, cells: Range<u64>) -> impl Iterator<Item = [u32; 13]> + '_ {
+        let place = self.locate(CellId(cells.start));
+        let segment = place.map(|(segment, offset)| (&self.segments[segment], offset));
+        let cells = cells.end.saturating_sub(cells.start);
+        segment.into_iter().flat_map(move |(segment, offset)| {
+            let mut digits = segment.digits(offset);
+            (0..cells.min(segment.cells() - offset)).map(move |_| {
+                let these = digits;
+                segment.advance(&mut digits);
+                these
+            })
+        })
+    }
+
     /// The cell with these digits.
     pub fn cell_of(&self, digits: CellDigits) -> Option<CellId> {
         let digits = digits.to_array();

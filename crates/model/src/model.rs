@@ -148,6 +148,11 @@ impl Model {
         doubts(cell, draws, yields)
     }
 
+    /// Version of what a score means beside data and parameters; a part of the fingerprint.
+    pub fn arithmetic(&self) -> u32 {
+        ARITHMETIC_VERSION
+    }
+
     /// Fingerprint of code version, data, coefficients and arithmetic.
     pub fn fingerprint(&self) -> Fingerprint {
         let mut hash = Sha256::new();

@@ -2,7 +2,7 @@
 
 use std::sync::Arc;
 
-use enolattice_engine::{Engine, RankQuery};
+use enolattice_engine::{Engine, MapQuery, RankQuery};
 use enolattice_wire::v1::job_service_server::JobService;
 use enolattice_wire::{movers, submission, v1};
 use tokio::sync::watch;
@@ -141,6 +141,32 @@ impl JobService for Jobs {
             .await
             .map(Response::new)
             .map_err(|refusal: Refusal| refusal.status(&metadata))
+    }
+
+    async fn map_cells(
+        &self,
+        request: Request<v1::MapCellsRequest>,
+    ) -> Result<Response<v1::MapCellsResponse>, Status> {
+        let (metadata, _, request) = request.into_parts();
+        let answer = async {
+            let map = self.engine.map_cells(MapQuery::try_from(request)?).await?;
+            Ok(v1::MapCellsResponse::from(&map))
+        };
+        answer
+            .await
+            .map(Response::new)
+            .map_err(|refusal: Refusal| refusal.status(&metadata))
+    }
+
+    async fn get_distribution(
+        &self,
+        request: Request<v1::GetDistributionRequest>,
+    ) -> Result<Response<v1::GetDistributionResponse>, Status> {
+        let (metadata, _, request) = request.into_parts();
+        let v1::GetDistributionRequest { job_id, filter } = request;
+        let answer = self.engine.distribution(job_id, filter).await;
+        let known = answer.map_err(|error| Refusal::from(error).status(&metadata))?;
+        Ok(Response::new(v1::GetDistributionResponse::from(&known)))
     }
 
     async fn compare_jobs(

@@ -8,6 +8,7 @@ mod chemistry_service;
 mod job_service;
 mod paging;
 mod plan_service;
+mod report_service;
 mod serve;
 mod status;
 mod upload;

@@ -7,6 +7,7 @@ use enolattice_engine::Engine;
 use enolattice_wire::v1::chemistry_service_server::ChemistryServiceServer;
 use enolattice_wire::v1::job_service_server::JobServiceServer;
 use enolattice_wire::v1::plan_service_server::PlanServiceServer;
+use enolattice_wire::v1::report_service_server::ReportServiceServer;
 use enolattice_wire::{FILE_DESCRIPTOR_SET, MAX_MESSAGE_BYTES};
 use tokio::net::TcpListener;
 use tokio::sync::watch;
@@ -18,6 +19,7 @@ use tonic_health::server::HealthReporter;
 use crate::chemistry_service::Chemistry;
 use crate::job_service::Jobs;
 use crate::plan_service::Plans;
+use crate::report_service::Reports;
 
 /// Time that requests in flight get after the shutdown began.
 const DRAIN_DEADLINE: Duration = Duration::from_secs(10);
@@ -57,8 +59,10 @@ pub async fn serve(
         .max_decoding_message_size(MAX_MESSAGE_BYTES);
     let chemistry = ChemistryServiceServer::new(Chemistry::new(engine.clone()))
         .max_decoding_message_size(MAX_MESSAGE_BYTES);
-    let plans =
-        PlanServiceServer::new(Plans::new(engine)).max_decoding_message_size(MAX_MESSAGE_BYTES);
+    let plans = PlanServiceServer::new(Plans::new(engine.clone()))
+        .max_decoding_message_size(MAX_MESSAGE_BYTES);
+    let reports =
+        ReportServiceServer::new(Reports::new(engine)).max_decoding_message_size(MAX_MESSAGE_BYTES);
     let (health, health_service) = tonic_health::server::health_reporter();
     report(&health, ServingStatus::Serving).await;
     let router = Server::builder()
@@ -69,7 +73,8 @@ pub async fn serve(
         .add_service(reflection().build_v1alpha()?)
         .add_service(jobs)
         .add_service(chemistry)
-        .add_service(plans);
+        .add_service(plans)
+        .add_service(reports);
     let stopped = async {
         shutdown.await;
         tracing::info!("shutting down");
@@ -101,6 +106,7 @@ async fn report(health: &HealthReporter, status: ServingStatus) {
         "enolattice.v1.JobService",
         "enolattice.v1.ChemistryService",
         "enolattice.v1.PlanService",
+        "enolattice.v1.ReportService",
     ] {
         health.set_service_status(service, status).await;
     }

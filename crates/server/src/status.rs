@@ -138,6 +138,7 @@ impl Refusal {
                 EngineError::Input(_) => ErrorReason::InputInvalid,
                 EngineError::JobUnknown { .. } => ErrorReason::JobUnknown,
                 EngineError::PlanUnknown { .. } => ErrorReason::PlanUnknown,
+                EngineError::NothingKept { .. } => ErrorReason::NothingKept,
                 EngineError::CellUnknown { .. } => ErrorReason::CellUnknown,
                 EngineError::WrongState { .. } => ErrorReason::JobWrongState,
                 EngineError::RequestIdReused { .. } => ErrorReason::RequestIdReused,
@@ -172,6 +173,7 @@ impl Refusal {
         let facts = match self {
             Refusal::Engine(EngineError::JobUnknown { job }) => vec![("job_id", job.clone())],
             Refusal::Engine(EngineError::PlanUnknown { plan }) => vec![("plan_id", plan.clone())],
+            Refusal::Engine(EngineError::NothingKept { id }) => vec![("id", id.clone())],
             Refusal::Engine(EngineError::CellUnknown { job, cell, last }) => vec![
                 ("job_id", job.clone()),
                 ("cell", cell.to_string()),
@@ -196,9 +198,10 @@ impl Refusal {
 /// The status code of a reason, as `error.proto` states it.
 fn code(reason: ErrorReason) -> Code {
     match reason {
-        ErrorReason::JobUnknown | ErrorReason::PlanUnknown | ErrorReason::CellUnknown => {
-            Code::NotFound
-        }
+        ErrorReason::JobUnknown
+        | ErrorReason::PlanUnknown
+        | ErrorReason::NothingKept
+        | ErrorReason::CellUnknown => Code::NotFound,
         ErrorReason::JobWrongState => Code::FailedPrecondition,
         ErrorReason::RequestIdReused => Code::AlreadyExists,
         ErrorReason::StoreUnavailable | ErrorReason::ShuttingDown => Code::Unavailable,
@@ -367,6 +370,11 @@ mod tests {
             (EngineError::JobUnknown { job: job() }, Code::NotFound, true),
             (
                 EngineError::PlanUnknown { plan: "p".into() },
+                Code::NotFound,
+                true,
+            ),
+            (
+                EngineError::NothingKept { id: "x".into() },
                 Code::NotFound,
                 true,
             ),

@@ -6,12 +6,15 @@ use std::fs::File;
 use std::path::Path;
 use std::sync::{Arc, Mutex, MutexGuard, PoisonError, RwLock};
 
+use enolattice_grid::Columns;
+use rayon::prelude::*;
+
 use crate::database::Database;
-use crate::index::JobIndex;
+use crate::index::{JobIndex, Summary};
 use crate::journal::Journal;
 use crate::plans::Plans;
 use crate::rank::{self, View};
-use crate::scan::Scan;
+use crate::scan::{Scan, read_block};
 use crate::{
     Created, JobId, JobRecord, JobState, NewJob, OpenReport, PlanId, PlanRecord, RankRequest,
     Ranking, StateChange, StoreError, open, record,
@@ -19,6 +22,9 @@ use crate::{
 
 /// Longest id of a request, in bytes.
 const REQUEST_ID_BYTES: usize = 128;
+
+/// Blocks that one sum of a pass takes at least: what is summed may be large.
+const BLOCKS_OF_A_SUM: usize = 16;
 
 /// A job in memory. Where both locks are taken, the record's comes first.
 #[derive(Debug)]
@@ -226,6 +232,38 @@ impl Store {
             filter: request.filter,
         };
         rank::page(&scan, &view, request)
+    }
+
+    /// One pass over all acknowledged cells of a job; the answer and the number of these cells.
+    ///
+    /// `take` gets each block's first cell and its scores. Blocks are read in parallel and in any
+    /// order: neither `take` nor `merge` may depend on it.
+    ///
+    /// # Errors
+    /// [`StoreError::JobUnknown`], [`StoreError::BlockDamaged`].
+    pub fn fold<T: Send>(
+        &self,
+        job: JobId,
+        empty: impl Fn() -> T + Sync,
+        take: impl Fn(&mut T, u64, &Columns) + Sync,
+        merge: impl Fn(T, T) -> T + Sync,
+    ) -> Result<(T, u64), StoreError> {
+        let seen = {
+            let entry = self.entry(job)?;
+            let index = lock(&entry.index);
+            index.seen_by(index.acknowledged)
+        };
+        let of_block = |mut sum: T, block: &Summary| {
+            let columns = read_block(&self.database, job, block)?;
+            take(&mut sum, block.first_cell, &columns);
+            Ok(sum)
+        };
+        let sum = seen
+            .par_iter()
+            .with_min_len(BLOCKS_OF_A_SUM)
+            .try_fold(&empty, of_block)
+            .try_reduce(&empty, |a, b| Ok(merge(a, b)))?;
+        Ok((sum, seen.iter().map(|block| u64::from(block.cells)).sum()))
     }
 
     /// The blocks that a page may show.

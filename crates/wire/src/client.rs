@@ -14,8 +14,8 @@
 //! ```
 
 use enolattice_engine::{
-    Agreement, CellDescription, Comparison, DryRun, ExplainTarget, Job, RankPage, RankQuery,
-    ReagentRow, SiteReport, Submission,
+    Agreement, CellDescription, CellMap, Comparison, Distribution, DryRun, ExplainTarget, Job,
+    MapQuery, RankPage, RankQuery, ReagentRow, SiteReport, Submission,
 };
 use enolattice_grid::{CampaignSpec, InputError};
 use enolattice_model::Explanation;
@@ -29,6 +29,7 @@ use crate::v1::ErrorReason;
 use crate::v1::chemistry_service_client::ChemistryServiceClient;
 use crate::v1::job_service_client::JobServiceClient;
 use crate::v1::plan_service_client::PlanServiceClient;
+use crate::v1::report_service_client::ReportServiceClient;
 use crate::{
     DETAIL_BYTES_KEY, MAX_ANSWER_BYTES, MAX_DETAIL_BYTES, MAX_MESSAGE_BYTES, MAX_PAGE_SIZE,
     MAX_SITES_MOLECULES, RemoteError, bad_field, v1,
@@ -36,6 +37,7 @@ use crate::{
 
 mod places;
 mod plans;
+mod reports;
 mod upload;
 
 /// A connection to a remote engine; clones share it.
@@ -45,6 +47,7 @@ pub struct Client {
     jobs: JobServiceClient<Channel>,
     chemistry: ChemistryServiceClient<Channel>,
     plans: PlanServiceClient<Channel>,
+    reports: ReportServiceClient<Channel>,
 }
 
 impl Client {
@@ -74,7 +77,9 @@ impl Client {
                 .max_decoding_message_size(MAX_ANSWER_BYTES),
             chemistry: ChemistryServiceClient::new(channel.clone())
                 .max_decoding_message_size(MAX_ANSWER_BYTES),
-            plans: PlanServiceClient::new(channel).max_decoding_message_size(MAX_ANSWER_BYTES),
+            plans: PlanServiceClient::new(channel.clone())
+                .max_decoding_message_size(MAX_ANSWER_BYTES),
+            reports: ReportServiceClient::new(channel),
         })
     }
 
@@ -211,6 +216,35 @@ impl Client {
             .clone()
             .rank_cells(v1::RankCellsRequest::from(&query))
             .await;
+        Ok(answer
+            .map_err(|status| self.error(&status))?
+            .into_inner()
+            .try_into()?)
+    }
+
+    /// The cells of a job over two axes; see `Engine::map_cells`.
+    ///
+    /// # Errors
+    /// As the embedded engine.
+    pub async fn map_cells(&self, query: MapQuery) -> Result<CellMap, RemoteError> {
+        let request = v1::MapCellsRequest::from(&query);
+        let answer = self.jobs.clone().map_cells(request).await;
+        Ok(answer
+            .map_err(|status| self.error(&status))?
+            .into_inner()
+            .try_into()?)
+    }
+
+    /// How the scores of a job are distributed; see `Engine::distribution`.
+    ///
+    /// # Errors
+    /// As the embedded engine.
+    pub async fn distribution(&self, job: &str, filter: &str) -> Result<Distribution, RemoteError> {
+        let request = v1::GetDistributionRequest {
+            job_id: job.to_owned(),
+            filter: filter.to_owned(),
+        };
+        let answer = self.jobs.clone().get_distribution(request).await;
         Ok(answer
             .map_err(|status| self.error(&status))?
             .into_inner()

@@ -12,11 +12,13 @@ mod enums;
 mod explanation;
 mod job;
 mod library;
+mod map;
 mod measured;
 mod media;
 mod numbers;
 mod plan;
 mod ranking;
+mod report;
 mod stock;
 
 pub use agreement::measured;

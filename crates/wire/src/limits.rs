@@ -9,7 +9,7 @@ pub const MAX_ANSWER_BYTES: usize = 32 << 20;
 /// Largest campaign that `SubmitJobStream` puts together.
 pub const MAX_STREAMED_CAMPAIGN_BYTES: usize = 64 << 20;
 
-/// Size about which a message of a plan's stream is ended.
+/// Size about which a message of a stream of a plan or a report is ended.
 pub const PART_BYTES: usize = 256 << 10;
 
 /// Most transfers of a message of `StreamTransfers`.

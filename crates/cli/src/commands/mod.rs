@@ -11,6 +11,7 @@ mod plan;
 mod plans;
 mod rank;
 mod reagents;
+mod report;
 mod screen;
 mod serve;
 mod sites;
@@ -48,6 +49,7 @@ enum Command {
     Explain(Box<explain::Explain>),
     Plan(plan::Plan),
     Plans(plans::Plans),
+    Report(report::Report),
     Compare(compare::Compare),
     CheckMeasured(check_measured::CheckMeasured),
     Sites(sites::Sites),
@@ -85,6 +87,7 @@ pub(crate) async fn run(program: Program) -> Result<(), Fault> {
         Command::Explain(command) => command.run().await,
         Command::Plan(command) => command.run().await,
         Command::Plans(command) => command.run().await,
+        Command::Report(command) => command.run().await,
         Command::Compare(command) => command.run().await,
         Command::CheckMeasured(command) => command.run().await,
         Command::Sites(command) => command.run().await,

@@ -102,6 +102,20 @@ pub(crate) enum AxisName {
     Temperature,
     #[value(name = "additive")]
     Additive,
+    #[value(name = "formation_temperature")]
+    FormationTemperature,
+    #[value(name = "base_equiv")]
+    BaseEquiv,
+    #[value(name = "electrophile_equiv")]
+    ElectrophileEquiv,
+    #[value(name = "concentration")]
+    Concentration,
+    #[value(name = "time")]
+    Time,
+    #[value(name = "dosing")]
+    Dosing,
+    #[value(name = "addition")]
+    Addition,
 }
 
 impl From<AxisName> for Axis {
@@ -113,6 +127,49 @@ impl From<AxisName> for Axis {
             AxisName::Solvent => Axis::Solvent,
             AxisName::Temperature => Axis::Temperature,
             AxisName::Additive => Axis::Additive,
+            AxisName::FormationTemperature => Axis::FormationTemperature,
+            AxisName::BaseEquiv => Axis::BaseEquiv,
+            AxisName::ElectrophileEquiv => Axis::ElectrophileEquiv,
+            AxisName::Concentration => Axis::Concentration,
+            AxisName::Time => Axis::Time,
+            AxisName::Dosing => Axis::Dosing,
+            AxisName::Addition => Axis::Addition,
+        }
+    }
+}
+
+/// Two axes with a comma between them.
+pub(crate) fn map_axes(text: &str) -> Result<[Axis; 2], String> {
+    let axis = |name: &str| {
+        AxisName::from_str(name.trim(), true)
+            .map(Axis::from)
+            .map_err(|_| {
+                let names = Axis::ALL.map(Axis::name).join(", ");
+                format!("`{name}` is no axis; the axes are {names}")
+            })
+    };
+    match text.split_once(',') {
+        Some((rows, columns)) => Ok([axis(rows)?, axis(columns)?]),
+        None => Err("name two axes with a comma between them, e.g. `base,solvent`".to_owned()),
+    }
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    #[test]
+    fn a_map_has_two_axes() {
+        assert_eq!(map_axes("base,solvent"), Ok([Axis::Base, Axis::Solvent]));
+        assert!(map_axes("base").is_err_and(|reason| reason.contains("comma")));
+        assert!(map_axes("base,wind").is_err_and(|reason| reason.contains("`wind` is no axis")));
+    }
+
+    #[test]
+    fn axes_are_called_alike_everywhere() {
+        for axis in Axis::ALL {
+            let name = AxisName::from_str(axis.name(), false);
+            assert_eq!(name.map(Axis::from), Ok(axis));
         }
     }
 }

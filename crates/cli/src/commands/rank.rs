@@ -1,15 +1,18 @@
 //! `rank`: the cells of a job, best first.
 
-use clap::Args;
-use enolattice_engine::{RankQuery, RankedCell};
+use clap::{Args, ValueEnum};
+use enolattice_engine::{Axis, MapQuery, RankQuery, RankedCell};
 
 use super::EngineOptions;
-use super::options::{AxisName, OrderName};
+use super::options::{AxisName, OrderName, map_axes};
 use crate::client::{Client, Need};
 use crate::fault::Fault;
-use crate::json::CellLine;
-use crate::output::{print, print_json_line, talk};
-use crate::text::{cell_table, count, safety_notice};
+use crate::json::{CellLine, DistributionDocument, MapLine};
+use crate::output::{print, print_json, print_json_line, talk};
+use crate::text::{
+    MapOf, MapStyle, cell_table, count, distribution_page, map_page, may_colour, safety_notice,
+    width,
+};
 
 /// Most rows asked for at once.
 const LARGEST_PAGE: u64 = 1000;
@@ -28,7 +31,7 @@ pub(super) struct Rank {
     /// Which cells to keep.
     #[arg(long, value_name = "FILTER", default_value = "")]
     filter: String,
-    /// Rows to print; 0: all.
+    /// Rows to print, of a map the best ones; 0: all.
     #[arg(long, value_name = "N", default_value_t = 50)]
     limit: u64,
     /// Rows to leave out before.
@@ -37,9 +40,25 @@ pub(super) struct Rank {
     /// Only the best cell of each value of this axis.
     #[arg(long, value_enum, value_name = "AXIS")]
     best_per: Option<AxisName>,
+    /// A map of the cells over two axes instead of a list, e.g. `substrate,base`.
+    #[arg(long, value_name = "AXIS,AXIS", value_parser = map_axes,
+        conflicts_with_all = ["order", "skip", "best_per", "distribution"])]
+    map: Option<[Axis; 2]>,
+    /// What the map shows of each field.
+    #[arg(
+        long,
+        value_enum,
+        value_name = "WHAT",
+        default_value_t,
+        requires = "map"
+    )]
+    of: MapOfName,
+    /// Histograms of expected yield and p_hit instead of a list.
+    #[arg(long, conflicts_with_all = ["order", "skip", "best_per", "limit"])]
+    distribution: bool,
     #[command(flatten)]
     engine: EngineOptions,
-    /// Print JSON: one cell a line.
+    /// Print JSON: one cell, or field of a map, a line.
     #[arg(long)]
     json: bool,
 }
@@ -47,7 +66,11 @@ pub(super) struct Rank {
 impl Rank {
     pub(super) async fn run(self) -> Result<(), Fault> {
         let client = Client::open(&self.engine, Need::Jobs).await?;
-        let ranked = self.print_pages(&client).await;
+        let ranked = match self.map {
+            Some(axes) => self.print_map(&client, axes).await,
+            None if self.distribution => self.print_distribution(&client).await,
+            None => self.print_pages(&client).await,
+        };
         client.close().await?;
         ranked
     }
@@ -87,18 +110,80 @@ impl Rank {
         }
     }
 
+    async fn print_map(&self, client: &Client, [rows, columns]: [Axis; 2]) -> Result<(), Fault> {
+        let query = MapQuery {
+            job: self.job.clone(),
+            rows,
+            columns,
+            filter: self.filter.clone(),
+        };
+        let map = client.map_cells(query).await?;
+        if self.json {
+            return MapLine::all(&map).try_for_each(|line| print_json_line(&line));
+        }
+        let style = MapStyle {
+            of: self.of.into(),
+            most_rows: usize::try_from(self.limit).ok().filter(|limit| *limit > 0),
+            width: width(),
+            colour: may_colour(),
+        };
+        print(&format!("{}\n\n{}", map_page(&map, style), safety_notice()))
+    }
+
+    async fn print_distribution(&self, client: &Client) -> Result<(), Fault> {
+        let known = client.distribution(&self.job, &self.filter).await?;
+        if self.json {
+            return print_json(&DistributionDocument::from(known));
+        }
+        talk_of_cells(known.total, known.cells_done);
+        print(&format!(
+            "{}\n\n{}",
+            distribution_page(&known),
+            safety_notice()
+        ))
+    }
+
     fn print_rest(&self, kept: &[RankedCell], total: u64, cells_done: u64) -> Result<(), Fault> {
         if self.json {
             return Ok(());
         }
-        talk(&format!(
-            "{} cells in this ranking, {} screened",
-            count(total),
-            count(cells_done)
-        ));
+        talk_of_cells(total, cells_done);
         if kept.is_empty() {
             return Ok(());
         }
         print(&format!("{}\n\n{}", cell_table(kept), safety_notice()))
+    }
+}
+
+fn talk_of_cells(total: u64, cells_done: u64) {
+    talk(&format!(
+        "{} cells in this ranking, {} screened",
+        count(total),
+        count(cells_done)
+    ));
+}
+
+/// What a map shows of each field.
+#[derive(Clone, Copy, Debug, Default, ValueEnum)]
+enum MapOfName {
+    /// Greatest expected yield.
+    #[default]
+    Best,
+    /// Mean expected yield.
+    Mean,
+    /// Greatest probability of a hit.
+    PHit,
+    /// Mean probability of a hit.
+    MeanPHit,
+}
+
+impl From<MapOfName> for MapOf {
+    fn from(name: MapOfName) -> MapOf {
+        match name {
+            MapOfName::Best => MapOf::BestYield,
+            MapOfName::Mean => MapOf::MeanYield,
+            MapOfName::PHit => MapOf::BestPHit,
+            MapOfName::MeanPHit => MapOf::MeanPHit,
+        }
     }
 }

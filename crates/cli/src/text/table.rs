@@ -42,7 +42,7 @@ pub(super) fn table(
 }
 
 /// The width that there is, columns.
-pub(super) fn width() -> usize {
+pub(crate) fn width() -> usize {
     let wide = if std::io::stdout().is_terminal() {
         Table::new().width()
     } else {

@@ -103,7 +103,7 @@ impl TryFrom<v1::Job> for DryRun {
 
 fn not_covered(known: v1::NotCovered) -> Result<NotCovered, ConversionError> {
     Ok(NotCovered {
-        axis: enums::from_wire::<Axis, v1::Axis>("NotCovered.axis", &enums::AXES, known.axis)?,
+        axis: enums::from_wire::<Axis, v1::Axis>("NotCovered.axis", &Axis::ALL, known.axis)?,
         name: known.name,
         reason: known.why,
         cells: numbers::from_wire("NotCovered.cells", known.cells)?,

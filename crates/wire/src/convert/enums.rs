@@ -68,19 +68,16 @@ impl From<Axis> for v1::Axis {
             Axis::Solvent => v1::Axis::Solvent,
             Axis::Temperature => v1::Axis::Temperature,
             Axis::Additive => v1::Axis::Additive,
+            Axis::FormationTemperature => v1::Axis::FormationTemperature,
+            Axis::BaseEquiv => v1::Axis::BaseEquiv,
+            Axis::ElectrophileEquiv => v1::Axis::ElectrophileEquiv,
+            Axis::Concentration => v1::Axis::Concentration,
+            Axis::Time => v1::Axis::Time,
+            Axis::Dosing => v1::Axis::Dosing,
+            Axis::Addition => v1::Axis::Addition,
         }
     }
 }
-
-/// All axes that a ranking knows.
-pub(crate) const AXES: [Axis; 6] = [
-    Axis::Substrate,
-    Axis::Base,
-    Axis::Electrophile,
-    Axis::Solvent,
-    Axis::Temperature,
-    Axis::Additive,
-];
 
 impl From<Addition> for v1::AdditionOrder {
     fn from(addition: Addition) -> Self {
@@ -180,7 +177,7 @@ pub(crate) mod tests {
     #[test]
     fn closed_lists_are_one_to_one() {
         one_to_one::<_, v1::JobState>(&JOB_STATES);
-        one_to_one::<_, v1::Axis>(&AXES);
+        one_to_one::<_, v1::Axis>(&Axis::ALL);
         one_to_one::<_, v1::AdditionOrder>(&Addition::ALL);
         one_to_one::<_, v1::AcidityOrigin>(&ORIGINS);
         one_to_one::<_, v1::CautionSeverity>(&Severity::ALL);

@@ -114,7 +114,7 @@ fn order(order_by: &str) -> Result<Order, Vec<InputError>> {
 }
 
 fn best_per(number: i32) -> Result<Option<Axis>, Vec<InputError>> {
-    enums::optional_from_wire::<_, v1::Axis>("best_per", &enums::AXES, number).map_err(|_| {
+    enums::optional_from_wire::<_, v1::Axis>("best_per", &Axis::ALL, number).map_err(|_| {
         vec![bad_field(
             ErrorReason::ValueUnknown,
             "best_per",

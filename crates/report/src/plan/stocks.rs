@@ -1,0 +1,116 @@
+//! The stock sheet, to be printed and ticked off.
+
+use enolattice_plate::{Form, Plan, Role, Stock};
+use maud::{Markup, html};
+
+use crate::numbers::{fixed, short};
+use crate::page::boxed;
+
+/// Roles in the order of the sheet.
+const ROLES: [Role; 7] = [
+    Role::Substrate,
+    Role::Additive,
+    Role::Base,
+    Role::Electrophile,
+    Role::Solvent,
+    Role::Quench,
+    Role::Diluent,
+];
+
+/// The sheet, role by role, with a box to tick in front of every stock.
+pub(super) fn sheet(plan: &Plan) -> Markup {
+    let table = html! {
+        table.data.sheet {
+            thead {
+                tr {
+                    th scope="col" { "done" } th scope="col" { "stock" } th scope="col" { "of" }
+                    th scope="col" { "weigh or take" } th scope="col" { "make" } th scope="col" { "place" }
+                    th.num scope="col" { "wells" } th scope="col" { "lasts, kept" } th scope="col" { "hazard statements" }
+                }
+            }
+            @for role in ROLES {
+                @let stocks: Vec<&Stock> = plan.stocks.iter().filter(|stock| stock.role == role).collect();
+                @if !stocks.is_empty() {
+                    tbody {
+                        tr.group { th colspan="9" scope="rowgroup" { (plural(role)) } }
+                        @for stock in stocks { (row(stock)) }
+                    }
+                }
+            }
+        }
+    };
+    html! {
+        p.aside {
+            "A stock lasts until a twentieth of it is lost at room temperature. Hazard statements are GHS; "
+            q { "unknown" } " means that none are known to the library, not that there are none."
+        }
+        (boxed("Stock sheet", table))
+    }
+}
+
+fn row(stock: &Stock) -> Markup {
+    html! {
+        tr {
+            td.tick { input type="checkbox" aria-label={ "stock " (stock.label) " is made" }; }
+            td { strong { (stock.label) } }
+            td { bdi { (stock.reagent) } span.words { (stock.form.name()) } }
+            td { (taken(stock)) }
+            td { (made(stock)) }
+            td { (place(stock)) }
+            td.num { (stock.wells) }
+            td {
+                (stock.lasts_h.map_or("unknown".to_owned(), |hours| format!("{} h", short((10.0 * hours).round() / 10.0))))
+                @if !stock.keep.is_empty() { span.words { (stock.keep) } }
+            }
+            td { (stock.hazards) @for note in &stock.notes { span.words { (note) } } }
+        }
+    }
+}
+
+fn plural(role: Role) -> &'static str {
+    match role {
+        Role::Substrate => "Substrates",
+        Role::Additive => "Additives",
+        Role::Base => "Bases",
+        Role::Electrophile => "Electrophiles",
+        Role::Solvent => "Solvents",
+        Role::Quench => "Quench",
+        Role::Diluent => "Diluent",
+    }
+}
+
+fn taken(stock: &Stock) -> Markup {
+    html! {
+        @match (stock.weigh_mg, stock.take) {
+            (Some(mg), _) => {
+                (fixed(mg, 1)) " mg"
+                @if stock.purity < 1.0 { span.words { "of " (fixed(100.0 * stock.purity, 0)) " % content" } }
+            }
+            (None, Some((volume_ul, molar))) => {
+                (fixed(volume_ul / 1000.0, 2)) " mL of " (short(molar)) " mol/L"
+            }
+            (None, None) => "—",
+        }
+    }
+}
+
+fn made(stock: &Stock) -> Markup {
+    let in_solvent = !matches!(stock.form, Form::Liquid | Form::Solid);
+    html! {
+        @if stock.made_ul > 0.0 { (fixed(stock.made_ul / 1000.0, 2)) " mL" } @else { "into the wells" }
+        @if in_solvent {
+            span.words {
+                @if stock.concentration_m > 0.0 { (short(stock.concentration_m)) " mol/L " }
+                "in " bdi { (stock.solvent) }
+            }
+        }
+    }
+}
+
+fn place(stock: &Stock) -> String {
+    match &stock.sources[..] {
+        [] => "into the wells".to_owned(),
+        [one] => format!("{} {}", one.plate, one.well),
+        [first, .., last] => format!("{} {} to {}", first.plate, first.well, last.well),
+    }
+}

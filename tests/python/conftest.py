@@ -90,7 +90,7 @@ class Stubs:
         for file in files:
             module = importlib.import_module(f"enolattice.v1.{file.stem}_pb2")
             setattr(self, file.stem, module)
-        for service in ("job_service", "chemistry_service", "plan_service"):
+        for service in ("job_service", "chemistry_service", "plan_service", "report_service"):
             module = importlib.import_module(f"enolattice.v1.{service}_pb2_grpc")
             setattr(self, f"{service}_grpc", module)
 

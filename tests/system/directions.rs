@@ -6,7 +6,7 @@ use std::process::Command;
 use serde_json::Value;
 
 /// The crates in their order.
-const ORDER: [&str; 14] = [
+const ORDER: [&str; 16] = [
     "units",
     "molecule",
     "reagents",
@@ -19,6 +19,8 @@ const ORDER: [&str; 14] = [
     "engine",
     "wire",
     "server",
+    "records",
+    "columnar",
     "cli",
     "calibration",
 ];

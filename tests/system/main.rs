@@ -14,4 +14,5 @@ mod plans;
 mod portable;
 mod ranking;
 mod refusals;
+mod reports;
 mod standards;

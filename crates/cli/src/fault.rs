@@ -110,7 +110,7 @@ impl From<io::Error> for Fault {
     fn from(error: io::Error) -> Fault {
         match error.kind() {
             io::ErrorKind::BrokenPipe => Fault::ReaderGone,
-            _ => Fault::Service(format!("stdout cannot be written: {error}")),
+            _ => Fault::Service(format!("the output cannot be written: {error}")),
         }
     }
 }

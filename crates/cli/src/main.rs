@@ -6,8 +6,10 @@
 mod campaign_file;
 mod client;
 mod commands;
+mod export;
 mod fault;
 mod json;
+mod out_file;
 mod output;
 mod plan_folder;
 mod progress;

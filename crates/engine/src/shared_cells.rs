@@ -8,14 +8,13 @@ use enolattice_store::{JobId, Store};
 use rayon::prelude::*;
 
 use crate::EngineError;
+use crate::screened::STEPS;
 
 /// Blocks that are read side by side before their cells are counted.
 const BLOCKS_AT_ONCE: usize = 64;
 /// Blocks of the other job that are kept for the next cells of a block.
 const BLOCKS_KEPT: usize = 32;
 
-/// Yields are stored in steps of 1/65534; 65535 stands for unknown.
-const STEPS: u16 = 65_534;
 /// A yield that differs by more than this has moved: 0.1.
 const MOVED: u16 = STEPS / 10;
 

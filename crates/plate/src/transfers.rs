@@ -172,13 +172,11 @@ fn split(volume_nl: f64, deck: &Deck) -> Vec<f64> {
     parts
 }
 
-/// Movements of the head: with one uptake that serves as many wells as it holds liquid for, and with one for each transfer.
+/// Movements of the head. A naive list has one uptake for each transfer.
 #[derive(Clone, Copy, Debug, PartialEq, Eq, Serialize, Deserialize)]
 pub struct Movements {
-    /// Uptakes when one serves many wells.
+    /// Uptakes when one serves as many wells as it holds liquid for.
     pub uptakes: usize,
-    /// Uptakes when each transfer has its own.
-    pub naive_uptakes: usize,
     /// Deliveries: wells of a column that get the same volume of the same liquid count once for a multichannel head.
     pub deliveries: usize,
     /// Transfers.
@@ -219,7 +217,6 @@ pub(crate) fn movements(transfers: &[Transfer], deck: &Deck) -> Movements {
         .sum();
     Movements {
         uptakes,
-        naive_uptakes: transfers.len(),
         deliveries,
         transfers: transfers.len(),
     }

@@ -6,7 +6,7 @@ use crate::cautions;
 use crate::cell::ShownCell;
 use crate::charts::{bar, bar_words};
 use crate::numbers::{count, percent};
-use crate::page::boxed;
+use crate::page::{boxed, name};
 use crate::palette;
 use crate::structure::Structures;
 
@@ -16,7 +16,7 @@ pub(crate) fn cards(cells: &[ShownCell], structures: &mut Structures) -> Markup 
         div.cards {
             @for cell in cells {
                 article.card {
-                    h3 { bdi { (cell.substrate) } " + " bdi { (cell.electrophile) } }
+                    h3 { (name(&cell.substrate)) " + " (name(&cell.electrophile)) }
                     (scheme(cell, structures))
                     p.conditions { (cell.conditions()) }
                     div.numbers {
@@ -71,9 +71,9 @@ pub(crate) fn table(label: &str, cells: &[ShownCell]) -> Markup {
                 tbody {
                     @for cell in cells {
                         tr {
-                            td { bdi { (cell.substrate) } } td { bdi { (cell.electrophile) } }
-                            td { bdi { (cell.base) } }
-                            td { bdi { (cell.solvent) } @if let Some((additive, _)) = &cell.additive { " + " bdi { (additive) } } }
+                            td { (name(&cell.substrate)) } td { (name(&cell.electrophile)) }
+                            td { (name(&cell.base)) }
+                            td { (name(&cell.solvent)) @if let Some((additive, _)) = &cell.additive { " + " (name(additive)) } }
                             td data-v=(cell.temperature_c) {
                                 (crate::numbers::temperatures(cell.formation_temperature_c, cell.temperature_c))
                             }

@@ -4,6 +4,7 @@ use enolattice_model::Channel;
 use maud::{Markup, html};
 
 use crate::numbers::{fixed, short, temperatures};
+use crate::page::name;
 
 /// A cell as it is shown: what is in it and what is expected of it.
 #[derive(Clone, Debug, Default, PartialEq)]
@@ -126,9 +127,9 @@ impl ShownCell {
     /// Base, solvent and additive in a line.
     pub(crate) fn conditions(&self) -> Markup {
         html! {
-            bdi { (self.base) } " · " bdi { (self.solvent) }
+            (name(&self.base)) " · " (name(&self.solvent))
             @if let Some((additive, equiv)) = &self.additive {
-                " · " bdi { (additive) } " (" (short(*equiv)) " equiv)"
+                " · " (name(additive)) " (" (short(*equiv)) " equiv)"
             }
             " · " (temperatures(self.formation_temperature_c, self.temperature_c))
         }

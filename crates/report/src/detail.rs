@@ -8,7 +8,7 @@ use crate::cell::ShownCell;
 use crate::charts::{bar, bar_words, course, energy};
 use crate::job::ExplainedCell;
 use crate::numbers::{count, fixed, percent, short};
-use crate::page::boxed;
+use crate::page::{boxed, name};
 use crate::structure::Structures;
 
 /// Quantities of doubt that are shown.
@@ -27,7 +27,7 @@ pub(crate) fn details(cells: &[ExplainedCell], structures: &mut Structures) -> M
             @let cell = &explained.cell;
             article.detail {
                 h3 {
-                    bdi { (cell.substrate) } " + " bdi { (cell.electrophile) }
+                    (name(&cell.substrate)) " + " (name(&cell.electrophile))
                     span.n { " cell " (count(cell.cell)) @if !explained.place.is_empty() { ", " (explained.place) } }
                 }
                 p.conditions { (cell.conditions()) }

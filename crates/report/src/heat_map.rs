@@ -3,7 +3,7 @@
 use maud::{Markup, html};
 
 use crate::numbers::{bare_percent, count, percent};
-use crate::page::boxed;
+use crate::page::{boxed, name};
 use crate::palette;
 
 /// Expected yield and p_hit over two axes.
@@ -68,14 +68,14 @@ impl HeatMap {
                         tr {
                             td.corner { (self.row_axis) }
                             @for column in &self.columns {
-                                th scope="col" { span { bdi { (column) } } }
+                                th scope="col" { span { (name(column)) } }
                             }
                         }
                     }
                     tbody {
                         @for (row, values) in self.rows.iter().zip(values.chunks(self.columns.len().max(1))) {
                             tr {
-                                th scope="row" { bdi { (row) } }
+                                th scope="row" { (name(row)) }
                                 @for (value, column) in values.iter().zip(&self.columns) {
                                     td.(palette::class(*value)) title={ (row) " × " (column) ": " (percent(*value)) } {
                                         (bare_percent(*value))

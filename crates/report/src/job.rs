@@ -10,7 +10,7 @@ use crate::cell::{End, ShownCell};
 use crate::facts::{self, AxisValues, Source, Versions};
 use crate::heat_map::{self, HeatMap};
 use crate::numbers::{count, counted, date, percent};
-use crate::page::{Page, Section, notice};
+use crate::page::{Page, Section, name, notice};
 use crate::structure::Structures;
 use crate::{Histogram, cards, charts, detail};
 
@@ -182,7 +182,7 @@ fn notices(report: &JobReport) -> Vec<Markup> {
     if !report.failure.is_empty() {
         notices.push(notice(
             "warning",
-            html! { strong { "The job failed. " } bdi { (report.failure) } },
+            html! { strong { "The job failed. " } (name(&report.failure)) },
         ));
     }
     if report.counts.stopped > 0 {
@@ -225,7 +225,7 @@ fn answer(report: &JobReport) -> Markup {
         ol.answer {
             @for cell in report.best.iter().take(5) {
                 li {
-                    strong { bdi { (cell.substrate) } " + " bdi { (cell.electrophile) } } ": "
+                    strong { (name(&cell.substrate)) " + " (name(&cell.electrophile)) } ": "
                     (cell.conditions()) " — expected " strong { (percent(cell.expected_yield)) }
                     ", p_hit " (percent(cell.p_hit)) ". " (cautions::mark(cell.severest()))
                 }
@@ -235,7 +235,7 @@ fn answer(report: &JobReport) -> Markup {
         @if !report.without.is_empty() {
             p {
                 strong { "Without a cell to propose: " }
-                @for (i, name) in report.without.iter().take(40).enumerate() { @if i > 0 { ", " } bdi { (name) } }
+                @for (i, called) in report.without.iter().take(40).enumerate() { @if i > 0 { ", " } (name(called)) }
                 @if report.without.len() > 40 { " and " (report.without.len() - 40) " more" }
                 ". Their cells are not covered by the model or carry a caution of severity stop."
             }
@@ -289,7 +289,7 @@ fn limits(report: &JobReport) -> Markup {
             } @else {
                 "Open questions, with p_hit between 20 % and 80 %: "
                 @for (i, cell) in doubtful.iter().take(6).enumerate() {
-                    @if i > 0 { ", " } bdi { (cell.substrate) } " (" (percent(cell.p_hit)) ")"
+                    @if i > 0 { ", " } (name(&cell.substrate)) " (" (percent(cell.p_hit)) ")"
                 }
                 @if doubtful.len() > 6 { " and " (doubtful.len() - 6) " more" }
                 "."

@@ -63,7 +63,7 @@ impl Page {
                 body {
                     (self.structures)
                     a.skip href="#answer" { "To the answer" }
-                    header.masthead {
+                    header.masthead #top {
                         p.kind { span.mark aria-hidden="true" {} "enolattice · " (self.kind) }
                         h1 dir="auto" { (self.title) }
                         div.lead { (self.lead) }
@@ -107,4 +107,17 @@ pub(crate) fn notice(kind: &str, text: Markup) -> Markup {
     html! {
         div.notice.(kind) { (text) }
     }
+}
+
+/// Longest word that a column of a table makes room for, letters.
+const LONG_WORD: usize = 22;
+
+/// A name that the user gave, in its own direction of writing. One with a word that no column has room for, such as a
+/// SMILES, may be broken anywhere.
+pub(crate) fn name(text: &str) -> Markup {
+    let breaks = |c: char| c.is_whitespace() || c == '-';
+    let is_long = text
+        .split(breaks)
+        .any(|word| word.chars().count() > LONG_WORD);
+    html! { bdi.long[is_long] { (text) } }
 }

@@ -17,7 +17,7 @@ use crate::detail;
 use crate::facts::{self, Source, Versions};
 use crate::job::{ExplainedCell, patterns};
 use crate::numbers::{count, counted, date, short};
-use crate::page::{Page, Section, notice};
+use crate::page::{Page, Section, name, notice};
 use crate::structure::Structures;
 
 /// What the report of a plan is made from.
@@ -91,7 +91,7 @@ pub fn plan_report(report: &PlanReport) -> String {
         lead: html! {
             p {
                 @if !plan.id.is_empty() { "Plan " span.mono { (plan.id) } " · made " (date(plan.made_unix_ms)) " · " }
-                "from job " span.mono { (plan.job) } " · " bdi { (plan.campaign) }
+                "from job " span.mono { (plan.job) } " · " (name(&plan.campaign))
             }
         },
         notices: notices(plan),

@@ -10,8 +10,10 @@ use crate::output::{print, print_json};
 
 /// Cancel a job between two blocks; what was screened can still be ranked.
 #[derive(Debug, Args)]
+#[command(after_help = "Example:\n  \
+    enolattice cancel JOB")]
 pub(super) struct Cancel {
-    /// The job.
+    /// The job; `enolattice jobs` lists them.
     job: String,
     #[command(flatten)]
     engine: EngineOptions,

@@ -19,6 +19,9 @@ use crate::text::agreement_page;
 /// the campaign or a file of pKa knows), base, electrophile, solvent, temperature_c, yield_fraction, and
 /// any other condition. Needs no job and no data directory.
 #[derive(Debug, Args)]
+#[command(after_help = "Examples:\n  \
+    enolattice check-measured yields.csv\n  \
+    enolattice check-measured yields.csv --campaign campaign.toml --misses 3")]
 pub(super) struct CheckMeasured {
     /// Measured yields (CSV); may be several.
     #[arg(required_unless_present_any = ["pka", "campaign"])]

@@ -15,6 +15,8 @@ use crate::text::comparison_page;
 /// has one value may differ: two solvents, two temperatures. The same campaign submitted again after an upgrade
 /// compares two models.
 #[derive(Debug, Args)]
+#[command(after_help = "Example:\n  \
+    enolattice compare BEFORE AFTER --movers 5")]
 pub(super) struct Compare {
     /// The first job.
     before: String,

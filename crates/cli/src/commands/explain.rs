@@ -14,8 +14,11 @@ use crate::text::explanation_page;
 ///
 /// Either a cell of a job, or one given by its reagents (library names or SMILES), which needs no job.
 #[derive(Debug, Args)]
+#[command(after_help = "Examples:\n  \
+    enolattice explain JOB 1234\n  \
+    enolattice explain --substrate 'CC1CCCCC1=O' --base LDA --electrophile MeI --solvent THF --temperature-c -78")]
 pub(super) struct Explain {
-    /// The job.
+    /// The job; `enolattice jobs` lists them.
     #[arg(requires = "cell")]
     job: Option<String>,
     /// Number of the cell.

@@ -11,6 +11,9 @@ use crate::text::job_table;
 
 /// List the jobs, newest first.
 #[derive(Debug, Args)]
+#[command(after_help = "Examples:\n  \
+    enolattice jobs\n  \
+    enolattice jobs --json")]
 pub(super) struct Jobs {
     #[command(flatten)]
     engine: EngineOptions,

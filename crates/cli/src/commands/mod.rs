@@ -3,9 +3,12 @@
 mod cancel;
 mod check_measured;
 mod compare;
+mod completion;
 mod explain;
+mod export;
 mod following;
 mod jobs;
+mod man;
 mod options;
 mod plan;
 mod plans;
@@ -31,7 +34,17 @@ use options::LogFormat;
 /// Data go to stdout, talk to stderr. Exit code 0: done; 1: a job failed or was not finished;
 /// 2: the input is at fault; 3: the service is.
 #[derive(Debug, Parser)]
-#[command(name = "enolattice", version)]
+#[command(
+    name = "enolattice",
+    version,
+    after_help = "One night:\n  \
+    enolattice screen campaign.toml --dry-run   what it would take\n  \
+    enolattice screen campaign.toml             every cell; prints the job\n  \
+    enolattice rank JOB --map substrate,base    where it works\n  \
+    enolattice explain JOB CELL                 why\n  \
+    enolattice plan JOB --out tonight           plates, stocks, transfers\n\n\
+    `enolattice COMMAND --help` says more of each. Predictions and cautions are no substitute for a hazard assessment."
+)]
 pub(crate) struct Program {
     #[command(subcommand)]
     command: Command,
@@ -47,6 +60,7 @@ enum Command {
     Cancel(cancel::Cancel),
     Rank(rank::Rank),
     Explain(Box<explain::Explain>),
+    Export(export::Export),
     Plan(plan::Plan),
     Plans(plans::Plans),
     Report(report::Report),
@@ -54,6 +68,8 @@ enum Command {
     CheckMeasured(check_measured::CheckMeasured),
     Sites(sites::Sites),
     Reagents(reagents::Reagents),
+    Completion(completion::Completion),
+    Man(man::Man),
 }
 
 /// Starts the log on stderr; `ENOLATTICE_LOG` says what it takes, e.g. `debug`.
@@ -85,6 +101,7 @@ pub(crate) async fn run(program: Program) -> Result<(), Fault> {
         Command::Cancel(command) => command.run().await,
         Command::Rank(command) => command.run().await,
         Command::Explain(command) => command.run().await,
+        Command::Export(command) => command.run().await,
         Command::Plan(command) => command.run().await,
         Command::Plans(command) => command.run().await,
         Command::Report(command) => command.run().await,
@@ -92,5 +109,7 @@ pub(crate) async fn run(program: Program) -> Result<(), Fault> {
         Command::CheckMeasured(command) => command.run().await,
         Command::Sites(command) => command.run().await,
         Command::Reagents(command) => command.run().await,
+        Command::Completion(command) => command.run(),
+        Command::Man(command) => command.run(),
     }
 }

@@ -4,15 +4,18 @@ use std::path::PathBuf;
 
 use clap::Args;
 use enolattice_grid::FaultCode;
-use enolattice_plate::{PlanRequest, PlateFormat};
+use enolattice_plate::{Plan as KeptPlan, PlanRequest, PlateFormat};
+use enolattice_reagents::Library;
+use enolattice_records::{Person, Structures, dataset, json, protobuf};
 
 use super::EngineOptions;
 use crate::campaign_file::read_text;
 use crate::client::{Client, Need};
 use crate::fault::Fault;
+use crate::out_file::OutFile;
 use crate::output::{print, print_json, talk};
 use crate::plan_folder::PlanFolder;
-use crate::text::plan_page;
+use crate::text::{LetteredAxis, plan_page, plates_page, width};
 
 /// Turn a job into plates that a robot can fill.
 ///
@@ -20,8 +23,13 @@ use crate::text::plan_page;
 /// transfers and expected masses, and checks all of it. What the deck can do is declared in a request file; what is not
 /// declared is not assumed. The plan is kept; `--kept PLAN` shows it again.
 #[derive(Debug, Args)]
+#[command(after_help = "Examples:\n  \
+    enolattice plan JOB --wells 96 --out tonight\n  \
+    enolattice plan JOB --request plan.toml\n  \
+    enolattice plan --kept PLAN --show --by base\n  \
+    enolattice plan --kept PLAN --ord plan.pb --person-email planner@example.org")]
 pub(super) struct Plan {
-    /// The job.
+    /// The job; `enolattice jobs` lists them.
     #[arg(required_unless_present = "kept")]
     job: Option<String>,
     /// Make no new plan but show this one, which was kept; `plans` lists them.
@@ -42,6 +50,33 @@ pub(super) struct Plan {
     /// Write the plan's files into this new folder.
     #[arg(long, value_name = "DIR")]
     out: Option<PathBuf>,
+    /// Print the plates alone: what is in each well, by letters that a key explains.
+    #[arg(long, conflicts_with = "json")]
+    show: bool,
+    /// What the letters of `--show` stand for.
+    #[arg(
+        long,
+        value_enum,
+        value_name = "AXIS",
+        default_value_t,
+        requires = "show"
+    )]
+    by: LetteredAxis,
+    /// Write the plan as a dataset of the Open Reaction Database, `.pb` or `.json`.
+    #[arg(long, value_name = "FILE", requires = "person_email")]
+    ord: Option<PathBuf>,
+    /// Who makes the record of `--ord`.
+    #[arg(long, value_name = "NAME", default_value = "", requires = "ord")]
+    person_name: String,
+    /// E-mail address of who makes the record; the schema asks for it.
+    #[arg(long, value_name = "ADDRESS", requires = "ord", value_parser = address)]
+    person_email: Option<String>,
+    /// Organisation of who makes the record.
+    #[arg(long, value_name = "NAME", default_value = "", requires = "ord")]
+    organization: String,
+    /// Write over a file of `--ord` that is there already.
+    #[arg(long, requires = "ord")]
+    force: bool,
     #[command(flatten)]
     engine: EngineOptions,
     /// Print the whole plan as JSON.
@@ -53,6 +88,7 @@ impl Plan {
     pub(super) async fn run(self) -> Result<(), Fault> {
         let request = self.request()?;
         let folder = self.out.as_deref().map(PlanFolder::new).transpose()?;
+        let record = self.record()?;
         let client = Client::open(&self.engine, Need::Jobs).await?;
         let planned = match &self.kept {
             Some(plan) => client.kept_plan(plan).await,
@@ -75,10 +111,60 @@ impl Plan {
             let names: Vec<&str> = files.iter().map(|file| file.name).collect();
             talk(&format!("wrote {} to {}", names.join(", "), folder.shown()));
         }
+        if let Some((form, file)) = record {
+            self.write_record(&plan, form, &file)?;
+        }
         if self.json {
             return print_json(&plan);
         }
+        if self.show {
+            return print(&plates_page(&plan, self.by, width()));
+        }
         print(&plan_page(&plan))
+    }
+
+    /// Where the dataset goes and in which form.
+    fn record(&self) -> Result<Option<(RecordForm, OutFile)>, Fault> {
+        let Some(path) = &self.ord else {
+            return Ok(None);
+        };
+        let form = match path.extension().and_then(|ending| ending.to_str()) {
+            Some("pb") => RecordForm::Protobuf,
+            Some("json") => RecordForm::Json,
+            _ => {
+                let (reason, remedy) = (
+                    "does not say in which form it is to be written",
+                    "name a file that ends on .pb or .json",
+                );
+                let code = FaultCode::ValueUnknown.name();
+                let shown = path.display().to_string();
+                return Err(Fault::option("--ord", &shown, code, reason, remedy));
+            }
+        };
+        Ok(Some((form, OutFile::new("--ord", path, self.force)?)))
+    }
+
+    fn write_record(&self, plan: &KeptPlan, form: RecordForm, file: &OutFile) -> Result<(), Fault> {
+        let person = Person {
+            name: self.person_name.clone(),
+            email: self.person_email.clone().unwrap_or_default(),
+            organization: self.organization.clone(),
+        };
+        let library = Library::builtin().map_err(|error| Fault::service(error.to_string()))?;
+        let dataset = dataset(plan, &person, &Structures::of(&library));
+        let bytes = match form {
+            RecordForm::Protobuf => protobuf(&dataset),
+            RecordForm::Json => json(&dataset)
+                .map_err(|error| Fault::service(error.to_string()))?
+                .into_bytes(),
+        };
+        file.write(&bytes)?;
+        talk(&format!(
+            "wrote {} reactions to {}",
+            dataset.reactions.len(),
+            file.shown().unwrap_or_default()
+        ));
+        Ok(())
     }
 
     /// The request of the file, with what the command line says over it.
@@ -108,5 +194,20 @@ impl Plan {
             true => Ok(request),
             false => Err(Fault::Input(faults)),
         }
+    }
+}
+
+/// Form of a dataset.
+#[derive(Clone, Copy, Debug)]
+enum RecordForm {
+    Protobuf,
+    Json,
+}
+
+/// An address as the schema takes it: something, an @, something.
+fn address(text: &str) -> Result<String, String> {
+    match text.split_once('@') {
+        Some((name, host)) if !name.is_empty() && host.contains('.') => Ok(text.to_owned()),
+        _ => Err("is no e-mail address".to_owned()),
     }
 }

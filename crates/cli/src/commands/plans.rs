@@ -11,6 +11,9 @@ use crate::text::plan_table;
 
 /// List the plans that are kept, newest first.
 #[derive(Debug, Args)]
+#[command(after_help = "Examples:\n  \
+    enolattice plans\n  \
+    enolattice plans JOB")]
 pub(super) struct Plans {
     /// Only plans of this job.
     job: Option<String>,

@@ -22,8 +22,13 @@ const LARGEST_PAGE: u64 = 1000;
 /// FILTER compares the fields of a cell, e.g. `expected_yield >= 0.5 AND solvent = "THF"`;
 /// OR binds tighter than AND.
 #[derive(Debug, Args)]
+#[command(after_help = "Examples:\n  \
+    enolattice rank JOB --limit 20\n  \
+    enolattice rank JOB --filter 'p_hit >= 0.7 AND severity < \"stop\"' --best-per substrate\n  \
+    enolattice rank JOB --map substrate,base --of p-hit\n  \
+    enolattice rank JOB --distribution")]
 pub(super) struct Rank {
-    /// The job.
+    /// The job; `enolattice jobs` lists them.
     job: String,
     /// What to rank by; ties by cell number, unknown last.
     #[arg(long, value_enum, default_value_t)]

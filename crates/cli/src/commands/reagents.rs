@@ -11,6 +11,9 @@ use crate::text::{reagent_table, safety_notice};
 
 /// List the library of bases, solvents and electrophiles.
 #[derive(Debug, Args)]
+#[command(after_help = "Examples:\n  \
+    enolattice reagents amide\n  \
+    enolattice reagents --json")]
 pub(super) struct Reagents {
     /// Only those with this in a name, synonym or CAS number.
     #[arg(default_value = "")]

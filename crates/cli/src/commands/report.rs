@@ -18,6 +18,10 @@ use crate::output::{print, talk};
 /// The file needs no network and no script. A job's says what to run and why, with maps, structures and the best
 /// conditions of each substrate; a plan's has the plates, what is expected of each well, and the stock sheet to tick off.
 #[derive(Debug, Args)]
+#[command(after_help = "Examples:\n  \
+    enolattice report JOB\n  \
+    enolattice report PLAN --out tonight.html\n  \
+    enolattice report JOB --map base,solvent --out job.html")]
 pub(super) struct Report {
     /// The job or the plan.
     id: String,

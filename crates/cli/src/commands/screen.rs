@@ -25,8 +25,11 @@ const MOST_SUBSTRATES: u32 = 1000;
 ///
 /// FILE is a campaign in TOML. The results are kept, for `rank` and `explain`.
 #[derive(Debug, Args)]
+#[command(after_help = "Examples:\n  \
+    enolattice screen campaign.toml --dry-run\n  \
+    enolattice screen campaign.toml")]
 pub(super) struct Screen {
-    /// The campaign.
+    /// The campaign, a TOML file.
     file: PathBuf,
     /// Only say what it would take, what the model does not cover and what is dangerous.
     #[arg(long)]

@@ -20,6 +20,9 @@ use crate::output::{print, talk};
 /// Prints `listening on ADDRESS` on stdout when it takes connections. Ends between two blocks
 /// at SIGTERM or ctrl-c; unfinished jobs go on at the next start.
 #[derive(Debug, Args)]
+#[command(after_help = "Examples:\n  \
+    enolattice serve --data /var/lib/enolattice\n  \
+    enolattice jobs --server http://127.0.0.1:7413")]
 pub(super) struct Serve {
     /// Address to listen on; port 0 takes a free one.
     #[arg(long, value_name = "ADDR", default_value = "127.0.0.1:7413")]

@@ -16,6 +16,9 @@ use crate::text::molecule_page;
 ///
 /// Atoms count from 0 in the order of the SMILES.
 #[derive(Debug, Args)]
+#[command(after_help = "Examples:\n  \
+    enolattice sites 'CC(=O)CC(C)=O'\n  \
+    enolattice sites --reasons < molecules.smi")]
 pub(super) struct Sites {
     /// Molecules; none: one a line from stdin.
     smiles: Vec<String>,

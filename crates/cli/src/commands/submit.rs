@@ -18,8 +18,11 @@ use crate::text::count;
 /// When this returns, the job survives a power cut. Without `--server` it waits until an
 /// engine works at the directory: `watch` or `serve`.
 #[derive(Debug, Args)]
+#[command(after_help = "Examples:\n  \
+    enolattice submit campaign.toml --server http://127.0.0.1:7413\n  \
+    enolattice submit campaign.toml && enolattice watch JOB")]
 pub(super) struct Submit {
-    /// The campaign.
+    /// The campaign, a TOML file.
     file: PathBuf,
     /// Your id of this request: sent again, it gives the same job.
     #[arg(long, value_name = "ID", default_value = "")]

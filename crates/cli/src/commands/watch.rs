@@ -12,8 +12,10 @@ use crate::text::{count, percent};
 
 /// Follow a job to its end; without `--server` also work at it.
 #[derive(Debug, Args)]
+#[command(after_help = "Example:\n  \
+    enolattice watch JOB")]
 pub(super) struct Watch {
-    /// The job.
+    /// The job; `enolattice jobs` lists them.
     job: String,
     #[command(flatten)]
     engine: EngineOptions,

@@ -1,9 +1,9 @@
 //! The fields of `--json` are those that `docs/commands.md` lists, in its order.
 
 use enolattice_engine::{
-    AcidityAgreement, Agreement, AxisOverlap, CellDescription, CheckedAcidity, CheckedRun,
-    ComparedCell, Comparison, Difference, DryRun, Job, JobState, Miss, Mover, PlanSummary,
-    RankedCell, ReagentRow, YieldAgreement,
+    AcidityAgreement, Agreement, Axis, AxisOverlap, CellDescription, CellMap, CheckedAcidity,
+    CheckedRun, ComparedCell, Comparison, Difference, Distribution, DryRun, Histogram, Job,
+    JobState, MapAxis, MapField, Miss, Mover, PlanSummary, RankedCell, ReagentRow, YieldAgreement,
 };
 use enolattice_grid::{CampaignSpec, Decile, MeasuredEntry};
 use enolattice_model::{
@@ -14,8 +14,9 @@ use serde::Serialize;
 use serde_json::Value;
 
 use super::{
-    AgreementDocument, CellLine, ComparisonDocument, DryRunDocument, ExplanationDocument,
-    JobRecord, MoleculeSites, PlanRecord, ReagentRecord, ScreenedDocument,
+    AgreementDocument, CellLine, ComparisonDocument, DistributionDocument, DryRunDocument,
+    ExplanationDocument, JobRecord, MapLine, MoleculeSites, PlanRecord, ReagentRecord,
+    ScreenedDocument,
 };
 
 const DOCUMENT: &str = include_str!("../../docs/commands.md");
@@ -306,6 +307,37 @@ fn every_field_is_documented_and_every_documented_field_is_there() {
     ]);
 }
 
+#[test]
+fn every_field_of_maps_and_distributions_is_documented() {
+    let axis = |axis| MapAxis {
+        axis,
+        values: vec![String::new()],
+    };
+    let map = CellMap {
+        rows: axis(Axis::Base),
+        columns: axis(Axis::Solvent),
+        fields: vec![MapField::default()],
+        total: 0,
+        cells_done: 0,
+    };
+    let lines: Vec<MapLine> = MapLine::all(&map).collect();
+    assert_eq!(documented("### `rank --map --json`"), fields(&lines));
+    let histogram = Histogram {
+        bins: vec![0; 20],
+        unknown: 0,
+    };
+    let known = DistributionDocument::from(Distribution {
+        expected_yield: histogram.clone(),
+        p_hit: histogram,
+        total: 0,
+        cells_done: 0,
+    });
+    assert_eq!(
+        documented("### `rank --distribution --json`"),
+        fields(&known)
+    );
+}
+
 /// Holds objects within a document, whose keys have lost their order, against the tables of their names.
 fn compare_as_sets(parts: &[(&str, &Value)]) {
     for (part, value) in parts {
@@ -457,11 +489,14 @@ fn the_document_has_the_closed_vocabularies() {
         "watch JOB",
         "cancel JOB",
         "rank JOB",
+        "export JOB",
         "explain JOB CELL",
         "plan JOB",
         "plans [JOB]",
         "compare BEFORE AFTER",
         "check-measured FILE…",
+        "completion SHELL",
+        "man",
     ] {
         assert!(
             DOCUMENT.contains(&format!("\n## `{command}`\n")),

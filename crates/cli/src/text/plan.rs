@@ -331,10 +331,9 @@ fn program(plan: &Plan) -> String {
     });
     let moves = plan.movements;
     let counted = format!(
-        "{} transfers: {} uptakes where one serves many wells (one each would be {}), {} deliveries of the head",
+        "{} transfers: {} uptakes where one serves many wells, {} deliveries of the head",
         count(moves.transfers as u64),
         count(moves.uptakes as u64),
-        count(moves.naive_uptakes as u64),
         count(moves.deliveries as u64),
     );
     let mut lines: Vec<String> = steps.collect();

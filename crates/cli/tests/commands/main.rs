@@ -2,6 +2,7 @@
 
 mod campaigns;
 mod chemistry;
+mod help;
 mod program;
 mod refusals;
 mod server;

@@ -1,8 +1,9 @@
 //! Cells of a job among which a plan chooses.
 //!
-//! One pass over the stored scores. Of each stratum (substrate, electrophile and what belongs to a whole plate) the surest
-//! cells are kept, and those whose outcome is most in doubt, which teach most. Of cells that score alike a hash decides,
-//! so that the shortlist is not the first solvents of an axis.
+//! One pass over the stored scores. Of each stratum (substrate, electrophile and the setting, which belongs to a whole plate)
+//! the surest cells are kept, and those whose outcome is most in doubt, which teach most. Of cells that score alike a hash
+//! decides, so that the shortlist is not the first solvents of an axis. Where there are many settings, those stay with
+//! which most substrates and electrophiles have a sure cell: a plate has one setting, and a few cells of each would fill none.
 
 use std::cmp::Reverse;
 use std::collections::{BTreeMap, BinaryHeap, HashMap};
@@ -16,6 +17,7 @@ use rayon::prelude::*;
 use crate::EngineError;
 use crate::filter::{BoundFilter, Filter};
 use crate::plan::limits::{Vetoed, fault, on_the_shelf};
+use crate::screened::STEPS;
 
 /// Blocks that are read side by side.
 const BLOCKS_AT_ONCE: usize = 64;
@@ -25,8 +27,6 @@ const RANDOM: usize = 400;
 const MOST_OF_TOP: usize = 1_536;
 /// Cells with less expected yield than this are not looked at, in steps of the stored columns: 1 %.
 const HOPELESS: u16 = 655;
-/// Largest stored value; beyond it the value is unknown.
-const STEPS: u16 = 65_534;
 
 /// What a plan chooses from.
 #[derive(Debug, Default)]
@@ -295,11 +295,13 @@ fn cells(best: Best) -> impl Iterator<Item = u64> {
 /// What is kept while the scores are looked at.
 struct Kept {
     seed: u64,
-    /// Axes whose values make a stratum.
-    strata_by: Vec<usize>,
+    /// Axes whose values make a stratum, beside the setting.
+    strata_by: &'static [usize],
+    /// Settings that are kept at most.
+    most_settings: usize,
     /// Cells of each kind that a stratum keeps.
     per_stratum: usize,
-    strata: BTreeMap<Vec<u32>, [Best; 2]>,
+    settings: BTreeMap<[u32; SETTING.len()], Strata>,
     top: Best,
     most_top: usize,
     random: Best,
@@ -307,8 +309,13 @@ struct Kept {
     left_out: Vec<u64>,
 }
 
+/// The surest cells and the most doubtful of each stratum of a setting.
+type Strata = BTreeMap<Vec<u32>, [Best; 2]>;
+
 /// Temperature, temperature of the deprotonation, time and dosing time among the axes: what belongs to a whole plate.
 const SETTING: [usize; 4] = [5, 6, 10, 11];
+/// Cells of each kind that a stratum keeps at least before further settings are kept.
+const PER_STRATUM: u64 = 2;
 
 impl Kept {
     fn new(grid: &Grid, request: &PlanRequest) -> Kept {
@@ -318,18 +325,19 @@ impl Kept {
             count.fold(1, u64::saturating_mul)
         };
         let shortlist = u64::from(request.choice.shortlist);
-        let finer = [vec![0, 1], vec![0], vec![]];
-        let with_setting = finer.map(|axes| [&axes[..], &SETTING].concat());
-        let strata_by = with_setting
-            .iter()
-            .find(|axes| 2 * strata(axes) <= shortlist)
-            .unwrap_or(&with_setting[2])
-            .clone();
+        let all_settings = strata(&SETTING);
+        let plates = u64::from(request.plates.count).min(all_settings);
+        let finer: [&[usize]; 3] = [&[0, 1], &[0], &[]];
+        let fits = |axes: &&[usize]| 2 * plates * strata(axes) <= shortlist;
+        let strata_by = finer.into_iter().find(fits).unwrap_or(&[]);
+        // cells of both kinds, one of each stratum
+        let one_of_each = 2 * strata(strata_by);
+        let settings = (shortlist / (PER_STRATUM * one_of_each)).clamp(plates, all_settings);
         let wells = request.plates.wells.wells() * request.plates.count as usize;
         // a design asks for all allowed cells or an even sample of them, not for the best
         let (per_stratum, most_random) = match request.choice.design {
             None => (
-                (shortlist / (2 * strata(&strata_by))).max(1) as usize,
+                (shortlist / (one_of_each * settings)).max(1) as usize,
                 RANDOM,
             ),
             Some(_) => (0, shortlist as usize),
@@ -339,7 +347,8 @@ impl Kept {
             per_stratum,
             most_random,
             strata_by,
-            strata: BTreeMap::new(),
+            most_settings: settings as usize,
+            settings: BTreeMap::new(),
             top: Best::new(),
             most_top: wells.min(MOST_OF_TOP),
             random: Best::new(),
@@ -351,7 +360,9 @@ impl Kept {
         let hash = hash(self.seed, row.cell);
         let digits = row.digits.to_array();
         let stratum = self.strata_by.iter().map(|&axis| digits[axis]).collect();
-        let [sure, doubtful] = self.strata.entry(stratum).or_default();
+        let setting = SETTING.map(|axis| digits[axis]);
+        let strata = self.settings.entry(setting).or_default();
+        let [sure, doubtful] = strata.entry(stratum).or_default();
         let sureness = u32::from(row.p_hit) + u32::from(row.expected_yield);
         keep(sure, self.per_stratum, sureness, hash, row.cell);
         // p (1 − p), at most a quarter of 65534²
@@ -377,13 +388,10 @@ impl Kept {
 
     fn into_shortlist(self, rules: &Rules<'_>) -> Shortlist {
         let left_out = rules.reasons.iter().zip(self.left_out);
+        let kept = most_covering(self.settings.into_values().collect(), self.most_settings);
+        let strata = kept.into_iter().flat_map(Strata::into_values);
         Shortlist {
-            chosen: self
-                .strata
-                .into_values()
-                .flatten()
-                .flat_map(cells)
-                .collect(),
+            chosen: strata.flatten().flat_map(cells).collect(),
             top: cells(self.top).collect(),
             random: cells(self.random).collect(),
             left_out: left_out
@@ -397,10 +405,73 @@ impl Kept {
     }
 }
 
+/// The settings with which most strata have a sure cell: each adds most to those before it, or where none adds anything
+/// more, has most by itself.
+fn most_covering(mut settings: Vec<Strata>, most: usize) -> Vec<Strata> {
+    let surest = |[sure, _]: &[Best; 2]| {
+        let keys = sure.iter().map(|Reverse((key, _, _))| u64::from(*key));
+        keys.max().unwrap_or(0)
+    };
+    let mut covered: BTreeMap<Vec<u32>, u64> = BTreeMap::new();
+    let mut kept = Vec::new();
+    while kept.len() < most && !settings.is_empty() {
+        let worth = |strata: &Strata| {
+            let each = strata.iter().map(|(stratum, cells)| {
+                let surest = surest(cells);
+                let before = covered.get(stratum).copied().unwrap_or(0);
+                (surest.saturating_sub(before), surest)
+            });
+            each.fold((0, 0), |(gain, all), (more, surest)| {
+                (gain + more, all + surest)
+            })
+        };
+        let worths: Vec<(u64, u64)> = settings.iter().map(worth).collect();
+        // of settings alike the first
+        let best = (0..settings.len()).rev().max_by_key(|&i| worths[i]);
+        let strata = settings.remove(best.unwrap_or(0));
+        for (stratum, cells) in &strata {
+            let known = covered.entry(stratum.clone()).or_default();
+            *known = surest(cells).max(*known);
+        }
+        kept.push(strata);
+    }
+    kept
+}
+
 /// A hash of a cell that is the same on every machine: the finaliser of SplitMix64.
 fn hash(seed: u64, cell: u64) -> u64 {
     let mut z = cell.wrapping_add(1).wrapping_mul(0x9e37_79b9_7f4a_7c15) ^ seed;
     z = (z ^ (z >> 30)).wrapping_mul(0xbf58_476d_1ce4_e5b9);
     z = (z ^ (z >> 27)).wrapping_mul(0x94d0_49bb_1331_11eb);
     z ^ (z >> 31)
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    /// Sure cells by stratum and key.
+    fn setting(sure: &[(u32, u32)]) -> Strata {
+        let stratum = |&(stratum, key): &(u32, u32)| {
+            let mut cells = [Best::new(), Best::new()];
+            keep(&mut cells[0], 1, key, 0, u64::from(stratum));
+            (vec![stratum], cells)
+        };
+        sure.iter().map(stratum).collect()
+    }
+
+    #[test]
+    fn a_setting_stays_for_what_the_others_have_not() {
+        // two good settings for the same strata, and a poorer one for another stratum
+        let settings = vec![
+            setting(&[(1, 80), (2, 80)]),
+            setting(&[(1, 90), (2, 85)]),
+            setting(&[(3, 40)]),
+        ];
+        let kept = most_covering(settings.clone(), 2);
+        let strata: Vec<Vec<u32>> = kept.iter().flat_map(Strata::keys).cloned().collect();
+        assert_eq!(strata, [[1], [2], [3]]);
+        // with room for all, all stay
+        assert_eq!(most_covering(settings, 9).len(), 3);
+    }
 }

@@ -218,7 +218,10 @@ mod tests {
 
     #[test]
     fn an_axis_of_time_has_round_ticks() {
-        assert_eq!(ticks(-1_800.0, 3_600.0), [-1_800.0, 0.0, 1_800.0, 3_600.0]);
+        assert_eq!(
+            ticks(-1_800.0, 6_000.0),
+            [-1_800.0, 0.0, 1_800.0, 3_600.0, 5_400.0]
+        );
         for end_s in [3.0, 40.0, 1_000.0, 57_600.0, 1e7] {
             let ticks = ticks(0.0, end_s);
             assert!((1..=7).contains(&ticks.len()), "{end_s}: {ticks:?}");

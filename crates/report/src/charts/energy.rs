@@ -6,6 +6,7 @@ use maud::{Markup, html};
 
 use super::at;
 use crate::numbers::fixed;
+use crate::page::name;
 
 const WIDTH: f64 = 470.0;
 const HEIGHT: f64 = 236.0;
@@ -61,7 +62,7 @@ pub(crate) fn energy(explanation: &Explanation, temperature_c: f64) -> Markup {
         (picture(&levels, downhill))
         @if let Some(attack) = attack {
             p.aside {
-                "The attack is " bdi { (attack.step) } ", log10 k = " (fixed(attack.log10_k, 1)) " ± "
+                "The attack is " (name(&attack.step)) ", log10 k = " (fixed(attack.log10_k, 1)) " ± "
                 (fixed(attack.sigma, 1)) "; ΔG‡ = RT ln(k" sub { "B" } "T c° / h k), c° = 1 mol/L."
                 @if downhill { " The model has no way back from its product, whose level is not computed." }
             }

@@ -8,18 +8,21 @@ document.querySelectorAll("table[data-tools]").forEach(function (table) {
   Array.from(table.tHead.rows[0].cells).forEach(function (head, column) {
     var button = document.createElement("button");
     button.type = "button";
-    button.textContent = head.textContent.trim();
-    button.title = "sort by " + button.textContent;
-    head.textContent = "";
+    button.textContent = "↕";
+    button.setAttribute("aria-label", "sort by " + head.textContent.trim());
     head.append(button);
-    button.addEventListener("click", function () {
+    head.addEventListener("click", function () {
       var now = head.getAttribute("aria-sort");
       // numbers begin with the greatest, words with the first
       var first = head.classList.contains("num") ? "descending" : "ascending";
       var other = first === "ascending" ? "descending" : "ascending";
       var order = now === first ? other : first, sign = order === "ascending" ? 1 : -1;
-      table.querySelectorAll("th[aria-sort]").forEach(function (th) { th.removeAttribute("aria-sort"); });
+      table.querySelectorAll("th[aria-sort]").forEach(function (th) {
+        th.removeAttribute("aria-sort");
+        th.querySelector("button").textContent = "↕";
+      });
       head.setAttribute("aria-sort", order);
+      button.textContent = order === "ascending" ? "↑" : "↓";
       rows.sort(function (a, b) {
         var x = value(a, column), y = value(b, column);
         return sign * (typeof x === "string" && typeof y === "string" ? x.localeCompare(y, "en", { numeric: true }) : x < y ? -1 : x > y ? 1 : 0);

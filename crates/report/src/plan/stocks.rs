@@ -4,7 +4,7 @@ use enolattice_plate::{Form, Plan, Role, Stock};
 use maud::{Markup, html};
 
 use crate::numbers::{fixed, short};
-use crate::page::boxed;
+use crate::page::{boxed, name};
 
 /// Roles in the order of the sheet.
 const ROLES: [Role; 7] = [
@@ -53,7 +53,7 @@ fn row(stock: &Stock) -> Markup {
         tr {
             td.tick { input type="checkbox" aria-label={ "stock " (stock.label) " is made" }; }
             td { strong { (stock.label) } }
-            td { bdi { (stock.reagent) } span.words { (stock.form.name()) } }
+            td { (name(&stock.reagent)) span.words { (stock.form.name()) } }
             td { (taken(stock)) }
             td { (made(stock)) }
             td { (place(stock)) }
@@ -101,7 +101,7 @@ fn made(stock: &Stock) -> Markup {
         @if in_solvent {
             span.words {
                 @if stock.concentration_m > 0.0 { (short(stock.concentration_m)) " mol/L " }
-                "in " bdi { (stock.solvent) }
+                "in " (name(&stock.solvent))
             }
         }
     }

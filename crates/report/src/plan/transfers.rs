@@ -4,7 +4,7 @@ use enolattice_plate::{Plan, Transfer, Well};
 use maud::{Markup, html};
 
 use crate::numbers::{count, fixed, short};
-use crate::page::boxed;
+use crate::page::{boxed, name};
 
 /// The steps in their order.
 pub(super) fn program(plan: &Plan) -> Markup {
@@ -70,7 +70,7 @@ pub(super) fn transfers(plan: &Plan) -> Markup {
                         td { (round.first.source_plate) " " strong { (round.first.source_well) } }
                         td {
                             @if let Some(stock) = round.first.stock.and_then(|index| plan.stocks.get(index)) { strong { (stock.label) } " " }
-                            bdi { (round.first.liquid) }
+                            (name(&round.first.liquid))
                         }
                         td { (round.first.plate) }
                         td.num { (fixed(round.first.volume_nl, 0)) }

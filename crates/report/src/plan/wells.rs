@@ -12,7 +12,7 @@ use crate::cautions;
 use crate::cell::{End, Share, is_left};
 use crate::charts::{bar, bar_words};
 use crate::numbers::{count, counted, percent};
-use crate::page::boxed;
+use crate::page::{boxed, name};
 use crate::plan::plates::{letters, numbered};
 use crate::structure::Structures;
 
@@ -27,11 +27,11 @@ pub(super) fn substrates(plan: &Plan, structures: &mut Structures) -> Markup {
     let numbers = numbered(plan);
     html! {
         div.gallery {
-            @for (name, (substrate, wells)) in &wells {
+            @for (called, (substrate, wells)) in &wells {
                 figure {
-                    div.scheme { (structures.show(&substrate.smiles, name)) }
+                    div.scheme { (structures.show(&substrate.smiles, called)) }
                     figcaption {
-                        span.key.round { (numbers.get(name).copied().unwrap_or_default()) } " " bdi { (name) }
+                        span.key.round { (numbers.get(called).copied().unwrap_or_default()) } " " (name(called))
                         span.words { (counted(*wells, "well")) }
                     }
                 }
@@ -44,7 +44,7 @@ pub(super) fn substrates(plan: &Plan, structures: &mut Structures) -> Markup {
 pub(super) fn table(report: &PlanReport) -> Markup {
     let plan = &report.plan;
     let many = plan.plates.len() > 1;
-    let name = |reagent: &Option<Reagent>| html! { @if let Some(known) = reagent { bdi { (known.name) } } @else { "—" } };
+    let shown = |reagent: &Option<Reagent>| html! { @if let Some(known) = reagent { (name(&known.name)) } @else { "—" } };
     let table = html! {
         table.data.long data-tools="" {
             thead {
@@ -62,10 +62,10 @@ pub(super) fn table(report: &PlanReport) -> Markup {
                             strong { (well.well) } @if many { span.n { " " (plate.name) } }
                             span.words { "cell " (count(well.cell)) }
                         }
-                        td { (name(&well.substrate)) @if well.content.is_control() { " " span.key.square { (letters(well.content)) } } }
-                        td { (name(&well.electrophile)) }
-                        td { (name(&well.base)) }
-                        td { bdi { (well.solvent) } @if let Some(additive) = &well.additive { " + " bdi { (additive.name) } } }
+                        td { (shown(&well.substrate)) @if well.content.is_control() { " " span.key.square { (letters(well.content)) } } }
+                        td { (shown(&well.electrophile)) }
+                        td { (shown(&well.base)) }
+                        td { (name(&well.solvent)) @if let Some(additive) = &well.additive { " + " (name(&additive.name)) } }
                         @if well.content.runs() { (share(well.expected_yield)) (share(well.p_hit)) (as_dosed(well)) }
                         @else { td.num data-v="-2" { "—" } td.num data-v="-2" { "—" } td.num data-v="-2" { "—" } }
                         @if well.content.runs() {

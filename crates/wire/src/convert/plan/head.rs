@@ -224,7 +224,6 @@ fn step(step: v1::ProgramStep) -> Result<ProgramStep, ConversionError> {
 fn movements_message(movements: &Movements) -> v1::Movements {
     v1::Movements {
         uptakes: numbers::to_wire(movements.uptakes as u64),
-        naive_uptakes: numbers::to_wire(movements.naive_uptakes as u64),
         deliveries: numbers::to_wire(movements.deliveries as u64),
         transfers: numbers::to_wire(movements.transfers as u64),
     }
@@ -233,7 +232,6 @@ fn movements_message(movements: &Movements) -> v1::Movements {
 fn movements(movements: v1::Movements) -> Result<Movements, ConversionError> {
     Ok(Movements {
         uptakes: numbers::from_wire("Movements.uptakes", movements.uptakes)?,
-        naive_uptakes: numbers::from_wire("Movements.naive_uptakes", movements.naive_uptakes)?,
         deliveries: numbers::from_wire("Movements.deliveries", movements.deliveries)?,
         transfers: numbers::from_wire("Movements.transfers", movements.transfers)?,
     })

@@ -37,7 +37,6 @@ fn plan() -> Plan {
         program: [Some(3), None].map(step).into(),
         movements: Movements {
             uptakes: 40,
-            naive_uptakes: 700,
             deliveries: 300,
             transfers: transfers.len(),
         },

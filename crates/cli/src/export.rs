@@ -29,7 +29,7 @@ pub(crate) type Out = Box<dyn Write + Send>;
 
 /// Writes cells in one of the forms.
 pub(crate) enum CellWriter {
-    Csv(csv::Writer),
+    Csv(Box<csv::Writer>),
     JsonLines(Out),
     #[cfg(feature = "columnar")]
     Columnar(Box<enolattice_columnar::Writer<Out>>),
@@ -38,7 +38,7 @@ pub(crate) enum CellWriter {
 impl CellWriter {
     pub(crate) fn new(format: Format, out: Out) -> Result<CellWriter, Fault> {
         Ok(match format {
-            Format::Csv => CellWriter::Csv(csv::Writer::new(out)?),
+            Format::Csv => CellWriter::Csv(Box::new(csv::Writer::new(out)?)),
             Format::JsonLines => CellWriter::JsonLines(out),
             #[cfg(feature = "columnar")]
             Format::Arrow => {

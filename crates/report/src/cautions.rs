@@ -1,5 +1,6 @@
 //! Cautions: their marks, and what has to be said on top.
 
+use std::cmp::Reverse;
 use std::collections::BTreeMap;
 
 use maud::{Markup, html};
@@ -54,16 +55,14 @@ pub(crate) struct Told<'a> {
     pub(crate) place: String,
 }
 
+/// Severest first, then by category and reason.
+type Key<'a> = (Reverse<u8>, &'a str, &'a str);
+
 /// Each caution once, severest first, with the places where it holds.
 pub(crate) fn list<'a>(all: impl Iterator<Item = Told<'a>>, most: usize) -> Markup {
-    let mut known: BTreeMap<(std::cmp::Reverse<u8>, &str, &str), (Told<'a>, Vec<String>)> =
-        BTreeMap::new();
+    let mut known: BTreeMap<Key<'a>, (Told<'a>, Vec<String>)> = BTreeMap::new();
     for told in all {
-        let key = (
-            std::cmp::Reverse(rank(Some(told.severity))),
-            told.category,
-            told.text,
-        );
+        let key = (Reverse(rank(Some(told.severity))), told.category, told.text);
         let place = told.place.clone();
         known
             .entry(key)

@@ -29,20 +29,23 @@ impl TryFrom<v1::MapCellsRequest> for MapQuery {
                 columns,
                 filter: request.filter,
             }),
-            (rows, columns) => Err([rows.err(), columns.err()].into_iter().flatten().collect()),
+            (rows, columns) => {
+                let faults = [rows.err(), columns.err()].into_iter().flatten();
+                Err(faults.map(|fault| *fault).collect())
+            }
         }
     }
 }
 
-fn axis(field: &str, number: i32) -> Result<Axis, InputError> {
+fn axis(field: &str, number: i32) -> Result<Axis, Box<InputError>> {
     enums::from_wire::<_, v1::Axis>("", &Axis::ALL, number).map_err(|_| {
-        bad_field(
+        Box::new(bad_field(
             ErrorReason::ValueUnknown,
             field,
             number.to_string(),
             "there is no such axis",
             "use a value of `Axis`",
-        )
+        ))
     })
 }
 

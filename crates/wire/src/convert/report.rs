@@ -31,7 +31,12 @@ impl TryFrom<v1::RenderReportRequest> for ReportQuery {
             let columns = axis(format!("maps[{i}].columns"), map.columns);
             match (rows, columns) {
                 (Ok(rows), Ok(columns)) => maps.push([rows, columns]),
-                (rows, columns) => faults.extend(rows.err().into_iter().chain(columns.err())),
+                (rows, columns) => faults.extend(
+                    rows.err()
+                        .into_iter()
+                        .chain(columns.err())
+                        .map(|fault| *fault),
+                ),
             }
         }
         match faults.is_empty() {
@@ -44,15 +49,15 @@ impl TryFrom<v1::RenderReportRequest> for ReportQuery {
     }
 }
 
-fn axis(field: String, number: i32) -> Result<Axis, InputError> {
+fn axis(field: String, number: i32) -> Result<Axis, Box<InputError>> {
     let known = enums::optional_from_wire::<_, v1::Axis>("maps", &Axis::ALL, number);
     known.ok().flatten().ok_or_else(|| {
-        bad_field(
+        Box::new(bad_field(
             ErrorReason::ValueUnknown,
             field,
             number.to_string(),
             "there is no such axis",
             "use a value of `Axis`",
-        )
+        ))
     })
 }

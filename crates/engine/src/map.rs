@@ -77,8 +77,8 @@ impl CellMap {
 impl Engine {
     /// The cells of a job over two axes, also while it runs; at most 50,000 fields.
     ///
-    /// Reads every stored score once: about a second for 10^8 cells. All sums are of whole numbers, so the
-    /// answer does not depend on the number of threads.
+    /// Reads every stored score once. All sums are of whole numbers, so the answer does not depend on the number
+    /// of threads.
     ///
     /// # Errors
     /// [`EngineError::JobUnknown`], [`EngineError::Input`] where the filter cannot be read, the axes are the same or

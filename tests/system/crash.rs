@@ -65,7 +65,8 @@ static BINARY: LazyLock<PathBuf> = LazyLock::new(|| {
     let test = std::env::current_exe().expect("a path");
     let profile = test.ancestors().nth(2).expect("target/PROFILE/deps/TEST");
     let mut build = Command::new(env!("CARGO"));
-    build.args(["build", "--quiet", "--package", "enolattice-cli"]);
+    // the whole workspace, as the tests were built: with other features of shared crates most would be compiled again
+    build.args(["build", "--quiet", "--workspace", "--bins"]);
     build
         .arg("--target-dir")
         .arg(profile.parent().expect("target"));

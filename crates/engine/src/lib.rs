@@ -39,6 +39,7 @@ pub use comparison::{AxisOverlap, ComparedCell, Comparison, Difference, Mover};
 pub use distribution::{Distribution, Histogram};
 pub use dry_run::{AxisSize, DryRun, NotCovered};
 pub use engine::Engine;
+pub use enolattice_molecule::element_symbol;
 pub use error::EngineError;
 pub use job::{Job, JobState, Submission};
 pub use kept_plans::PlanSummary;
@@ -49,4 +50,3 @@ pub use query::{
     ReasonedSite, SiteReport,
 };
 pub use report::ReportQuery;
-pub use sites::element_symbol;

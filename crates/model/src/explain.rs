@@ -8,7 +8,7 @@ mod summary;
 
 pub(crate) use fate::fate;
 
-use enolattice_molecule::AnionClass;
+use enolattice_molecule::{AnionClass, element_symbol};
 use enolattice_reagents::{Cation, Library};
 use enolattice_units::{LN_10, R_KJ, delta_g_kj_mol, log10_k_at};
 
@@ -262,7 +262,7 @@ fn sites(cell: &Cell, kinetics: &Kinetics<'_>, library: &Library) -> Vec<Explain
     let explained = |molecule: &'static str, site: &AcidSite| ExplainedSite {
         molecule,
         atom: site.atom,
-        element: symbol(site.element),
+        element: element_symbol(site.element),
         hydrogens: site.hydrogens,
         pka_dmso: site.pka_dmso,
         pka_medium: kinetics.pka(site.pka_dmso, site.class) + own_scale,
@@ -348,7 +348,7 @@ fn second_proton(
     Some(ExplainedSite {
         molecule: "substrate anion",
         atom: site.atom,
-        element: symbol(site.element),
+        element: element_symbol(site.element),
         hydrogens: site.hydrogens,
         pka_dmso,
         pka_medium: kinetics.pka(pka_dmso, site.class) + own_scale,
@@ -369,18 +369,6 @@ fn protonated_element(class: AnionClass) -> &'static str {
         Hydride => "H",
         carbon if carbon.is_carbanion() => "C",
         _ => "O",
-    }
-}
-
-fn symbol(element: u8) -> &'static str {
-    match element {
-        6 => "C",
-        7 => "N",
-        8 => "O",
-        15 => "P",
-        16 => "S",
-        34 => "Se",
-        _ => "?",
     }
 }
 
@@ -409,12 +397,18 @@ fn course_points(course: &Course, network: &Network, outcome: &Outcome) -> Vec<C
 
 /// What the proton balance alone, with all base dissolved and no electrophile, makes of the substrate.
 fn at_equilibrium(cell: &Cell, kinetics: &Kinetics<'_>) -> String {
-    let forms = proton_balance(&whole_pot(kinetics, Reached::BeforeElectrophile));
-    let carbanion = forms[0].free_m.last().copied().unwrap_or_default();
     format!(
         "proton balance with all base dissolved, before the electrophile: {:.3} of the substrate is carbanion at equilibrium",
-        carbanion / cell.conditions.concentration_m
+        carbanion_at_equilibrium(kinetics) / cell.conditions.concentration_m
     )
+}
+
+/// Carbanion and dianion, mol/L: all forms of the substrate that lack a proton of carbon.
+fn carbanion_at_equilibrium(kinetics: &Kinetics<'_>) -> f64 {
+    let forms = proton_balance(&whole_pot(kinetics, Reached::BeforeElectrophile));
+    // an X–H that goes first leaves an anion of the heteroatom
+    let without = 1 + usize::from(kinetics.first_heteroatom().is_some());
+    forms[0].free_m.iter().skip(without).sum()
 }
 
 fn limits(cell: &Cell, outcome: &Outcome) -> Vec<String> {
@@ -449,4 +443,30 @@ fn limits(cell: &Cell, outcome: &Outcome) -> Vec<String> {
         );
     }
     limits
+}
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+    use crate::sample::{cell, model};
+
+    /// Where the base is far the stronger, all of the substrate is carbanion, whether or not a second proton could go too; an
+    /// X–H that goes first takes the base instead.
+    #[test]
+    fn carbanion_at_equilibrium_counts_every_form_that_lacks_a_proton_of_carbon() {
+        let model = model();
+        let values = Values::means();
+        let share = |substrate: &str, base: &str| {
+            let cell = cell(&model, substrate, base, "CI", "THF");
+            let at = cell.conditions.temperature_c;
+            let kinetics = Kinetics::new(&cell, at, &values, Nudge::default());
+            carbanion_at_equilibrium(&kinetics) / cell.conditions.concentration_m
+        };
+        // one C–H that a base of the trade reaches; two
+        assert!(share("CCOC(=O)Cc1ccccc1", "LDA") > 0.99);
+        assert!(share("CC(=O)Cc1ccccc1", "KOtBu") > 0.99);
+        assert!(share("CC(=O)CC(C)=O", "NaH") > 0.99);
+        // 4'-hydroxyacetophenone: the phenol is the acid
+        assert!(share("CC(=O)c1ccc(O)cc1", "K2CO3") < 0.01);
+    }
 }

@@ -6,6 +6,7 @@
 mod anion;
 mod edit;
 mod electrophile;
+mod element;
 mod environment;
 mod groups;
 mod molfile;
@@ -22,6 +23,7 @@ pub use electrophile::{
     Acceptor, AcylDonor, AlkylGroup, ChalcogenDonor, Cumulene, Donor, ElectrophileKind,
     ElectrophilicGroup, HalogenDonor, ImineNitrogen, LeavingGroup, RingHeteroatom, recognise,
 };
+pub use element::element_symbol;
 pub use environment::{Site, sites};
 pub use pattern::Pattern;
 pub use product::{

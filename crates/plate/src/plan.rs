@@ -9,7 +9,7 @@ use crate::{
 
 /// Stands on everything that is printed for the bench.
 pub const PRECEDENCE: &str = "The supplier's safety data sheets, local rules and qualified staff take precedence over \
-    everything in this plan; its predictions and cautions are no substitute for a hazard assessment.";
+    everything that is said here; predictions and cautions are no substitute for a hazard assessment.";
 
 /// A plan.
 #[derive(Clone, Debug, PartialEq, Serialize, Deserialize)]

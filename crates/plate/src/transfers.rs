@@ -65,21 +65,23 @@ fn analysis_name(plate: usize) -> String {
     format!("analysis {}", plate + 1)
 }
 
-/// Order group of what has a role, in the order of addition of its well.
-fn group(role: Role, addition: Addition) -> u32 {
-    match (role, addition) {
-        (Role::Solvent, _) => SOLVENT,
-        (Role::Additive, _) => ADDITIVE,
-        (Role::Base, Addition::SubstrateIntoBase) => FIRST,
-        (Role::Substrate, Addition::SubstrateIntoBase) => SECOND,
-        (Role::Substrate, _) => FIRST,
-        (Role::Base, Addition::BaseIntoSubstrate) => SECOND,
-        // what must not wait for anything comes last
-        (Role::Electrophile, Addition::AllTogether) => SECOND,
-        (Role::Base, Addition::AllTogether) => ELECTROPHILE,
-        (Role::Electrophile, _) => ELECTROPHILE,
-        (Role::Quench, _) => QUENCH,
-        (Role::Diluent, _) => DILUENT,
+impl Role {
+    /// Order group of what has this role, from 1, in the order of addition of its well.
+    pub fn order_group(self, addition: Addition) -> u32 {
+        match (self, addition) {
+            (Role::Solvent, _) => SOLVENT,
+            (Role::Additive, _) => ADDITIVE,
+            (Role::Base, Addition::SubstrateIntoBase) => FIRST,
+            (Role::Substrate, Addition::SubstrateIntoBase) => SECOND,
+            (Role::Substrate, _) => FIRST,
+            (Role::Base, Addition::BaseIntoSubstrate) => SECOND,
+            // what must not wait for anything comes last
+            (Role::Electrophile, Addition::AllTogether) => SECOND,
+            (Role::Base, Addition::AllTogether) => ELECTROPHILE,
+            (Role::Electrophile, _) => ELECTROPHILE,
+            (Role::Quench, _) => QUENCH,
+            (Role::Diluent, _) => DILUENT,
+        }
     }
 }
 
@@ -94,7 +96,8 @@ pub(crate) fn transfers(
     let mut wanted: Vec<(usize, u32, usize, Well, f64)> = Vec::new();
     for (recipe, doses) in recipes.iter().zip(&supply.doses) {
         for dose in doses.iter().filter(|dose| dose.volume_nl > 0.0) {
-            let group = group(supply.stocks[dose.stock].role, recipe.addition());
+            let role = supply.stocks[dose.stock].role;
+            let group = role.order_group(recipe.addition());
             wanted.push((recipe.plate, group, dose.stock, recipe.well, dose.volume_nl));
         }
     }
@@ -246,7 +249,7 @@ pub(crate) fn program(recipes: &[Recipe], supply: &Supply, sample_nl: f64) -> Ve
                 recipe.plate == plate
                     && doses.iter().any(|dose| {
                         let role = supply.stocks[dose.stock].role;
-                        dose.volume_nl > 0.0 && group(role, recipe.addition()) == group_wanted
+                        dose.volume_nl > 0.0 && role.order_group(recipe.addition()) == group_wanted
                     })
             })
         };

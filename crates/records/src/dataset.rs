@@ -1,5 +1,6 @@
 //! A plan as a dataset: one reaction for each well in which a reaction runs.
 
+use chrono::DateTime;
 use enolattice_plate::{Content, PRECEDENCE, Plan, PlannedWell, Plate};
 
 use crate::Structures;
@@ -9,9 +10,6 @@ use crate::ord::pressure_conditions::{
     Atmosphere, PressureControl, atmosphere::AtmosphereType, pressure_control::PressureControlType,
 };
 use crate::ord::stirring_conditions::StirringMethodType;
-use crate::ord::temperature_conditions::{
-    TemperatureControl, temperature_control::TemperatureControlType,
-};
 use crate::ord::vessel::VesselType;
 use crate::outcome::outcome;
 use crate::quantities::celsius;
@@ -139,10 +137,6 @@ fn conditions(plan: &Plan, plate: &Plate, well: &PlannedWell) -> ord::ReactionCo
     });
     ord::ReactionConditions {
         temperature: Some(ord::TemperatureConditions {
-            control: Some(TemperatureControl {
-                r#type: TemperatureControlType::DryAluminumPlate.into(),
-                details: String::new(),
-            }),
             setpoint: Some(celsius(reaction_c)),
             ..ord::TemperatureConditions::default()
         }),
@@ -201,30 +195,14 @@ fn provenance(plan: &Plan, person: &Person) -> ord::ReactionProvenance {
     }
 }
 
-/// A time of the calendar by ISO 8601, in UTC.
-///
-/// Days to year, month and day by the algorithm of Fliegel and Van Flandern (Commun. ACM 1968, 11, 657,
-/// doi:10.1145/364096.364097).
+/// A time of the calendar by ISO 8601, in UTC; empty for one that no calendar has.
 fn date_time(unix_ms: u64) -> String {
-    let seconds = unix_ms / 1000;
-    let (days, second) = ((seconds / 86_400) as i64, seconds % 86_400);
-    // 1970-01-01 is the Julian day 2,440,588
-    let l = days + 2_440_588 + 68_569;
-    let n = 4 * l / 146_097;
-    let l = l - (146_097 * n + 3) / 4;
-    let i = 4000 * (l + 1) / 1_461_001;
-    let l = l - 1461 * i / 4 + 31;
-    let j = 80 * l / 2447;
-    let day = l - 2447 * j / 80;
-    let l = j / 11;
-    let month = j + 2 - 12 * l;
-    let year = 100 * (n - 49) + i + l;
-    format!(
-        "{year:04}-{month:02}-{day:02}T{:02}:{:02}:{:02}Z",
-        second / 3600,
-        second / 60 % 60,
-        second % 60
-    )
+    let time = i64::try_from(unix_ms)
+        .ok()
+        .and_then(DateTime::from_timestamp_millis);
+    time.map_or(String::new(), |time| {
+        time.format("%Y-%m-%dT%H:%M:%SZ").to_string()
+    })
 }
 
 #[cfg(test)]

@@ -2,6 +2,7 @@
 
 use std::collections::BTreeMap;
 
+use enolattice_model::Addition;
 use enolattice_plate::{Dose, Form, Plan, PlannedWell, Plate, Reagent, Role, Stock};
 
 use crate::Structures;
@@ -23,7 +24,7 @@ pub(crate) fn inputs(
     let doses = well.doses.iter().filter_map(|dose| {
         let stock = plan.stocks.get(dose.stock)?;
         let input = of_dose(well, plate, stock, dose, structures)?;
-        Some((format!("{} {}", role_name(stock.role), stock.label), input))
+        Some((format!("{} {}", stock.role.name(), stock.label), input))
     });
     doses.collect()
 }
@@ -53,7 +54,8 @@ fn of_dose(
     let is_dosed = stock.role == Role::Electrophile && plate.dosing_min > 0.0;
     Some(ReactionInput {
         components,
-        addition_order: order(stock.role, &well.addition),
+        addition_order: Addition::from_name(&well.addition)
+            .map_or(0, |addition| stock.role.order_group(addition) as i32),
         addition_duration: is_dosed.then(|| minutes(plate.dosing_min)),
         addition_speed: is_dosed.then(|| AdditionSpeed {
             r#type: AdditionSpeedType::Slow.into(),
@@ -97,30 +99,5 @@ fn solvent(name: &str, volume_ul: f64, has_solutes: bool, structures: &Structure
         amount: Some(microliters(volume_ul, has_solutes)),
         reaction_role: ReactionRoleType::Solvent.into(),
         ..Compound::default()
-    }
-}
-
-/// Place in the order of addition, from 1: as the plan's transfers are grouped.
-fn order(role: Role, addition: &str) -> i32 {
-    match (role, addition) {
-        (Role::Solvent, _) => 1,
-        (Role::Additive, _) => 2,
-        (Role::Base, "substrate into base") | (Role::Substrate, "base into substrate") => 3,
-        (Role::Substrate, "all together") => 3,
-        (Role::Substrate | Role::Base, "substrate into base" | "base into substrate") => 4,
-        (Role::Electrophile, "all together") => 4,
-        _ => 5,
-    }
-}
-
-fn role_name(role: Role) -> &'static str {
-    match role {
-        Role::Solvent => "solvent",
-        Role::Additive => "additive",
-        Role::Substrate => "substrate",
-        Role::Base => "base",
-        Role::Electrophile => "electrophile",
-        Role::Quench => "quench",
-        Role::Diluent => "diluent",
     }
 }

@@ -1,5 +1,7 @@
 //! Numbers and dates as they are read on paper.
 
+use chrono::DateTime;
+
 /// A share in whole percent; `unknown` where there is none.
 ///
 /// What rounds to nothing or to everything says so: `< 1 %`, `> 99 %`.
@@ -83,27 +85,14 @@ pub(crate) fn time(seconds: f64) -> String {
     }
 }
 
-/// A time in UTC from milliseconds since 1970: `2026-12-02 05:10 UTC`.
-///
-/// The date by whole eras of 146,097 days, 400 years of the Gregorian calendar.
+/// A time in UTC from milliseconds since 1970: `2026-12-02 05:10 UTC`; `unknown` for one that no calendar has.
 pub(crate) fn date(unix_ms: u64) -> String {
-    let minutes = unix_ms / 60_000;
-    let (hour, minute) = (minutes / 60 % 24, minutes % 60);
-    // days since 1 March of the year 0, so that a leap day is the last of its year
-    let days = minutes / 1_440 + 719_468;
-    let (era, of_era) = (days / 146_097, days % 146_097);
-    let year_of_era = (of_era - of_era / 1_460 + of_era / 36_524 - of_era / 146_096) / 365;
-    let of_year = of_era - (365 * year_of_era + year_of_era / 4 - year_of_era / 100);
-    // months of 153 days in five, from March
-    let from_march = (5 * of_year + 2) / 153;
-    let day = of_year - (153 * from_march + 2) / 5 + 1;
-    let month = if from_march < 10 {
-        from_march + 3
-    } else {
-        from_march - 9
-    };
-    let year = 400 * era + year_of_era + u64::from(month <= 2);
-    format!("{year}-{month:02}-{day:02} {hour:02}:{minute:02} UTC")
+    let time = i64::try_from(unix_ms)
+        .ok()
+        .and_then(DateTime::from_timestamp_millis);
+    time.map_or("unknown".to_owned(), |time| {
+        time.format("%Y-%m-%d %H:%M UTC").to_string()
+    })
 }
 
 #[cfg(test)]

@@ -1,5 +1,6 @@
 //! What a colleague would say of a cell: which acid, which base, how far, what then happens, what competes, what limits.
 
+use enolattice_molecule::element_symbol;
 use enolattice_reagents::SolventClass;
 use enolattice_units::math;
 
@@ -109,7 +110,7 @@ impl Telling<'_> {
         };
         Some(format!(
             "its {}–H at atom {} is the stronger acid, pKa {:.1} in DMSO: {needed}",
-            super::symbol(x.element),
+            element_symbol(x.element),
             x.atom,
             x.pka_dmso
         ))

@@ -8,7 +8,7 @@ use std::panic::{AssertUnwindSafe, catch_unwind};
 use chematic::core::{BondOrder, apply_kekule, kekulize};
 use chematic::smiles::parse;
 use chematic_depict::compute_layout;
-use enolattice_molecule::{Atom, Molecule};
+use enolattice_molecule::{Atom, Molecule, element_symbol};
 use maud::{Markup, html};
 
 /// Atoms beyond which a drawing of this size cannot be read.
@@ -273,7 +273,7 @@ impl Sketch<'_> {
             -1 => "⁻".to_owned(),
             other => format!("{other:+}"),
         };
-        Some(format!("{}{sign}", symbol(element)))
+        Some(format!("{}{sign}", element_symbol(element)))
     }
 
     fn label(&mut self, atom: usize) {
@@ -322,27 +322,6 @@ fn hydrogens(number: u8) -> String {
         2 => "H₂".to_owned(),
         3 => "H₃".to_owned(),
         _ => "H₄".to_owned(),
-    }
-}
-
-/// Symbol of an element that the reader takes.
-fn symbol(element: u8) -> &'static str {
-    match element {
-        1 => "H",
-        5 => "B",
-        6 => "C",
-        7 => "N",
-        8 => "O",
-        9 => "F",
-        14 => "Si",
-        15 => "P",
-        16 => "S",
-        17 => "Cl",
-        33 => "As",
-        34 => "Se",
-        35 => "Br",
-        53 => "I",
-        _ => "?",
     }
 }
 

@@ -146,6 +146,11 @@ impl Deck {
         self.refusal_of_solvent(solvent, formation_c.max(reaction_c))
     }
 
+    /// What a source well gives at most when it is filled with its excess, uL.
+    pub(crate) fn source_room_ul(&self) -> f64 {
+        (self.source_capacity_ul - self.source_dead_ul) / (1.0 + self.excess_percent / 100.0)
+    }
+
     /// Gas above a well's liquid, uL: as declared, or what the usual well of the format leaves (common practice).
     pub fn gas_space_ul(&self, plates: PlateFormat, liquid_ul: f64) -> f64 {
         let well_ul = match plates {

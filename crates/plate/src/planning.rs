@@ -74,16 +74,19 @@ pub fn plan(ground: &Ground<'_>) -> Result<Plan, Vec<InputError>> {
     let library = ground.grid.model().library();
     let carrier = carrier(ground)?;
     let mut supply = supply(&recipes, volume_ul, &request.deck, library, carrier)?;
-    let is = |wanted: bool| {
-        let at = move |(at, recipe): (usize, &Recipe)| {
-            ((recipe.content == Content::Deuterium) == wanted).then_some(at)
-        };
-        recipes.iter().enumerate().filter_map(at)
-    };
     let (well, deck) = (&request.well, &request.deck);
     let quench_ul = well.quench_share * volume_ul;
-    supply.add_for_all(Role::Quench, &well.quench, is(false), quench_ul, deck);
-    supply.add_for_all(Role::Quench, "D2O", is(true), quench_ul, deck);
+    let deuterium = |recipe: &Recipe| recipe.content == Content::Deuterium;
+    let protic = |recipe: &Recipe| !deuterium(recipe);
+    supply.add_for_all(
+        Role::Quench,
+        &well.quench,
+        &recipes,
+        protic,
+        quench_ul,
+        deck,
+    );
+    supply.add_for_all(Role::Quench, "D2O", &recipes, deuterium, quench_ul, deck);
     let diluent = match well.internal_standard.as_str() {
         "" => well.diluent.clone(),
         standard => format!("{} with {standard}", well.diluent),
@@ -91,7 +94,8 @@ pub fn plan(ground: &Ground<'_>) -> Result<Plan, Vec<InputError>> {
     supply.add_for_all(
         Role::Diluent,
         &diluent,
-        0..recipes.len(),
+        &recipes,
+        |_| true,
         well.diluent_ul,
         deck,
     );

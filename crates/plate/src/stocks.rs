@@ -15,6 +15,7 @@ use enolattice_reagents::{Library, Solvent};
 use serde::{Deserialize, Serialize};
 
 use crate::request::fault;
+use crate::transfers::source_wells;
 use crate::{Deck, Recipe, Role, Well};
 pub use liquid::Liquid;
 use made_in::{MadeIn, made_in};
@@ -231,14 +232,12 @@ impl Making<'_> {
         };
         for concentration_m in &strengths.concentrations_m {
             let stock = self.stocks.len();
-            let mut used_ul = 0.0;
             let mut served = 0;
             for (at, amount) in wells {
                 if strengths.of(*amount) != *concentration_m {
                     continue;
                 }
                 let volume_nl = self.rounded_nl(1000.0 * amount / concentration_m);
-                used_ul += volume_nl / 1000.0;
                 served += 1;
                 self.doses[*at].push(Dose {
                     stock,
@@ -250,7 +249,7 @@ impl Making<'_> {
                 first,
                 key,
                 *concentration_m,
-                used_ul,
+                &self.gives_ul(stock, key.role),
                 self.deck,
                 self.library,
             );
@@ -317,10 +316,8 @@ impl Making<'_> {
         }
         for (solvent, wells) in rest {
             let stock = self.stocks.len();
-            let mut used_ul = 0.0;
             for (at, room_nl) in &wells {
                 let volume_nl = self.rounded_nl(*room_nl);
-                used_ul += volume_nl / 1000.0;
                 self.doses[*at].push(Dose {
                     stock,
                     volume_nl,
@@ -328,12 +325,18 @@ impl Making<'_> {
                 });
             }
             let record = &self.recipes[wells[0].0].cell.solvent.record;
-            let made = liquid::solvent(record, Role::Solvent, &solvent, used_ul, self.deck);
+            let gives_ul = self.gives_ul(stock, Role::Solvent);
+            let made = liquid::solvent(record, Role::Solvent, &solvent, &gives_ul, self.deck);
             self.stocks.push(Stock {
                 wells: wells.len(),
                 ..made
             });
         }
+    }
+
+    /// What each source well of a stock gives to the doses that are there, uL.
+    fn gives_ul(&self, stock: usize, role: Role) -> Vec<f64> {
+        source_wells(stock, role, self.recipes, &self.doses, self.deck)
     }
 
     fn rounded_nl(&self, volume_nl: f64) -> f64 {
@@ -344,7 +347,7 @@ impl Making<'_> {
         if !self.faults.is_empty() {
             return Err(self.faults);
         }
-        liquid::place(&mut self.stocks, &self.doses, self.deck);
+        liquid::place(&mut self.stocks, self.recipes, &self.doses, self.deck);
         Ok(Supply {
             stocks: self.stocks,
             doses: self.doses,
@@ -354,17 +357,20 @@ impl Making<'_> {
 }
 
 impl Supply {
-    /// Adds a liquid that each well gets the same volume of, and gives its index; the volume is rounded to the deck's step.
+    /// Adds a liquid that each wanted well gets the same volume of; the volume is rounded to the deck's step.
     pub(crate) fn add_for_all(
         &mut self,
         role: Role,
         name: &str,
-        wells: impl Iterator<Item = usize>,
+        recipes: &[Recipe],
+        wanted: impl Fn(&Recipe) -> bool,
         volume_ul: f64,
         deck: &Deck,
     ) {
         let volume_nl = (1000.0 * volume_ul / deck.step_nl).round() * deck.step_nl;
-        let wells: Vec<usize> = wells.collect();
+        let wells: Vec<usize> = (0..recipes.len())
+            .filter(|at| wanted(&recipes[*at]))
+            .collect();
         if wells.is_empty() || volume_nl <= 0.0 {
             return;
         }
@@ -376,12 +382,12 @@ impl Supply {
                 mass_mg: 0.0,
             });
         }
-        let used_ul = volume_nl * wells.len() as f64 / 1000.0;
+        let gives_ul = source_wells(stock, role, recipes, &self.doses, deck);
         self.stocks.push(Stock {
             wells: wells.len(),
-            ..liquid::unknown(role, name, used_ul, deck)
+            ..liquid::unknown(role, name, &gives_ul, deck)
         });
-        liquid::place(&mut self.stocks, &self.doses, deck);
+        liquid::place(&mut self.stocks, recipes, &self.doses, deck);
     }
 
     /// Volume fractions of the solvents that a well holds once all reagents are in, largest first.

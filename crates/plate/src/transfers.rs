@@ -5,7 +5,7 @@ use std::collections::BTreeMap;
 use enolattice_model::Addition;
 use serde::{Deserialize, Serialize};
 
-use crate::stocks::{Stock, Supply};
+use crate::stocks::{Dose, Stock, Supply};
 use crate::{Deck, Form, Recipe, Role, Well};
 
 /// One movement of liquid.
@@ -93,26 +93,24 @@ pub(crate) fn transfers(
     sample_nl: f64,
     deck: &Deck,
 ) -> Vec<Transfer> {
-    let mut wanted: Vec<(usize, u32, usize, Well, f64)> = Vec::new();
+    let mut wanted: Vec<(Turn, usize, f64)> = Vec::new();
     for (recipe, doses) in recipes.iter().zip(&supply.doses) {
         for dose in doses.iter().filter(|dose| dose.volume_nl > 0.0) {
-            let role = supply.stocks[dose.stock].role;
-            let group = role.order_group(recipe.addition());
-            wanted.push((recipe.plate, group, dose.stock, recipe.well, dose.volume_nl));
+            let turn = Turn::of(recipe, supply.stocks[dose.stock].role);
+            wanted.push((turn, dose.stock, dose.volume_nl));
         }
     }
-    wanted.sort_by_key(|&(plate, group, stock, well, _)| {
-        (plate, group, stock, well.column, well.row)
-    });
+    wanted.sort_by_key(|&(turn, stock, _)| (turn.plate, turn.group, stock, turn));
     let mut transfers = Vec::new();
     let mut levels = Levels::default();
-    for (plate, group, stock, well, volume_nl) in wanted {
+    for (turn, stock, volume_nl) in wanted {
         let of = &mut supply.stocks[stock];
         let is_diluent = of.role == Role::Diluent;
+        let plate = turn.plate;
         for volume_nl in split(volume_nl, deck) {
             let source = levels.draw(stock, of, volume_nl, deck);
             transfers.push(Transfer {
-                group: GROUPS * plate as u32 + group,
+                group: GROUPS * plate as u32 + turn.group,
                 source_plate: of.sources[source].plate.clone(),
                 source_well: of.sources[source].well,
                 plate: if is_diluent {
@@ -120,7 +118,7 @@ pub(crate) fn transfers(
                 } else {
                     plate_name(plate)
                 },
-                well,
+                well: turn.well(),
                 volume_nl,
                 liquid: of.reagent.clone(),
                 stock: Some(stock),
@@ -143,6 +141,65 @@ pub(crate) fn transfers(
     transfers
 }
 
+/// When a well gets a dose: plate by plate, group by group, column by column.
+#[derive(Clone, Copy, PartialEq, Eq, PartialOrd, Ord)]
+struct Turn {
+    plate: usize,
+    group: u32,
+    column: u8,
+    row: u8,
+}
+
+impl Turn {
+    fn of(recipe: &Recipe, role: Role) -> Turn {
+        Turn {
+            plate: recipe.plate,
+            group: role.order_group(recipe.addition()),
+            column: recipe.well.column,
+            row: recipe.well.row,
+        }
+    }
+
+    fn well(self) -> Well {
+        Well {
+            row: self.row,
+            column: self.column,
+        }
+    }
+}
+
+/// What each source well of a stock gives, uL: filled up one after the other in the order of the transfers, so that none
+/// has to give what it no longer holds. One source well at least.
+pub(crate) fn source_wells(
+    stock: usize,
+    role: Role,
+    recipes: &[Recipe],
+    doses: &[Vec<Dose>],
+    deck: &Deck,
+) -> Vec<f64> {
+    let mut draws: Vec<(Turn, f64)> = Vec::new();
+    for (recipe, doses) in recipes.iter().zip(doses) {
+        let of_stock = doses.iter().filter(|dose| dose.stock == stock);
+        draws.extend(of_stock.map(|dose| (Turn::of(recipe, role), dose.volume_nl)));
+    }
+    draws.sort_by_key(|&(turn, _)| turn);
+    let mut wells = vec![0.0];
+    for volume_nl in draws.into_iter().flat_map(|(_, nl)| split(nl, deck)) {
+        let last = wells.len() - 1;
+        if has_room(wells[last], volume_nl, deck) {
+            wells[last] += volume_nl / 1000.0;
+        } else {
+            wells.push(volume_nl / 1000.0);
+        }
+    }
+    wells
+}
+
+/// Whether a source well that has given so much, uL, can give this much more and keep its excess.
+fn has_room(taken_ul: f64, volume_nl: f64, deck: &Deck) -> bool {
+    taken_ul + volume_nl / 1000.0 <= deck.source_room_ul() + 1e-9
+}
+
 /// Which source well of each stock is drawn on.
 #[derive(Default)]
 struct Levels {
@@ -152,11 +209,8 @@ struct Levels {
 impl Levels {
     /// The source well that still holds enough, and takes the volume from it.
     fn draw(&mut self, stock: usize, of: &mut Stock, volume_nl: f64, deck: &Deck) -> usize {
-        let last = of.sources.len() - 1;
         let at = self.current.entry(stock).or_default();
-        let holds =
-            |source: &crate::Source| source.filled_ul - deck.source_dead_ul - source.taken_ul;
-        while *at < last && holds(&of.sources[*at]) < volume_nl / 1000.0 {
+        if !has_room(of.sources[*at].taken_ul, volume_nl, deck) {
             *at += 1;
         }
         of.sources[*at].taken_ul += volume_nl / 1000.0;
@@ -164,15 +218,19 @@ impl Levels {
     }
 }
 
-/// A volume in transfers of the deck's largest at most, none below its smallest.
+/// A volume in transfers of what the head and a source well hold at most, none below the deck's smallest.
 fn split(volume_nl: f64, deck: &Deck) -> Vec<f64> {
-    let n = (volume_nl / deck.largest_nl - 1e-9).ceil().max(1.0);
+    let largest_nl = deck.largest_nl.min(1000.0 * deck.source_room_ul());
+    let n = (volume_nl / largest_nl - 1e-9).ceil().max(1.0);
     let each = (volume_nl / n / deck.step_nl).floor() * deck.step_nl;
-    let mut parts = vec![each; n as usize];
-    let left = volume_nl - each * n;
-    parts[0] += left;
-    parts.retain(|part| *part > 0.0);
-    parts
+    let mut left = volume_nl - each * n;
+    let part = |_| {
+        let more = left.min(deck.step_nl);
+        left -= more;
+        each + more
+    };
+    let parts = (0..n as usize).map(part);
+    parts.filter(|part| *part > 0.0).collect()
 }
 
 /// Movements of the head. A naive list has one uptake for each transfer.

@@ -8,6 +8,7 @@ use serde::{Deserialize, Serialize};
 
 use crate::stocks::made_in::half_life_h;
 use crate::stocks::{Dose, Form, Key, Source, Stock};
+use crate::transfers::source_wells;
 use crate::{Deck, Recipe, Role};
 
 /// What a pipetting robot asks about a liquid.
@@ -143,14 +144,14 @@ pub(super) fn stock(
     recipe: &Recipe,
     key: &Key,
     concentration_m: f64,
-    used_ul: f64,
+    gives_ul: &[f64],
     deck: &Deck,
     library: &Library,
 ) -> Stock {
     let known = substance(recipe, key.role);
     let solvent = library.solvent_or_mixture(&key.made_in.solvent).ok();
     let mut notes = Vec::new();
-    let mut made_ul = made(used_ul, deck);
+    let mut made_ul = made(gives_ul, deck);
     let bought = key.made_in.bought_m();
     let mass = |made_ul: f64| {
         let of_reagent = known.molar_mass_g_mol? * concentration_m * made_ul / 1000.0;
@@ -223,11 +224,11 @@ pub(super) fn solvent(
     record: &Solvent,
     role: Role,
     name: &str,
-    used_ul: f64,
+    gives_ul: &[f64],
     deck: &Deck,
 ) -> Stock {
     Stock {
-        made_ul: made(used_ul, deck),
+        made_ul: made(gives_ul, deck),
         liquid: Some(Liquid::of(record)),
         hazards: statements(&record.hazards),
         keep: format!("closed; grade: {}", record.grade),
@@ -236,9 +237,9 @@ pub(super) fn solvent(
 }
 
 /// A liquid that the library does not have: quench and diluent, as the user names them.
-pub(super) fn unknown(role: Role, name: &str, used_ul: f64, deck: &Deck) -> Stock {
+pub(super) fn unknown(role: Role, name: &str, gives_ul: &[f64], deck: &Deck) -> Stock {
     Stock {
-        made_ul: made(used_ul, deck),
+        made_ul: made(gives_ul, deck),
         hazards: "unknown".to_owned(),
         ..nothing(role, name)
     }
@@ -267,16 +268,13 @@ fn nothing(role: Role, reagent: &str) -> Stock {
     }
 }
 
-/// What is made of a stock for what is used: excess, and what stays behind in each source well, uL.
-fn made(used_ul: f64, deck: &Deck) -> f64 {
-    let filled = used_ul * (1.0 + deck.excess_percent / 100.0);
-    filled + source_wells(used_ul, deck) as f64 * deck.source_dead_ul
+/// What is made of a stock for what its source wells give: excess, and what stays behind in each, uL.
+fn made(gives_ul: &[f64], deck: &Deck) -> f64 {
+    gives_ul.iter().map(|gives| filled(*gives, deck)).sum()
 }
 
-fn source_wells(used_ul: f64, deck: &Deck) -> usize {
-    let filled = used_ul * (1.0 + deck.excess_percent / 100.0);
-    let room = deck.source_capacity_ul - deck.source_dead_ul;
-    (filled / room - 1e-9).ceil().max(1.0) as usize
+fn filled(gives_ul: f64, deck: &Deck) -> f64 {
+    gives_ul * (1.0 + deck.excess_percent / 100.0) + deck.source_dead_ul
 }
 
 /// Letter of the source plates of a role: what must not meet in a spill stands on different plates.
@@ -291,14 +289,10 @@ fn letter(role: Role) -> char {
 }
 
 /// Gives each stock its label and its wells on source plates.
-pub(super) fn place(stocks: &mut [Stock], doses: &[Vec<Dose>], deck: &Deck) {
-    let mut used = vec![0.0; stocks.len()];
-    for dose in doses.iter().flatten() {
-        used[dose.stock] += dose.volume_nl / 1000.0;
-    }
+pub(super) fn place(stocks: &mut [Stock], recipes: &[Recipe], doses: &[Vec<Dose>], deck: &Deck) {
     let mut labels: BTreeMap<char, usize> = BTreeMap::new();
     let mut wells: BTreeMap<char, usize> = BTreeMap::new();
-    for (stock, used_ul) in stocks.iter_mut().zip(used) {
+    for (at, stock) in stocks.iter_mut().enumerate() {
         let plate = letter(stock.role);
         let number = labels.entry(plate).or_default();
         *number += 1;
@@ -307,16 +301,14 @@ pub(super) fn place(stocks: &mut [Stock], doses: &[Vec<Dose>], deck: &Deck) {
         if stock.form == Form::Solid {
             continue;
         }
-        let n = source_wells(used_ul, deck);
         let taken = wells.entry(plate).or_default();
-        for _ in 0..n {
+        for gives_ul in source_wells(at, stock.role, recipes, doses, deck) {
             let per_plate = deck.source_wells.wells();
             let well = deck.source_wells.by_columns().nth(*taken % per_plate);
             stock.sources.push(Source {
                 plate: format!("source {plate}{}", *taken / per_plate + 1),
                 well: well.expect("below the number of wells"),
-                filled_ul: used_ul * (1.0 + deck.excess_percent / 100.0) / n as f64
-                    + deck.source_dead_ul,
+                filled_ul: filled(gives_ul, deck),
                 taken_ul: 0.0,
             });
             *taken += 1;

@@ -1,66 +1,41 @@
-//! Runs the blocks of one job on the compute pool and commits each as it is finished.
+//! What runs on the compute pool and on blocking threads: making a job's work ready, scoring and committing a block.
 
+use std::any::Any;
 use std::panic::{AssertUnwindSafe, catch_unwind};
-use std::sync::atomic::{AtomicBool, AtomicUsize, Ordering};
-use std::sync::{Mutex, PoisonError};
 
 use enolattice_grid::{BlockId, Columns};
-use enolattice_store::{JobId, JobRecord, Store};
+use enolattice_store::{JobRecord, Store};
 
-use crate::{Work, WorkBlock};
+use crate::{MakeWork, Piece, Task, Work, WorkBlock};
 
 /// Times a block is tried before it is given up.
 const TRIES: usize = 2;
 
-/// How a run ended.
-#[derive(Clone, Debug, PartialEq, Eq)]
-pub(crate) enum Outcome {
-    /// All blocks are committed.
-    Finished,
-    /// Every block was tried, some failed for good; with the reason.
-    Gaps(String),
-    /// It was stopped between two blocks.
-    Stopped,
-    /// It cannot go on, with the reason.
-    Failed(String),
+/// A job that is ready to be served.
+pub(crate) enum Ready {
+    /// Work and the blocks that are not committed yet, in order.
+    Blocks(Work, Vec<WorkBlock>),
+    /// One piece.
+    Piece(Piece),
 }
 
-/// Scores and commits the blocks of a job that are not committed yet.
+/// Makes a job's work ready.
 ///
 /// A job whose blocks were scored by another model is begun anew: one job, one model.
-pub(crate) fn run(
-    pool: &rayon::ThreadPool,
-    store: &Store,
-    record: &JobRecord,
-    work: &Work,
-    stop: &AtomicBool,
-) -> Outcome {
+pub(crate) fn ready(make: &MakeWork, store: &Store, record: &JobRecord) -> Result<Ready, String> {
+    let broken_off = |panic: String| format!("the work broke off: {panic}");
+    let work = match caught(|| make(record)).map_err(broken_off)?? {
+        Task::Piece(piece) => return Ok(Ready::Piece(piece)),
+        Task::Blocks(work) => work,
+    };
     if work.blocks.len() as u64 != record.blocks {
         let (now, then) = (work.blocks.len(), record.blocks);
-        return Outcome::Failed(format!(
+        return Err(format!(
             "the campaign has {now} blocks now and had {then} when it was submitted; submit it again"
         ));
     }
-    let missing = match missing_blocks(store, record, work) {
-        Ok(missing) => missing,
-        Err(error) => return Outcome::Failed(error.to_string()),
-    };
-    let shift = Shift {
-        store,
-        job: record.id,
-        work,
-        missing: &missing,
-        next: AtomicUsize::new(0),
-        stop,
-        gaps: Mutex::default(),
-        failure: Mutex::default(),
-    };
-    pool.scope(|scope| {
-        for _ in 0..pool.current_num_threads() {
-            scope.spawn(|_| shift.work());
-        }
-    });
-    shift.outcome()
+    let missing = missing_blocks(store, record, &work).map_err(|error| error.to_string())?;
+    Ok(Ready::Blocks(work, missing))
 }
 
 fn missing_blocks(
@@ -80,95 +55,44 @@ fn missing_blocks(
         .collect())
 }
 
-/// What the threads share while they work on a job.
-struct Shift<'a> {
-    store: &'a Store,
-    job: JobId,
-    work: &'a Work,
-    missing: &'a [WorkBlock],
-    next: AtomicUsize,
-    stop: &'a AtomicBool,
-    /// Blocks that failed for good, with the reason.
-    gaps: Mutex<Vec<(BlockId, String)>>,
-    /// Why the whole job cannot go on.
-    failure: Mutex<Option<String>>,
+/// How a block ended.
+pub(crate) enum Scored {
+    /// It is committed.
+    Committed,
+    /// It failed for good, with the reason; the job goes on without it.
+    Gap(String),
+    /// It cannot be kept, with the reason: the job cannot go on.
+    Lost(String),
 }
 
-impl Shift<'_> {
-    /// Takes block after block, in order, until there are none or the job is stopped.
-    fn work(&self) {
-        while !self.stop.load(Ordering::Relaxed) && self.failed().is_none() {
-            let Some(block) = self.missing.get(self.next.fetch_add(1, Ordering::Relaxed)) else {
-                return;
-            };
-            match self.score(block.id) {
-                Ok(columns) => self.commit(block, &columns),
-                Err(reason) => {
-                    tracing::warn!(job = %self.job, segment = block.id.segment, block = block.id.index, reason, "block failed");
-                    self.gaps
-                        .lock()
-                        .unwrap_or_else(PoisonError::into_inner)
-                        .push((block.id, reason));
-                }
-            }
-        }
-    }
-
-    /// Scores a block; what panics is tried once more.
-    fn score(&self, block: BlockId) -> Result<Columns, String> {
-        let attempt = || {
-            catch_unwind(AssertUnwindSafe(|| (self.work.score)(block)))
-                .map_err(|panic| panic_text(panic.as_ref()))
-        };
-        (1..TRIES).fold(attempt(), |outcome, _| outcome.or_else(|_| attempt()))
-    }
-
-    fn commit(&self, block: &WorkBlock, columns: &Columns) {
-        if let Err(error) = self
-            .store
-            .commit_block(self.job, block.id, block.first_cell, columns)
-        {
-            self.failure
-                .lock()
-                .unwrap_or_else(PoisonError::into_inner)
-                .get_or_insert_with(|| error.to_string());
-        }
-    }
-
-    fn failed(&self) -> Option<String> {
-        self.failure
-            .lock()
-            .unwrap_or_else(PoisonError::into_inner)
-            .clone()
-    }
-
-    fn outcome(self) -> Outcome {
-        if let Some(reason) = self.failed() {
-            return Outcome::Failed(reason);
-        }
-        if self.next.into_inner() < self.missing.len() {
-            return Outcome::Stopped;
-        }
-        let mut gaps = self
-            .gaps
-            .into_inner()
-            .unwrap_or_else(PoisonError::into_inner);
-        gaps.sort();
-        match gaps.first() {
-            None => Outcome::Finished,
-            Some((block, reason)) => Outcome::Gaps(format!(
-                "{} of {} blocks failed twice; the first, {}/{}: {reason}",
-                gaps.len(),
-                self.work.blocks.len(),
-                block.segment,
-                block.index,
-            )),
+/// Scores a block and commits it; what panics is tried once more.
+pub(crate) fn score(store: &Store, record: &JobRecord, work: &Work, block: &WorkBlock) -> Scored {
+    let attempt = || caught(|| (work.score)(block.id));
+    let columns: Result<Columns, String> =
+        (1..TRIES).fold(attempt(), |outcome, _| outcome.or_else(|_| attempt()));
+    let commit = |columns: &Columns| {
+        let kept = store.commit_block(record.id, block.id, block.first_cell, columns);
+        kept.map_err(|error| error.to_string())
+    };
+    match columns {
+        Ok(columns) => match caught(|| commit(&columns)).and_then(|kept| kept) {
+            Ok(_) => Scored::Committed,
+            Err(reason) => Scored::Lost(reason),
+        },
+        Err(reason) => {
+            let BlockId { segment, index } = block.id;
+            tracing::warn!(job = %record.id, segment, block = index, reason, "block failed");
+            Scored::Gap(reason)
         }
     }
 }
 
-/// What a panic said.
-pub(crate) fn panic_text(panic: &(dyn std::any::Any + Send)) -> String {
+/// What work gives, or what its panic said.
+pub(crate) fn caught<T>(work: impl FnOnce() -> T) -> Result<T, String> {
+    catch_unwind(AssertUnwindSafe(work)).map_err(|panic| panic_text(panic.as_ref()))
+}
+
+fn panic_text(panic: &(dyn Any + Send)) -> String {
     let text = panic.downcast_ref::<String>().map(String::as_str);
     text.or_else(|| panic.downcast_ref::<&str>().copied())
         .unwrap_or("no reason given")

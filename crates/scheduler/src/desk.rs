@@ -1,32 +1,50 @@
-//! The loop that takes jobs from the journal, runs them and tells who watches.
+//! The loop that takes jobs from the journal, serves them and tells who watches.
 
-use std::collections::BTreeSet;
+use std::collections::{BTreeMap, BTreeSet};
 use std::sync::Arc;
-use std::sync::atomic::{AtomicBool, Ordering};
-use std::time::{Duration, SystemTime, UNIX_EPOCH};
+use std::time::{Duration, Instant, SystemTime, UNIX_EPOCH};
 
-use enolattice_store::{JobId, JobRecord, JobState, StateChange, Store, StoreError};
+use enolattice_grid::BlockId;
+use enolattice_store::{JobId, JobKind, JobRecord, JobState, StateChange, Store, StoreError};
 use tokio::sync::{mpsc, oneshot};
-use tokio::task::{JoinError, JoinHandle, spawn_blocking};
-use tokio::time::{MissedTickBehavior, interval};
+use tokio::task::spawn_blocking;
+use tokio::time::{MissedTickBehavior, interval, sleep};
 
-use crate::compute::{self, Outcome, panic_text};
-use crate::{Event, Progress, SchedulerConfig, SchedulerError, next_job, transition};
+use crate::compute::{self, Ready, Scored, caught};
+use crate::served_job::{Hands, ServedJob};
+use crate::{Candidate, Event, Progress, SchedulerConfig, SchedulerError, Served, transition};
 
 /// Time between two acknowledgements, each followed by word of the progress.
 const ACKNOWLEDGE_EVERY: Duration = Duration::from_millis(500);
+/// Jobs that are served at a time, for each has its tables in memory; beyond it only more urgent ones are begun.
+const MOST_SERVED: usize = 8;
+/// The clock is looked at this often while a job waits for a time: it may be set.
+const LOOK_AT_THE_CLOCK_EVERY: Duration = Duration::from_secs(30);
 
-type CancelReply = oneshot::Sender<Result<JobRecord, SchedulerError>>;
+/// Who wants to hear what became of a command.
+pub(crate) type Reply = oneshot::Sender<Result<JobRecord, SchedulerError>>;
 
-/// What the loop is told.
+/// What the loop is told from outside.
 #[derive(Debug)]
 pub(crate) enum Command {
     /// A job was queued.
     Look,
-    /// The user gave a job up.
-    Cancel(JobId, CancelReply),
+    /// The user wants something of a job: to pause, resume or cancel it.
+    Ask(JobId, Event, Reply),
     /// Stop between two blocks.
     Shutdown,
+}
+
+/// What the loop is told by its own threads.
+enum News {
+    /// A job is ready to be served, or cannot be.
+    Ready(JobId, Result<Ready, String>),
+    /// A block has ended.
+    Block(JobId, BlockId, Duration, Scored),
+    /// The one piece of a job has ended.
+    Piece(JobId, Result<(), String>),
+    /// What was committed is safe, or cannot be made so.
+    Acknowledged(Result<(), String>),
 }
 
 /// The loop's own things.
@@ -34,35 +52,64 @@ pub(crate) struct Desk {
     store: Arc<Store>,
     config: SchedulerConfig,
     pool: Arc<rayon::ThreadPool>,
+    /// Jobs that wait or are paused.
+    waiting: BTreeMap<JobId, JobRecord>,
+    served: BTreeMap<JobId, ServedJob>,
+    shares: Served,
+    /// Blocks in hand.
+    busy: usize,
     /// Jobs whose change of state could not be journalled: left alone until the next start.
     stuck: BTreeSet<JobId>,
+    acknowledging: bool,
     closing: bool,
+    tell_desk: mpsc::UnboundedSender<News>,
+    news: mpsc::UnboundedReceiver<News>,
 }
 
 impl Desk {
     /// A desk that has not looked at its jobs yet.
     pub(crate) fn new(store: Arc<Store>, config: SchedulerConfig, pool: rayon::ThreadPool) -> Desk {
+        let (tell_desk, news) = mpsc::unbounded_channel();
         Desk {
             store,
             config,
             pool: Arc::new(pool),
+            waiting: BTreeMap::new(),
+            served: BTreeMap::new(),
+            shares: Served::default(),
+            busy: 0,
             stuck: BTreeSet::new(),
+            acknowledging: false,
             closing: false,
+            tell_desk,
+            news,
         }
     }
 
-    /// Runs jobs until it is told to stop or nobody is left to tell it anything.
+    /// Serves jobs until it is told to stop or nobody is left to tell it anything.
     pub(crate) async fn work(mut self, mut commands: mpsc::UnboundedReceiver<Command>) {
         self.take_up_interrupted().await;
-        while !self.closing {
-            let jobs = self.store.jobs();
-            match next_job(jobs.iter().filter(|job| !self.stuck.contains(&job.id))) {
-                Some(job) => self.run(job, &mut commands).await,
-                None => match commands.recv().await {
-                    Some(Command::Look) => {}
-                    Some(Command::Cancel(job, reply)) => self.cancel_waiting(job, reply).await,
-                    Some(Command::Shutdown) | None => self.closing = true,
+        self.look();
+        let mut ticks = interval(ACKNOWLEDGE_EVERY);
+        ticks.set_missed_tick_behavior(MissedTickBehavior::Delay);
+        loop {
+            self.serve().await;
+            if self.closing && self.served.is_empty() && !self.acknowledging {
+                return;
+            }
+            let patience = self.until_the_next_date();
+            tokio::select! {
+                news = self.news.recv() => match news {
+                    Some(news) => self.hear(news).await,
+                    None => return,
                 },
+                command = commands.recv(), if !self.closing => match command {
+                    Some(Command::Look) => self.look(),
+                    Some(Command::Ask(job, event, reply)) => self.obey(job, event, reply).await,
+                    Some(Command::Shutdown) | None => self.close_down().await,
+                },
+                _ = ticks.tick(), if !self.served.is_empty() && !self.acknowledging => self.acknowledge_aside(),
+                () = sleep(patience.unwrap_or_default()), if patience.is_some() => {}
             }
         }
     }
@@ -77,59 +124,244 @@ impl Desk {
         }
     }
 
-    /// Runs one job to its end, or until it is cancelled or the scheduler is shut down.
-    async fn run(&mut self, job: JobId, commands: &mut mpsc::UnboundedReceiver<Command>) {
+    /// Reads anew which jobs wait.
+    fn look(&mut self) {
+        let waits = |record: &JobRecord| {
+            matches!(record.state, JobState::Queued | JobState::Paused)
+                && !self.stuck.contains(&record.id)
+        };
+        let records = self.store.jobs().into_iter().filter(waits);
+        self.waiting = records.map(|record| (record.id, record)).collect();
+    }
+
+    /// Starts jobs and hands blocks out until all hands are full or there is nothing to do.
+    async fn serve(&mut self) {
+        if self.closing {
+            return;
+        }
+        self.give_up_the_late().await;
+        while let Some(job) = self.next_piece() {
+            self.start(job).await;
+        }
+        while self.busy < self.pool.current_num_threads() {
+            let Some(job) = self.whose_turn() else {
+                return;
+            };
+            match self.waiting.contains_key(&job) {
+                true => self.start(job).await,
+                false => self.hand_out(job),
+            }
+        }
+    }
+
+    /// The planning job to begin now: one at a time, beside the blocks.
+    fn next_piece(&self) -> Option<JobId> {
+        let is_piece = |record: &JobRecord| matches!(record.kind, JobKind::Planning { .. });
+        if self.served.values().any(|served| is_piece(&served.record)) {
+            return None;
+        }
+        let now = now_unix_ms();
+        let ready = self.waiting.values().filter(|record| {
+            is_piece(record) && self.may_start(record, now) && self.has_what_it_needs(record)
+        });
+        ready
+            .min_by_key(|record| (-i64::from(record.terms.priority), record.id))
+            .map(|record| record.id)
+    }
+
+    /// The screening job that gets the next free thread.
+    fn whose_turn(&mut self) -> Option<JobId> {
+        let now = now_unix_ms();
+        let getting_ready = self.served.values().any(|served| {
+            matches!(served.hands, Hands::GettingReady) && served.record.kind == JobKind::Screening
+        });
+        let candidate = |record: &JobRecord, cells_left| {
+            let (job, priority) = (record.id, record.terms.priority);
+            (job, priority, cells_left, record.terms.requester.clone())
+        };
+        let in_hand = self.served.values();
+        let in_hand =
+            in_hand.filter_map(|served| Some(candidate(&served.record, served.cells_left()?)));
+        let urgent = self
+            .served
+            .values()
+            .map(|served| served.record.terms.priority);
+        let urgent = urgent.max().filter(|_| self.served.len() >= MOST_SERVED);
+        let waiting = self.waiting.values().filter(|record| {
+            // one at a time: until it is ready nobody knows what is left of it
+            !getting_ready
+                && record.kind == JobKind::Screening
+                && self.may_start(record, now)
+                && urgent.is_none_or(|urgent| record.terms.priority > urgent)
+        });
+        let waiting = waiting.map(|record| candidate(record, record.cells));
+        let known: Vec<_> = in_hand.chain(waiting).collect();
+        let candidates: Vec<Candidate<'_>> = known
+            .iter()
+            .map(|(job, priority, cells_left, requester)| Candidate {
+                job: *job,
+                requester,
+                priority: *priority,
+                cells_left: *cells_left,
+            })
+            .collect();
+        let at_work = self.served.values();
+        let at_work = at_work.map(|served| served.record.terms.requester.as_str());
+        self.shares.turn(&candidates, at_work)
+    }
+
+    fn may_start(&self, record: &JobRecord, now_unix_ms: u64) -> bool {
+        let due = record
+            .terms
+            .not_before_unix_ms
+            .is_none_or(|not_before| not_before <= now_unix_ms);
+        record.state == JobState::Queued && due
+    }
+
+    /// Whether the job that a plan is made from has ended, or is gone.
+    fn has_what_it_needs(&self, record: &JobRecord) -> bool {
+        let JobKind::Planning { of, .. } = record.kind else {
+            return true;
+        };
+        self.store.job(of).is_ok_and(|of| of.state.is_ended()) || self.store.job(of).is_err()
+    }
+
+    async fn start(&mut self, job: JobId) {
         let Some(record) = self.change(job, Event::Start, String::new()).await else {
             return;
         };
-        let stop = Arc::new(AtomicBool::new(false));
-        let mut blocks = self.hand_out(record, stop.clone());
-        let mut cancels = Vec::new();
-        let mut trouble = None;
-        let mut ticks = interval(ACKNOWLEDGE_EVERY);
-        ticks.set_missed_tick_behavior(MissedTickBehavior::Delay);
-        let outcome = loop {
-            tokio::select! {
-                outcome = &mut blocks => break outcome.unwrap_or_else(broken_off),
-                _ = ticks.tick(), if trouble.is_none() => match self.acknowledge().await {
-                    Ok(()) => self.tell(job, None),
-                    Err(error) => {
-                        stop.store(true, Ordering::Relaxed);
-                        trouble = Some(error.to_string());
+        let (store, make, tell) = (
+            self.store.clone(),
+            self.config.work.clone(),
+            self.tell_desk.clone(),
+        );
+        self.served.insert(job, ServedJob::new(record.clone()));
+        spawn_blocking(move || {
+            let ready = caught(|| compute::ready(&make, &store, &record)).and_then(|ready| ready);
+            // the store is let go before word of it is heard
+            drop((store, make));
+            let _ = tell.send(News::Ready(job, ready));
+        });
+    }
+
+    fn hand_out(&mut self, job: JobId) {
+        let Some(served) = self.served.get_mut(&job) else {
+            return;
+        };
+        let Some((work, block)) = served.take() else {
+            return;
+        };
+        self.busy += 1;
+        let (store, record, tell) = (
+            self.store.clone(),
+            served.record.clone(),
+            self.tell_desk.clone(),
+        );
+        self.pool.spawn(move || {
+            let begun = Instant::now();
+            let scored = caught(|| compute::score(&store, &record, &work, &block));
+            drop((store, work));
+            let scored = scored.unwrap_or_else(Scored::Lost);
+            let _ = tell.send(News::Block(job, block.id, begun.elapsed(), scored));
+        });
+    }
+
+    fn begin_piece(&mut self, job: JobId, piece: crate::Piece) {
+        let Some(served) = self.served.get_mut(&job) else {
+            return;
+        };
+        served.hands = Hands::Piece;
+        let (tell, stop) = (self.tell_desk.clone(), served.stop.clone());
+        spawn_blocking(move || {
+            let ended = caught(|| piece(&stop)).and_then(|ended| ended);
+            let _ = tell.send(News::Piece(job, ended));
+        });
+    }
+
+    async fn hear(&mut self, news: News) {
+        match news {
+            News::Ready(job, ready) => {
+                let Some(served) = self.served.get_mut(&job) else {
+                    return;
+                };
+                match ready {
+                    Err(reason) => served.fail(reason),
+                    Ok(Ready::Piece(piece)) if served.goes_on() => {
+                        return self.begin_piece(job, piece);
                     }
-                },
-                command = commands.recv(), if !self.closing => match command {
-                    Some(Command::Look) => {}
-                    Some(Command::Cancel(this, reply)) if this == job => {
-                        stop.store(true, Ordering::Relaxed);
-                        cancels.push(reply);
+                    Ok(Ready::Piece(_)) => {}
+                    Ok(Ready::Blocks(work, missing)) => {
+                        served.hands = Hands::Blocks {
+                            work: Arc::new(work),
+                            cells_left: missing.iter().map(|block| block.cells).sum(),
+                            missing,
+                            next: 0,
+                        };
                     }
-                    Some(Command::Cancel(other, reply)) => self.cancel_waiting(other, reply).await,
-                    Some(Command::Shutdown) | None => {
-                        stop.store(true, Ordering::Relaxed);
-                        self.closing = true;
-                    }
-                },
+                }
+                served.in_hand -= 1;
+                self.settle(job).await;
             }
+            News::Block(job, block, taken, scored) => {
+                self.busy -= 1;
+                let Some(served) = self.served.get_mut(&job) else {
+                    return;
+                };
+                self.shares.count(&served.record.terms.requester, taken);
+                served.in_hand -= 1;
+                match scored {
+                    Scored::Committed => {}
+                    Scored::Gap(reason) => served.gaps.push((block, reason)),
+                    Scored::Lost(reason) => served.fail(reason),
+                }
+                self.settle(job).await;
+            }
+            News::Piece(job, ended) => {
+                let Some(served) = self.served.get_mut(&job) else {
+                    return;
+                };
+                served.in_hand -= 1;
+                match (ended, &served.stopping) {
+                    (Ok(()), _) => {}
+                    // what was told to stop has no result to speak of
+                    (Err(_), Some(_)) => served.hands = Hands::GettingReady,
+                    (Err(reason), None) => served.fail(reason),
+                }
+                self.settle(job).await;
+            }
+            News::Acknowledged(outcome) => {
+                self.acknowledging = false;
+                match outcome {
+                    Ok(()) => self.served.keys().for_each(|job| self.tell(*job, None)),
+                    Err(reason) => self.fail_all(&reason).await,
+                }
+            }
+        }
+    }
+
+    /// Ends a job of which nothing is in hand any more.
+    async fn settle(&mut self, job: JobId) {
+        if !self.served.get(&job).is_some_and(ServedJob::is_over) {
+            return;
+        }
+        let Some(mut served) = self.served.remove(&job) else {
+            return;
         };
         // Nothing is reported done before it is on disk.
-        let trouble = match trouble {
-            None => self
-                .acknowledge()
-                .await
-                .err()
-                .map(|error| error.to_string()),
-            some => some,
-        };
-        let (event, failure) = self.verdict(job, outcome, trouble, !cancels.is_empty());
+        if let Err(error) = self.acknowledge().await {
+            served.fail(error.to_string());
+        }
+        let progress = self.store.progress(job);
+        let none_committed = progress.is_ok_and(|progress| progress.blocks == 0);
+        let (event, failure) = served.verdict(none_committed);
         self.change(job, event, failure).await;
-        for reply in cancels {
+        let Some((wanted, replies)) = served.stopping else {
+            return;
+        };
+        for reply in replies {
             let answer = match self.store.job(job) {
-                Ok(record) if record.state == JobState::Cancelled => Ok(record),
-                Ok(record) => Err(SchedulerError::Ended {
-                    job,
-                    state: record.state,
-                }),
+                Ok(record) if event == wanted => Ok(record),
+                Ok(JobRecord { state, .. }) => Err(SchedulerError::refused(job, state, wanted)),
                 Err(error) => Err(error.into()),
             };
             // Whoever asked may have left.
@@ -137,44 +369,108 @@ impl Desk {
         }
     }
 
-    /// Starts the blocks of a job on a blocking thread; the pool does the work.
-    fn hand_out(&self, record: JobRecord, stop: Arc<AtomicBool>) -> JoinHandle<Outcome> {
-        let (store, pool, work) = (
-            self.store.clone(),
-            self.pool.clone(),
-            self.config.work.clone(),
-        );
-        spawn_blocking(move || match work(&record) {
-            Ok(work) => compute::run(&pool, &store, &record, &work, &stop),
-            Err(reason) => Outcome::Failed(reason),
-        })
-    }
-
-    /// What a run's outcome means for the job.
-    fn verdict(
-        &self,
-        job: JobId,
-        outcome: Outcome,
-        trouble: Option<String>,
-        cancelled: bool,
-    ) -> (Event, String) {
-        let none_committed = self
-            .store
-            .progress(job)
-            .is_ok_and(|progress| progress.blocks == 0);
-        match (trouble, outcome) {
-            (Some(reason), _) | (None, Outcome::Failed(reason)) => (Event::Fail, reason),
-            (None, Outcome::Finished) => (Event::Finish, String::new()),
-            (None, Outcome::Gaps(reason)) if none_committed => (Event::Fail, reason),
-            (None, Outcome::Gaps(reason)) => (Event::FinishWithGaps, reason),
-            (None, Outcome::Stopped) if cancelled => (Event::Cancel, String::new()),
-            (None, Outcome::Stopped) => (Event::Interrupt, String::new()),
+    async fn settle_all(&mut self) {
+        let jobs: Vec<JobId> = self.served.keys().copied().collect();
+        for job in jobs {
+            self.settle(job).await;
         }
     }
 
-    async fn cancel_waiting(&self, job: JobId, reply: CancelReply) {
-        // Whoever asked may have left.
-        let _ = reply.send(self.apply(job, Event::Cancel, String::new()).await);
+    async fn fail_all(&mut self, reason: &str) {
+        for served in self.served.values_mut() {
+            served.fail(reason.to_owned());
+        }
+        self.settle_all().await;
+    }
+
+    /// Pauses, resumes or cancels a job.
+    async fn obey(&mut self, job: JobId, event: Event, reply: Reply) {
+        match self.served.get_mut(&job) {
+            Some(served) if transition(JobState::Running, event).is_ok() => {
+                served.stop_for(event, Some(reply));
+                self.settle(job).await;
+            }
+            _ => {
+                let answer = self.apply(job, event, String::new()).await;
+                // Whoever asked may have left.
+                let _ = reply.send(answer);
+            }
+        }
+    }
+
+    async fn close_down(&mut self) {
+        self.closing = true;
+        for served in self.served.values_mut() {
+            served.stop_for(Event::Interrupt, None);
+        }
+        self.settle_all().await;
+    }
+
+    /// Gives up jobs whose deadline has passed.
+    async fn give_up_the_late(&mut self) {
+        let now = now_unix_ms();
+        let late = |record: &JobRecord| {
+            let deadline = record.terms.deadline_unix_ms;
+            deadline.is_some_and(|deadline| deadline <= now)
+        };
+        let waiting = self.waiting.values().filter(|record| late(record));
+        let waiting: Vec<JobId> = waiting.map(|record| record.id).collect();
+        for job in waiting {
+            let reason = self.lateness(job);
+            self.change(job, Event::Fail, reason).await;
+        }
+        let served = self.served.values();
+        let served = served.filter(|served| served.goes_on() && late(&served.record));
+        let served: Vec<JobId> = served.map(|served| served.record.id).collect();
+        for job in served {
+            let reason = self.lateness(job);
+            if let Some(served) = self.served.get_mut(&job) {
+                served.fail(reason);
+            }
+            self.settle(job).await;
+        }
+    }
+
+    fn lateness(&self, job: JobId) -> String {
+        let screened = self
+            .store
+            .progress(job)
+            .map_or(0, |progress| progress.cells);
+        match screened {
+            0 => "its deadline passed before any of it was done".to_owned(),
+            screened => format!(
+                "its deadline passed when {screened} of its cells were screened; these can be ranked"
+            ),
+        }
+    }
+
+    /// How long until a job may start or is late; none where no job waits for a time.
+    fn until_the_next_date(&self) -> Option<Duration> {
+        if self.closing {
+            return None;
+        }
+        let now = now_unix_ms();
+        let served = self.served.values().filter(|served| served.goes_on());
+        let served = served.filter_map(|served| served.record.terms.deadline_unix_ms);
+        let waiting = self.waiting.values().flat_map(|record| {
+            let starts = record.terms.not_before_unix_ms;
+            let starts = starts.filter(|starts| *starts > now);
+            starts.into_iter().chain(record.terms.deadline_unix_ms)
+        });
+        let next = served.chain(waiting).min()?;
+        let wait = Duration::from_millis(next.saturating_sub(now).max(1));
+        Some(wait.min(LOOK_AT_THE_CLOCK_EVERY))
+    }
+
+    /// Acknowledges what is committed without keeping the threads waiting.
+    fn acknowledge_aside(&mut self) {
+        self.acknowledging = true;
+        let (store, tell) = (self.store.clone(), self.tell_desk.clone());
+        spawn_blocking(move || {
+            let outcome = store.acknowledge().map_err(|error| error.to_string());
+            drop(store);
+            let _ = tell.send(News::Acknowledged(outcome));
+        });
     }
 
     async fn acknowledge(&self) -> Result<(), SchedulerError> {
@@ -189,6 +485,7 @@ impl Desk {
             Err(error) => {
                 tracing::error!(%job, %error, "the job's state could not be journalled");
                 self.stuck.insert(job);
+                self.waiting.remove(&job);
                 self.tell(job, Some(error.to_string()));
                 None
             }
@@ -197,7 +494,7 @@ impl Desk {
 
     /// Journals what an event does to a job and tells of it.
     async fn apply(
-        &self,
+        &mut self,
         job: JobId,
         event: Event,
         failure: String,
@@ -206,11 +503,8 @@ impl Desk {
         let at_unix_ms = now_unix_ms();
         let record = blocking(move || {
             let from = store.job(job)?.state;
-            let ended = |refused: crate::Refused| SchedulerError::Ended {
-                job,
-                state: refused.state,
-            };
-            let to = transition(from, event).map_err(ended)?;
+            let to = transition(from, event)
+                .map_err(|refused| SchedulerError::Refused { job, refused })?;
             Ok(store.change_state(
                 job,
                 &StateChange {
@@ -222,6 +516,14 @@ impl Desk {
             )?)
         })
         .await?;
+        match record.state {
+            JobState::Queued | JobState::Paused => {
+                self.waiting.insert(job, record.clone());
+            }
+            _ => {
+                self.waiting.remove(&job);
+            }
+        }
         tracing::info!(%job, state = %record.state, failure = record.failure, "job changed");
         self.tell(job, None);
         Ok(record)
@@ -257,14 +559,6 @@ async fn blocking<T: Send + 'static>(
         }
         .into()),
     }
-}
-
-/// The outcome of a run that panicked outside of its blocks.
-fn broken_off(error: JoinError) -> Outcome {
-    Outcome::Failed(match error.try_into_panic() {
-        Ok(panic) => format!("the work broke off: {}", panic_text(panic.as_ref())),
-        Err(error) => format!("the work broke off: {error}"),
-    })
 }
 
 /// The one clock of the queue.

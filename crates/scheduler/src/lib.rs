@@ -4,8 +4,11 @@ mod compute;
 mod desk;
 mod rules;
 mod scheduler;
+mod served_job;
+mod turn;
 mod work;
 
-pub use rules::{Event, Refused, next_job, transition};
+pub use rules::{Event, Refused, transition};
 pub use scheduler::{MakeWork, Notify, Progress, Scheduler, SchedulerConfig, SchedulerError};
-pub use work::{Work, WorkBlock};
+pub use turn::{Candidate, Served};
+pub use work::{Piece, Task, Work, WorkBlock};

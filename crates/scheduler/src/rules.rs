@@ -1,6 +1,6 @@
-//! The rules of the queue: pure functions, no clock, no disk.
+//! The rules of a job's state: pure functions, no clock, no disk.
 
-use enolattice_store::{JobId, JobRecord, JobState};
+use enolattice_store::JobState;
 
 /// What happens to a job.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
@@ -9,21 +9,27 @@ pub enum Event {
     Start,
     /// The engine stopped before the job ended.
     Interrupt,
+    /// The user holds it.
+    Pause,
+    /// The user lets it go on.
+    Resume,
     /// The user gave it up.
     Cancel,
-    /// All blocks are committed.
+    /// All its work is kept.
     Finish,
     /// Every block was tried, some failed for good.
     FinishWithGaps,
-    /// It cannot go on.
+    /// It cannot go on, or its deadline passed.
     Fail,
 }
 
 impl Event {
     /// All events.
-    pub const ALL: [Event; 6] = [
+    pub const ALL: [Event; 8] = [
         Event::Start,
         Event::Interrupt,
+        Event::Pause,
+        Event::Resume,
         Event::Cancel,
         Event::Finish,
         Event::FinishWithGaps,
@@ -34,6 +40,8 @@ impl Event {
         match self {
             Event::Start => "start",
             Event::Interrupt => "be interrupted",
+            Event::Pause => "be paused",
+            Event::Resume => "be resumed",
             Event::Cancel => "be cancelled",
             Event::Finish => "finish",
             Event::FinishWithGaps => "finish with gaps",
@@ -52,29 +60,22 @@ pub struct Refused {
     pub event: Event,
 }
 
-/// The state after an event. An ended job stays as it is. Nothing pauses a job yet; a paused
-/// one can only be given up.
+/// The state after an event. An ended job stays as it is.
 ///
 /// # Errors
 /// [`Refused`] where the state does not allow the event.
 pub fn transition(state: JobState, event: Event) -> Result<JobState, Refused> {
+    use JobState::{Cancelled, Done, DoneWithGaps, Failed, Paused, Queued, Running};
     match (state, event) {
-        (JobState::Queued, Event::Start) => Ok(JobState::Running),
-        (JobState::Running, Event::Interrupt) => Ok(JobState::Queued),
-        (JobState::Running, Event::Finish) => Ok(JobState::Done),
-        (JobState::Running, Event::FinishWithGaps) => Ok(JobState::DoneWithGaps),
-        (JobState::Running, Event::Fail) => Ok(JobState::Failed),
-        (JobState::Queued | JobState::Running | JobState::Paused, Event::Cancel) => {
-            Ok(JobState::Cancelled)
-        }
+        (Queued, Event::Start) => Ok(Running),
+        (Running, Event::Interrupt) | (Paused, Event::Resume) => Ok(Queued),
+        (Queued | Running, Event::Pause) => Ok(Paused),
+        (Running, Event::Finish) => Ok(Done),
+        (Running, Event::FinishWithGaps) => Ok(DoneWithGaps),
+        (Queued | Running | Paused, Event::Fail) => Ok(Failed),
+        (Queued | Running | Paused, Event::Cancel) => Ok(Cancelled),
         _ => Err(Refused { state, event }),
     }
-}
-
-/// The job to run next: of those that wait, the one submitted first.
-pub fn next_job<'a>(jobs: impl IntoIterator<Item = &'a JobRecord>) -> Option<JobId> {
-    let waiting = jobs.into_iter().filter(|job| job.state == JobState::Queued);
-    waiting.map(|job| job.id).min()
 }
 
 #[cfg(test)]
@@ -87,32 +88,20 @@ mod tests {
         let table = [
             (
                 JobState::Queued,
-                "running    -       cancelled -    -              -",
+                "running -      paused -      cancelled -    -              failed",
             ),
             (
                 JobState::Running,
-                "-          queued  cancelled done done-with-gaps failed",
+                "-       queued paused -      cancelled done done-with-gaps failed",
             ),
             (
                 JobState::Paused,
-                "-          -       cancelled -    -              -",
+                "-       -      -      queued cancelled -    -              failed",
             ),
-            (
-                JobState::Done,
-                "-          -       -         -    -              -",
-            ),
-            (
-                JobState::DoneWithGaps,
-                "-          -       -         -    -              -",
-            ),
-            (
-                JobState::Failed,
-                "-          -       -         -    -              -",
-            ),
-            (
-                JobState::Cancelled,
-                "-          -       -         -    -              -",
-            ),
+            (JobState::Done, "- - - - - - - -"),
+            (JobState::DoneWithGaps, "- - - - - - - -"),
+            (JobState::Failed, "- - - - - - - -"),
+            (JobState::Cancelled, "- - - - - - - -"),
         ];
         assert_eq!(table.map(|(state, _)| state), JobState::ALL);
         for (state, row) in table {

@@ -7,11 +7,11 @@ use enolattice_store::{JobId, JobRecord, JobState, Store, StoreError};
 use tokio::sync::{mpsc, oneshot};
 use tokio::task::JoinHandle;
 
-use crate::Work;
 use crate::desk::{Command, Desk};
+use crate::{Event, Refused, Task};
 
 /// Makes the work of a job; an error fails the job with this text.
-pub type MakeWork = Arc<dyn Fn(&JobRecord) -> Result<Work, String> + Send + Sync>;
+pub type MakeWork = Arc<dyn Fn(&JobRecord) -> Result<Task, String> + Send + Sync>;
 
 /// Takes word of a job; must not block.
 pub type Notify = Arc<dyn Fn(Progress) + Send + Sync>;
@@ -53,13 +53,13 @@ pub struct Progress {
 /// Why the scheduler did not do what it was asked.
 #[derive(Debug, thiserror::Error)]
 pub enum SchedulerError {
-    /// The job has ended.
-    #[error("job `{job}` is {state} already")]
-    Ended {
+    /// The job's state does not allow what was asked.
+    #[error("job `{job}`: {refused}")]
+    Refused {
         /// Job.
         job: JobId,
-        /// Its state.
-        state: JobState,
+        /// What was refused.
+        refused: Refused,
     },
     /// The store failed.
     #[error(transparent)]
@@ -75,7 +75,16 @@ pub enum SchedulerError {
     },
 }
 
-/// Runs the jobs of a store one after the other. Dropping it stops the loop after the blocks in hand.
+impl SchedulerError {
+    pub(crate) fn refused(job: JobId, state: JobState, event: Event) -> SchedulerError {
+        SchedulerError::Refused {
+            job,
+            refused: Refused { state, event },
+        }
+    }
+}
+
+/// Serves the jobs of a store. Dropping it stops the loop after the blocks in hand.
 #[derive(Debug)]
 pub struct Scheduler {
     commands: mpsc::UnboundedSender<Command>,
@@ -116,10 +125,31 @@ impl Scheduler {
     /// Cancels a job between two blocks; returns when its blocks have stopped.
     ///
     /// # Errors
-    /// [`SchedulerError::Ended`], [`SchedulerError::ShutDown`], [`SchedulerError::Store`].
+    /// [`SchedulerError::Refused`] where it has ended, [`SchedulerError::ShutDown`], [`SchedulerError::Store`].
     pub async fn cancel(&self, job: JobId) -> Result<JobRecord, SchedulerError> {
+        self.ask(job, Event::Cancel).await
+    }
+
+    /// Holds a job between two blocks; returns when its blocks have stopped. A piece of work that is begun goes on or is
+    /// begun anew later.
+    ///
+    /// # Errors
+    /// As [`Scheduler::cancel`].
+    pub async fn pause(&self, job: JobId) -> Result<JobRecord, SchedulerError> {
+        self.ask(job, Event::Pause).await
+    }
+
+    /// Lets a paused job wait for its turn again.
+    ///
+    /// # Errors
+    /// [`SchedulerError::Refused`] where it is not paused, [`SchedulerError::ShutDown`], [`SchedulerError::Store`].
+    pub async fn resume(&self, job: JobId) -> Result<JobRecord, SchedulerError> {
+        self.ask(job, Event::Resume).await
+    }
+
+    async fn ask(&self, job: JobId, event: Event) -> Result<JobRecord, SchedulerError> {
         let (reply, answer) = oneshot::channel();
-        let sent = self.commands.send(Command::Cancel(job, reply));
+        let sent = self.commands.send(Command::Ask(job, event, reply));
         sent.map_err(|_| SchedulerError::ShutDown)?;
         answer.await.unwrap_or(Err(SchedulerError::ShutDown))
     }

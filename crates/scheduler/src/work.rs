@@ -2,6 +2,7 @@
 
 use std::fmt;
 use std::sync::Arc;
+use std::sync::atomic::AtomicBool;
 
 use enolattice_grid::{BlockId, Columns, Grid};
 use enolattice_model::Fingerprint;
@@ -13,9 +14,11 @@ pub struct WorkBlock {
     pub id: BlockId,
     /// Number of its first cell.
     pub first_cell: u64,
+    /// Its cells.
+    pub cells: u64,
 }
 
-/// The work of one job.
+/// The blocks of a job.
 #[derive(Clone)]
 pub struct Work {
     /// Fingerprint of the model that scores.
@@ -29,11 +32,15 @@ pub struct Work {
 impl Work {
     /// The work of a grid.
     pub fn of_grid(grid: Arc<Grid>) -> Work {
-        let first_cell = |id| WorkBlock {
-            id,
-            first_cell: grid.block_cells(id).start,
+        let block = |id| {
+            let cells = grid.block_cells(id);
+            WorkBlock {
+                id,
+                first_cell: cells.start,
+                cells: cells.end - cells.start,
+            }
         };
-        let blocks = grid.blocks().map(first_cell).collect();
+        let blocks = grid.blocks().map(block).collect();
         let model_fingerprint = grid.model().fingerprint();
         Work {
             model_fingerprint,
@@ -49,5 +56,23 @@ impl fmt::Debug for Work {
             .field("model_fingerprint", &self.model_fingerprint)
             .field("blocks", &self.blocks.len())
             .finish_non_exhaustive()
+    }
+}
+
+/// Work that is one piece; it keeps its own result. An error fails its job with this text. It may end early, with any
+/// answer, once it is told to stop.
+pub type Piece = Box<dyn FnOnce(&AtomicBool) -> Result<(), String> + Send>;
+
+/// What a job takes.
+pub enum Task {
+    /// Blocks, each kept when it is done.
+    Blocks(Work),
+    /// One piece, begun anew where it was cut off.
+    Piece(Piece),
+}
+
+impl From<Work> for Task {
+    fn from(work: Work) -> Task {
+        Task::Blocks(work)
     }
 }

@@ -10,7 +10,7 @@ use std::time::{Duration, Instant};
 
 use enolattice_grid::{BlockId, CELLS_PER_BLOCK, CampaignSpec, Columns};
 use enolattice_model::{Fingerprint, Score};
-use enolattice_store::{JobId, NewJob, Order, RankRequest, Ranking, Store};
+use enolattice_store::{JobId, JobKind, NewJob, Order, RankRequest, Ranking, Store, Terms};
 
 /// Threads that commit.
 const THREADS: u64 = 2;
@@ -209,6 +209,8 @@ fn synthetic_job(cells: u64, blocks: u64) -> NewJob {
         blocks,
         request_id: String::new(),
         warnings: vec![],
+        kind: JobKind::Screening,
+        terms: Terms::default(),
     }
 }
 

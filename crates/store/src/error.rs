@@ -98,6 +98,14 @@ pub enum StoreError {
         /// Why.
         reason: String,
     },
+    /// Only jobs that have ended are deleted.
+    #[error("job `{job}` is {state} and cannot be deleted; cancel it first")]
+    NotEnded {
+        /// Job.
+        job: JobId,
+        /// Its state.
+        state: JobState,
+    },
     /// The job's state is not the one the change starts from.
     #[error("job `{job}` is {found}, not {expected}")]
     StateMoved {

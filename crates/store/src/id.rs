@@ -41,6 +41,11 @@ impl JobId {
 }
 
 impl PlanId {
+    /// The id of the plan that a job makes: the job's own, so that the plan is made once.
+    pub fn of_job(job: JobId) -> PlanId {
+        PlanId(job.0)
+    }
+
     /// An id after `last`, as [`JobId::after`].
     pub(crate) fn after(last: Option<PlanId>, now_unix_ms: u64, random: u64) -> PlanId {
         PlanId(after(last.map(|PlanId(last)| last), now_unix_ms, random))

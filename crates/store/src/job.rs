@@ -6,7 +6,7 @@ use std::sync::Arc;
 use enolattice_grid::CampaignSpec;
 use enolattice_model::Fingerprint;
 
-use crate::JobId;
+use crate::{JobId, PlanId};
 
 /// State of a job. Which changes are allowed is the scheduler's business.
 #[derive(Clone, Copy, Debug, PartialEq, Eq, Hash)]
@@ -15,7 +15,7 @@ pub enum JobState {
     Queued,
     /// Being screened.
     Running,
-    /// Held by the user. Nothing pauses a job yet.
+    /// Held by the user.
     Paused,
     /// All blocks committed.
     Done,
@@ -72,6 +72,44 @@ impl fmt::Display for JobState {
     }
 }
 
+/// What a job does.
+#[derive(Clone, Debug, Default, PartialEq)]
+pub enum JobKind {
+    /// Screens its campaign.
+    #[default]
+    Screening,
+    /// Makes a plan of plates from another job's ranking once that has ended; its campaign is empty.
+    Planning {
+        /// The job whose ranking it plans from.
+        of: JobId,
+        /// What the plan is asked to be, as JSON.
+        request: String,
+    },
+}
+
+impl JobKind {
+    /// The kind's name as it is printed.
+    pub fn name(&self) -> &'static str {
+        match self {
+            JobKind::Screening => "screening",
+            JobKind::Planning { .. } => "planning",
+        }
+    }
+}
+
+/// Whose job it is and when it may run.
+#[derive(Clone, Debug, Default, PartialEq, Eq)]
+pub struct Terms {
+    /// Who asks, as told; jobs of different requesters share the engine. Empty: nobody in particular.
+    pub requester: String,
+    /// Jobs of higher priority run first.
+    pub priority: i32,
+    /// Before this time it is not started, milliseconds since 1970-01-01 UTC.
+    pub not_before_unix_ms: Option<u64>,
+    /// After this time it is given up, milliseconds since 1970-01-01 UTC.
+    pub deadline_unix_ms: Option<u64>,
+}
+
 /// A job to be made.
 #[derive(Clone, Debug)]
 pub struct NewJob {
@@ -89,6 +127,10 @@ pub struct NewJob {
     pub request_id: String,
     /// What the user should know about the campaign.
     pub warnings: Vec<String>,
+    /// What it does.
+    pub kind: JobKind,
+    /// Whose it is and when it may run.
+    pub terms: Terms,
 }
 
 /// A job.
@@ -126,6 +168,17 @@ pub struct JobRecord {
     pub warnings: Vec<String>,
     /// Raised whenever committed blocks were lost or dropped: pages begun before are outdated.
     pub generation: u32,
+    /// What it does.
+    pub kind: JobKind,
+    /// Whose it is and when it may run.
+    pub terms: Terms,
+}
+
+impl JobRecord {
+    /// The plan that a job makes, under the job's own id; none of a screening.
+    pub fn plan_id(&self) -> Option<PlanId> {
+        matches!(self.kind, JobKind::Planning { .. }).then(|| PlanId::of_job(self.id))
+    }
 }
 
 /// What [`crate::Store::create_job`] did.

@@ -56,6 +56,18 @@ impl Journal {
         write_durably(&path, text.as_bytes())
     }
 
+    /// Removes a record; when this returns, it stays away after a power cut.
+    pub(crate) fn remove(&self, job: JobId) -> Result<(), StoreError> {
+        let path = self.path(job);
+        fs::remove_file(&path).map_err(StoreError::io(&path))?;
+        sync_dir(&self.dir)
+    }
+
+    /// Whether there is a file under this id, be it readable or not.
+    pub(crate) fn has_file(&self, job: JobId) -> bool {
+        self.path(job).try_exists().unwrap_or(true)
+    }
+
     fn path(&self, job: JobId) -> PathBuf {
         self.dir.join(format!("{job}.{ENDING}"))
     }

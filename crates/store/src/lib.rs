@@ -24,7 +24,7 @@ mod token;
 pub use commit::{Commit, Progress};
 pub use error::StoreError;
 pub use id::{JobId, PlanId};
-pub use job::{Created, JobRecord, JobState, NewJob, StateChange};
+pub use job::{Created, JobKind, JobRecord, JobState, NewJob, StateChange, Terms};
 pub use open::OpenReport;
 pub use order::Order;
 pub use plans::PlanRecord;

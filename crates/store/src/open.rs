@@ -100,7 +100,13 @@ pub(crate) fn open(dir: &Path, now_unix_ms: u64) -> Result<Opened, StoreError> {
         .into_iter()
         .map(|record| (record.id, (record, JobIndex::default())))
         .collect();
-    let database = open_database(&dir.join("db"), now_unix_ms, &mut jobs, &mut report)?;
+    let database = open_database(
+        &dir.join("db"),
+        now_unix_ms,
+        &journal,
+        &mut jobs,
+        &mut report,
+    )?;
     for (record, index) in jobs.values_mut() {
         mend(record, index, &journal, &mut report)?;
     }
@@ -151,21 +157,23 @@ fn check_format(dir: &Path) -> Result<(), StoreError> {
 fn open_database(
     path: &Path,
     now_unix_ms: u64,
+    journal: &Journal,
     jobs: &mut BTreeMap<JobId, (JobRecord, JobIndex)>,
     report: &mut OpenReport,
 ) -> Result<Database, StoreError> {
     let mut damaged = Vec::new();
-    let reason = match Database::open(path).and_then(|db| verify(db, path, jobs, &mut damaged)) {
-        Ok(database) => {
-            for (job, block, _) in &damaged {
-                database.remove(&block::key(*job, *block))?;
+    let reason =
+        match Database::open(path).and_then(|db| verify(db, path, journal, jobs, &mut damaged)) {
+            Ok(database) => {
+                for (job, block, _) in &damaged {
+                    database.remove(&block::key(*job, *block))?;
+                }
+                report.damaged = damaged;
+                return sync(database, jobs);
             }
-            report.damaged = damaged;
-            return sync(database, jobs);
-        }
-        Err(Fault::Refused(error)) => return Err(error),
-        Err(Fault::Broken(reason)) => reason,
-    };
+            Err(Fault::Refused(error)) => return Err(error),
+            Err(Fault::Broken(reason)) => reason,
+        };
     let aside = set_aside(path, now_unix_ms)?;
     jobs.values_mut()
         .for_each(|(_, index)| *index = JobIndex::default());
@@ -189,23 +197,29 @@ fn open_database(
     }
 }
 
-/// Reads and checks every block of the known jobs.
+/// Reads and checks every block of the known jobs; removes those of jobs that were deleted in mid-crash.
 ///
 /// After some damage sled opens without a word and a part of its tree is gone or out of reach;
 /// nothing it holds is trusted when a job that had ended misses blocks.
 fn verify(
     database: Database,
     path: &Path,
+    journal: &Journal,
     jobs: &mut BTreeMap<JobId, (JobRecord, JobIndex)>,
     damaged: &mut Vec<(JobId, BlockId, String)>,
 ) -> Result<Database, Fault> {
     let mut any_block = false;
+    let mut ownerless = Vec::new();
     database.scan(path, |key, value| {
         any_block = true;
         let Some((job, block)) = block::parse_key(&key) else {
             return;
         };
         let Some((_, index)) = jobs.get_mut(&job) else {
+            // a record that cannot be read keeps its blocks
+            if !journal.has_file(job) {
+                ownerless.push(key);
+            }
             return;
         };
         match block::decode(&key, &value) {
@@ -213,6 +227,9 @@ fn verify(
             Err(reason) => damaged.push((job, block, reason)),
         }
     })?;
+    for key in ownerless {
+        database.remove(&key).map_err(Fault::Refused)?;
+    }
     let incomplete = |(record, index): &&(JobRecord, JobIndex)| {
         let removed = damaged.iter().filter(|(job, ..)| *job == record.id).count();
         ((index.blocks.len() + removed) as u64) < record.committed_at_end

@@ -11,7 +11,7 @@ use std::sync::Mutex;
 use serde::{Deserialize, Serialize};
 use serde_json::value::RawValue;
 
-use crate::journal::{ENDING, UNFINISHED, write_durably};
+use crate::journal::{ENDING, UNFINISHED, sync_dir, write_durably};
 use crate::store::lock;
 use crate::{JobId, PlanId, StoreError};
 
@@ -118,6 +118,19 @@ impl Plans {
         }
         let path = self.path(plan);
         read_file(&path).map_err(|reason| StoreError::PlanDamaged { plan, path, reason })
+    }
+
+    /// Removes a plan; gives whether there was one. When this returns, it stays away after a power cut.
+    pub(crate) fn remove(&self, plan: PlanId) -> Result<bool, StoreError> {
+        let mut known = lock(&self.known);
+        if !known.contains_key(&plan) {
+            return Ok(false);
+        }
+        let path = self.path(plan);
+        fs::remove_file(&path).map_err(StoreError::io(&path))?;
+        sync_dir(&self.dir)?;
+        known.remove(&plan);
+        Ok(true)
     }
 
     /// All plans in the order in which they were made.

@@ -11,7 +11,7 @@ use serde::{Deserialize, Serialize};
 use serde_json::value::RawValue;
 use sha2::{Digest, Sha256};
 
-use crate::{JobRecord, JobState};
+use crate::{JobKind, JobRecord, JobState, Terms};
 
 /// Version of the record.
 const VERSION: u32 = 1;
@@ -42,6 +42,23 @@ struct StoredJob {
     warnings: Vec<String>,
     generation: u32,
     campaign: Arc<CampaignSpec>,
+    /// Records of jobs that screen have none.
+    #[serde(default, skip_serializing_if = "Option::is_none")]
+    planning: Option<StoredPlanning>,
+    #[serde(default, skip_serializing_if = "String::is_empty")]
+    requester: String,
+    #[serde(default)]
+    priority: i32,
+    #[serde(default)]
+    not_before_unix_ms: Option<u64>,
+    #[serde(default)]
+    deadline_unix_ms: Option<u64>,
+}
+
+#[derive(Serialize, Deserialize)]
+struct StoredPlanning {
+    of: String,
+    request: String,
 }
 
 /// The text of a record.
@@ -66,6 +83,17 @@ pub(crate) fn write(record: &JobRecord) -> Result<String, serde_json::Error> {
         warnings: record.warnings.clone(),
         generation: record.generation,
         campaign: record.spec.clone(),
+        planning: match &record.kind {
+            JobKind::Screening => None,
+            JobKind::Planning { of, request } => Some(StoredPlanning {
+                of: of.to_string(),
+                request: request.clone(),
+            }),
+        },
+        requester: record.terms.requester.clone(),
+        priority: record.terms.priority,
+        not_before_unix_ms: record.terms.not_before_unix_ms,
+        deadline_unix_ms: record.terms.deadline_unix_ms,
     })?;
     let crc32 = crc32fast::hash(job.get().as_bytes());
     serde_json::to_string(&Envelope {
@@ -90,11 +118,19 @@ pub(crate) fn read(text: &str) -> Result<JobRecord, String> {
     }
     let job: StoredJob = serde_json::from_str(envelope.job.get())
         .map_err(|error| format!("it is no record of a job: {error}"))?;
+    let id = |text: &str| {
+        text.parse()
+            .map_err(|_| format!("`{text}` is no id of a job"))
+    };
+    let kind = match job.planning {
+        None => JobKind::Screening,
+        Some(StoredPlanning { of, request }) => JobKind::Planning {
+            of: id(&of)?,
+            request,
+        },
+    };
     Ok(JobRecord {
-        id: job
-            .id
-            .parse()
-            .map_err(|_| format!("`{}` is no id of a job", job.id))?,
+        id: id(&job.id)?,
         title: job.title,
         spec: job.campaign,
         campaign_fingerprint: fingerprint(&job.campaign_fingerprint)?,
@@ -111,17 +147,30 @@ pub(crate) fn read(text: &str) -> Result<JobRecord, String> {
         failure: job.failure,
         warnings: job.warnings,
         generation: job.generation,
+        kind,
+        terms: Terms {
+            requester: job.requester,
+            priority: job.priority,
+            not_before_unix_ms: job.not_before_unix_ms,
+            deadline_unix_ms: job.deadline_unix_ms,
+        },
     })
 }
 
-/// SHA-256 over a campaign as the journal would write it.
+/// SHA-256 over what a job is asked to do, as the journal would write it: its campaign, or the job that it plans from and the
+/// plan's request.
 ///
 /// # Errors
 /// What the JSON writer said.
-pub(crate) fn request_digest(spec: &CampaignSpec) -> Result<Fingerprint, serde_json::Error> {
-    Ok(Fingerprint(
-        Sha256::digest(serde_json::to_vec(spec)?).into(),
-    ))
+pub(crate) fn request_digest(
+    spec: &CampaignSpec,
+    kind: &JobKind,
+) -> Result<Fingerprint, serde_json::Error> {
+    let text = match kind {
+        JobKind::Screening => serde_json::to_vec(spec)?,
+        JobKind::Planning { of, request } => format!("{of} {request}").into_bytes(),
+    };
+    Ok(Fingerprint(Sha256::digest(text).into()))
 }
 
 fn fingerprint(text: &str) -> Result<Fingerprint, String> {

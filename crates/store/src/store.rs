@@ -9,6 +9,7 @@ use std::sync::{Arc, Mutex, MutexGuard, PoisonError, RwLock};
 use enolattice_grid::Columns;
 use rayon::prelude::*;
 
+use crate::block;
 use crate::database::Database;
 use crate::index::{JobIndex, Summary};
 use crate::journal::Journal;
@@ -87,7 +88,8 @@ impl Store {
                 limit: REQUEST_ID_BYTES,
             });
         }
-        let request_digest = record::request_digest(&new.spec).map_err(StoreError::unwritable)?;
+        let request_digest =
+            record::request_digest(&new.spec, &new.kind).map_err(StoreError::unwritable)?;
         let _creating = lock(&self.creating);
         if let Some(record) = self.job_of_request(&new.request_id) {
             if record.request_digest == request_digest {
@@ -119,6 +121,8 @@ impl Store {
             failure: String::new(),
             warnings: new.warnings,
             generation: 1,
+            kind: new.kind,
+            terms: new.terms,
         };
         self.journal.write(&record)?;
         let entry = Entry {
@@ -186,6 +190,41 @@ impl Store {
         self.journal.write(&changed)?;
         *record = changed.clone();
         Ok(changed)
+    }
+
+    /// Removes a job that has ended, with its blocks. When this returns, the job stays away after a power cut too; what the
+    /// blocks took on disk is free for blocks to come.
+    ///
+    /// The record goes first: blocks without a record are removed when the store is opened.
+    ///
+    /// # Errors
+    /// [`StoreError::JobUnknown`], [`StoreError::NotEnded`], [`StoreError::Io`], [`StoreError::Stopped`].
+    pub fn delete_job(&self, job: JobId) -> Result<JobRecord, StoreError> {
+        let entry = self.entry(job)?;
+        let record = lock(&entry.record).clone();
+        if !record.state.is_ended() {
+            let state = record.state;
+            return Err(StoreError::NotEnded { job, state });
+        }
+        self.journal.remove(job)?;
+        self.jobs
+            .write()
+            .unwrap_or_else(PoisonError::into_inner)
+            .remove(&job);
+        let index = std::mem::take(&mut *lock(&entry.index));
+        for block in index.blocks.keys() {
+            self.database.remove(&block::key(job, *block))?;
+        }
+        self.database.sync()?;
+        Ok(record)
+    }
+
+    /// Removes a kept plan; gives whether there was one.
+    ///
+    /// # Errors
+    /// [`StoreError::Io`].
+    pub fn delete_plan(&self, plan: PlanId) -> Result<bool, StoreError> {
+        self.plans.remove(plan)
     }
 
     /// A new id for a plan; it is not given again while the store is open.

@@ -4,7 +4,7 @@ use std::path::Path;
 
 use enolattice_grid::{BlockId, CampaignSpec, Columns};
 use enolattice_model::Fingerprint;
-use enolattice_store::{NewJob, Store};
+use enolattice_store::{JobKind, NewJob, Store, Terms};
 
 /// Time at which tests begin, milliseconds since 1970.
 pub(crate) const START_MS: u64 = 1_760_000_000_000;
@@ -31,6 +31,8 @@ pub(crate) fn new_job(title: &str, request_id: &str) -> NewJob {
         blocks: 40,
         request_id: request_id.into(),
         warnings: vec!["invented".into()],
+        kind: JobKind::Screening,
+        terms: Terms::default(),
     }
 }
 

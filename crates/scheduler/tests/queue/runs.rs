@@ -1,150 +1,18 @@
-//! The queue with a synthetic scorer: what is run, resumed, cancelled and given up.
+//! What is run, resumed, cancelled and given up.
 
 use std::collections::BTreeMap;
-use std::path::Path;
 use std::sync::atomic::{AtomicUsize, Ordering};
 use std::sync::{Arc, Mutex};
 use std::time::Duration;
 
-use enolattice_grid::{BlockId, CampaignSpec, Columns};
 use enolattice_model::Fingerprint;
-use enolattice_scheduler::{Progress, Scheduler, SchedulerConfig, SchedulerError, Work, WorkBlock};
-use enolattice_store::{JobId, JobRecord, JobState, NewJob, StateChange, Store};
+use enolattice_scheduler::{SchedulerError, Work};
+use enolattice_store::{JobState, StateChange};
 use tokio::sync::mpsc;
 
-const BLOCKS: u32 = 40;
-const CELLS: u64 = 50;
-const MODEL: Fingerprint = Fingerprint([1; 32]);
-/// How long a test waits for what must come; only a hanging queue ever waits that long.
-const PATIENCE: Duration = Duration::from_secs(60);
-
-fn block(index: u32) -> BlockId {
-    BlockId { segment: 0, index }
-}
-
-/// Scores that depend on the cell's number alone.
-fn columns(id: BlockId) -> Columns {
-    let cells =
-        (0..CELLS).map(|i| (u64::from(id.index) * CELLS + i).wrapping_mul(0x9e37_79b9_7f4a_7c15));
-    let mut columns = Columns::default();
-    for noise in cells {
-        columns.expected_yield.push((noise >> 48) as u16);
-        columns.p_hit.push((noise >> 32) as u16);
-        columns.selectivity.push((noise >> 24) as u8);
-        columns.feasibility.push((noise >> 16) as u8);
-        columns.largest_loss.push(0);
-        columns.cautions.push(noise as u32);
-    }
-    columns
-}
-
-fn work(model: Fingerprint, score: impl Fn(BlockId) -> Columns + Send + Sync + 'static) -> Work {
-    let block = |index| WorkBlock {
-        id: block(index),
-        first_cell: u64::from(index) * CELLS,
-    };
-    Work {
-        model_fingerprint: model,
-        blocks: (0..BLOCKS).map(block).collect(),
-        score: Arc::new(score),
-    }
-}
-
-fn open(dir: &Path) -> Arc<Store> {
-    Arc::new(Store::open(dir, 1_760_000_000_000).unwrap().0)
-}
-
-fn queue(store: &Store, title: &str) -> JobId {
-    let new = NewJob {
-        spec: CampaignSpec {
-            title: title.into(),
-            ..CampaignSpec::default()
-        },
-        campaign_fingerprint: Fingerprint([7; 32]),
-        model_fingerprint: MODEL,
-        cells: u64::from(BLOCKS) * CELLS,
-        blocks: u64::from(BLOCKS),
-        request_id: String::new(),
-        warnings: vec![],
-    };
-    store.create_job(new, 1_760_000_000_000).unwrap().record.id
-}
-
-/// A scheduler and what it tells.
-struct Bench {
-    scheduler: Scheduler,
-    told: mpsc::UnboundedReceiver<Progress>,
-}
-
-impl Bench {
-    fn start(
-        store: &Arc<Store>,
-        threads: usize,
-        work: impl Fn(&JobRecord) -> Result<Work, String> + Send + Sync + 'static,
-    ) -> Bench {
-        let (tell, told) = mpsc::unbounded_channel();
-        let notify = Arc::new(move |progress| drop(tell.send(progress)));
-        let config = SchedulerConfig {
-            threads,
-            work: Arc::new(work),
-            notify,
-        };
-        Bench {
-            scheduler: Scheduler::start(store.clone(), config).unwrap(),
-            told,
-        }
-    }
-
-    /// Waits for word that a job is in a state.
-    async fn until(&mut self, job: JobId, state: JobState) -> Progress {
-        let wait = async {
-            loop {
-                let progress = self.told.recv().await.unwrap();
-                if progress.job == job && progress.state == state {
-                    return progress;
-                }
-            }
-        };
-        tokio::time::timeout(PATIENCE, wait).await.unwrap()
-    }
-}
-
-fn all_blocks(store: &Store, job: JobId) -> BTreeMap<BlockId, Vec<u8>> {
-    let bytes = |id| (id, store.block(job, id).unwrap().unwrap().to_bytes());
-    store
-        .committed_blocks(job)
-        .unwrap()
-        .into_iter()
-        .map(bytes)
-        .collect()
-}
-
-fn truth() -> BTreeMap<BlockId, Vec<u8>> {
-    (0..BLOCKS)
-        .map(|index| (block(index), columns(block(index)).to_bytes()))
-        .collect()
-}
-
-/// Lets one block through for each permit.
-#[derive(Default)]
-struct Gate(AtomicUsize);
-
-impl Gate {
-    fn wait(&self) {
-        let take = |permits: usize| permits.checked_sub(1);
-        while self
-            .0
-            .fetch_update(Ordering::AcqRel, Ordering::Acquire, take)
-            .is_err()
-        {
-            std::thread::sleep(Duration::from_millis(1));
-        }
-    }
-
-    fn permit(&self) {
-        self.0.fetch_add(1, Ordering::AcqRel);
-    }
-}
+use crate::common::{
+    BLOCKS, Bench, CELLS, Gate, MODEL, all_blocks, block, columns, open, queue, truth, work,
+};
 
 #[tokio::test(flavor = "multi_thread", worker_threads = 2)]
 async fn one_thread_two_threads_and_an_interrupted_run_give_the_same_bytes() {
@@ -294,7 +162,7 @@ async fn a_cancelled_job_stops_between_blocks_and_a_waiting_one_at_once() {
     for job in [running, waiting, after] {
         let again = bench.scheduler.cancel(job).await;
         assert!(
-            matches!(again, Err(SchedulerError::Ended { .. })),
+            matches!(again, Err(SchedulerError::Refused { .. })),
             "{again:?}"
         );
     }

@@ -61,5 +61,6 @@ pub(crate) fn submission(campaign: CampaignSpec) -> Submission {
         campaign,
         request_id: String::new(),
         validate_only: false,
+        terms: enolattice_engine::Terms::default(),
     }
 }

@@ -1,19 +1,11 @@
 //! Jobs from the first request to the last: ids, checks, cancelling, stopping.
 
 use enolattice_engine::{JobState, Submission};
-use enolattice_wire::RemoteError;
 use enolattice_wire::v1::job_service_client::JobServiceClient;
 use enolattice_wire::v1::{self, ErrorReason};
 
 use crate::campaigns::{long, small, submission};
 use crate::live::{Live, watched};
-
-fn reason(error: &RemoteError) -> Option<ErrorReason> {
-    match error {
-        RemoteError::Refused { reason, .. } => Some(*reason),
-        _ => None,
-    }
-}
 
 #[tokio::test(flavor = "multi_thread")]
 async fn a_request_id_makes_one_job() {
@@ -22,6 +14,7 @@ async fn a_request_id_makes_one_job() {
         campaign,
         request_id: "7b1f0a52-0d4c-4a5e-9c53-3f2f5f0f6a11".into(),
         validate_only: false,
+        terms: enolattice_engine::Terms::default(),
     };
     let first = live.client.submit(ask(small())).await.expect("is accepted");
     let again = live.client.submit(ask(small())).await.expect("is accepted");
@@ -32,7 +25,7 @@ async fn a_request_id_makes_one_job() {
         .submit(ask(long(1)))
         .await
         .expect_err("is another request");
-    assert_eq!(reason(&other), Some(ErrorReason::RequestIdReused));
+    assert_eq!(other.reason(), Some(ErrorReason::RequestIdReused));
     live.stop().await;
 }
 
@@ -74,7 +67,7 @@ async fn a_cancelled_job_ends_its_watch() {
         Some(JobState::Cancelled)
     );
     let again = live.client.cancel(&job).await.expect_err("has ended");
-    assert_eq!(reason(&again), Some(ErrorReason::JobWrongState));
+    assert_eq!(again.reason(), Some(ErrorReason::JobWrongState));
     live.stop().await;
 }
 
@@ -97,7 +90,7 @@ async fn stopping_ends_watch_streams_and_says_so() {
             Err(error) => break error,
         }
     };
-    assert_eq!(reason(&end), Some(ErrorReason::ShuttingDown), "{end}");
+    assert_eq!(end.reason(), Some(ErrorReason::ShuttingDown), "{end}");
     stopped.await.expect("a clean end");
 }
 

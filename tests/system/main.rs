@@ -12,6 +12,7 @@ mod live;
 mod maps;
 mod plans;
 mod portable;
+mod queue;
 mod ranking;
 mod refusals;
 mod reports;

@@ -16,7 +16,7 @@ use crate::campaigns::{library, small, submission, substrates};
 use crate::live::Live;
 
 /// 4 substrates × 3 bases × 2 electrophiles × 3 solvents at room temperature.
-fn campaign() -> CampaignSpec {
+pub(crate) fn campaign() -> CampaignSpec {
     let mut campaign = small();
     campaign.title = "Invented, at room temperature".into();
     campaign.substrates = substrates(&[
@@ -33,7 +33,7 @@ fn campaign() -> CampaignSpec {
 }
 
 /// One plate of 24 wells on a deck under inert gas, with a pinned cell.
-fn request() -> PlanRequest {
+pub(crate) fn request() -> PlanRequest {
     let mut request = PlanRequest {
         seed: 7,
         ..PlanRequest::default()
@@ -50,7 +50,7 @@ fn request() -> PlanRequest {
 }
 
 /// The plan as JSON, without what differs from one keeping to the next.
-fn unstamped(plan: &Plan) -> Value {
+pub(crate) fn unstamped(plan: &Plan) -> Value {
     let mut json = serde_json::to_value(plan).expect("serialises");
     let fields = json.as_object_mut().expect("an object");
     for stamp in ["id", "made_unix_ms"] {

@@ -2,12 +2,13 @@
 
 use enolattice_engine::{
     Agreement, CellDescription, CellMap, Comparison, Distribution, DryRun, Engine, EngineConfig,
-    ExplainTarget, Job, MapQuery, PlanSummary, RankPage, RankQuery, ReagentRow, ReportQuery,
-    SiteReport, Submission,
+    EngineError, ExplainTarget, Job, MapQuery, PlanOrder, PlanSummary, RankPage, RankQuery,
+    ReagentRow, ReportQuery, SiteReport, Submission,
 };
 use enolattice_grid::{CampaignSpec, InputError};
 use enolattice_model::Explanation;
 use enolattice_plate::{Plan, PlanRequest};
+use enolattice_wire::v1::ErrorReason;
 
 use crate::campaign_file::own_tables;
 use crate::commands::EngineOptions;
@@ -118,6 +119,41 @@ impl Client {
         }
     }
 
+    pub(crate) async fn pause(&self, job: &str) -> Result<Job, Fault> {
+        match self {
+            Client::Embedded(engine) => Ok(engine.pause(job).await?),
+            Client::Remote(server) => Ok(server.pause(job).await?),
+        }
+    }
+
+    pub(crate) async fn resume(&self, job: &str) -> Result<Job, Fault> {
+        match self {
+            Client::Embedded(engine) => Ok(engine.resume(job).await?),
+            Client::Remote(server) => Ok(server.resume(job).await?),
+        }
+    }
+
+    /// Deletes a job, or else the plan of this id.
+    pub(crate) async fn delete(&self, id: &str) -> Result<(), Fault> {
+        match self {
+            Client::Embedded(engine) => match engine.delete_job(id).await {
+                Err(EngineError::JobUnknown { job }) => match engine.delete_plan(id).await {
+                    Err(EngineError::PlanUnknown { .. }) => {
+                        Err(EngineError::NothingKept { id: job }.into())
+                    }
+                    other => Ok(other?),
+                },
+                other => Ok(other?),
+            },
+            Client::Remote(server) => match server.delete_job(id).await {
+                Err(error) if error.reason() == Some(ErrorReason::JobUnknown) => {
+                    Ok(server.delete_plan(id).await?)
+                }
+                other => Ok(other?),
+            },
+        }
+    }
+
     pub(crate) async fn rank(&self, query: RankQuery) -> Result<RankPage, Fault> {
         match self {
             Client::Embedded(engine) => Ok(engine.rank(query).await?),
@@ -166,6 +202,14 @@ impl Client {
         match self {
             Client::Embedded(engine) => Ok(engine.plan(job.to_owned(), request).await?),
             Client::Remote(server) => Ok(server.plan(job.to_owned(), request).await?),
+        }
+    }
+
+    /// A job that will make a plan.
+    pub(crate) async fn order_plan(&self, order: PlanOrder) -> Result<Job, Fault> {
+        match self {
+            Client::Embedded(engine) => Ok(engine.order_plan(order).await?),
+            Client::Remote(server) => Ok(server.order_plan(order).await?),
         }
     }
 

@@ -25,6 +25,15 @@ impl Progress {
 
     /// Shows the job as it is.
     pub(crate) fn show(&mut self, job: &Job) {
+        if job.planning.is_some() {
+            let doing = match job.state {
+                JobState::Running => "making the plan",
+                JobState::Paused => "paused",
+                _ => "waiting for the job that it plans from",
+            };
+            self.bar.set_length(1);
+            return self.bar.set_message(doing);
+        }
         self.bar.set_length(job.cells);
         self.bar.set_position(job.cells_done);
         let (since, at_first) = *self.begun.get_or_insert((Instant::now(), job.cells_done));
@@ -32,6 +41,7 @@ impl Progress {
         let done_since = job.cells_done.saturating_sub(at_first) as f64;
         let mut message = match job.state {
             JobState::Queued => "waiting for its turn".to_owned(),
+            JobState::Paused => "paused; `resume` lets it go on".to_owned(),
             _ => format!(
                 "{} of {} cells",
                 HumanCount(job.cells_done),

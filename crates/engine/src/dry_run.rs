@@ -7,7 +7,7 @@ use rayon::prelude::*;
 
 use crate::engine::blocking;
 use crate::submit::would_be;
-use crate::{Axis, Engine, EngineError, Job};
+use crate::{Axis, Engine, EngineError, Job, Terms};
 
 /// Blocks of which a sample is scored at most, and the time after which no other one is begun.
 const MOST_BLOCKS: usize = 64;
@@ -98,7 +98,7 @@ impl Engine {
                     values,
                 });
             Ok(DryRun {
-                job: would_be(&grid),
+                job: would_be(&grid, Terms::default()),
                 axes: axes.collect(),
                 seconds: sample.per_cell(sample.seconds) * cells as f64,
                 disk_bytes: (sample.per_cell(sample.bytes as f64) * cells as f64 * DISK_OVERHEAD)

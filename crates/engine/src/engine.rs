@@ -94,16 +94,58 @@ impl Engine {
     /// # Errors
     /// [`EngineError::JobUnknown`], [`EngineError::WrongState`] where it has ended, [`EngineError::Store`].
     pub async fn cancel(&self, job: &str) -> Result<Job, EngineError> {
+        self.ask(job, Event::Cancel).await
+    }
+
+    /// Holds a job between two blocks; what was screened stays and can be ranked.
+    ///
+    /// # Errors
+    /// [`EngineError::JobUnknown`], [`EngineError::WrongState`] where it is paused or has ended, [`EngineError::Store`].
+    pub async fn pause(&self, job: &str) -> Result<Job, EngineError> {
+        self.ask(job, Event::Pause).await
+    }
+
+    /// Lets a paused job wait for its turn again.
+    ///
+    /// # Errors
+    /// [`EngineError::JobUnknown`], [`EngineError::WrongState`] where it is not paused, [`EngineError::Store`].
+    pub async fn resume(&self, job: &str) -> Result<Job, EngineError> {
+        self.ask(job, Event::Resume).await
+    }
+
+    async fn ask(&self, job: &str, event: Event) -> Result<Job, EngineError> {
         let (queue, job) = (self.queue()?, job_id(job)?);
         if let Some(scheduler) = &queue.scheduler {
-            scheduler.cancel(job).await?;
+            match event {
+                Event::Pause => scheduler.pause(job).await?,
+                Event::Resume => scheduler.resume(job).await?,
+                _ => scheduler.cancel(job).await?,
+            };
         }
         let (store, works) = (queue.store.clone(), queue.scheduler.is_some());
         blocking(move || {
             if !works {
-                cancel_waiting(&store, job)?;
+                change_waiting(&store, job, event)?;
             }
             read_job(&store, job)
+        })
+        .await
+    }
+
+    /// Deletes a job that has ended, with its scores and, where it made one, its plan. Plans that were made from it stay.
+    ///
+    /// # Errors
+    /// [`EngineError::JobUnknown`], [`EngineError::WrongState`] where it has not ended, [`EngineError::Store`].
+    pub async fn delete_job(&self, job: &str) -> Result<(), EngineError> {
+        let (queue, job) = (self.queue()?, job_id(job)?);
+        let (store, grids) = (queue.store.clone(), queue.grids.clone());
+        blocking(move || {
+            let record = store.delete_job(job)?;
+            if let Some(plan) = record.plan_id() {
+                store.delete_plan(plan)?;
+            }
+            grids.forget(job);
+            Ok(())
         })
         .await
     }
@@ -147,13 +189,9 @@ pub(crate) fn read_job(store: &Store, job: JobId) -> Result<Job, EngineError> {
     Ok(Job::of_record(store.job(job)?, store.progress(job)?))
 }
 
-fn cancel_waiting(store: &Store, job: JobId) -> Result<(), EngineError> {
+fn change_waiting(store: &Store, job: JobId, event: Event) -> Result<(), EngineError> {
     let from = store.job(job)?.state;
-    let to = transition(from, Event::Cancel).map_err(|refused| EngineError::WrongState {
-        job: job.to_string(),
-        state: refused.state.name(),
-        remedy: "a job that has ended cannot be cancelled",
-    })?;
+    let to = transition(from, event).map_err(|refused| EngineError::refused(job, refused))?;
     let change = StateChange {
         from,
         to,

@@ -1,8 +1,8 @@
 //! Why an engine did not do what it was asked.
 
 use enolattice_grid::{GridError, InputError};
-use enolattice_scheduler::SchedulerError;
-use enolattice_store::{StoreError, TokenError};
+use enolattice_scheduler::{Event, Refused, SchedulerError};
+use enolattice_store::{JobId, StoreError, TokenError};
 
 /// Why an engine did not do what it was asked.
 #[derive(Debug, thiserror::Error)]
@@ -58,6 +58,17 @@ pub enum EngineError {
         /// The job it made.
         job: String,
     },
+    /// The requester has too many jobs that have not ended.
+    #[error(
+        "{} has {most} jobs that have not ended; wait, or cancel some",
+        whose(requester)
+    )]
+    QueueFull {
+        /// Requester; empty: nobody in particular.
+        requester: String,
+        /// Jobs allowed.
+        most: usize,
+    },
     /// The page token belongs to other arguments or is damaged.
     #[error("the page token does not fit: {reason}; ask for the first page again")]
     PageToken {
@@ -78,6 +89,13 @@ pub enum EngineError {
     Model(#[from] enolattice_model::ModelError),
 }
 
+fn whose(requester: &str) -> String {
+    match requester {
+        "" => "who gives no name".to_owned(),
+        name => format!("requester `{name}`"),
+    }
+}
+
 impl EngineError {
     /// One fault of one field.
     pub(crate) fn field(
@@ -91,6 +109,21 @@ impl EngineError {
         EngineError::Input(vec![InputError::of_field(
             code, field, shown, reason, remedy,
         )])
+    }
+
+    /// A job's state does not allow what was asked.
+    pub(crate) fn refused(job: JobId, refused: Refused) -> EngineError {
+        let remedy = match refused.event {
+            Event::Cancel => "a job that has ended cannot be cancelled",
+            Event::Pause => "only a job that waits or runs can be paused",
+            Event::Resume => "only a paused job can be resumed",
+            _ => "look at it and ask again",
+        };
+        EngineError::WrongState {
+            job: job.to_string(),
+            state: refused.state.name(),
+            remedy,
+        }
     }
 
     /// The store was asked for although the engine was opened without one.
@@ -122,6 +155,11 @@ impl From<StoreError> for EngineError {
                 state: found.name(),
                 remedy: "its state changed meanwhile; look at it and ask again",
             },
+            StoreError::NotEnded { job, state } => EngineError::WrongState {
+                job: job.to_string(),
+                state: state.name(),
+                remedy: "cancel it before it is deleted",
+            },
             StoreError::PageOutdated => EngineError::PageToken {
                 reason: "the job was screened anew since the page before".to_owned(),
             },
@@ -135,11 +173,7 @@ impl From<StoreError> for EngineError {
 impl From<SchedulerError> for EngineError {
     fn from(error: SchedulerError) -> EngineError {
         match error {
-            SchedulerError::Ended { job, state } => EngineError::WrongState {
-                job: job.to_string(),
-                state: state.name(),
-                remedy: "a job that has ended cannot be cancelled",
-            },
+            SchedulerError::Refused { job, refused } => EngineError::refused(job, refused),
             SchedulerError::Store(error) => error.into(),
             SchedulerError::ShutDown => EngineError::Stopping,
             SchedulerError::Threads { .. } => EngineError::Store {

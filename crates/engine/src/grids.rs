@@ -4,7 +4,7 @@ use std::collections::HashMap;
 use std::sync::{Arc, Mutex, PoisonError};
 
 use enolattice_grid::Grid;
-use enolattice_store::{JobId, JobRecord};
+use enolattice_store::{JobId, JobKind, JobRecord};
 
 use crate::EngineError;
 use crate::models::Models;
@@ -41,11 +41,18 @@ impl Grids {
     /// The grid of a job that has been read from the store.
     ///
     /// # Errors
-    /// [`EngineError::WrongState`] where this version makes another campaign of the record, so
+    /// [`EngineError::WrongState`] where the job plans and has no campaign, and where this version makes another campaign of the record, so
     /// that its cell numbers would be read wrongly.
     pub(crate) fn of_record(&self, record: &JobRecord) -> Result<Arc<Grid>, EngineError> {
         if let Some(grid) = self.kept(record.id) {
             return Ok(grid);
+        }
+        if let JobKind::Planning { .. } = record.kind {
+            return Err(EngineError::WrongState {
+                job: record.id.to_string(),
+                state: record.state.name(),
+                remedy: "it makes a plan and screens no cells; ask for the job that it plans from",
+            });
         }
         let grid = self.models.grid(&record.spec)?;
         if grid.fingerprint() != record.campaign_fingerprint {
@@ -58,6 +65,12 @@ impl Grids {
         }
         self.keep(record.id, grid.clone());
         Ok(grid)
+    }
+
+    /// Lets go of the grid of a job that is no more.
+    pub(crate) fn forget(&self, job: JobId) {
+        let mut kept = self.kept.lock().unwrap_or_else(PoisonError::into_inner);
+        kept.remove(&job);
     }
 
     fn kept(&self, job: JobId) -> Option<Arc<Grid>> {

@@ -1,7 +1,7 @@
 //! Jobs as they are seen from outside.
 
 use enolattice_grid::CampaignSpec;
-use enolattice_store::{JobRecord, Progress};
+use enolattice_store::{JobKind, JobRecord, Progress, Terms};
 
 /// State of a job.
 #[derive(Clone, Copy, Debug, PartialEq, Eq, Hash)]
@@ -10,7 +10,7 @@ pub enum JobState {
     Queued,
     /// Being screened.
     Running,
-    /// Held by the user. Kept and sent by its number; nothing pauses a job yet.
+    /// Held by the user.
     Paused,
     /// All blocks committed.
     Done,
@@ -74,11 +74,37 @@ pub struct Job {
     pub failure: String,
     /// Warnings of the campaign (duplicates merged, not covered, ...).
     pub warnings: Vec<String>,
+    /// What it plans, where it makes a plan and screens nothing; it has no cells then.
+    pub planning: Option<Planning>,
+    /// Whose it is and when it may run.
+    pub terms: Terms,
+}
+
+/// What a job plans.
+#[derive(Clone, Debug, PartialEq, Eq)]
+pub struct Planning {
+    /// The job whose ranking it plans from.
+    pub job: String,
+    /// The plan, once it is made.
+    pub plan: Option<String>,
 }
 
 impl Job {
     pub(crate) fn of_record(record: JobRecord, progress: Progress) -> Job {
+        let planning = match record.kind {
+            JobKind::Screening => None,
+            JobKind::Planning { of, .. } => {
+                let made = record.state == enolattice_store::JobState::Done;
+                let plan = record.plan_id().filter(|_| made);
+                Some(Planning {
+                    job: of.to_string(),
+                    plan: plan.map(|plan| plan.to_string()),
+                })
+            }
+        };
         Job {
+            planning,
+            terms: record.terms,
             job: record.id.to_string(),
             title: record.title,
             state: record.state.into(),
@@ -104,4 +130,6 @@ pub struct Submission {
     pub request_id: String,
     /// Check only; nothing is queued.
     pub validate_only: bool,
+    /// Whose the job is and when it may run.
+    pub terms: Terms,
 }

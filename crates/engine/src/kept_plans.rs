@@ -1,7 +1,8 @@
 //! Plans that are kept.
 
 use enolattice_plate::{Plan, PlanRequest};
-use enolattice_store::{PlanRecord, Store};
+use enolattice_store::{PlanId, PlanRecord, Store};
+use serde::Serialize;
 
 use crate::engine::{blocking, job_id};
 use crate::open::now_unix_ms;
@@ -32,7 +33,26 @@ impl Engine {
     pub async fn plan(&self, job: String, request: PlanRequest) -> Result<Plan, EngineError> {
         let plan = self.draft_plan(job, request).await?;
         let store = self.queue()?.store.clone();
-        blocking(move || keep(&store, plan)).await
+        blocking(move || {
+            let id = store.new_plan_id(now_unix_ms())?;
+            keep(&store, id, plan)
+        })
+        .await
+    }
+
+    /// Deletes a kept plan.
+    ///
+    /// # Errors
+    /// [`EngineError::PlanUnknown`], [`EngineError::Store`].
+    pub async fn delete_plan(&self, plan: &str) -> Result<(), EngineError> {
+        let (store, id) = (self.queue()?.store.clone(), plan.parse::<PlanId>()?);
+        blocking(move || match store.delete_plan(id)? {
+            true => Ok(()),
+            false => Err(EngineError::PlanUnknown {
+                plan: id.to_string(),
+            }),
+        })
+        .await
     }
 
     /// A kept plan.
@@ -68,9 +88,16 @@ impl Engine {
     }
 }
 
-fn keep(store: &Store, mut plan: Plan) -> Result<Plan, EngineError> {
+/// The JSON of a plan or of a request for one.
+pub(crate) fn in_words<T: Serialize>(what: &T) -> Result<String, EngineError> {
+    serde_json::to_string(what).map_err(|error| EngineError::Store {
+        reason: format!("the plan cannot be put into words: {error}"),
+    })
+}
+
+/// Keeps a plan under an id; when this returns, it survives a power cut.
+pub(crate) fn keep(store: &Store, id: PlanId, mut plan: Plan) -> Result<Plan, EngineError> {
     let now = now_unix_ms();
-    let id = store.new_plan_id(now)?;
     plan.id = id.to_string();
     plan.made_unix_ms = now;
     let title = match plan.title.as_str() {
@@ -85,10 +112,7 @@ fn keep(store: &Store, mut plan: Plan) -> Result<Plan, EngineError> {
         plates: plan.plates.len() as u32,
         wells: plan.wells().count() as u32,
     };
-    let document = serde_json::to_string(&plan).map_err(|error| EngineError::Store {
-        reason: format!("the plan cannot be put into words: {error}"),
-    })?;
-    store.keep_plan(record, document)?;
+    store.keep_plan(record, in_words(&plan)?)?;
     Ok(plan)
 }
 

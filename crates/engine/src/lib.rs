@@ -21,6 +21,7 @@ mod models;
 mod nearest;
 mod open;
 mod plan;
+mod plan_orders;
 mod query;
 mod rank;
 mod reagents;
@@ -29,6 +30,7 @@ mod screened;
 mod shared_cells;
 mod sites;
 mod submit;
+mod terms;
 mod watch;
 
 pub use agreement::{
@@ -40,13 +42,16 @@ pub use distribution::{Distribution, Histogram};
 pub use dry_run::{AxisSize, DryRun, NotCovered};
 pub use engine::Engine;
 pub use enolattice_molecule::element_symbol;
+pub use enolattice_store::Terms;
 pub use error::EngineError;
-pub use job::{Job, JobState, Submission};
+pub use job::{Job, JobState, Planning, Submission};
 pub use kept_plans::PlanSummary;
 pub use map::{CellMap, MapAxis, MapField, MapQuery};
 pub use open::EngineConfig;
+pub use plan_orders::PlanOrder;
 pub use query::{
     CellDescription, CellQuery, ExplainTarget, Order, RankPage, RankQuery, RankedCell, ReagentRow,
     ReasonedSite, SiteReport,
 };
 pub use report::ReportQuery;
+pub use terms::MOST_UNFINISHED;

@@ -5,12 +5,13 @@ use std::sync::Arc;
 use std::time::{SystemTime, UNIX_EPOCH};
 
 use enolattice_reagents::{Library, OwnTable};
-use enolattice_scheduler::{Scheduler, SchedulerConfig, Work};
-use enolattice_store::Store;
+use enolattice_scheduler::{Scheduler, SchedulerConfig, Task, Work};
+use enolattice_store::{JobKind, JobRecord, Store};
 
 use crate::engine::{Queue, blocking};
 use crate::grids::Grids;
 use crate::models::{Models, OwnModel, laid_over};
+use crate::plan_orders::planning;
 use crate::{Engine, EngineError};
 
 /// How an engine is opened.
@@ -34,11 +35,15 @@ impl Engine {
         let mut engine = Engine::open_idle(config).await?;
         if let Some(queue) = &mut engine.queue {
             let (grids, store) = (queue.grids.clone(), queue.store.clone());
-            let work = move |record: &enolattice_store::JobRecord| {
-                grids
-                    .of_record(record)
-                    .map(Work::of_grid)
-                    .map_err(|error| error.to_string())
+            let kept_in = store.clone();
+            let work = move |record: &JobRecord| match &record.kind {
+                JobKind::Screening => {
+                    let grid = grids.of_record(record).map_err(|error| error.to_string())?;
+                    Ok(Task::Blocks(Work::of_grid(grid)))
+                }
+                JobKind::Planning { of, request } => {
+                    planning(&kept_in, &grids, record, *of, request).map(Task::Piece)
+                }
             };
             let config = SchedulerConfig {
                 threads,

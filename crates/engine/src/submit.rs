@@ -1,10 +1,11 @@
 //! Queueing a campaign.
 
 use enolattice_grid::{CampaignSpec, Grid, InputError};
-use enolattice_store::NewJob;
+use enolattice_store::{JobKind, NewJob, Terms};
 
 use crate::engine::{blocking, read_job};
 use crate::open::now_unix_ms;
+use crate::terms::{faults, room};
 use crate::{Engine, EngineError, Job, JobState, Submission};
 
 impl Engine {
@@ -14,11 +15,22 @@ impl Engine {
     /// described, without an id; nothing is queued, and no data directory is needed.
     ///
     /// # Errors
-    /// [`EngineError::Input`] with every fault, [`EngineError::RequestIdReused`], [`EngineError::Store`].
+    /// [`EngineError::Input`] with every fault, [`EngineError::RequestIdReused`], [`EngineError::QueueFull`],
+    /// [`EngineError::Store`].
     pub async fn submit(&self, submission: Submission) -> Result<Job, EngineError> {
+        let faults = faults(&submission.terms);
+        if !faults.is_empty() {
+            return Err(EngineError::Input(faults));
+        }
         if submission.validate_only {
             let models = self.models.clone();
-            return blocking(move || Ok(would_be(&*models.grid(&submission.campaign)?))).await;
+            return blocking(move || {
+                Ok(would_be(
+                    &*models.grid(&submission.campaign)?,
+                    submission.terms,
+                ))
+            })
+            .await;
         }
         let queue = self.queue()?;
         let (store, grids) = (queue.store.clone(), queue.grids.clone());
@@ -32,8 +44,11 @@ impl Engine {
                 blocks: grid.blocks().count() as u64,
                 request_id: submission.request_id,
                 warnings: grid.campaign().warnings.clone(),
+                kind: JobKind::Screening,
+                terms: submission.terms,
                 spec: submission.campaign.spelled_out(grid.model().library()),
             };
+            room(&store.jobs(), &new.terms, &new.request_id)?;
             let created = store.create_job(new, now_unix_ms())?;
             let id = created.record.id;
             if created.is_new {
@@ -60,7 +75,7 @@ impl Engine {
     }
 }
 
-pub(crate) fn would_be(grid: &Grid) -> Job {
+pub(crate) fn would_be(grid: &Grid, terms: Terms) -> Job {
     Job {
         job: String::new(),
         title: grid.campaign().title.clone(),
@@ -74,5 +89,7 @@ pub(crate) fn would_be(grid: &Grid) -> Job {
         ended_unix_ms: None,
         failure: String::new(),
         warnings: grid.campaign().warnings.clone(),
+        planning: None,
+        terms,
     }
 }

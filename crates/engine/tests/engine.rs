@@ -4,12 +4,12 @@ use std::collections::{BTreeMap, BTreeSet};
 
 use enolattice_engine::{
     Axis, Engine, EngineConfig, EngineError, ExplainTarget, Job, JobState, Order, RankQuery,
-    RankedCell, Submission,
+    RankedCell, Submission, Terms,
 };
 use enolattice_grid::{CampaignSpec, Entry, LibraryTable, MeasuredEntry, Sources};
 use enolattice_model::Fingerprint;
 use enolattice_reagents::OwnTable;
-use enolattice_store::{NewJob, Store};
+use enolattice_store::{JobKind, NewJob, Store};
 use tempfile::TempDir;
 
 /// 2 × 3 × 2 × 2 × 2 = 48 cells, a third of them with an electrophile that is not covered.
@@ -42,6 +42,7 @@ fn submission(request_id: &str) -> Submission {
         campaign: campaign(),
         request_id: request_id.into(),
         validate_only: false,
+        terms: Terms::default(),
     }
 }
 
@@ -312,6 +313,8 @@ async fn a_job_whose_campaign_means_something_else_now_fails_and_says_so() {
         blocks: 1,
         request_id: String::new(),
         warnings: Vec::new(),
+        kind: JobKind::Screening,
+        terms: Terms::default(),
     };
     let job = store.create_job(new, 0).expect("kept").record.id;
     drop(store);

@@ -115,6 +115,36 @@ impl JobService for Jobs {
         Ok(Response::new(v1::Job::from(&job)))
     }
 
+    async fn pause_job(
+        &self,
+        request: Request<v1::PauseJobRequest>,
+    ) -> Result<Response<v1::Job>, Status> {
+        let (metadata, _, v1::PauseJobRequest { job_id }) = request.into_parts();
+        let job = self.engine.pause(&job_id).await;
+        let job = job.map_err(|error| Refusal::from(error).status(&metadata))?;
+        Ok(Response::new(v1::Job::from(&job)))
+    }
+
+    async fn resume_job(
+        &self,
+        request: Request<v1::ResumeJobRequest>,
+    ) -> Result<Response<v1::Job>, Status> {
+        let (metadata, _, v1::ResumeJobRequest { job_id }) = request.into_parts();
+        let job = self.engine.resume(&job_id).await;
+        let job = job.map_err(|error| Refusal::from(error).status(&metadata))?;
+        Ok(Response::new(v1::Job::from(&job)))
+    }
+
+    async fn delete_job(
+        &self,
+        request: Request<v1::DeleteJobRequest>,
+    ) -> Result<Response<v1::DeleteJobResponse>, Status> {
+        let (metadata, _, v1::DeleteJobRequest { job_id }) = request.into_parts();
+        let gone = self.engine.delete_job(&job_id).await;
+        gone.map_err(|error| Refusal::from(error).status(&metadata))?;
+        Ok(Response::new(v1::DeleteJobResponse {}))
+    }
+
     async fn watch_job(
         &self,
         request: Request<v1::WatchJobRequest>,

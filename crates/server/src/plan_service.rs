@@ -2,10 +2,10 @@
 
 use std::sync::Arc;
 
-use enolattice_engine::{Engine, EngineError};
+use enolattice_engine::{Engine, EngineError, PlanOrder};
 use enolattice_plate::Plan;
 use enolattice_wire::v1::plan_service_server::PlanService;
-use enolattice_wire::{plan_request, stock_parts, transfer_parts, v1, well_parts};
+use enolattice_wire::{plan_request, stock_parts, terms, transfer_parts, v1, well_parts};
 use tonic::metadata::MetadataMap;
 use tonic::{Request, Response, Status};
 
@@ -34,6 +34,24 @@ impl Plans {
             false => self.engine.plan(request.job_id, asked).await,
         };
         Ok((&plan.map_err(within)?).into())
+    }
+
+    async fn order(&self, request: v1::OrderPlanRequest) -> Result<v1::Job, Refusal> {
+        let within = |error| Refusal::within("request", error);
+        let (terms, faults) = terms(request.terms);
+        let asked = match plan_request(request.request) {
+            Ok(asked) if faults.is_empty() => asked,
+            Ok(_) => return Err(Refusal::from(faults)),
+            Err(more) => return Err(Refusal::from([faults, more].concat())),
+        };
+        let order = PlanOrder {
+            job: request.job_id,
+            request: asked,
+            request_id: request.request_id,
+            terms,
+        };
+        let job = self.engine.order_plan(order).await.map_err(within)?;
+        Ok((&job).into())
     }
 
     async fn list(&self, request: v1::ListPlansRequest) -> Result<v1::ListPlansResponse, Refusal> {
@@ -87,6 +105,27 @@ impl PlanService for Plans {
         answer
             .map(Response::new)
             .map_err(|refusal| refusal.status(&metadata))
+    }
+
+    async fn order_plan(
+        &self,
+        request: Request<v1::OrderPlanRequest>,
+    ) -> Result<Response<v1::Job>, Status> {
+        let (metadata, _, request) = request.into_parts();
+        let answer = self.order(request).await;
+        answer
+            .map(Response::new)
+            .map_err(|refusal| refusal.status(&metadata))
+    }
+
+    async fn delete_plan(
+        &self,
+        request: Request<v1::DeletePlanRequest>,
+    ) -> Result<Response<v1::DeletePlanResponse>, Status> {
+        let (metadata, _, v1::DeletePlanRequest { plan_id }) = request.into_parts();
+        let gone = self.engine.delete_plan(&plan_id).await;
+        gone.map_err(|error| Refusal::from(error).status(&metadata))?;
+        Ok(Response::new(v1::DeletePlanResponse {}))
     }
 
     async fn get_plan(

@@ -53,11 +53,11 @@ impl Refusal {
     pub(crate) fn within(part: &str, error: EngineError) -> Refusal {
         let mut refusal = Refusal::from(error);
         if let Refusal::Input(faults) = &mut refusal {
-            // The id of a request stands beside its campaign.
-            for fault in faults
-                .iter_mut()
-                .filter(|fault| fault.place.field != "request_id")
-            {
+            // The id of a request and its terms stand beside its campaign.
+            for fault in faults.iter_mut().filter(|fault| {
+                let field = &fault.place.field;
+                field != "request_id" && !field.starts_with("terms.")
+            }) {
                 fault.place.field = match fault.place.field.as_str() {
                     "" => part.to_owned(),
                     field => format!("{part}.{field}"),
@@ -142,6 +142,7 @@ impl Refusal {
                 EngineError::CellUnknown { .. } => ErrorReason::CellUnknown,
                 EngineError::WrongState { .. } => ErrorReason::JobWrongState,
                 EngineError::RequestIdReused { .. } => ErrorReason::RequestIdReused,
+                EngineError::QueueFull { .. } => ErrorReason::QueueFull,
                 EngineError::PageToken { .. } => ErrorReason::PageTokenInvalid,
                 EngineError::Store { .. } => ErrorReason::StoreUnavailable,
                 EngineError::Stopping => ErrorReason::ShuttingDown,
@@ -185,6 +186,9 @@ impl Refusal {
             Refusal::Engine(EngineError::RequestIdReused { request_id, job }) => {
                 vec![("job_id", job.clone()), ("request_id", request_id.clone())]
             }
+            Refusal::Engine(EngineError::QueueFull { requester, most }) => {
+                vec![("requester", requester.clone()), ("most", most.to_string())]
+            }
             Refusal::TooLarge { limit_bytes } => vec![("limit_bytes", limit_bytes.to_string())],
             _ => vec![],
         };
@@ -205,7 +209,7 @@ fn code(reason: ErrorReason) -> Code {
         ErrorReason::JobWrongState => Code::FailedPrecondition,
         ErrorReason::RequestIdReused => Code::AlreadyExists,
         ErrorReason::StoreUnavailable | ErrorReason::ShuttingDown => Code::Unavailable,
-        ErrorReason::RequestTooLarge => Code::ResourceExhausted,
+        ErrorReason::RequestTooLarge | ErrorReason::QueueFull => Code::ResourceExhausted,
         ErrorReason::Unspecified | ErrorReason::ModelFailed | ErrorReason::Internal => {
             Code::Internal
         }

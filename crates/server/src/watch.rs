@@ -72,6 +72,8 @@ mod tests {
             ended_unix_ms: None,
             failure: String::new(),
             warnings: vec![],
+            planning: None,
+            terms: Default::default(),
         }
     }
 

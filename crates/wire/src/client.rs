@@ -15,7 +15,7 @@
 
 use enolattice_engine::{
     Agreement, CellDescription, CellMap, Comparison, Distribution, DryRun, ExplainTarget, Job,
-    MapQuery, RankPage, RankQuery, ReagentRow, SiteReport, Submission,
+    MapQuery, RankPage, RankQuery, ReagentRow, SiteReport, Submission, Terms,
 };
 use enolattice_grid::{CampaignSpec, InputError};
 use enolattice_model::Explanation;
@@ -204,6 +204,48 @@ impl Client {
             .map_err(|status| self.error(&status))?
             .into_inner()
             .try_into()?)
+    }
+
+    /// Holds a job between two blocks.
+    ///
+    /// # Errors
+    /// As the embedded engine.
+    pub async fn pause(&self, job: &str) -> Result<Job, RemoteError> {
+        let request = v1::PauseJobRequest {
+            job_id: job.to_owned(),
+        };
+        let answer = self.jobs.clone().pause_job(request).await;
+        Ok(answer
+            .map_err(|status| self.error(&status))?
+            .into_inner()
+            .try_into()?)
+    }
+
+    /// Lets a paused job wait for its turn again.
+    ///
+    /// # Errors
+    /// As the embedded engine.
+    pub async fn resume(&self, job: &str) -> Result<Job, RemoteError> {
+        let request = v1::ResumeJobRequest {
+            job_id: job.to_owned(),
+        };
+        let answer = self.jobs.clone().resume_job(request).await;
+        Ok(answer
+            .map_err(|status| self.error(&status))?
+            .into_inner()
+            .try_into()?)
+    }
+
+    /// Deletes a job that has ended; see `Engine::delete_job`.
+    ///
+    /// # Errors
+    /// As the embedded engine.
+    pub async fn delete_job(&self, job: &str) -> Result<(), RemoteError> {
+        let request = v1::DeleteJobRequest {
+            job_id: job.to_owned(),
+        };
+        let answer = self.jobs.clone().delete_job(request).await;
+        answer.map(drop).map_err(|status| self.error(&status))
     }
 
     /// A page of the ranking, of at most [`MAX_PAGE_SIZE`] rows: go on with the token for more.
@@ -411,6 +453,7 @@ fn checking(campaign: CampaignSpec) -> Submission {
         campaign,
         request_id: String::new(),
         validate_only: true,
+        terms: Terms::default(),
     }
 }
 

@@ -26,6 +26,7 @@ pub(crate) use agreement::request as measured_request;
 pub use campaign::submission;
 pub use comparison::movers;
 pub use description::explained;
+pub use job::terms;
 pub(crate) use plan::Assembly;
 pub use plan::{plan_request, stock_parts, transfer_parts, well_parts};
 pub use ranking::page_size;

@@ -26,7 +26,7 @@ pub const ERROR_DOMAIN: &str = "enolattice.v1";
 pub use client::{Client, JobWatch};
 pub use convert::{
     ConversionError, explained, measured, movers, page_size, plan_request, stock_parts, submission,
-    transfer_parts, well_parts,
+    terms, transfer_parts, well_parts,
 };
 pub use faults::{INPUT_FAULTS_TYPE_URL, bad_field};
 pub use limits::{

@@ -56,6 +56,14 @@ impl RemoteError {
         }
     }
 
+    /// The reason of the closed list, where the engine refused for one.
+    pub fn reason(&self) -> Option<ErrorReason> {
+        match self {
+            RemoteError::Refused { reason, .. } => Some(*reason),
+            _ => None,
+        }
+    }
+
     /// Reads the details of a status that came from the server at `url`.
     pub fn from_status(status: &Status, url: &str) -> RemoteError {
         let details = pb::Status::decode(status.details())

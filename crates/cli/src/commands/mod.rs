@@ -4,21 +4,25 @@ mod cancel;
 mod check_measured;
 mod compare;
 mod completion;
+mod delete;
 mod explain;
 mod export;
 mod following;
 mod jobs;
 mod man;
 mod options;
+mod pause;
 mod plan;
 mod plans;
 mod rank;
 mod reagents;
 mod report;
+mod resume;
 mod screen;
 mod serve;
 mod sites;
 mod submit;
+mod terms;
 mod watch;
 
 use clap::{Parser, Subcommand};
@@ -57,7 +61,10 @@ enum Command {
     Submit(submit::Submit),
     Jobs(jobs::Jobs),
     Watch(watch::Watch),
+    Pause(pause::Pause),
+    Resume(resume::Resume),
     Cancel(cancel::Cancel),
+    Delete(delete::Delete),
     Rank(rank::Rank),
     Explain(Box<explain::Explain>),
     Export(export::Export),
@@ -98,7 +105,10 @@ pub(crate) async fn run(program: Program) -> Result<(), Fault> {
         Command::Submit(command) => command.run().await,
         Command::Jobs(command) => command.run().await,
         Command::Watch(command) => command.run().await,
+        Command::Pause(command) => command.run().await,
+        Command::Resume(command) => command.run().await,
         Command::Cancel(command) => command.run().await,
+        Command::Delete(command) => command.run().await,
         Command::Rank(command) => command.run().await,
         Command::Explain(command) => command.run().await,
         Command::Export(command) => command.run().await,

@@ -3,15 +3,18 @@
 use std::path::PathBuf;
 
 use clap::Args;
+use enolattice_engine::PlanOrder;
 use enolattice_grid::FaultCode;
 use enolattice_plate::{Plan as KeptPlan, PlanRequest, PlateFormat};
 use enolattice_reagents::Library;
 use enolattice_records::{Person, Structures, dataset, json, protobuf};
 
 use super::EngineOptions;
+use super::terms::TermsOptions;
 use crate::campaign_file::read_text;
 use crate::client::{Client, Need};
 use crate::fault::Fault;
+use crate::json::JobRecord;
 use crate::out_file::OutFile;
 use crate::output::{print, print_json, talk};
 use crate::plan_folder::PlanFolder;
@@ -26,6 +29,7 @@ use crate::text::{LetteredAxis, plan_page, plates_page, width};
 #[command(after_help = "Examples:\n  \
     enolattice plan JOB --wells 96 --out tonight\n  \
     enolattice plan JOB --request plan.toml\n  \
+    enolattice plan JOB --request plan.toml --later\n  \
     enolattice plan --kept PLAN --show --by base\n  \
     enolattice plan --kept PLAN --ord plan.pb --person-email planner@example.org")]
 pub(super) struct Plan {
@@ -47,6 +51,12 @@ pub(super) struct Plan {
     /// Seed of the layout and of all draws; over the request's.
     #[arg(long, value_name = "N")]
     seed: Option<u64>,
+    /// Let a job of its own make the plan once JOB has ended, and print its id; the plan will have the same one.
+    #[arg(long, conflicts_with_all = ["kept", "out", "show", "ord"])]
+    later: bool,
+    /// Your id of this request: sent again, it gives the same job.
+    #[arg(long, value_name = "ID", default_value = "", requires = "later")]
+    request_id: String,
     /// Write the plan's files into this new folder.
     #[arg(long, value_name = "DIR")]
     out: Option<PathBuf>,
@@ -79,6 +89,8 @@ pub(super) struct Plan {
     force: bool,
     #[command(flatten)]
     engine: EngineOptions,
+    #[command(flatten)]
+    terms: TermsOptions,
     /// Print the whole plan as JSON.
     #[arg(long)]
     json: bool,
@@ -90,6 +102,9 @@ impl Plan {
         let folder = self.out.as_deref().map(PlanFolder::new).transpose()?;
         let record = self.record()?;
         let client = Client::open(&self.engine, Need::Jobs).await?;
+        if self.later {
+            return self.order(client, request).await;
+        }
         let planned = match &self.kept {
             Some(plan) => client.kept_plan(plan).await,
             None => {
@@ -121,6 +136,28 @@ impl Plan {
             return print(&plates_page(&plan, self.by, width()));
         }
         print(&plan_page(&plan))
+    }
+
+    /// Queues a job that makes the plan.
+    async fn order(&self, client: Client, request: PlanRequest) -> Result<(), Fault> {
+        let order = PlanOrder {
+            job: self.job.clone().unwrap_or_default(),
+            request,
+            request_id: self.request_id.clone(),
+            terms: self.terms.terms(),
+        };
+        let ordered = client.order_plan(order).await;
+        client.close().await?;
+        let job = ordered?;
+        let engine = self.engine.repeated();
+        talk(&format!(
+            "ordered; next: enolattice watch {0}{engine}, then enolattice plan --kept {0}{engine}",
+            job.job
+        ));
+        match self.json {
+            true => print_json(&JobRecord::from(job)),
+            false => print(&job.job),
+        }
     }
 
     /// Where the dataset goes and in which form.

@@ -9,6 +9,7 @@ use enolattice_grid::CampaignSpec;
 
 use super::EngineOptions;
 use super::following::{expect_done, follow};
+use super::terms::TermsOptions;
 use crate::campaign_file::{read_campaign, sound};
 use crate::client::{Client, Need};
 use crate::fault::Fault;
@@ -36,6 +37,8 @@ pub(super) struct Screen {
     dry_run: bool,
     #[command(flatten)]
     engine: EngineOptions,
+    #[command(flatten)]
+    terms: TermsOptions,
     /// Print JSON.
     #[arg(long)]
     json: bool,
@@ -74,6 +77,7 @@ impl Screen {
                     campaign,
                     request_id: String::new(),
                     validate_only: false,
+                    terms: self.terms.terms(),
                 },
             )
             .await;

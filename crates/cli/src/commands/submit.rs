@@ -6,6 +6,7 @@ use clap::Args;
 use enolattice_engine::Submission;
 
 use super::EngineOptions;
+use super::terms::TermsOptions;
 use crate::campaign_file::{read_campaign, sound};
 use crate::client::{Client, Need};
 use crate::fault::Fault;
@@ -20,6 +21,7 @@ use crate::text::count;
 #[derive(Debug, Args)]
 #[command(after_help = "Examples:\n  \
     enolattice submit campaign.toml --server http://127.0.0.1:7413\n  \
+    enolattice submit large.toml --not-before 8h --priority -5\n  \
     enolattice submit campaign.toml && enolattice watch JOB")]
 pub(super) struct Submit {
     /// The campaign, a TOML file.
@@ -32,6 +34,8 @@ pub(super) struct Submit {
     validate_only: bool,
     #[command(flatten)]
     engine: EngineOptions,
+    #[command(flatten)]
+    terms: TermsOptions,
     /// Print JSON.
     #[arg(long)]
     json: bool,
@@ -52,6 +56,7 @@ impl Submit {
             campaign,
             request_id: self.request_id,
             validate_only: self.validate_only,
+            terms: self.terms.terms(),
         };
         let submitted = client.submit(submission).await;
         client.close().await?;

@@ -37,7 +37,9 @@ impl Watch {
         let ended = follow(&client, &self.job, &self.engine, each).await;
         client.close().await?;
         let job = ended?;
-        if !self.json {
+        if !self.json && job.planning.is_some() {
+            print(&format!("{} {}", job.job, state_name(job.state)))?;
+        } else if !self.json {
             print(&format!(
                 "{} {}: {} of {} cells, best {}",
                 job.job,

@@ -3,7 +3,8 @@
 use enolattice_engine::{
     AcidityAgreement, Agreement, Axis, AxisOverlap, CellDescription, CellMap, CheckedAcidity,
     CheckedRun, ComparedCell, Comparison, Difference, Distribution, DryRun, Histogram, Job,
-    JobState, MapAxis, MapField, Miss, Mover, PlanSummary, RankedCell, ReagentRow, YieldAgreement,
+    JobState, MapAxis, MapField, Miss, Mover, PlanSummary, RankedCell, ReagentRow, Terms,
+    YieldAgreement,
 };
 use enolattice_grid::{CampaignSpec, Decile, MeasuredEntry};
 use enolattice_model::{
@@ -90,6 +91,8 @@ fn job() -> Job {
         ended_unix_ms: None,
         failure: String::new(),
         warnings: Vec::new(),
+        planning: None,
+        terms: Terms::default(),
     }
 }
 

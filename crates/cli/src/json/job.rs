@@ -18,6 +18,14 @@ pub(crate) struct JobRecord {
     ended_unix_ms: Option<u64>,
     failure: Option<String>,
     warnings: Vec<String>,
+    /// The job that it plans from; of a job that makes a plan.
+    plans_from: Option<String>,
+    /// The plan that it made.
+    plan: Option<String>,
+    requester: Option<String>,
+    priority: i32,
+    not_before_unix_ms: Option<u64>,
+    deadline_unix_ms: Option<u64>,
 }
 
 impl From<Job> for JobRecord {
@@ -35,6 +43,12 @@ impl From<Job> for JobRecord {
             ended_unix_ms: job.ended_unix_ms,
             failure: Some(job.failure).filter(|failure| !failure.is_empty()),
             warnings: job.warnings,
+            plans_from: job.planning.as_ref().map(|planning| planning.job.clone()),
+            plan: job.planning.and_then(|planning| planning.plan),
+            requester: Some(job.terms.requester).filter(|name| !name.is_empty()),
+            priority: job.terms.priority,
+            not_before_unix_ms: job.terms.not_before_unix_ms,
+            deadline_unix_ms: job.terms.deadline_unix_ms,
         }
     }
 }

@@ -1,6 +1,6 @@
 //! Plans: made, listed and read, each whole.
 
-use enolattice_engine::PlanSummary;
+use enolattice_engine::{Job, PlanOrder, PlanSummary};
 use enolattice_plate::{Plan, PlanRequest};
 
 use super::{Client, places, with_details};
@@ -28,6 +28,41 @@ impl Client {
             other => other,
         })?;
         self.whole(head.into_inner()).await
+    }
+
+    /// Queues a job that makes a plan; see `Engine::order_plan`.
+    ///
+    /// # Errors
+    /// As the embedded engine; faults have the places of the request.
+    pub async fn order_plan(&self, order: PlanOrder) -> Result<Job, RemoteError> {
+        let faults = order.request.faults();
+        if !faults.is_empty() {
+            return Err(RemoteError::Input(faults));
+        }
+        let request = v1::OrderPlanRequest {
+            job_id: order.job,
+            request: Some((&order.request).into()),
+            request_id: order.request_id,
+            terms: Some((&order.terms).into()),
+        };
+        let answer = self.plans.clone().order_plan(with_details(request)).await;
+        let job = answer.map_err(|status| match self.error(&status) {
+            RemoteError::Input(faults) => RemoteError::Input(places::within("request", faults)),
+            other => other,
+        })?;
+        Ok(job.into_inner().try_into()?)
+    }
+
+    /// Deletes a kept plan; see `Engine::delete_plan`.
+    ///
+    /// # Errors
+    /// As the embedded engine.
+    pub async fn delete_plan(&self, plan: &str) -> Result<(), RemoteError> {
+        let request = v1::DeletePlanRequest {
+            plan_id: plan.to_owned(),
+        };
+        let answer = self.plans.clone().delete_plan(request).await;
+        answer.map(drop).map_err(|status| self.error(&status))
     }
 
     /// A kept plan; see `Engine::kept_plan`.

@@ -10,6 +10,7 @@ use enolattice_grid::{
 };
 
 use super::cell::{addition_from_name, addition_from_wire};
+use super::job::terms;
 use super::{measured, media, stock};
 use crate::v1::{self, ErrorReason};
 use crate::{MAX_REQUEST_ID_BYTES, bad_field};
@@ -23,6 +24,7 @@ impl TryFrom<&Submission> for v1::SubmitJobRequest {
             request_id: submission.request_id.clone(),
             validate_only: submission.validate_only,
             dry_run: false,
+            terms: Some((&submission.terms).into()),
         })
     }
 }
@@ -42,10 +44,13 @@ pub fn submission(request: v1::SubmitJobRequest) -> (Submission, Vec<InputError>
     }
     let (campaign, of_campaign) = named_campaign(request.campaign);
     faults.extend(of_campaign);
+    let (terms, of_terms) = terms(request.terms);
+    faults.extend(of_terms);
     let submission = Submission {
         campaign,
         request_id: request.request_id,
         validate_only: request.validate_only,
+        terms,
     };
     (submission, faults)
 }
@@ -322,6 +327,12 @@ mod tests {
 
     fn submitted() -> Submission {
         Submission {
+            terms: enolattice_engine::Terms {
+                requester: "night shift".into(),
+                priority: 7,
+                not_before_unix_ms: Some(1_764_590_000_001),
+                deadline_unix_ms: None,
+            },
             campaign: CampaignSpec {
                 title: "Nitriles".into(),
                 substrates: vec![SubstrateEntry {

@@ -211,6 +211,8 @@ mod tests {
             ended_unix_ms: Some(1_700_000_001_000),
             failure: "a block failed".into(),
             warnings: vec!["counts once".into()],
+            planning: None,
+            terms: Default::default(),
         }
     }
 

@@ -155,6 +155,8 @@ mod tests {
             ended_unix_ms: None,
             failure: String::new(),
             warnings: vec!["counts once".into()],
+            planning: None,
+            terms: Default::default(),
         };
         let run = DryRun {
             job,

@@ -1,10 +1,12 @@
 //! Jobs.
 
-use enolattice_engine::Job;
+use enolattice_engine::{Job, Planning, Terms};
+use enolattice_grid::InputError;
 use prost_types::Timestamp;
 
 use super::{ConversionError, enums, numbers};
-use crate::v1;
+use crate::v1::ErrorReason;
+use crate::{bad_field, v1};
 
 impl From<&Job> for v1::Job {
     fn from(job: &Job) -> Self {
@@ -22,8 +24,55 @@ impl From<&Job> for v1::Job {
             failure: job.failure.clone(),
             warnings: job.warnings.clone(),
             dry_run: None,
+            terms: Some((&job.terms).into()),
+            planning: job.planning.as_ref().map(|planning| v1::Planning {
+                job_id: planning.job.clone(),
+                plan_id: planning.plan.clone().unwrap_or_default(),
+            }),
         }
     }
+}
+
+impl From<&Terms> for v1::JobTerms {
+    fn from(terms: &Terms) -> Self {
+        v1::JobTerms {
+            requester: terms.requester.clone(),
+            priority: terms.priority,
+            not_before_time: terms.not_before_unix_ms.map(timestamp),
+            deadline_time: terms.deadline_unix_ms.map(timestamp),
+        }
+    }
+}
+
+/// The terms of a request, and the faults of their times.
+pub fn terms(message: Option<v1::JobTerms>) -> (Terms, Vec<InputError>) {
+    let message = message.unwrap_or_default();
+    let mut faults = Vec::new();
+    let mut time = |field: &'static str, time: Option<Timestamp>| {
+        let time = time?;
+        match unix_ms(field, &time) {
+            Ok(unix_ms) => Some(unix_ms),
+            Err(_) => {
+                let (reason, remedy) = ("is no time after 1970", "give a time to come");
+                let value = format!("{} s", time.seconds);
+                faults.push(bad_field(
+                    ErrorReason::ValueOutOfRange,
+                    field,
+                    value,
+                    reason,
+                    remedy,
+                ));
+                None
+            }
+        }
+    };
+    let terms = Terms {
+        not_before_unix_ms: time("terms.not_before_time", message.not_before_time),
+        deadline_unix_ms: time("terms.deadline_time", message.deadline_time),
+        requester: message.requester,
+        priority: message.priority,
+    };
+    (terms, faults)
 }
 
 impl TryFrom<v1::Job> for Job {
@@ -38,10 +87,7 @@ impl TryFrom<v1::Job> for Job {
             cells: numbers::from_wire("Job.cells", job.cells)?,
             cells_done: numbers::from_wire("Job.cells_done", job.cells_done)?,
             submitted_unix_ms: unix_ms("Job.submit_time", &submitted)?,
-            ended_unix_ms: match job.end_time {
-                Some(time) => Some(unix_ms("Job.end_time", &time)?),
-                None => None,
-            },
+            ended_unix_ms: optional_unix_ms("Job.end_time", job.end_time)?,
             job: job.job_id,
             title: job.title,
             best_yield: job.best_yield,
@@ -49,6 +95,25 @@ impl TryFrom<v1::Job> for Job {
             model_fingerprint: job.model_fingerprint,
             failure: job.failure,
             warnings: job.warnings,
+            terms: match job.terms {
+                None => Terms::default(),
+                Some(terms) => Terms {
+                    not_before_unix_ms: optional_unix_ms(
+                        "Job.terms.not_before_time",
+                        terms.not_before_time,
+                    )?,
+                    deadline_unix_ms: optional_unix_ms(
+                        "Job.terms.deadline_time",
+                        terms.deadline_time,
+                    )?,
+                    requester: terms.requester,
+                    priority: terms.priority,
+                },
+            },
+            planning: job.planning.map(|planning| Planning {
+                job: planning.job_id,
+                plan: Some(planning.plan_id).filter(|plan| !plan.is_empty()),
+            }),
         })
     }
 }
@@ -58,6 +123,13 @@ pub(crate) fn timestamp(unix_ms: u64) -> Timestamp {
         seconds: numbers::to_wire(unix_ms / 1000),
         nanos: (unix_ms % 1000) as i32 * 1_000_000,
     }
+}
+
+fn optional_unix_ms(
+    field: &'static str,
+    time: Option<Timestamp>,
+) -> Result<Option<u64>, ConversionError> {
+    time.map(|time| unix_ms(field, &time)).transpose()
 }
 
 pub(crate) fn unix_ms(field: &'static str, time: &Timestamp) -> Result<u64, ConversionError> {
@@ -91,6 +163,16 @@ mod tests {
             ended_unix_ms: Some(1_764_583_260_999),
             failure: "disk full".into(),
             warnings: vec!["two substrates are the same".into()],
+            planning: Some(Planning {
+                job: "0191f2".into(),
+                plan: None,
+            }),
+            terms: Terms {
+                requester: "night shift".into(),
+                priority: -3,
+                not_before_unix_ms: Some(1_764_590_000_000),
+                deadline_unix_ms: Some(1_764_600_000_001),
+            },
         }
     }
 
@@ -105,6 +187,8 @@ mod tests {
         let job = Job {
             best_yield: None,
             ended_unix_ms: None,
+            planning: None,
+            terms: Terms::default(),
             ..job()
         };
         assert_eq!(Job::try_from(v1::Job::from(&job)), Ok(job));

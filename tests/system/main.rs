@@ -13,6 +13,7 @@ mod maps;
 mod plans;
 mod portable;
 mod queue;
+mod random_plans;
 mod ranking;
 mod refusals;
 mod reports;

@@ -60,7 +60,7 @@ pub(crate) fn drafted(
     let pinned = pinned(&grid, request)?;
     let vetoed = vetoed(&grid, request)?;
     let quotas = quotas(&grid, &record.spec, request)?;
-    let shortlist = Shortlist::of(store, job, &grid, &record.spec, request, &vetoed)?;
+    let shortlist = Shortlist::of(store, job, &grid, &record.spec, request, &vetoed, &quotas)?;
     let draws = draws(&grid, request);
     let cells: BTreeSet<u64> = shortlist.all().chain(pinned.iter().copied()).collect();
     let candidates = scored(&grid, &cells, &draws, stop);

@@ -43,6 +43,7 @@ pub use masses::{
 };
 pub use plan::{Gains, LeftOut, PRECEDENCE, Plan, PlannedWell, Plate, Reagent, WellCaution};
 pub use planning::{Ground, plan};
+pub use random::scattered;
 pub use recipe::{Content, Recipe, Role};
 pub use request::{
     Aim, AimWord, ChoiceRequest, ColumnsBy, Controls, Limit, LimitAxis, NamedCell, PlanRequest,

@@ -1,5 +1,8 @@
 //! Random numbers that are the same on every machine.
 
+/// Step of the generator's state.
+const STEP: u64 = 0x9e37_79b9_7f4a_7c15;
+
 /// splitmix64 (Steele, Lea, Flood 2014, doi:10.1145/2660193.2660195).
 #[derive(Clone, Debug)]
 pub(crate) struct Random {
@@ -18,11 +21,8 @@ impl Random {
     }
 
     pub(crate) fn next(&mut self) -> u64 {
-        self.state = self.state.wrapping_add(0x9e37_79b9_7f4a_7c15);
-        let mut z = self.state;
-        z = (z ^ (z >> 30)).wrapping_mul(0xbf58_476d_1ce4_e5b9);
-        z = (z ^ (z >> 27)).wrapping_mul(0x94d0_49bb_1331_11eb);
-        z ^ (z >> 31)
+        self.state = self.state.wrapping_add(STEP);
+        finalised(self.state)
     }
 
     /// A number below `bound`, which is at least 1; by the upper half of a product, whose bias is
@@ -37,6 +37,18 @@ impl Random {
             list.swap(last, self.below(last + 1));
         }
     }
+}
+
+/// Scatters numbers: a hash of a number for each seed.
+pub fn scattered(seed: u64, number: u64) -> u64 {
+    finalised(number.wrapping_add(1).wrapping_mul(STEP) ^ seed)
+}
+
+/// The generator's finaliser.
+fn finalised(mut z: u64) -> u64 {
+    z = (z ^ (z >> 30)).wrapping_mul(0xbf58_476d_1ce4_e5b9);
+    z = (z ^ (z >> 27)).wrapping_mul(0x94d0_49bb_1331_11eb);
+    z ^ (z >> 31)
 }
 
 #[cfg(test)]

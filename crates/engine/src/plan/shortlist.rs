@@ -4,13 +4,14 @@
 //! the surest cells are kept, and those whose outcome is most in doubt, which teach most. Of cells that score alike a hash
 //! decides, so that the shortlist is not the first solvents of an axis. Where there are many settings, those stay with
 //! which most substrates and electrophiles have a sure cell: a plate has one setting, and a few cells of each would fill none.
+//! A value that must come a number of times has the surest of its cells kept besides.
 
 use std::cmp::Reverse;
 use std::collections::{BTreeMap, BinaryHeap, HashMap};
 
 use enolattice_grid::{BlockId, CampaignSpec, CellDigits, CellId, Columns, Grid};
 use enolattice_model::{Category, Severity};
-use enolattice_plate::{Deck, LeftOut, PlanRequest, PlateFormat};
+use enolattice_plate::{Deck, LeftOut, PlanRequest, PlateFormat, Quota, scattered};
 use enolattice_store::{JobId, Store};
 use rayon::prelude::*;
 
@@ -52,10 +53,11 @@ impl Shortlist {
         spec: &CampaignSpec,
         request: &PlanRequest,
         vetoed: &Vetoed,
+        quotas: &[Quota],
     ) -> Result<Shortlist, EngineError> {
         let rules = Rules::of(grid, spec, request, vetoed)?;
         rules.check_pins(store, job, request)?;
-        let mut kept = Kept::new(grid, request);
+        let mut kept = Kept::new(grid, request, quotas);
         let mut blocks = grid.blocks();
         loop {
             let some: Vec<BlockId> = blocks.by_ref().take(BLOCKS_AT_ONCE).collect();
@@ -302,6 +304,8 @@ struct Kept {
     /// Cells of each kind that a stratum keeps.
     per_stratum: usize,
     settings: BTreeMap<[u32; SETTING.len()], Strata>,
+    /// Axis, value and number of cells of what must come.
+    required: Vec<(usize, u32, usize)>,
     top: Best,
     most_top: usize,
     random: Best,
@@ -318,7 +322,8 @@ const SETTING: [usize; 4] = [5, 6, 10, 11];
 const PER_STRATUM: u64 = 2;
 
 impl Kept {
-    fn new(grid: &Grid, request: &PlanRequest) -> Kept {
+    fn new(grid: &Grid, request: &PlanRequest, quotas: &[Quota]) -> Kept {
+        let required = quotas.iter().filter(|quota| quota.least > 0);
         let sizes = grid.lattice().sizes();
         let strata = |axes: &[usize]| {
             let count = axes.iter().map(|&axis| u64::from(sizes[axis]));
@@ -349,6 +354,9 @@ impl Kept {
             strata_by,
             most_settings: settings as usize,
             settings: BTreeMap::new(),
+            required: required
+                .map(|quota| (quota.axis, quota.value, quota.least))
+                .collect(),
             top: Best::new(),
             most_top: wells.min(MOST_OF_TOP),
             random: Best::new(),
@@ -357,7 +365,7 @@ impl Kept {
     }
 
     fn take(&mut self, row: &Row) {
-        let hash = hash(self.seed, row.cell);
+        let hash = scattered(self.seed, row.cell);
         let digits = row.digits.to_array();
         let stratum = self.strata_by.iter().map(|&axis| digits[axis]).collect();
         let setting = SETTING.map(|axis| digits[axis]);
@@ -368,6 +376,14 @@ impl Kept {
         // p (1 − p), at most a quarter of 65534²
         let doubt = u32::from(row.p_hit) * u32::from(STEPS - row.p_hit);
         keep(doubtful, self.per_stratum, doubt, hash, row.cell);
+        for &(axis, value, least) in &self.required {
+            if digits[axis] == value {
+                // longer than the key of a stratum, so that it meets none
+                let key = vec![u32::MAX, axis as u32, value];
+                let [sure, _] = strata.entry(key).or_default();
+                keep(sure, least, sureness, hash, row.cell);
+            }
+        }
         // the ranking's own order: ties by cell
         keep(
             &mut self.top,
@@ -436,14 +452,6 @@ fn most_covering(mut settings: Vec<Strata>, most: usize) -> Vec<Strata> {
         kept.push(strata);
     }
     kept
-}
-
-/// A hash of a cell that is the same on every machine: the finaliser of SplitMix64.
-fn hash(seed: u64, cell: u64) -> u64 {
-    let mut z = cell.wrapping_add(1).wrapping_mul(0x9e37_79b9_7f4a_7c15) ^ seed;
-    z = (z ^ (z >> 30)).wrapping_mul(0xbf58_476d_1ce4_e5b9);
-    z = (z ^ (z >> 27)).wrapping_mul(0x94d0_49bb_1331_11eb);
-    z ^ (z >> 31)
 }
 
 #[cfg(test)]

@@ -182,3 +182,52 @@ pub struct Gains {
     /// Cells that exchange has put in the place of greedily chosen ones.
     pub exchanged: usize,
 }
+
+#[cfg(test)]
+mod tests {
+    use super::*;
+
+    /// `testdata/plan_document_v1.json` is a plan as the first version that kept plans wrote it, its lists cut short; it is never
+    /// made anew.
+    #[test]
+    fn kept_plans_are_read_for_ever() {
+        let golden = include_str!("../testdata/plan_document_v1.json");
+        let plan: Plan = serde_json::from_str(golden).unwrap();
+        assert_eq!(plan.campaign, "Invented, small");
+        assert_eq!(plan.request.plates.wells.wells(), 24);
+        let well = &plan.plates[0].wells[0];
+        assert_eq!(
+            (well.well.to_string().as_str(), well.solvent.as_str()),
+            ("A1", "THF")
+        );
+        // nothing that was written is lost
+        let written: serde_json::Value = serde_json::from_str(golden).unwrap();
+        let again = serde_json::to_value(&plan).unwrap();
+        assert_eq!(kept(&written, &again), Vec::<String>::new());
+    }
+
+    /// Paths of what stands in the first document and not, or otherwise, in the second.
+    fn kept(written: &serde_json::Value, again: &serde_json::Value) -> Vec<String> {
+        use serde_json::Value::{Array, Object};
+        let within = |name: &str, lost: Vec<String>| -> Vec<String> {
+            lost.iter().map(|path| format!("{name}/{path}")).collect()
+        };
+        match (written, again) {
+            (Object(written), Object(again)) => written
+                .iter()
+                .flat_map(|(name, value)| match again.get(name) {
+                    Some(again) => within(name, kept(value, again)),
+                    None => vec![name.clone()],
+                })
+                .collect(),
+            (Array(written), Array(again)) if written.len() == again.len() => written
+                .iter()
+                .zip(again)
+                .enumerate()
+                .flat_map(|(i, (value, again))| within(&i.to_string(), kept(value, again)))
+                .collect(),
+            (written, again) if written == again => Vec::new(),
+            (written, again) => vec![format!("{written} became {again}")],
+        }
+    }
+}

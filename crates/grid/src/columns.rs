@@ -97,6 +97,31 @@ impl Columns {
         bytes
     }
 
+    /// The score of the `i`-th cell of a stored form, the rest unread.
+    ///
+    /// # Errors
+    /// A sentence that says what is wrong with the bytes.
+    pub fn score_in(bytes: &[u8], i: usize) -> Result<Score, String> {
+        let cells = match bytes.split_first_chunk::<HEAD_BYTES>() {
+            Some(([VERSION, a, b, c, d], _)) => u32::from_le_bytes([*a, *b, *c, *d]) as usize,
+            _ => return Err(format!("columns of another version than {VERSION}")),
+        };
+        if bytes.len() != HEAD_BYTES + CELL_BYTES * cells || i >= cells {
+            return Err(format!("columns of {cells} cells have no cell {i}"));
+        }
+        let at = |column: usize, width: usize| &bytes[HEAD_BYTES + column * cells + i * width..];
+        let u16_at = |column| u16::from_le_bytes([at(column, 2)[0], at(column, 2)[1]]);
+        let cautions = at(7, 4);
+        Ok(Score {
+            expected_yield: from_u16(u16_at(0)),
+            p_hit: from_u16(u16_at(2)),
+            selectivity: from_u8(at(4, 1)[0]),
+            feasibility: from_u8(at(5, 1)[0]),
+            largest_loss: Channel::from_number(at(6, 1)[0]),
+            cautions: u32::from_le_bytes([cautions[0], cautions[1], cautions[2], cautions[3]]),
+        })
+    }
+
     /// Reads the stored form.
     ///
     /// # Errors

@@ -1,7 +1,8 @@
 //! The loop that takes jobs from the journal, serves them and tells who watches.
 
-use std::collections::{BTreeMap, BTreeSet};
+use std::collections::{BTreeMap, BTreeSet, VecDeque};
 use std::sync::Arc;
+use std::sync::atomic::{AtomicBool, Ordering};
 use std::time::{Duration, Instant, SystemTime, UNIX_EPOCH};
 
 use enolattice_grid::BlockId;
@@ -45,6 +46,8 @@ enum News {
     Piece(JobId, Result<(), String>),
     /// What was committed is safe, or cannot be made so.
     Acknowledged(Result<(), String>),
+    /// The rows of an ended job are written in order, or will not be.
+    Ordered,
 }
 
 /// The loop's own things.
@@ -61,6 +64,10 @@ pub(crate) struct Desk {
     /// Jobs whose change of state could not be journalled: left alone until the next start.
     stuck: BTreeSet<JobId>,
     acknowledging: bool,
+    /// Ended jobs whose rows are to be written in order, one at a time.
+    to_order: VecDeque<JobId>,
+    ordering: bool,
+    stop_ordering: Arc<AtomicBool>,
     closing: bool,
     tell_desk: mpsc::UnboundedSender<News>,
     news: mpsc::UnboundedReceiver<News>,
@@ -80,6 +87,9 @@ impl Desk {
             busy: 0,
             stuck: BTreeSet::new(),
             acknowledging: false,
+            to_order: VecDeque::new(),
+            ordering: false,
+            stop_ordering: Arc::default(),
             closing: false,
             tell_desk,
             news,
@@ -90,11 +100,17 @@ impl Desk {
     pub(crate) async fn work(mut self, mut commands: mpsc::UnboundedReceiver<Command>) {
         self.take_up_interrupted().await;
         self.look();
+        let ended = self.store.jobs().into_iter().rev();
+        self.to_order = ended
+            .filter(|record| record.state.is_ended())
+            .map(|record| record.id)
+            .collect();
         let mut ticks = interval(ACKNOWLEDGE_EVERY);
         ticks.set_missed_tick_behavior(MissedTickBehavior::Delay);
         loop {
             self.serve().await;
-            if self.closing && self.served.is_empty() && !self.acknowledging {
+            let is_idle = self.served.is_empty() && !self.acknowledging && !self.ordering;
+            if self.closing && is_idle {
                 return;
             }
             let patience = self.until_the_next_date();
@@ -139,6 +155,7 @@ impl Desk {
         if self.closing {
             return;
         }
+        self.order_rows();
         self.give_up_the_late().await;
         while let Some(job) = self.next_piece() {
             self.start(job).await;
@@ -152,6 +169,34 @@ impl Desk {
                 false => self.hand_out(job),
             }
         }
+    }
+
+    /// Has the rows of an ended job written in order, beside the blocks.
+    fn order_rows(&mut self) {
+        if self.ordering {
+            return;
+        }
+        let Some(job) = self.to_order.pop_front() else {
+            return;
+        };
+        self.ordering = true;
+        let (store, stop, pool, tell) = (
+            self.store.clone(),
+            self.stop_ordering.clone(),
+            self.pool.clone(),
+            self.tell_desk.clone(),
+        );
+        spawn_blocking(move || {
+            let written = caught(|| pool.install(|| store.write_order(job, &stop)));
+            drop(store);
+            match written {
+                Ok(Ok(_)) => {}
+                // pages are found without it
+                Ok(Err(error)) => tracing::warn!(%job, %error, "rows were not written in order"),
+                Err(reason) => tracing::warn!(%job, reason, "rows were not written in order"),
+            }
+            let _ = tell.send(News::Ordered);
+        });
     }
 
     /// The planning job to begin now: one at a time, beside the blocks.
@@ -329,6 +374,7 @@ impl Desk {
                 }
                 self.settle(job).await;
             }
+            News::Ordered => self.ordering = false,
             News::Acknowledged(outcome) => {
                 self.acknowledging = false;
                 match outcome {
@@ -354,7 +400,11 @@ impl Desk {
         let progress = self.store.progress(job);
         let none_committed = progress.is_ok_and(|progress| progress.blocks == 0);
         let (event, failure) = served.verdict(none_committed);
-        self.change(job, event, failure).await;
+        if let Some(record) = self.change(job, event, failure).await
+            && record.state.is_ended()
+        {
+            self.to_order.push_back(job);
+        }
         let Some((wanted, replies)) = served.stopping else {
             return;
         };
@@ -400,6 +450,7 @@ impl Desk {
 
     async fn close_down(&mut self) {
         self.closing = true;
+        self.stop_ordering.store(true, Ordering::Relaxed);
         for served in self.served.values_mut() {
             served.stop_for(Event::Interrupt, None);
         }

@@ -5,12 +5,14 @@
 //! blocks; then pages are asked for, warm and after reopening. Scores are noise, the worst
 //! case for a ranking: the best cells lie scattered over all blocks.
 
-use std::sync::atomic::{AtomicU64, Ordering};
+use std::sync::atomic::{AtomicBool, AtomicU64, Ordering};
 use std::time::{Duration, Instant};
 
 use enolattice_grid::{BlockId, CELLS_PER_BLOCK, CampaignSpec, Columns};
 use enolattice_model::{Fingerprint, Score};
-use enolattice_store::{JobId, JobKind, NewJob, Order, RankRequest, Ranking, Store, Terms};
+use enolattice_store::{
+    JobId, JobKind, JobState, NewJob, Order, RankRequest, Ranking, StateChange, Store, Terms,
+};
 
 /// Threads that commit.
 const THREADS: u64 = 2;
@@ -40,6 +42,11 @@ fn main() -> Result<(), Fault> {
         cells as f64 / took.as_secs_f64() / 1e6
     ));
     pages("warm", &store, job)?;
+    end(&store, job)?;
+    let begin = Instant::now();
+    store.write_order(job, &AtomicBool::new(false))?;
+    say(&format!("rows written in order: {:.2?}", begin.elapsed()));
+    at_any_rank("in order", &store, job, cells)?;
     drop(store);
     say(&format!(
         "on disk: {:.1} bytes a cell",
@@ -53,6 +60,7 @@ fn main() -> Result<(), Fault> {
         report.sentences().join("; ")
     ));
     pages("reopened", &store, job)?;
+    at_any_rank("reopened, in order", &store, job, cells)?;
     say(&format!(
         "resident memory at the end: {} MiB",
         resident_mib()
@@ -96,6 +104,50 @@ fn store_blocks(store: &Store, job: JobId, blocks: u64) -> Result<(Duration, Dur
         begin.elapsed(),
         Duration::from_nanos(scoring_ns.into_inner() / THREADS),
     ))
+}
+
+/// The job is done.
+fn end(store: &Store, job: JobId) -> Result<(), Fault> {
+    for (from, to) in [
+        (JobState::Queued, JobState::Running),
+        (JobState::Running, JobState::Done),
+    ] {
+        let change = StateChange {
+            from,
+            to,
+            at_unix_ms: 0,
+            failure: String::new(),
+        };
+        store.change_state(job, &change)?;
+    }
+    Ok(())
+}
+
+/// Pages of 100 at ranks that are spread over the whole ranking.
+fn at_any_rank(when: &str, store: &Store, job: JobId, cells: u64) -> Result<(), Fault> {
+    const PAGES: u64 = 500;
+    let mut times = Vec::new();
+    for i in 0..PAGES {
+        let request = RankRequest {
+            order: Order::ExpectedYield,
+            after: None,
+            skip: (i.wrapping_mul(0x9e37_79b9_7f4a_7c15) >> 11) % cells,
+            limit: 100,
+            filter: None,
+            best_per: None,
+        };
+        let begin = Instant::now();
+        store.rank(job, &request)?;
+        times.push(begin.elapsed());
+    }
+    times.sort();
+    let at = |percent: usize| times[times.len() * percent / 100];
+    say(&format!(
+        "{when}: page of 100 at any rank: median {:.2?}, 99 of 100 below {:.2?}",
+        at(50),
+        at(99)
+    ));
+    Ok(())
 }
 
 fn pages(when: &str, store: &Store, job: JobId) -> Result<(), Fault> {

@@ -112,6 +112,20 @@ pub(crate) fn decode(key: &[u8], value: &[u8]) -> Result<StoredBlock, String> {
     })
 }
 
+/// The bytes of the columns within a value whose checksum holds.
+///
+/// # Errors
+/// A sentence that says what is wrong with the bytes.
+pub(crate) fn checked_columns<'v>(key: &[u8], value: &'v [u8]) -> Result<&'v [u8], String> {
+    let (body, crc) = value
+        .split_last_chunk::<CRC_BYTES>()
+        .ok_or("too short for a checksum")?;
+    match checksum(key, body) == u32::from_le_bytes(*crc) {
+        true => Ok(columns_bytes(value)),
+        false => Err("the checksum does not match".into()),
+    }
+}
+
 /// The bytes of the columns within a value that [`decode`] accepts.
 pub(crate) fn columns_bytes(value: &[u8]) -> &[u8] {
     let end = value.len().saturating_sub(CRC_BYTES);

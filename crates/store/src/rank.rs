@@ -1,9 +1,12 @@
 //! Pages of a job's cells in an order.
 
+use std::sync::Arc;
+
 use enolattice_model::Score;
 
 use crate::index::Summary;
-use crate::scan::Scan;
+use crate::rank_order::RankOrder;
+use crate::scan::{Found, Scan};
 use crate::{Order, StoreError};
 
 /// Which cells a ranking keeps, by cell number and score.
@@ -62,14 +65,42 @@ pub struct Ranking {
     pub next: Option<Position>,
 }
 
+impl RankRequest<'_> {
+    /// Whether the rows are all cells in their default order.
+    pub(crate) fn is_plain(&self) -> bool {
+        self.order == Order::default() && self.filter.is_none() && self.best_per.is_none()
+    }
+}
+
 /// What a job has to be ranked: its blocks in the snapshot asked for.
 pub(crate) struct View {
     /// Summaries of the blocks, by first cell.
-    pub(crate) blocks: Vec<Summary>,
+    pub(crate) blocks: Arc<Vec<Summary>>,
     /// Commit number of the last block that may be seen.
     pub(crate) snapshot: u64,
     /// Generation of the job's blocks.
     pub(crate) generation: u32,
+    /// All rows in their default order, where they were written.
+    pub(crate) ordered: Option<Arc<RankOrder>>,
+}
+
+/// The rows of a page from the file of rows, where there is a sound one.
+fn from_order(view: &View, request: &RankRequest<'_>, passed: u64) -> Option<Found> {
+    let ordered = view.ordered.as_ref()?;
+    let first = passed.saturating_add(request.skip);
+    match ordered.rows(first, request.limit) {
+        Ok(rows) => Some(Found {
+            rows,
+            total: ordered.stamp.rows,
+        }),
+        Err(reason) => {
+            tracing::warn!(
+                reason,
+                "a file of rows cannot be read; its blocks are searched"
+            );
+            None
+        }
+    }
 }
 
 /// A page of a view's ranking.
@@ -81,9 +112,10 @@ pub(crate) fn page(
     let passed = request.after.map_or(0, |after| after.passed);
     let floor = request.after.map(|after| (after.key, after.cell));
     let known_total = request.after.map(|after| after.total);
-    let found = match request.best_per {
-        Some(group) => scan.best_of_groups(group, floor, request.skip, request.limit)?,
-        None => scan.first(floor, request.skip, request.limit, known_total)?,
+    let found = match (from_order(view, request, passed), request.best_per) {
+        (Some(found), _) => found,
+        (None, Some(group)) => scan.best_of_groups(group, floor, request.skip, request.limit)?,
+        (None, None) => scan.first(floor, request.skip, request.limit, known_total)?,
     };
     let first_rank = passed.saturating_add(request.skip).saturating_add(1);
     let last_rank = passed

@@ -8,6 +8,7 @@ use std::collections::HashMap;
 use enolattice_grid::Columns;
 use enolattice_model::Score;
 use rayon::prelude::*;
+use sled::IVec;
 
 use crate::block;
 use crate::database::Database;
@@ -16,6 +17,8 @@ use crate::{BestPer, Filter, JobId, Order, StoreError};
 
 /// Blocks read between two looks at what was found.
 const BLOCKS_AT_ONCE: usize = 64;
+/// Rows of a page whose scores one thread looks up.
+const ROWS_AT_ONCE: usize = 32;
 /// Rows skipped by finding and dropping them; more are first counted by key.
 const SKIP_BY_DROPPING: u64 = 16_384;
 /// Number of keys.
@@ -172,7 +175,10 @@ impl Scan<'_> {
     }
 
     /// How many rows have each key.
-    fn rows_by_key(&self, keep: impl Fn(Row) -> bool + Sync) -> Result<Vec<u64>, StoreError> {
+    pub(crate) fn rows_by_key(
+        &self,
+        keep: impl Fn(Row) -> bool + Sync,
+    ) -> Result<Vec<u64>, StoreError> {
         let count = |blocks: &[Summary]| {
             let mut counts = vec![0u64; KEYS];
             for block in blocks {
@@ -229,30 +235,41 @@ impl Scan<'_> {
 
     /// Adds the scores of rows.
     pub(crate) fn with_scores(&self, rows: &[Row]) -> Result<Vec<(u64, Score)>, StoreError> {
-        let mut blocks: HashMap<usize, Columns> = HashMap::new();
-        let mut scored = Vec::with_capacity(rows.len());
-        for (_, cell) in rows {
-            let at = self
-                .blocks
-                .partition_point(|block| block.first_cell <= *cell)
-                - 1;
-            let block = &self.blocks[at];
-            if !blocks.contains_key(&at) {
-                if blocks.len() == BLOCKS_AT_ONCE {
-                    blocks.clear();
-                }
-                blocks.insert(at, self.columns(block)?);
+        let scored = |rows: &[Row]| {
+            let mut last: Option<(usize, IVec)> = None;
+            let mut scored = Vec::with_capacity(rows.len());
+            for (_, cell) in rows {
+                let at = self
+                    .blocks
+                    .partition_point(|block| block.first_cell <= *cell)
+                    - 1;
+                let block = &self.blocks[at];
+                // ties lie in the same block
+                let value = match last.take() {
+                    Some((known, value)) if known == at => value,
+                    _ => checked_value(self.database, self.job, block)?,
+                };
+                let i = (*cell - block.first_cell) as usize;
+                let score = Columns::score_in(block::columns_bytes(&value), i)
+                    .map_err(damaged(self.job, block))?;
+                scored.push((*cell, score));
+                last = Some((at, value));
             }
-            scored.push((
-                *cell,
-                blocks[&at].score((*cell - block.first_cell) as usize),
-            ));
-        }
-        Ok(scored)
+            Ok(scored)
+        };
+        let chunks: Vec<Vec<(u64, Score)>> = rows
+            .par_chunks(ROWS_AT_ONCE)
+            .map(scored)
+            .collect::<Result<_, StoreError>>()?;
+        Ok(chunks.into_iter().flatten().collect())
     }
 
     /// Calls `take` with every row of a block that passes the filter.
-    fn visit(&self, block: &Summary, mut take: impl FnMut(Row)) -> Result<(), StoreError> {
+    pub(crate) fn visit(
+        &self,
+        block: &Summary,
+        mut take: impl FnMut(Row),
+    ) -> Result<(), StoreError> {
         let columns = self.columns(block)?;
         for i in 0..columns.len() {
             let cell = block.first_cell + i as u64;
@@ -282,12 +299,25 @@ pub(crate) fn read_block(
         let value = value.ok_or("it is gone")?;
         block::decode(&key, &value)
     });
-    let damaged = |reason| StoreError::BlockDamaged {
-        job,
-        block: summary.block,
-        reason,
-    };
-    stored.map(|stored| stored.columns).map_err(damaged)
+    stored
+        .map(|stored| stored.columns)
+        .map_err(damaged(job, summary))
+}
+
+/// The value of a block that the index knows, its checksum checked.
+fn checked_value(database: &Database, job: JobId, summary: &Summary) -> Result<IVec, StoreError> {
+    let key = block::key(job, summary.block);
+    let value = database.get(&key).and_then(|value| {
+        let value = value.ok_or("it is gone")?;
+        block::checked_columns(&key, &value)?;
+        Ok(value)
+    });
+    value.map_err(damaged(job, summary))
+}
+
+fn damaged(job: JobId, summary: &Summary) -> impl Fn(String) -> StoreError {
+    let block = summary.block;
+    move |reason| StoreError::BlockDamaged { job, block, reason }
 }
 
 fn keep_best(best: &mut HashMap<u32, Row>, group: u32, row: Row) {

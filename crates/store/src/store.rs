@@ -2,8 +2,8 @@
 
 use std::collections::BTreeMap;
 use std::fmt;
-use std::fs::File;
-use std::path::Path;
+use std::fs::{self, File};
+use std::path::{Path, PathBuf};
 use std::sync::{Arc, Mutex, MutexGuard, PoisonError, RwLock};
 
 use enolattice_grid::Columns;
@@ -15,6 +15,7 @@ use crate::index::{JobIndex, Summary};
 use crate::journal::Journal;
 use crate::plans::Plans;
 use crate::rank::{self, View};
+use crate::rank_order::RankOrder;
 use crate::scan::{Scan, read_block};
 use crate::{
     Created, JobId, JobRecord, JobState, NewJob, OpenReport, PlanId, PlanRecord, RankRequest,
@@ -32,6 +33,18 @@ const BLOCKS_OF_A_SUM: usize = 16;
 pub(crate) struct Entry {
     pub(crate) record: Mutex<JobRecord>,
     pub(crate) index: Mutex<JobIndex>,
+    /// The rows in their default order, once they were written.
+    pub(crate) ordered: Mutex<Option<Arc<RankOrder>>>,
+}
+
+impl Entry {
+    fn new(record: JobRecord, index: JobIndex) -> Entry {
+        Entry {
+            record: Mutex::new(record),
+            index: Mutex::new(index),
+            ordered: Mutex::default(),
+        }
+    }
 }
 
 /// Jobs, blocks and rankings in one directory. Shared between threads behind an `Arc`.
@@ -42,6 +55,8 @@ pub struct Store {
     jobs: RwLock<BTreeMap<JobId, Arc<Entry>>>,
     /// Held while a job is made, so that a request id makes one job only.
     creating: Mutex<()>,
+    /// Directory of the files of rows.
+    pub(crate) orders: PathBuf,
     /// Keeps other processes out; dropped last.
     _lock: File,
 }
@@ -56,23 +71,17 @@ impl Store {
     /// [`StoreError::InUse`], [`StoreError::TooNew`], [`StoreError::Io`], [`StoreError::Database`].
     pub fn open(dir: &Path, now_unix_ms: u64) -> Result<(Store, OpenReport), StoreError> {
         let opened = open::open(dir, now_unix_ms)?;
-        let entry = |(id, (record, index))| {
-            (
-                id,
-                Arc::new(Entry {
-                    record: Mutex::new(record),
-                    index: Mutex::new(index),
-                }),
-            )
-        };
+        let entry = |(id, (record, index))| (id, Arc::new(Entry::new(record, index)));
         let store = Store {
             journal: opened.journal,
             plans: opened.plans,
             database: opened.database,
             jobs: RwLock::new(opened.jobs.into_iter().map(entry).collect()),
             creating: Mutex::new(()),
+            orders: dir.join("orders"),
             _lock: opened.lock,
         };
+        store.open_orders()?;
         Ok((store, opened.report))
     }
 
@@ -125,10 +134,7 @@ impl Store {
             terms: new.terms,
         };
         self.journal.write(&record)?;
-        let entry = Entry {
-            record: Mutex::new(record.clone()),
-            index: Mutex::default(),
-        };
+        let entry = Entry::new(record.clone(), JobIndex::default());
         self.jobs
             .write()
             .unwrap_or_else(PoisonError::into_inner)
@@ -207,6 +213,9 @@ impl Store {
             return Err(StoreError::NotEnded { job, state });
         }
         self.journal.remove(job)?;
+        lock(&entry.ordered).take();
+        // Opening removes what stays.
+        let _ = fs::remove_file(self.order_path(job));
         self.jobs
             .write()
             .unwrap_or_else(PoisonError::into_inner)
@@ -320,10 +329,19 @@ impl Store {
         let snapshot = request
             .after
             .map_or(index.acknowledged, |after| after.snapshot);
+        let ordered = lock(&entry.ordered).clone().filter(|ordered| {
+            let stamp = ordered.stamp;
+            request.is_plain() && stamp.generation == generation && stamp.commit == snapshot
+        });
+        let blocks = match &ordered {
+            Some(ordered) => ordered.blocks.clone(),
+            None => Arc::new(index.seen_by(snapshot)),
+        };
         Ok(View {
-            blocks: index.seen_by(snapshot),
+            blocks,
             snapshot,
             generation,
+            ordered,
         })
     }
 

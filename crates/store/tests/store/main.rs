@@ -3,5 +3,6 @@
 mod common;
 mod damage;
 mod jobs;
+mod orders;
 mod plans;
 mod ranking;

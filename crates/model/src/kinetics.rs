@@ -216,6 +216,23 @@ impl<'a> Kinetics<'a> {
         self.cell.pair.by_site.get(i)?.as_ref()?.carbon.as_ref()
     }
 
+    /// Sum over the carbon sites of a product of rate constant times share of the anions, against the anion of its most
+    /// acidic site alone: an enolate that takes a substituent on one side is left open on the other.
+    ///
+    /// `k = Σ k_j·10^(pKa_1 − pKa_j)`, for anions of one molecule that are at equilibrium.
+    pub(crate) fn over_sites_of_product(&self, i: usize, k_of: impl Fn(&CarbonSite) -> f64) -> f64 {
+        let Some(product) = self.cell.pair.by_site.get(i).and_then(Option::as_ref) else {
+            return 0.0;
+        };
+        let pka = |site: &CarbonSite| self.pka(site.acid.pka_dmso, site.acid.class);
+        let Some(first) = &product.carbon else {
+            return 0.0;
+        };
+        let share = |site: &CarbonSite| math::exp10((pka(first) - pka(site)).min(0.0));
+        let further = product.further_carbon.iter();
+        k_of(first) + further.map(|site| share(site) * k_of(site)).sum::<f64>()
+    }
+
     /// log10 of the rate of deprotonation of a substrate site relative to its most acidic one beyond what
     /// the Brønsted term of [`rates::exchange`] gives: hydrogens and bulk, and, between sites of one
     /// kind, the lower sensitivity of competition within one molecule.

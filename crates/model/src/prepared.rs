@@ -19,6 +19,10 @@ use crate::parameters::P;
 /// Carbon sites that compete in a cell; further ones are less acidic and left out.
 pub(crate) const SITES: usize = 3;
 
+/// A site of a product less acidic by more than this is too rarely ionised to take a second electrophile; a substituent
+/// slows the first site by hardly more (a working rule).
+const NEXT_SITE_PK: f64 = 2.0;
+
 /// An N–H and a C–H that share an acceptor give one ambident anion, which takes the electrophile at
 /// carbon, unless the N–H is more acidic by more than this (oxindoles; common practice).
 const AMBIDENT_PK: f64 = 2.5;
@@ -147,6 +151,12 @@ impl Substrate {
         let sites = self.carbon.iter().enumerate();
         let best = sites.min_by(|a, b| cost(a.1).total_cmp(&cost(b.1)));
         best.map_or(0, |(i, _)| i)
+    }
+
+    /// Whether the site by which the substrate condenses with itself has a hydrogen left then.
+    pub(crate) fn keeps_hydrogen_on_condensing(&self) -> bool {
+        let site = self.carbon.get(self.condensing_site());
+        site.is_some_and(|site| site.acid.hydrogens > 1)
     }
 
     /// The heteroatom site, where it is more acidic than every carbon site.
@@ -563,6 +573,8 @@ pub(crate) struct SiteProduct {
     pub(crate) product: Product,
     /// Its most acidic carbon site.
     pub(crate) carbon: Option<CarbonSite>,
+    /// Its next carbon sites, where they are hardly less acidic.
+    pub(crate) further_carbon: Vec<CarbonSite>,
     /// Its most acidic heteroatom site.
     pub(crate) heteroatom: Option<AcidSite>,
     /// The α,β-unsaturated product after loss of water; where a halide leaves instead, the three-membered ring.
@@ -611,10 +623,17 @@ fn site_product(
 ) -> Option<SiteProduct> {
     let product = c_product(&substrate.molecule, atom, &electrophile.molecule, group).ok()?;
     let sites = acid_sites(&product.molecule, library);
-    let carbon = sites
+    let mut carbons = sites
         .iter()
-        .find(|site| site.element == 6 && site.hydrogens > 0)
+        .filter(|site| site.element == 6 && site.hydrogens > 0)
+        .take(SITES)
         .map(|site| carbon_site(&product.molecule, site));
+    let carbon = carbons.next();
+    let hardly_less_acidic = |site: &CarbonSite| {
+        let first = carbon.as_ref().map(|first| first.acid.pka_dmso);
+        first.is_some_and(|pka| site.acid.pka_dmso < pka + NEXT_SITE_PK)
+    };
+    let further_carbon = carbons.filter(hardly_less_acidic).collect();
     let heteroatom = sites
         .iter()
         .find(|site| site.element != 6 && site.hydrogens > 0)
@@ -629,6 +648,7 @@ fn site_product(
     Some(SiteProduct {
         product,
         carbon,
+        further_carbon,
         heteroatom,
         dehydrated,
         closes,

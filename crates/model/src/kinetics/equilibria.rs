@@ -228,6 +228,19 @@ impl<'a> Kinetics<'a> {
             - self.chelation()
     }
 
+    /// pKa in the medium of the substrate's own aldol dimer, and the class of its anion: that of its hydroxyl, or of the C–H
+    /// between hydroxyl and carbonyl group where that is left and is the more acidic, as where no metal holds the alkoxide.
+    pub(crate) fn aldol_dimer_acid(&self) -> (f64, AnionClass) {
+        let site = &self.cell.substrate.carbon[self.cell.substrate.condensing_site()];
+        let hydroxyl = self.aldol_hydroxyl();
+        let carbon = self.site_pka(site);
+        if self.cell.substrate.keeps_hydrogen_on_condensing() && carbon < hydroxyl {
+            (carbon, site.acid.class)
+        } else {
+            (hydroxyl, AnionClass::Alkoxide)
+        }
+    }
+
     /// log10 K of the substrate's condensation with itself, neutral to neutral.
     pub(crate) fn self_condensation_log10_k(&self, acceptor: Carbonyl) -> f64 {
         let site = &self.cell.substrate.carbon[self.cell.substrate.condensing_site()];

@@ -100,11 +100,7 @@ impl Kinetics<'_> {
     /// Rate at which the aldolate of the substrate's own aldehyde expels hydroxide, 1/s; in media with protons the neutral
     /// dimer loses water instead.
     pub(crate) fn expulsion_from_aldolate(&self) -> f64 {
-        let can_lose = self.cell.substrate.carbon[self.cell.substrate.condensing_site()]
-            .acid
-            .hydrogens
-            > 1;
-        if self.medium.is_protic() || !can_lose {
+        if self.medium.is_protic() || !self.cell.substrate.keeps_hydrogen_on_condensing() {
             return 0.0;
         }
         let chelated = if self.medium.binds_oxygen() {

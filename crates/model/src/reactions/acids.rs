@@ -122,7 +122,7 @@ impl Reactions<'_> {
                 AnionClass::BetaDicarbonyl,
             )
         } else {
-            (k.aldol_hydroxyl(), AnionClass::Alkoxide)
+            k.aldol_dimer_acid()
         };
         acids.push(Acid {
             acid: Ok(Species::Dimer),

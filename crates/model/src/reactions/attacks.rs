@@ -198,22 +198,21 @@ impl Reactions<'_> {
             return;
         }
         for site in 0..k.cell.substrate.carbon.len() {
-            let room = k
-                .product_carbon(site)
-                .map_or(1.0, |next| k.room_of_cyano(next));
-            let nucleophile = match (k.product_heteroatom(site), k.product_carbon(site)) {
-                (Some(_), _) => k.heteroatom_nucleophile(),
-                (None, Some(next)) => Some(k.carbanion(next, next.acid.pka_dmso)),
-                (None, None) => None,
+            let attack = |nucleophile| k.attack(&nucleophile).map_or(0.0, math::exp10);
+            let of_carbon = |next: &CarbonSite| {
+                attack(k.carbanion(next, next.acid.pka_dmso)) * k.room_of_cyano(next)
             };
-            let is_heteroatom = k.product_heteroatom(site).is_some();
-            let attacks = !is_heteroatom || k.bonding() == Bonding::Substitution;
-            let Some(nucleophile) = nucleophile.filter(|_| attacks) else {
+            let by_anion = match k.product_heteroatom(site) {
+                Some(_) if k.bonding() != Bonding::Substitution => continue,
+                Some(_) => k.heteroatom_nucleophile().map(attack),
+                None => k
+                    .product_carbon(site)
+                    .map(|_| k.over_sites_of_product(site, of_carbon)),
+            };
+            let Some(by_anion) = by_anion else {
                 continue;
             };
-            let rate = k.attack(&nucleophile).map_or(0.0, math::exp10)
-                * math::exp10(k.nudge.attack)
-                * room;
+            let rate = by_anion * math::exp10(k.nudge.attack);
             let anion = Species::ProductAnion(site);
             let e = Some(Species::Electrophile);
             // the carbanion of a double adduct takes a proton from the acid of a base that is weak

@@ -119,7 +119,7 @@ impl Reactions<'_> {
         let dimer_anion = if claisen {
             k.pka(PKA_ALCOHOL, AnionClass::Alkoxide)
         } else {
-            k.aldol_hydroxyl()
+            k.aldol_dimer_acid().0
         };
         // one site makes the dimer, or its return would carry one enolate over into another
         let i = k.cell.substrate.condensing_site();
@@ -161,10 +161,7 @@ impl Reactions<'_> {
     pub(super) fn loss_of_water_from_dimer(&mut self, acceptor: Carbonyl) {
         let k = self.kinetics;
         // the new bond takes one hydrogen of the site, the water another
-        let can_lose = k.cell.substrate.carbon[k.cell.substrate.condensing_site()]
-            .acid
-            .hydrogens
-            > 1;
+        let can_lose = k.cell.substrate.keeps_hydrogen_on_condensing();
         for (base, pka) in k.oxygen_bases() {
             let rate = if can_lose {
                 k.dimer_dehydration(acceptor, pka)

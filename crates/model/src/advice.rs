@@ -4,6 +4,8 @@ use std::sync::Arc;
 
 use enolattice_reagents::{BaseKind, Cation, SolventClass};
 
+use crate::kinetics::{Kinetics, Nudge};
+use crate::parameters::Values;
 use crate::screen::cautions_of;
 use crate::{Addition, Additive, Advice, Cell, Conditions, Model, Severity};
 
@@ -141,14 +143,17 @@ fn worst_of_each(tried: &[(About, Advice)], shown: &[usize], now: f64) -> Vec<us
     warned
 }
 
-/// Whether the solvent is liquid throughout and no caution says never.
+/// Whether the solvent is liquid throughout, leaves the base what it is, and no caution says never.
 fn can_be_recommended(cell: &Cell) -> bool {
     let solvent = &cell.solvent.record;
     let conditions = &cell.conditions;
     let is_liquid = [conditions.temperature_c, conditions.formation_temperature_c]
         .into_iter()
         .all(|t| solvent.melting_c < t && t < solvent.boiling_c);
+    let values = Values::means();
+    let kinetics = Kinetics::new(cell, conditions.temperature_c, &values, Nudge::default());
     is_liquid
+        && !kinetics.base_is_levelled()
         && cautions_of(cell)
             .iter()
             .all(|caution| caution.severity != Severity::Stop)

@@ -44,7 +44,7 @@ pub enum ModelError {
 }
 
 /// Raised whenever the meaning of a score changes without a change of data.
-const ARITHMETIC_VERSION: u32 = 8;
+const ARITHMETIC_VERSION: u32 = 9;
 
 /// The model with its library and parameters.
 #[derive(Debug)]

@@ -59,7 +59,7 @@ parameters! {
     H_HYDROXIDE = "hydrogen bonds of water to hydroxide", 15.7, 0.5, "pK", WATER_PAIRS;
     H_PHENOXIDE = "hydrogen bonds of water to a phenoxide", 8.0, 0.7, "pK", WATER_PAIRS;
     H_CARBOXYLATE = "hydrogen bonds of water to a carboxylate", 7.5, 0.5, "pK", WATER_PAIRS;
-    H_CARBONATE = "hydrogen bonds of water to carbonate and phosphate", 10.2, 1.0, "pK", "pKa 10.3 in water (standard compilations) against the effective value in dipolar solvents";
+    H_CARBONATE = "hydrogen bonds of water to carbonate and phosphate", 7.7, 1.0, "pK", "hydrogencarbonate 10.3, hydrogenphosphate 12.3 and carbonic acid 6.4 in water (standard compilations) against the effective values of the solids in dipolar solvents, 18, 20 and 14";
     H_AMIDE_NITROGEN = "hydrogen bonds of water to an amide's nitrogen anion", 10.4, 0.8, "pK", WATER_PAIRS;
     H_IMIDE_NITROGEN = "hydrogen bonds of water to an imide's nitrogen anion", 5.1, 0.8, "pK", WATER_PAIRS;
     H_AZOLE_NITROGEN = "hydrogen bonds of water to an azolide", 4.1, 0.6, "pK", WATER_PAIRS;
@@ -106,8 +106,10 @@ parameters! {
     LOC_SILYL_NITROGEN = "contact pair of a disilylamide against a ketone enolate", -1.5, 1.0, "pK", "metal disilylamides ionise alkyl esters, pKa 30, completely in ethers: enolates bind the metal by oxygen (common practice)";
     LOC_FLUORIDE = "contact pair of fluoride against a ketone enolate", 5.0, 1.5, "pK", MEMORY;
     LOC_ESTER = "contact pair of an ester enolate against a ketone enolate", 0.4, 0.5, "pK", MEMORY;
-    /// Chelation of an aldolate by its carbonyl oxygen, on the same scale as the localisation.
-    LOC_CHELATE = "chelation of an aldolate or 1,3-dicarbonyl anion by the metal", 3.0, 1.0, "pK", "lithium aldolates in ethers do not revert at low temperature (from memory)";
+    /// Chelation of the metal by two oxygens of the anion, on the same scale as the localisation: of an aldolate, of a
+    /// 1,3-dicarbonyl anion.
+    LOC_ALDOLATE = "chelation of an aldolate by the metal", 1.6, 1.0, "pK", "lithium pinacolonate and pivalaldehyde in THF give off 18 kcal/mol (Arnett and others, J. Am. Chem. Soc. 1990, 112, 801, from memory), less about 9 for the entropy of joining two molecules: log K about 7 at 25 °C";
+    LOC_CHELATE = "chelation of a 1,3-dicarbonyl anion by the metal", 3.0, 1.0, "pK", "magnesium chelates of 1,3-dicarbonyl compounds are weak bases (from memory)";
     LOC_NITRONATE = "contact pair of a nitronate against a ketone enolate", -1.0, 0.7, "pK", MEMORY;
     PAIR_LITHIUM = "pairing strength of lithium against sodium", 1.2, 0.2, "1", MEMORY;
     PAIR_POTASSIUM = "pairing strength of potassium against sodium", 0.7, 0.15, "1", MEMORY;
@@ -123,19 +125,19 @@ parameters! {
     /// By what factor an alcohol solvates alkoxides better than its α says.
     H_ALKOXIDE_IN_ALCOHOL = "solvation of an alkoxide by an alcohol", 1.29, 0.05, "1", "autoprotolysis of methanol, ethanol and 2-propanol (from memory)";
     /// log10 k of C–H exchange at ΔpKa = 0 and 25 °C.
-    EXCHANGE_PROTIC = "speed of C–H proton transfer in hydroxylic solvents", 0.5, 0.5, "log10 L/(mol s)", "acetone with hydroxide in water, 0.2 L/(mol s) at ΔpKa −3.8 (Bell, The Proton in Chemistry, 1973, from memory)";
+    EXCHANGE_PROTIC = "speed of C–H proton transfer in hydroxylic solvents", 1.0, 0.5, "log10 L/(mol s)", "acetone in water with hydroxide, 0.2 L/(mol s) at ΔpKa −3.8, and with acetate, 2.5·10⁻⁷ L/(mol s) at ΔpKa −14.4 (Bell, The Proton in Chemistry, 1973, from memory)";
     EXCHANGE_DIPOLAR = "speed of C–H proton transfer in dipolar aprotic solvents", 0.5, 1.0, "log10 L/(mol s)", MEMORY;
     EXCHANGE_APOLAR = "speed of C–H proton transfer in ethers and hydrocarbons", -1.0, 1.0, "log10 L/(mol s)", MEMORY;
     EXCHANGE_LITHIUM = "slowing of C–H proton transfer by lithium and other firm metals", -1.5, 0.7, "log10 L/(mol s)", MEMORY;
     /// Amines and amidines exchange without an ion pair to break.
     EXCHANGE_AMINE = "speeding of C–H proton transfer with amines", 1.5, 0.7, "log10 L/(mol s)", MEMORY;
     EXCHANGE_POTASSIUM = "speeding of C–H proton transfer with large cations", 0.3, 0.3, "log10 L/(mol s)", MEMORY;
-    EXCHANGE_NITRO_PROTIC = "slowness of nitroalkanes in proton transfer, hydroxylic solvents", -3.6, 0.7, "log10 L/(mol s)", "nitromethane with hydroxide in water, 27 L/(mol s) at ΔpKa 5.5 (Bordwell and Boyle, J. Am. Chem. Soc. 1972, 94, 3907, from memory)";
+    EXCHANGE_NITRO_PROTIC = "slowness of nitroalkanes in proton transfer, hydroxylic solvents", -2.8, 0.7, "log10 L/(mol s)", "nitromethane with hydroxide in water, 27 L/(mol s) at ΔpKa 5.5 (Bordwell and Boyle, J. Am. Chem. Soc. 1972, 94, 3907, from memory)";
     EXCHANGE_NITRO = "slowness of nitroalkanes in proton transfer, other solvents", -0.5, 0.7, "log10 L/(mol s)", "the anomaly of nitroalkanes is small outside hydrogen-bonding media (from memory)";
     /// 1,3-dicarbonyl compounds and nitriles have lower intrinsic barriers than ketones and esters.
     EXCHANGE_DICARBONYL = "ease of proton transfer of 1,3-dicarbonyl compounds", 1.5, 0.7, "log10 L/(mol s)", "acetylacetone against acetone with amines in water (from memory)";
     EXCHANGE_CYANO = "ease of proton transfer of nitriles", 2.0, 0.8, "log10 L/(mol s)", "nitriles ionise with little reorganisation (from memory)";
-    EXCHANGE_BRONSTED = "Brønsted slope of C–H proton transfer", 0.7, 0.1, "1", MEMORY;
+    EXCHANGE_BRONSTED = "Brønsted slope of C–H proton transfer", 0.55, 0.1, "1", "acetone in water with hydroxide and with acetate (Bell 1973, from memory): 0.44; steeper between stronger bases (from memory)";
     EXCHANGE_PAIRED_BRONSTED = "Brønsted slope of proton transfer between metal enolates", 0.3, 0.1, "1", "directed aldol additions of lithium enolates outrun proton exchange at −78 °C (common practice)";
     AMIDE_EXCHANGE = "speed of deprotonation by metal amides", 1.2, 0.7, "log10 L/(mol s)", "half-lives of ketones, esters and amides with lithium amides in THF at −78 °C: seconds to minutes (from memory)";
     AMIDE_BRONSTED = "Brønsted slope of deprotonation by metal amides", 0.2, 0.1, "1", "half-lives of ketones, esters and amides with lithium amides in THF at −78 °C: seconds to minutes (from memory)";
@@ -158,7 +160,7 @@ parameters! {
     PAIRED_MAGNESIUM = "reactivity of a magnesium contact pair against the free carbanion", -3.0, 0.8, "log10", "magnesium and zinc enolates are not alkylated in ethers (common practice)";
     PAIRED_ZINC = "reactivity of a zinc contact pair against the free carbanion", -3.5, 0.8, "log10", "magnesium and zinc enolates are not alkylated in ethers (common practice)";
     /// What the last two lose further in substitution at saturated carbon.
-    SN2_DIVALENT = "further loss of magnesium and zinc enolates with alkyl halides", -1.5, 0.7, "log10", "magnesium and zinc enolates add to carbonyl groups and are not alkylated in ethers (common practice)";
+    SN2_DIVALENT = "further loss of magnesium and zinc enolates with alkyl halides", -2.5, 0.7, "log10", "magnesium and zinc enolates add to carbonyl groups and are not alkylated in ethers (common practice)";
     /// Firm metals stay with the oxygen even where most ions are free.
     DIPOLAR_LITHIUM = "reactivity of lithium enolates in dipolar solvents against the free enolate", -1.0, 0.5, "log10", "ion pairs of lithium enolates in DMSO, K 10² to 10⁴ L/mol (Olmstead and Bordwell, J. Org. Chem. 1980, 45, 3299, from memory)";
     DIPOLAR_DIVALENT = "reactivity of magnesium and zinc enolates in dipolar solvents against the free enolate", -2.5, 0.8, "log10", "magnesium and zinc enolates are alkylated slowly even in DMF and DMSO (common practice)";
@@ -222,9 +224,9 @@ parameters! {
     O_SULFONYL = "attack at oxygen on sulfonyl donors", 2.5, 0.8, "log10", MEMORY;
     O_SILYL = "attack at oxygen on silyl chlorides", 5.0, 1.0, "log10", "silyl chlorides take enolates at oxygen (common practice)";
     /// Opening of a three-membered ring at CH2 against SN2 of ethyl bromide.
-    RING_EPOXIDE = "opening of an epoxide against ethyl bromide", -4.5, 0.8, "log10", "stabilised carbanions in aprotic solvents need hours at 60 °C and more, enolates of ketones hardly react without a Lewis acid (from memory)";
+    RING_EPOXIDE = "opening of an epoxide against ethyl bromide", -5.2, 0.8, "log10", "stabilised carbanions in aprotic solvents need hours at 60 °C and more, enolates of ketones hardly react without a Lewis acid (from memory)";
     /// A hydroxylic solvent helps the alkoxide of an opening epoxide to leave.
-    RING_PROTIC = "help of a hydroxylic solvent in opening an epoxide", 3.0, 0.7, "log10", "in alcohols epoxides are some ten times slower than ethyl bromide with alkoxides (from memory)";
+    RING_PROTIC = "help of a hydroxylic solvent in opening an epoxide", 4.0, 0.7, "log10", "in alcohols epoxides are some ten times slower than ethyl bromide with alkoxides (from memory)";
     RING_ACTIVATED_AZIRIDINE = "opening of an activated aziridine against ethyl bromide", -0.8, 0.8, "log10", MEMORY;
     RING_AZIRIDINE = "opening of a plain aziridine against ethyl bromide", -6.0, 1.5, "log10", MEMORY;
     RING_THIIRANE = "opening of a thiirane against ethyl bromide", -2.0, 1.0, "log10", MEMORY;
@@ -249,7 +251,7 @@ parameters! {
     /// log10 of the association constant of a carbanion with the acid of the base, which hands its proton over as the
     /// new bond forms: onium ions in dipolar and in less polar solvents, neutral acids.
     ASSISTED_DIPOLAR = "pairing of a carbanion with the ammonium ion, dipolar solvents", 1.5, 0.7, "log10 L/mol", "contact pairs at a permittivity of 37 (Fuoss, J. Am. Chem. Soc. 1958, 80, 5059, from memory)";
-    ASSISTED_APOLAR = "pairing of a carbanion with the ammonium ion, other solvents", 4.0, 1.0, "log10 L/mol", "contact pairs at a permittivity of 7 (Fuoss, J. Am. Chem. Soc. 1958, 80, 5059, from memory)";
+    ASSISTED_APOLAR = "pairing of a carbanion with the ammonium ion, other solvents", 5.5, 1.0, "log10 L/mol", "contact pairs 5 to 6 Å apart at a permittivity of 7 to 9, 10⁵ to 10⁶ (Fuoss, J. Am. Chem. Soc. 1958, 80, 5059, from memory)";
     ASSISTED_NEUTRAL = "pairing of a carbanion with a neutral acid of the base", 0.0, 0.7, "log10 L/mol", MEMORY;
     DG_IMINE = "free energy of addition to an imine", -4.0, 2.0, "kcal/mol", MEMORY;
     DG_ACTIVATED_KETONE = "free energy of addition to an activated ketone", -3.0, 1.5, "kcal/mol", MEMORY;

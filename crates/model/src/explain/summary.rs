@@ -150,6 +150,16 @@ impl Telling<'_> {
             self.pka_shown("base", 0),
             signed_to(log10_k, 1),
         );
+        if self.kinetics.base_is_levelled() {
+            let solvent = &self.cell.solvent.record;
+            sentence += &match solvent.class {
+                SolventClass::Water => format!("; in {} it is there as hydroxide", solvent.name),
+                _ => format!(
+                    "; in {} it is there as the anion of the solvent",
+                    solvent.name
+                ),
+            };
+        }
         let undissolved = self.kinetics.solubility_m().filter(|s| {
             let conditions = &self.cell.conditions;
             *s < 0.3 * conditions.concentration_m * conditions.base_equiv

@@ -180,6 +180,17 @@ impl<'a> Kinetics<'a> {
         (!class.is_carbanion()).then(|| (self.pka(acid.value, *class), record.acid_m))
     }
 
+    /// Whether the solvent takes the proton's place: a base much stronger than the solvent's own anion is there as that anion.
+    pub(crate) fn base_is_levelled(&self) -> bool {
+        // beyond this little of the base is left beside the solvent (a working rule)
+        const MUCH_PK: f64 = 0.5;
+        let kind = self.cell.base.record.kind;
+        kind != BaseKind::Hydroxide
+            && self
+                .solvent_donor()
+                .is_some_and(|(pka, _)| pka + MUCH_PK < self.pka_base())
+    }
+
     /// Association of a carbanion with the acid of the base where that can hand over a proton, L/mol. A
     /// hydroxylic solvent is there first.
     pub(crate) fn association_with_acid(&self) -> Option<f64> {
@@ -218,7 +229,7 @@ impl<'a> Kinetics<'a> {
 
     /// By how much a carbonyl oxygen in β holds the counter-ion of an alkoxide.
     pub(super) fn chelation(&self) -> f64 {
-        self.v(P::LOC_CHELATE) * self.medium.pair_strength(self.values)
+        self.v(P::LOC_ALDOLATE) * self.medium.pair_strength(self.values)
     }
 
     /// pKa of the hydroxyl of the substrate's aldol dimer in the medium.

@@ -159,11 +159,22 @@ fn judged(model: &Model, row: &Reported) -> Result<Judged, String> {
     Ok(judged)
 }
 
+/// A structure without stereo, and with a formyl group where it is written as the hydroxymethylene group that it is in
+/// equilibrium with: sources write the products of formylation either way.
 fn flat(smiles: &str) -> Option<String> {
-    Molecule::parse(smiles).ok().map(|m| m.canonical_flat())
+    let flat = |smiles: &str| Molecule::parse(smiles).ok().map(|m| m.canonical_flat());
+    let written = flat(smiles)?;
+    let formyl = match written.strip_prefix("OC=C") {
+        Some(rest) => format!("O=CC{rest}"),
+        None => match written.strip_suffix("=CO") {
+            Some(rest) => format!("{rest}C=O"),
+            None => written.replace("=CO)", "C=O)"),
+        },
+    };
+    flat(&formyl)
 }
 
-/// Whether the adduct or its dehydration product is the reported one, stereo and tautomers aside.
+/// Whether the adduct or its dehydration product is the reported one, stereo and the enols of aldehydes aside.
 fn is_product(explanation: &Explanation, reported: &str) -> bool {
     let found = [
         &explanation.product_smiles,

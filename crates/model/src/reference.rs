@@ -194,8 +194,10 @@ fn across(
         {
             Ok(solution) => {
                 let end = solution.iter().next_back().map(|(_, y)| *y);
+                // a start that the fast solver made may lie below zero by that solver's error
+                let least_m = start.iter().fold(LEAST_M, |least, m| least.min(2.0 * m));
                 // a comparison with what is not a number is false
-                let is_amount = |amount: &f64| *amount > LEAST_M;
+                let is_amount = |amount: &f64| *amount > least_m;
                 match end {
                     Some(end) if end.iter().all(is_amount) => return Ok(end),
                     _ => reason = "an amount is negative or not a number".to_owned(),

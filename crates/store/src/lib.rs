@@ -6,26 +6,32 @@
 
 mod block;
 mod commit;
+mod copy;
 mod database;
 mod error;
+mod health;
 mod id;
 mod index;
 mod job;
 mod journal;
 mod open;
+mod open_report;
 mod order;
 mod plans;
 mod rank;
 mod record;
 mod scan;
+mod steps;
 mod store;
 mod token;
 
 pub use commit::{Commit, Progress};
+pub use copy::{Copied, Copy, copy_jobs, restore};
 pub use error::StoreError;
+pub use health::{Health, SetAside, look, mend, set_aside_databases};
 pub use id::{JobId, PlanId};
 pub use job::{Created, JobRecord, JobState, NewJob, StateChange};
-pub use open::OpenReport;
+pub use open_report::OpenReport;
 pub use order::Order;
 pub use plans::PlanRecord;
 pub use rank::{BestPer, Filter, Position, RankRequest, Ranking};

@@ -41,6 +41,8 @@ pub struct Store {
     jobs: RwLock<BTreeMap<JobId, Arc<Entry>>>,
     /// Held while a job is made, so that a request id makes one job only.
     creating: Mutex<()>,
+    /// The last id of a job that was given or that anything in the store bears.
+    last_job: Mutex<Option<JobId>>,
     /// Keeps other processes out; dropped last.
     _lock: File,
 }
@@ -49,10 +51,11 @@ impl Store {
     /// Opens the store in `dir`, making it if there is none.
     ///
     /// Every block is read and checked. A broken database is renamed to
-    /// `db.broken-<now_unix_ms>`, begun anew, and its jobs wait again; the report says so.
+    /// `db.broken-<now_unix_ms>` (with a number where that is taken), begun anew, and its jobs wait again; the report says so.
     ///
     /// # Errors
-    /// [`StoreError::InUse`], [`StoreError::TooNew`], [`StoreError::Io`], [`StoreError::Database`].
+    /// [`StoreError::InUse`], [`StoreError::TooNew`], [`StoreError::FormatDamaged`],
+    /// [`StoreError::CopyUnfinished`], [`StoreError::Io`], [`StoreError::Database`].
     pub fn open(dir: &Path, now_unix_ms: u64) -> Result<(Store, OpenReport), StoreError> {
         let opened = open::open(dir, now_unix_ms)?;
         let entry = |(id, (record, index))| {
@@ -70,6 +73,7 @@ impl Store {
             database: opened.database,
             jobs: RwLock::new(opened.jobs.into_iter().map(entry).collect()),
             creating: Mutex::new(()),
+            last_job: Mutex::new(opened.last_job),
             _lock: opened.lock,
         };
         Ok((store, opened.report))
@@ -175,8 +179,9 @@ impl Store {
         let changed = JobRecord {
             state: change.to,
             ended_unix_ms: ends.then_some(change.at_unix_ms),
+            // Others may be lost with the disk that failed: at the next start they must not be missed.
             committed_at_end: if ends {
-                lock(&entry.index).blocks.len() as u64
+                lock(&entry.index).blocks_acknowledged()
             } else {
                 0
             },
@@ -305,9 +310,11 @@ impl Store {
     }
 
     fn new_id(&self, now_unix_ms: u64) -> Result<JobId, StoreError> {
-        let last = self.entries().last().map(|(id, _)| *id);
         let random = getrandom::u64().map_err(StoreError::unwritable)?;
-        Ok(JobId::after(last, now_unix_ms, random))
+        let mut last = lock(&self.last_job);
+        let id = JobId::after(*last, now_unix_ms, random);
+        *last = Some(id);
+        Ok(id)
     }
 }
 

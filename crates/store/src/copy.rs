@@ -2,7 +2,7 @@
 
 mod target;
 
-use std::fs;
+use std::fs::{self, File};
 use std::io;
 use std::path::{Path, PathBuf};
 
@@ -15,7 +15,7 @@ use crate::open::{found_format, left_with};
 use crate::plans::{self, Plans};
 use crate::steps::step;
 use crate::store::lock;
-use crate::{JobId, JobRecord, Store, StoreError};
+use crate::{JobId, JobRecord, OpenReport, Store, StoreError};
 use target::Target;
 
 /// Directories of files that are written whole and renamed into place.
@@ -158,6 +158,20 @@ impl Store {
     }
 }
 
+/// Opens the store in `dir`, copies it into `to`, a directory that is new or empty, and closes it.
+///
+/// # Errors
+/// [`StoreError::NoStore`], and those of [`Store::open`] and [`Store::copy_to`].
+pub fn copy_store(
+    dir: &Path,
+    to: &Path,
+    now_unix_ms: u64,
+) -> Result<(Copied, OpenReport), StoreError> {
+    must_be_store(dir)?;
+    let (store, report) = Store::open(dir, now_unix_ms)?;
+    Ok((store.copy_to(to, Copy::All)?, report))
+}
+
 /// Copies the jobs and plans of the store in `dir`, which a process may have open, into `to`, a directory that is new
 /// or empty.
 ///
@@ -259,12 +273,17 @@ fn copy_tree(from: &Path, to: &Path) -> Result<(), StoreError> {
     journal::sync_dir(to)
 }
 
+/// Copies the bytes alone: a copy of what may only be read must be one that can be written.
 fn copy_file(path: &Path, into: &Path) -> Result<(), StoreError> {
     let to = into.join(path.file_name().unwrap_or_default());
-    step("copy a file")
-        .and_then(|()| fs::copy(path, &to))
-        .and_then(|_| fs::File::open(&to)?.sync_all())
-        .map_err(StoreError::io(path))
+    let mut from = File::open(path).map_err(StoreError::io(path))?;
+    let mut write = || {
+        step("copy a file")?;
+        let mut file = File::create(&to)?;
+        io::copy(&mut from, &mut file)?;
+        file.sync_all()
+    };
+    write().map_err(StoreError::io(&to))
 }
 
 /// The bytes of a file or of all files in a directory.

@@ -1,33 +1,31 @@
 //! Copies of a store, each a store of its own: taken while jobs run, or of files that no process uses.
 
+mod files;
 mod target;
 
-use std::fs::{self, File};
-use std::io;
-use std::path::{Path, PathBuf};
+use std::path::Path;
 
 use crate::block;
 use crate::database::{Database, Fault};
-use crate::health::{lock_if_there, must_be_store};
+use crate::health::must_be_store;
 use crate::index::Summary;
-use crate::journal::{self, ENDING, Journal};
+use crate::journal::{self, Journal};
 use crate::open::{found_format, left_with};
 use crate::plans::{self, Plans};
-use crate::steps::step;
 use crate::store::lock;
 use crate::{JobId, JobRecord, OpenReport, Store, StoreError};
+use files::records;
 use target::Target;
 
-/// Directories of files that are written whole and renamed into place.
-pub(crate) const PARTS: [&str; 2] = ["journal", "plans"];
+pub(crate) use files::{PARTS, bytes_in, files, listed};
 
-/// What a copy takes along.
+/// Whether a copy has scores.
 #[derive(Clone, Copy, Debug, PartialEq, Eq)]
-pub enum Copy {
-    /// Jobs, plans and scores.
-    All,
-    /// Jobs and plans; jobs that had ended wait in the copy to be screened again.
-    WithoutScores,
+pub enum Scores {
+    /// The acknowledged blocks of every job.
+    Included,
+    /// None; jobs that had ended wait in the copy to be screened again.
+    LeftOut,
 }
 
 /// What a copy holds.
@@ -55,7 +53,7 @@ impl Store {
     ///
     /// # Errors
     /// [`StoreError::NotEmpty`], [`StoreError::Io`], [`StoreError::Database`], [`StoreError::Stopped`].
-    pub fn copy_to(&self, to: &Path, what: Copy) -> Result<Copied, StoreError> {
+    pub fn copy_to(&self, to: &Path, scores: Scores) -> Result<Copied, StoreError> {
         let target = Target::begin(to)?;
         let mut copied = Copied::default();
         // Plans first: the job of each is then among the jobs.
@@ -70,9 +68,9 @@ impl Store {
             }
         }
         let (journal, _) = Journal::open(&target.part("journal"))?;
-        let database = match what {
-            Copy::All => Some(new_database(&target.part("db"))?),
-            Copy::WithoutScores => None,
+        let database = match scores {
+            Scores::Included => Some(new_database(&target.part("db"))?),
+            Scores::LeftOut => None,
         };
         for (job, _) in self.entries() {
             if let Some(record) = self.copy_job(job, database.as_ref(), &mut copied)? {
@@ -169,7 +167,7 @@ pub fn copy_store(
 ) -> Result<(Copied, OpenReport), StoreError> {
     must_be_store(dir)?;
     let (store, report) = Store::open(dir, now_unix_ms)?;
-    Ok((store.copy_to(to, Copy::All)?, report))
+    Ok((store.copy_to(to, Scores::Included)?, report))
 }
 
 /// Copies the jobs and plans of the store in `dir`, which a process may have open, into `to`, a directory that is new
@@ -222,78 +220,6 @@ pub fn restore(from: &Path, to: &Path) -> Result<(), StoreError> {
     must_be_store(from)?;
     found_format(from)?;
     files(from, to)
-}
-
-/// Copies the files of a store as they are, sound or not.
-pub(crate) fn files(from: &Path, to: &Path) -> Result<(), StoreError> {
-    let _lock = lock_if_there(from)?;
-    let target = Target::begin(to)?;
-    for part in PARTS {
-        let copy = target.part(part);
-        fs::create_dir(&copy).map_err(StoreError::io(&copy))?;
-        for path in records(&from.join(part))? {
-            copy_file(&path, &copy)?;
-        }
-        journal::sync_dir(&copy)?;
-    }
-    if from.join("db").is_dir() {
-        copy_tree(&from.join("db"), &target.part("db"))?;
-    }
-    target.finish(Copied::default()).map(drop)
-}
-
-/// The files of a directory that are written whole; none where there is no directory.
-fn records(dir: &Path) -> Result<Vec<PathBuf>, StoreError> {
-    let mut paths = listed(dir)?;
-    paths.retain(|path| path.extension().is_some_and(|ending| ending == ENDING));
-    Ok(paths)
-}
-
-/// What is in a directory, by name; nothing where there is no directory.
-pub(crate) fn listed(dir: &Path) -> Result<Vec<PathBuf>, StoreError> {
-    let entries = match fs::read_dir(dir) {
-        Ok(entries) => entries,
-        Err(error) if error.kind() == io::ErrorKind::NotFound => return Ok(Vec::new()),
-        Err(error) => return Err(StoreError::io(dir)(error)),
-    };
-    let paths: io::Result<Vec<PathBuf>> = entries.map(|entry| Ok(entry?.path())).collect();
-    let mut paths = paths.map_err(StoreError::io(dir))?;
-    paths.sort();
-    Ok(paths)
-}
-
-fn copy_tree(from: &Path, to: &Path) -> Result<(), StoreError> {
-    fs::create_dir(to).map_err(StoreError::io(to))?;
-    for path in listed(from)? {
-        match path.is_dir() {
-            true => copy_tree(&path, &to.join(path.file_name().unwrap_or_default()))?,
-            false => copy_file(&path, to)?,
-        }
-    }
-    journal::sync_dir(to)
-}
-
-/// Copies the bytes alone: a copy of what may only be read must be one that can be written.
-fn copy_file(path: &Path, into: &Path) -> Result<(), StoreError> {
-    let to = into.join(path.file_name().unwrap_or_default());
-    let mut from = File::open(path).map_err(StoreError::io(path))?;
-    let mut write = || {
-        step("copy a file")?;
-        let mut file = File::create(&to)?;
-        io::copy(&mut from, &mut file)?;
-        file.sync_all()
-    };
-    write().map_err(StoreError::io(&to))
-}
-
-/// The bytes of a file or of all files in a directory.
-pub(crate) fn bytes_in(path: &Path) -> io::Result<u64> {
-    if !path.is_dir() {
-        return Ok(path.symlink_metadata()?.len());
-    }
-    fs::read_dir(path)?
-        .map(|entry| bytes_in(&entry?.path()))
-        .sum()
 }
 
 fn new_database(path: &Path) -> Result<Database, StoreError> {

@@ -26,7 +26,7 @@ mod store;
 mod token;
 
 pub use commit::{Commit, Progress};
-pub use copy::{Copied, Copy, copy_jobs, copy_store, restore};
+pub use copy::{Copied, Scores, copy_jobs, copy_store, restore};
 pub use error::StoreError;
 pub use health::{Health, SetAside, look, mend, set_aside_databases};
 pub use id::{JobId, PlanId};

@@ -8,8 +8,8 @@ use std::sync::atomic::{AtomicBool, Ordering};
 
 use crate::common::{CELLS, START_MS, block, columns, new_job, open};
 use enolattice_store::{
-    Copy, JobId, JobState, Order, PlanId, PlanRecord, RankRequest, StateChange, Store, StoreError,
-    copy_jobs, restore,
+    JobId, JobState, Order, PlanId, PlanRecord, RankRequest, Scores, StateChange, Store,
+    StoreError, copy_jobs, restore,
 };
 
 const DOCUMENT: &str = r#"{"volume_ul":100.0}"#;
@@ -126,7 +126,7 @@ fn a_copy_taken_while_others_write_holds_all_that_was_acknowledged() {
             }
             let before = told.lock().unwrap().clone();
             let to = dir.path().join(format!("copy-{number}"));
-            let copied = store.copy_to(&to, Copy::All).unwrap();
+            let copied = store.copy_to(&to, Scores::Included).unwrap();
             let copy = open(&to);
             before.check(&copy);
             assert_eq!(copied.jobs, copy.jobs().len() as u64);
@@ -156,7 +156,7 @@ fn a_copy_ranks_like_the_store() {
     let dir = tempfile::tempdir().unwrap();
     let (store, done, running) = filled(&dir.path().join("store"));
     let to = dir.path().join("copy");
-    let copied = store.copy_to(&to, Copy::All).unwrap();
+    let copied = store.copy_to(&to, Scores::Included).unwrap();
     assert_eq!((copied.jobs, copied.plans, copied.blocks), (2, 1, 7));
     assert_eq!(copied.cells, 7 * CELLS);
     let back = dir.path().join("back");
@@ -189,7 +189,7 @@ fn without_scores_what_was_done_waits_again() {
     let (store, done, running) = filled(&dir.path().join("store"));
     let from_inside = dir.path().join("inside");
     let from_outside = dir.path().join("outside");
-    store.copy_to(&from_inside, Copy::WithoutScores).unwrap();
+    store.copy_to(&from_inside, Scores::LeftOut).unwrap();
     // The store is open, as by another process.
     let copied = copy_jobs(&dir.path().join("store"), &from_outside).unwrap();
     assert_eq!((copied.jobs, copied.plans, copied.blocks), (2, 1, 0));
@@ -240,7 +240,7 @@ fn what_cannot_be_read_is_left_out_and_said() {
     fs::write(home.join(format!("journal/{running}.json")), "{").unwrap();
     // The store still has the record in memory; the plan's document is on the disk alone.
     let inside = store
-        .copy_to(&dir.path().join("inside"), Copy::All)
+        .copy_to(&dir.path().join("inside"), Scores::Included)
         .unwrap();
     assert_eq!((inside.jobs, inside.plans), (2, 0));
     assert!(inside.left_out[0].contains(&plan.to_string()), "{inside:?}");
@@ -259,11 +259,11 @@ fn copies_go_into_new_or_empty_directories_and_come_from_stores() {
     fs::create_dir(&taken).unwrap();
     fs::write(taken.join("thesis.txt"), "three years").unwrap();
     let refused = |outcome: StoreError| assert!(matches!(outcome, StoreError::NotEmpty { .. }));
-    refused(store.copy_to(&taken, Copy::All).unwrap_err());
+    refused(store.copy_to(&taken, Scores::Included).unwrap_err());
     refused(copy_jobs(&dir.path().join("store"), &taken).unwrap_err());
     refused(
         store
-            .copy_to(&taken.join("thesis.txt"), Copy::All)
+            .copy_to(&taken.join("thesis.txt"), Scores::Included)
             .unwrap_err(),
     );
     drop(store);
@@ -296,12 +296,12 @@ fn a_part_of_a_copy_is_no_store() {
     let dir = tempfile::tempdir().unwrap();
     let (store, ..) = filled(&dir.path().join("store"));
     let to = dir.path().join("copy");
-    store.copy_to(&to, Copy::All).unwrap();
+    store.copy_to(&to, Scores::Included).unwrap();
     fs::write(to.join("unfinished-copy"), "").unwrap();
     let told = [
         Store::open(&to, START_MS).map(drop).unwrap_err(),
         restore(&to, &dir.path().join("new")).unwrap_err(),
-        store.copy_to(&to, Copy::All).map(drop).unwrap_err(),
+        store.copy_to(&to, Scores::Included).map(drop).unwrap_err(),
     ];
     for error in told {
         assert!(

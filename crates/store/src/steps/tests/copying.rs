@@ -5,7 +5,7 @@ use std::path::Path;
 
 use super::night::{START_MS, block, columns, commit, new_job, to_state};
 use super::{Trouble, at_every_step, directory, place, run_copy, say};
-use crate::{Copy, JobState, Store, StoreError, restore};
+use crate::{JobState, Scores, Store, StoreError, restore};
 
 /// A job with two blocks; open.
 fn store(dir: &Path) -> Store {
@@ -59,7 +59,7 @@ fn a_copy_that_is_cut_short_passes_for_none() {
         let Ok((store, _)) = Store::open(&dir.join("store"), START_MS) else {
             return;
         };
-        if store.copy_to(&dir.join("copy"), Copy::All).is_ok() {
+        if store.copy_to(&dir.join("copy"), Scores::Included).is_ok() {
             say("acknowledged copy");
             drop(store);
             if restore(&dir.join("copy"), &dir.join("restored")).is_ok() {

@@ -13,40 +13,39 @@ use crate::campaigns::{long, submission};
 use crate::live::{all_of, pages, watched};
 
 /// A server process; killed when dropped.
-struct Server {
+pub(crate) struct Server {
     process: Child,
-    client: Client,
 }
 
 impl Server {
-    async fn start(data: &Path) -> Server {
-        let mut process = Command::new(BINARY.as_path())
-            .args([
-                "serve",
-                "--listen",
-                "127.0.0.1:0",
-                "--threads",
-                "1",
-                "--data",
-            ])
-            .arg(data)
-            .stdout(Stdio::piped())
-            .stderr(Stdio::null())
-            .spawn()
-            .expect("the binary starts");
+    /// Starts a server and waits until it listens.
+    pub(crate) async fn start(data: &Path) -> (Server, Client) {
+        let mut server = Server::spawn(data);
         let mut line = String::new();
-        let stdout = process.stdout.take().expect("is piped");
+        let stdout = server.process.stdout.take().expect("is piped");
         BufReader::new(stdout).read_line(&mut line).expect("a line");
         let address = line
             .trim()
             .strip_prefix("listening on ")
             .expect("says where it listens");
         let client = Client::connect(address).await.expect("connects");
-        Server { process, client }
+        (server, client)
+    }
+
+    /// Starts a server, which begins by opening its store.
+    pub(crate) fn spawn(data: &Path) -> Server {
+        let process = Command::new(BINARY.as_path())
+            .args(SERVE)
+            .arg(data)
+            .stdout(Stdio::piped())
+            .stderr(Stdio::null())
+            .spawn()
+            .expect("the binary starts");
+        Server { process }
     }
 
     /// SIGKILL: no handler, no flush.
-    fn kill(&mut self) {
+    pub(crate) fn kill(&mut self) {
         self.process.kill().expect("runs");
         self.process.wait().expect("has ended");
     }
@@ -60,8 +59,18 @@ impl Drop for Server {
     }
 }
 
+/// Arguments of a server with one compute thread on a free port; its data directory follows.
+pub(crate) const SERVE: [&str; 6] = [
+    "serve",
+    "--listen",
+    "127.0.0.1:0",
+    "--threads",
+    "1",
+    "--data",
+];
+
 /// The binary, built once in the profile of this test.
-static BINARY: LazyLock<PathBuf> = LazyLock::new(|| {
+pub(crate) static BINARY: LazyLock<PathBuf> = LazyLock::new(|| {
     let test = std::env::current_exe().expect("a path");
     let profile = test.ancestors().nth(2).expect("target/PROFILE/deps/TEST");
     let mut build = Command::new(env!("CARGO"));
@@ -85,8 +94,12 @@ static BINARY: LazyLock<PathBuf> = LazyLock::new(|| {
 
 /// Kills the server as soon as the job has got further; gives the cells that were acknowledged,
 /// or nothing where the job ended before.
-async fn kill_in_mid_job(mut server: Server, job: &str, further_than: u64) -> Option<u64> {
-    let mut watch = server.client.watch(job).await.expect("is watched");
+async fn kill_in_mid_job(
+    (mut server, client): (Server, Client),
+    job: &str,
+    further_than: u64,
+) -> Option<u64> {
+    let mut watch = client.watch(job).await.expect("is watched");
     loop {
         let job = watch.next().await.expect("no error").expect("not ended");
         if job.state.is_ended() {
@@ -102,32 +115,23 @@ async fn kill_in_mid_job(mut server: Server, job: &str, further_than: u64) -> Op
 /// The ranking of a job whose server was killed twice; nothing where the job was too quick for it.
 async fn killed_twice(campaign: &CampaignSpec) -> Option<Vec<RankedCell>> {
     let data = tempfile::tempdir().expect("a directory");
-    let server = Server::start(data.path()).await;
-    let job = server
-        .client
-        .submit(submission(campaign.clone()))
-        .await
-        .expect("is accepted")
-        .job;
-    let before = kill_in_mid_job(server, &job, 0).await?;
+    let (server, client) = Server::start(data.path()).await;
+    let submitted = client.submit(submission(campaign.clone())).await;
+    let job = submitted.expect("is accepted").job;
+    let before = kill_in_mid_job((server, client), &job, 0).await?;
 
-    let server = Server::start(data.path()).await;
-    let resumed = server.client.job(&job).await.expect("is still known");
+    let (server, client) = Server::start(data.path()).await;
+    let resumed = client.job(&job).await.expect("is still known");
     assert!(resumed.cells_done >= before, "acknowledged cells stay");
-    kill_in_mid_job(server, &job, resumed.cells_done).await?;
+    kill_in_mid_job((server, client), &job, resumed.cells_done).await?;
 
-    let server = Server::start(data.path()).await;
-    let ended = watched(&server.client, &job)
-        .await
-        .pop()
-        .expect("a final state");
+    let (_server, client) = Server::start(data.path()).await;
+    let ended = watched(&client, &job).await.pop().expect("a final state");
     assert_eq!(
         (ended.state, ended.cells_done),
         (JobState::Done, ended.cells)
     );
-    let ranking = pages(&server.client, all_of(&job, 1000))
-        .await
-        .expect("a ranking");
+    let ranking = pages(&client, all_of(&job, 1000)).await.expect("a ranking");
     assert_eq!(ranking.len() as u64, ended.cells);
     Some(ranking)
 }
@@ -135,17 +139,11 @@ async fn killed_twice(campaign: &CampaignSpec) -> Option<Vec<RankedCell>> {
 /// The ranking of a server that nobody disturbs.
 async fn undisturbed(campaign: CampaignSpec) -> Vec<RankedCell> {
     let data = tempfile::tempdir().expect("a directory");
-    let server = Server::start(data.path()).await;
-    let job = server
-        .client
-        .submit(submission(campaign))
-        .await
-        .expect("is accepted")
-        .job;
-    watched(&server.client, &job).await;
-    pages(&server.client, all_of(&job, 1000))
-        .await
-        .expect("a ranking")
+    let (_server, client) = Server::start(data.path()).await;
+    let submitted = client.submit(submission(campaign)).await;
+    let job = submitted.expect("is accepted").job;
+    watched(&client, &job).await;
+    pages(&client, all_of(&job, 1000)).await.expect("a ranking")
 }
 
 #[tokio::test(flavor = "multi_thread")]

@@ -5,8 +5,10 @@
 mod agreement;
 mod campaigns;
 mod crash;
+mod damage;
 mod directions;
 mod hostile;
+mod kills;
 mod lifecycle;
 mod live;
 mod maps;

@@ -4,7 +4,7 @@ use std::fmt;
 use std::io;
 use std::process::ExitCode;
 
-use enolattice_engine::EngineError;
+use enolattice_engine::{EngineError, StoreError};
 use enolattice_grid::{InputError, Place};
 use enolattice_wire::RemoteError;
 use enolattice_wire::v1::ErrorReason;
@@ -87,6 +87,17 @@ impl From<EngineError> for Fault {
             EngineError::Store { .. } => Fault::Service(error.to_string()),
             EngineError::Model(_) => Fault::Job(error.to_string()),
             _ => Fault::Asked(error.to_string()),
+        }
+    }
+}
+
+impl From<StoreError> for Fault {
+    fn from(error: StoreError) -> Fault {
+        match error {
+            StoreError::NoStore { .. }
+            | StoreError::NotEmpty { .. }
+            | StoreError::CopyUnfinished { .. } => Fault::Asked(error.to_string()),
+            _ => Fault::Service(error.to_string()),
         }
     }
 }

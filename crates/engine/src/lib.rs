@@ -4,6 +4,7 @@
 
 mod agreement;
 mod axis;
+mod care;
 mod comparison;
 mod differences;
 mod distribution;
@@ -37,12 +38,13 @@ pub use agreement::{
     AcidityAgreement, Agreement, CheckedAcidity, CheckedRun, Miss, YieldAgreement,
 };
 pub use axis::Axis;
+pub use care::{BackedUp, back_up, back_up_jobs, look, mend, restore};
 pub use comparison::{AxisOverlap, ComparedCell, Comparison, Difference, Mover};
 pub use distribution::{Distribution, Histogram};
 pub use dry_run::{AxisSize, DryRun, NotCovered};
 pub use engine::Engine;
 pub use enolattice_molecule::element_symbol;
-pub use enolattice_store::Terms;
+pub use enolattice_store::{Copied, Health, OpenReport, SetAside, StoreError, Terms};
 pub use error::EngineError;
 pub use job::{Job, JobState, Planning, Submission};
 pub use kept_plans::PlanSummary;

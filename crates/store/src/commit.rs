@@ -49,11 +49,13 @@ impl Store {
         let entry = self.entry(job)?;
         let mut record = lock(&entry.record);
         let mut index = lock(&entry.index);
-        for block in index.blocks.keys() {
+        // Out of the index first: where the disk fails halfway, a job that ends then must not claim those that are gone.
+        let emptied = index.emptied();
+        let dropped = std::mem::replace(&mut *index, emptied);
+        for block in dropped.blocks.keys() {
             self.database.remove(&block::key(job, *block))?;
         }
         self.database.sync()?;
-        *index = index.emptied();
         let generation = record.generation + 1;
         let changed = JobRecord {
             model_fingerprint,

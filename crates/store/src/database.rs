@@ -5,11 +5,13 @@ use std::io;
 use std::panic::{AssertUnwindSafe, catch_unwind};
 use std::path::{Path, PathBuf};
 use std::sync::{Mutex, PoisonError};
+use std::time::Duration;
 
 use sled::IVec;
 
 use crate::StoreError;
 use crate::block::KEY_BYTES;
+use crate::steps::step;
 
 /// Bytes of a segment of sled's log, fixed when the database is made. A page
 /// holds up to 17 values and must stay below a quarter of a segment, or sled
@@ -17,6 +19,12 @@ use crate::block::KEY_BYTES;
 const SEGMENT_BYTES: usize = 8 << 20;
 /// Bytes of cache asked of sled; it bounds writes, hardly reads.
 const CACHE_BYTES: u64 = 64 << 20;
+/// How the names of databases begin that were set aside.
+pub(crate) const ASIDE: &str = "db.broken-";
+/// How often a database is tried that is locked.
+const TRIES: u32 = 100;
+/// Time between two tries.
+const BETWEEN_TRIES: Duration = Duration::from_millis(20);
 /// Tree that holds the blocks.
 const TREE: &str = "blocks";
 
@@ -41,8 +49,22 @@ pub(crate) struct Database {
 
 impl Database {
     /// Opens or makes the database in the directory `path`.
+    ///
+    /// Who opens it holds the lock of the store, so that a lock on the database is that of a store which this process has
+    /// just closed: sled's threads let go of it a moment later.
     pub(crate) fn open(path: &Path) -> Result<Database, Fault> {
+        for _ in 0..TRIES {
+            match Database::try_open(path) {
+                Err(Fault::Refused(StoreError::InUse { .. })) => std::thread::sleep(BETWEEN_TRIES),
+                outcome => return outcome,
+            }
+        }
+        Database::try_open(path)
+    }
+
+    fn try_open(path: &Path) -> Result<Database, Fault> {
         guarded(|| {
+            step("open the database").map_err(|error| fault(path, error.into()))?;
             let config = sled::Config::new()
                 .path(path)
                 .segment_size(SEGMENT_BYTES)
@@ -50,12 +72,7 @@ impl Database {
                 .flush_every_ms(None);
             let db = config.open().map_err(|error| fault(path, error))?;
             let tree = db.open_tree(TREE).map_err(|error| fault(path, error))?;
-            let refused = |source| {
-                Fault::Refused(StoreError::Io {
-                    path: path.into(),
-                    source,
-                })
-            };
+            let refused = |source| Fault::Refused(StoreError::io(path)(source));
             let file = File::open(path.join("db")).map_err(refused)?;
             File::open(path)
                 .and_then(|directory| directory.sync_all())
@@ -92,6 +109,7 @@ impl Database {
         value: &[u8],
     ) -> Result<Option<IVec>, StoreError> {
         self.writing(|| {
+            step("store a block")?;
             let outcome = self
                 .tree
                 .compare_and_swap(key, None::<&[u8]>, Some(value))?;
@@ -101,18 +119,26 @@ impl Database {
 
     /// Stores a value whatever was there.
     pub(crate) fn replace(&self, key: &[u8; KEY_BYTES], value: &[u8]) -> Result<(), StoreError> {
-        self.writing(|| self.tree.insert(key, value).map(drop))
+        self.writing(|| {
+            step("replace a block")?;
+            self.tree.insert(key, value).map(drop)
+        })
     }
 
     /// Removes a key.
     pub(crate) fn remove(&self, key: &[u8]) -> Result<(), StoreError> {
-        self.writing(|| self.tree.remove(key).map(drop))
+        self.writing(|| {
+            step("remove a block")?;
+            self.tree.remove(key).map(drop)
+        })
     }
 
     /// Returns when everything written before survives a power cut.
     pub(crate) fn sync(&self) -> Result<(), StoreError> {
         self.writing(|| {
+            step("flush the database")?;
             self.db.flush()?;
+            step("sync the database")?;
             self.file.sync_data().map_err(sled::Error::Io)
         })
     }
@@ -130,11 +156,24 @@ impl Database {
     }
 }
 
-/// Moves a broken database out of the way; gives where it went.
-pub(crate) fn set_aside(path: &Path, now_unix_ms: u64) -> Result<PathBuf, StoreError> {
-    let target = path.with_file_name(format!("db.broken-{now_unix_ms}"));
-    std::fs::rename(path, &target).map_err(StoreError::io(path))?;
-    Ok(target)
+/// Where a broken database may be put: named after the time, and after a number where the clock says a time again.
+pub(crate) fn free_name(path: &Path, now_unix_ms: u64) -> PathBuf {
+    let name = format!("{ASIDE}{now_unix_ms}");
+    let later = (2..).map(|number| format!("{name}-{number}"));
+    let mut targets = std::iter::once(name.clone())
+        .chain(later)
+        .map(|name| path.with_file_name(name));
+    let free = |target: &PathBuf| target.symlink_metadata().is_err();
+    targets
+        .find(free)
+        .unwrap_or_else(|| path.with_file_name(name))
+}
+
+/// Moves a broken database out of the way.
+pub(crate) fn set_aside(path: &Path, target: &Path) -> Result<(), StoreError> {
+    step("set the database aside")
+        .and_then(|()| std::fs::rename(path, target))
+        .map_err(StoreError::io(path))
 }
 
 /// sled panics on some damage instead of returning an error.

@@ -28,6 +28,40 @@ pub enum StoreError {
         /// Latest format known here.
         known: u32,
     },
+    /// The format of the store cannot be read.
+    #[error(
+        "the file `{}` says `{found}`, which no version writes; it is damaged: run `enolattice mend`, or write {known} into it",
+        path.display()
+    )]
+    FormatDamaged {
+        /// The version file.
+        path: PathBuf,
+        /// What it says.
+        found: String,
+        /// The format known here.
+        known: u32,
+    },
+    /// The directory holds a part of a copy.
+    #[error(
+        "the copy of a store in `{}` was not finished; remove the directory and copy again",
+        dir.display()
+    )]
+    CopyUnfinished {
+        /// Directory of the copy.
+        dir: PathBuf,
+    },
+    /// The directory holds no store.
+    #[error("there is no store in `{}`; name the directory that jobs were kept in", dir.display())]
+    NoStore {
+        /// Directory.
+        dir: PathBuf,
+    },
+    /// A copy would go over something else.
+    #[error("`{}` is not empty; name a new directory, so that nothing is lost", dir.display())]
+    NotEmpty {
+        /// Directory.
+        dir: PathBuf,
+    },
     /// The file system said no.
     #[error("`{}`: {source}; check that the directory exists, is writable and has free space", path.display())]
     Io {

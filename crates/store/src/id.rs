@@ -12,6 +12,9 @@ const LENGTH: usize = 13;
 /// Low bits that are random; the others are milliseconds since 1970 (until the year 2527).
 const RANDOM_BITS: u32 = 20;
 
+/// Steps beyond the last id where the clock is behind it: random, so that the id of something that was removed without a trace does not come again.
+const BEHIND: u64 = 0xffff;
+
 /// Id of a job: 13 letters and digits that sort by time of submission.
 #[derive(Clone, Copy, Debug, PartialEq, Eq, Hash, PartialOrd, Ord)]
 pub struct JobId(u64);
@@ -55,7 +58,7 @@ impl PlanId {
 fn after(last: Option<u64>, now_unix_ms: u64, random: u64) -> u64 {
     let fresh = now_unix_ms << RANDOM_BITS | random & ((1 << RANDOM_BITS) - 1);
     match last {
-        Some(last) if fresh <= last => last + 1,
+        Some(last) if fresh <= last => last.saturating_add(1 + (random & BEHIND)),
         _ => fresh,
     }
 }

@@ -106,6 +106,12 @@ impl JobIndex {
         }
     }
 
+    /// Blocks that survive a power cut.
+    pub(crate) fn blocks_acknowledged(&self) -> u64 {
+        let safe = |summary: &&Summary| summary.commit <= self.acknowledged;
+        self.blocks.values().filter(safe).count() as u64
+    }
+
     /// The index after all blocks were removed; commit numbers go on, so that none is given twice.
     pub(crate) fn emptied(&self) -> JobIndex {
         let (last_commit, acknowledged) = (self.last_commit, self.last_commit);

@@ -160,7 +160,7 @@ pub struct JobRecord {
     pub ended_unix_ms: Option<u64>,
     /// State.
     pub state: JobState,
-    /// Blocks that were committed when it ended; fewer now means that some were lost. 0 while it has not.
+    /// Blocks that were acknowledged when it ended; fewer now means that some were lost. 0 while it has not.
     pub committed_at_end: u64,
     /// Why it failed or has gaps; empty otherwise.
     pub failure: String,

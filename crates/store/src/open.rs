@@ -2,75 +2,24 @@
 
 use std::collections::BTreeMap;
 use std::fs::{self, File, TryLockError};
-use std::path::{Path, PathBuf};
+use std::path::Path;
 
 use enolattice_grid::BlockId;
+use sled::IVec;
 
 use crate::block;
-use crate::database::{Database, Fault, set_aside};
+use crate::database::{Database, Fault, free_name, set_aside};
 use crate::index::JobIndex;
 use crate::journal::{self, Journal};
 use crate::plans::Plans;
-use crate::{JobId, JobRecord, JobState, StoreError};
+use crate::{JobId, JobRecord, JobState, OpenReport, StoreError};
 
 /// Format of the store's directory.
 const FORMAT: u32 = 1;
-
-/// What opening a store found.
-#[derive(Clone, Debug, Default, PartialEq)]
-pub struct OpenReport {
-    /// Where the broken database went, and what was wrong with it.
-    pub set_aside: Option<(PathBuf, String)>,
-    /// Jobs that had ended and wait again because blocks of theirs were lost.
-    pub queued_again: Vec<JobId>,
-    /// Blocks that could not be believed and were removed, each with the reason.
-    pub damaged: Vec<(JobId, BlockId, String)>,
-    /// Journal files that could not be read, each with the reason; left where they are.
-    pub unreadable: Vec<(PathBuf, String)>,
-    /// Files of plans that could not be read, each with the reason; left where they are.
-    pub unreadable_plans: Vec<(PathBuf, String)>,
-}
-
-impl OpenReport {
-    /// The report in sentences; none where there is nothing to say.
-    pub fn sentences(&self) -> Vec<String> {
-        let aside = self.set_aside.iter().map(|(path, reason)| {
-            format!(
-                "the database of scores was damaged ({reason}); it was set aside as `{}` and is rebuilt by computing",
-                path.display()
-            )
-        });
-        let damaged = self.damaged.iter().map(|(job, block, reason)| {
-            let BlockId { segment, index } = block;
-            format!(
-                "block {segment}/{index} of job `{job}` was damaged ({reason}); it is computed anew"
-            )
-        });
-        let again = self.queued_again.iter().map(|job| {
-            format!(
-                "job `{job}` had ended but blocks of it were lost; it waits to compute them again"
-            )
-        });
-        let unreadable = self.unreadable.iter().map(|(path, reason)| {
-            format!(
-                "the record `{}` cannot be read: {reason}; put back a copy of it, or remove it and submit the campaign again",
-                path.display()
-            )
-        });
-        let plans = self.unreadable_plans.iter().map(|(path, reason)| {
-            format!(
-                "the plan `{}` cannot be read: {reason}; put back a copy of it, or remove it and plan again",
-                path.display()
-            )
-        });
-        aside
-            .chain(damaged)
-            .chain(again)
-            .chain(unreadable)
-            .chain(plans)
-            .collect()
-    }
-}
+/// File that holds the format.
+pub(crate) const FORMAT_FILE: &str = "format";
+/// File that says, while it is there, that the store is a copy that is not finished.
+pub(crate) const UNFINISHED_COPY: &str = "unfinished-copy";
 
 /// The parts of an open store.
 pub(crate) struct Opened {
@@ -79,6 +28,8 @@ pub(crate) struct Opened {
     pub(crate) plans: Plans,
     pub(crate) database: Database,
     pub(crate) jobs: BTreeMap<JobId, (JobRecord, JobIndex)>,
+    /// The last id of a job that anything in the store bears; later ones come after it.
+    pub(crate) last_job: Option<JobId>,
     pub(crate) report: OpenReport,
 }
 
@@ -88,28 +39,29 @@ pub(crate) fn open(dir: &Path, now_unix_ms: u64) -> Result<Opened, StoreError> {
     let lock = lock(dir)?;
     check_format(dir)?;
     let (journal, contents) = Journal::open(&dir.join("journal"))?;
-    let (plans, unreadable_plans) = Plans::open(&dir.join("plans"))?;
+    let (plans, plans_found) = Plans::open(&dir.join("plans"))?;
     journal::sync_dir(dir)?;
     let mut report = OpenReport {
         unreadable: contents.unreadable,
-        unreadable_plans,
+        unreadable_plans: plans_found.unreadable,
+        leftovers: [contents.leftovers, plans_found.leftovers].concat(),
         ..OpenReport::default()
     };
-    let mut jobs: BTreeMap<JobId, (JobRecord, JobIndex)> = contents
-        .records
-        .into_iter()
-        .map(|record| (record.id, (record, JobIndex::default())))
-        .collect();
-    let database = open_database(
-        &dir.join("db"),
-        now_unix_ms,
-        &journal,
-        &mut jobs,
-        &mut report,
-    )?;
-    for (record, index) in jobs.values_mut() {
-        mend(record, index, &journal, &mut report)?;
-    }
+    let of_plans = plans.records().into_iter().map(|plan| plan.job);
+    let mut opening = Opening {
+        path: &dir.join("db"),
+        journal: &journal,
+        jobs: contents
+            .records
+            .into_iter()
+            .map(|record| (record.id, (record, JobIndex::default())))
+            .collect(),
+        deleted: contents.deleted,
+        last_job: contents.last_named.max(of_plans.max()),
+        report: &mut report,
+    };
+    let database = opening.database(now_unix_ms)?;
+    let Opening { jobs, last_job, .. } = opening;
     journal::sync_dir(dir)?;
     Ok(Opened {
         lock,
@@ -117,6 +69,7 @@ pub(crate) fn open(dir: &Path, now_unix_ms: u64) -> Result<Opened, StoreError> {
         plans,
         database,
         jobs,
+        last_job,
         report,
     })
 }
@@ -130,152 +83,231 @@ fn lock(dir: &Path) -> Result<File, StoreError> {
         .write(true)
         .open(&path);
     let file = options.map_err(StoreError::io(&path))?;
+    hold(&file, dir, &path)?;
+    Ok(file)
+}
+
+/// Locks an open lock file.
+pub(crate) fn hold(file: &File, dir: &Path, path: &Path) -> Result<(), StoreError> {
     match file.try_lock() {
-        Ok(()) => Ok(file),
+        Ok(()) => Ok(()),
         Err(TryLockError::WouldBlock) => Err(StoreError::InUse { dir: dir.into() }),
-        Err(TryLockError::Error(source)) => Err(StoreError::Io { path, source }),
+        Err(TryLockError::Error(source)) => Err(StoreError::io(path)(source)),
     }
 }
 
+/// Whether the directory holds a store of a format that is known; a new one is given the format.
 fn check_format(dir: &Path) -> Result<(), StoreError> {
-    let path = dir.join("format");
-    if !path.try_exists().map_err(StoreError::io(&path))? {
-        return journal::write_durably(&path, format!("{FORMAT}\n").as_bytes());
+    match found_format(dir)? {
+        None => write_format(dir),
+        Some(_) => Ok(()),
     }
-    let found = fs::read_to_string(&path).map_err(StoreError::io(&path))?;
-    match found.trim() {
-        known if known == FORMAT.to_string() => Ok(()),
-        other => Err(StoreError::TooNew {
+}
+
+/// The format of the store in a directory, if there is one.
+pub(crate) fn found_format(dir: &Path) -> Result<Option<u32>, StoreError> {
+    if dir.join(UNFINISHED_COPY).exists() {
+        return Err(StoreError::CopyUnfinished { dir: dir.into() });
+    }
+    let path = dir.join(FORMAT_FILE);
+    if !path.try_exists().map_err(StoreError::io(&path))? {
+        return Ok(None);
+    }
+    let bytes = fs::read(&path).map_err(StoreError::io(&path))?;
+    let found = String::from_utf8_lossy(&bytes).trim().to_owned();
+    match found.parse() {
+        Ok(FORMAT) => Ok(Some(FORMAT)),
+        Ok(later) if later > FORMAT => Err(StoreError::TooNew {
             dir: dir.into(),
-            found: other.into(),
+            found,
+            known: FORMAT,
+        }),
+        _ => Err(StoreError::FormatDamaged {
+            path,
+            found: found.chars().take(20).collect(),
             known: FORMAT,
         }),
     }
 }
 
-/// Opens the database and reads every block; a broken database is set aside and begun anew.
-fn open_database(
-    path: &Path,
-    now_unix_ms: u64,
-    journal: &Journal,
-    jobs: &mut BTreeMap<JobId, (JobRecord, JobIndex)>,
-    report: &mut OpenReport,
-) -> Result<Database, StoreError> {
-    let mut damaged = Vec::new();
-    let reason =
-        match Database::open(path).and_then(|db| verify(db, path, journal, jobs, &mut damaged)) {
+/// Says in the directory which format its store has.
+pub(crate) fn write_format(dir: &Path) -> Result<(), StoreError> {
+    journal::write_durably(&dir.join(FORMAT_FILE), format!("{FORMAT}\n").as_bytes())
+}
+
+/// What opening the database works on.
+struct Opening<'a> {
+    path: &'a Path,
+    journal: &'a Journal,
+    jobs: BTreeMap<JobId, (JobRecord, JobIndex)>,
+    /// Jobs that were deleted and may have blocks left.
+    deleted: Vec<JobId>,
+    last_job: Option<JobId>,
+    report: &'a mut OpenReport,
+}
+
+impl Opening<'_> {
+    /// Opens the database and reads every block; a broken database is set aside and begun anew.
+    ///
+    /// Whatever is taken from the database is written into the records first: a crash between the two
+    /// then leaves nothing that the next opening would not put right.
+    fn database(&mut self, now_unix_ms: u64) -> Result<Database, StoreError> {
+        let mut read = Read {
+            was_there: self.path.join("db").exists(),
+            ..Read::default()
+        };
+        let opened = Database::open(self.path).and_then(|db| self.verify(db, &mut read));
+        match opened {
             Ok(database) => {
-                for (job, block, _) in &damaged {
+                self.report.damaged = read.damaged;
+                self.report.blocks_of_no_job = read.blocks_of_no_job;
+                self.mend(read.was_there)?;
+                for (job, block, _) in &self.report.damaged {
                     database.remove(&block::key(*job, *block))?;
                 }
-                report.damaged = damaged;
-                return sync(database, jobs);
+                for key in &read.of_deleted {
+                    database.remove(key)?;
+                }
+                self.sync(database)
             }
-            Err(Fault::Refused(error)) => return Err(error),
-            Err(Fault::Broken(reason)) => reason,
+            Err(Fault::Refused(error)) => Err(error),
+            Err(Fault::Broken(reason)) => self.begin_anew(reason, now_unix_ms),
+        }
+    }
+
+    /// Reads and checks every block of the known jobs.
+    ///
+    /// After some damage sled opens without a word and a part of its tree is gone or out of reach;
+    /// nothing it holds is trusted when a job that had ended misses blocks. Where there was no database, none is damaged.
+    fn verify(&mut self, database: Database, read: &mut Read) -> Result<Database, Fault> {
+        database.scan(self.path, |key, value| {
+            let Some((job, block)) = block::parse_key(&key) else {
+                return;
+            };
+            self.last_job = self.last_job.max(Some(job));
+            let Some((_, index)) = self.jobs.get_mut(&job) else {
+                match self.deleted.contains(&job) {
+                    true => read.of_deleted.push(key),
+                    false => read.blocks_of_no_job += 1,
+                }
+                return;
+            };
+            match block::decode(&key, &value) {
+                Ok(stored) => index.add(block, &stored),
+                Err(reason) => read.damaged.push((job, block, reason)),
+            }
+        })?;
+        let incomplete = |(record, index): &&(JobRecord, JobIndex)| {
+            let of_job = |(job, ..): &&(JobId, BlockId, String)| *job == record.id;
+            let removed = read.damaged.iter().filter(of_job).count();
+            ((index.blocks.len() + removed) as u64) < record.committed_at_end
         };
-    let aside = set_aside(path, now_unix_ms)?;
-    jobs.values_mut()
-        .for_each(|(_, index)| *index = JobIndex::default());
-    match Database::open(path) {
-        Ok(database) => {
-            report.set_aside = Some((aside, reason));
-            sync(database, jobs)
+        match self.jobs.values().find(incomplete) {
+            Some((record, _)) if read.was_there => Err(Fault::Broken(format!(
+                "blocks of job `{}` are missing",
+                record.id
+            ))),
+            _ => Ok(database),
         }
-        Err(fault) => {
-            // Perhaps the disk is full rather than the database broken: leave things as they were.
-            let _ = fs::remove_dir_all(path);
-            fs::rename(&aside, path).map_err(StoreError::io(&aside))?;
-            Err(match fault {
-                Fault::Refused(error) => error,
-                Fault::Broken(reason) => StoreError::Database {
-                    path: path.into(),
-                    reason,
-                },
-            })
+    }
+
+    /// Sets a broken database aside and makes an empty one.
+    fn begin_anew(&mut self, reason: String, now_unix_ms: u64) -> Result<Database, StoreError> {
+        for (_, index) in self.jobs.values_mut() {
+            *index = JobIndex::default();
         }
+        let aside = free_name(self.path, now_unix_ms);
+        set_aside(self.path, &aside)?;
+        match Database::open(self.path) {
+            Ok(database) => {
+                self.report.set_aside = Some((aside, reason));
+                self.mend(false)?;
+                self.sync(database)
+            }
+            Err(fault) => {
+                // Perhaps the disk is full rather than the database broken: leave things as they were.
+                let _ = fs::remove_dir_all(self.path);
+                fs::rename(&aside, self.path).map_err(StoreError::io(&aside))?;
+                Err(match fault {
+                    Fault::Refused(error) => error,
+                    Fault::Broken(reason) => StoreError::Database {
+                        path: self.path.into(),
+                        reason,
+                    },
+                })
+            }
+        }
+    }
+
+    /// Queues jobs again that had ended with more blocks than there are.
+    ///
+    /// In an empty database commit numbers begin again: pages begun before are outdated, also those of jobs of which
+    /// nobody knows how many blocks they had.
+    fn mend(&mut self, was_there: bool) -> Result<(), StoreError> {
+        let empty = self.jobs.values().all(|(_, index)| index.blocks.is_empty());
+        for (record, index) in self.jobs.values_mut() {
+            let blocks = index.blocks.len() as u64;
+            let lost = blocks < record.committed_at_end;
+            let removed = self
+                .report
+                .damaged
+                .iter()
+                .any(|(job, ..)| *job == record.id);
+            let may_have_had = record.state == JobState::Running || !was_there;
+            let begins_again = empty && may_have_had && !record.state.is_ended();
+            if lost || removed || begins_again {
+                let ended = record.state.is_ended();
+                *record = left_with(record, blocks);
+                self.journal.write(record)?;
+                if ended && !record.state.is_ended() {
+                    self.report.queued_again.push(record.id);
+                }
+            }
+        }
+        Ok(())
+    }
+
+    /// What a killed process left in the system's cache is not yet on disk: sync it, then believe it.
+    fn sync(&mut self, database: Database) -> Result<Database, StoreError> {
+        database.sync()?;
+        for (_, index) in self.jobs.values_mut() {
+            index.acknowledge(index.mark());
+        }
+        for job in &self.deleted {
+            self.journal.forget(*job)?;
+        }
+        Ok(database)
     }
 }
 
-/// Reads and checks every block of the known jobs; removes those of jobs that were deleted in mid-crash.
+/// What reading the database found beside the blocks of the known jobs.
+#[derive(Default)]
+struct Read {
+    /// Whether there was a database.
+    was_there: bool,
+    damaged: Vec<(JobId, BlockId, String)>,
+    /// Keys of blocks of deleted jobs.
+    of_deleted: Vec<IVec>,
+    blocks_of_no_job: u64,
+}
+
+/// The record of a job of which only so many blocks are left.
 ///
-/// After some damage sled opens without a word and a part of its tree is gone or out of reach;
-/// nothing it holds is trusted when a job that had ended misses blocks.
-fn verify(
-    database: Database,
-    path: &Path,
-    journal: &Journal,
-    jobs: &mut BTreeMap<JobId, (JobRecord, JobIndex)>,
-    damaged: &mut Vec<(JobId, BlockId, String)>,
-) -> Result<Database, Fault> {
-    let mut any_block = false;
-    let mut ownerless = Vec::new();
-    database.scan(path, |key, value| {
-        any_block = true;
-        let Some((job, block)) = block::parse_key(&key) else {
-            return;
-        };
-        let Some((_, index)) = jobs.get_mut(&job) else {
-            // a record that cannot be read keeps its blocks
-            if !journal.has_file(job) {
-                ownerless.push(key);
-            }
-            return;
-        };
-        match block::decode(&key, &value) {
-            Ok(stored) => index.add(block, &stored),
-            Err(reason) => damaged.push((job, block, reason)),
-        }
-    })?;
-    for key in ownerless {
-        database.remove(&key).map_err(Fault::Refused)?;
-    }
-    let incomplete = |(record, index): &&(JobRecord, JobIndex)| {
-        let removed = damaged.iter().filter(|(job, ..)| *job == record.id).count();
-        ((index.blocks.len() + removed) as u64) < record.committed_at_end
+/// It waits again where it had been screened to its end; pages begun before are outdated.
+pub(crate) fn left_with(record: &JobRecord, blocks: u64) -> JobRecord {
+    let mut left = JobRecord {
+        generation: record.generation + 1,
+        ..record.clone()
     };
-    match jobs.values().find(incomplete) {
-        Some((record, _)) if any_block => Err(Fault::Broken(format!(
-            "blocks of job `{}` are missing",
-            record.id
-        ))),
-        _ => Ok(database),
-    }
-}
-
-/// What a killed process left in the system's cache is not yet on disk: sync it, then believe it.
-fn sync(
-    database: Database,
-    jobs: &mut BTreeMap<JobId, (JobRecord, JobIndex)>,
-) -> Result<Database, StoreError> {
-    database.sync()?;
-    jobs.values_mut()
-        .for_each(|(_, index)| index.acknowledge(index.mark()));
-    Ok(database)
-}
-
-/// Queues a job again that had ended with more blocks than there are; pages begun before are outdated.
-fn mend(
-    record: &mut JobRecord,
-    index: &JobIndex,
-    journal: &Journal,
-    report: &mut OpenReport,
-) -> Result<(), StoreError> {
-    let lost = (index.blocks.len() as u64) < record.committed_at_end;
-    let removed = report.damaged.iter().any(|(job, ..)| *job == record.id);
-    if !(lost || removed || report.set_aside.is_some()) {
-        return Ok(());
-    }
-    record.generation += 1;
+    let lost = blocks < record.committed_at_end;
     if lost && matches!(record.state, JobState::Done | JobState::DoneWithGaps) {
-        record.state = JobState::Queued;
-        record.ended_unix_ms = None;
-        record.failure = String::new();
-        report.queued_again.push(record.id);
+        left.state = JobState::Queued;
+        left.ended_unix_ms = None;
+        left.failure = String::new();
     }
-    record.committed_at_end = match record.state.is_ended() {
-        true => index.blocks.len() as u64,
+    left.committed_at_end = match left.state.is_ended() {
+        true => blocks,
         false => 0,
     };
-    journal.write(record)
+    left
 }

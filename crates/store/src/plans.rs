@@ -11,7 +11,7 @@ use std::sync::Mutex;
 use serde::{Deserialize, Serialize};
 use serde_json::value::RawValue;
 
-use crate::journal::{ENDING, UNFINISHED, sync_dir, write_durably};
+use crate::journal::{ENDING, Found, files, sync_dir, write_durably};
 use crate::store::lock;
 use crate::{JobId, PlanId, StoreError};
 
@@ -33,6 +33,15 @@ pub struct PlanRecord {
     pub plates: u32,
     /// Wells of all plates that hold something.
     pub wells: u32,
+}
+
+/// What opening the directory of plans found beside them.
+#[derive(Debug, Default)]
+pub(crate) struct PlansFound {
+    /// Files that could not be read, each with the reason.
+    pub(crate) unreadable: Vec<(PathBuf, String)>,
+    /// Files that a crash left unfinished; they are gone.
+    pub(crate) leftovers: Vec<PathBuf>,
 }
 
 /// The directory of plans. Documents stay on the disk until they are asked for.
@@ -66,29 +75,29 @@ struct StoredPlan<'a> {
 
 impl Plans {
     /// Opens or makes the directory and reads every plan; those that cannot be read are told with the reason.
-    pub(crate) fn open(dir: &Path) -> Result<(Plans, Vec<(PathBuf, String)>), StoreError> {
-        fs::create_dir_all(dir).map_err(StoreError::io(dir))?;
-        let (mut known, mut unreadable) = (BTreeMap::new(), Vec::new());
-        for entry in fs::read_dir(dir).map_err(StoreError::io(dir))? {
-            let path = entry.map_err(StoreError::io(dir))?.path();
-            match path.extension().and_then(|ending| ending.to_str()) {
-                Some(UNFINISHED) => fs::remove_file(&path).map_err(StoreError::io(&path))?,
-                Some(ENDING) => match read_file(&path) {
-                    Ok((record, _)) => {
-                        known.insert(record.id, record);
-                    }
-                    Err(reason) => unreadable.push((path, reason)),
-                },
-                _ => {}
+    pub(crate) fn open(dir: &Path) -> Result<(Plans, PlansFound), StoreError> {
+        let Found { whole, leftovers } = files(dir)?;
+        let mut found = PlansFound {
+            leftovers,
+            ..PlansFound::default()
+        };
+        let mut known = BTreeMap::new();
+        // A plan that cannot be read keeps its id to itself.
+        let mut last = None;
+        for path in whole {
+            let stem = path.file_stem().and_then(|stem| stem.to_str());
+            last = last.max(stem.and_then(|stem| stem.parse().ok()));
+            match read_file(&path) {
+                Ok((record, _)) => drop(known.insert(record.id, record)),
+                Err(reason) => found.unreadable.push((path, reason)),
             }
         }
-        unreadable.sort();
         let plans = Plans {
             dir: dir.into(),
-            last: Mutex::new(known.keys().last().copied()),
+            last: Mutex::new(last),
             known: Mutex::new(known),
         };
-        Ok((plans, unreadable))
+        Ok((plans, found))
     }
 
     /// An id that no plan has.
@@ -143,7 +152,11 @@ impl Plans {
     }
 }
 
-fn read_file(path: &Path) -> Result<(PlanRecord, String), String> {
+/// Reads a kept plan and its document.
+///
+/// # Errors
+/// A sentence that says what is wrong with it.
+pub(crate) fn read_file(path: &Path) -> Result<(PlanRecord, String), String> {
     let text = fs::read_to_string(path).map_err(|error| error.to_string())?;
     let (record, document) = read(&text)?;
     match path.file_stem().and_then(|stem| stem.to_str()) {

@@ -57,6 +57,8 @@ pub struct Store {
     creating: Mutex<()>,
     /// Directory of the files of rows.
     pub(crate) orders: PathBuf,
+    /// The last id of a job that was given or that anything in the store bears.
+    last_job: Mutex<Option<JobId>>,
     /// Keeps other processes out; dropped last.
     _lock: File,
 }
@@ -65,10 +67,11 @@ impl Store {
     /// Opens the store in `dir`, making it if there is none.
     ///
     /// Every block is read and checked. A broken database is renamed to
-    /// `db.broken-<now_unix_ms>`, begun anew, and its jobs wait again; the report says so.
+    /// `db.broken-<now_unix_ms>` (with a number where that is taken), begun anew, and its jobs wait again; the report says so.
     ///
     /// # Errors
-    /// [`StoreError::InUse`], [`StoreError::TooNew`], [`StoreError::Io`], [`StoreError::Database`].
+    /// [`StoreError::InUse`], [`StoreError::TooNew`], [`StoreError::FormatDamaged`],
+    /// [`StoreError::CopyUnfinished`], [`StoreError::Io`], [`StoreError::Database`].
     pub fn open(dir: &Path, now_unix_ms: u64) -> Result<(Store, OpenReport), StoreError> {
         let opened = open::open(dir, now_unix_ms)?;
         let entry = |(id, (record, index))| (id, Arc::new(Entry::new(record, index)));
@@ -79,6 +82,7 @@ impl Store {
             jobs: RwLock::new(opened.jobs.into_iter().map(entry).collect()),
             creating: Mutex::new(()),
             orders: dir.join("orders"),
+            last_job: Mutex::new(opened.last_job),
             _lock: opened.lock,
         };
         store.open_orders()?;
@@ -185,8 +189,9 @@ impl Store {
         let changed = JobRecord {
             state: change.to,
             ended_unix_ms: ends.then_some(change.at_unix_ms),
+            // Others may be lost with the disk that failed: at the next start they must not be missed.
             committed_at_end: if ends {
-                lock(&entry.index).blocks.len() as u64
+                lock(&entry.index).blocks_acknowledged()
             } else {
                 0
             },
@@ -201,7 +206,7 @@ impl Store {
     /// Removes a job that has ended, with its blocks. When this returns, the job stays away after a power cut too; what the
     /// blocks took on disk is free for blocks to come.
     ///
-    /// The record goes first: blocks without a record are removed when the store is opened.
+    /// The record goes first, by a mark that says whose blocks are to go: a crash in between leaves the rest to opening.
     ///
     /// # Errors
     /// [`StoreError::JobUnknown`], [`StoreError::NotEnded`], [`StoreError::Io`], [`StoreError::Stopped`].
@@ -212,7 +217,7 @@ impl Store {
             let state = record.state;
             return Err(StoreError::NotEnded { job, state });
         }
-        self.journal.remove(job)?;
+        self.journal.bury(job)?;
         lock(&entry.ordered).take();
         // Opening removes what stays.
         let _ = fs::remove_file(self.order_path(job));
@@ -225,6 +230,7 @@ impl Store {
             self.database.remove(&block::key(job, *block))?;
         }
         self.database.sync()?;
+        self.journal.forget(job)?;
         Ok(record)
     }
 
@@ -362,9 +368,11 @@ impl Store {
     }
 
     fn new_id(&self, now_unix_ms: u64) -> Result<JobId, StoreError> {
-        let last = self.entries().last().map(|(id, _)| *id);
         let random = getrandom::u64().map_err(StoreError::unwritable)?;
-        Ok(JobId::after(last, now_unix_ms, random))
+        let mut last = lock(&self.last_job);
+        let id = JobId::after(*last, now_unix_ms, random);
+        *last = Some(id);
+        Ok(id)
     }
 }
 

@@ -1,5 +1,6 @@
 //! The commands, one a file; their doc comments are their help.
 
+mod backup;
 mod cancel;
 mod check_measured;
 mod compare;
@@ -10,6 +11,7 @@ mod export;
 mod following;
 mod jobs;
 mod man;
+mod mend;
 mod options;
 mod pause;
 mod plan;
@@ -17,6 +19,7 @@ mod plans;
 mod rank;
 mod reagents;
 mod report;
+mod restore;
 mod resume;
 mod screen;
 mod serve;
@@ -75,6 +78,9 @@ enum Command {
     CheckMeasured(check_measured::CheckMeasured),
     Sites(sites::Sites),
     Reagents(reagents::Reagents),
+    Mend(mend::Mend),
+    Backup(backup::Backup),
+    Restore(restore::Restore),
     Completion(completion::Completion),
     Man(man::Man),
 }
@@ -119,6 +125,9 @@ pub(crate) async fn run(program: Program) -> Result<(), Fault> {
         Command::CheckMeasured(command) => command.run().await,
         Command::Sites(command) => command.run().await,
         Command::Reagents(command) => command.run().await,
+        Command::Mend(command) => command.run(),
+        Command::Backup(command) => command.run(),
+        Command::Restore(command) => command.run(),
         Command::Completion(command) => command.run(),
         Command::Man(command) => command.run(),
     }

@@ -2,11 +2,11 @@
 
 use enolattice_engine::{
     AcidityAgreement, Agreement, Axis, AxisOverlap, CellDescription, CellMap, CheckedAcidity,
-    CheckedRun, ComparedCell, Comparison, Difference, Distribution, DryRun, Histogram, Job,
-    JobState, MapAxis, MapField, Miss, Mover, PlanSummary, RankedCell, ReagentRow, Terms,
-    YieldAgreement,
+    CheckedRun, ComparedCell, Comparison, Copied, Difference, Distribution, DryRun, Health,
+    Histogram, Job, JobState, MapAxis, MapField, Miss, Mover, OpenReport, PlanSummary, RankedCell,
+    ReagentRow, SetAside, Terms, YieldAgreement,
 };
-use enolattice_grid::{CampaignSpec, Decile, MeasuredEntry};
+use enolattice_grid::{BlockId, CampaignSpec, Decile, MeasuredEntry};
 use enolattice_model::{
     Advice, Category, Caution, Channel, CoursePoint, Doubt, ExplainedProduct, ExplainedRate,
     ExplainedSite, Explanation, Neighbour, Origin, Severity, SiteReasons, Term,
@@ -15,9 +15,9 @@ use serde::Serialize;
 use serde_json::Value;
 
 use super::{
-    AgreementDocument, CellLine, ComparisonDocument, DistributionDocument, DryRunDocument,
-    ExplanationDocument, JobRecord, MapLine, MoleculeSites, PlanRecord, ReagentRecord,
-    ScreenedDocument,
+    AgreementDocument, CellLine, ComparisonDocument, CopiedDocument, DistributionDocument,
+    DryRunDocument, ExplanationDocument, HealthDocument, JobRecord, MapLine, MoleculeSites,
+    PlanRecord, ReagentRecord, ScreenedDocument,
 };
 
 const DOCUMENT: &str = include_str!("../../docs/commands.md");
@@ -480,6 +480,45 @@ fn every_field_of_an_agreement_is_documented() {
 }
 
 #[test]
+fn the_fields_of_data_directories_are_documented() {
+    let path = || std::path::PathBuf::from("journal/x.json");
+    let health = Health {
+        report: OpenReport {
+            damaged: vec![(
+                "06f3k8a5zr0q2".parse().expect("an id"),
+                BlockId {
+                    segment: 0,
+                    index: 1,
+                },
+                String::new(),
+            )],
+            unreadable: vec![(path(), String::new())],
+            ..OpenReport::default()
+        },
+        format_damaged: None,
+        jobs: 1,
+        jobs_unfinished: 0,
+        plans: 1,
+        blocks: 1,
+        cells: 1,
+        set_aside: vec![SetAside {
+            path: path(),
+            bytes: 1,
+        }],
+    };
+    let document = HealthDocument::new(&health, false);
+    assert_eq!(documented("### `mend --json`"), fields(&document));
+    let value = serde_json::to_value(&document).expect("serialises");
+    compare_as_sets(&[
+        ("damaged_blocks", &value["damaged_blocks"]),
+        ("unreadable_records", &value["unreadable_records"]),
+        ("set_aside", &value["set_aside"]),
+    ]);
+    let copied = CopiedDocument::new(&Copied::default(), &path());
+    assert_eq!(documented("### `backup --json`"), fields(&copied));
+}
+
+#[test]
 fn the_document_has_the_closed_vocabularies() {
     for name in Category::ALL.iter().map(|category| category.name()) {
         assert!(DOCUMENT.contains(&format!("`{name}`")), "{name}");
@@ -498,6 +537,9 @@ fn the_document_has_the_closed_vocabularies() {
         "plans [JOB]",
         "compare BEFORE AFTER",
         "check-measured FILE…",
+        "mend",
+        "backup",
+        "restore",
         "completion SHELL",
         "man",
     ] {

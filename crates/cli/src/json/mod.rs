@@ -2,6 +2,7 @@
 //! fields may be added, none changes its meaning.
 
 mod agreement;
+mod care;
 mod cell;
 mod comparison;
 mod distribution;
@@ -15,6 +16,7 @@ mod screened;
 mod site;
 
 pub(crate) use agreement::AgreementDocument;
+pub(crate) use care::{CopiedDocument, HealthDocument};
 pub(crate) use cell::CellLine;
 pub(crate) use comparison::ComparisonDocument;
 pub(crate) use distribution::DistributionDocument;

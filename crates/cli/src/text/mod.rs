@@ -1,6 +1,7 @@
 //! What a person reads: tables and pages of text.
 
 mod agreement;
+mod care;
 mod cells;
 mod chart;
 mod comparison;
@@ -19,6 +20,7 @@ mod sites;
 mod table;
 
 pub(crate) use agreement::agreement_page;
+pub(crate) use care::{copied_line, health_page};
 pub(crate) use cells::cell_table;
 pub(crate) use comparison::comparison_page;
 pub(crate) use distribution::distribution_page;

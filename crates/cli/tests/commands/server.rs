@@ -7,13 +7,13 @@ use std::process::{Child, Command, Stdio};
 use crate::program::{folder, json, lines, program, refused, stdout};
 
 /// A server that is killed with the test.
-struct Server {
+pub(crate) struct Server {
     child: Child,
-    url: String,
+    pub(crate) url: String,
 }
 
 impl Server {
-    fn start(folder: &Path) -> Server {
+    pub(crate) fn start(folder: &Path) -> Server {
         let mut child = program(
             folder,
             &["serve", "--listen", "127.0.0.1:0", "--data", "served"],

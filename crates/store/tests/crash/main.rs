@@ -15,7 +15,7 @@ use std::sync::atomic::{AtomicUsize, Ordering};
 use std::time::Duration;
 
 use common::{START_MS, block, columns, new_job, noise, open};
-use enolattice_store::{Commit, JobId, Store, StoreError};
+use enolattice_store::{Commit, JobId, JobState, StateChange, Store, StoreError};
 
 /// Held by the test that has children.
 static ONE_AT_A_TIME: Mutex<()> = Mutex::new(());
@@ -224,4 +224,12 @@ fn cramped(dir: &Path) {
         assert!(matches!(again, StoreError::Stopped { .. }), "{again}");
     }
     assert_eq!(store.progress(job).unwrap().cells_acknowledged, seen);
+    // What the job claims at its end must be there at the next start, or all scores would be distrusted.
+    let change = StateChange {
+        from: JobState::Queued,
+        to: JobState::Failed,
+        at_unix_ms: START_MS,
+        failure: "the disk is full".into(),
+    };
+    store.change_state(job, &change).unwrap();
 }

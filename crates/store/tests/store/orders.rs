@@ -159,9 +159,13 @@ fn a_deleted_job_leaves_nothing_and_its_record_goes_first() {
     let record = dir.path().join("journal").join(format!("{job}.json"));
     drop(store);
     // as a crash after the first step of deleting leaves it
-    fs::remove_file(&record).unwrap();
+    fs::rename(&record, record.with_extension("deleted")).unwrap();
     let store = open(dir.path());
     assert!(store.jobs().is_empty());
+    drop(store);
+    assert!(!record.with_extension("deleted").exists());
+    let (store, report) = Store::open(dir.path(), START_MS).unwrap();
+    assert_eq!(report.blocks_of_no_job, 0, "its blocks went");
     drop(store);
     // blocks whose record is unreadable are kept for the day when a copy is put back
     let (store, job) = done(dir.path());

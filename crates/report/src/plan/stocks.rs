@@ -1,5 +1,7 @@
 //! The stock sheet, to be printed and ticked off.
 
+use std::collections::BTreeMap;
+
 use enolattice_plate::{Form, Plan, Role, Stock};
 use maud::{Markup, html};
 
@@ -19,6 +21,7 @@ const ROLES: [Role; 7] = [
 
 /// The sheet, role by role, with a box to tick in front of every stock.
 pub(super) fn sheet(plan: &Plan) -> Markup {
+    let repeated = repeated(plan);
     let table = html! {
         table.data.sheet {
             thead {
@@ -33,7 +36,7 @@ pub(super) fn sheet(plan: &Plan) -> Markup {
                 @if !stocks.is_empty() {
                     tbody {
                         tr.group { th colspan="9" scope="rowgroup" { (plural(role)) } }
-                        @for stock in stocks { (row(stock)) }
+                        @for stock in stocks { (row(stock, &repeated)) }
                     }
                 }
             }
@@ -44,11 +47,25 @@ pub(super) fn sheet(plan: &Plan) -> Markup {
             "A stock lasts until a twentieth of it is lost at room temperature. Hazard statements are GHS; "
             q { "unknown" } " means that none are known to the library, not that there are none."
         }
+        @for (note, letter) in &repeated { p.aside { strong { (letter) } ": " (note) } }
         (boxed("Stock sheet", table))
     }
 }
 
-fn row(stock: &Stock) -> Markup {
+/// Stocks from which on a note is said once, above the sheet.
+const REPEATED: usize = 4;
+
+/// Letters of the notes that many stocks have.
+fn repeated(plan: &Plan) -> BTreeMap<&str, char> {
+    let mut stocks: BTreeMap<&str, usize> = BTreeMap::new();
+    for note in plan.stocks.iter().flat_map(|stock| &stock.notes) {
+        *stocks.entry(note).or_default() += 1;
+    }
+    let many = stocks.into_iter().filter(|(_, stocks)| *stocks >= REPEATED);
+    many.map(|(note, _)| note).zip('a'..='z').collect()
+}
+
+fn row(stock: &Stock, repeated: &BTreeMap<&str, char>) -> Markup {
     html! {
         tr {
             td.tick { input type="checkbox" aria-label={ "stock " (stock.label) " is made" }; }
@@ -62,7 +79,11 @@ fn row(stock: &Stock) -> Markup {
                 (stock.lasts_h.map_or("unknown".to_owned(), |hours| format!("{} h", short((10.0 * hours).round() / 10.0))))
                 @if !stock.keep.is_empty() { span.words { (stock.keep) } }
             }
-            td { (stock.hazards) @for note in &stock.notes { span.words { (note) } } }
+            td {
+                (stock.hazards)
+                @for letter in stock.notes.iter().filter_map(|note| repeated.get(note.as_str())) { " " sup { strong { (letter) } } }
+                @for note in stock.notes.iter().filter(|note| !repeated.contains_key(note.as_str())) { span.words { (note) } }
+            }
         }
     }
 }

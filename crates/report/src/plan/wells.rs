@@ -52,7 +52,7 @@ pub(super) fn table(report: &PlanReport) -> Markup {
                     th scope="col" { "well" } th scope="col" { "substrate" } th scope="col" { "electrophile" }
                     th scope="col" { "base" } th scope="col" { "solvent" } th.num scope="col" { "expected yield" }
                     th.num scope="col" { "p_hit" } th.num scope="col" { "as dosed" }
-                    th scope="col" { "where the substrate ends" } th scope="col" { "cautions" }
+                    th.wide scope="col" { "where the substrate ends" } th scope="col" { "cautions" }
                 }
             }
             tbody {

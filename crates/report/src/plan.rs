@@ -59,7 +59,7 @@ pub fn plan_report(report: &PlanReport) -> String {
         Section::new("stocks", "Stock sheet", stocks::sheet(plan)),
         Section::new("program", "Program", transfers::program(plan)),
         Section::new("transfers", "Transfers", transfers::transfers(plan)),
-        Section::new("masses", "Masses to look for", masses::masses(plan)),
+        Section::new("masses", "Masses to look for", masses::masses(plan)).on_screen_only(),
     ]);
     if !plan.left_out.is_empty() {
         sections.push(Section::new(

@@ -18,7 +18,7 @@ pub(super) fn masses(plan: &Plan) -> Markup {
                 tr {
                     th scope="col" { "well" } th scope="col" { "wanted product" } th.num scope="col" { "mass, Da" }
                     th.num scope="col" { "[M+H]+" } th.num scope="col" { "[M+Na]+" } th.num scope="col" { "[M\u{2212}H]\u{2212}" }
-                    th.wide scope="col" { "also there" } th scope="col" { "not told apart by mass" }
+                    th scope="col" { "also there" } th scope="col" { "not told apart by mass" }
                 }
             }
             tbody {

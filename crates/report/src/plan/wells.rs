@@ -46,7 +46,7 @@ pub(super) fn table(report: &PlanReport) -> Markup {
     let many = plan.plates.len() > 1;
     let shown = |reagent: &Option<Reagent>| html! { @if let Some(known) = reagent { (name(&known.name)) } @else { "—" } };
     let table = html! {
-        table.data.long data-tools="" {
+        table.data.long.filled data-tools="" {
             thead {
                 tr {
                     th scope="col" { "well" } th scope="col" { "substrate" } th scope="col" { "electrophile" }

@@ -9,11 +9,11 @@ use crate::{Axis, Engine, EngineError, Order, RankPage, RankQuery, RankedCell};
 
 /// Rows of a page where the question does not say.
 const USUAL_PAGE: u32 = 100;
-/// Most rows of a page.
-const LARGEST_PAGE: u32 = 1000;
+/// Most rows of a page within the process; over the wire they are fewer.
+const LARGEST_PAGE: u32 = 50_000;
 
 impl Engine {
-    /// A page of the ranking; 100 rows where `page_size` is 0, at most 1000.
+    /// A page of the ranking; 100 rows where `page_size` is 0, at most 50,000.
     ///
     /// # Errors
     /// [`EngineError::JobUnknown`], [`EngineError::Input`] where the filter cannot be read,

@@ -57,14 +57,14 @@ pub(crate) fn table(label: &str, cells: &[ShownCell]) -> Markup {
     boxed(
         label,
         html! {
-            table.data data-tools="" {
+            table.data.ranked data-tools="" {
                 thead {
                     tr {
                         th scope="col" { "substrate" } th scope="col" { "electrophile" } th scope="col" { "base" }
                         th scope="col" { "solvent" } th scope="col" { "temperature" }
                         th.num scope="col" { "expected yield" } th.num scope="col" { "p_hit" }
                         @if measured { th.num scope="col" { "measured" } }
-                        th scope="col" { "where the substrate ends" } th scope="col" { "cautions" }
+                        th.wide scope="col" { "where the substrate ends" } th scope="col" { "cautions" }
                         th.num scope="col" { "cell" }
                     }
                 }

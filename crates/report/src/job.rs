@@ -140,11 +140,8 @@ pub fn job_report(report: &JobReport) -> String {
         notebook(report),
     ));
     if !report.sources.is_empty() {
-        sections.push(Section::new(
-            "sources",
-            "Sources used",
-            facts::sources(&report.sources),
-        ));
+        let sources = facts::sources(&report.sources);
+        sections.push(Section::new("sources", "Sources used", sources).on_screen_only());
     }
     Page {
         kind: "report of a job",

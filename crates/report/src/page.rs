@@ -32,6 +32,8 @@ pub(crate) struct Section {
     pub(crate) heading: String,
     /// What stands below the heading.
     pub(crate) body: Markup,
+    /// Whether it is left out on paper.
+    pub(crate) is_screen_only: bool,
 }
 
 impl Section {
@@ -40,7 +42,14 @@ impl Section {
             id,
             heading: heading.into(),
             body,
+            is_screen_only: false,
         }
+    }
+
+    /// The section, left out on paper; the page says so there.
+    pub(crate) fn on_screen_only(mut self) -> Section {
+        self.is_screen_only = true;
+        self
     }
 }
 
@@ -77,13 +86,17 @@ impl Page {
                             }
                         }
                         @for section in &self.sections {
-                            section id=(section.id) {
+                            section.screen-only[section.is_screen_only] id=(section.id) {
                                 h2 { (section.heading) }
                                 (section.body)
                             }
                         }
                     }
                     footer {
+                        @let unprinted: Vec<&str> = self.sections.iter().filter(|section| section.is_screen_only).map(|section| section.heading.as_str()).collect();
+                        @if !unprinted.is_empty() {
+                            p.print-only { "Not printed, but on the page: " (unprinted.join(", ")) "." }
+                        }
                         p { (PRECEDENCE) " No caution does not mean no hazard." }
                         p { "This page holds all that it shows: it needs no network and no script. " a href="#top" { "Back to the top" } }
                     }

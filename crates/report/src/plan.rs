@@ -52,14 +52,14 @@ pub fn plan_report(report: &PlanReport) -> String {
     ];
     if !report.explained.is_empty() {
         let details = detail::details(&report.explained, &mut structures);
-        sections.push(Section::new("why", "Cells in full", details));
+        sections.push(Section::new("why", "Cells in full", details).on_screen_only());
     }
     sections.extend([
+        Section::new("cautions", "Cautions", all_cautions(plan)),
         Section::new("stocks", "Stock sheet", stocks::sheet(plan)),
         Section::new("program", "Program", transfers::program(plan)),
         Section::new("transfers", "Transfers", transfers::transfers(plan)),
-        Section::new("masses", "Masses to look for", masses::masses(plan)),
-        Section::new("cautions", "Cautions", all_cautions(plan)),
+        Section::new("masses", "Masses to look for", masses::masses(plan)).on_screen_only(),
     ]);
     if !plan.left_out.is_empty() {
         sections.push(Section::new(
@@ -74,11 +74,8 @@ pub fn plan_report(report: &PlanReport) -> String {
         notebook(report),
     ));
     if !report.sources.is_empty() {
-        sections.push(Section::new(
-            "sources",
-            "Sources used",
-            facts::sources(&report.sources),
-        ));
+        let sources = facts::sources(&report.sources);
+        sections.push(Section::new("sources", "Sources used", sources).on_screen_only());
     }
     let title = if plan.title.is_empty() {
         &plan.campaign

@@ -1,6 +1,7 @@
 //! Structures, each drawn once and referred to wherever it is shown.
 
 mod drawing;
+mod layout;
 
 use std::collections::BTreeMap;
 
@@ -41,11 +42,17 @@ impl Structures {
             (Some(drawing), formula) => {
                 let (width, height) = (drawing.width * SCALE, drawing.height * SCALE);
                 let told = formula.as_deref().unwrap_or_default();
-                html! {
+                let picture = html! {
                     svg.structure width={ (whole(width)) } height={ (whole(height)) }
                         viewBox={ "0 0 " (whole(drawing.width)) " " (whole(drawing.height)) }
                         role="img" aria-label={ (name) ", " (told) } {
                         use href={ "#m" (known.number) } {}
+                    }
+                };
+                match drawing.is_whole {
+                    true => picture,
+                    false => {
+                        html! { div { (picture) span.words { "configuration not drawn: " (smiles) } } }
                     }
                 }
             }

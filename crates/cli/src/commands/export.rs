@@ -15,8 +15,8 @@ use crate::out_file::OutFile;
 use crate::output::talk;
 use crate::text::count;
 
-/// Rows of a page: as many as there are at most.
-const PAGE: u64 = 1000;
+/// Rows of a page, each of which is a pass over the scores; a server gives fewer.
+const PAGE: u64 = 50_000;
 
 /// Write the ranked cells of a job to a file: CSV, JSON lines, Arrow or Parquet.
 ///

@@ -1,5 +1,7 @@
 //! The stock sheet, to be printed and ticked off.
 
+use std::collections::BTreeMap;
+
 use enolattice_plate::{Form, Plan, Role, Stock};
 use maud::{Markup, html};
 
@@ -19,21 +21,22 @@ const ROLES: [Role; 7] = [
 
 /// The sheet, role by role, with a box to tick in front of every stock.
 pub(super) fn sheet(plan: &Plan) -> Markup {
+    let repeated = repeated(plan);
     let table = html! {
-        table.data.sheet {
+        table.data.sheet.flasks {
             thead {
                 tr {
                     th scope="col" { "done" } th scope="col" { "stock" } th scope="col" { "of" }
                     th scope="col" { "weigh or take" } th scope="col" { "make" } th scope="col" { "place" }
-                    th.num scope="col" { "wells" } th scope="col" { "lasts, kept" } th scope="col" { "hazard statements" }
+                    th.num scope="col" { "wells" } th scope="col" { "lasts, kept" } th scope="col" { "hazard statements" } th scope="col" { "see" }
                 }
             }
             @for role in ROLES {
                 @let stocks: Vec<&Stock> = plan.stocks.iter().filter(|stock| stock.role == role).collect();
                 @if !stocks.is_empty() {
                     tbody {
-                        tr.group { th colspan="9" scope="rowgroup" { (plural(role)) } }
-                        @for stock in stocks { (row(stock)) }
+                        tr.group { th colspan="10" scope="rowgroup" { (plural(role)) } }
+                        @for stock in stocks { (row(stock, &repeated)) }
                     }
                 }
             }
@@ -44,11 +47,37 @@ pub(super) fn sheet(plan: &Plan) -> Markup {
             "A stock lasts until a twentieth of it is lost at room temperature. Hazard statements are GHS; "
             q { "unknown" } " means that none are known to the library, not that there are none."
         }
+        @if !repeated.is_empty() {
+            p.aside { @for (note, letter) in &repeated { strong { (letter) } " " (note) ". " } }
+        }
         (boxed("Stock sheet", table))
     }
 }
 
-fn row(stock: &Stock) -> Markup {
+/// Stocks from which on a note is said once, above the sheet.
+const REPEATED: usize = 4;
+
+/// Letters of what is noted of many stocks.
+fn repeated(plan: &Plan) -> BTreeMap<&str, char> {
+    let mut stocks: BTreeMap<&str, usize> = BTreeMap::new();
+    for note in plan.stocks.iter().flat_map(noted) {
+        *stocks.entry(note).or_default() += 1;
+    }
+    let many = stocks.into_iter().filter(|(_, stocks)| *stocks >= REPEATED);
+    many.map(|(note, _)| note).zip('a'..='z').collect()
+}
+
+/// How it is kept, and all else that is noted of it.
+fn noted(stock: &Stock) -> impl Iterator<Item = &str> {
+    let all = std::iter::once(&stock.keep).chain(&stock.notes);
+    all.map(String::as_str).filter(|note| !note.is_empty())
+}
+
+fn row(stock: &Stock, repeated: &BTreeMap<&str, char>) -> Markup {
+    let mut letters: Vec<char> = noted(stock)
+        .filter_map(|note| repeated.get(note).copied())
+        .collect();
+    letters.sort_unstable();
     html! {
         tr {
             td.tick { input type="checkbox" aria-label={ "stock " (stock.label) " is made" }; }
@@ -60,9 +89,13 @@ fn row(stock: &Stock) -> Markup {
             td.num { (stock.wells) }
             td {
                 (stock.lasts_h.map_or("unknown".to_owned(), |hours| format!("{} h", short((10.0 * hours).round() / 10.0))))
-                @if !stock.keep.is_empty() { span.words { (stock.keep) } }
+                @if !stock.keep.is_empty() && !repeated.contains_key(stock.keep.as_str()) { span.words { (stock.keep) } }
             }
-            td { (stock.hazards) @for note in &stock.notes { span.words { (note) } } }
+            td {
+                (stock.hazards)
+                @for note in stock.notes.iter().filter(|note| !repeated.contains_key(note.as_str())) { span.words { (note) } }
+            }
+            td { @for (i, letter) in letters.iter().enumerate() { @if i > 0 { " " } strong { (letter) } } }
         }
     }
 }

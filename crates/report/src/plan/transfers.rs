@@ -67,7 +67,7 @@ pub(super) fn transfers(plan: &Plan) -> Markup {
                 @for round in &rounds {
                     tr {
                         td.num { (round.first.group) }
-                        td { (round.first.source_plate) " " strong { (round.first.source_well) } }
+                        td.place { (round.first.source_plate) " " strong { (round.first.source_well) } }
                         td {
                             @if let Some(stock) = round.first.stock.and_then(|index| plan.stocks.get(index)) { strong { (stock.label) } " " }
                             (name(&round.first.liquid))

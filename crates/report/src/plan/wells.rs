@@ -46,13 +46,13 @@ pub(super) fn table(report: &PlanReport) -> Markup {
     let many = plan.plates.len() > 1;
     let shown = |reagent: &Option<Reagent>| html! { @if let Some(known) = reagent { (name(&known.name)) } @else { "—" } };
     let table = html! {
-        table.data.long data-tools="" {
+        table.data.long.filled data-tools="" {
             thead {
                 tr {
                     th scope="col" { "well" } th scope="col" { "substrate" } th scope="col" { "electrophile" }
                     th scope="col" { "base" } th scope="col" { "solvent" } th.num scope="col" { "expected yield" }
                     th.num scope="col" { "p_hit" } th.num scope="col" { "as dosed" }
-                    th scope="col" { "where the substrate ends" } th scope="col" { "cautions" }
+                    th.wide scope="col" { "where the substrate ends" } th scope="col" { "cautions" }
                 }
             }
             tbody {

@@ -1,31 +1,35 @@
 //! A structure as lines and letters.
 //!
-//! Where atoms stand is worked out by the library of structures; bonds and labels are drawn here. Configuration is not
-//! drawn.
+//! A wedge goes towards the reader, a hash away, narrow at the stereocentre; crossed lines are a double bond of
+//! which E or Z is not said. A stereocentre with neither wedge nor hash is of unknown configuration.
 
 use std::panic::{AssertUnwindSafe, catch_unwind};
 
-use chematic::core::{BondOrder, apply_kekule, kekulize};
-use chematic::smiles::parse;
-use chematic_depict::compute_layout;
 use enolattice_molecule::{Atom, Molecule, element_symbol};
 use maud::{Markup, html};
 
+use super::layout::{Line, Look, Place, layout};
+
 /// Atoms beyond which a drawing of this size cannot be read.
 const MOST_ATOMS: usize = 70;
-/// Room around the outermost atoms, in units of the layout, whose bonds are 40 long.
-const MARGIN: f64 = 18.0;
 /// Free space around the letters of an atom.
 const CLEAR: f64 = 10.5;
 /// Distance of the lines of a double bond.
 const GAP: f64 = 6.0;
+/// Width of a wedge at its wide end.
+const WEDGE: f64 = 9.0;
+/// Lines of a hash.
+const HASHES: usize = 6;
 
 /// A drawing.
 #[derive(Debug)]
 pub(super) struct Drawing {
     pub(super) width: f64,
     pub(super) height: f64,
+    /// Whether it shows all configuration that the structure says.
+    pub(super) is_whole: bool,
     bonds: String,
+    wedges: String,
     labels: Vec<Label>,
 }
 
@@ -36,19 +40,6 @@ struct Label {
     y: f64,
     anchor: &'static str,
     text: String,
-}
-
-/// A place of the drawing.
-#[derive(Clone, Copy, Debug)]
-struct Place {
-    x: f64,
-    y: f64,
-}
-
-/// A bond of the Kekulé form.
-struct Line {
-    ends: [usize; 2],
-    lines: u8,
 }
 
 impl Drawing {
@@ -66,6 +57,7 @@ impl Drawing {
     pub(super) fn markup(&self) -> Markup {
         html! {
             path d=(self.bonds) {}
+            @if !self.wedges.is_empty() { path.wedge d=(self.wedges) {} }
             @for label in &self.labels {
                 text x=(one(label.x)) y=(one(label.y)) text-anchor=(label.anchor) { (label.text) }
             }
@@ -74,93 +66,31 @@ impl Drawing {
 }
 
 fn drawn(given: &Molecule) -> Option<Drawing> {
-    // atoms of both readings in the same order, hydrogens written as atoms folded in
-    let molecule = Molecule::parse(given.canonical()).ok()?;
-    let graph = parse(given.canonical()).ok()?;
-    let kekule = kekulize(&graph)
-        .ok()
-        .map(|found| apply_kekule(&graph, &found));
-    let graph = kekule.unwrap_or(graph);
-    if graph.atom_count() != molecule.atoms().len() {
-        return None;
-    }
-    let layout = compute_layout(&graph);
-    let mut places: Vec<Place> = layout
-        .coords
-        .iter()
-        .map(|at| Place { x: at.x, y: at.y })
-        .collect();
-    if places
-        .iter()
-        .any(|at| !at.x.is_finite() || !at.y.is_finite())
-    {
-        return None;
-    }
-    let (width, height) = laid_down(&mut places);
-    let lines: Vec<Line> = graph
-        .bonds()
-        .map(|(_, bond)| Line {
-            ends: [bond.atom1.0 as usize, bond.atom2.0 as usize],
-            lines: match bond.order {
-                BondOrder::Double => 2,
-                BondOrder::Triple => 3,
-                _ => 1,
-            },
-        })
-        .collect();
+    let layout = layout(given)?;
     let mut sketch = Sketch {
-        molecule: &molecule,
-        places: &places,
+        molecule: &layout.molecule,
+        places: &layout.places,
         bonds: String::new(),
+        wedges: String::new(),
         labels: Vec::new(),
     };
-    lines.iter().for_each(|line| sketch.bond(line));
-    (0..places.len()).for_each(|atom| sketch.label(atom));
+    layout.lines.iter().for_each(|line| sketch.bond(line));
+    (0..layout.places.len()).for_each(|atom| sketch.label(atom));
     Some(Drawing {
-        width,
-        height,
+        width: layout.width,
+        height: layout.height,
+        is_whole: layout.is_whole,
         bonds: sketch.bonds,
+        wedges: sketch.wedges,
         labels: sketch.labels,
     })
-}
-
-/// Turns what is taller than wide on its side and moves it to the corner; gives width and height.
-fn laid_down(places: &mut [Place]) -> (f64, f64) {
-    let bounds = |places: &[Place]| {
-        let fold = |of: fn(&Place) -> f64, pick: fn(f64, f64) -> f64, start| {
-            places.iter().map(of).fold(start, pick)
-        };
-        let least = Place {
-            x: fold(|p| p.x, f64::min, f64::INFINITY),
-            y: fold(|p| p.y, f64::min, f64::INFINITY),
-        };
-        let most = Place {
-            x: fold(|p| p.x, f64::max, f64::NEG_INFINITY),
-            y: fold(|p| p.y, f64::max, f64::NEG_INFINITY),
-        };
-        (least, most)
-    };
-    let (least, most) = bounds(places);
-    if most.y - least.y > 1.15 * (most.x - least.x) {
-        for at in places.iter_mut() {
-            *at = Place { x: -at.y, y: at.x };
-        }
-    }
-    let (least, most) = bounds(places);
-    for at in places.iter_mut() {
-        at.x += MARGIN - least.x;
-        at.y += MARGIN - least.y;
-    }
-    (
-        most.x - least.x + 2.0 * MARGIN,
-        most.y - least.y + 2.0 * MARGIN,
-    )
 }
 
 struct Sketch<'a> {
     molecule: &'a Molecule,
     places: &'a [Place],
     bonds: String,
+    wedges: String,
     labels: Vec<Label>,
 }
 
@@ -175,9 +105,9 @@ impl Sketch<'_> {
             x: -dy / length,
             y: dx / length,
         };
-        match line.lines {
-            1 => self.stroke(from, to, across, 0.0, 0.0),
-            2 => match self.inner_side(one, other, across) {
+        match line.look {
+            Look::Single => self.stroke(from, to, across, 0.0, 0.0),
+            Look::Double => match self.inner_side(one, other, across) {
                 Some(side) => {
                     self.stroke(from, to, across, 0.0, 0.0);
                     self.stroke(from, to, across, GAP * side, 5.0);
@@ -187,9 +117,33 @@ impl Sketch<'_> {
                     self.stroke(from, to, across, -GAP / 2.0, 0.0);
                 }
             },
-            _ => {
+            Look::Crossed => {
+                let half = GAP / 2.0;
+                self.piece(from.beside(across, half), to.beside(across, -half));
+                self.piece(from.beside(across, -half), to.beside(across, half));
+            }
+            Look::Triple => {
                 for offset in [-GAP, 0.0, GAP] {
                     self.stroke(from, to, across, 0.75 * offset, 0.0);
+                }
+            }
+            Look::Wedge => {
+                let (left, right) = (
+                    to.beside(across, WEDGE / 2.0),
+                    to.beside(across, -WEDGE / 2.0),
+                );
+                let shape = format!("M{}L{}L{}Z", point(from), point(left), point(right));
+                self.wedges.push_str(&shape);
+            }
+            Look::Hash => {
+                for i in 1..=HASHES {
+                    let along = i as f64 / HASHES as f64;
+                    let at = Place {
+                        x: from.x + dx * along,
+                        y: from.y + dy * along,
+                    };
+                    let half = 0.5 * WEDGE * along;
+                    self.piece(at.beside(across, half), at.beside(across, -half));
                 }
             }
         }
@@ -199,11 +153,16 @@ impl Sketch<'_> {
     fn stroke(&mut self, from: Place, to: Place, across: Place, offset: f64, shorter: f64) {
         // along the bond
         let (ux, uy) = (across.y, -across.x);
-        let x1 = from.x + across.x * offset + ux * shorter;
-        let y1 = from.y + across.y * offset + uy * shorter;
-        let x2 = to.x + across.x * offset - ux * shorter;
-        let y2 = to.y + across.y * offset - uy * shorter;
-        let piece = format!("M{} {}L{} {}", one(x1), one(y1), one(x2), one(y2));
+        let along = Place { x: ux, y: uy };
+        self.piece(
+            from.beside(across, offset).beside(along, shorter),
+            to.beside(across, offset).beside(along, -shorter),
+        );
+    }
+
+    /// One line.
+    fn piece(&mut self, from: Place, to: Place) {
+        let piece = format!("M{}L{}", point(from), point(to));
         self.bonds.push_str(&piece);
     }
 
@@ -325,6 +284,20 @@ fn hydrogens(number: u8) -> String {
     }
 }
 
+impl Place {
+    /// The place so far away in a direction of length 1.
+    fn beside(self, direction: Place, by: f64) -> Place {
+        Place {
+            x: self.x + direction.x * by,
+            y: self.y + direction.y * by,
+        }
+    }
+}
+
+fn point(at: Place) -> String {
+    format!("{} {}", one(at.x), one(at.y))
+}
+
 /// One decimal, none where it is zero.
 fn one(number: f64) -> String {
     let text = format!("{number:.1}");
@@ -333,6 +306,7 @@ fn one(number: f64) -> String {
 
 #[cfg(test)]
 mod tests {
+    use super::super::layout::MARGIN;
     use super::*;
 
     fn drawing(smiles: &str) -> Drawing {

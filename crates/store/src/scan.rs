@@ -235,16 +235,18 @@ impl Scan<'_> {
 
     /// Adds the scores of rows.
     pub(crate) fn with_scores(&self, rows: &[Row]) -> Result<Vec<(u64, Score)>, StoreError> {
-        let scored = |rows: &[Row]| {
+        // in the order of the cells, so that each block is read once or little more
+        let mut cells: Vec<(u64, usize)> = rows.iter().map(|row| row.1).zip(0..).collect();
+        cells.sort_unstable();
+        let scored = |cells: &[(u64, usize)]| {
             let mut last: Option<(usize, IVec)> = None;
-            let mut scored = Vec::with_capacity(rows.len());
-            for (_, cell) in rows {
+            let mut scored = Vec::with_capacity(cells.len());
+            for (cell, place) in cells {
                 let at = self
                     .blocks
                     .partition_point(|block| block.first_cell <= *cell)
                     - 1;
                 let block = &self.blocks[at];
-                // ties lie in the same block
                 let value = match last.take() {
                     Some((known, value)) if known == at => value,
                     _ => checked_value(self.database, self.job, block)?,
@@ -252,16 +254,19 @@ impl Scan<'_> {
                 let i = (*cell - block.first_cell) as usize;
                 let score = Columns::score_in(block::columns_bytes(&value), i)
                     .map_err(damaged(self.job, block))?;
-                scored.push((*cell, score));
+                scored.push((*place, *cell, score));
                 last = Some((at, value));
             }
             Ok(scored)
         };
-        let chunks: Vec<Vec<(u64, Score)>> = rows
+        let chunks: Vec<Vec<(usize, u64, Score)>> = cells
             .par_chunks(ROWS_AT_ONCE)
             .map(scored)
             .collect::<Result<_, StoreError>>()?;
-        Ok(chunks.into_iter().flatten().collect())
+        let mut scored: Vec<(usize, u64, Score)> = chunks.into_iter().flatten().collect();
+        scored.sort_unstable_by_key(|(place, ..)| *place);
+        let scored = scored.into_iter();
+        Ok(scored.map(|(_, cell, score)| (cell, score)).collect())
     }
 
     /// Calls `take` with every row of a block that passes the filter.

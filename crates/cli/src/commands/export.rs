@@ -40,7 +40,12 @@ pub(super) struct Export {
     #[arg(long, value_enum, default_value_t)]
     order: OrderName,
     /// Which cells to keep, as `rank --filter`.
-    #[arg(long, value_name = "FILTER", default_value = "")]
+    #[arg(
+        long,
+        value_name = "FILTER",
+        default_value = "",
+        hide_default_value = true
+    )]
     filter: String,
     /// Only the best cell of each value of this axis.
     #[arg(long, value_enum, value_name = "AXIS")]

@@ -55,7 +55,13 @@ pub(super) struct Plan {
     #[arg(long, conflicts_with_all = ["kept", "out", "show", "ord"])]
     later: bool,
     /// Your id of this request: sent again, it gives the same job.
-    #[arg(long, value_name = "ID", default_value = "", requires = "later")]
+    #[arg(
+        long,
+        value_name = "ID",
+        default_value = "",
+        hide_default_value = true,
+        requires = "later"
+    )]
     request_id: String,
     /// Write the plan's files into this new folder.
     #[arg(long, value_name = "DIR")]
@@ -76,13 +82,25 @@ pub(super) struct Plan {
     #[arg(long, value_name = "FILE", requires = "person_email")]
     ord: Option<PathBuf>,
     /// Who makes the record of `--ord`.
-    #[arg(long, value_name = "NAME", default_value = "", requires = "ord")]
+    #[arg(
+        long,
+        value_name = "NAME",
+        default_value = "",
+        hide_default_value = true,
+        requires = "ord"
+    )]
     person_name: String,
     /// E-mail address of who makes the record; the schema asks for it.
     #[arg(long, value_name = "ADDRESS", requires = "ord", value_parser = address)]
     person_email: Option<String>,
     /// Organisation of who makes the record.
-    #[arg(long, value_name = "NAME", default_value = "", requires = "ord")]
+    #[arg(
+        long,
+        value_name = "NAME",
+        default_value = "",
+        hide_default_value = true,
+        requires = "ord"
+    )]
     organization: String,
     /// Write over a file of `--ord` that is there already.
     #[arg(long, requires = "ord")]

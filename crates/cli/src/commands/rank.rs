@@ -34,7 +34,12 @@ pub(super) struct Rank {
     #[arg(long, value_enum, default_value_t)]
     order: OrderName,
     /// Which cells to keep.
-    #[arg(long, value_name = "FILTER", default_value = "")]
+    #[arg(
+        long,
+        value_name = "FILTER",
+        default_value = "",
+        hide_default_value = true
+    )]
     filter: String,
     /// Rows to print, of a map the best ones; 0: all.
     #[arg(long, value_name = "N", default_value_t = 50)]

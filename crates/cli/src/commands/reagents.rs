@@ -16,7 +16,7 @@ use crate::text::{reagent_table, safety_notice};
     enolattice reagents --json")]
 pub(super) struct Reagents {
     /// Only those with this in a name, synonym or CAS number.
-    #[arg(default_value = "")]
+    #[arg(default_value = "", hide_default_value = true)]
     word: String,
     #[command(flatten)]
     engine: EngineOptions,

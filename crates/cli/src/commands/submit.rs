@@ -27,7 +27,7 @@ pub(super) struct Submit {
     /// The campaign, a TOML file.
     file: PathBuf,
     /// Your id of this request: sent again, it gives the same job.
-    #[arg(long, value_name = "ID", default_value = "")]
+    #[arg(long, value_name = "ID", default_value = "", hide_default_value = true)]
     request_id: String,
     /// Check the campaign; queue nothing.
     #[arg(long)]

@@ -15,6 +15,7 @@ pub(super) struct TermsOptions {
         long,
         value_name = "NAME",
         default_value = "",
+        hide_default_value = true,
         env = "ENOLATTICE_REQUESTER"
     )]
     requester: String,

@@ -45,9 +45,12 @@ fn head(plan: &Plan) -> String {
         &plan.title
     };
     let wells: usize = plan.plates.iter().map(|plate| plate.wells.len()).sum();
+    let plates = match plan.plates.len() {
+        1 => "1 plate".to_owned(),
+        plates => format!("{plates} plates"),
+    };
     format!(
-        "{title}\n{} plate(s) of {}, {} wells filled with {} uL; job {}, model {}",
-        plan.plates.len(),
+        "{title}\n{plates} of {}, {} wells filled with {} uL; job {}, model {}",
         plan.request.plates.wells,
         wells,
         short(plan.volume_ul),
